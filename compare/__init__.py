@@ -1,0 +1,1 @@
+"""What the readings mean in a circuit: derived values, verdicts, ranking, page and command line."""

@@ -1,0 +1,88 @@
+"""What every file format is turned into: tables of cells and lines of segments, in reading order, each with its place.
+
+The readers end here and the layers above start here, so that a new format needs no change above and a new wording none below.
+"""
+
+from __future__ import annotations
+
+from dataclasses import dataclass, field
+
+from extract.model import Kind, Note, Where
+
+
+class DocumentError(Exception):
+    """A file that cannot be read at all; the message says what is wrong and what to do, without the file's name."""
+
+
+@dataclass(frozen=True, slots=True)
+class Cell:
+    """One cell as printed. `row` and `column` count from 0; a merged cell stands once, with its spans.
+
+    `confidence` is 1.0 for text that the file holds as text, and the recogniser's own (0 to 1) for a picture.
+    """
+
+    text: str
+    row: int
+    column: int
+    where: Where
+    row_span: int = 1
+    column_span: int = 1
+    header: bool = False
+    confidence: float = 1.0
+
+
+@dataclass(frozen=True, slots=True)
+class Table:
+    """A grid, ruled or by position. Cells in reading order; empty cells may be left out."""
+
+    cells: tuple[Cell, ...]
+    rows: int
+    columns: int
+    where: Where
+    title: str = ""
+    ruled: bool = True
+
+    def grid(self) -> list[list[Cell | None]]:
+        """Rows of cells, a merged cell standing in each place that it covers."""
+        grid: list[list[Cell | None]] = [[None] * self.columns for _ in range(self.rows)]
+        for cell in self.cells:
+            for row in range(cell.row, min(cell.row + cell.row_span, self.rows)):
+                for column in range(cell.column, min(cell.column + cell.column_span, self.columns)):
+                    grid[row][column] = cell
+        return grid
+
+
+@dataclass(frozen=True, slots=True)
+class Segment:
+    """A run of words that stands together; wide gaps, tabs and leader dots part one from the next."""
+
+    text: str
+    where: Where
+    confidence: float = 1.0
+
+
+@dataclass(frozen=True, slots=True)
+class Line:
+    """One line outside tables (a heading, prose, a footnote, a label with its value), as segments from left to right."""
+
+    segments: tuple[Segment, ...]
+    where: Where
+    heading: bool = False
+
+    @property
+    def text(self) -> str:
+        return "  ".join(segment.text for segment in self.segments)
+
+
+@dataclass(frozen=True, slots=True)
+class Document:
+    """A file's content in reading order.
+
+    `page_headers` are lines of page headers and footers, kept apart: a maker often stands only there.
+    """
+
+    kind: Kind
+    blocks: tuple[Table | Line, ...]
+    scan: bool = False
+    page_headers: tuple[Line, ...] = ()
+    notes: tuple[Note, ...] = field(default=())

@@ -1,0 +1,167 @@
+"""Readings, parts and sheets, validated: the data contract's sections 1 and 2 (schema `quartzfolio/extract/1`)."""
+
+from __future__ import annotations
+
+from typing import Any, Literal, Self, get_args
+
+from pydantic import BaseModel, ConfigDict, model_serializer, model_validator
+
+SCHEMA = "quartzfolio/extract/1"
+
+FieldName = Literal[
+    "frequency_mhz",
+    "frequency_tolerance_ppm",
+    "frequency_stability_ppm",
+    "ageing_ppm",
+    "operating_temperature_c",
+    "storage_temperature_c",
+    "load_capacitance_pf",
+    "esr_ohm",
+    "shunt_capacitance_pf",
+    "motional_capacitance_ff",
+    "motional_inductance_mh",
+    "quality_factor",
+    "capacitance_ratio",
+    "pulling_sensitivity_ppm_per_pf",
+    "drive_level_uw",
+    "turnover_temperature_c",
+    "parabolic_coefficient_ppm_per_c2",
+    "insulation_resistance_megohm",
+]
+FIELD_NAMES: tuple[str, ...] = get_args(FieldName)
+
+Kind = Literal["pdf", "xlsx", "csv", "html", "docx", "text", "image"]
+Status = Literal["stated", "inferred", "entered"]
+Pair = tuple[float, float]
+
+
+class _Frozen(BaseModel):
+    model_config = ConfigDict(frozen=True, extra="forbid", allow_inf_nan=False)
+
+
+class _Sparse(_Frozen):
+    """A model whose absent keys stay absent when written out."""
+
+    @model_serializer(mode="wrap")
+    def _without_none(self, handler: Any) -> dict[str, Any]:
+        return {key: value for key, value in handler(self).items() if value is not None}
+
+
+class Where(_Sparse):
+    """Where something stands: page and box (points or pixels from the top left), cell, or line; all count from 1."""
+
+    page: int | None = None
+    box: tuple[float, float, float, float] | None = None
+    sheet: str | None = None
+    table: int | None = None
+    cell: str | None = None
+    line: int | None = None
+
+    def __str__(self) -> str:
+        parts = []
+        if self.page is not None:
+            parts.append(f"page {self.page}")
+        if self.sheet is not None:
+            parts.append(f"sheet {self.sheet}")
+        if self.table is not None:
+            parts.append(f"table {self.table}")
+        if self.line is not None:
+            parts.append(f"line {self.line}")
+        if self.cell is not None:
+            parts.append(f"cell {self.cell}")
+        return ", ".join(parts) or "the sheet"
+
+
+class When(_Sparse):
+    """Where a reading holds. An absent key means everywhere; both ends of a pair belong to the band."""
+
+    frequency_mhz: Pair | None = None
+    load_capacitance_pf: Pair | None = None
+    temperature_c: Pair | None = None
+    mode: str | None = None
+    package: str | None = None
+    years: float | None = None
+
+
+class Reading(_Frozen):
+    """One stated property: up to three bounds, or options, in the unit that the field's name ends in."""
+
+    field: FieldName
+    min: float | None = None
+    typ: float | None = None
+    max: float | None = None
+    options: tuple[float, ...] = ()
+    when: When = When()
+    raw: str
+    bare: bool | None = None
+    where: Where
+    status: Status = "stated"
+    check: str | None = None
+
+    @model_validator(mode="after")
+    def _holds_a_value(self) -> Self:
+        stated = [value for value in (self.min, self.typ, self.max) if value is not None]
+        if not stated and not self.options:
+            raise ValueError(f"a reading of {self.field} without a value: {self.raw!r}")
+        if stated != sorted(stated) and self.check is None:
+            raise ValueError(f"bounds of {self.field} out of order need a check: {self.raw!r}")
+        return self
+
+    @model_serializer(mode="wrap")
+    def _without_absent_bare(self, handler: Any) -> dict[str, Any]:
+        written: dict[str, Any] = handler(self)
+        if written["bare"] is None:
+            del written["bare"]
+        return written
+
+
+class Pads(_Sparse):
+    """Which solder pads carry the crystal and which are ground, counted as the sheet counts them."""
+
+    count: int | None = None
+    crystal: tuple[int, ...] | None = None
+    ground: tuple[int, ...] | None = None
+
+
+class Attributes(_Sparse):
+    """What a sheet or list says of grade, handling and supply; absent where it says nothing."""
+
+    pads: Pads | None = None
+    aec_q200: bool | None = None
+    moisture_level: str | None = None
+    reflow_peak_c: float | None = None
+    status: str | None = None
+    price: str | None = None
+    lead_time: str | None = None
+
+
+class Part(_Frozen):
+    """A part number that the sheet gives values for, or a series as one part whose readings carry `when`."""
+
+    part_number: str | None = None
+    maker: str | None = None
+    package: str | None = None
+    mode: str | None = None
+    cut: str | None = None
+    resonance: Literal["load", "series"] | None = None
+    attributes: Attributes = Attributes()
+    readings: tuple[Reading, ...] = ()
+
+
+class Note(_Frozen):
+    """What the reader has to say about a sheet, with the place it speaks of."""
+
+    level: Literal["error", "warning", "info"]
+    message: str
+    where: Where | None = None
+
+
+class SpecSheet(_Frozen):
+    """Everything read from one file."""
+
+    file: str
+    sha256: str
+    kind: Kind
+    scan: bool = False
+    parts: tuple[Part, ...] = ()
+    notes: tuple[Note, ...] = ()
