@@ -1,6 +1,6 @@
-"""What every file format is turned into: tables of cells and lines of segments, in reading order, each with its place.
+"""What every file format is turned into: tables of cells and lines of segments, in reading order, with their places.
 
-The readers end here and the layers above start here, so that a new format needs no change above and a new wording none below.
+The readers end here and the layers above start here, so a new format needs no change above, a new wording none below.
 """
 
 from __future__ import annotations
@@ -63,7 +63,7 @@ class Segment:
 
 @dataclass(frozen=True, slots=True)
 class Line:
-    """One line outside tables (a heading, prose, a footnote, a label with its value), as segments from left to right."""
+    """One line outside tables (a heading, prose, a footnote, a label and its value), as segments from left to right."""
 
     segments: tuple[Segment, ...]
     where: Where
