@@ -160,7 +160,7 @@ class SpecSheet(_Frozen):
     """Everything read from one file."""
 
     file: str
-    sha256: str
+    sha256: str | None
     kind: Kind
     scan: bool = False
     parts: tuple[Part, ...] = ()

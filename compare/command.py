@@ -1,0 +1,207 @@
+"""The command line: `quartzfolio extract | review | rank | page`. Exit statuses are the data contract's.
+
+Heavy imports stand inside the commands that need them, so that `--help` answers at once.
+"""
+
+from __future__ import annotations
+
+import argparse
+import json
+import os
+import sys
+from collections.abc import Sequence
+from typing import TYPE_CHECKING, Any
+
+if TYPE_CHECKING:
+    from compare.bench import Bench
+    from compare.intake import Intake
+    from extract.model import Note, SpecSheet
+
+DONE, LOOK, WRONG_CALL = 0, 1, 2
+
+
+class CallError(Exception):
+    """The call itself is wrong; the message says what, where and what to do."""
+
+
+def main(arguments: Sequence[str] | None = None) -> int:
+    """Run one command and return its exit status."""
+    for stream in (sys.stdout, sys.stderr):
+        if hasattr(stream, "reconfigure"):
+            stream.reconfigure(encoding="utf-8")
+    options = _parser().parse_args(arguments)
+    try:
+        status: int = options.run(options)
+        sys.stdout.flush()
+    except CallError as fault:
+        print(f"quartzfolio: {fault}", file=sys.stderr)  # noqa: T201
+        return WRONG_CALL
+    except BrokenPipeError:
+        # The reader of our output went away (`| head`): no fault, but the interpreter would complain at exit.
+        os.dup2(os.open(os.devnull, os.O_WRONLY), sys.stdout.fileno())
+        return DONE
+    except KeyboardInterrupt:
+        print("quartzfolio: stopped", file=sys.stderr)  # noqa: T201
+        return 130
+    return status
+
+
+def _parser() -> argparse.ArgumentParser:
+    parser = argparse.ArgumentParser(
+        prog="quartzfolio",
+        description="Reads quartz-crystal spec sheets, works out what each crystal does in your oscillator circuit, "
+        "and ranks the candidates.",
+    )
+    parser.add_argument("--version", action=_Version, nargs=0, help="print the versions of program and schemas")
+    commands = parser.add_subparsers(title="commands", metavar="COMMAND", required=True)
+    extract = _command(commands, "extract", "what the sheets say, each value with its place", _extract)
+    _sheets(extract)
+    review = _command(commands, "review", "each part in your circuit: every number, verdict and reason", _review)
+    _sheets(review)
+    _bench(review)
+    rank = _command(commands, "rank", "the candidates for your circuit, best first, and why", _rank)
+    _sheets(rank)
+    _bench(rank)
+    page = commands.add_parser("page", help="the same in the browser, on this machine only")
+    page.add_argument("sheets", nargs="*", metavar="SHEET", help="sheets or folders to open at once")
+    page.add_argument("--bench", metavar="BENCH.toml", help="circuit and requirement to open at once")
+    page.add_argument("--port", type=int, default=8733, help="port on 127.0.0.1 (default %(default)s)")
+    page.set_defaults(run=_page)
+    return parser
+
+
+def _command(commands: Any, name: str, about: str, run: Any) -> argparse.ArgumentParser:
+    described = about[0].upper() + about[1:] + "."
+    parser: argparse.ArgumentParser = commands.add_parser(name, help=about, description=described)
+    parser.add_argument("--json", action="store_true", help="one JSON document instead of the readable table")
+    parser.set_defaults(run=run)
+    return parser
+
+
+def _sheets(parser: argparse.ArgumentParser) -> None:
+    parser.add_argument(
+        "sheets",
+        nargs="+",
+        metavar="SHEET",
+        help="a file (PDF, XLSX, XLS, ODS, CSV, TSV, HTML, DOCX, text, picture), a folder of them, "
+        "FILE#PART_NUMBER for one part of a file, or - for standard input",
+    )
+
+
+def _bench(parser: argparse.ArgumentParser) -> None:
+    parser.add_argument("--bench", required=True, metavar="BENCH.toml", help="your circuit and what is asked of it")
+
+
+class _Version(argparse.Action):
+    def __call__(self, parser: argparse.ArgumentParser, *_: Any) -> None:
+        from importlib.metadata import version
+
+        from extract.model import SCHEMA
+
+        print(f"quartzfolio {version('quartzfolio')}, {SCHEMA}, quartzfolio/review/1, quartzfolio/rank/1")  # noqa: T201
+        parser.exit()
+
+
+def _extract(options: argparse.Namespace) -> int:
+    intake = _read(options.sheets)
+    if options.json:
+        from extract.model import SCHEMA
+
+        sheets = [sheet.model_dump(mode="json") for sheet in intake.sheets]
+        notes = [note.model_dump(mode="json") for note in intake.notes]
+        _print_json({"schema": SCHEMA, "sheets": sheets, "notes": notes})
+    else:
+        from compare.report import extract_text
+
+        _print(extract_text(intake.sheets), intake.notes)
+    complete = bool(intake.sheets) and all(sheet.parts for sheet in intake.sheets)
+    return DONE if complete and not _faults(intake.notes) else LOOK
+
+
+def _review(options: argparse.Namespace) -> int:
+    from compare.report import review_text
+    from compare.review import review
+
+    bench = _read_bench(options.bench)
+    intake = _read(options.sheets)
+    result = review(intake.sheets, bench)
+    _add_notes(result, intake)
+    _print_json(result) if options.json else _print(review_text(result))
+    sound = all(one["verdict"] == "meets" and not one["to_check"] for one in result["reviews"])
+    every_file = bool(intake.sheets) and all(sheet.parts for sheet in intake.sheets)
+    return DONE if result["reviews"] and sound and every_file and not _faults(intake.notes) else LOOK
+
+
+def _rank(options: argparse.Namespace) -> int:
+    from compare.ranking import rank
+    from compare.report import rank_text
+
+    bench = _read_bench(options.bench)
+    intake = _read(options.sheets)
+    result = rank(intake.sheets, bench)
+    _add_notes(result, intake)
+    _print_json(result) if options.json else _print(rank_text(result))
+    readable = not any(_faults(sheet.notes) for sheet in intake.sheets) and not _faults(intake.notes)
+    return DONE if result["rows"] and readable else LOOK
+
+
+def _page(options: argparse.Namespace) -> int:
+    from compare.serve import serve
+
+    if options.bench is not None:
+        _read_bench(options.bench)
+    return serve(options.sheets, bench=options.bench, port=options.port)
+
+
+def _read(names: Sequence[str]) -> Intake:
+    from compare.intake import read_sheets
+
+    return read_sheets(names)
+
+
+def _read_bench(name: str) -> Bench:
+    from pathlib import Path
+
+    from compare.bench import BenchError, read_bench
+
+    try:
+        text = Path(name).read_text(encoding="utf-8-sig")
+    except FileNotFoundError:
+        raise CallError(f"{name}: no such bench file; check the name") from None
+    except UnicodeDecodeError:
+        raise CallError(f"{name}: not a text file in UTF-8; a bench is a TOML file") from None
+    except OSError as fault:
+        raise CallError(f"{name}: cannot be opened: {(fault.strerror or str(fault)).lower()}") from None
+    try:
+        return read_bench(text, name)
+    except BenchError as fault:
+        raise CallError(str(fault)) from None
+
+
+def _faults(notes: Sequence[Note]) -> bool:
+    return any(note.level == "error" for note in notes)
+
+
+def _add_notes(result: dict[str, Any], intake: Intake) -> None:
+    """Put what was said about names and sheets in front of what the reckoning has to say."""
+    said = [note.model_dump(mode="json") for note in intake.notes]
+    result["notes"] = [*said, *(note for sheet in intake.sheets for note in _notes_of(sheet)), *result["notes"]]
+
+
+def _notes_of(sheet: SpecSheet) -> list[dict[str, Any]]:
+    return [
+        {**note.model_dump(mode="json"), "message": f"{sheet.file}: {note.message}"}
+        for note in sheet.notes
+        if note.level != "info"
+    ]
+
+
+def _print_json(document: dict[str, Any]) -> None:
+    json.dump(document, sys.stdout, ensure_ascii=False, indent=1, allow_nan=False)
+    sys.stdout.write("\n")
+
+
+def _print(text: str, notes: Sequence[Note] = ()) -> None:
+    sys.stdout.write(text.rstrip() + "\n")
+    for note in notes:
+        sys.stdout.write(f"{note.level}: {note.message}\n")

@@ -1,0 +1,139 @@
+"""From names as a person gives them (files, folders, `FILE#PART`, `-`) to sheets read; one bad file stops no other."""
+
+from __future__ import annotations
+
+import hashlib
+import sys
+from collections.abc import Callable, Iterable, Iterator
+from dataclasses import dataclass, field
+from pathlib import Path
+
+from extract import read_sheet
+from extract.documents.kinds import SHEET_SUFFIXES, kind_by_name
+from extract.model import Note, Part, SpecSheet
+
+STANDARD_INPUT = "-"
+
+
+@dataclass(frozen=True, slots=True)
+class Intake:
+    """The sheets in the order given, and what is to be said about the names themselves."""
+
+    sheets: tuple[SpecSheet, ...] = ()
+    notes: tuple[Note, ...] = ()
+
+
+@dataclass(slots=True)
+class _Named:
+    """One file to read, and the one part wanted of it, if any."""
+
+    name: str
+    part: str | None = None
+
+
+@dataclass(slots=True)
+class _Plan:
+    files: list[_Named] = field(default_factory=list)
+    notes: list[Note] = field(default_factory=list)
+
+
+def read_sheets(names: Iterable[str], *, told: Callable[[str], None] | None = None) -> Intake:
+    """Read every sheet that `names` stand for.
+
+    Parameters
+    ----------
+    names
+        Files, folders (their sheets and those of their sub-folders, in order of name), `FILE#PART_NUMBER`, or `-`.
+    told
+        Called with each file's name before it is read, for a progress line.
+    """
+    plan = _Plan()
+    for name in names:
+        _plan_for(name, plan)
+    sheets = []
+    for named in plan.files:
+        if told is not None:
+            told(named.name)
+        sheet = _read_one(named.name)
+        sheets.append(sheet if named.part is None else _only(sheet, named.part))
+    return Intake(tuple(sheets), tuple(plan.notes))
+
+
+def read_bytes(data: bytes, name: str) -> SpecSheet:
+    """Read one sheet; a fault of the program itself becomes a note, so that the other sheets are still done."""
+    try:
+        return read_sheet(data, name)
+    except Exception as fault:
+        message = (
+            f"could not be read because of a fault in quartzfolio ({type(fault).__name__}: {fault}); "
+            "nothing of this sheet is used. Enter its values by hand, and report the fault with the sheet"
+        )
+        return _failed(name, message, hashlib.sha256(data).hexdigest())
+
+
+def _plan_for(name: str, plan: _Plan) -> None:
+    path = Path(name)
+    if name != STANDARD_INPUT and path.is_dir():
+        _plan_for_folder(path, plan)
+    elif name == STANDARD_INPUT or path.exists() or "#" not in name:
+        plan.files.append(_Named(name))
+    else:
+        file, _, part = name.rpartition("#")
+        plan.files.append(_Named(file, part))
+
+
+def _plan_for_folder(folder: Path, plan: _Plan) -> None:
+    found, passed = [], []
+    for path in sorted(_visible_files(folder)):
+        (found if path.suffix.lower() in SHEET_SUFFIXES else passed).append(path)
+    plan.files += [_Named(str(path)) for path in found]
+    if passed:
+        names = ", ".join(str(path.relative_to(folder)) for path in passed[:6])
+        more = f" and {len(passed) - 6} more" if len(passed) > 6 else ""
+        plan.notes.append(Note(level="info", message=f"{folder}: passed over, no kind of sheet: {names}{more}"))
+    if not found:
+        plan.notes.append(Note(level="error", message=f"{folder}: no sheets in this folder; name one that holds some"))
+
+
+def _visible_files(folder: Path) -> Iterator[Path]:
+    for path in folder.iterdir():
+        if path.name.startswith("."):
+            continue
+        if path.is_dir():
+            yield from _visible_files(path)
+        elif path.is_file():
+            yield path
+
+
+def _read_one(name: str) -> SpecSheet:
+    if name == STANDARD_INPUT:
+        return read_bytes(sys.stdin.buffer.read(), name)
+    try:
+        data = Path(name).read_bytes()
+    except FileNotFoundError:
+        return _failed(name, "no such file; check the name")
+    except OSError as fault:
+        return _failed(name, f"cannot be opened: {(fault.strerror or str(fault)).lower()}")
+    return read_bytes(data, name)
+
+
+def _failed(name: str, message: str, sha256: str | None = None) -> SpecSheet:
+    note = Note(level="error", message=message)
+    return SpecSheet(file=name, sha256=sha256, kind=kind_by_name(name), notes=(note,))
+
+
+def _only(sheet: SpecSheet, wanted: str) -> SpecSheet:
+    parts = tuple(part for part in sheet.parts if _same_number(part, wanted))
+    if parts or not sheet.parts:
+        return sheet.model_copy(update={"parts": parts})
+    there = [part.part_number or "one without a part number" for part in sheet.parts]
+    listed = ", ".join(there[:8]) + (f" and {len(there) - 8} more" if len(there) > 8 else "")
+    note = Note(level="error", message=f"no part {wanted} in this sheet; it has {listed}")
+    return sheet.model_copy(update={"parts": (), "notes": (*sheet.notes, note)})
+
+
+def _same_number(part: Part, wanted: str) -> bool:
+    def plain(number: str) -> str:
+        return "".join(character for character in number.casefold() if character.isalnum())
+
+    return part.part_number is not None and plain(part.part_number) == plain(wanted)
