@@ -1,0 +1,69 @@
+"""Big grids at little cost: cell addresses, and cells that work out their place only when somebody asks for it."""
+
+from __future__ import annotations
+
+from collections.abc import Callable
+
+from extract.documents.model import Cell
+from extract.model import Where
+
+Placer = Callable[[int, int], Where]
+"""From a cell's row and column in its table (from 0) to its place in the file."""
+
+
+def column_letters(column: int) -> str:
+    """A spreadsheet's name for a column that is counted from 0: A, B ... Z, AA ..."""
+    letters = ""
+    column += 1
+    while column:
+        column, rest = divmod(column - 1, 26)
+        letters = chr(ord("A") + rest) + letters
+    return letters
+
+
+def address(row: int, column: int) -> str:
+    """A spreadsheet's name for a cell whose row and column count from 0: (6, 1) is B7."""
+    return f"{column_letters(column)}{row + 1}"
+
+
+class PlacedCell(Cell):
+    """A plain cell of a list: one row, one column, its place worked out on demand.
+
+    A list of 20,000 parts has 400,000 cells and a `Where` of its own for each would cost more memory than the list.
+    """
+
+    __slots__ = ("_placer",)
+
+    row_span = 1  # type: ignore[misc,assignment]  # constants instead of slots: less to fill for each cell
+    column_span = 1  # type: ignore[misc,assignment]
+    header = False  # type: ignore[misc,assignment]
+    confidence = 1.0  # type: ignore[misc,assignment]
+
+    def __init__(self, text: str, row: int, column: int, placer: Placer) -> None:
+        _set_text(self, text)
+        _set_row(self, row)
+        _set_column(self, column)
+        _set_placer(self, placer)
+
+    @property
+    def where(self) -> Where:  # type: ignore[override]
+        """The cell's place in the file."""
+        return self._placer(self.row, self.column)  # type: ignore[attr-defined,no-any-return]
+
+
+# The slots' own setters go past the refusal to write that freezes the base class.
+_set_text = Cell.text.__set__  # type: ignore[attr-defined]
+_set_row = Cell.row.__set__  # type: ignore[attr-defined]
+_set_column = Cell.column.__set__  # type: ignore[attr-defined]
+_set_placer = PlacedCell._placer.__set__  # type: ignore[attr-defined]
+
+
+def placed_cells(rows: list[list[str]], placer: Placer) -> tuple[Cell, ...]:
+    """Cells of all texts that are not empty; a text that repeats is held once."""
+    known: dict[str, str] = {}
+    return tuple(
+        PlacedCell(known.setdefault(text, text), row, column, placer)
+        for row, texts in enumerate(rows)
+        for column, text in enumerate(texts)
+        if text
+    )
