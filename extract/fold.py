@@ -1,0 +1,114 @@
+"""One form for every glyph that sheets print in several: signs, dashes, tildes, widths, units drawn as one character.
+
+`fold` changes no meaning and no reading order. It may change the length of a text, so search for positions in folded
+text only; folding twice gives the same as folding once.
+"""
+
+from __future__ import annotations
+
+import re
+import unicodedata
+from functools import lru_cache
+
+# Symbol-font codes that a PDF leaves as private-use characters (code point minus 0xF000).
+# Adobe, "Symbol Set and Encoding" (PDF Reference 1.7, appendix D.5).
+_SYMBOL_FONT = {
+    0x22: "∀", 0x2A: "*", 0x2D: "-", 0x44: "Δ", 0x46: "Φ", 0x47: "Γ", 0x51: "Θ", 0x57: "Ω", 0x61: "α", 0x62: "β",
+    0x64: "δ", 0x65: "ε", 0x66: "φ", 0x67: "γ", 0x6C: "λ", 0x6D: "μ", 0x70: "π", 0x71: "θ", 0x72: "ρ", 0x73: "σ",
+    0x74: "τ", 0x77: "ω", 0x7E: "~", 0xA2: "'", 0xA3: "≤", 0xA5: "∞", 0xAE: "→", 0xB0: "°", 0xB1: "±", 0xB2: '"',
+    0xB3: "≥", 0xB4: "×", 0xB7: "•", 0xB8: "÷", 0xB9: "≠", 0xBB: "≈", 0xBC: "…", 0xD6: "√", 0xD7: "·",
+}  # fmt: skip
+
+_ONE_FOR_ONE = {
+    # Dashes; which of them is a minus and which a range only the numbers around it can tell.
+    **dict.fromkeys("‐‑‒–—―−﹣－﹘⁃➖", "-"),
+    # Tildes, all of them range signs. "÷" is one in Italian and Eastern European sheets.
+    **dict.fromkeys("～〜∼˜⁓∽﹏", "~"),
+    **dict.fromkeys("÷", "~"),
+    **dict.fromkeys("⋯‥┅…", "…"),
+    **dict.fromkeys("º˚∘⁰ᵒ", "°"),
+    **dict.fromkeys("∆△▵", "Δ"),
+    **dict.fromkeys("≦⩽≲≼", "≤"),
+    **dict.fromkeys("≧⩾≳≽", "≥"),
+    **dict.fromkeys("✕✖⨯╳", "×"),
+    **dict.fromkeys("∙⋅", "·"),
+    **dict.fromkeys("⁄∕", "/"),
+    **dict.fromkeys("【〔〖", "["),
+    **dict.fromkeys("】〕〗", "]"),
+    **dict.fromkeys("〈《", "<"),
+    **dict.fromkeys("〉》", ">"),
+    **dict.fromkeys("\u00a0\u2000\u2001\u2002\u2003\u2004\u2005\u2006\u2007\u2008\u2009\u200a\u202f\u205f\u3000\t", " "),
+    **dict.fromkeys("\u00ad\u200b\u200c\u200d\u2060\ufeff", ""),
+    "µ": "μ",
+    "Ω": "Ω",
+    "ϕ": "φ",
+    **dict.fromkeys("\u2018\u2019\u02bc\u2032", "'"),
+    **dict.fromkeys("\u201c\u201d\u2033", '"'),
+    "\r": "\n",
+    "\v": "\n",
+    "\f": "\n",
+    "\u2028": "\n",
+    "\x85": "\n",
+}
+_TRANSLATE = str.maketrans(
+    {**_ONE_FOR_ONE, **{chr(0xF000 + code): chr(code) for code in range(0x20, 0x7F)}}
+    | {chr(0xF000 + code): glyph for code, glyph in _SYMBOL_FONT.items()}
+)
+
+_SUPERSCRIPTS = str.maketrans("⁰¹²³⁴⁵⁶⁷⁸⁹⁺⁻", "0123456789+-")
+_SUPERSCRIPT_RUN = re.compile("[⁻⁺]?[¹²³⁴⁵⁶⁷⁸⁹][⁰¹²³⁴⁵⁶⁷⁸⁹]*|[⁻⁺][⁰¹²³⁴⁵⁶⁷⁸⁹]+")
+
+# UTF-8 read as Windows-1252, the commonest mojibake of pasted mail and shop lists.
+_MOJIBAKE = {"Â±": "±", "Â°": "°", "Âµ": "μ", "Î¼": "μ", "Î©": "Ω", "â„¦": "Ω", "Ã—": "×", "â€“": "-", "â‰¤": "≤", "Â²": "²"}
+_MOJIBAKE_RUN = re.compile("|".join(map(re.escape, _MOJIBAKE)))
+
+_SPELT = [
+    (re.compile(r"\+\s?/\s?-|-\s?/\s?\+|\+-(?=\s?[\d.])"), "±"),
+    (re.compile(r"<\s?=|=\s?<"), "≤"),
+    (re.compile(r">\s?=|=\s?>"), "≥"),
+    (re.compile(r"\.{2,}"), "…"),
+    # A recogniser's reading of ±; the character is the Chinese word for earth, never printed before a number.
+    (re.compile(r"土(?=\s?\d)"), "±"),
+    (re.compile(r" {2,}"), " "),
+    (re.compile(r" ?\n[ \n]*"), "\n"),
+]
+
+
+@lru_cache(maxsize=65536)
+def fold(text: str) -> str:
+    """`text` with one glyph for each sign: "－４０℃～＋８５℃" and "−40 °C – +85 °C" come out in the same characters.
+
+    Dashes and minus signs become "-", tildes "~", dots of a range "…", micro "μ", ohm "Ω", "+/-" "±", full-width
+    characters their plain ones, "㏀" "kΩ", "℃" "°C", a raised exponent "^-6", Symbol-font code points what the page shows.
+    Runs of spaces become one, line breaks stay.
+    """
+    if "Â" in text or "Î" in text or "â" in text or "Ã" in text:
+        text = _MOJIBAKE_RUN.sub(lambda found: _MOJIBAKE[found[0]], text)
+    if not text.isascii():
+        text = _SUPERSCRIPT_RUN.sub(lambda found: "^" + found[0].translate(_SUPERSCRIPTS), text)
+        text = unicodedata.normalize("NFKC", text.translate(_TRANSLATE)).translate(_TRANSLATE)
+    else:
+        text = text.translate(_TRANSLATE)
+    for pattern, instead in _SPELT:
+        text = pattern.sub(instead, text)
+    return text.strip()
+
+
+def key(text: str) -> str:
+    """What is left of a folded text when case, spaces and punctuation are gone: two labels with one key are one label.
+
+    Accents go too ("Capacité" and "Capacite" are both printed), kana and ideographs stay.
+    """
+    return _key(text)
+
+
+@lru_cache(maxsize=65536)
+def _key(text: str) -> str:
+    folded = fold(text).casefold()
+    if not folded.isascii():
+        folded = "".join(c for c in unicodedata.normalize("NFD", folded) if c not in _ACCENTS)
+        folded = unicodedata.normalize("NFC", folded)
+    return "".join(c for c in folded if c.isalnum() or c == "/")
+
+
+_ACCENTS = frozenset("\u0300\u0301\u0302\u0303\u0304\u0306\u0308\u030a\u030c\u0327\u0328")

@@ -1,0 +1,105 @@
+"""Everything that `wording/*.toml` says, loaded once: a word or label is found by its key (`fold.key`).
+
+A language is a file there, a maker's wording a line; nothing here names either. Two files may give the same word the
+same meaning; a label claimed by two fields stops the program at once, because every sheet read after it would be wrong.
+"""
+
+from __future__ import annotations
+
+import tomllib
+from collections.abc import Iterable
+from dataclasses import dataclass, field
+from functools import cache
+from importlib import resources
+from typing import Any
+
+from extract.fields import fields
+from extract.fold import fold, key
+
+_SECTIONS = {
+    "labels", "symbols", "shared", "shared_symbols", "weak", "traps", "bounds", "roles", "identity", "attributes", "modes",
+    "mode_codes", "cuts", "phrases", "oscillator", "language",
+}  # fmt: skip
+
+
+@dataclass(frozen=True)
+class Vocabulary:
+    """Words of all languages together. Every dictionary but `phrases` goes from a key to a meaning.
+
+    `phrases` holds, for each meaning, the wordings as folded and lower case, longest first, for use in patterns.
+    """
+
+    languages: tuple[str, ...] = ()
+    labels: dict[str, str] = field(default_factory=dict)
+    symbols: dict[str, str] = field(default_factory=dict)
+    shared: dict[str, tuple[str, ...]] = field(default_factory=dict)
+    weak: frozenset[str] = frozenset()
+    traps: dict[str, str] = field(default_factory=dict)
+    bounds: dict[str, str] = field(default_factory=dict)
+    roles: dict[str, str] = field(default_factory=dict)
+    identity: dict[str, str] = field(default_factory=dict)
+    attributes: dict[str, str] = field(default_factory=dict)
+    modes: dict[str, str] = field(default_factory=dict)
+    mode_codes: dict[str, str] = field(default_factory=dict)
+    cuts: dict[str, str] = field(default_factory=dict)
+    oscillator: dict[str, str] = field(default_factory=dict)
+    phrases: dict[str, tuple[str, ...]] = field(default_factory=dict)
+
+
+class WordingError(ValueError):
+    """A wording file that contradicts itself or another one; says which wording and which two meanings."""
+
+
+@cache
+def vocabulary() -> Vocabulary:
+    """The whole of `wording/`, in order of file name."""
+    folder = resources.files("extract").joinpath("wording")
+    files = sorted((f for f in folder.iterdir() if f.name.endswith(".toml")), key=lambda f: f.name)
+    return gather((f.name, tomllib.loads(f.read_text(encoding="utf-8"))) for f in files)
+
+
+def gather(tables: Iterable[tuple[str, dict[str, Any]]]) -> Vocabulary:
+    """One vocabulary from (file name, parsed table) pairs.
+
+    Raises
+    ------
+    WordingError
+        A section or field that does not exist, or a label that two fields claim.
+    """
+    found: dict[str, Any] = {name: {} for name in _SECTIONS - {"language", "weak"}}
+    weak: set[str] = set()
+    languages = []
+    for name, table in tables:
+        if unknown := set(table) - _SECTIONS:
+            raise WordingError(f"{name}: no section called {sorted(unknown)[0]!r}")
+        languages.append(table.get("language", name))
+        weak |= {key(word) for word in table.get("weak", {}).get("labels", [])}
+        for section in ("labels", "symbols"):
+            _claim_fields(found[section], table.get(section, {}), name)
+        for section in ("shared", "shared_symbols"):
+            found[section] |= {key(word): tuple(names) for word, names in table.get(section, {}).items()}
+        for section in ("traps", "bounds", "roles", "identity", "attributes", "modes", "mode_codes", "cuts", "oscillator"):
+            for meaning, words in table.get(section, {}).items():
+                for word in words:
+                    found[section].setdefault(key(word) or fold(word), meaning)
+        for section in ("phrases", "bounds"):
+            for meaning, words in table.get(section, {}).items():
+                found["phrases"].setdefault(meaning, []).extend(fold(word).casefold() for word in words)
+    shared = found.pop("shared") | found.pop("shared_symbols")
+    if both := shared.keys() & (found["labels"].keys() | found["symbols"].keys()):
+        raise WordingError(f"{sorted(both)[0]!r} is the label of one field and of several")
+    found["phrases"] = {
+        meaning: tuple(sorted(set(words), key=lambda word: (-len(word), word)))
+        for meaning, words in found["phrases"].items()
+    }
+    return Vocabulary(languages=tuple(languages), weak=frozenset(weak), shared=shared, **found)
+
+
+def _claim_fields(claimed: dict[str, str], table: dict[str, list[str]], name: str) -> None:
+    for field_name, words in table.items():
+        if field_name not in fields():
+            raise WordingError(f"{name}: no field called {field_name!r}")
+        for word in words:
+            other = claimed.setdefault(key(word), field_name)
+            if other != field_name:
+                raise WordingError(f"{name}: {word!r} is claimed by {other} and {field_name}")
