@@ -34,7 +34,9 @@ _NAMES = {
 # How often each is met at all; a file in a rare one must read clearly better in it.
 _COMMONNESS = {"euc_jp": 0.8, "big5": 0.8, "cp1250": 0.78}
 # Everyday syllables: Chinese read as Korean gives any of 2,350 syllables, Korean mostly these.
-_KOREAN_SYLLABLES = frozenset("의이다는을를에로하고가한지기도수사용부온정전주파허차동작범위저항량대최소준격제품류력압형")
+_KOREAN_SYLLABLES = frozenset(
+    "의이다는을를에로하고가한지기도수사용부온정전주파허차동작범위저항량대최소준격제품류력압형"
+)
 _SAMPLE = 4000  # characters beyond ASCII that are weighed
 _CLEAR_LEAD = 0.15
 _TRADE_SIGNS = frozenset("°±µ²³×·–—“”„‘’…€§«»")
@@ -56,12 +58,14 @@ def decode(data: bytes, *, declared: str | None = None) -> tuple[str, tuple[Note
             return data.decode(encoding, errors="replace").lstrip("\ufeff"), ()
     if utf16 := _unmarked_utf16(data):
         return data.decode(utf16, errors="replace"), ()
-    for encoding in ("utf-8", _superset(declared)):
-        text = _strictly(data, encoding) if encoding else None
+    for likely in ("utf-8", _superset(declared)):
+        text = _strictly(data, likely) if likely else None
         if text is not None:
             return text, ()
     if (mended := _damaged_utf8(data)) is not None:
-        return mended, (_note("Some characters are damaged (broken UTF-8); they show as \ufffd. Look at the original."),)
+        return mended, (
+            _note("Some characters are damaged (broken UTF-8); they show as \ufffd. Look at the original."),
+        )
     return _most_likely(data)
 
 
@@ -121,7 +125,9 @@ def _most_likely(data: bytes) -> tuple[str, tuple[Note, ...]]:
             scored.append((_likelihood(text, encoding), -preference, encoding, text))
     if not scored:
         text = data.decode("cp1252", errors="replace")
-        return text, (_note("The text's encoding cannot be told; damaged characters show as \ufffd. Save it as UTF-8."),)
+        return text, (
+            _note("The text's encoding cannot be told; damaged characters show as \ufffd. Save it as UTF-8."),
+        )
     scored.sort(reverse=True)
     best, _, encoding, text = scored[0]
     rivals = [other for other in scored[1:] if other[3] != text]
@@ -220,15 +226,18 @@ def _european(before: str, character: str, after: str) -> float:
         return 0.2 if inside_a_word else 1.0
     if character == "\xa0":
         return 0.8
-    if not character.isalpha():
-        return 0.2
+    return _letter(before, character, after) if character.isalpha() else 0.2
+
+
+def _letter(before: str, character: str, after: str) -> float:
+    """Weight of a letter of an alphabet between its neighbours."""
     if not before.isalpha() and not after.isalpha():
         return 0.5
     scripts = {_script(neighbour) for neighbour in (before, character, after) if neighbour.isalpha()}
-    if len(scripts) > 1:
-        return 0.0
     if scripts == {"CYRILLIC"}:
         return 0.9 if character.islower() else 0.5
+    if len(scripts) > 1:
+        return 0.0
     if (before.islower() and character.isupper()) or (before > "\x7f" and before.isalpha()):
         return 0.2
     return 1.0 if character in "äöüÄÖÜßéèêàçùâîôëïûñóíáúòìøåæØÅÆ" else 0.8

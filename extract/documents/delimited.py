@@ -6,6 +6,7 @@ import csv
 from collections import Counter
 from collections.abc import Iterable, Iterator
 from itertools import islice
+from typing import Literal
 
 from extract.documents.decoding import decode
 from extract.documents.grid import Placer, address, placed_cells
@@ -24,7 +25,7 @@ class _Records:
     def __init__(self, lines: list[str], delimiter: str, *, quoted: bool = True) -> None:
         self.texts: list[list[str]] = []
         self.first_lines: list[int] = []
-        quoting = csv.QUOTE_MINIMAL if quoted else csv.QUOTE_NONE
+        quoting: Literal[0, 3] = csv.QUOTE_MINIMAL if quoted else csv.QUOTE_NONE
         reader = csv.reader(lines, delimiter=delimiter, quoting=quoting, skipinitialspace=delimiter != "\t")
         line = 1
         for texts in reader:

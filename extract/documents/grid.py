@@ -34,10 +34,12 @@ class PlacedCell(Cell):
 
     __slots__ = ("_placer",)
 
-    row_span = 1  # type: ignore[misc,assignment]  # constants instead of slots: less to fill for each cell
-    column_span = 1  # type: ignore[misc,assignment]
-    header = False  # type: ignore[misc,assignment]
-    confidence = 1.0  # type: ignore[misc,assignment]
+    _placer: Placer
+
+    row_span = 1  # constants instead of slots: less to fill for each cell
+    column_span = 1
+    header = False
+    confidence = 1.0
 
     def __init__(self, text: str, row: int, column: int, placer: Placer) -> None:
         _set_text(self, text)
@@ -46,16 +48,14 @@ class PlacedCell(Cell):
         _set_placer(self, placer)
 
     @property
-    def where(self) -> Where:  # type: ignore[override]
+    def where(self) -> Where:
         """The cell's place in the file."""
-        return self._placer(self.row, self.column)  # type: ignore[attr-defined,no-any-return]
+        return self._placer(self.row, self.column)
 
 
 # The slots' own setters go past the refusal to write that freezes the base class.
-_set_text = Cell.text.__set__  # type: ignore[attr-defined]
-_set_row = Cell.row.__set__  # type: ignore[attr-defined]
-_set_column = Cell.column.__set__  # type: ignore[attr-defined]
-_set_placer = PlacedCell._placer.__set__  # type: ignore[attr-defined]
+_set_text, _set_row, _set_column = (vars(Cell)[name].__set__ for name in ("text", "row", "column"))
+_set_placer = vars(PlacedCell)["_placer"].__set__
 
 
 def placed_cells(rows: list[list[str]], placer: Placer) -> tuple[Cell, ...]:

@@ -70,11 +70,13 @@ def _read_zip(data: bytes, suffix: str) -> Document:
         from extract.documents import worddoc
 
         return worddoc.read(data)
-    if suffix == ".xlsx" or suffix == ".ods" or suffix == ".xlsm":
+    if suffix in (".xlsx", ".xlsm", ".ods"):
         raise DocumentError("The file is a ZIP archive but no workbook. Save the workbook again as XLSX.")
     if suffix == ".docx":
         raise DocumentError("The file is a ZIP archive but no Word document. Save the document again as DOCX.")
-    raise DocumentError(f"The file is a ZIP archive that is no document. Unpack it and give the sheets in it. {_HOW_TO_SAVE}")
+    raise DocumentError(
+        f"The file is a ZIP archive that is no document. Unpack it and give the sheets in it. {_HOW_TO_SAVE}"
+    )
 
 
 def _read_old_office(data: bytes, suffix: str) -> Document:
@@ -106,11 +108,17 @@ def _read_text(data: bytes, suffix: str) -> Document:
     head = data[:4096].replace(b"\0", b"")
     is_web_name = suffix in (".html", ".htm", ".xhtml", ".mht", ".mhtml")
     if suffix not in (".md", ".markdown", ".eml") and (
-        len(_HTML_TAGS.findall(head)) > 2 or re.match(rb"(?:\xef\xbb\xbf)?\s*<(?:!doctype html|html)", head, re.I) or is_web_name
+        len(_HTML_TAGS.findall(head)) > 2
+        or re.match(rb"(?:\xef\xbb\xbf)?\s*<(?:!doctype html|html)", head, re.I)
+        or is_web_name
     ):
         return webpage.read(data)
     content, _ = decode(data)
-    if suffix not in (".md", ".markdown", ".eml") and not text.is_markdown(content) and delimited.looks_delimited(content):
+    if (
+        suffix not in (".md", ".markdown", ".eml")
+        and not text.is_markdown(content)
+        and delimited.looks_delimited(content)
+    ):
         return delimited.read(data)
     return text.read(data)
 

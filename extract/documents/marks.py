@@ -14,7 +14,7 @@ def raised(text: str, before: str) -> str:
     >>> raised("rd", "3")
     'rd'
     >>> raised("1", "60 Ω")
-    '⁽¹⁾'
+    ' ⁽¹⁾'
     >>> raised("1)", "max.")
     ' ⁽¹⁾'
     >>> raised("2", "ppm/°C")
@@ -34,7 +34,7 @@ def raised(text: str, before: str) -> str:
 
 
 def _is_exponent(text: str, before: str) -> bool:
-    """Whether a raised number is a power: of ten, or of a unit after a stroke or multiplication; else it marks a footnote."""
+    """Whether a raised number is a power, of ten or of a unit; else it marks a footnote."""
     if not set(text) <= _EXPONENT:
         return False
     base = before.rstrip()

@@ -6,7 +6,7 @@ import html
 import re
 from collections.abc import Iterator, Sequence
 
-from extract.documents import columns, marks
+from extract.documents import marks, spacing
 from extract.documents.decoding import decode
 from extract.documents.model import Cell, Document, Line, Segment, Table
 from extract.model import Note, Where
@@ -80,7 +80,7 @@ def _blocks(lines: Numbered) -> Iterator[Table | Line]:
             yield table
             index += run
             continue
-        if text.strip() and not columns.is_rule(text):
+        if text.strip() and not spacing.is_rule(text):
             following = lines[index + 1][1] if index + 1 < len(lines) else ""
             yield _line(number, text, underlined=bool(_UNDERLINE.match(following)) and len(text.strip()) < 80)
         index += 1
@@ -144,10 +144,7 @@ def _pipe_cells(text: str) -> list[str]:
     inner = text.translate(_VERTICALS).strip()
     inner = inner[1:] if inner.startswith("|") else inner
     inner = inner[:-1] if inner.endswith("|") and not inner.endswith("\\|") else inner
-    return [
-        _BREAK.sub("\n", cell.replace("\\|", "|")).strip()
-        for cell in re.split(r"(?<!\\)\|", inner)
-    ]
+    return [_BREAK.sub("\n", cell.replace("\\|", "|")).strip() for cell in re.split(r"(?<!\\)\|", inner)]
 
 
 def _column_run(lines: Numbered, start: int) -> int:
@@ -157,10 +154,10 @@ def _column_run(lines: Numbered, start: int) -> int:
         text = lines[end][1]
         if not text.strip() or text.lstrip().startswith(">"):
             break
-        if not columns.is_rule(text) and len(columns.pieces(text)) < 2 and not _is_continuation(lines, start, end):
+        if not spacing.is_rule(text) and len(spacing.pieces(text)) < 2 and not _is_continuation(lines, start, end):
             break
         end += 1
-    while end > start and columns.is_rule(lines[end - 1][1]):
+    while end > start and spacing.is_rule(lines[end - 1][1]):
         end -= 1
     return end - start
 
@@ -171,16 +168,16 @@ def _is_continuation(lines: Numbered, start: int, index: int) -> bool:
         return False
     indent = len(lines[index][1]) - len(lines[index][1].lstrip())
     return indent >= 8 and any(
-        abs(piece.start - indent) <= 1 for piece in columns.pieces(lines[index - 1][1].expandtabs(8))
+        abs(piece.start - indent) <= 1 for piece in spacing.pieces(lines[index - 1][1].expandtabs(8))
     )
 
 
 def _spaced_table(lines: Numbered) -> Table | None:
     if all("\t" in text for _, text in lines):
-        tabbed = columns.by_tabs(lines)
+        tabbed = spacing.by_tabs(lines)
         if tabbed:
             return tabbed
-    return columns.by_position(lines)
+    return spacing.by_position(lines)
 
 
 def _line(number: int, text: str, *, underlined: bool) -> Line:
@@ -198,7 +195,7 @@ def _line(number: int, text: str, *, underlined: bool) -> Line:
 def _segments(text: str) -> list[str]:
     """Pieces of a line, and within a piece each KEY=VALUE or each `label: value` between semicolons."""
     found: list[str] = []
-    for piece in columns.pieces(text):
+    for piece in spacing.pieces(text):
         keys = [part.strip() for part in _KEY.split(piece.text) if part.strip()]
         if len(keys) > 1 and sum("=" in part for part in keys) > 1:
             found.extend(keys)

@@ -1,4 +1,4 @@
-"""Web pages: tables with their spans, definition lists, headings, paragraphs and list items in the order of the page."""
+"""Web pages: tables with their spans, definition lists, headings, paragraphs and list items in the page's order."""
 
 from __future__ import annotations
 
@@ -10,22 +10,30 @@ from lxml import etree
 from lxml import html as lxml_html
 
 from extract.documents import marks
-from extract.documents.columns import pieces
 from extract.documents.decoding import decode
 from extract.documents.grid import address
 from extract.documents.model import Cell, Document, DocumentError, Line, Segment, Table
+from extract.documents.spacing import pieces
 from extract.model import Note, Where
 
 _DROPPED = frozenset(
-    "script style nav noscript template svg math iframe object select option button input textarea head title link meta".split()
-)
+    {
+        "script", "style", "nav", "noscript", "template", "svg", "math", "iframe", "object", "select", "option",
+        "button", "input", "textarea", "head", "title", "link", "meta",
+    }
+)  # fmt: skip
 _STRUCK = frozenset({"del", "s", "strike"})
 _BLOCKS = frozenset(
-    "p div section article main header footer aside ul ol li dl dt dd h1 h2 h3 h4 h5 h6 pre blockquote figure figcaption"
-    " form fieldset address details summary center hr tr td th caption table body html".split()
-)
+    {
+        "p", "div", "section", "article", "main", "header", "footer", "aside", "ul", "ol", "li", "dl", "dt", "dd",
+        "h1", "h2", "h3", "h4", "h5", "h6", "pre", "blockquote", "figure", "figcaption", "form", "fieldset",
+        "address", "details", "summary", "center", "hr", "tr", "td", "th", "caption", "table", "body", "html",
+    }
+)  # fmt: skip
 _HEADINGS = frozenset({"h1", "h2", "h3", "h4", "h5", "h6"})
-_META = re.compile(rb"""<meta[^>]+charset\s*=\s*["']?\s*([\w-]+)|<\?xml[^>]+encoding\s*=\s*["']([\w-]+)""", re.IGNORECASE)
+_META = re.compile(
+    rb"""<meta[^>]+charset\s*=\s*["']?\s*([\w-]+)|<\?xml[^>]+encoding\s*=\s*["']([\w-]+)""", re.IGNORECASE
+)
 _SPACES = re.compile(r"[ \t\r\n\f\u00a0\u2002-\u200a\u202f]+")
 _MOST_SPAN = 1000
 
@@ -63,7 +71,7 @@ class _Page:
     tables: int = 0
     term: list[str] = field(default_factory=list)
     words: list[str] = field(default_factory=list)
-    line: int = 1
+    line_number: int = 1
     heading: bool = False
 
     def walk(self, element: etree._Element) -> None:
@@ -84,7 +92,7 @@ class _Page:
         is_block = tag in _BLOCKS
         if is_block or tag == "br":
             self.close()
-            self.line = element.sourceline or self.line
+            self.line_number = _line_of(element, self.line_number)
         if tag in _HEADINGS:
             self.heading = True
         if not is_block and tag != "br" and not len(element):
@@ -99,7 +107,7 @@ class _Page:
     def _content(self, element: etree._Element, *, keep_lines: bool) -> None:
         if keep_lines:
             for offset, line in enumerate("".join(str(part) for part in element.itertext()).split("\n")):
-                self.line = (element.sourceline or self.line) + offset
+                self.line_number = (_line_of(element, self.line_number)) + offset
                 self.words.append(line)
                 self.close(keep_gaps=True)
             return
@@ -118,7 +126,7 @@ class _Page:
             tidy = _SPACES.sub(" ", text).strip()
             texts = [tidy] if tidy else []
         if texts:
-            where = Where(line=self.line)
+            where = Where(line=self.line_number)
             self.blocks.append(Line(tuple(Segment(part, where) for part in texts), where, heading=self.heading))
 
     def _definitions(self, element: etree._Element) -> None:
@@ -139,7 +147,7 @@ class _Page:
         parts = [part for part in (term, description) if part is not None]
         texts = [text for part in parts if (text := cell_text(part))]
         if texts:
-            first, last = (Where(line=part.sourceline or self.line) for part in (parts[0], parts[-1]))
+            first, last = (Where(line=_line_of(part, self.line_number)) for part in (parts[0], parts[-1]))
             places = (first, last)[: len(texts)]
             self.blocks.append(
                 Line(tuple(Segment(text, where) for text, where in zip(texts, places, strict=True)), first)
@@ -156,6 +164,11 @@ class _Page:
         if table.cells:
             self.blocks.append(table)
         self.notes.extend(struck)
+
+
+def _line_of(element: etree._Element, otherwise: int) -> int:
+    found: object = element.sourceline
+    return found if isinstance(found, int) else otherwise
 
 
 def _is_hidden(element: etree._Element) -> bool:
@@ -242,18 +255,16 @@ def _inline(child: etree._Element, before: str) -> str:
     tag = child.tag.lower() if isinstance(child.tag, str) else ""
     if tag in _DROPPED or tag in _STRUCK or _is_hidden(child):
         return ""
-    if tag == "br":
-        return "\n"
-    if tag == "img":
-        return child.get("alt") or ""
-    if tag == "sup":
-        return marks.raised(_flow(child, before), before)
+    if tag in ("br", "img"):
+        return "\n" if tag == "br" else child.get("alt") or ""
     inner = _flow(child, before)
+    if tag == "sup":
+        return marks.raised(inner, before)
     if tag == "sub":
         return marks.lowered(inner)
     if tag in ("td", "th"):
         return inner + "  "
     if tag in _BLOCKS and inner.strip():
         start = "" if not before.strip() or before.endswith("\n") else "\n"
-        return start + inner.strip(" ") + "\n"
+        inner = start + inner.strip(" ") + "\n"
     return inner

@@ -1,0 +1,145 @@
+"""Columns that are held together by spaces or tabs alone: lines of typewriter text to tables."""
+
+from __future__ import annotations
+
+import re
+import unicodedata
+from collections.abc import Sequence
+from dataclasses import dataclass
+
+from extract.documents.model import Cell, Table
+from extract.model import Where
+
+LEAST_LINES = 3
+_GAP = re.compile(r"[ \u00a0]{2,}|\u3000+|\t+")
+_LEADER = re.compile(r"(?<=[^\s.·…_])\s?(?:\.{3,}|…{2,}|·{3,}|(?:\s\.){3,}|_{4,})\s*(?=\S)")
+_RULE = re.compile(r"\s*(?:[-=_─━=*+|│]{3,}\s*)+$")
+
+
+@dataclass(frozen=True, slots=True)
+class Piece:
+    """A run of words and the printed positions that it covers, `end` not included."""
+
+    text: str
+    start: int
+    end: int
+
+
+def is_rule(text: str) -> bool:
+    """Whether a line is only drawn: dashes, equals signs, the border of a box."""
+    return bool(_RULE.match(text))
+
+
+def printed_width(text: str) -> int:
+    """Positions that a text covers; East Asian signs are two wide."""
+    return sum(
+        0 if unicodedata.combining(character) else 2 if unicodedata.east_asian_width(character) in "WF" else 1
+        for character in text
+    )
+
+
+def pieces(text: str) -> list[Piece]:
+    """Runs of words of a line, parted by tabs, by two or more spaces, a wide space or leader dots."""
+    text = _LEADER.sub(lambda dots: " " * max(2, len(dots.group())), text.expandtabs(8))
+    found, position = [], 0
+    for match in re.finditer(_GAP.pattern + r"|$", text):
+        run = text[position : match.start()]
+        if run.strip():
+            start = printed_width(text[:position]) + len(run) - len(run.lstrip())
+            found.append(Piece(run.strip(), start, printed_width(text[: match.start()])))
+        position = match.end()
+    return found
+
+
+def by_position(lines: Sequence[tuple[int, str]]) -> Table | None:
+    """A table of lines (number, text) whose pieces stand in common columns, or None where they do not."""
+    printed = [(number, pieces(text)) for number, text in lines if not is_rule(text)]
+    if len(printed) < LEAST_LINES:
+        return None
+    columns = _columns([row for _, row in printed])
+    if len(columns) < 2 or not _holds(printed, columns):
+        return None
+    cells: list[Cell] = []
+    for row, (number, found) in enumerate(printed):
+        cells.extend(_row_cells(row, Where(line=number), found, columns))
+    return Table(tuple(cells), len(printed), len(columns), Where(line=printed[0][0]), ruled=False)
+
+
+def by_tabs(lines: Sequence[tuple[int, str]]) -> Table | None:
+    """A table of lines with the same number of tabs in each, or None."""
+    rows = [(number, text.split("\t")) for number, text in lines]
+    width = len(rows[0][1])
+    if width < 2 or len(rows) < 2 or any(len(texts) != width for _, texts in rows):
+        return None
+    cells = [
+        Cell(text.strip(), row, column, Where(line=number))
+        for row, (number, texts) in enumerate(rows)
+        for column, text in enumerate(texts)
+        if text.strip()
+    ]
+    return Table(tuple(cells), len(rows), width, Where(line=rows[0][0]), ruled=False)
+
+
+def _columns(rows: Sequence[Sequence[Piece]]) -> list[tuple[int, int]]:
+    """Stretches of positions that are printed on, parted where (almost) no line prints; a stray title may cross."""
+    width = max((piece.end for row in rows for piece in row), default=0)
+    cover = [0] * (width + 1)
+    for row in rows:
+        for piece in row:
+            for position in range(piece.start, piece.end):
+                cover[position] += 1
+    may_cross = len(rows) // 6
+    columns: list[tuple[int, int]] = []
+    start = None
+    for position, count in enumerate(cover):
+        if count > may_cross and start is None:
+            start = position
+        elif count <= may_cross and start is not None:
+            columns.append((start, position))
+            start = None
+    strays = [
+        (piece.start, piece.end)
+        for row in rows
+        for piece in row
+        if not any(piece.start < end and start < piece.end for start, end in columns)
+    ]
+    return _merged(sorted(columns + strays))
+
+
+def _merged(stretches: Sequence[tuple[int, int]]) -> list[tuple[int, int]]:
+    merged: list[tuple[int, int]] = []
+    for start, end in stretches:
+        if merged and start < merged[-1][1]:
+            merged[-1] = (merged[-1][0], max(end, merged[-1][1]))
+        else:
+            merged.append((start, end))
+    return merged
+
+
+def _holds(printed: Sequence[tuple[int, Sequence[Piece]]], columns: Sequence[tuple[int, int]]) -> bool:
+    """Whether the lines really share the columns: most lines fill two or more, most columns are filled repeatedly."""
+    filled = [0] * len(columns)
+    full_lines = 0
+    for _, row in printed:
+        touched = {index for piece in row for index in _touched(piece, columns)}
+        full_lines += len(touched) > 1
+        for index in touched:
+            filled[index] += 1
+    return full_lines * 3 >= len(printed) * 2 and sum(count > 1 for count in filled) >= 2
+
+
+def _touched(piece: Piece, columns: Sequence[tuple[int, int]]) -> list[int]:
+    return [index for index, (start, end) in enumerate(columns) if piece.start < end and start < piece.end]
+
+
+def _row_cells(row: int, where: Where, found: Sequence[Piece], columns: Sequence[tuple[int, int]]) -> list[Cell]:
+    cells: list[Cell] = []
+    for piece in found:
+        touched = _touched(piece, columns)
+        if cells and cells[-1].column + cells[-1].column_span > touched[0]:
+            before = cells.pop()
+            span = max(touched[-1] + 1 - before.column, before.column_span)
+            cells.append(Cell(f"{before.text}  {piece.text}", row, before.column, where, column_span=span))
+        else:
+            cells.append(Cell(piece.text, row, touched[0], where, column_span=len(touched)))
+    return cells
