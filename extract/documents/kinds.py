@@ -8,15 +8,31 @@ import zipfile
 from pathlib import PurePath
 
 from extract.documents.model import Document, DocumentError
+from extract.model import Kind
 
 _PICTURES = (b"\x89PNG\r\n\x1a\n", b"\xff\xd8\xff", b"II*\0", b"MM\0*", b"BM", b"GIF8")
 _OLD_OFFICE = b"\xd0\xcf\x11\xe0\xa1\xb1\x1a\xe1"
 _HTML_TAGS = re.compile(
     rb"<(?:!doctype\s+html|html|head|body|table|div|dl|ul|ol|h[1-6]|p|span|article|section|tr|td|meta)\b", re.IGNORECASE
 )
+# The suffixes by which a folder's sheets are told from its other files; what such a file is, its bytes decide.
+SHEET_SUFFIXES: dict[str, Kind] = {
+    ".pdf": "pdf",
+    **dict.fromkeys((".xlsx", ".xlsm", ".xls", ".ods"), "xlsx"),
+    **dict.fromkeys((".csv", ".tsv", ".tab", ".psv"), "csv"),
+    **dict.fromkeys((".html", ".htm", ".xhtml"), "html"),
+    ".docx": "docx",
+    **dict.fromkeys((".txt", ".md", ".markdown", ".eml", ".text"), "text"),
+    **dict.fromkeys((".png", ".jpg", ".jpeg", ".tif", ".tiff", ".bmp", ".gif"), "image"),
+}
 _DELIMITED_NAMES = frozenset({".csv", ".tsv", ".tab", ".psv"})
 _TEXT_NAMES = frozenset({".txt", ".md", ".markdown", ".eml", ".text", ".log"})
 _HOW_TO_SAVE = "Save it as PDF, XLSX, CSV, HTML, DOCX, text, PNG or JPEG."
+
+
+def kind_by_name(name: str) -> Kind:
+    """The kind that a name promises, for a file that could not be read at all."""
+    return SHEET_SUFFIXES.get(PurePath(name).suffix.lower(), "text")
 
 
 def read_document(data: bytes, name: str) -> Document:
