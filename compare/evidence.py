@@ -1,0 +1,74 @@
+"""The picture of a page with a box round what was read, for PDFs and pictures; other kinds have words only."""
+
+from __future__ import annotations
+
+import hashlib
+import io
+from pathlib import Path
+from typing import TYPE_CHECKING
+
+from extract.model import SpecSheet, Where
+
+if TYPE_CHECKING:
+    from PIL.Image import Image
+
+POINTS_PER_INCH, DOTS_PER_INCH = 72, 150
+# A page is drawn no wider than this: a scan can be of any size.
+WIDEST = 1700
+BOX_COLOUR, PAD = (91, 63, 143), 3.0
+
+
+def page_picture(data: bytes, sheet: SpecSheet, where: Where) -> Image | None:
+    """The page that `where` names with its box drawn; None where the kind of file has no picture.
+
+    A box counts in points of a PDF page and pixels of a picture, from the top left as a viewer shows the page.
+    """
+    if sheet.kind == "pdf" and where.page is not None:
+        page, scale = _pdf_page(data, where.page), DOTS_PER_INCH / POINTS_PER_INCH
+    elif sheet.kind == "image":
+        page, scale = _picture(data), 1.0
+    else:
+        return None
+    if page.width > WIDEST:
+        ratio = WIDEST / page.width
+        page, scale = page.resize((WIDEST, round(page.height * ratio))), scale * ratio
+    if where.box is not None:
+        _draw_box(page, [end * scale for end in where.box], scale)
+    return page
+
+
+def sheet_bytes(sheet: SpecSheet) -> bytes | None:
+    """The file of a sheet that was opened by its name; None where it is gone or no longer the one that was read."""
+    try:
+        data = Path(sheet.file).read_bytes()
+    except OSError:
+        return None
+    return data if hashlib.sha256(data).hexdigest() == sheet.sha256 else None
+
+
+def _pdf_page(data: bytes, number: int) -> Image:
+    import pypdfium2
+
+    with pypdfium2.PdfDocument(data) as document:
+        page = document[number - 1]
+        picture: Image = page.render(scale=DOTS_PER_INCH / POINTS_PER_INCH).to_pil().convert("RGB")
+        page.close()
+    return picture
+
+
+def _picture(data: bytes) -> Image:
+    from PIL import Image as Pillow
+    from PIL import ImageOps
+
+    with Pillow.open(io.BytesIO(data)) as opened:
+        upright = ImageOps.exif_transpose(opened)
+        return upright.convert("RGB")
+
+
+def _draw_box(page: Image, box: list[float], scale: float) -> None:
+    from PIL import ImageDraw
+
+    pad = PAD * scale
+    x0, top, x1, bottom = box[0] - pad, box[1] - pad, box[2] + pad, box[3] + pad
+    width = max(2, round(1.2 * scale))
+    ImageDraw.Draw(page).rectangle((x0, top, max(x1, x0 + 1), max(bottom, top + 1)), outline=BOX_COLOUR, width=width)

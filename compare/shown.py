@@ -1,0 +1,238 @@
+"""What the Sheets view shows: one line a sheet, a part's readings with how we have each, and where a reading stands."""
+
+from __future__ import annotations
+
+from collections.abc import Sequence
+from dataclasses import dataclass
+
+import pandas as pd
+
+from compare.circuit_text import temperatures
+from compare.figures import counted, exact, spread
+from extract.fields import field_of
+from extract.model import Note, Part, Reading, SpecSheet, When, Where
+
+KINDS = {
+    "pdf": "PDF",
+    "xlsx": "workbook",
+    "csv": "list",
+    "html": "web page",
+    "docx": "Word document",
+    "text": "text",
+    "image": "picture",
+}
+LOOK, SHORT = "☞", "▼"
+HOW = {"stated": "stated", "inferred": "∴ inferred", "entered": "✎ entered"}
+HOW_LEGEND = "stated: printed there · ∴ inferred: worked out from other readings · ☞ look: a person must decide"
+
+
+def waiting(sheet: SpecSheet) -> int:
+    """How many readings of a sheet a person must look at."""
+    return sum(reading.check is not None for part in sheet.parts for reading in part.readings)
+
+
+def sheets_frame(sheets: Sequence[SpecSheet]) -> pd.DataFrame:
+    """One row a sheet, in the order opened: file, what it is, and its outcome."""
+    rows = [(sheet.file.rsplit("/", 1)[-1], _what(sheet), _outcome(sheet)) for sheet in sheets]
+    return pd.DataFrame(rows, columns=["Sheet", "What", "Outcome"])
+
+
+def _what(sheet: SpecSheet) -> str:
+    kind = "scan" if sheet.scan else KINDS[sheet.kind]
+    return f"{kind}, {counted(len(sheet.parts), 'part')}"
+
+
+def _outcome(sheet: SpecSheet) -> str:
+    if not sheet.parts:
+        return f"{SHORT} not read" if _errors(sheet) else f"{SHORT} no crystal"
+    wait = waiting(sheet)
+    return f"{LOOK} {wait}" if wait else "read"
+
+
+def _errors(sheet: SpecSheet) -> list[Note]:
+    return [note for note in sheet.notes if note.level == "error"]
+
+
+def heading(sheets: Sequence[SpecSheet]) -> str:
+    """`7 sheets, 11 parts; 3 readings to look at`."""
+    parts = sum(len(sheet.parts) for sheet in sheets)
+    wait = sum(map(waiting, sheets))
+    looks = f"; {LOOK} {counted(wait, 'reading')} to look at" if wait else ""
+    return f"{counted(len(sheets), 'sheet')}, {counted(parts, 'part')}{looks}"
+
+
+def unread(sheets: Sequence[SpecSheet]) -> list[str]:
+    """A sentence for each sheet that gave nothing, with the reason."""
+    said = []
+    for sheet in sheets:
+        if not sheet.parts:
+            reasons = [note.message for note in _errors(sheet) or sheet.notes] or ["no crystal found in it"]
+            said.append(f"{SHORT} {sheet.file.rsplit('/', 1)[-1]}: {'; '.join(reasons)}")
+    return said
+
+
+def notes_of(sheet: SpecSheet) -> list[str]:
+    """What the reader has to say about a sheet that it could read, with the place spoken of."""
+    said = []
+    for note in sheet.notes if sheet.parts else ():
+        place = f" ({note.where})" if note.where is not None else ""
+        said.append(f"{LOOK + ' ' if note.level != 'info' else ''}{note.message}{place}")
+    return said
+
+
+def part_name(part: Part, number: int = 1) -> str:
+    """The part number, else the maker's or the count's name for it."""
+    if part.part_number:
+        return part.part_number
+    return f"{part.maker}, no part number" if part.maker else f"part {number}, no part number"
+
+
+def part_facts(part: Part) -> str:
+    """`Merrowby · 2.5 × 2.0, 4 pads, crystal on 1 and 3 · AT cut · fundamental`, of what is stated."""
+    cut = part.cut if part.cut is None or part.cut[-1].islower() else f"{part.cut} cut"
+    mode = part.mode or "mode not stated"
+    resonance = "series resonant" if part.resonance == "series" else None
+    facts = [part.maker, _package(part), cut, mode, resonance]
+    return " · ".join(fact for fact in facts if fact)
+
+
+def _package(part: Part) -> str | None:
+    pads = part.attributes.pads
+    said = [part.package] if part.package else []
+    if pads is not None and pads.count:
+        said.append(f"{pads.count} pads")
+    if pads is not None and pads.crystal:
+        said.append(f"crystal on {' and '.join(map(str, pads.crystal))}")
+    return ", ".join(said) or None
+
+
+def attributes_lines(part: Part) -> list[str]:
+    """Grade, handling and supply, of what is stated."""
+    stated = part.attributes
+    lines = {
+        "AEC-Q200": None if stated.aec_q200 is None else "yes" if stated.aec_q200 else "no",
+        "Moisture level": stated.moisture_level,
+        "Reflow peak": None if stated.reflow_peak_c is None else f"{exact(stated.reflow_peak_c)} °C",
+        "Status": stated.status,
+        "Price": stated.price,
+        "Lead time": stated.lead_time,
+    }
+    return [f"{name}: {value}" for name, value in lines.items() if value is not None]
+
+
+def in_order(part: Part) -> list[Reading]:
+    """A part's readings, those to look at first, else as the sheet has them."""
+    return sorted(part.readings, key=lambda reading: reading.check is None)
+
+
+def readings_frame(part: Part) -> pd.DataFrame:
+    """A part's readings in the order of `in_order`: name, bounds as text, unit, where it holds, how we have it."""
+    rows = [
+        (
+            title(reading.field),
+            _bound(reading, reading.min),
+            _options(reading) if reading.options else _bound(reading, reading.typ),
+            _bound(reading, reading.max),
+            _unit(reading.field),
+            how(reading),
+            when_text(reading.when),
+        )
+        for reading in in_order(part)
+    ]
+    return pd.DataFrame(rows, columns=["Reading", "Min", "Typ", "Max", "Unit", "How we have it", "Holds for"])
+
+
+def title(field: str) -> str:
+    """A field's name in the trade's words, as a row begins with it."""
+    named = field_of(field).title
+    return named[0].upper() + named[1:]
+
+
+def _unit(field: str) -> str:
+    unit = field_of(field).unit
+    return "" if unit == "1" else unit
+
+
+def _bound(reading: Reading, value: float | None) -> str:
+    if value is None:
+        return ""
+    plus = "+" if value > 0 and field_of(reading.field).sign in ("symmetric", "either") else ""
+    return plus + exact(value)
+
+
+def _options(reading: Reading) -> str:
+    sign = "±" if field_of(reading.field).sign == "symmetric" else ""
+    return ", ".join(sign + exact(value) for value in reading.options)
+
+
+def how(reading: Reading) -> str:
+    """`stated p.1`, `∴ inferred line 4`, `☞ look p.2`: a word always, a sign before all but the plain case."""
+    return f"{LOOK + ' look' if reading.check is not None else HOW[reading.status]} {place(reading.where)}".rstrip()
+
+
+def place(where: Where) -> str:
+    """A short place: `p.1`, `Tabelle1 B7`, `table 2 B7`, `line 12`."""
+    said = []
+    if where.page is not None:
+        said.append(f"p.{where.page}")
+    if where.sheet is not None:
+        said.append(where.sheet)
+    if where.table is not None:
+        said.append(f"table {where.table}")
+    if where.cell is not None:
+        said.append(where.cell)
+    elif where.line is not None and where.page is None:
+        said.append(f"line {where.line}")
+    return " ".join(said)
+
+
+def when_text(when: When) -> str:
+    """Where a reading holds, in words; "" for everywhere."""
+    said = []
+    if when.frequency_mhz is not None:
+        said.append(spread(*when.frequency_mhz, "MHz", digits=8))
+    if when.load_capacitance_pf is not None:
+        said.append(f"load {spread(*when.load_capacitance_pf, 'pF')}")
+    if when.temperature_c is not None:
+        low, high = when.temperature_c
+        said.append(temperatures(when.temperature_c) if low != high else f"{exact(low)} °C")
+    if when.years is not None:
+        said.append(f"{exact(when.years)} {'year' if when.years == 1 else 'years'}")
+    said += [words for words in (when.mode, when.package) if words is not None]
+    return "; ".join(said)
+
+
+def value_text(reading: Reading) -> str:
+    """The whole reading in words: `28 typ, at most 50 Ω`."""
+    unit = _unit(reading.field)
+    if reading.options:
+        return f"{_options(reading)} {unit}, to choose from".strip()
+    if reading.min is not None and reading.max is not None:
+        around = "" if reading.typ is None else f", {exact(reading.typ)} typical"
+        return spread(reading.min, reading.max, unit, digits=9) + around
+    bounds = ((reading.typ, "{}"), (reading.min, "at least {}"), (reading.max, "at most {}"))
+    said = [words.format(_bound(reading, value)) for value, words in bounds if value is not None]
+    return f"{', '.join(said)} {unit}".strip()
+
+
+@dataclass(frozen=True)
+class Evidence:
+    """What stands beside the page's picture: what was read, why to look, where it stands, the words printed there."""
+
+    heading: str
+    read: str
+    look: str | None
+    stands: str
+    printed: str
+
+
+def evidence(reading: Reading) -> Evidence:
+    """The words that go with one reading."""
+    status = {
+        "stated": "stated",
+        "inferred": "inferred: worked out from what is printed",
+        "entered": "entered by a person",
+    }[reading.status]
+    holds = when_text(reading.when)
+    read = f"{value_text(reading)}, {status}" + (f"; holds for {holds}" if holds else "")
+    return Evidence(title(reading.field), read, reading.check, str(reading.where), reading.raw)
