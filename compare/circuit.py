@@ -7,7 +7,7 @@ Nodes: `a` amplifier input and the crystal's input end, `b` the crystal's output
     Ro   o-0    Rd   o-b    Rf o-a
     crystal a-b: C0 across R1 - L1 - C1
 
-Everything follows from Kirchhoff's current law at the nodes. With gf = 1/Rf, yo = 1/Ro + s Cp and D = 1 + Rd (yo + gf) the
+Everything follows from Kirchhoff's current law. With gf = 1/Rf, yo = 1/Ro + s Cp and D = 1 + Rd (yo + gf) the
 admittance between a and b is s Cx + N/S, where
 
     S = s (Cin + Cout) D + (gm + yo)(1 + Rd gf)
