@@ -1,33 +1,173 @@
-"""Printed amounts in, bounds in the field's unit out."""
+"""Printed amounts in, bounds in the field's unit out: `read_values`.
+
+The text is folded (`fold`) and cut into tokens (`tokens`); numbers that belong together become groups (`groups`), each
+word beside them is given to the group it speaks of (`attach`), and `bounds` makes values of them.
+"""
 
 from __future__ import annotations
 
-from dataclasses import dataclass
+import re
+from dataclasses import replace
+from functools import lru_cache
 
+from extract.attach import Amount, attach, own_amounts
+from extract.band import joined, when_of
+from extract.bounds import Heading, Value, values_of
+from extract.fields import Field, field_of
+from extract.fold import fold, key
+from extract.groups import Item, read_items
 from extract.model import When
+from extract.number import Number, decide
+from extract.tokens import Token, tokens
+from extract.units import guessed, unit_at
+from extract.vocabulary import vocabulary
 
+__all__ = ["Value", "as_plus_minus", "decimal_mark", "field_for", "read_values"]
 
-@dataclass(frozen=True, slots=True)
-class Value:
-    """One value of a field as printed, in the field's unit.
-
-    `series` stands for "Series" in the place of a load; it has no bounds. `bare`: no bound is printed or given, and the
-    contract marks such a number of this field. `doubts`: why a person must look at it.
-    """
-
-    min: float | None = None
-    typ: float | None = None
-    max: float | None = None
-    options: tuple[float, ...] = ()
-    when: When = When()
-    bare: bool = False
-    doubts: tuple[str, ...] = ()
-    raw: str = ""
-    series: bool = False
+LONGEST_AMOUNT = 600
 
 
 def read_values(
-    text: str, field: str, *, unit: str | None = None, bound: str | None = None, plus_minus: bool = False
+    text: str,
+    field: str,
+    *,
+    unit: str | None = None,
+    bound: str | None = None,
+    plus_minus: bool = False,
+    decimal: str | None = None,
 ) -> list[Value]:
-    """Everything that the printed `text` states for `field`, in the field's unit; [] where it states nothing."""
-    raise NotImplementedError
+    """Everything that the printed `text` states for `field`, in the field's unit; [] where it states nothing.
+
+    Parameters
+    ----------
+    text
+        As printed; one cell, or the part of a line behind its label.
+    field
+        A field of the data contract; KeyError for another.
+    unit
+        As printed in the label, head or unit column ("kΩ", "±ppm", "×10⁻⁶/year"); a unit in the text goes before.
+    bound
+        "min", "typ" or "max" where a heading or label says so; a word in the text goes before. For a ± field it gives
+        that bound alone ("10" under Max is max 10, not ±10): `as_plus_minus` makes both ends where the Min cell is empty.
+    plus_minus
+        The label or head prints ±.
+    decimal
+        The sheet's decimal mark, "." or ",", where the caller knows it (`decimal_mark`).
+
+    Returns
+    -------
+    list of Value
+        In the order printed, one for each condition (band, temperature range, years, mode) or choice of ranges. What had
+        to be refused is a value without bounds (`empty`) whose doubts say why; it is there only if nothing else is.
+    """
+    return list(_read(text, field, unit, bound, plus_minus, decimal))
+
+
+@lru_cache(maxsize=65536)
+def _read(
+    text: str, field_name: str, unit: str | None, bound: str | None, plus_minus: bool, decimal: str | None
+) -> tuple[Value, ...]:
+    row = field_of(field_name)
+    heading = _heading(unit, bound, plus_minus, decimal, field_name)
+    pieces = tokens(fold(text)[:LONGEST_AMOUNT], field_name)
+    if len(pieces) > 1 and pieces[0].kind == "pm" and pieces[1].kind == "unit":
+        heading = replace(heading, plus_minus=True, unit=(pieces[1].text, pieces[1].value))
+        pieces = pieces[2:]
+    items = read_items(pieces, field_name, plain_pair=row.sign == "either")
+    amounts = own_amounts(items, pieces, row)
+    _give_units(amounts, pieces, heading, row)
+    attach(items, amounts, row)
+    values = [value for value in values_of(amounts, row, heading) if not value.empty or value.doubts]
+    if row.name == "load_capacitance_pf" and _offers_series(items, text):
+        values.append(Value(series=True))
+    if not values:
+        values = _refused(items, pieces, row)
+    raw = text.strip()
+    return tuple(replace(value, raw=raw, when=joined(heading.when, value.when)) for value in values)
+
+
+def _heading(unit: str | None, bound: str | None, plus_minus: bool, decimal: str | None, field_name: str) -> Heading:
+    if not unit:
+        return Heading(None, bound, plus_minus, When(), decimal)
+    printed = fold(unit)
+    stripped = printed.strip("±()[] ")
+    found = unit_at(stripped, field_name)
+    when = when_of(stripped[found[2] :] if found else stripped)
+    named = (found[0], found[1]) if found else None
+    return Heading(named, bound, plus_minus or "±" in printed, when, decimal)
+
+
+def _give_units(amounts: list[Amount], pieces: list[Token], heading: Heading, row: Field) -> None:
+    """Each number its unit: its own, that of the next number that has one, a free one, the last, the heading's."""
+    free = next((piece for piece in pieces if piece.kind == "unit" and piece.meaning == "free"), None)
+    for index, amount in enumerate(amounts):
+        later = next((a.printed_unit for a in amounts[index:] if a.printed_unit), None)
+        earlier = next((a.printed_unit for a in reversed(amounts[:index]) if a.printed_unit), None)
+        unit = later or free or earlier
+        name, scale = (unit.text, unit.value) if unit else heading.unit or ("", 1.0)
+        if not name and row.unit and row.sign != "either":
+            amount.doubts.append(f"unit not printed, taken as {row.unit}")
+        elif name == "ppm" and row.name == "pulling_sensitivity_ppm_per_pf" or name in ("x10", "×10"):
+            amount.doubts.append(f"unit printed as {name!r}, taken as {row.unit}")
+        group = amount.group
+        high = group.high_unit.value if group.high_unit and not group.percent else scale
+        low = group.low_unit.value if group.low_unit else high
+        amount.low = _scaled(amount, group.low, low, row, heading, name)
+        if group.high is not None:
+            amount.high = _scaled(amount, group.high, 1.0 if group.percent else high, row, heading, name)
+
+
+def _scaled(amount: Amount, token: Token, scale: float, row: Field, heading: Heading, unit: str) -> float:
+    value, doubt = decide(token.number or Number("", 0.0), scale, row, decimal=heading.decimal, unit=unit)
+    if doubt and doubt not in amount.doubts:
+        amount.doubts.append(doubt)
+    return float(f"{(-value if token.meaning == '-' else value) * scale:.12g}")
+
+
+def _offers_series(items: list[Item], text: str) -> bool:
+    """Whether series resonance is offered: the word or ∞, not "on request"; "S" alone is its code."""
+    if key(text) == "s":
+        return True
+    words = [item for item in items if item.word is not None]
+    asked = {item.segment for item in words if item.word and item.word.kind == "request"}
+    return any(item.word is not None and item.word.kind == "series" and item.segment not in asked for item in words)
+
+
+def _refused(items: list[Item], pieces: list[Token], row: Field) -> list[Value]:
+    for piece in pieces:
+        if piece.kind == "number" and piece.glued:
+            return [Value(doubts=(f"letters touch the number {piece.text!r}; left out",))]
+        if piece.kind == "broken":
+            return [Value(doubts=(f"{piece.text!r} is no number; left out",))]
+    return []
+
+
+def as_plus_minus(value: Value) -> Value:
+    """±size for a value that holds one magnitude: "20" under a Max heading whose Min cell is empty."""
+    size = value.max if value.max is not None else value.typ
+    if size is None or value.min is not None or value.options:
+        return value
+    return replace(value, min=-abs(size), typ=None, max=abs(size), bare=False)
+
+
+_PER_SQUARE = re.compile(r"/\s?\(?\s?(?:Δ\s?)?(?:°\s?C?|C|K|T|deg\s?C?)\s?\)?\s?\^?2|/\s?\(?Δ?°?[CK]\)?\s?\^2|°C\^?-2", re.IGNORECASE)
+
+
+def field_for(text: str, field: str) -> str:
+    """The field that the unit of a value makes of its label: stability or a coefficient in ppm/°C² is the parabola."""
+    if field in ("frequency_stability_ppm", "frequency_tolerance_ppm") and _PER_SQUARE.search(fold(text)):
+        return "parabolic_coefficient_ppm_per_c2"
+    return field
+
+
+_POINT = re.compile(r"(?<![\d.,])\d+\.(?:\d{1,2}|\d{4,})(?![\d.,])")
+_COMMA = re.compile(r"(?<![\d.,])(?:\d+,(?:\d{1,2}|\d{4,})|0,\d+)(?![\d.,])")
+
+
+def decimal_mark(text: str) -> str | None:
+    """The decimal mark that a whole sheet uses, from the numbers in which it can be nothing else; None where they differ."""
+    folded = fold(text)
+    points, commas = len(_POINT.findall(folded)), len(_COMMA.findall(folded))
+    if points > 3 * commas:
+        return "."
+    return "," if commas > 3 * points else None

@@ -82,9 +82,9 @@ def gather(tables: Iterable[tuple[str, dict[str, Any]]]) -> Vocabulary:
             for meaning, words in table.get(section, {}).items():
                 for word in words:
                     found[section].setdefault(key(word) or fold(word), meaning)
-        for section in ("phrases", "bounds"):
+        for section, prefix in (("phrases", ""), ("bounds", ""), ("modes", "mode ")):
             for meaning, words in table.get(section, {}).items():
-                found["phrases"].setdefault(meaning, []).extend(fold(word).casefold() for word in words)
+                found["phrases"].setdefault(prefix + meaning, []).extend(fold(word).casefold() for word in words)
     shared = found.pop("shared") | found.pop("shared_symbols")
     if both := shared.keys() & (found["labels"].keys() | found["symbols"].keys()):
         raise WordingError(f"{sorted(both)[0]!r} is the label of one field and of several")

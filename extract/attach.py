@@ -1,0 +1,138 @@
+"""Which of the numbers in a text are values of the field, and which word beside them speaks of which number."""
+
+from __future__ import annotations
+
+from dataclasses import dataclass, field
+
+from extract.band import condition, joined
+from extract.fields import Field
+from extract.groups import Group, Item
+from extract.model import When
+from extract.tokens import Token
+
+_SPEAKING = frozenset({"bound", "request", "standard", "from", "years", "mode"})
+# Between a number without a unit and the number whose unit it shares stands nothing but these.
+_LIST_MARKS = frozenset(
+    {"sep", "or", "open", "close", "bound", "standard", "compare", "to", "unit", "slash", "number", "pm", "line", "years"}
+    | {"equals", "colon", "mode", "from", "series"}
+)  # fmt: skip
+
+
+@dataclass(slots=True)
+class Amount:
+    """A group that is a value of the field, with everything the text says of it. `position` counts the items."""
+
+    group: Group
+    position: int
+    bound: str | None = None
+    when: When = When()
+    request: bool = False
+    standard: bool = False
+    best: bool = False
+    doubts: list[str] = field(default_factory=list)
+    low: float = 0.0
+    high: float | None = None
+
+    @property
+    def printed_unit(self) -> Token | None:
+        """The unit printed at its first number, or at its second."""
+        own = None if self.group.percent else self.group.high_unit
+        return self.group.low_unit or own
+
+
+def own_amounts(items: list[Item], pieces: list[Token], row: Field) -> list[Amount]:
+    """The groups that are values of the field: their unit is its own or missing, and no condition names them."""
+    found: list[Amount] = []
+    for position, item in enumerate(items):
+        group = item.group
+        if group is None or group.foreign is not None or group.low.glued or (group.high is not None and group.high.glued):
+            continue
+        if group.before.startswith("symbol") or (group.before == "at" and found and not group.bound):
+            continue
+        found.append(Amount(group, position, bound=group.bound, doubts=list(group.doubts)))
+    with_unit = [amount.group for amount in found if amount.printed_unit]
+    if not with_unit:
+        return found
+    return [a for a in found if a.printed_unit or any(_joined_by_marks(a.group, unit, pieces) for unit in with_unit)]
+
+
+def _joined_by_marks(one: Group, other: Group, pieces: list[Token]) -> bool:
+    first, last = sorted((one, other), key=lambda group: group.start)
+    return all(piece.kind in _LIST_MARKS for piece in pieces[first.end : last.start])
+
+
+def attach(items: list[Item], amounts: list[Amount], row: Field) -> None:
+    """Give every bound word, condition, mode, year count and "on request" to the amounts that it speaks of."""
+    if not amounts:
+        return
+    own = {amount.position for amount in amounts}
+    for position, item in enumerate(items):
+        if item.word is not None and item.word.kind in _SPEAKING:
+            for amount in _targets(items, amounts, position):
+                _say(amount, item.word)
+        elif item.group is not None and position not in own:
+            when = condition(item.group, row.name)
+            if when != When():
+                for amount in _targets(items, amounts, position):
+                    amount.when = joined(amount.when, when)
+
+
+def _say(amount: Amount, word: Token) -> None:
+    if word.kind == "bound":
+        amount.bound = amount.bound or word.meaning
+    elif word.kind == "request":
+        amount.request = True
+    elif word.kind == "standard":
+        amount.standard = True
+    elif word.kind == "from":
+        amount.best = amount.group.shape in ("pm", "single")
+    elif word.kind == "years":
+        amount.when = joined(When(years=word.value), amount.when)
+    elif word.kind == "mode":
+        amount.when = joined(When(mode=word.meaning), amount.when)
+
+
+def _sort_of(item: Item) -> str:
+    return item.word.kind if item.word is not None else "condition" if item.group and item.group.foreign else ""
+
+
+def _targets(items: list[Item], amounts: list[Amount], position: int) -> list[Amount]:
+    """The amounts that the item at `position` speaks of.
+
+    Of its own segment (between commas, brackets, lines) the only one, or of several the one after it where such words
+    stand first there, else the one before. Alone in its segment: those that follow on its line where nothing precedes it
+    there, else the last one before, else the next.
+    """
+    item, sort = items[position], _sort_of(items[position])
+    before = [amount for amount in amounts if amount.position < position]
+    after = [amount for amount in amounts if amount.position > position]
+    if sort == "from":
+        return after[:1]
+    own = [amount for amount in amounts if items[amount.position].segment == item.segment]
+    if len(own) == 1:
+        return own
+    if own:
+        first = next(i for i, each in enumerate(items) if each.segment == item.segment and _sort_of(each) == sort)
+        if first < own[0].position:
+            return [amount for amount in own if amount.position > position][:1]
+        return [amount for amount in own if amount.position < position][-1:]
+    same_line = [amount for amount in before if items[amount.position].line == item.line]
+    if sort in ("request", "standard"):
+        return same_line[-1:]
+    if not same_line and _value_follows_on_line(items, after, item.line):
+        return _until_next(items, after, position, sort)
+    if same_line:
+        return same_line[-1:]
+    return before[-1:] or _until_next(items, after, position, sort)
+
+
+def _value_follows_on_line(items: list[Item], after: list[Amount], line: int) -> bool:
+    return any(items[amount.position].line == line for amount in after)
+
+
+def _until_next(items: list[Item], after: list[Amount], position: int, sort: str) -> list[Amount]:
+    """A mode, band or year count at the head speaks of all that follows up to the next of its sort; a bound of the next."""
+    if sort == "bound":
+        return after[:1]
+    end = next((i for i in range(position + 1, len(items)) if _sort_of(items[i]) == sort), len(items))
+    return [amount for amount in after if amount.position < end]

@@ -1,0 +1,216 @@
+"""Numbers that belong together: a range, ±, centre and tolerance, a pair of signs; each with its unit and what stands by it."""
+
+from __future__ import annotations
+
+from dataclasses import dataclass, field
+
+from extract.fold import key
+from extract.tokens import Token
+from extract.vocabulary import vocabulary
+
+_ENDS_SEGMENT = frozenset({"sep", "line", "slash", "open", "close", "or", "colon"})
+_UNITS = frozenset({"unit", "other"})
+
+
+@dataclass(slots=True)
+class Group:
+    """One amount as printed.
+
+    `shape`: "single", "pm" (± low), "range" (low to high), "centre" (low ± high), "grades" (±low to ±high).
+    `foreign` names the kind of quantity where its unit is none of the field's. `low_unit`, `high_unit`: (text, factor).
+    """
+
+    shape: str
+    low: Token
+    high: Token | None = None
+    low_unit: Token | None = None
+    high_unit: Token | None = None
+    bound: str | None = None
+    foreign: str | None = None
+    before: str = ""
+    segment: int = 0
+    start: int = 0
+    end: int = 0
+    doubts: list[str] = field(default_factory=list)
+
+    @property
+    def percent(self) -> bool:
+        unit = self.high_unit
+        return unit is not None and unit.kind == "other" and unit.meaning == "relative"
+
+    def has_unit(self) -> bool:
+        return self.low_unit is not None or self.high_unit is not None
+
+
+@dataclass(slots=True)
+class Item:
+    """A group, or a word that says something of one, in the order printed. `segment` counts commas, brackets and lines."""
+
+    segment: int
+    line: int
+    group: Group | None = None
+    word: Token | None = None
+
+
+class _Reader:
+    def __init__(self, tokens: list[Token], field_name: str, *, plain_pair: bool) -> None:
+        self.tokens = tokens
+        self.field_name = field_name
+        self.plain_pair = plain_pair
+        self.at = 0
+        self.segment = 0
+        self.line = 0
+        self.items: list[Item] = []
+        self.between = False
+
+    def kind(self, ahead: int = 0) -> str:
+        index = self.at + ahead
+        return self.tokens[index].kind if 0 <= index < len(self.tokens) else ""
+
+    def take(self) -> Token:
+        self.at += 1
+        return self.tokens[self.at - 1]
+
+    def take_unit(self) -> Token | None:
+        return self.take() if self.kind() in _UNITS else None
+
+    def read(self) -> list[Item]:
+        while self.at < len(self.tokens):
+            kind = self.kind()
+            if kind == "see":
+                self._skip_reference()
+            elif kind == "number" or (kind == "pm" and self.kind(1) == "number"):
+                self._group()
+            elif kind == "compare" and self.kind(1) in ("number", "pm"):
+                self._compared()
+            else:
+                self._word(kind)
+        return self.items
+
+    def _word(self, kind: str) -> None:
+        token = self.take()
+        self.between = kind == "between" or (self.between and kind not in _ENDS_SEGMENT)
+        if kind in _ENDS_SEGMENT:
+            self.segment += 1
+            self.line += kind == "line"
+        self.items.append(Item(self.segment, self.line, word=token))
+
+    def _skip_reference(self) -> None:
+        """ "See table 1", "note 3": the number is no value."""
+        while self.at < len(self.tokens) and self.kind() not in ("sep", "line", "close"):
+            self.take()
+
+    def _compared(self) -> None:
+        sign = self.take()
+        made = self._group()
+        if made is not None and made.bound is None:
+            made.bound = "max" if sign.meaning == "<" else "min"
+
+    def _group(self) -> Group | None:
+        start = self.at
+        before = self._before()
+        made = self._plus_minus() if self.kind() == "pm" else self._number()
+        if self.kind() == "times" and self.kind(1) == "number":
+            while self.kind() in ("times", "number", *_UNITS):
+                self.take()
+            return None
+        made.start, made.end, made.before, made.segment = start, self.at, before, self.segment
+        unit = made.high_unit if made.high_unit and not made.percent else made.low_unit
+        if unit is not None and unit.kind == "other":
+            made.foreign = unit.meaning
+        if made.shape == "centre" and made.percent and made.low_unit is None:
+            made.foreign = None
+        self.items.append(Item(self.segment, self.line, group=made))
+        return made
+
+    def _before(self) -> str:
+        """What stands right before: "at", "for", "from", or the symbol of another field ("CL = 8 pF")."""
+        index = self.at - 1
+        while index >= 0 and self.tokens[index].kind in ("equals", "compare", "pm"):
+            index -= 1
+        if index < 0:
+            return ""
+        token = self.tokens[index]
+        if token.kind == "word":
+            owner = vocabulary().symbols.get(key(token.text))
+            if owner is not None and owner != self.field_name:
+                return "symbol " + owner
+            return "at" if index and self.tokens[index - 1].kind == "at" else ""
+        return token.kind if token.kind in ("at", "for", "from") else ""
+
+    def _plus_minus(self) -> Group:
+        self.take()
+        made = Group("pm", self.take())
+        made.low_unit = self.take_unit()
+        if self.kind() == "to" and (self.kind(1) == "pm" and self.kind(2) == "number" or self.kind(1) == "number"):
+            if self.kind(1) == "number" and self.tokens[self.at + 1].meaning:
+                return made
+            self.take()
+            if self.kind() == "pm":
+                self.take()
+            made.shape, made.high, made.high_unit = "grades", self.take(), self.take_unit()
+        return made
+
+    def _number(self) -> Group:
+        made = Group("single", self.take())
+        made.low_unit = self.take_unit()
+        if self._bracket_then_pm():
+            self.take()
+        if self.kind() == "pm" and self.kind(1) == "number":
+            self.take()
+            made.shape, made.high, made.high_unit = "centre", self.take(), self.take_unit()
+        elif self.kind() == "to" and self.kind(1) == "pm" and self.kind(2) == "number":
+            self.take()
+            self.take()
+            made.shape, made.high, made.high_unit = "centre", self.take(), self.take_unit()
+            made.doubts.append("a range sign stands before ±; read as centre and tolerance")
+        elif self._range_follows():
+            self.take()
+            while self.kind() in ("compare", "to"):
+                self.take()
+            made.shape, made.high, made.high_unit = "range", self.take(), self.take_unit()
+        elif self._letter_between():
+            while self.kind() != "number":
+                self.take()
+            made.shape, made.high, made.high_unit = "range", self.take(), self.take_unit()
+        elif self.kind() == "compare" and self.kind(1) == "word" and self.kind(2) != "number":
+            made.bound = "min" if self.take().meaning == "<" else "max"
+            self.take()
+        elif self._signs_follow(made.low):
+            if self.kind() in ("slash", "sep"):
+                self.take()
+            made.shape, made.high, made.high_unit = "range", self.take(), self.take_unit()
+        return made
+
+    def _bracket_then_pm(self) -> bool:
+        return self.kind() == "open" and self.kind(1) == "pm" and self.kind(2) == "number" and self.field_name not in _PPM
+
+    def _range_follows(self) -> bool:
+        if self.between and self.kind() == "or" and self.kind(1) == "number":
+            self.between = False
+            return True
+        return self.kind() == "to" and (
+            self.kind(1) == "number" or (self.kind(1) in ("compare", "to") and self.kind(2) == "number")
+        )
+
+    def _letter_between(self) -> bool:
+        """ "3.5 MHz ≤ f < 4.0 MHz"."""
+        return self.kind() == "compare" and self.kind(1) == "word" and self.kind(2) == "compare" and self.kind(3) == "number"
+
+    def _signs_follow(self, low: Token) -> bool:
+        """ "-5/+15", "+15 -5", "-40 +85" (the range sign lost); for temperatures "-40/85" as well."""
+        ahead = 1 if self.kind() == "slash" else 0
+        if self.kind(ahead) != "number":
+            return False
+        high = self.tokens[self.at + ahead]
+        if {low.meaning, high.meaning} == {"-", "+"}:
+            return True
+        return bool(ahead and self.plain_pair and low.meaning == "-")
+
+
+_PPM = frozenset({"frequency_tolerance_ppm", "frequency_stability_ppm", "ageing_ppm", "frequency_mhz"})
+
+
+def read_items(tokens: list[Token], field_name: str, *, plain_pair: bool = False) -> list[Item]:
+    """Group the tokens; `plain_pair`: a slash between a negative and a plain number is a range ("-40/85 °C")."""
+    return _Reader(tokens, field_name, plain_pair=plain_pair).read()

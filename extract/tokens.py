@@ -1,0 +1,242 @@
+"""A printed value cut into what it is made of: numbers, signs, units, bound words, conditions, lists."""
+
+from __future__ import annotations
+
+import re
+from collections.abc import Iterator
+from dataclasses import dataclass
+from functools import cache
+
+from extract.number import NUMBER, Number, numbers
+from extract.units import other_unit_at, unit_at
+from extract.vocabulary import vocabulary
+
+
+@dataclass(slots=True)
+class Token:
+    """One piece of folded text. What `meaning` holds depends on `kind`:
+
+    number: its sign ("", "+", "-"); bound: "min", "typ", "max"; compare: "<" or ">"; mode: its name; other: the kind of
+    quantity. `value` is the `Number`, and for own units and others the factor, for years the number of years.
+    """
+
+    kind: str
+    text: str
+    start: int
+    end: int
+    meaning: str = ""
+    number: Number | None = None
+    value: float = 0.0
+    glued: bool = False
+
+
+# Which meaning a word has that stands in several lists of the wording files: the first of these.
+_WORD_KINDS = (
+    "first_year", "per_year", "others", "request", "standard", "min", "typ", "max", "series", "plus_minus", "see", "between", "to", "or",
+    "from", "for", "at", "minus", "plus", "above", "below",
+)  # fmt: skip
+_MARKS = {
+    "±": "pm", "~": "to", "…": "to", "<": "compare", "≤": "compare", ">": "compare", "≥": "compare", ",": "sep", ";": "sep",
+    "、": "sep", "。": "sep", "|": "sep", "\n": "line", "/": "slash", "(": "open", "[": "open", "{": "open", ")": "close",
+    "]": "close", "}": "close", "@": "at", ":": "colon", "=": "equals", "×": "times", "*": "star", "&": "or", "∞": "series",
+}  # fmt: skip
+_COMPARE = {"<": "<", "≤": "<", ">": ">", "≥": ">"}
+_WORD = re.compile(r"[^\W\d_](?:[\w.^]*\w)?", re.UNICODE)
+_IDEOGRAPH = re.compile(r"[\u3040-\u30ff\u3400-\u9fff\uac00-\ud7af]")
+_TIMES_TEN = re.compile(r"\s?(?:[x×*·]\s?10\s?\^?\s?|[eE])([+-]?\s?\d{1,2})(?![\d.])")
+_ORDINAL = re.compile(r"(?:st|nd|rd|th)\b", re.IGNORECASE)
+_NEAR_NUMBER = frozenset({"number", "unit", "other"})
+
+
+@cache
+def _phrases() -> dict[str, re.Pattern[str]]:
+    """Wordings by their first character; a Latin word ends where no letter follows, an ideograph anywhere."""
+    kind_of = {}
+    lists = vocabulary().phrases
+    for kind in [*(k for k in lists if k.startswith("mode ")), *_WORD_KINDS]:
+        for word in lists.get(kind, ()):
+            if word not in _MARKS:
+                kind_of.setdefault(word, kind)
+    by_first: dict[str, list[str]] = {}
+    for word in sorted(kind_of, key=len, reverse=True):
+        by_first.setdefault(word[0], []).append(word)
+    _kinds.update(kind_of)
+    return {first: re.compile("|".join(map(_word_pattern, words))) for first, words in by_first.items()}
+
+
+_kinds: dict[str, str] = {}
+
+
+def _word_pattern(word: str) -> str:
+    pattern = r"\s*".join(re.escape(piece) for piece in word.split())
+    if _IDEOGRAPH.match(word[-1]) or not (word[-1].isalnum() or word[-1] == "."):
+        return pattern
+    return pattern + r"(?![^\W\d_\u3040-\u30ff\u3400-\u9fff])" + (r"\.?" if word[-1] != "." else "")
+
+
+@cache
+def years_pattern() -> re.Pattern[str]:
+    """ "10 years", "10-year", "10年" in any language, at the start of a number."""
+    names = sorted(vocabulary().phrases.get("years", ("years",)), key=len, reverse=True)
+    words = "|".join(re.escape(name) + ("(?![a-z])" if name[-1].isascii() else "") for name in names)
+    return re.compile(rf"(\d{{1,2}})\s?-?(?:\.\s?)?(?:{words})", re.IGNORECASE)
+
+
+def tokens(text: str, field: str) -> list[Token]:
+    """The pieces of folded `text`, seen by a reader who looks for a value of `field`."""
+    found: list[Token] = []
+    lower = text.casefold()
+    if len(lower) != len(text):
+        lower = text.lower() if len(text.lower()) == len(text) else text
+    at = 0
+    while at < len(text):
+        if text[at] == " ":
+            at += 1
+            continue
+        for token in _next(text, lower, at, field, found):
+            found.append(token)
+            at = token.end
+    return [token for token in found if token.kind != "blank"]
+
+
+def _next(text: str, lower: str, at: int, field: str, before: list[Token]) -> Iterator[Token]:
+    char = text[at]
+    yield from (
+        _phrase(text, lower, at, before)
+        or _years(text, at)
+        or _signed_number(text, at, field, before)
+        or _free_unit(text, at, field, before)
+        or [_mark_or_word(text, at, char)]
+    )
+
+
+def _phrase(text: str, lower: str, at: int, before: list[Token]) -> list[Token]:
+    pattern = _phrases().get(lower[at])
+    found = pattern.match(lower, at) if pattern else None
+    if not found or (lower[at].isalpha() and _inside_word(lower, at) and not _ends_known(before, at)):
+        return []
+    words = found[0].rstrip(".")
+    kind = _kinds.get(found[0]) or _kinds.get(words) or _kinds.get(" ".join(words.split())) or _spaced_kind(words)
+    if kind in ("first_year", "per_year"):
+        return [Token("years", found[0], at, found.end(), meaning=kind, value=1.0)]
+    if kind in ("min", "typ", "max"):
+        return [Token("bound", found[0], at, found.end(), meaning=kind)]
+    if kind.startswith("mode "):
+        return [Token("mode", found[0], at, found.end(), meaning=kind[5:])]
+    return [Token("pm" if kind == "plus_minus" else kind, found[0], at, found.end())]
+
+
+def _inside_word(text: str, at: int) -> bool:
+    return at > 0 and text[at - 1].isascii() and text[at - 1].isalpha()
+
+
+def _spaced_kind(words: str) -> str:
+    """A phrase whose words ran together or stood apart."""
+    squeezed = "".join(words.split())
+    return next(kind for word, kind in _kinds.items() if "".join(word.split()).rstrip(".") == squeezed.rstrip("."))
+
+
+def _years(text: str, at: int) -> list[Token]:
+    found = years_pattern().match(text, at) if text[at].isdigit() else None
+    return [Token("years", found[0], at, found.end(), value=float(found[1]))] if found else []
+
+
+def _signed_number(text: str, at: int, field: str, before: list[Token]) -> list[Token]:
+    """A number with its sign and its unit; a dash between two numbers is a range."""
+    last = before[-1] if before else None
+    sign, start = "", at
+    if text[at] in "+-":
+        start = at + 1
+        while start < len(text) and text[start] == " ":
+            start += 1
+        after_number = last is not None and last.kind in _NEAR_NUMBER
+        if text[at] == "-" and after_number:
+            return [Token("to", "-", at, at + 1, meaning="-")]
+        found = NUMBER.match(text, start)
+        if not found or start - at > 2:
+            return [Token("blank", text[at], at, at + 1)]
+        sign = text[at]
+    else:
+        found = NUMBER.match(text, at)
+    if not found:
+        return []
+    glued_before = _inside_word(text, at) and not _ends_known(before, at)
+    return _numbers(text, start, found, sign, field, glued=glued_before)
+
+
+def _ends_known(before: list[Token], at: int) -> bool:
+    return bool(before) and before[-1].end == at and before[-1].kind not in ("word", "blank")
+
+
+def _numbers(text: str, start: int, found: re.Match[str], sign: str, field: str, *, glued: bool) -> list[Token]:
+    printed, end = found[0], found.end()
+    if " " in printed and unit_at(text, field, end) is None:
+        printed = printed.split(" ")[0]
+        end = start + len(printed)
+    made: list[Token] = []
+    unit = unit_at(text, field, end)
+    if unit is None and (torn := _torn_exponent(printed, text, end, field)):
+        printed, unit = torn
+    read = numbers(printed)
+    for index, one in enumerate(read):
+        if index:
+            made.append(Token("sep", ",", start, end))
+        made.append(Token("number", one.text, start, end, meaning=sign, number=one, glued=glued))
+    if not made:
+        return [Token("broken", printed, start, end)]
+    return made + _unit_after(text, end, field, unit, made[-1])
+
+
+def _torn_exponent(printed: str, text: str, end: int, field: str) -> tuple[str, tuple[str, float, int]] | None:
+    """ "2010-6" and "50 10-6": the times sign of ×10⁻⁶ is lost, and with it the gap before the ten."""
+    if not printed.endswith("10") or len(printed) < 3:
+        return None
+    unit = unit_at(text, field, end - 2)
+    return (printed[:-2], unit) if unit and unit[0].startswith("10") else None
+
+
+def _unit_after(
+    text: str, end: int, field: str, unit: tuple[str, float, int] | None, number: Token
+) -> list[Token]:
+    if unit is not None:
+        return [Token("unit", unit[0], end, unit[2], value=unit[1])]
+    if power := _TIMES_TEN.match(text, end):
+        assert number.number is not None  # noqa: S101 - a number token holds one
+        scale = 10.0 ** int(power[1].replace(" ", ""))
+        plain = float(f"{number.number.plain * scale:.12g}")
+        number.number = Number(number.text + power[0], plain)
+        number.end = power.end()
+        return _unit_after(text, power.end(), field, unit_at(text, field, power.end()), number)
+    if other := other_unit_at(text, field, end):
+        return [Token("other", text[end : other[2]], end, other[2], meaning=other[0], value=other[1])]
+    if end < len(text) and text[end].isalpha() and text[end].isascii() and not _starts_word(text, end):
+        number.glued = True
+    return []
+
+
+def _starts_word(text: str, at: int) -> bool:
+    """Whether a known word follows a number without a space ("60Max", "25typ", "2x")."""
+    pattern = _phrases().get(text[at].lower())
+    return bool(pattern and pattern.match(text.lower(), at)) or text[at] in "xX"
+
+
+def _free_unit(text: str, at: int, field: str, before: list[Token]) -> list[Token]:
+    """A unit that follows no number directly: "(100 max.) µW", "±ppm 20"."""
+    if not before or (at and text[at - 1].isalnum()):
+        return []
+    unit = unit_at(text, field, at)
+    if unit is None or len(unit[0]) == 1 and unit[0] not in "ΩW%":
+        return []
+    return [Token("unit", unit[0], at, unit[2], meaning="free", value=unit[1])]
+
+
+def _mark_or_word(text: str, at: int, char: str) -> Token:
+    if kind := _MARKS.get(char):
+        return Token(kind, char, at, at + 1, meaning=_COMPARE.get(char, ""))
+    if _IDEOGRAPH.match(char):
+        return Token("word", char, at, at + 1)
+    if char in "xX" and at and text[at - 1] in " 0123456789":
+        return Token("times", char, at, at + 1)
+    if found := _WORD.match(text, at):
+        return Token("word", found[0], at, found.end())
+    return Token("blank", char, at, at + 1)
