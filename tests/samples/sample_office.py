@@ -17,24 +17,22 @@ BOX = Border(left=THIN, right=THIN, top=THIN, bottom=THIN)
 GREEN = PatternFill("solid", fgColor="E2EBD9")
 
 LIST_GROUPS = [("Part", 3), ("Frequency", 5), ("Electrical", 4), ("Temperature (°C)", 2), ("Purchasing", 2)]
-LIST_HEAD = (
-    "Part number|Maker|Package|Frequency (MHz)|Mode|Load (pF)|Tol. (±ppm)|Stability (±ppm)|ESR max (Ω)|C0 max (pF)|"
-    "Drive max (µW)|Ageing 1st year (±ppm)|Min|Max|Unit price (EUR)|Stock"
-).split("|")
-LIST_ROWS: list[list[str | float | int | None]] = [
-    ["MLQ16-26M000-08A", "Medlarwood Piezo", "1.6 x 1.2", 26, "Fundamental", 8, 10, 15, 150, 1.0, 100, 2, -40, 85, 0.31, 4200],
-    ["MLQ20-26M000-08C", "Medlarwood Piezo", "2.0 x 1.6", 26, None, 8, 10, 15, 60, 1.5, 100, 2, -40, 85, 0.22, 15000],
-    ["MLQ20-26M000-08E", "Medlarwood Piezo", "2.0 x 1.6", 26, "Fundamental", 8, 7, 12, 60, 1.5, 100, 2, -40, 85, 0.29, 6000],
-    ["RTQ32-26M000-12B", "Russetfield Timing", "3.2 x 2.5", 26, "Fundamental", 12, 10, 15, 40, 3.0, 200, 2, -40, 85, 0.18, 11000],
-    ["RTQ25-26M000-08D", "Russetfield Timing", "2.5 x 2.0", 26, "Fundamental", 8, 30, 30, 50, 2.0, 200, 3, -40, 85, 0.15, 40000],
-    ["RTQ25-24M000-08A", "Russetfield Timing", "2.5 x 2.0", 24, "Fundamental", 8, 10, 15, 50, 2.0, 200, 3, -40, 85, 0.19, 900],
-    ["RTQ20-32M000-08A", "Russetfield Timing", "2.0 x 1.6", 32, "Fundamental", 8, 10, 15, 50, 1.5, 100, 2, -40, 85, 0.24, 27000],
-    ["RTQ49-26M000-3OT", "Russetfield Timing", "HC-49/US", 26, "3rd overtone", 8, 10, 20, 80, 5.0, 500, 3, -40, 85, 0.35, 300],
-    ["PPD25-26M000-08", "Pippinstow Devices", "2.5 x 2.0", 26, "Fundamental", 8, 10, 15, None, 2.0, 200, 2, -40, 85, 0.17, 22000],
-    ["PPD25-26M000-09", "Pippinstow Devices", "2.5 x 2.0", 26, "Fundamental", 9, 10, 15, 50, 2.0, 200, 2, -40, 85, 0.17, 7000],
-    ["PPD16-38M400-08", "Pippinstow Devices", "1.6 x 1.2", 38.4, "Fundamental", 8, 10, 15, 60, 1.0, 100, 2, -30, 85, 0.33, 5000],
-    ["PPD32-12M000-18", "Pippinstow Devices", "3.2 x 2.5", 12, "Fundamental", 18, 20, 30, 100, 3.0, 200, 3, -40, 85, 0.12, 61000],
-]
+LIST_HEAD = """Part number|Maker|Package|Frequency (MHz)|Mode|Load (pF)|Tol. (±ppm)|Stability (±ppm)
+ESR max (Ω)|C0 max (pF)|Drive max (µW)|Ageing 1st year (±ppm)|Min|Max|Unit price (EUR)|Stock""".replace("\n", "|")
+LIST_ROWS = """
+MLQ16-26M000-08A|Medlarwood Piezo|1.6 x 1.2|26|Fundamental|8|10|15|150|1|100|2|-40|85|0.31|4200
+MLQ20-26M000-08C|Medlarwood Piezo|2.0 x 1.6|26||8|10|15|60|1.5|100|2|-40|85|0.22|15000
+MLQ20-26M000-08E|Medlarwood Piezo|2.0 x 1.6|26|Fundamental|8|7|12|60|1.5|100|2|-40|85|0.29|6000
+RTQ32-26M000-12B|Russetfield Timing|3.2 x 2.5|26|Fundamental|12|10|15|40|3|200|2|-40|85|0.18|11000
+RTQ25-26M000-08D|Russetfield Timing|2.5 x 2.0|26|Fundamental|8|30|30|50|2|200|3|-40|85|0.15|40000
+RTQ25-24M000-08A|Russetfield Timing|2.5 x 2.0|24|Fundamental|8|10|15|50|2|200|3|-40|85|0.19|900
+RTQ20-32M000-08A|Russetfield Timing|2.0 x 1.6|32|Fundamental|8|10|15|50|1.5|100|2|-40|85|0.24|27000
+RTQ49-26M000-3OT|Russetfield Timing|HC-49/US|26|3rd overtone|8|10|20|80|5|500|3|-40|85|0.35|300
+PPD25-26M000-08|Pippinstow Devices|2.5 x 2.0|26|Fundamental|8|10|15||2|200|2|-40|85|0.17|22000
+PPD25-26M000-09|Pippinstow Devices|2.5 x 2.0|26|Fundamental|9|10|15|50|2|200|2|-40|85|0.17|7000
+PPD16-38M400-08|Pippinstow Devices|1.6 x 1.2|38.4|Fundamental|8|10|15|60|1|100|2|-30|85|0.33|5000
+PPD32-12M000-18|Pippinstow Devices|3.2 x 2.5|12|Fundamental|18|20|30|100|3|200|3|-40|85|0.12|61000
+"""
 LIST_WIDTHS = (21, 19, 10, 15, 13, 10, 11, 16, 12, 12, 14, 22, 7, 7, 16, 9)
 
 FORM_ROWS = [
@@ -99,6 +97,13 @@ def _save_book(book: Workbook, path: Path) -> None:
     _fix_dates(path)
 
 
+def _number_or_text(text: str) -> float | str | None:
+    try:
+        return float(text)
+    except ValueError:
+        return text or None
+
+
 def purchasing_list(path: Path) -> None:
     book = Workbook()
     sheet = book.active
@@ -112,10 +117,11 @@ def purchasing_list(path: Path) -> None:
         sheet.cell(4, column, name)
         sheet.merge_cells(start_row=4, start_column=column, end_row=4, end_column=column + span - 1)
         column += span
-    for row, values in enumerate([LIST_HEAD, *LIST_ROWS], start=5):
-        for number, value in enumerate(values, start=1):
-            sheet.cell(row, number, value)
-    for row in sheet.iter_rows(min_row=4, max_row=5 + len(LIST_ROWS)):
+    rows = [LIST_HEAD, *LIST_ROWS.split("\n")[1:-1]]
+    for row, line in enumerate(rows, start=5):
+        for number, text in enumerate(line.split("|"), start=1):
+            sheet.cell(row, number, _number_or_text(text))
+    for row in sheet.iter_rows(min_row=4, max_row=4 + len(rows)):
         for cell in row:
             cell.border = BOX
             if cell.row <= 5:

@@ -1,4 +1,4 @@
-"""What stands on the PDF and office sheets of `sample_specs/`, apart from how it is laid out. Every name and value is invented."""
+"""What stands on the PDF sheets of `sample_specs/`, apart from how it is laid out. Every name and value is invented."""
 
 from __future__ import annotations
 
@@ -80,6 +80,7 @@ SERIES_NOTES = [
     "Soudure par refusion : 260 °C, 10 s. Document ORV-FT-25, indice D.",
 ]
 
+CHINESE_TITLES = ["汀榆电子有限公司", "石英晶体谐振器 规格书"]
 CHINESE_HEAD = ["型号：TYJ2520-26M000-08", "封装：SMD 2520（2.5×2.0 mm），四焊盘", "文件编号：TY-SP-0187    版本：B"]
 CHINESE_ROWS = [
     ["序号", "项目", "符号", "规格", "条件"],

@@ -1,4 +1,4 @@
-"""The PDF sheets of `sample_specs/`: five by three different PDF writers, one printed by Chromium, one image-only scan."""
+"""The PDF sheets of `sample_specs/`: by two PDF libraries, one printed by Chromium, one image-only scan."""
 
 from __future__ import annotations
 
@@ -11,6 +11,9 @@ from pathlib import Path
 from typing import Any
 
 import sample_pages
+from fontTools import subset, ttLib
+from fontTools.pens.cu2quPen import Cu2QuPen
+from fontTools.pens.ttGlyphPen import TTGlyphPen
 from fpdf import FPDF
 from PIL import Image, ImageDraw, ImageFilter, ImageFont
 from reportlab.lib import colors
@@ -38,7 +41,7 @@ def _canvas(path: Path, title: str) -> Canvas:
     return canvas
 
 
-def _text(canvas: Canvas, x: float, y: float, text: str, size: float = 9, bold: bool = False) -> None:
+def _text(canvas: Canvas, x: float, y: float, text: str, size: float = 9, *, bold: bool = False) -> None:
     canvas.setFont("Sans-Bold" if bold else "Sans", size)
     canvas.drawString(x, y, text)
 
@@ -122,11 +125,11 @@ def borderless_leaders(path: Path) -> None:
     canvas.save()
 
 
-def _fpdf(regular: str, bold: str, face: int = 0) -> FPDF:
+def _fpdf(regular: str, bold: str) -> FPDF:
     pdf = FPDF()
     pdf.set_creation_date(MADE)
-    pdf.add_font("body", fname=regular, collection_font_number=face)
-    pdf.add_font("body", "B", fname=bold, collection_font_number=face)
+    pdf.add_font("body", fname=regular)
+    pdf.add_font("body", "B", fname=bold)
     pdf.set_margins(17, 15)
     pdf.add_page()
     return pdf
@@ -157,12 +160,48 @@ def series_with_bands(path: Path) -> None:
     pdf.output(str(path))
 
 
+def _truetype(collection: str, face: int, text: str, made: Path) -> str:
+    """Cut the glyphs of `text` out of a collection with cubic outlines and save them as TrueType.
+
+    fpdf2 writes cubic outlines with a glyph map that several PDF readers cannot follow.
+    """
+    font = ttLib.TTFont(collection, fontNumber=face, recalcTimestamp=False)
+    subsetter = subset.Subsetter(subset.Options(layout_features=[], notdef_outline=True))
+    subsetter.populate(text=text)
+    subsetter.subset(font)
+    glyphs, outlines = {}, font.getGlyphSet()
+    for name in font.getGlyphOrder():
+        pen = TTGlyphPen(None)
+        outlines[name].draw(Cu2QuPen(pen, 1.0, reverse_direction=True))
+        glyphs[name] = pen.glyph()
+    font["loca"], font["glyf"], font["maxp"].tableVersion = ttLib.newTable("loca"), ttLib.newTable("glyf"), 0x00010000
+    font["glyf"].glyphOrder, font["glyf"].glyphs = font.getGlyphOrder(), glyphs
+    for field in ("Zones", "TwilightPoints", "Storage", "FunctionDefs", "InstructionDefs", "StackElements"):
+        setattr(font["maxp"], f"max{field}", 0)
+    font["maxp"].maxZones, font["maxp"].maxSizeOfInstructions, font["maxp"].maxComponentElements = 1, 0, 0
+    font["post"].formatType = 3.0
+    for table in ("CFF ", "VORG"):
+        if table in font:
+            del font[table]
+    font.sfntVersion = "\000\001\000\000"
+    font.save(made)
+    return str(made)
+
+
 def chinese_sheet(path: Path) -> None:
-    pdf = _fpdf(NOTO_CJK, NOTO_CJK.replace("Regular", "Bold"), SIMPLIFIED_CHINESE)
+    text = "".join(sample_pages.CHINESE_TITLES + sample_pages.CHINESE_HEAD + sample_pages.CHINESE_NOTES)
+    text += "".join("".join(row) for row in sample_pages.CHINESE_ROWS)
+    with tempfile.TemporaryDirectory() as folder:
+        regular = _truetype(NOTO_CJK, SIMPLIFIED_CHINESE, text, Path(folder, "regular.ttf"))
+        bold = _truetype(NOTO_CJK.replace("Regular", "Bold"), SIMPLIFIED_CHINESE, text, Path(folder, "bold.ttf"))
+        _write_chinese(path, _fpdf(regular, bold))
+
+
+def _write_chinese(path: Path, pdf: FPDF) -> None:
     pdf.set_font("body", "B", 16)
-    pdf.cell(0, 11, "汀榆电子有限公司", align="C", new_x="LMARGIN", new_y="NEXT")
+    pdf.cell(0, 11, sample_pages.CHINESE_TITLES[0], align="C", new_x="LMARGIN", new_y="NEXT")
     pdf.set_font("body", size=12)
-    pdf.cell(0, 9, "石英晶体谐振器 规格书", align="C", new_x="LMARGIN", new_y="NEXT")
+    pdf.cell(0, 9, sample_pages.CHINESE_TITLES[1], align="C", new_x="LMARGIN", new_y="NEXT")
     pdf.set_font("body", size=9.5)
     for line in sample_pages.CHINESE_HEAD:
         pdf.cell(0, 6, line, new_x="LMARGIN", new_y="NEXT")
@@ -183,7 +222,13 @@ def japanese_columns(path: Path) -> None:
     with tempfile.TemporaryDirectory() as folder:
         page, printed = Path(folder, "page.html"), Path(folder, "page.pdf")
         page.write_text(sample_pages.japanese_html(), encoding="utf-8")
-        options = ["--headless", "--no-sandbox", "--disable-gpu", "--no-pdf-header-footer", f"--user-data-dir={folder}/p"]
+        options = [
+            "--headless",
+            "--no-sandbox",
+            "--disable-gpu",
+            "--no-pdf-header-footer",
+            f"--user-data-dir={folder}/p",
+        ]
         subprocess.run([browser, *options, f"--print-to-pdf={printed}", page.as_uri()], check=True, capture_output=True)
         data = printed.read_bytes()
     stamp = b"D:" + MADE.strftime("%Y%m%d%H%M%S").encode() + b"+00'00'"
