@@ -55,8 +55,8 @@ def ageing_factor(rule: AgeingRule, from_years: ArrayLike, to_years: ArrayLike) 
 def parabola_ppm(temperature_c: ArrayLike, coefficient_ppm_per_c2: ArrayLike, turnover_c: ArrayLike) -> Array:
     """df/f = k (T - T0)², k negative for a tuning fork.
 
-    Maxim, MAX6902 data sheet (2004) p. 14. A fit, good to a few ppm from -40 to 85 °C; the spread of k and T0 counts for
-    more.
+    Maxim, MAX6902 data sheet (2004) p. 14. A fit, good to a few ppm from -40 to 85 °C; the spread of k and T0 counts
+    for more.
     """
     shift: Array = array(coefficient_ppm_per_c2) * (array(temperature_c) - array(turnover_c)) ** 2
     return shift

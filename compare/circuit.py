@@ -159,12 +159,13 @@ def over_output_conductance(net: Network, s: Complex, c_shunt: Array) -> Mobius:
     return Mobius(before.a + net.gm * before.b, s_one, before.c + net.gm * before.d, s_across * s_one + n_one)
 
 
-def output_over_input(net: Network, s: Complex) -> Complex:
-    """V(b)/V(a), with the crystal's current the only thing that is put in."""
-    rd, gf, yo = net.r_series, net.g_feedback, net.g_output + s * net.c_amp
+def node_ratios(net: Network, s: Complex) -> tuple[Complex, Complex]:
+    """V(b)/V(a) and V(o)/V(a), with the crystal's current the only thing that is put in."""
+    rd, gf = net.r_series, net.g_feedback
+    yo: Complex = net.g_output + s * net.c_amp
     d = 1 + rd * (yo + gf)
-    ratio: Complex = -(s * net.c_in * d + net.gm * (1 + rd * gf) + yo * rd * gf) / (s * net.c_out * d + yo)
-    return ratio
+    output: Complex = -(s * net.c_in * d + net.gm * (1 + rd * gf) + yo * rd * gf) / (s * net.c_out * d + yo)
+    return output, (output + rd * (gf - net.gm)) / d
 
 
 def terminal_impedance_ohm(

@@ -1,7 +1,7 @@
 """The crystal alone: its motional arm, its resonances, what load does to them, and estimates where its sheet is silent.
 
-The four-element circuit of IEC 60122-1 and IEC 60444 (C0 across R1 - L1 - C1), cited from memory. Where C1 is not stated
-it is had, in this order, from L1, C0/C1, pulling sensitivity, Q with ESR, or an estimate (`estimates.toml`).
+The four-element circuit of IEC 60122-1 and IEC 60444 (C0 across R1 - L1 - C1), cited from memory. Where C1 is not
+stated it is had, in this order, from L1, C0/C1, pulling sensitivity, Q with ESR, or an estimate (`estimates.toml`).
 """
 
 from __future__ import annotations
@@ -229,7 +229,7 @@ def estimate_shunt_capacitance_pf(
     else:
         row = package_row(package)
         values = row["shunt_capacitance_pf"]
-        basis = f"usual for {row['called']}: {knowledge()['package_source']['source']}"
+        basis = f"usual for {row['called']}: {knowledge()['package_source']['shunt']}"
     low, mid, high = (np.asarray(min(value, limit_pf)) for value in values)
     return Estimate(low, mid, high, basis)
 
@@ -250,7 +250,7 @@ def estimate_motional_capacitance_ff(
     cut, overtone, frequency_mhz, package
         Of one part, or of many that are alike in these; overtone 1 is the fundamental.
     shunt_capacitance_pf : pF, or None
-        Low, mid and high of a C0 that is known (a typical value, a range). None where all that is known is a loose limit.
+        Low, mid and high of a C0 that is known (a typical value, a range). None where only a loose limit is known.
     limit_pf : pF
         That limit. It cannot raise C1, only cap it at `limit_pf` over the least C0/C1 of the cut.
     """
@@ -267,7 +267,7 @@ def estimate_motional_capacitance_ff(
     if named == "AT":
         row = package_row(package)
         low, mid, high = (value / order for value in row["motional_capacitance_ff"])
-        basis = f"usual for {kind(named, overtone)} in {row['called']}: {knowledge()['package_source']['source']}"
+        basis = f"usual for {kind(named, overtone)} in {row['called']}: {knowledge()['package_source']['motional']}"
     elif named == TUNING_FORK:
         row = knowledge()["tuning_fork"]
         low, mid, high = row["motional_capacitance_ff"]

@@ -29,7 +29,7 @@ from compare.circuit import (
     Network,
     angular,
     array,
-    output_over_input,
+    node_ratios,
     over_output_conductance,
     over_transconductance,
     series_load_pf,
@@ -41,7 +41,7 @@ DECADES_OF_GROWTH = np.log(1e5)
 CHUNK = 8192
 
 Limiter = Literal["transconductance", "output"]
-End = Literal["input", "output"]
+End = Literal["input", "output", "amplifier"]
 
 
 @dataclass(frozen=True)
@@ -69,6 +69,33 @@ class Crystal:
     def __iter__(self) -> Iterator[Array]:
         for field in fields(self):
             yield array(getattr(self, field.name))
+
+
+def fundamental_of(crystal: Crystal, overtone: ArrayLike, resistance_ratio: ArrayLike) -> Crystal:
+    """The fundamental of an overtone part of which only the overtone is stated: fs/n, n² C1, L1 and C0 the same.
+
+    Parameters
+    ----------
+    crystal : Crystal
+        As stated, for the overtone.
+    overtone : 1
+        n = 3, 5, ...
+    resistance_ratio : 1
+        R1 of the fundamental over the stated one: run it from 1/n² to 1.
+
+    Returns
+    -------
+    Crystal
+        With an infinite rated load, so that its nominal frequency is its series resonance and its L1 the overtone's.
+
+    References
+    ----------
+    ST AN2867 (2025), section 3.9: C1 of the third overtone is a ninth of the fundamental's, R1 about three times it.
+    """
+    frequency, load, c0, c1, r1 = crystal
+    n = array(overtone)
+    fs = motional.series_resonance_mhz(frequency, c0, c1, load)
+    return Crystal(fs / n, np.inf, c0, c1 * n**2, r1 * array(resistance_ratio))
 
 
 @dataclass(frozen=True)
@@ -155,13 +182,12 @@ class Swing:
     probe_pf: Array
 
 
-def analyse(
+def analyse(  # noqa: PLR0917
     circuit: Circuit,
     crystal: Crystal,
     swing_peak_v: ArrayLike = np.nan,
     swing_at: End = "input",
     limiter: Limiter = "transconductance",
-    *,
     probe_pf: ArrayLike = 0.0,
 ) -> dict[str, Array]:
     """All that circuit and crystal settle between them, one array for each of the contract's keys.
@@ -172,8 +198,8 @@ def analyse(
         Broadcastable with one another: parts along one axis, corners along another, for example (n, 1) and (1, k).
     swing_peak_v : V
         Peak of the fundamental at the end named; NaN where it is not known.
-    swing_at : "input" or "output"
-        Which end of the crystal.
+    swing_at : "input", "output" or "amplifier"
+        Which end of the crystal, or the amplifier's output ahead of the series resistor.
     limiter : "transconductance" or "output"
         What limits the amplitude: a transconductance that falls to the critical one, or an output conductance that
         rises until it balances. A real amplifier lies between; where it is not known span both.
@@ -335,10 +361,8 @@ def output_limited_state(loop: Loop, critical: Steady) -> Steady:
 
 
 def state_with_probe(circuit: Circuit, arm: Arm, swing: Swing, limiter: Limiter) -> Steady:
-    if swing.at == "input":
-        probed = replace(circuit, input_pf=array(circuit.input_pf) + swing.probe_pf)
-    else:
-        probed = replace(circuit, output_pf=array(circuit.output_pf) + swing.probe_pf)
+    node = {"input": "input_pf", "output": "output_pf", "amplifier": "amplifier_output_pf"}[swing.at]
+    probed = Circuit(**{**vars(circuit), node: array(getattr(circuit, node)) + swing.probe_pf})
     loop = Loop(Network.of(probed), arm)
     critical = critical_state(loop)
     return critical if limiter == "transconductance" else output_limited_state(loop, critical)
@@ -368,12 +392,29 @@ def drive_level_uw(arm: Arm, steady: Steady, swing: Swing) -> Array:
     The current into C0 and the across stray is counted: without losses I = ω Cin V (1 + (C0 + Cx)/Cs), Cs = Cin Cout /
     (Cin + Cout).
     """
-    ratio = output_over_input(steady.net, 1j * arm.omega_s * (1 + steady.pull))
-    current = np.abs((ratio - 1) / steady.seen) * swing.peak_v
-    if swing.at == "output":
-        current = current / np.abs(ratio)
+    output, amplifier = node_ratios(steady.net, 1j * arm.omega_s * (1 + steady.pull))
+    current = np.abs((output - 1) / steady.seen) * swing.peak_v
+    if swing.at != "input":
+        current = current / np.abs(output if swing.at == "output" else amplifier)
     power: Array = current**2 * arm.r / 2 / MICRO
     return power
+
+
+def amplifier_swing_v(
+    circuit: Circuit, crystal: Crystal, swing_peak_v: ArrayLike, swing_at: End, limiter: Limiter = "transconductance"
+) -> Array:
+    """Peak V at the amplifier's output in the steady state, from the swing known at an end of the crystal.
+
+    What an amplifier that clips keeps when a series resistor is put in. Not cut into blocks: a few thousand at once.
+    """
+    with np.errstate(all="ignore"):
+        loop = Loop(Network.of(circuit), Arm.of(crystal))
+        critical = critical_state(loop)
+        steady = critical if limiter == "transconductance" else output_limited_state(loop, critical)
+        output, amplifier = node_ratios(steady.net, 1j * loop.arm.omega_s * (1 + steady.pull))
+        known_at = {"input": np.ones(()), "output": np.abs(output), "amplifier": np.abs(amplifier)}[swing_at]
+        swing: Array = array(swing_peak_v) * np.abs(amplifier) / known_at
+        return swing
 
 
 def greatest_esr_ohm(loop: Loop) -> Array:

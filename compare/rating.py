@@ -20,7 +20,7 @@ EsrMeans = Literal["motional", "at load"]
 
 
 def from_critical_ms(critical_transconductance_max_ms: ArrayLike, factor_inside: ArrayLike = 1.0) -> Array:
-    """Least gm = F gm_crit: the greatest critical gm that the IC allows, times the safety factor that the figure includes.
+    """Least gm = F gm_crit: the greatest critical gm that the IC allows, times the safety factor in the figure.
 
     ST AN2867 (2025), Gm_crit_max = gm / 5, turned round.
     """
