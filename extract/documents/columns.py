@@ -1,145 +1,119 @@
-"""Columns that are held together by spaces or tabs alone: lines of typewriter text to tables."""
+"""Columns told from where words stand, in tables whose lines are drawn only in part or not at all."""
 
 from __future__ import annotations
 
-import re
-import unicodedata
 from collections.abc import Sequence
-from dataclasses import dataclass
 
-from extract.documents.model import Cell, Table
-from extract.model import Where
+from extract.documents.words import Word, split_at_gaps
 
-LEAST_LINES = 3
-_GAP = re.compile(r"[ \u00a0]{2,}|\u3000+|\t+")
-_LEADER = re.compile(r"(?<=[^\s.·…_])\s?(?:\.{3,}|…{2,}|·{3,}|(?:\s\.){3,}|_{4,})\s*(?=\S)")
-_RULE = re.compile(r"\s*(?:[-=_─━=*+|│]{3,}\s*)+$")
+Span = tuple[float, float]
+Segment = list[Word]
 
-
-@dataclass(frozen=True, slots=True)
-class Piece:
-    """A run of words and the printed positions that it covers, `end` not included."""
-
-    text: str
-    start: int
-    end: int
+# Text sizes; less is the space inside a text, except where many lines leave it free.
+NARROWEST_GUTTER = 0.4
 
 
-def is_rule(text: str) -> bool:
-    """Whether a line is only drawn: dashes, equals signs, the border of a box."""
-    return bool(_RULE.match(text))
+def span_of(segment: Sequence[Word]) -> Span:
+    """Left and right end of words on a line."""
+    return (segment[0].x0, max(word.x1 for word in segment))
 
 
-def printed_width(text: str) -> int:
-    """Positions that a text covers; East Asian signs are two wide."""
-    return sum(
-        0 if unicodedata.combining(character) else 2 if unicodedata.east_asian_width(character) in "WF" else 1
-        for character in text
-    )
+def columns_of(lines: Sequence[Sequence[Segment]]) -> list[Span]:
+    """Columns that the segments of these lines stand in, from left to right; one column where they do not line up.
+
+    A few lines may run across a gutter (a merged cell, a heading): one in five.
+    """
+    spans = [[span_of(segment) for segment in line] for line in lines]
+    several = [line for line in spans if len(line) > 1]
+    if len(several) < 2:
+        return [_whole(spans)] if any(spans) else []
+    columns = _covered([span for line in spans for span in line], int(0.2 * len(spans)))
+    columns = _with_lonely(columns, [span for line in spans for span in line])
+    columns = [column for column in columns if _has_company(column, columns, several)]
+    return columns if len(columns) > 1 else [_whole(spans)]
 
 
-def pieces(text: str) -> list[Piece]:
-    """Runs of words of a line, parted by tabs, by two or more spaces, a wide space or leader dots."""
-    text = _LEADER.sub(lambda dots: " " * max(2, len(dots.group())), text.expandtabs(8))
-    found, position = [], 0
-    for match in re.finditer(_GAP.pattern + r"|$", text):
-        run = text[position : match.start()]
-        if run.strip():
-            start = printed_width(text[:position]) + len(run) - len(run.lstrip())
-            found.append(Piece(run.strip(), start, printed_width(text[: match.start()])))
-        position = match.end()
-    return found
+def _whole(spans: Sequence[Sequence[Span]]) -> Span:
+    flat = [span for line in spans for span in line]
+    return (min(span[0] for span in flat), max(span[1] for span in flat))
 
 
-def by_position(lines: Sequence[tuple[int, str]]) -> Table | None:
-    """A table of lines (number, text) whose pieces stand in common columns, or None where they do not."""
-    printed = [(number, pieces(text)) for number, text in lines if not is_rule(text)]
-    if len(printed) < LEAST_LINES:
-        return None
-    columns = _columns([row for _, row in printed])
-    if len(columns) < 2 or not _holds(printed, columns):
-        return None
-    cells: list[Cell] = []
-    for row, (number, found) in enumerate(printed):
-        cells.extend(_row_cells(row, Where(line=number), found, columns))
-    return Table(tuple(cells), len(printed), len(columns), Where(line=printed[0][0]), ruled=False)
-
-
-def by_tabs(lines: Sequence[tuple[int, str]]) -> Table | None:
-    """A table of lines with the same number of tabs in each, or None."""
-    rows = [(number, text.split("\t")) for number, text in lines]
-    width = len(rows[0][1])
-    if width < 2 or len(rows) < 2 or any(len(texts) != width for _, texts in rows):
-        return None
-    cells = [
-        Cell(text.strip(), row, column, Where(line=number))
-        for row, (number, texts) in enumerate(rows)
-        for column, text in enumerate(texts)
-        if text.strip()
-    ]
-    return Table(tuple(cells), len(rows), width, Where(line=rows[0][0]), ruled=False)
-
-
-def _columns(rows: Sequence[Sequence[Piece]]) -> list[tuple[int, int]]:
-    """Stretches of positions that are printed on, parted where (almost) no line prints; a stray title may cross."""
-    width = max((piece.end for row in rows for piece in row), default=0)
-    cover = [0] * (width + 1)
-    for row in rows:
-        for piece in row:
-            for position in range(piece.start, piece.end):
-                cover[position] += 1
-    may_cross = len(rows) // 6
-    columns: list[tuple[int, int]] = []
-    start = None
-    for position, count in enumerate(cover):
-        if count > may_cross and start is None:
+def _covered(spans: Sequence[Span], allowed: int) -> list[Span]:
+    """Stretches that more than the allowed number of spans cover."""
+    events = sorted([(span[0], 1) for span in spans] + [(span[1], -1) for span in spans])
+    stretches: list[Span] = []
+    depth, start = 0, 0.0
+    for position, step in events:
+        before, depth = depth, depth + step
+        if before <= allowed < depth:
             start = position
-        elif count <= may_cross and start is not None:
-            columns.append((start, position))
-            start = None
-    strays = [
-        (piece.start, piece.end)
-        for row in rows
-        for piece in row
-        if not any(piece.start < end and start < piece.end for start, end in columns)
+        elif depth <= allowed < before and position > start:
+            stretches.append((start, position))
+    return stretches
+
+
+def _with_lonely(columns: Sequence[Span], spans: Sequence[Span]) -> list[Span]:
+    """Columns with those added that hold too few texts to count as covered."""
+    lonely = [span for span in spans if not any(overlap(span, column) > 0 for column in columns)]
+    return sorted([*columns, *_covered(lonely, 0)])
+
+
+def _has_company(column: Span, columns: Sequence[Span], lines: Sequence[Sequence[Span]]) -> bool:
+    """Tell whether some line has a text in this column and another in a different one."""
+    for line in lines:
+        here = [span for span in line if overlap(span, column) > 0]
+        if here and any(overlap(span, other) > 0 for span in line if span not in here for other in columns):
+            return True
+    return False
+
+
+def overlap(one: Span, other: Span) -> float:
+    """Length that two spans share; below zero the gap between them."""
+    return min(one[1], other[1]) - max(one[0], other[0])
+
+
+def borders_of(columns: Sequence[Span], left: float, right: float) -> list[float]:
+    """Borders round columns: the outer ones as given, the inner ones in the middle of the gutters."""
+    inner = [(before[1] + after[0]) / 2 for before, after in zip(columns, columns[1:], strict=False)]
+    return [min(left, columns[0][0]), *inner, max(right, columns[-1][1])]
+
+
+def placed(line: Sequence[Segment], columns: Sequence[Span]) -> list[tuple[int, int, Segment]]:
+    """Segments of one line with the first and last column that each stands in.
+
+    A segment is parted at a gutter where its words leave it free.
+    """
+    result: list[tuple[int, int, Segment]] = []
+    for segment in line:
+        for part in _parted(segment, columns):
+            touched = _touched(span_of(part), columns)
+            if result and result[-1][1] >= touched[0]:
+                first, last, words = result[-1]
+                result[-1] = (min(first, touched[0]), max(last, touched[1]), words + part)
+            else:
+                result.append((*touched, part))
+    return result
+
+
+def _touched(span: Span, columns: Sequence[Span]) -> tuple[int, int]:
+    least = 0.12 * (span[1] - span[0])
+    touched = [
+        index
+        for index, column in enumerate(columns)
+        if overlap(span, column) > min(least, 0.5 * (column[1] - column[0]))
     ]
-    return _merged(sorted(columns + strays))
+    if touched:
+        return touched[0], touched[-1]
+    nearest = max(range(len(columns)), key=lambda index: overlap(span, columns[index]))
+    return nearest, nearest
 
 
-def _merged(stretches: Sequence[tuple[int, int]]) -> list[tuple[int, int]]:
-    merged: list[tuple[int, int]] = []
-    for start, end in stretches:
-        if merged and start < merged[-1][1]:
-            merged[-1] = (merged[-1][0], max(end, merged[-1][1]))
-        else:
-            merged.append((start, end))
-    return merged
+def _parted(segment: Segment, columns: Sequence[Span]) -> list[Segment]:
+    gutters = [(before[1], after[0]) for before, after in zip(columns, columns[1:], strict=False)]
 
+    def parts(left: Word, right: Word) -> bool:
+        gap = (left.x1, right.x0)
+        wide_enough = gap[1] - gap[0] > NARROWEST_GUTTER * max(left.size, right.size)
+        return wide_enough and any(overlap(gap, gutter) > 0 for gutter in gutters)
 
-def _holds(printed: Sequence[tuple[int, Sequence[Piece]]], columns: Sequence[tuple[int, int]]) -> bool:
-    """Whether the lines really share the columns: most lines fill two or more, most columns are filled repeatedly."""
-    filled = [0] * len(columns)
-    full_lines = 0
-    for _, row in printed:
-        touched = {index for piece in row for index in _touched(piece, columns)}
-        full_lines += len(touched) > 1
-        for index in touched:
-            filled[index] += 1
-    return full_lines * 3 >= len(printed) * 2 and sum(count > 1 for count in filled) >= 2
-
-
-def _touched(piece: Piece, columns: Sequence[tuple[int, int]]) -> list[int]:
-    return [index for index, (start, end) in enumerate(columns) if piece.start < end and start < piece.end]
-
-
-def _row_cells(row: int, where: Where, found: Sequence[Piece], columns: Sequence[tuple[int, int]]) -> list[Cell]:
-    cells: list[Cell] = []
-    for piece in found:
-        touched = _touched(piece, columns)
-        if cells and cells[-1].column + cells[-1].column_span > touched[0]:
-            before = cells.pop()
-            span = max(touched[-1] + 1 - before.column, before.column_span)
-            cells.append(Cell(f"{before.text}  {piece.text}", row, before.column, where, column_span=span))
-        else:
-            cells.append(Cell(piece.text, row, touched[0], where, column_span=len(touched)))
-    return cells
+    return split_at_gaps(segment, parts)

@@ -1,0 +1,350 @@
+"""Words outside drawn tables: text columns in reading order, lines of segments, tables without lines."""
+
+from __future__ import annotations
+
+import re
+from collections.abc import Callable, Sequence
+from dataclasses import dataclass
+
+from extract.documents.cells import Piece, table_of
+from extract.documents.columns import columns_of, overlap, placed, span_of
+from extract.documents.model import Line, Segment, Table
+from extract.documents.ruled import GridCell
+from extract.documents.words import Box, Word, confidence_of, in_lines, joined, split_at_gaps, union
+from extract.model import Where
+
+Placer = Callable[[Box], Where]
+
+# Text sizes: the narrowest gutter between two columns of text.
+TEXT_GUTTER = 1.2
+# Three dots or one ellipsis stand for "to" in a range; leaders are longer.
+_LEADER = re.compile(r"^[.·․‥_]{4,}$|^…{2,}$")
+_TRAILING_LEADER = re.compile(r"^(?P<text>.*?[^.·․‥…_])(?P<dots>[.·․‥_]{4,}|…{2,})$")
+
+
+@dataclass(frozen=True, slots=True)
+class Item:
+    """What is put in order: a part of a text line, or a finished table with its box."""
+
+    box: Box
+    words: tuple[Word, ...] = ()
+    blocks: tuple[Table | Line, ...] = ()
+
+    @property
+    def level(self) -> float:
+        return sum(word.line_y for word in self.words) / len(self.words) if self.words else self.box[1]
+
+    @property
+    def size(self) -> float:
+        return max((word.size for word in self.words), default=0.0)
+
+
+def items_of(words: Sequence[Word]) -> list[Item]:
+    """Segments of text lines; leader dots part segments and are left out."""
+    items = []
+    for line in in_lines(words):
+        for segment in split_at_gaps(line):
+            items += [Item(union(word.box for word in part), tuple(part)) for part in _without_leaders(segment)]
+    return items
+
+
+def _without_leaders(segment: Sequence[Word]) -> list[list[Word]]:
+    parts: list[list[Word]] = [[]]
+    dots = 0
+    for word in segment:
+        found = _TRAILING_LEADER.match(word.text)
+        if _LEADER.match(word.text):
+            parts.append([])
+        elif found:
+            parts[-1].append(_cut_to(word, found["text"]))
+            parts.append([])
+        elif word.text in {".", "·", "•", "_"}:
+            dots += 1
+            parts[-1].append(word)
+            if dots >= 4:
+                parts[-1] = parts[-1][:-4] if dots == 4 else parts[-1][:-1]
+                if dots == 4:
+                    parts.append([])
+            continue
+        else:
+            parts[-1].append(word)
+        dots = 0
+    return [part for part in parts if part]
+
+
+def _cut_to(word: Word, text: str) -> Word:
+    share = len(text) / len(word.text)
+    return Word(
+        text, word.x0, word.top, word.x0 + share * (word.x1 - word.x0), word.bottom, word.size, word.angle,
+        word.confidence, word.baseline, word.bold,
+    )  # fmt: skip
+
+
+# --- reading order
+
+
+def in_reading_order(items: Sequence[Item]) -> list[list[Item]]:
+    """Items in flows: each flow is read from the top down before the next; text columns are flows of their own."""
+    if not items:
+        return []
+    gutter = _gutter(items)
+    if gutter is None:
+        return [sorted(items, key=lambda item: (item.box[1], item.box[0]))]
+    across = [item for item in items if item.box[0] < gutter[0] - 1 and item.box[2] > gutter[1] + 1]
+    flows: list[list[Item]] = []
+    edges = [float("-inf"), *sorted(item.level if item.words else item.box[1] for item in across), float("inf")]
+    rest = [item for item in items if item not in across]
+    for upper, lower in zip(edges, edges[1:], strict=False):
+        lead = [item for item in across if (item.level if item.words else item.box[1]) == upper]
+        band = [item for item in rest if upper <= (item.level if item.words else item.box[1]) < lower]
+        flows += _band_in_order(lead, band, gutter)
+    return flows
+
+
+def _band_in_order(lead: list[Item], band: list[Item], gutter: tuple[float, float]) -> list[list[Item]]:
+    middle = (gutter[0] + gutter[1]) / 2
+    left = [item for item in band if (item.box[0] + item.box[2]) / 2 < middle]
+    right = [item for item in band if item not in left]
+    if left and right and _are_columns(left, right):
+        tail = _rows_across(left, right, middle)
+        left, right = ([item for item in side if item not in tail] for side in (left, right))
+        flows = [lead] if lead else []
+        flows += in_reading_order(left) + in_reading_order(right)
+        return flows + ([tail] if tail else [])
+    whole = sorted(lead + band, key=lambda item: (item.box[1], item.box[0]))
+    return [whole] if whole else []
+
+
+def _rows_across(left: Sequence[Item], right: Sequence[Item], middle: float) -> list[Item]:
+    """Rows at the foot of two columns that run across both: many short texts, or texts on a level below tables."""
+    lowest = max((item.box[3] for item in [*left, *right] if item.blocks), default=0.0)
+    text = [item for item in [*left, *right] if item.words and item.box[1] > lowest]
+    tail: list[Item] = []
+    kept: list[Item] = []
+    for row in reversed(_rows(text)):
+        sides = {(item.box[0] + item.box[2]) / 2 < middle for item in row}
+        if len(sides) == 2 and (len(row) >= 4 or lowest > 0):
+            tail = row + kept + tail
+            kept = []
+        elif lowest > 0 and len(sides) == 1:
+            kept = row + kept
+        else:
+            break
+    return tail
+
+
+def _gutter(items: Sequence[Item]) -> tuple[float, float] | None:
+    """Best upright white stripe between columns of text; None where the items are one column."""
+    if len(items) < 4:
+        return None
+    size = _usual_size(items)
+    left, right = min(item.box[0] for item in items), max(item.box[2] for item in items)
+    best: tuple[float, tuple[float, float]] | None = None
+    starts = sorted({item.box[0] for item in items})
+    for start in starts:
+        if not left + 0.12 * (right - left) < start < right - 0.08 * (right - left):
+            continue
+        ends = [item.box[2] for item in items if item.box[2] < start - 0.5]
+        if not ends:
+            continue
+        stripe = (start - TEXT_GUTTER * size, start)
+        score = _columns_score(items, stripe)
+        if score > 0 and (best is None or score > best[0]):
+            best = (score, stripe)
+    return best[1] if best else None
+
+
+def _columns_score(items: Sequence[Item], stripe: tuple[float, float]) -> float:
+    """How well the stripe parts columns: items on the poorer side, less those that run across it; 0 for not at all."""
+    left = [item for item in items if item.box[2] <= stripe[0]]
+    right = [item for item in items if item.box[0] >= stripe[1] - 0.5]
+    across = len(items) - len(left) - len(right)
+    if across > 0.35 * len(items) or not left or not right:
+        return 0.0
+    tables = any(item.blocks for item in left + right)
+    poorer = min(len(left), len(right))
+    if (poorer < 3 and not tables) or not _are_columns(left, right):
+        return 0.0
+    return poorer + 2 * tables - across + 0.5 * _reach(left, right)
+
+
+def _reach(left: Sequence[Item], right: Sequence[Item]) -> float:
+    heights = [union(item.box for item in side) for side in (left, right)]
+    shared = overlap((heights[0][1], heights[0][3]), (heights[1][1], heights[1][3]))
+    return max(0.0, shared) / 100
+
+
+def _are_columns(left: Sequence[Item], right: Sequence[Item]) -> bool:
+    """Tell whether two sides are read one after the other: a table beside text, or lines that do not stand level."""
+    boxes = [union(item.box for item in side) for side in (left, right)]
+    if overlap((boxes[0][1], boxes[0][3]), (boxes[1][1], boxes[1][3])) <= 0:
+        return False
+    for side, other in ((left, right), (right, left)):
+        for item in side:
+            beside = any(overlap((item.box[1], item.box[3]), (one.box[1], one.box[3])) > 0 for one in other)
+            if item.blocks and beside:
+                return True
+    levels = [sorted({round(item.level, 1) for item in side if item.words}) for side in (left, right)]
+    fewer, more = sorted(levels, key=len)
+    if len(fewer) < 2:
+        return False
+    size = _usual_size([*left, *right])
+    level = sum(any(abs(one - other) < 0.3 * size for other in more) for one in fewer)
+    return level < 0.6 * len(fewer)
+
+
+def _usual_size(items: Sequence[Item]) -> float:
+    sizes = sorted(word.size for item in items for word in item.words)
+    return sizes[len(sizes) // 2] if sizes else 9.0
+
+
+# --- lines and tables of one flow
+
+
+def blocks_of(flow: Sequence[Item], place: Placer) -> list[Table | Line]:
+    """Blocks of one flow: its tables, and its lines of text, those that line up in columns as tables."""
+    blocks: list[Table | Line] = []
+    text: list[Item] = []
+    for item in flow:
+        if item.blocks:
+            blocks += _text_blocks(text, place)
+            blocks += item.blocks
+            text = []
+        else:
+            text.append(item)
+    return blocks + _text_blocks(text, place)
+
+
+def _text_blocks(items: Sequence[Item], place: Placer) -> list[Table | Line]:
+    if not items:
+        return []
+    size = _usual_size(items)
+    rows = _rows(items)
+    blocks: list[Table | Line] = []
+    start = 0
+    while start < len(rows):
+        end = _table_end(rows, start, size)
+        if end > start:
+            blocks.append(_loose_table(rows[start:end], place))
+            start = end
+        else:
+            blocks.append(_line(rows[start], size, place))
+            start += 1
+    return blocks
+
+
+def _rows_joined(rows: Sequence[Sequence[Item]]) -> list[list[list[Item]]]:
+    """Rows of a table, each of one or more text lines: what goes on below a row stands nearer to it than the next row."""
+    groups: list[list[list[Item]]] = []
+    levels = [sum(item.level for item in row) / len(row) for row in rows]
+    full = [level for level, row in zip(levels, rows, strict=True) if len(row) > 1]
+    pitch = min((below - above for above, below in zip(full, full[1:], strict=False)), default=0.0)
+    for index, row in enumerate(rows):
+        if index and len(row) == 1 and levels[index] - levels[index - 1] < 0.75 * pitch:
+            groups[-1].append(list(row))
+        else:
+            groups.append([list(row)])
+    return groups
+
+
+def _rows(items: Sequence[Item]) -> list[list[Item]]:
+    """Items on a level, from left to right."""
+    of_word = {id(word): item for item in items for word in item.words}
+    rows = []
+    for line in in_lines([word for item in items for word in item.words]):
+        seen: dict[int, Item] = {}
+        for word in line:
+            item = of_word[id(word)]
+            seen.setdefault(id(item), item)
+        rows.append(list(seen.values()))
+    return _each_once(rows)
+
+
+def _each_once(rows: Sequence[Sequence[Item]]) -> list[list[Item]]:
+    seen: set[int] = set()
+    result = []
+    for row in rows:
+        fresh = [item for item in row if id(item) not in seen]
+        seen |= {id(item) for item in fresh}
+        if fresh:
+            result.append(fresh)
+    return result
+
+
+def _line(row: Sequence[Item], size: float, place: Placer) -> Line:
+    segments = tuple(Segment(joined(item.words), place(item.box), confidence_of(item.words)) for item in row)
+    words = [word for item in row for word in item.words]
+    heading = len(row) == 1 and (all(word.bold for word in words) or min(word.size for word in words) > 1.15 * size)
+    return Line(segments, place(union(item.box for item in row)), heading)
+
+
+def _table_end(rows: Sequence[Sequence[Item]], start: int, size: float) -> int:
+    """Index behind the last row of a table that begins at this row; the row's own index where none begins."""
+    if len(rows[start]) < 2:
+        return start
+    end, several = start, 0
+    last_full = start
+    while end < len(rows):
+        if end > start and rows[end][0].box[1] - _bottom(rows[end - 1]) > 2.2 * size:
+            break
+        if len(rows[end]) >= 2:
+            if _has_other_size(rows[end], rows[start]) and several > 1:
+                break
+            several += 1
+            last_full = end + 1
+        elif end - last_full >= 2 or _is_heading(rows[end], size):
+            break
+        end += 1
+    end = _longest_in_columns(rows, start, last_full)
+    if end > start and end < len(rows) and len(rows[end]) == 1 and len(_rows_joined(rows[start : end + 1])[-1]) > 1:
+        end += 1
+    return end
+
+
+def _bottom(row: Sequence[Item]) -> float:
+    return max(item.box[3] for item in row)
+
+
+def _has_other_size(row: Sequence[Item], first: Sequence[Item]) -> bool:
+    one, other = max(item.size for item in row), max(item.size for item in first)
+    return not 0.7 < one / other < 1.4
+
+
+def _is_heading(row: Sequence[Item], size: float) -> bool:
+    return all(word.bold for item in row for word in item.words) or max(item.size for item in row) > 1.15 * size
+
+
+def _longest_in_columns(rows: Sequence[Sequence[Item]], start: int, end: int) -> int:
+    """Index behind the most rows from the start that stand in columns; the start where that is fewer than three."""
+    while end - start >= 3:
+        lines = [[list(item.words) for item in row] for row in rows[start:end]]
+        full = [line for line in lines if len(line) > 1]
+        columns = columns_of(lines)
+        if len(full) >= 3 and len(columns) > 1 and _fits(full, columns):
+            return end
+        end -= 1
+        while end > start and len(rows[end - 1]) < 2:
+            end -= 1
+    return start
+
+
+def _fits(lines: Sequence[Sequence[list[Word]]], columns: Sequence[tuple[float, float]]) -> bool:
+    """Tell whether nearly all segments stand in a column of their own."""
+    good = sum(len(placed(line, columns)) >= len(line) for line in lines)
+    begins = [overlap(span_of(line[0]), columns[0]) > 0 for line in lines]
+    return good >= 0.8 * len(lines) and sum(begins) >= 0.5 * len(lines)
+
+
+def _loose_table(rows: Sequence[Sequence[Item]], place: Placer) -> Table:
+    left = min(item.box[0] for row in rows for item in row)
+    right = max(item.box[2] for row in rows for item in row)
+    groups = _rows_joined(rows)
+    tops = [min(item.box[1] for row in group for item in row) for group in groups]
+    bottoms = [max(item.box[3] for row in group for item in row) for group in groups]
+    borders = [tops[0], *[(bottom + top) / 2 for bottom, top in zip(bottoms, tops[1:], strict=False)], bottoms[-1]]
+    pieces = []
+    for index, group in enumerate(groups):
+        box = (left, borders[index], right, borders[index + 1])
+        words = tuple(word for row in group for item in row for word in item.words)
+        pieces.append(Piece(GridCell(index, 0, 1, 1, box), words))
+    return table_of(pieces, place, ruled=False)

@@ -1,0 +1,294 @@
+"""Single glyphs of a page -> words: struck twice, torn, letter-spaced, lowered and raised ones put right."""
+
+from __future__ import annotations
+
+import re
+from bisect import bisect_left, bisect_right
+from collections.abc import Iterable, Sequence
+from dataclasses import dataclass, replace
+
+from extract.documents.symbols import translated
+from extract.documents.words import SUPERSCRIPTS, Box, Word, is_cjk, turned, turned_back
+
+# Characters of a lowered or raised mark: "nom", "*1)", "stg", "OPR"; longer ones are words in small type.
+LONGEST_MARK = 6
+
+
+@dataclass(frozen=True, slots=True)
+class Glyph:
+    """One character as drawn, in points from the top left of the page as shown.
+
+    `base` is the baseline's distance from the top or, for sideways text, from the edge that is the top when it is read.
+    """
+
+    text: str
+    box: Box
+    size: float
+    font: str
+    angle: int = 0
+    base: float = 0.0
+
+
+@dataclass(slots=True)
+class _Run:
+    """A word in the making, in the frame in which it reads from left to right."""
+
+    text: str
+    x0: float
+    top: float
+    x1: float
+    bottom: float
+    size: float
+    base: float
+    bold: bool
+    glyphs: int = 1
+    # What a raised mark became: it is set apart from a word behind it.
+    closed: bool = False
+
+    def take(self, other: _Run, text: str) -> None:
+        self.text = text
+        self.x0, self.x1 = min(self.x0, other.x0), max(self.x1, other.x1)
+        self.top, self.bottom = min(self.top, other.top), max(self.bottom, other.bottom)
+        self.glyphs += other.glyphs
+
+
+def words_of(glyphs: Sequence[Glyph], width: float, height: float) -> list[Word]:
+    """Words of a page of that size (as shown), each in the page's own frame with the angle at which it reads."""
+    words: list[Word] = []
+    for angle in sorted({glyph.angle for glyph in glyphs}):
+        chosen = [glyph for glyph in glyphs if glyph.angle == angle]
+        if angle:
+            chosen = [replace(glyph, box=turned(glyph.box, angle, width, height)) for glyph in chosen]
+        words += [_word(run, angle, width, height) for run in _runs_put_right(chosen)]
+    return words
+
+
+def _word(run: _Run, angle: int, width: float, height: float) -> Word:
+    box = turned_back((run.x0, run.top, run.x1, run.bottom), angle, width, height)
+    return Word(run.text, *box, size=run.size, angle=angle, baseline=None if angle else run.base, bold=run.bold)
+
+
+def _runs_put_right(glyphs: Sequence[Glyph]) -> list[_Run]:
+    runs = _runs(_struck_once(glyphs))
+    runs = _same_line_neighbours(runs)
+    runs = _letter_spaced(runs)
+    return _marks_attached(runs)
+
+
+def _struck_once(glyphs: Iterable[Glyph]) -> list[Glyph]:
+    """Leave out glyphs that are printed again over themselves, to make type bold or to shade it."""
+    seen: dict[tuple[str, int, int], tuple[float, float]] = {}
+    kept: list[Glyph] = []
+    for glyph in glyphs:
+        if glyph.text.isspace():
+            kept.append(glyph)
+            continue
+        near = max(0.12 * glyph.size, 0.3)
+        # Thin letters stand close together: "ll" must not become "l".
+        near = min(near, 0.45 * max(glyph.box[2] - glyph.box[0], 0.1))
+        x, y = glyph.box[0], glyph.box[1]
+        column, row = int(x // 2), int(y // 2)
+        places = [
+            place
+            for dx in (-1, 0, 1)
+            for dy in (-1, 0, 1)
+            if (place := seen.get((glyph.text, column + dx, row + dy))) is not None
+        ]
+        if any(abs(x - px) < near and abs(y - py) < near for px, py in places):
+            continue
+        seen[glyph.text, column, row] = (x, y)
+        kept.append(glyph)
+    return kept
+
+
+def _runs(glyphs: Sequence[Glyph]) -> list[_Run]:
+    """Words in the order in which the page draws them, so that lines printed over one another stay apart."""
+    spaces = sum(glyph.text.isspace() for glyph in glyphs)
+    spaced = spaces > 0.03 * len(glyphs)
+    runs: list[_Run] = []
+    broken = True
+    for glyph in glyphs:
+        text = translated(glyph.text, glyph.font)
+        if not text.strip():
+            broken = True
+            continue
+        bold = bool(re.search(r"bold|black|heavy|demi", glyph.font, re.I))
+        run = _Run(text, *glyph.box, size=glyph.size, base=glyph.base, bold=bold)
+        if runs and not broken and _continues(runs[-1], run, spaced):
+            runs[-1].take(run, runs[-1].text + text)
+        else:
+            runs.append(run)
+        broken = False
+    return runs
+
+
+def _continues(run: _Run, glyph: _Run, spaced: bool) -> bool:
+    size = run.size
+    if abs(glyph.base - run.base) > 0.1 * size or abs(glyph.size - size) > 0.12 * size:
+        return False
+    gap = glyph.x0 - run.x1
+    if gap < -0.6 * size:
+        return False
+    last, first = run.text[-1], glyph.text[0]
+    if spaced and last.isalpha() and first.isalpha() and not (is_cjk(last) or is_cjk(first)):
+        # Where the page sets its spaces as characters, a gap without one inside letters is loose type, no space.
+        return gap < (0.5 if first.islower() == last.islower() or first.islower() else 0.2) * size
+    return gap < 0.2 * size
+
+
+def _same_line_neighbours(runs: Sequence[_Run]) -> list[_Run]:
+    """Join runs that touch on one baseline although they were drawn at different times."""
+    joined: list[_Run] = []
+    for run in sorted(runs, key=lambda run: (round(run.base, 1), run.x0)):
+        last = joined[-1] if joined else None
+        touching = (
+            last is not None
+            and abs(run.base - last.base) < 0.1 * run.size
+            and abs(run.size - last.size) < 0.12 * run.size
+            and -0.1 * run.size < run.x0 - last.x1 < 0.06 * run.size
+        )
+        if last is not None and touching:
+            last.take(run, last.text + run.text)
+        else:
+            joined.append(run)
+    return joined
+
+
+def _letter_spaced(runs: Sequence[_Run]) -> list[_Run]:
+    """Join letters set apart with a space each: four or more single letters at even gaps."""
+    joined: list[_Run] = []
+    start = 0
+    while start < len(runs):
+        end = start + 1
+        while end < len(runs) and _next_letter(runs[start : end + 1]):
+            end += 1
+        if end - start >= 4:
+            first = runs[start]
+            for run in runs[start + 1 : end]:
+                first.take(run, first.text + run.text)
+            joined.append(first)
+        else:
+            joined += runs[start:end]
+        start = end
+    return joined
+
+
+def _next_letter(letters: Sequence[_Run]) -> bool:
+    last, new = letters[-2], letters[-1]
+    if any(len(run.text) != 1 or not run.text.isalpha() or is_cjk(run.text) for run in (last, new)):
+        return False
+    if abs(new.base - last.base) > 0.1 * last.size or abs(new.size - last.size) > 0.1 * last.size:
+        return False
+    gap = new.x0 - last.x1
+    if not 0 < gap < 1.0 * last.size:
+        return False
+    gaps = [b.x0 - a.x1 for a, b in zip(letters[:-2], letters[1:-1], strict=True)]
+    return not gaps or gap < 1.5 * max(gaps) + 0.1 * last.size
+
+
+def _marks_attached(runs: Sequence[_Run]) -> list[_Run]:
+    """Join lowered and raised small type to the word that it stands behind."""
+    largest = max((run.size for run in runs), default=0.0)
+    by_end = sorted(runs, key=lambda run: run.x1)
+    ends = [run.x1 for run in by_end]
+    taken: set[int] = set()
+    for mark in sorted(runs, key=lambda run: run.x0):
+        if mark.size > 0.85 * largest or len(mark.text) > LONGEST_MARK or _goes_on(mark, runs):
+            continue
+        first = bisect_left(ends, mark.x0 - 3 * largest)
+        last = bisect_right(ends, mark.x0 + 0.35 * largest)
+        host = _host(mark, by_end[first:last], taken)
+        if host is None:
+            continue
+        lowered = _lowered(mark, host)
+        host.take(mark, with_lowered(host.text, mark.text) if lowered else with_raised(host.text, mark.text))
+        taken.add(id(mark))
+    kept = [run for run in runs if id(run) not in taken]
+    for run in kept:
+        if _leads_a_footnote(run, kept):
+            run.text = raised_mark(run.text)
+    return _behind_marks(kept)
+
+
+def _goes_on(mark: _Run, runs: Sequence[_Run]) -> bool:
+    """Tell whether the small word belongs to a line of small type rather than to a bigger word."""
+    return any(
+        other is not mark
+        and abs(other.base - mark.base) < 0.1 * mark.size
+        and abs(other.size - mark.size) < 0.1 * mark.size
+        and 0 <= mark.x0 - other.x1 < 0.5 * mark.size
+        for other in runs
+    )
+
+
+def _lowered(mark: _Run, host: _Run) -> bool:
+    return mark.base > host.base
+
+
+def _host(mark: _Run, runs: Sequence[_Run], taken: set[int]) -> _Run | None:
+    """Give the bigger word right before a small one whose baseline is shifted; None where there is none."""
+    best: _Run | None = None
+    for run in runs:
+        if run is mark or id(run) in taken or mark.size > 0.85 * run.size or run.x0 > mark.x0:
+            continue
+        gap, shift = mark.x0 - run.x1, mark.base - run.base
+        near = -0.35 * run.size < gap < 0.3 * run.size
+        shifted = 0.08 * run.size < shift < 0.62 * run.size or -0.75 * run.size < shift < -0.15 * run.size
+        if near and shifted and (best is None or abs(shift) < abs(mark.base - best.base)):
+            best = run
+    return best
+
+
+def with_lowered(text: str, mark: str) -> str:
+    """Text with a lowered mark."""
+    return text + mark
+
+
+def with_raised(text: str, mark: str) -> str:
+    """Text with a raised mark: an exponent, an ordinal, or a mark that points to a footnote."""
+    if re.fullmatch(r"(st|nd|rd|th)", mark, re.I):
+        return text + mark
+    if re.fullmatch(r"[-−–+]?\d{1,2}", mark) and _takes_exponent(text, mark):
+        return text + mark.translate(SUPERSCRIPTS)
+    if re.fullmatch(r"[°oº]", mark):
+        return text + "°"
+    if mark in {"+", "-", "−", "–"}:
+        return text + mark.translate(SUPERSCRIPTS)
+    if re.search(r"[⁺⁻]$", text) and mark.isdigit():
+        return text + mark.translate(SUPERSCRIPTS)
+    return f"{text} {raised_mark(mark)}"
+
+
+def _takes_exponent(text: str, mark: str) -> bool:
+    if re.search(r"(^|[^\d.,])10$", text):
+        # 10 with a raised minus is a power; 10 with a bare raised digit is more often a value with a footnote.
+        return not mark.isdigit() or bool(re.search(r"[x×·⋅*]\s*10$", text))
+    return (
+        mark.isdigit()
+        and mark in {"2", "3"}
+        and bool(re.search(r"([/(°]|^)\s*(°?[CKTmc]|m?m|℃|\)|[CK]\))$|℃$|\)$", text))
+    )
+
+
+def raised_mark(mark: str) -> str:
+    """Form of a raised mark that points to a footnote."""
+    bare = mark.strip("()[]")
+    return f"⁽{bare.translate(SUPERSCRIPTS)}⁾" if bare.isdigit() else mark
+
+
+def _leads_a_footnote(run: _Run, runs: Sequence[_Run]) -> bool:
+    """Tell whether a loose small digit stands raised before a bigger word: the mark at a footnote's beginning."""
+    if not re.fullmatch(r"\(?\d{1,2}\)?", run.text):
+        return False
+    return any(
+        run.size < 0.85 * other.size
+        and -0.1 * other.size < other.x0 - run.x1 < 0.6 * other.size
+        and 0.15 * other.size < other.base - run.base < 0.75 * other.size
+        for other in runs
+        if other is not run
+    )
+
+
+def _behind_marks(runs: Sequence[_Run]) -> list[_Run]:
+    """Join what goes on behind a lowered or raised mark without a space ("ppm/°C²/year")."""
+    return _same_line_neighbours(runs)

@@ -1,0 +1,274 @@
+"""PDF bytes -> Document."""
+
+from __future__ import annotations
+
+import io
+import logging
+import re
+from collections import Counter
+from collections.abc import Callable, Sequence
+from dataclasses import dataclass, field
+from typing import Any
+
+from extract.documents.glyphs import Glyph, words_of
+from extract.documents.layout import arrange
+from extract.documents.model import Document, DocumentError, Line, Segment, Table
+from extract.documents.pdf_page import Frame, pdfium_frame, pdfium_glyphs, plumbed
+from extract.documents.symbols import is_broken
+from extract.documents.words import Box
+from extract.model import Note, Where
+
+# A file of more pages is a catalogue: its pages are looked through before they are read.
+CATALOGUE_PAGES = 4
+# A page with fewer characters may be a picture.
+ALMOST_NO_TEXT = 25
+SCAN_DPI = 200
+NO_OCR = 'page {page} is a picture; to have its text recognised, install the extra with pip install "quartzfolio[ocr]"'
+
+
+@dataclass(slots=True)
+class _Page:
+    """What one page gave."""
+
+    blocks: list[Table | Line] = field(default_factory=list)
+    notes: list[Note] = field(default_factory=list)
+    scanned: bool = False
+    height: float = 0.0
+
+
+def read(data: bytes) -> Document:
+    """Tables and lines of a PDF, page by page; DocumentError for one that is damaged, locked or empty."""
+    # The parser reports each oddity of a font; a reader of the sheet can do nothing about them.
+    logging.getLogger("pdfminer").setLevel(logging.ERROR)
+    quick = _opened(data)
+    try:
+        slow = _Plumber(data)
+        pages = [_read_page(quick, slow, number) for number in range(1, len(quick) + 1)]
+        slow.close()
+    finally:
+        quick.close()
+    return _document(pages)
+
+
+def _opened(data: bytes) -> Any:
+    import pypdfium2
+
+    try:
+        document = pypdfium2.PdfDocument(data)
+    except pypdfium2.PdfiumError as fault:
+        if "password" in str(fault).lower():
+            raise DocumentError("the PDF is locked with a password; save a copy without one and read that") from fault
+        raise DocumentError("the PDF is damaged or cut short and cannot be opened; fetch the file again") from fault
+    if len(document) == 0:
+        raise DocumentError("the PDF has no pages; fetch the file again")
+    return document
+
+
+class _Plumber:
+    """pdfplumber's view of the file, opened only when a page asks for it."""
+
+    def __init__(self, data: bytes) -> None:
+        self._data = data
+        self._file: Any = None
+        self.fault = ""
+
+    def page(self, number: int, frame: Frame) -> tuple[list[Glyph], list[Any]] | None:
+        """Glyphs and lines of a page; None where pdfplumber cannot read it."""
+        import pdfplumber
+
+        if self.fault:
+            return None
+        try:
+            if self._file is None:
+                self._file = pdfplumber.open(io.BytesIO(self._data))
+            page = self._file.pages[number - 1]
+            content = plumbed(page, frame)
+            page.close()
+        except Exception as fault:  # noqa: BLE001 - a parser of damaged files may raise anything; the page is read by pdfium
+            self.fault = type(fault).__name__
+            return None
+        return content
+
+    def close(self) -> None:
+        if self._file is not None:
+            self._file.close()
+
+
+def _read_page(quick: Any, slow: _Plumber, number: int) -> _Page:
+    page = quick[number - 1]
+    frame = pdfium_frame(page)
+    text_page = page.get_textpage()
+    text = text_page.get_text_range()
+    text_page.close()
+    printed = len(re.sub(r"\s", "", text))
+    result = _Page(height=frame.size[1])
+    if printed < ALMOST_NO_TEXT and _is_picture(page, frame):
+        _read_picture(page, number, result)
+    elif len(quick) > CATALOGUE_PAGES and printed and not re.search(r"\d", text):
+        result.blocks += [_plain_line(line, number) for line in text.splitlines() if line.strip()]
+    elif printed:
+        _read_text(page, slow, number, frame, printed=printed, result=result)
+    page.close()
+    return result
+
+
+def _plain_line(text: str, number: int) -> Line:
+    where = Where(page=number)
+    return Line((Segment(text.strip(), where),), where)
+
+
+def _placer(number: int, scale: float = 1.0) -> Callable[[Box], Where]:
+    def place(box: Box) -> Where:
+        x0, top, x1, bottom = (round(value * scale, 1) for value in box)
+        return Where(page=number, box=(x0, top, x1, bottom))
+
+    return place
+
+
+def _read_text(page: Any, slow: _Plumber, number: int, frame: Frame, *, printed: int, result: _Page) -> None:
+    content = slow.page(number, frame)
+    glyphs, rulings = content if content else ([], [])
+    readable = sum(not glyph.text.isspace() and not glyph.text.startswith("(cid:") for glyph in glyphs)
+    if readable < 0.7 * printed:
+        glyphs = pdfium_glyphs(page, frame)
+    if content is None:
+        result.notes.append(
+            Note(
+                level="warning",
+                message=f"page {number}: its drawn lines cannot be read, so tables are told from where words stand",
+                where=Where(page=number),
+            )
+        )
+    straight = [glyph for glyph in glyphs if glyph.angle in (0, 90, 180, 270)]
+    place = _placer(number)
+    result.blocks += arrange(words_of(straight, *frame.size), rulings, place, width=frame.size[0], height=frame.size[1])
+    result.blocks += _slanted_lines([glyph for glyph in glyphs if glyph.angle % 90], place)
+    result.notes += _broken_notes(glyphs, number)
+
+
+def _slanted_lines(glyphs: Sequence[Glyph], place: Callable[[Box], Where]) -> list[Table | Line]:
+    """Text at an angle (a watermark, a stamp), a line for each run in the order in which it is drawn."""
+    from extract.documents.words import union
+
+    runs: list[list[Glyph]] = []
+    for glyph in glyphs:
+        if runs and runs[-1][-1].angle == glyph.angle and abs(runs[-1][-1].base - glyph.base) < 3 * glyph.size:
+            runs[-1].append(glyph)
+        else:
+            runs.append([glyph])
+    lines: list[Table | Line] = []
+    for run in runs:
+        text = " ".join("".join(glyph.text for glyph in run).split())
+        if text:
+            where = place(union(glyph.box for glyph in run))
+            lines.append(Line((Segment(text, where),), where))
+    return lines
+
+
+def _broken_notes(glyphs: Sequence[Glyph], number: int) -> list[Note]:
+    from extract.documents.symbols import translated
+    from extract.documents.words import union
+
+    broken = [glyph for glyph in glyphs if is_broken(translated(glyph.text, glyph.font))]
+    if not broken:
+        return []
+    shown = ", ".join(repr(text) for text, _ in Counter(glyph.text for glyph in broken).most_common(3))
+    message = (
+        f"page {number}: {len(broken)} characters come out of the file's text as {shown}, since its fonts do "
+        "not say what they are; numbers near them may be wrong: compare with the page"
+    )
+    x0, top, x1, bottom = (round(value, 1) for value in union(glyph.box for glyph in broken))
+    return [Note(level="warning", message=message, where=Where(page=number, box=(x0, top, x1, bottom)))]
+
+
+# --- pictures
+
+
+def _is_picture(page: Any, frame: Frame) -> bool:
+    """Tell whether a page without text shows a picture or text drawn as outlines."""
+    from pypdfium2 import raw
+
+    paths, area = 0, 0.0
+    for item in page.get_objects(max_depth=4):
+        if item.type == raw.FPDF_PAGEOBJ_IMAGE:
+            x0, y0, x1, y1 = item.get_bounds()
+            area += abs((x1 - x0) * (y1 - y0))
+        elif item.type == raw.FPDF_PAGEOBJ_PATH:
+            paths += 1
+    return area > 0.2 * frame.size[0] * frame.size[1] or paths > 60
+
+
+def _read_picture(page: Any, number: int, result: _Page) -> None:
+    from extract.documents import scan
+
+    def place(box: Box) -> Where:
+        x0, top, x1, bottom = (round(value * 72 / SCAN_DPI, 1) for value in box)
+        return Where(page=number, box=(x0, top, x1, bottom))
+
+    try:
+        result.blocks += scan.read_blocks(page.render(scale=SCAN_DPI / 72).to_pil(), place)
+    except DocumentError:
+        result.notes.append(Note(level="warning", message=NO_OCR.format(page=number), where=Where(page=number)))
+        return
+    result.scanned = True
+
+
+# --- the whole file
+
+
+def _document(pages: Sequence[_Page]) -> Document:
+    headers = _page_headers(pages)
+    scanned = [page for page in pages if page.scanned]
+    read_as_text = [page for page in pages if page.blocks and not page.scanned]
+    blocks = tuple(block for page in pages for block in page.blocks)
+    notes = tuple(note for page in pages for note in page.notes)
+    return Document("pdf", blocks, bool(scanned) and not read_as_text, headers, notes)
+
+
+def _page_headers(pages: Sequence[_Page]) -> tuple[Line, ...]:
+    """Take the running heads and feet off the pages: lines alike on several pages, and a last line set apart.
+
+    A running head stays in place on the first page that has it, where it may be the sheet's title.
+    """
+    counts: Counter[str] = Counter()
+    for page in pages:
+        counts.update(
+            {_running(block, page) for block in page.blocks if isinstance(block, Line) and _at_edge(block, page)}
+        )
+    headers: dict[str, Line] = {}
+    for page in pages:
+        kept: list[Table | Line] = []
+        for block in page.blocks:
+            if not isinstance(block, Line) or not _at_edge(block, page):
+                kept.append(block)
+                continue
+            key = _running(block, page)
+            foot = _is_foot(block, page)
+            if counts[key] > 1 or foot:
+                if key not in headers and not foot:
+                    kept.append(block)
+                headers.setdefault(key, block)
+            else:
+                kept.append(block)
+        page.blocks = kept
+    return tuple(headers.values())
+
+
+def _running(line: Line, page: _Page) -> str:
+    """Text by which running lines are known again: at the foot of the page whatever its number is."""
+    low = line.where.box is not None and line.where.box[1] > 0.5 * page.height
+    return re.sub(r"\d+", "#", line.text) if low else line.text
+
+
+def _at_edge(line: Line, page: _Page) -> bool:
+    box = line.where.box
+    return box is not None and page.height > 0 and (box[1] < 0.12 * page.height or box[3] > 0.9 * page.height)
+
+
+def _is_foot(line: Line, page: _Page) -> bool:
+    """Tell whether a line is the last thing on its page, near its end and well below the rest."""
+    box = line.where.box
+    if box is None or box[3] < 0.93 * page.height:
+        return False
+    others = [block.where.box[3] for block in page.blocks if block is not line and block.where.box]
+    return all(bottom < box[1] - 20 or bottom >= box[3] - 2 for bottom in others)

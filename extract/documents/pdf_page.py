@@ -1,0 +1,187 @@
+"""One PDF page's glyphs and drawn lines, in points from the top left of the page as a viewer shows it.
+
+Two libraries read the page: pdfplumber gives glyphs and lines; pdfium gives glyphs where pdfplumber finds none, since
+it knows fonts that pdfplumber's parser does not. Neither's coordinates are a viewer's: both leave the crop box to the
+caller.
+"""
+
+from __future__ import annotations
+
+import ctypes
+import math
+from collections import Counter, defaultdict
+from collections.abc import Iterable
+from dataclasses import dataclass
+from typing import Any
+
+from extract.documents.glyphs import Glyph
+from extract.documents.words import Box, Ruling, union
+
+RawBox = tuple[float, float, float, float]
+
+
+@dataclass(frozen=True, slots=True)
+class Frame:
+    """The part of a page that is shown, in PDF units (origin bottom left), and its rotation, clockwise in degrees."""
+
+    crop: RawBox
+    rotation: int
+
+    @property
+    def size(self) -> tuple[float, float]:
+        """Width and height as shown."""
+        width, height = self.crop[2] - self.crop[0], self.crop[3] - self.crop[1]
+        return (height, width) if self.rotation in (90, 270) else (width, height)
+
+    def offset(self, media: RawBox) -> tuple[float, float]:
+        """How far right and down the shown page begins inside the whole, turned media box."""
+        left, down, right, up = (abs(c - m) for c, m in zip(self.crop, media, strict=True))
+        return {0: (left, up), 90: (down, left), 180: (right, down), 270: (up, right)}[self.rotation]
+
+    def shown(self, x: float, y: float) -> tuple[float, float]:
+        """Point of the page as shown for a point in PDF units."""
+        left, down, right, up = self.crop
+        return {
+            0: (x - left, up - y),
+            90: (y - down, x - left),
+            180: (right - x, y - down),
+            270: (up - y, right - x),
+        }[self.rotation]
+
+
+def _ordered(box: Iterable[float]) -> RawBox:
+    x0, y0, x1, y1 = (float(value) for value in box)
+    return (min(x0, x1), min(y0, y1), max(x0, x1), max(y0, y1))
+
+
+# --- pdfplumber
+
+
+def plumbed(page: Any, frame: Frame) -> tuple[list[Glyph], list[Ruling]]:
+    """Glyphs and drawn lines of a pdfplumber page."""
+    dx, dy = frame.offset(_ordered(page.page_obj.mediabox))
+    left, top = page.bbox[0] + dx, page.bbox[1] + dy
+    width, height = frame.size
+    glyphs = []
+    descents = _descents(page.chars, page)
+    for char in page.chars:
+        box = (char["x0"] - left, char["top"] - top, char["x1"] - left, char["bottom"] - top)
+        if box[2] < 0 or box[3] < 0 or box[0] > width or box[1] > height:
+            continue
+        a, b, _, _, e, f = char["matrix"]
+        angle = round(math.degrees(math.atan2(b, a))) % 360
+        base_x, base_y = page.bbox[0] + e - left, page.bbox[1] + page.height - f - top
+        if angle == 0:
+            base_y = box[3] - descents[char["fontname"]] * char["size"]
+        size = char["size"] if angle in (0, 180) else box[2] - box[0]
+        glyphs.append(
+            Glyph(char["text"], box, size, char["fontname"], angle, _base(angle, base_x, base_y, width, height))
+        )
+    return glyphs, [_moved(edge, left, top) for edge in _visible_edges(page, width, height)]
+
+
+def _descents(chars: Iterable[dict[str, Any]], page: Any) -> dict[str, float]:
+    """For each font how far its boxes reach below the baseline, as a share of the size.
+
+    The character's matrix leaves out the text rise by which many programs set sub- and superscripts; its box has it. So
+    the usual distance between box and matrix is the font's, and the baseline is counted from the box.
+    """
+    seen: dict[str, Counter[float]] = {}
+    for char in chars:
+        if char["upright"] and char["size"]:
+            base = page.bbox[1] + page.height - char["matrix"][5]
+            seen.setdefault(char["fontname"], Counter())[round((char["bottom"] - base) / char["size"], 2)] += 1
+    return defaultdict(lambda: 0.22, {font: counts.most_common(1)[0][0] for font, counts in seen.items()})
+
+
+def _base(angle: int, x: float, y: float, width: float, height: float) -> float:
+    return {90: x, 270: width - x, 180: height - y}.get(angle, y)
+
+
+def _moved(edge: dict[str, Any], left: float, top: float) -> Ruling:
+    return Ruling(edge["x0"] - left, edge["top"] - top, edge["x1"] - left, edge["bottom"] - top)
+
+
+def _visible_edges(page: Any, width: float, height: float) -> list[dict[str, Any]]:
+    from pdfplumber.utils.geometry import curve_to_edges, line_to_edge, rect_to_edges
+
+    edges = [line_to_edge(line) for line in page.lines]
+    for rect in page.rects:
+        fills_page = rect["width"] > 0.97 * width and rect["height"] > 0.9 * height
+        if not fills_page and (rect.get("stroke") or _is_coloured(rect)):
+            edges += rect_to_edges(rect)
+    for curve in page.curves:
+        if curve.get("stroke") or _is_coloured(curve):
+            edges += [edge for edge in curve_to_edges(curve) if edge.get("orientation") in ("h", "v")]
+    return [edge for edge in edges if edge.get("orientation") in ("h", "v")]
+
+
+def _is_coloured(shape: dict[str, Any]) -> bool:
+    """Tell whether a filled shape stands out from white paper."""
+    if not shape.get("fill"):
+        return False
+    colour = shape.get("non_stroking_color")
+    if colour is None:
+        return True
+    values = colour if isinstance(colour, list | tuple) else (colour,)
+    numbers = [value for value in values if isinstance(value, int | float)]
+    if len(numbers) == 4:
+        return any(value > 0.02 for value in numbers)
+    return not numbers or any(value < 0.98 for value in numbers)
+
+
+# --- pdfium
+
+
+def pdfium_frame(page: Any) -> Frame:
+    """Frame of a pypdfium2 page."""
+    return Frame(_ordered(page.get_bbox()), page.get_rotation() % 360)
+
+
+def pdfium_glyphs(page: Any, frame: Frame) -> list[Glyph]:
+    """Glyphs of a pypdfium2 page."""
+    from pypdfium2 import raw
+
+    text_page = page.get_textpage()
+    glyphs = []
+    width, height = frame.size
+    for index in range(text_page.count_chars()):
+        code = raw.FPDFText_GetUnicode(text_page, index)
+        if code in (0, 10, 13, 0xFFFE) or raw.FPDFText_IsGenerated(text_page, index) == 1:
+            continue
+        rect, x, y = raw.FS_RECTF(), ctypes.c_double(), ctypes.c_double()
+        if not raw.FPDFText_GetLooseCharBox(text_page, index, rect):
+            continue
+        raw.FPDFText_GetCharOrigin(text_page, index, x, y)
+        turn = math.degrees(raw.FPDFText_GetCharAngle(text_page, index))
+        # pdfium counts the angle clockwise, the page's rotation likewise.
+        angle = round(-turn - frame.rotation) % 360
+        size = _size(raw, text_page, index)
+        corner, other = frame.shown(rect.left, rect.top), frame.shown(rect.right, rect.bottom)
+        box = _type_box(union([(*corner, *corner), (*other, *other)]), frame.shown(x.value, y.value), angle, size)
+        base = _base(angle, *frame.shown(x.value, y.value), width, height)
+        glyphs.append(Glyph(chr(code), box, size, _font_name(raw, text_page, index), angle, base))
+    text_page.close()
+    return glyphs
+
+
+def _size(raw: Any, text_page: Any, index: int) -> float:
+    matrix = raw.FS_MATRIX()
+    raw.FPDFText_GetMatrix(text_page, index, matrix)
+    return float(raw.FPDFText_GetFontSize(text_page, index)) * math.hypot(matrix.c, matrix.d)
+
+
+def _type_box(loose: Box, origin: tuple[float, float], angle: int, size: float) -> Box:
+    """Box from the advance in the reading direction and from the type size across it, where fonts tell odd heights."""
+    x, y = origin
+    return {
+        90: (x - 0.78 * size, loose[1], x + 0.22 * size, loose[3]),
+        270: (x - 0.22 * size, loose[1], x + 0.78 * size, loose[3]),
+        180: (loose[0], y - 0.22 * size, loose[2], y + 0.78 * size),
+    }.get(angle, (loose[0], y - 0.78 * size, loose[2], y + 0.22 * size))
+
+
+def _font_name(raw: Any, text_page: Any, index: int) -> str:
+    buffer = ctypes.create_string_buffer(128)
+    raw.FPDFText_GetFontInfo(text_page, index, buffer, 128, ctypes.c_int())
+    return buffer.value.decode("utf-8", "replace")
