@@ -1,0 +1,63 @@
+"""Grade, handling and supply of a part: pads, AEC-Q200, moisture level, reflow peak, status, price, lead time."""
+
+from __future__ import annotations
+
+import re
+from collections.abc import Mapping, Sequence
+
+from extract.fold import fold, key
+from extract.model import Attributes, Pads
+from extract.vocabulary import vocabulary
+
+_LIST = r"#?\d(?:\s?(?:,|and|und|&|/|、|と|和)\s?#?\d)*"
+_CRYSTAL_PADS = re.compile(
+    rf"(?i)(?:pads?|pins?|terminals?)?\s?({_LIST})\s?(?:are|is|:|=|-)?\s?(?:the\s)?(?:crystal|xtal|quartz|quarz)"
+)
+_GROUND_PADS = re.compile(
+    rf"(?i)(?:pads?|pins?|terminals?)?\s?({_LIST})\s?(?:are|is|:|=|-)?\s?(?:connected to\s)?(?:the\s)?(?:gnd|ground|metal lid|lid|cover|case|masse)"
+)
+_COUNT = re.compile(r"(?i)\b([2-6])[\s-]?(?:pads?|pins?|P\b|SMD)")
+
+
+def attributes_of(stated: Mapping[str, str], texts: Sequence[str] = ()) -> Attributes:
+    """Attributes from labelled texts, and pads from the lines that name them."""
+    reflow = re.search(r"\d{3}", stated.get("reflow_peak_c", ""))
+    return Attributes(
+        pads=_pads([stated.get("pads", ""), *texts]),
+        aec_q200=_yes_or_no(stated.get("aec_q200")),
+        moisture_level=stated.get("moisture_level"),
+        reflow_peak_c=float(reflow[0]) if reflow else None,
+        status=stated.get("status"),
+        price=stated.get("price"),
+        lead_time=stated.get("lead_time"),
+    )
+
+
+def _yes_or_no(text: str | None) -> bool | None:
+    if text is None:
+        return None
+    phrases = vocabulary().phrases
+    if key(text) in {key(word) for word in phrases.get("no", ())}:
+        return False
+    if key(text) in {key(word) for word in phrases.get("yes", ())} or "q200" in key(text):
+        return True
+    return None
+
+
+def _pads(texts: Sequence[str]) -> Pads | None:
+    crystal: tuple[int, ...] | None = None
+    ground: tuple[int, ...] | None = None
+    for text in texts:
+        folded = fold(text)
+        if crystal is None and (found := _CRYSTAL_PADS.search(folded)):
+            crystal = _numbers(found[1])
+        if ground is None and (found := _GROUND_PADS.search(folded)):
+            ground = _numbers(found[1])
+    if crystal is None and ground is None:
+        return None
+    count = max((*(crystal or ()), *(ground or ())))
+    return Pads(count=count, crystal=crystal, ground=ground)
+
+
+def _numbers(text: str) -> tuple[int, ...]:
+    return tuple(int(digit) for digit in re.findall(r"\d", text))

@@ -1,0 +1,299 @@
+"""Entries -> candidates: every reading that might be meant, each with its place and its doubts."""
+
+from __future__ import annotations
+
+import re
+from collections.abc import Iterable, Iterator, Sequence
+from dataclasses import dataclass, replace
+from functools import lru_cache
+from typing import Literal
+
+from extract import amount, wording
+from extract.conditions import condition_of, kept, merged
+from extract.entries import Entry, Key, Placed, Source, Value
+from extract.fields import field_of
+from extract.fold import fold
+from extract.heads import is_unit
+from extract.meaning import meaning
+from extract.model import FieldName, When, Where
+from extract.wording import Label
+
+_PLUS_MINUS = re.compile(r"±")
+LEAST_CONFIDENCE = 0.8
+
+
+@dataclass(frozen=True, slots=True)
+class Candidate:
+    """A reading that might be meant. `doubts` are reasons to look; `source` and `exact` rank it against others."""
+
+    field: FieldName
+    min: float | None
+    typ: float | None
+    max: float | None
+    options: tuple[float, ...]
+    when: When
+    bare: bool
+    raw: str
+    where: Where
+    doubts: tuple[str, ...] = ()
+    inferred: bool = False
+    source: Source | Literal["key", "note"] = "table"
+    subject: str = ""
+    section: str = ""
+
+    @property
+    def bounds(self) -> tuple[float | None, float | None, float | None, tuple[float, ...]]:
+        """What is compared when two places state the same field."""
+        return self.min, self.typ, self.max, self.options
+
+
+@lru_cache(maxsize=16384)
+def read(
+    text: str, field: str, unit: str | None = None, bound: str | None = None, *, plus_minus: bool = False
+) -> tuple[amount.Value, ...]:
+    """`amount.read_values`, each distinct text read once."""
+    found = amount.read_values(text, field, unit=unit, bound=bound, plus_minus=plus_minus)
+    return tuple(value for value in found if not value.empty or value.series)
+
+
+def entry_candidates(entry: Entry) -> list[Candidate]:
+    """What one label with its values may mean; empty where the label is none of a field, or a trap."""
+    label = label_of(entry)
+    if label is None:
+        return []
+    when = _entry_when(entry, label)
+    found: list[Candidate] = []
+    for subject in dict.fromkeys(value.subject for value in entry.values):
+        values = [value for value in entry.values if value.subject == subject]
+        found += _of_subject(entry, label, when, subject, values)
+    return found
+
+
+@lru_cache(maxsize=8192)
+def _label(text: str) -> Label | None:
+    folded = fold(text)
+    if wording.trap_of(folded):
+        return None
+    return meaning(text).label
+
+
+def label_of(entry: Entry) -> Label | None:
+    """The field that an entry's label names, with its symbol and the section above it to help."""
+    own = _label(entry.label.text)
+    if meaning(entry.label.text).trap:
+        return None
+    if own is not None and own.exact:
+        return own
+    if entry.section and (both := _label(f"{entry.section} {entry.label.text}")) is not None and both.exact:
+        return both
+    if entry.symbol and (symbol := _label(entry.symbol)) is not None and symbol.exact and not _other(entry):
+        return own if own is not None and own.field == symbol.field else symbol
+    return own
+
+
+def _other(entry: Entry) -> bool:
+    known = meaning(entry.label.text)
+    return bool(known.identity or known.role or known.attribute)
+
+
+def _entry_when(entry: Entry, label: Label) -> When:
+    when = When()
+    for text in entry.conditions:
+        when = merged(when, kept(condition_of(text), label.field))
+    if entry.section and entry.section != entry.label.text:
+        when = merged(kept(condition_of(entry.section), label.field), when)
+    return merged(kept(label.when, label.field), when)
+
+
+def _of_subject(entry: Entry, label: Label, when: When, subject: str, values: Sequence[Value]) -> list[Candidate]:
+    bounded = {value.bound: value for value in values if value.bound and not value.nominal}
+    if len(bounded) > 1 or (len(bounded) == 1 and len(values) == 1 and not values[0].governed):
+        return _joined(entry, label, when, subject, values)
+    found: list[Candidate] = []
+    for value in values:
+        extra = kept(condition_of(value.piece.text), label.field) if found or _foreign(value, label) else When()
+        if found or (_foreign(value, label) and len(values) > 1):
+            when = merged(when, extra)
+            if not found:
+                continue
+            found = [replace(each, when=merged(when, each.when)) for each in found]
+            continue
+        found = _single(entry, label, when, subject, value)
+    return found or _last_resort(entry, label, when, subject, values)
+
+
+def _foreign(value: Value, label: Label) -> bool:
+    """Whether a cell states a condition rather than the value: a band beside ESR, a mode, a temperature range."""
+    text = value.piece.text
+    said = {key for key, each in condition_of(text) if each is not None}
+    if not said:
+        return False
+    return not read(text, label.field, None, None) or bool(
+        label.field == "esr_ohm" and "frequency_mhz" in said and not _has_unit(text, label.field)
+    )
+
+
+def _has_unit(text: str, field: str) -> bool:
+    from extract.units import kind_of
+
+    return bool(kind_of(field).pattern.search(fold(text)))
+
+
+def _single(entry: Entry, label: Label, when: When, subject: str, value: Value) -> list[Candidate]:
+    bound = value.bound or label.bound
+    if value.governed and value.bound and label.field in ("frequency_mhz", "load_capacitance_pf"):
+        bound = None
+    unit = entry.unit or label.unit or None
+    plus_minus = label.plus_minus or bool(_PLUS_MINUS.search(fold(entry.unit)))
+    found = read(value.piece.text, label.field, _bare_unit(unit), bound, plus_minus=plus_minus)
+    return [
+        _candidate(
+            entry, label, merged(when, kept(each.when, label.field)), subject, value.piece, each, nominal=value.nominal
+        )
+        for each in found
+        if not each.empty
+    ]
+
+
+def _bare_unit(unit: str | None) -> str | None:
+    """The unit without ± and brackets; None where it is no unit ("-", "see note")."""
+    if unit is None:
+        return None
+    bare = fold(unit).strip(" ±()[]|/")
+    return bare if is_unit(bare) or bare else None
+
+
+def _last_resort(entry: Entry, label: Label, when: When, subject: str, values: Sequence[Value]) -> list[Candidate]:
+    """Every cell looked like a condition: then the only one that reads as the field is the value."""
+    found: list[Candidate] = []
+    for value in values:
+        found = found or _single(entry, label, when, subject, value)
+    return found
+
+
+def _candidate(
+    entry: Entry, label: Label, when: When, subject: str, piece: Placed, value: amount.Value, *, nominal: bool = False
+) -> Candidate:
+    bare = value.bare and field_of(label.field).bare and not nominal
+    return Candidate(
+        field=label.field,  # type: ignore[arg-type]
+        min=value.min,
+        typ=value.typ,
+        max=value.max,
+        options=tuple(value.options),
+        when=when,
+        bare=bare,
+        raw=_raw(entry, [piece]),
+        where=piece.where,
+        doubts=_doubts(label, [piece], value.doubts),
+        inferred=not label.exact,
+        source=entry.source,
+        subject=subject,
+        section=entry.section,
+    )
+
+
+def _raw(entry: Entry, pieces: Iterable[Placed]) -> str:
+    texts = [entry.label.text, *(piece.text for piece in pieces), entry.unit]
+    return " ".join(" ".join(text.split()) for text in texts if text.strip())
+
+
+def _doubts(label: Label, pieces: Iterable[Placed], doubts: Iterable[str]) -> tuple[str, ...]:
+    found = list(doubts)
+    if not label.exact:
+        found.append(f"the label is only like that of {field_of(label.field).title}")
+    found += confidence_doubts(min((piece.confidence for piece in pieces), default=1.0))
+    return tuple(dict.fromkeys(found))
+
+
+def confidence_doubts(confidence: float) -> list[str]:
+    """A reason to look where a recogniser was not sure of the text."""
+    return [] if confidence >= LEAST_CONFIDENCE else [f"read from a picture with a confidence of {confidence:.0%}"]
+
+
+def _joined(entry: Entry, label: Label, when: When, subject: str, values: Sequence[Value]) -> list[Candidate]:
+    """Min, Typ and Max cells of one row as one reading; a cell with more than a number in it stands by itself."""
+    parts: list[tuple[Value, amount.Value]] = []
+    others: list[Candidate] = []
+    for value in values:
+        unit = _bare_unit(entry.unit or label.unit or None)
+        pm = (label.plus_minus or bool(_PLUS_MINUS.search(fold(entry.unit)))) and len(values) == 1
+        found = read(value.piece.text, label.field, unit, value.bound or label.bound, plus_minus=pm)
+        if len(found) == 1 and not found[0].options and _plain(found[0]):
+            parts.append((value, found[0]))
+        else:
+            others += [
+                _candidate(
+                    entry, label, merged(when, kept(each.when, label.field)), subject, value.piece, each, nominal=True
+                )
+                for each in found
+            ]
+    if not parts:
+        return others
+    return [_one_row(entry, label, when, subject, parts), *others]
+
+
+def _plain(value: amount.Value) -> bool:
+    return sum(each is not None for each in (value.min, value.typ, value.max)) == 1
+
+
+def _one_row(
+    entry: Entry, label: Label, when: When, subject: str, parts: list[tuple[Value, amount.Value]]
+) -> Candidate:
+    bounds: dict[str, float | None] = {"min": None, "typ": None, "max": None}
+    doubts: list[str] = []
+    bare = True
+    for value, read_value in parts:
+        number = next(each for each in (read_value.min, read_value.typ, read_value.max) if each is not None)
+        stated = next(name for name in ("min", "typ", "max") if getattr(read_value, name) is not None)
+        bounds[value.bound or stated] = number
+        bare = bare and read_value.bare and value.bound is None
+        doubts += read_value.doubts
+        when = merged(when, kept(read_value.when, label.field))
+    pieces = [value.piece for value, _ in parts]
+    if (
+        field_of(label.field).sign == "negative"
+        and bounds["max"] is not None
+        and bounds["min"] is None
+        and bounds["typ"] is None
+    ):
+        bounds["min"], bounds["max"] = -abs(bounds["max"]), None
+    return Candidate(
+        field=label.field,  # type: ignore[arg-type]
+        **bounds,
+        options=(),
+        when=when,
+        bare=bare and field_of(label.field).bare,
+        raw=_raw(entry, pieces),
+        where=pieces[0].where,
+        doubts=_doubts(label, pieces, doubts),
+        inferred=not label.exact,
+        source=entry.source,
+        subject=subject,
+        section=entry.section,
+    )
+
+
+def key_candidates(key: Key) -> Iterator[Candidate]:
+    """What can be ordered, where the sheet states it nowhere else: one list of options, or a range for each code."""
+    label = _label(key.label.text)
+    if label is None or not label.exact:
+        return
+    numbers: list[float] = []
+    raws = [f"{code} {piece.text}" for code, piece in key.choices]
+    entry = Entry(key.label, (), label.unit or "")
+    for _, piece in key.choices:
+        for value in read(piece.text, label.field, label.unit, None, plus_minus=label.plus_minus):
+            symmetric = value.min is not None and value.max is not None and value.min == -value.max
+            if symmetric and value.max is not None:
+                numbers.append(value.max)
+            elif value.typ is not None:
+                numbers.append(value.typ)
+            elif value.min is not None and value.max is not None:
+                found = _candidate(entry, label, When(), "", piece, value)
+                yield replace(found, source="key")
+    if numbers:
+        first = key.choices[0][1]
+        chosen = amount.Value(None, None, None, tuple(dict.fromkeys(numbers)), When(), False, (), first.text)
+        found = _candidate(entry, label, When(), "", first, chosen)
+        yield replace(found, source="key", raw=f"{key.label.text} {'; '.join(raws)}")

@@ -1,0 +1,97 @@
+"""A part while it is being put together: what was found of it so far."""
+
+from __future__ import annotations
+
+import re
+from collections.abc import Iterable, Iterator
+from dataclasses import dataclass, field
+from functools import lru_cache
+
+from extract import wording
+from extract.candidates import Candidate
+from extract.entries import Entry
+from extract.fold import fold, key
+from extract.meaning import meaning
+from extract.model import Where
+from extract.vocabulary import vocabulary
+
+_ORDINALS = frozenset({"third", "fifth", "seventh", "ninth", "1st", "3rd", "5th", "7th", "9th"})
+_WORD = re.compile(r"[^\s,;:()\[\]|]+")
+
+
+@dataclass(slots=True)
+class Draft:
+    """What a sheet says of one part. `texts` are the words beside its values, for what it is not."""
+
+    part_number: str | None = None
+    maker: str | None = None
+    package: str | None = None
+    modes: set[str] = field(default_factory=set)
+    cuts: set[str] = field(default_factory=set)
+    resonance: set[str] = field(default_factory=set)
+    attributes: dict[str, str] = field(default_factory=dict)
+    candidates: list[Candidate] = field(default_factory=list)
+    texts: list[str] = field(default_factory=list)
+    where: Where | None = None
+
+    def take_mode_and_cut(self, text: str, *, codes: bool = False) -> None:
+        """Note the modes and cuts that a text prints; single letters count only in a mode's own cell (`codes`)."""
+        self.modes.update(modes_in(text, codes=codes))
+        self.cuts.update(cuts_in(text, whole=codes))
+
+    def take_identity(self, entries: Iterable[Entry]) -> None:
+        """Take part number, maker, package, mode and grade from labelled values."""
+        for entry in entries:
+            known = meaning(entry.label.text)
+            if not entry.values:
+                continue
+            text = " ".join(entry.values[0].piece.text.split())
+            if known.identity in ("part_number", "maker", "package") and not wording.not_stated(text):
+                if getattr(self, known.identity) is None:
+                    setattr(self, known.identity, text)
+            elif known.role in ("mode", "cut"):
+                self.take_mode_and_cut(text, codes=True)
+            elif known.attribute:
+                self.attributes.setdefault(known.attribute, text)
+
+
+def _runs(text: str, longest: int = 4) -> Iterator[str]:
+    words = [match[0] for match in _WORD.finditer(fold(text))]
+    for start in range(len(words)):
+        for end in range(start + 1, min(len(words), start + longest) + 1):
+            yield " ".join(words[start:end])
+
+
+@lru_cache(maxsize=8192)
+def modes_in(text: str, *, codes: bool = False) -> frozenset[str]:
+    """Every mode of vibration that a text names."""
+    whole = wording.mode_of(text) or (vocabulary().mode_codes.get(key(text)) if codes else None)
+    if whole is not None:
+        return frozenset({whole})
+    known = vocabulary().modes
+    found = set()
+    for run in _runs(text):
+        wanted = key(run)
+        if wanted in known and wanted not in _ORDINALS and len(wanted) >= 3:
+            found.add(known[wanted])
+    found |= {mode for wanted, mode in known.items() if not wanted.isascii() and wanted in key(text)}
+    return frozenset(found)
+
+
+@lru_cache(maxsize=8192)
+def cuts_in(text: str, *, whole: bool = False) -> frozenset[str]:
+    """Every cut that a text names; two bare letters count only in capitals and in a cut's own cell (`whole`)."""
+    known = vocabulary().cuts
+    found = set()
+    for run in _runs(text):
+        wanted = key(run)
+        if wanted not in known:
+            continue
+        if (
+            len(wanted) > 3
+            or (whole and run.isupper())
+            or (run.isupper() and text.strip().startswith((f"{run},", f"{run} /", f"{run}/")))
+        ):
+            found.add(known[wanted])
+    found |= {cut for wanted, cut in known.items() if not wanted.isascii() and wanted in key(text)}
+    return frozenset(found)

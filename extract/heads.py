@@ -1,0 +1,98 @@
+"""What the heading of one column says, level by level."""
+
+from __future__ import annotations
+
+import re
+from dataclasses import dataclass
+from functools import lru_cache
+
+from extract import units
+from extract.entries import Bound
+from extract.fold import fold
+from extract.meaning import Meaning, meaning
+from extract.wording import Label
+
+BOUNDS: dict[str, Bound] = {"min": "min", "typ": "typ", "max": "max"}
+_TRIM = re.compile(r"^[\s(\[|/±]+|[\s)\]|]+$")
+
+
+@dataclass(frozen=True, slots=True)
+class Head:
+    """One column's heading. `extra` holds the levels that no vocabulary knows: models, packages, loads, bands."""
+
+    levels: tuple[str, ...]
+    label: Label | None = None
+    role: str | None = None
+    bound: Bound | None = None
+    identity: str | None = None
+    attribute: str | None = None
+    trap: str | None = None
+    unit: str = ""
+    extra: tuple[str, ...] = ()
+
+    @property
+    def name(self) -> str | None:
+        """What the column holds: a field, an identity or an attribute."""
+        if self.trap:
+            return f"trap {self.trap}"
+        if self.label is not None:
+            return f"{self.label.field} {' '.join(self.extra)}".strip()
+        if self.role in ("mode", "cut", "band", "model", "code"):
+            return self.role
+        return self.identity or (f"attribute {self.attribute}" if self.attribute else None)
+
+
+@lru_cache(maxsize=8192)
+def is_unit(text: str) -> bool:
+    """Whether the whole text is a unit of some quantity ("kΩ", "(± ppm)", "ppm/pF")."""
+    bare = _TRIM.sub("", fold(text))
+    if not bare or len(bare) > 16:
+        return False
+    return any((unit := kind.unit(bare)) is not None and not unit.guessed for kind in units.kinds().values())
+
+
+@lru_cache(maxsize=4096)
+def interpret(levels: tuple[str, ...]) -> Head:
+    """Put the levels of one heading together: the label from one of them or from all, the bound and unit from any."""
+    known = [meaning(level) for level in levels]
+    bound = next((BOUNDS[each.role] for each in reversed(known) if each.role in BOUNDS), None)
+    unit = next((level for level in reversed(levels) if is_unit(level)), "")
+    named = [index for index, each in enumerate(known) if each.head is not None]
+    if len(named) > 1:
+        whole = meaning(" ".join(levels))
+        if whole.head is not None:
+            return _head(levels, whole, bound, unit, ())
+        named = named[-1:]
+    if named:
+        extra = tuple(
+            level
+            for index, (level, each) in enumerate(zip(levels, known, strict=True))
+            if index != named[0] and each.role is None and not is_unit(level)
+        )
+        return _head(levels, known[named[0]], bound, unit, extra)
+    return _unnamed(levels, known, bound, unit)
+
+
+def _unnamed(levels: tuple[str, ...], known: list[Meaning], bound: Bound | None, unit: str) -> Head:
+    whole = meaning(" ".join(levels)) if levels else None
+    if whole is not None and whole.head is not None:
+        return _head(levels, whole, bound, unit, ())
+    trap = next((each.trap for each in known if each.trap), None)
+    role = next((each.role for each in reversed(known) if each.role), None)
+    extra = tuple(level for level, each in zip(levels, known, strict=True) if each.role is None and not is_unit(level))
+    return Head(levels, role=role, bound=bound, unit=unit, extra=extra, trap=trap)
+
+
+def _head(levels: tuple[str, ...], base: Meaning, bound: Bound | None, unit: str, extra: tuple[str, ...]) -> Head:
+    label = base.label if base.label is not None and base.label.exact else None
+    return Head(
+        levels,
+        label=label,
+        role=base.role,
+        bound=bound or (label.bound if label else None),
+        identity=None if label else base.identity,
+        attribute=None if label else base.attribute,
+        trap=base.trap,
+        unit=unit,
+        extra=extra,
+    )

@@ -1,0 +1,205 @@
+"""Who made the part, what it is called and how big it is: from labelled values, headings, page headers and footers."""
+
+from __future__ import annotations
+
+import re
+from collections import Counter
+from collections.abc import Iterable, Sequence
+from functools import lru_cache
+
+from extract import wording
+from extract.entries import Entry, Item, Text
+from extract.fold import fold
+from extract.meaning import identity_words, meaning, part_tokens
+
+_HOLDER = re.compile(
+    r"(?i)\bHC[\s-]?/?\s?\d{2,3}(?:\s?[/-]\s?(?:US?|SMD|SM|S)|US?|SMD|S)?(?:[\s/-]?SMD)?\b|\bUM-?[1-5]\b|\bTO-?\d{1,2}\b"
+)
+_MILLIMETRES = re.compile(
+    r"(?<![\d.,])(\d{1,2}(?:[.,]\d{1,2})?)\s?(?:mm)?\s?[x×*]\s?[φ⌀∅]?\s?(\d{1,2}(?:[.,]\d{1,2})?)(?:\s?(?:mm)?\s?[x×*]\s?\d{1,2}(?:[.,]\d{1,3})?)?(?![\d.,]*\d)(?:\s?mm\b)?"
+)
+_CODE = re.compile(
+    r"(?i)\b(?:SMD|贴片|封装|package|size|case)\s?-?(\d{4})(?:-\dP)?\b|\b(\d{4})(?=\s?(?:SMD|package|size))"
+)
+_NAME_WORD = r"[A-ZÀ-Þ][^\W\d_]*(?:['&-][^\W\d_]+)*"
+_LATIN_NAME = re.compile(
+    rf"(?<![\w-]){_NAME_WORD}(?![\w-])(?:(?:,?[ ]+(?:&[ ])?|[ ]?&[ ]?){_NAME_WORD}(?![\w-])(?:\.(?=[ ,]|$))?|[ ]+e\.\s?K\.?)*"
+)
+_EAST_NAME = re.compile(r"[\u3400-\u9fff\u30a0-\u30ff\uac00-\ud7af]{2,}")
+_BY = re.compile(r"\b(?:by|from|von)\s+$", re.IGNORECASE)
+FIRST_LINES = 14
+
+
+@lru_cache(maxsize=8192)
+def package_in(text: str) -> str | None:
+    """The first holder, size in millimetres or size code that a text prints."""
+    folded = fold(text)
+    if found := _HOLDER.search(folded):
+        return found[0]
+    limits = identity_words()["package"]
+    for match in _MILLIMETRES.finditer(folded):
+        sizes = [float(match[k].replace(",", ".")) for k in (1, 2)]
+        if all(limits["least_mm"] <= size <= limits["greatest_mm"] for size in sizes) and match[2] != "10":
+            return match[0].strip()
+    if found := _CODE.search(folded):
+        return found[1] or found[2]
+    return None
+
+
+def is_package(text: str) -> bool:
+    """Whether a short text names a package and little else."""
+    found = package_in(text)
+    return found is not None and len(found) >= 0.5 * len(fold(text)) or bool(re.fullmatch(r"\d{4}", fold(text)))
+
+
+@lru_cache(maxsize=8192)
+def makers_in(text: str) -> tuple[tuple[str, int], ...]:
+    """Runs of words that could be a company's name, each with how sure the form makes it."""
+    words = identity_words()["maker"]
+    found: list[tuple[str, int]] = []
+    plain = unfolded(text)
+    for match in _LATIN_NAME.finditer(plain):
+        name = match[0].strip(" ,-")
+        if score := _name_score(name, words):
+            found.append((name, score + (1 if _BY.search(plain[: match.start()]) else 0)))
+    for match in _EAST_NAME.finditer(plain):
+        if (
+            any(match[0].endswith(ending) or match[0].startswith(ending) for ending in words["east"])
+            and len(match[0]) > 3
+        ):
+            sure = any(mark in match[0] for mark in words["east"][:5])
+            found.append((match[0], 4 if sure else 2))
+    return tuple(found)
+
+
+def unfolded(text: str) -> str:
+    """Text with plain dashes and spaces, ready for names."""
+    return " ".join(re.sub(r"[\u2010-\u2015|·•]", " - ", text).split())
+
+
+def _name_score(name: str, words: dict[str, list[str]]) -> int:
+    parts = [part.strip(".,") for part in name.split() if part.strip(".,&")]
+    if not 2 <= len(parts) <= 6 or any(any(c.isdigit() for c in part) for part in parts):
+        return 0
+    generic = {*words["generic"]}
+    if parts[0].casefold() in generic or all(part.casefold() in generic for part in parts):
+        return 0
+    bare = [part.replace(".", "") for part in parts]
+    if any(part in words["legal"] for part in bare[1:]) or name.endswith(("e.K.", "e.K", "e. K.")):
+        return 4
+    trade = {word.casefold() for word in words["trade"]}
+    return 3 if bare[-1].casefold() in trade and bare[0].casefold() not in trade else 0
+
+
+def maker_of(items: Sequence[Item], headers: Sequence[Text]) -> str | None:
+    """The company that the sheet names as its maker; None where it names none."""
+    labelled = [value for item in items if isinstance(item, Entry) and (value := _labelled(item, "maker"))]
+    if labelled:
+        return latin_or_whole(labelled[0])
+    scores: Counter[str] = Counter()
+    texts = [item for item in items if isinstance(item, Text)]
+    places = [(text, 2) for text in headers]
+    places += [(text, 2 if index < FIRST_LINES or index >= len(texts) - 4 else 0) for index, text in enumerate(texts)]
+    for text, weight in places:
+        for segment in _segments(text):
+            for name, sure in makers_in(segment):
+                scores[name] += (sure + weight) if scores[name] == 0 else 1
+    if scores:
+        return max(scores, key=lambda name: (scores[name], len(name)))
+    return _repeated_name(texts, headers)
+
+
+def latin_or_whole(text: str) -> str:
+    """A name given in two scripts, as printed."""
+    return " ".join(text.split())
+
+
+def _segments(text: Text) -> list[str]:
+    return [segment.text for segment in text.segments] or [text.piece.text]
+
+
+def _repeated_name(texts: Sequence[Text], headers: Sequence[Text]) -> str | None:
+    """One proper word that stands alone in a page header or footer, or twice in the sheet."""
+    generic = {*identity_words()["maker"]["generic"]}
+    alone: Counter[str] = Counter()
+    everything = " ".join(fold(text.piece.text) for text in [*texts, *headers]).casefold()
+    for text in [*texts, *headers]:
+        for segment in _segments(text):
+            word = unfolded(segment)
+            if (
+                re.fullmatch(r"[A-ZÀ-Þ][A-Za-zÀ-ÿ]{3,}", word)
+                and word.casefold() not in generic
+                and not meaning(word).known
+            ):
+                alone[word] += 1
+    for word, _ in alone.most_common():
+        if everything.count(word.casefold()) >= 2:
+            return word
+    return None
+
+
+def _labelled(entry: Entry, what: str) -> str | None:
+    if meaning(entry.label.text).identity != what or not entry.values:
+        return None
+    text = " ".join(entry.values[0].piece.text.split())
+    return None if wording.not_stated(text) or len(text) > 80 else text
+
+
+def part_number_of(items: Sequence[Item], headers: Sequence[Text]) -> str | None:
+    """The part or series number that the sheet is about; None where none can be told."""
+    for item in items:
+        if isinstance(item, Entry) and (text := _labelled(item, "part_number")) and (name := _as_part_number(text)):
+            return name
+    scores: Counter[str] = Counter()
+    texts = [item for item in items if isinstance(item, Text)]
+    for index, text in enumerate(texts[: FIRST_LINES * 2]):
+        _score_tokens(text, max(0, 6 - index), scores)
+    for text in headers:
+        _score_tokens(text, 2, scores)
+    if not scores:
+        return None
+    best = max(scores, key=lambda name: scores[name])
+    return best if scores[best] > 0 else None
+
+
+def _as_part_number(text: str) -> str | None:
+    tokens = part_tokens(text)
+    if tokens:
+        return tokens[0] if len(text.split()) > 1 else text
+    return (
+        text
+        if len(text.split()) == 1 and 3 <= len(text) <= 40 and text.isascii() and any(c.isdigit() for c in text)
+        else None
+    )
+
+
+def _score_tokens(text: Text, weight: int, scores: Counter[str]) -> None:
+    words = identity_words()["not_parts"]
+    folded = unfolded(text.piece.text)
+    lowered = folded.casefold()
+    if any(word in lowered for word in words["elsewhere"]):
+        return
+    for token in part_tokens(folded):
+        at = folded.find(token)
+        before, behind = lowered[:at].rstrip(" :#.(-"), lowered[at + len(token) :].lstrip(" )-")
+        score = 1 + weight
+        if any(before.endswith(word) for word in words["before"]):
+            score -= 8
+        if any(before.endswith(word) or behind.startswith(word) for word in words["series"]):
+            score += 3
+        if any(fold(segment) == token for segment in _segments(text)):
+            score += 4
+        score += 2 if text.heading else 0
+        score += 1 if "-" in token or len(token) > 8 else 0
+        scores[token] += score if scores[token] <= 0 else min(score, 2)
+
+
+def texts_of(items: Iterable[Item]) -> list[str]:
+    """All lines of prose and all labels with their remarks, for words that tell what the sheet is about."""
+    found: list[str] = []
+    for item in items:
+        if isinstance(item, Text):
+            found.append(item.piece.text)
+        elif isinstance(item, Entry):
+            found += [item.label.text, *item.conditions, *(value.piece.text for value in item.values)]
+    return found

@@ -1,0 +1,114 @@
+"""Ordering keys: codes with what they stand for ("06 = 6 pF"), in tables and in runs of lines."""
+
+from __future__ import annotations
+
+import re
+from collections.abc import Iterator, Sequence
+
+from extract.documents.model import Cell
+from extract.entries import Key, Piece, Placed
+from extract.fold import fold
+from extract.meaning import meaning
+
+Row = Sequence[Cell | None]
+_CODE = r"(?P<code>blank|none|-?[A-Z]{1,2}\d{0,2}|-?\d{1,3}[A-Z]?|[①-⑳]|\(?blank\)?|\"[^\"]{1,4}\"|'[^']{1,4}')"
+_CHOICE = re.compile(rf"(?i)\s*{_CODE}\s*(?:=|:|：|→|->|\bfor\b)\s*(?P<meaning>.*\S)\s*$")
+_LOOSE = re.compile(r"\s*(?P<code>[Bb]lank|[A-Z]{1,2}\d{0,2})\s+(?P<meaning>[±+\-\d].*\S)\s*$")
+_REVERSED = re.compile(rf"\s*(?P<meaning>[±+\-]?\d.*\S)\s*=\s*{_CODE}\s*$")
+_BETWEEN = re.compile(r"\n|;|；|,\s+(?=[\w\"'-]{1,5}\s*[=:])|、")
+_NUMBERING = re.compile(r"^\s*[\[(]?(?:\d{1,2}|[①-⑳])[\])]?[.:]?\s+(?=\D)")
+
+
+def choices_in(text: str) -> list[tuple[str, str]]:
+    """Codes and meanings of a text that holds nothing else; empty where any piece of it is no choice."""
+    found = []
+    for piece in _BETWEEN.split(fold(text)):
+        if not piece.strip():
+            continue
+        match = _CHOICE.match(piece) or _REVERSED.match(piece) or _LOOSE.match(piece)
+        if match is None or _reads_as_label(match["code"]):
+            return []
+        found.append((match["code"], match["meaning"]))
+    return found
+
+
+def _reads_as_label(code: str) -> bool:
+    """ "CL: 8 pF" and "C0 = 1 pF" are values, not codes."""
+    found = meaning(code)
+    return found.label is not None and found.label.exact
+
+
+def key_label(text: str) -> str:
+    """The label of an ordering key without its numbering ("[1] Load capacitance")."""
+    return _NUMBERING.sub("", text).strip(" :：*")
+
+
+def read_key_table(rows: Sequence[Row], title: str) -> list[Key]:
+    """A table that holds ordering keys and nothing else; empty for any other table."""
+    return _columns_of_keys(rows) or _rows_of_keys(rows) or _code_columns(rows, title)
+
+
+def _distinct(cells: Sequence[Cell | None]) -> list[Cell]:
+    seen: list[Cell] = []
+    for cell in cells:
+        if cell is not None and cell.text.strip() and not any(cell is other for other in seen):
+            seen.append(cell)
+    return seen
+
+
+def _key(label: Placed, cells: Sequence[Cell]) -> Key:
+    choices = tuple(
+        (code, Piece(text, cell.where, cell.confidence)) for cell in cells for code, text in choices_in(cell.text)
+    )
+    return Key(Piece(key_label(label.text), label.where), choices)
+
+
+def _columns_of_keys(rows: Sequence[Row]) -> list[Key]:
+    """Labels in the first row, choices below."""
+    keys, others = [], 0
+    for column in range(len(rows[0])):
+        cells = _distinct([row[column] for row in rows])
+        if len(cells) < 2:
+            continue
+        good = [cell for cell in cells[1:] if choices_in(cell.text)]
+        if len(good) >= 1 and len(good) >= 0.6 * len(cells[1:]) and meaning(key_label(cells[0].text)).head:
+            keys.append(_key(cells[0], good))
+        elif not good and cells[0].column == column:
+            others += 1
+    return keys if len(keys) >= max(1, others) and sum(len(key.choices) for key in keys) >= 2 else []
+
+
+def _rows_of_keys(rows: Sequence[Row]) -> list[Key]:
+    """A label at the head of each row, its choices beside it."""
+    keys = []
+    for row in rows:
+        cells = _distinct(row)
+        good = [cell for cell in cells[1:] if choices_in(cell.text)]
+        if len(cells) >= 2 and len(good) == len(cells) - 1:
+            keys.append(_key(cells[0], good))
+    several = [key for key in keys if len(key.choices) >= 2]
+    return keys if len(keys) >= 0.6 * len(rows) and several else []
+
+
+def _code_columns(rows: Sequence[Row], title: str) -> list[Key]:
+    """A column headed Code beside the column of what the codes stand for."""
+    heads = [cell.text if cell is not None else "" for cell in rows[0]]
+    if not any(meaning(head).role == "code" for head in heads):
+        return []
+    return list(_beside_codes(rows, heads, title))
+
+
+def _beside_codes(rows: Sequence[Row], heads: Sequence[str], title: str) -> Iterator[Key]:
+    for column, head in enumerate(heads):
+        partner = next((k for k in (column + 1, column - 1) if 0 <= k < len(heads) and k != column), None)
+        if meaning(head).role != "code" or partner is None:
+            continue
+        named = heads[partner] if meaning(heads[partner]).head else title
+        choices = tuple(
+            (code.text, cell)
+            for row in rows[1:]
+            if (code := row[column]) is not None and (cell := row[partner]) is not None
+        )
+        anchor = rows[0][column]
+        if named and choices and anchor is not None:
+            yield Key(Piece(key_label(named), anchor.where), choices)

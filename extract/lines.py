@@ -1,0 +1,139 @@
+"""Lines outside tables -> entries, ordering keys and texts."""
+
+from __future__ import annotations
+
+from collections.abc import Iterator, Sequence
+
+from extract.documents.model import Line
+from extract.entries import Entry, Item, Key, Piece, Text, Value
+from extract.fold import fold
+from extract.footnotes import footnote_of
+from extract.heads import is_unit
+from extract.keys import choices_in, key_label
+from extract.meaning import meaning
+from extract.prose import is_label, pair_entries, prose_entries, split_pairs
+
+
+def line_items(lines: Sequence[Line]) -> list[Item]:
+    """A run of lines between two tables, read in order."""
+    items: list[Item] = []
+    index = 0
+    while index < len(lines):
+        taken = _key_run(lines, index, items) or _label_over_value(lines, index, items) or _one(lines[index], items)
+        index += taken
+    return items
+
+
+def _text(line: Line) -> Text:
+    worst = min((segment.confidence for segment in line.segments), default=1.0)
+    return Text(Piece(line.text, line.where, worst), line.heading, line.segments)
+
+
+def _one(line: Line, items: list[Item]) -> int:
+    items.append(_text(line))
+    if footnote_of(line.text) is None or split_pairs(fold(line.text))[0]:
+        items.extend(_entries(line))
+    return 1
+
+
+def _entries(line: Line) -> Iterator[Entry]:
+    segments = line.segments
+    if len(segments) >= 2 and is_label(segments[0].text) and not _has_pair(segments[1].text):
+        yield from _label_and_rest(line)
+        return
+    for segment in segments:
+        yield from pair_entries(segment)
+
+
+def _has_pair(text: str) -> bool:
+    return bool(split_pairs(fold(text))[0])
+
+
+def _label_and_rest(line: Line) -> Iterator[Entry]:
+    """A label and, in the segments behind it, its symbol, values, unit and remarks."""
+    label, *rest = line.segments
+    symbol, unit, values = "", "", []
+    for segment in rest:
+        if is_unit(segment.text) and values:
+            unit = unit or segment.text
+        elif not values and not symbol and len(segment.text) <= 8 and is_label(segment.text):
+            symbol = segment.text
+        else:
+            values.append(Value(segment))
+    if values:
+        piece = Piece(label.text.rstrip(" :："), label.where, label.confidence)
+        yield Entry(piece, tuple(values), unit, symbol, source="pair")
+
+
+def _label_over_value(lines: Sequence[Line], index: int, items: list[Item]) -> int:
+    """A line that is a label and nothing else, and the lines with its values below it."""
+    line = lines[index]
+    if len(line.segments) != 1 or not is_label(line.text) or meaning(line.text).value:
+        return 0
+    end = index + 1
+    while end < len(lines) and _is_value_line(lines[end]) and end - index <= 8:
+        end += 1
+    if end == index + 1 or (end < len(lines) and end - index > 2 and not is_label(lines[end].text) and end - index > 8):
+        return 0
+    items.append(_text(line))
+    label = Piece(line.text.rstrip(" :："), line.where)
+    if end == index + 2:
+        items.append(Entry(label, tuple(Value(segment) for segment in lines[index + 1].segments), source="pair"))
+    else:
+        for each in lines[index + 1 : end]:
+            items.append(Entry(label, tuple(Value(segment) for segment in each.segments), source="pair"))
+    return end - index
+
+
+def _is_value_line(line: Line) -> bool:
+    text = fold(line.text)
+    starts_like_value = bool(text) and (text[0].isdigit() or text[0] in "±+-<>≤≥~(")
+    return (
+        (starts_like_value or meaning(text).role in ("min", "typ", "max"))
+        and not is_label(text)
+        and len(text) <= 60
+        and not choices_in(text)
+    )
+
+
+def _key_run(lines: Sequence[Line], index: int, items: list[Item]) -> int:
+    """Choices of an ordering key, one or several a line, with the label above them or in front of them."""
+    choices = []
+    end = index
+    label: Piece | None = None
+    while end < len(lines):
+        segments = list(lines[end].segments)
+        if (
+            len(segments) > 1
+            and end == index
+            and is_label(key_label(segments[0].text))
+            and all(choices_in(s.text) for s in segments[1:])
+        ):
+            label = Piece(segments[0].text, segments[0].where)
+            segments = segments[1:]
+        found = [(code, Piece(text, s.where, s.confidence)) for s in segments for code, text in choices_in(s.text)]
+        if not found or not all(choices_in(segment.text) for segment in segments):
+            break
+        choices += found
+        end += 1
+        if label is not None:
+            break
+    if len(choices) < 2:
+        return 0
+    label = label or _label_above(items)
+    for line in lines[index:end]:
+        items.append(_text(line))
+    if label is not None:
+        items.append(Key(Piece(key_label(label.text), label.where), tuple(choices)))
+    return end - index
+
+
+def _label_above(items: Sequence[Item]) -> Piece | None:
+    """The last line, if it is a label of a field."""
+    for item in reversed(items[-2:]):
+        if isinstance(item, Text) and is_label(key_label(item.piece.text)):
+            return Piece(item.piece.text, item.piece.where)
+    return None
+
+
+__all__ = ["line_items", "prose_entries"]

@@ -1,0 +1,290 @@
+"""Listings -> drafts of parts: headings are read once, each distinct cell text once a column.
+
+A listing with part numbers gives a draft a row. One without gives a single draft whose candidates hold in the row's
+frequency band, mode, load or package.
+"""
+
+from __future__ import annotations
+
+from collections.abc import Iterator, Sequence
+from dataclasses import dataclass, field, replace
+from functools import lru_cache
+
+from extract import wording
+from extract.candidates import Candidate, confidence_doubts, read
+from extract.conditions import band_of, condition_of, kept, merged
+from extract.drafts import Draft
+from extract.entries import Entry, Listing, Placed
+from extract.fields import field_of
+from extract.fold import fold
+from extract.heads import Head, interpret, is_unit
+from extract.meaning import meaning, part_tokens
+from extract.model import When
+from extract.wording import Label
+
+KEYS = ("frequency_mhz", "load_capacitance_pf")
+
+
+@dataclass(slots=True)
+class _Column:
+    """One column, ready to read cells: a field's label, or the use that the cells are put to."""
+
+    index: int
+    head: Head
+    label: Label | None = None
+    use: str = ""
+    when: When = field(default_factory=When)
+    subject: str = ""
+
+
+def listing_drafts(listing: Listing) -> list[Draft]:
+    """What a listing says of each part, or of the series, that it lists."""
+    columns = [_column(index, column.levels, listing.title) for index, column in enumerate(listing.columns)]
+    _settle(columns, listing)
+    if any(column.use == "part_number" for column in columns):
+        return list(_part_drafts(listing, columns))
+    return _series_drafts(listing, columns)
+
+
+def _column(index: int, levels: tuple[str, ...], title: str) -> _Column:
+    head = interpret(levels)
+    column = _Column(index, head)
+    for extra in head.extra:
+        column.when = merged(column.when, condition_of(extra))
+    column.subject = " ".join(extra for extra in head.extra if condition_of(extra) == When())
+    if head.trap and not head.label and not head.identity and not head.attribute:
+        column.use = "trap"
+    elif head.label is not None:
+        column.label = replace(
+            head.label, bound=head.bound or head.label.bound, unit=head.label.unit or head.unit or None
+        )
+    elif head.role in ("mode", "cut", "band", "model", "code"):
+        column.use = head.role
+    elif head.identity or head.attribute:
+        column.use = head.identity or f"attribute {head.attribute}"
+    elif (head.unit or head.role in ("value", "min", "typ", "max")) and (titled := meaning(title).label) is not None:
+        column.label = replace(titled, bound=head.bound or titled.bound, unit=head.unit or titled.unit)
+    return column
+
+
+def _settle(columns: list[_Column], listing: Listing) -> None:
+    """Choose among several part-number columns, and look for one among the columns without a known heading."""
+    texts = {column.index: _sample(listing, column.index) for column in columns}
+    for column in columns:
+        if column.use == "model":
+            column.use = "part_number" if _share(texts[column.index], _is_token) > 0.5 else "package"
+        elif column.use == "band":
+            column.label = wording.read_label("frequency range")
+            column.use = ""
+    numbered = [column for column in columns if column.use == "part_number"]
+    good = [column for column in numbered if _share(texts[column.index], _is_token) > 0.4]
+    for column in numbered:
+        if good and column not in good:
+            column.use = "description"
+    if not numbered and any(column.use == "description" or not column.use for column in columns):
+        _part_column_by_content(columns, texts)
+
+
+def _part_column_by_content(columns: list[_Column], texts: dict[int, list[str]]) -> None:
+    for column in columns:
+        if column.label is None and column.use in ("", "description") and texts[column.index]:
+            names = [part_tokens(text) for text in texts[column.index]]
+            if sum(bool(each) for each in names) > 0.6 * len(names) and len(
+                {each[0] for each in names if each}
+            ) > 0.6 * len(names):
+                column.use = "part_number"
+                return
+
+
+def _sample(listing: Listing, index: int) -> list[str]:
+    step = max(1, len(listing.rows) // 40)
+    return [cell.text for row in listing.rows[::step] if (cell := row[index]) is not None and cell.text.strip()]
+
+
+def _share(texts: Sequence[str], test: object) -> float:
+    return sum(map(test, texts)) / len(texts) if texts else 0.0  # type: ignore[arg-type]
+
+
+def _is_token(text: str) -> bool:
+    return bool(part_tokens(text))
+
+
+@lru_cache(maxsize=65536)
+def _read_cell(text: str, label: Label) -> tuple[object, ...]:
+    return read(text, label.field, label.unit, label.bound, plus_minus=label.plus_minus)
+
+
+def cell_candidates(cell: Placed, column: _Column, when: When, subject: str = "") -> Iterator[Candidate]:
+    """What one cell of a field's column may mean."""
+    label = column.label
+    if label is None or wording.not_stated(cell.text):
+        return
+    known = field_of(label.field)
+    for value in read(cell.text, label.field, label.unit, label.bound, plus_minus=label.plus_minus):
+        if value.series:
+            continue
+        yield Candidate(
+            field=label.field,  # type: ignore[arg-type]
+            min=value.min,
+            typ=value.typ,
+            max=value.max,
+            options=tuple(value.options),
+            when=merged(merged(when, kept(label.when, label.field)), kept(value.when, label.field)),
+            bare=value.bare and known.bare,
+            raw=f"{column.head.levels[-1] if len(column.head.levels) == 1 else ' '.join(column.head.levels)} {cell.text}".strip(),
+            where=cell.where,
+            doubts=(*value.doubts, *confidence_doubts(cell.confidence)),
+            source="table",
+            subject=subject,
+        )
+
+
+def _part_drafts(listing: Listing, columns: list[_Column]) -> Iterator[Draft]:
+    numbers = [column for column in columns if column.use == "part_number"]
+    for row, section in zip(listing.rows, listing.sections, strict=True):
+        base = _row_draft(row, columns, section)
+        for column in numbers:
+            cell = row[column.index]
+            if cell is None or wording.not_stated(cell.text):
+                continue
+            yield from _named(base, cell, column)
+
+
+def _named(base: Draft, cell: Placed, column: _Column) -> Iterator[Draft]:
+    """The row's draft under the part number of one cell; its column's head may add a temperature range or a load."""
+    text = " ".join(cell.text.split())
+    tokens = part_tokens(text)
+    name = text if len(text.split()) == 1 or not tokens else tokens[0]
+    draft = replace(base, part_number=name, where=cell.where, candidates=list(base.candidates))
+    span = column.when.temperature_c
+    if span is not None:
+        draft.candidates.append(
+            Candidate(
+                "operating_temperature_c",
+                span[0],
+                None,
+                span[1],
+                (),
+                When(),
+                False,
+                " ".join(column.head.levels),
+                cell.where,
+            )
+        )
+    yield draft
+
+
+def _row_draft(row: Sequence[Placed | None], columns: list[_Column], section: str) -> Draft:
+    draft = Draft()
+    if section:
+        _take_section(draft, section)
+    pairs: dict[str, list[Placed]] = {}
+    for column in columns:
+        cell = row[column.index]
+        if cell is None or not cell.text.strip():
+            continue
+        if column.label is not None:
+            _take_field(draft, cell, column)
+        else:
+            _take_use(draft, cell, column)
+            pairs.setdefault(column.use, []).append(cell)
+    _take_sentences(draft, [cell for use in ("", "description") for cell in pairs.get(use, [])])
+    return draft
+
+
+def _take_field(draft: Draft, cell: Placed, column: _Column) -> None:
+    label = column.label
+    assert label is not None  # noqa: S101 - the caller asked
+    if label.field == "load_capacitance_pf" and any(
+        v.series for v in read(cell.text, label.field, label.unit, label.bound)
+    ):
+        draft.resonance.add("series")
+    draft.candidates.extend(cell_candidates(cell, column, kept(column.when, label.field)))
+    if mode := condition_of(cell.text).mode:
+        draft.modes.add(mode)
+
+
+def _take_use(draft: Draft, cell: Placed, column: _Column) -> None:
+    text = " ".join(cell.text.split())
+    draft.texts.append(text)
+    if wording.not_stated(text):
+        return
+    if column.use in ("maker", "package"):
+        setattr(draft, column.use, getattr(draft, column.use) or text)
+    elif column.use in ("mode", "cut") or not column.use or column.use == "description":
+        draft.take_mode_and_cut(text, codes=column.use == "mode")
+    elif column.use.startswith("attribute "):
+        draft.attributes.setdefault(column.use.removeprefix("attribute "), text)
+
+
+def _take_section(draft: Draft, section: str) -> None:
+    draft.texts.append(section)
+    draft.take_mode_and_cut(section)
+
+
+def _take_sentences(draft: Draft, cells: list[Placed]) -> None:
+    """Properties inside one cell, as pairs or as a shop's one-line description, where no column states them."""
+    from extract.candidates import entry_candidates
+    from extract.prose import loose_candidates, pair_entries
+
+    known = {candidate.field for candidate in draft.candidates}
+    for cell in cells:
+        if len(cell.text) < 8:
+            continue
+        entries = pair_entries(cell)
+        found = [candidate for entry in entries for candidate in entry_candidates(entry)]
+        draft.take_identity(entries)
+        if not found:
+            found = loose_candidates(cell)
+        draft.candidates.extend(each for each in found if each.field not in known)
+        known |= {each.field for each in found}
+
+
+def _series_drafts(listing: Listing, columns: list[_Column]) -> list[Draft]:
+    """Rows without part numbers: each row's key cells say where its other cells hold."""
+    draft = Draft()
+    fields = [column for column in columns if column.label is not None]
+    others = [column for column in fields if column.label is not None and column.label.field not in KEYS]
+    for row, section in zip(listing.rows, listing.sections, strict=True):
+        when, subject = _row_key(row, columns, section, alone=not others)
+        for column in others if others else fields:
+            cell = row[column.index]
+            if cell is None or column.label is None:
+                continue
+            own = merged(when, column.when)
+            own = own if column.label.field != "frequency_mhz" else own.model_copy(update={"frequency_mhz": None})
+            draft.candidates.extend(cell_candidates(cell, column, own, column.subject or subject))
+    return [draft] if draft.candidates else []
+
+
+def _row_key(row: Sequence[Placed | None], columns: list[_Column], section: str, *, alone: bool) -> tuple[When, str]:
+    when, subject = condition_of(section), ""
+    for column in columns:
+        cell = row[column.index]
+        if cell is None or not cell.text.strip():
+            continue
+        if column.label is not None and not alone:
+            when = merged(when, _key_when(cell, column.label))
+        elif column.use == "mode":
+            mode = wording.mode_of(cell.text) or condition_of(cell.text).mode
+            when = merged(when, When(mode=mode))
+        elif column.use in ("package", "model", "part_number"):
+            subject = subject or " ".join(cell.text.split())
+        elif not column.use and not is_unit(cell.text):
+            when = merged(when, condition_of(cell.text))
+    return when, subject
+
+
+def _key_when(cell: Placed, label: Label) -> When:
+    if label.field == "frequency_mhz":
+        band = band_of(cell.text, label.unit)
+        return merged(condition_of(cell.text), When(frequency_mhz=band)) if band else condition_of(cell.text)
+    if label.field == "load_capacitance_pf":
+        for value in read(cell.text, label.field, label.unit, None):
+            low, high = (value.typ, value.typ) if value.typ is not None else (value.min, value.max)
+            if low is not None and high is not None:
+                return When(load_capacitance_pf=(low, high))
+    return When()
+
+
+__all__ = ["Entry", "fold", "listing_drafts"]

@@ -1,0 +1,104 @@
+"""What a short printed text is: a field's label, a heading's role, an identity label, a unit, a symbol, a value ..."""
+
+from __future__ import annotations
+
+import re
+import tomllib
+from dataclasses import dataclass
+from functools import lru_cache
+from importlib import resources
+from typing import Any
+
+from extract import wording
+from extract.fold import fold
+from extract.wording import Label
+
+_DIGIT = re.compile(r"\d")
+_PART_TOKEN = re.compile(r"(?<![\w.,/±+×-])[A-Z0-9](?:[A-Za-z0-9]|[-./,](?=[A-Za-z0-9]))+(?![\w°%])")
+_AMOUNT = re.compile(
+    r"[-+]?[\d.,]+(?:[-~/][\d.,]+)*(?:[A-Za-z]{1,2}?(?:Hz|HZ|hz|F|f|ppm|PPM|pF|C|V|A|W|H|mm|MM|s|S|g|h|R|k|K|M|pcs|th|rd|st|nd|OT|ot|Vdc|VDC|dc|ohm|Ohm|ohms|Ohms))*"
+)
+_SIZE = re.compile(r"[\d.,]+(?:[xX][\d.,]+)+(?:mm)?|\d{4}(?:-\d[A-Z])?")
+_LEAD = re.compile(r"[A-Za-z]+[-/.]?")
+
+
+@dataclass(frozen=True, slots=True)
+class Meaning:
+    """Every vocabulary's answer about one text; `value` where it holds a digit and none of them knows it."""
+
+    label: Label | None
+    role: str | None
+    identity: str | None
+    attribute: str | None
+    trap: str | None
+    value: bool
+
+    @property
+    def head(self) -> str | None:
+        """A name for what the text stands for as a heading; None where it is no heading."""
+        if self.label is not None and self.label.exact:
+            return self.label.field
+        if self.role in ("mode", "cut", "band", "model", "code"):
+            return self.role
+        return self.identity or (f"attribute {self.attribute}" if self.attribute else None)
+
+    @property
+    def known(self) -> bool:
+        """Whether any vocabulary knows the text."""
+        return bool(self.label or self.role or self.identity or self.attribute or self.trap)
+
+
+@lru_cache(maxsize=16384)
+def meaning(text: str) -> Meaning:
+    """Look `text` up in all vocabularies."""
+    folded = fold(text)
+    if not folded or len(folded) > 120:
+        return Meaning(None, None, None, None, None, bool(_DIGIT.search(folded)))
+    role = wording.role_of(folded)
+    identity = wording.identity_label(folded)
+    attribute = wording.attribute_label(folded)
+    label = None if role or identity else wording.read_label(folded)
+    trap = wording.trap_of(folded)
+    known = role or identity or attribute or (label is not None and label.exact)
+    return Meaning(label, role, identity, attribute, trap, bool(_DIGIT.search(folded)) and not known)
+
+
+@lru_cache(maxsize=16384)
+def is_part_token(text: str) -> bool:
+    """Whether the whole text is one or several part or series numbers ("SQ-320, SQ-321")."""
+    words = [word for word in re.split(r"[\s,;/]+", fold(text)) if word]
+    return 0 < len(words) <= 4 and bool(part_tokens(words[0])) and all(part_tokens(word) for word in words)
+
+
+@lru_cache(maxsize=1)
+def identity_words() -> dict[str, dict[str, Any]]:
+    """`identity.toml`: what tells part numbers, makers and packages from other words."""
+    return tomllib.loads(resources.files("extract").joinpath("identity.toml").read_text(encoding="utf-8"))
+
+
+@lru_cache(maxsize=1)
+def _refused() -> frozenset[str]:
+    return frozenset(prefix.casefold() for prefix in identity_words()["not_parts"]["prefixes"])
+
+
+@lru_cache(maxsize=16384)
+def part_tokens(text: str) -> tuple[str, ...]:
+    """Words of `text` that could be part or series numbers, in order."""
+    found: list[str] = []
+    for match in _PART_TOKEN.finditer(fold(text)):
+        token = match[0].rstrip(".-/,")
+        if _could_name_a_part(token) and token not in found:
+            found.append(token)
+    return tuple(found)
+
+
+def _could_name_a_part(token: str) -> bool:
+    if len(token) < 3 or not _DIGIT.search(token) or not any(c.isalpha() for c in token):
+        return False
+    if _AMOUNT.fullmatch(token) or _SIZE.fullmatch(token):
+        return False
+    if sum(c.islower() for c in token) > sum(c.isupper() for c in token):
+        return False
+    lead = _LEAD.match(token)
+    prefix = lead[0].rstrip("-/.").casefold() if lead else ""
+    return prefix not in _refused()

@@ -1,0 +1,245 @@
+"""Rows that begin with a label -> entries: which cell is the symbol, the unit, the condition, the value."""
+
+from __future__ import annotations
+
+import re
+from collections.abc import Iterator, Sequence
+from dataclasses import dataclass, field
+
+from extract.conditions import kinds_of
+from extract.documents.model import Cell
+from extract.entries import Entry, Item, Piece, Text, Value
+from extract.heads import Head, is_unit
+from extract.meaning import is_part_token, meaning
+
+Row = Sequence[Cell | None]
+_VALUE_ROLES = ("value", "min", "typ", "max")
+_CONDITION_ROLES = ("condition", "remarks")
+_SYMBOL = re.compile(r"[^\W\d]\w{0,2}[ _]?\w{0,8}(?:/[^\W\d]\w{0,3}[ _]?\w{0,6})?(?:\(\w\))?")
+
+
+@dataclass(slots=True)
+class _Row:
+    """One row, its cells put to their uses. `follows` marks a row without a label of its own."""
+
+    label: Cell | None = None
+    label_text: str = ""
+    values: list[Value] = field(default_factory=list)
+    unit: str = ""
+    symbol: str = ""
+    conditions: list[str] = field(default_factory=list)
+    section: str = ""
+
+    def kinds(self) -> frozenset[str]:
+        texts = [*self.conditions, *(value.piece.text for value in self.values)]
+        return frozenset().union(*(kinds_of(text) for text in texts)) - {"years"}
+
+
+def parameter_entries(body: Sequence[Row], heads: Sequence[Head], title: str) -> Iterator[Item]:
+    """Entries of a parameter table, or of pairs of label and value where `heads` is empty."""
+    for first, last in _halves(body, heads):
+        part = [row[first:last] for row in body]
+        columns = list(heads[first:last]) or _guessed_heads(part)
+        rows = list(_rows(part, columns, title))
+        _hand_down_labels(rows)
+        for row in rows:
+            yield from _items(row)
+
+
+def _halves(body: Sequence[Row], heads: Sequence[Head]) -> list[tuple[int, int]]:
+    """Two label columns side by side are two tables; else the whole width."""
+    width = max(len(row) for row in body)
+    starts = [0]
+    for column in range(2, width - 1):
+        cells = [row[column] for row in body if column < len(row) and row[column] is not None]
+        texts = {id(cell): cell.text for cell in cells if cell is not None and cell.column == column}
+        labels = sum(_is_label(text) for text in texts.values())
+        if labels >= 2 and labels >= 0.6 * len(texts) and not _mostly_symbols(list(texts.values())):
+            starts.append(column)
+    if heads and len(starts) > 1:
+        starts = [start for start in starts if start == 0 or heads[start].role == "parameter"]
+    return list(zip(starts, [*starts[1:], width], strict=True))
+
+
+def _is_label(text: str) -> bool:
+    found = meaning(text)
+    return found.head is not None and not found.value
+
+
+def _mostly_symbols(texts: list[str]) -> bool:
+    return sum(len(text) <= 8 for text in texts) >= 0.6 * len(texts)
+
+
+def _guessed_heads(rows: Sequence[Row]) -> list[Head]:
+    """Roles of columns without a heading, as far as all their cells agree."""
+    width = max(len(row) for row in rows)
+    heads = [Head((), role="parameter")]
+    for column in range(1, width):
+        texts = [row[column].text for row in rows if column < len(row) and row[column] is not None]  # type: ignore[union-attr]
+        filled = [text for text in texts if text.strip()]
+        if filled and all(is_unit(text) for text in filled):
+            heads.append(Head((), role="unit"))
+        elif filled and all(_looks_like_symbol(text) for text in filled) and width > 2 and len(filled) > 1:
+            heads.append(Head((), role="symbol"))
+        else:
+            heads.append(Head(()))
+    return heads
+
+
+def _looks_like_symbol(text: str) -> bool:
+    stripped = text.strip(" -")
+    return not stripped or (len(stripped) <= 10 and bool(_SYMBOL.fullmatch(stripped)) and not is_part_token(stripped))
+
+
+def _parameter_column(rows: Sequence[Row], heads: Sequence[Head]) -> int:
+    for index, head in enumerate(heads):
+        if head.role == "parameter":
+            return index
+    counts = [
+        sum(_is_label(cell.text) for row in rows if (cell := row[column]) is not None)
+        for column in range(min(3, len(heads)))
+    ]
+    return counts.index(max(counts)) if counts else 0
+
+
+def _rows(body: Sequence[Row], heads: Sequence[Head], title: str) -> Iterator[_Row]:
+    at = _parameter_column(body, heads)
+    governed = sum(head.role in _VALUE_ROLES or _is_subject(head) for head in heads) == 1
+    section, trapped = title, False
+    for row in body:
+        cells = _distinct(row)
+        if not cells:
+            continue
+        if len(cells) == 1 and len(row) > 1 and _is_section(cells[0]):
+            section = cells[0].text
+            trapped = meaning(section).trap is not None
+            yield _Row(label=cells[0], label_text=section, section=section)
+            continue
+        found = _sorted_row(row, heads, at, governed=governed)
+        found.section = section
+        if found.label is not None and meaning(found.label_text).trap:
+            trapped = not any(meaning(value.piece.text).value for value in found.values)
+        elif trapped and found.label is not None and _is_sub_label(found.label_text):
+            continue
+        else:
+            trapped = trapped and found.label is None
+        yield found
+
+
+def _is_sub_label(text: str) -> bool:
+    """Rows below a heading such as "Drive level dependency:" begin small or indented."""
+    first = text.lstrip("-–•· ")[:1]
+    return first.islower()
+
+
+def _distinct(row: Row) -> list[Cell]:
+    seen: list[Cell] = []
+    for cell in row:
+        if cell is not None and cell.text.strip() and not any(cell is other for other in seen):
+            seen.append(cell)
+    return seen
+
+
+def _is_section(cell: Cell) -> bool:
+    return not meaning(cell.text).value or cell.column_span > 1 or cell.header
+
+
+def _is_subject(head: Head) -> bool:
+    return head.role is None and head.name is None and bool(head.extra)
+
+
+def _sorted_row(row: Row, heads: Sequence[Head], at: int, *, governed: bool) -> _Row:
+    found = _Row()
+    seen: list[Cell] = []
+    for index, cell in enumerate(row):
+        if cell is None or not cell.text.strip() or any(cell is other for other in seen):
+            continue
+        seen.append(cell)
+        head = heads[index] if index < len(heads) else Head(())
+        span = [heads[k] for k in range(index, len(row)) if k < len(heads) and row[k] is cell]
+        if index == at or index < at and _is_label(cell.text) and found.label is None:
+            found.label, found.label_text = cell, cell.text
+        elif index < at:
+            continue
+        else:
+            _place(found, cell, head, span, governed=governed)
+    return found
+
+
+def _place(found: _Row, cell: Cell, head: Head, span: list[Head], *, governed: bool) -> None:
+    roles = [each.role for each in span]
+    if head.role == "unit" and len(set(roles)) == 1:
+        found.unit = cell.text
+    elif head.role == "symbol":
+        found.symbol = cell.text
+    elif head.role in _CONDITION_ROLES:
+        found.conditions.append(cell.text)
+    elif any(role in _VALUE_ROLES for role in roles) or _is_subject(head):
+        found.values.extend(_values(cell, span, governed=governed))
+    elif is_unit(cell.text) and not found.unit:
+        found.unit = cell.text
+    elif not found.values and not found.symbol and _looks_like_symbol(cell.text) and not meaning(cell.text).value:
+        found.symbol = cell.text
+    else:
+        found.values.append(Value(cell))
+
+
+def _values(cell: Cell, span: list[Head], *, governed: bool) -> list[Value]:
+    """One value a subject; its bound from the heading unless it is merged over several bounds."""
+    subjects: dict[str, list[Head]] = {}
+    for head in span:
+        if head.role in _VALUE_ROLES or _is_subject(head):
+            subjects.setdefault(" ".join(head.extra), []).append(head)
+    values = []
+    for subject, group in subjects.items():
+        bounds = {head.bound for head in group if head.bound}
+        values.append(
+            Value(
+                cell,
+                bound=next(iter(bounds)) if len(bounds) == 1 else None,
+                nominal=len(bounds) > 1,
+                governed=governed,
+                subject=subject,
+            )
+        )
+    return values
+
+
+def _hand_down_labels(rows: list[_Row]) -> None:
+    """Give rows without a label that of the row above or below, whichever states the same kind of condition."""
+    labelled = [row.label is not None for row in rows]
+    for index, row in enumerate(rows):
+        if labelled[index] or not row.values:
+            continue
+        above = next((rows[k] for k in range(index - 1, -1, -1) if labelled[k]), None)
+        below = next((rows[k] for k in range(index + 1, len(rows)) if labelled[k]), None)
+        source = _nearer(row, above, below)
+        if source is None:
+            continue
+        row.label, row.label_text = source.label, source.label_text
+        row.unit, row.symbol = row.unit or source.unit, row.symbol or source.symbol
+
+
+def _nearer(row: _Row, above: _Row | None, below: _Row | None) -> _Row | None:
+    if above is None or below is None:
+        return above or below
+    kinds = row.kinds()
+    if not above.values or (kinds & above.kinds()):
+        return above
+    if kinds and (kinds & below.kinds()):
+        return below
+    return above
+
+
+def _items(row: _Row) -> Iterator[Item]:
+    if row.label is None:
+        for value in row.values:
+            yield Text(value.piece)
+        return
+    if not row.values:
+        yield Text(Piece(row.label_text, row.label.where, row.label.confidence), heading=True)
+        if row.conditions:
+            yield Entry(row.label, (), row.unit, row.symbol, tuple(row.conditions), row.section)
+        return
+    label = Piece(row.label_text, row.label.where, row.label.confidence)
+    yield Entry(label, tuple(row.values), row.unit, row.symbol, tuple(row.conditions), row.section)

@@ -1,0 +1,214 @@
+"""Blocks -> parts: whose readings they are, what else is said of each part, and what was passed over."""
+
+from __future__ import annotations
+
+from collections.abc import Iterable, Sequence
+from dataclasses import dataclass, field, replace
+
+from extract import wording
+from extract.attributes import attributes_of
+from extract.blocks import Blocks
+from extract.candidates import Candidate, entry_candidates, key_candidates
+from extract.drafts import Draft
+from extract.entries import Entry, Key, Listing, Text
+from extract.footnotes import noted_candidates
+from extract.identity import FIRST_LINES, maker_of, package_in, part_number_of, texts_of
+from extract.lists import listing_drafts
+from extract.meaning import is_part_token, part_tokens
+from extract.model import Note, Part
+from extract.prose import loose_in_prose
+from extract.readings import readings_of
+from extract.refusals import refusal
+from extract.sections import Section, sections
+from extract.subjects import split_by_subject
+
+CRYSTAL_FIELDS = frozenset({
+    "frequency_mhz", "load_capacitance_pf", "esr_ohm", "shunt_capacitance_pf", "motional_capacitance_ff", "drive_level_uw",
+    "motional_inductance_mh", "quality_factor", "turnover_temperature_c", "parabolic_coefficient_ppm_per_c2",
+})  # fmt: skip
+
+
+@dataclass(slots=True)
+class Found:
+    """Parts and what the reader has to say about them."""
+
+    parts: list[Part] = field(default_factory=list)
+    notes: list[Note] = field(default_factory=list)
+
+
+def parts_of(blocks: Blocks) -> Found:
+    """Every part of a sheet."""
+    found = Found()
+    split = sections(blocks.items)
+    common = next((section for section in split if section.name is None), Section(None))
+    shared = _draft(common, blocks)
+    named = [section for section in split if section.name is not None]
+    maker = maker_of(blocks.items, blocks.headers)
+    drafts: list[Draft] = []
+    reason = None
+    for section in named or [common]:
+        if (reason := refusal(texts_of(section.items))) is not None:
+            _pass_over(found, section.name or part_number_of(blocks.items, blocks.headers), reason)
+            continue
+        drafts += _of_section(section, shared if named else None, blocks)
+    for draft in _merged(drafts):
+        _finish(draft, maker, found)
+    return found
+
+
+def _pass_over(found: Found, name: str | None, reason: str) -> None:
+    who = f"{name}: " if name else ""
+    found.notes.append(Note(level="info", message=f"{who}passed over, because it is {reason}, no crystal"))
+
+
+def _of_section(section: Section, shared: Draft | None, blocks: Blocks) -> list[Draft]:
+    own = _draft(section, blocks)
+    own.part_number = own.part_number or section.name
+    listed = [each for item in section.items if isinstance(item, Listing) for each in listing_drafts(item)]
+    rows = [each for each in listed if each.part_number is not None]
+    for each in listed:
+        if each.part_number is None:
+            own.candidates += each.candidates
+    if shared is not None:
+        _inherit(own, shared)
+    if rows:
+        for row in rows:
+            _inherit(row, own)
+        return rows
+    if own.part_number is None:
+        own.part_number = part_number_of(section.items, blocks.headers)
+    return split_by_subject(own)
+
+
+def _inherit(draft: Draft, general: Draft) -> None:
+    """Take over what is stated for all parts, where the part has nothing of its own."""
+    own = {candidate.field for candidate in draft.candidates if candidate.source not in ("loose", "prose")}
+    draft.candidates += [each for each in general.candidates if each.field not in own]
+    draft.modes = draft.modes or set(general.modes)
+    draft.cuts = draft.cuts or set(general.cuts)
+    draft.maker = draft.maker or general.maker
+    draft.package = draft.package or general.package
+    for name, text in general.attributes.items():
+        draft.attributes.setdefault(name, text)
+
+
+def _draft(section: Section, blocks: Blocks) -> Draft:
+    """All that the entries and texts of a section say of its part."""
+    draft = Draft()
+    texts = [item for item in section.items if isinstance(item, Text)]
+    entries = [item for item in section.items if isinstance(item, Entry)]
+    for entry in entries:
+        _take_entry(draft, entry, blocks)
+    draft.take_identity(entries)
+    if draft.part_number is not None and not part_tokens(draft.part_number):
+        draft.part_number = None
+    for item in section.items:
+        if isinstance(item, Key):
+            draft.candidates += key_candidates(item)
+    _take_texts(draft, texts)
+    return draft
+
+
+def _take_entry(draft: Draft, entry: Entry, blocks: Blocks) -> None:
+    found = entry_candidates(entry)
+    draft.candidates += found
+    draft.candidates += noted_candidates(entry, blocks.notes)
+    if any(each.field == "load_capacitance_pf" for each in found) or "load" in entry.label.text.casefold():
+        for value in entry.values:
+            if any(each.series for each in _loads(value.piece.text)):
+                draft.resonance.add("series")
+    if found:
+        for text in entry.conditions:
+            draft.take_mode_and_cut(text)
+        if found[0].field == "frequency_mhz":
+            for value in entry.values:
+                draft.take_mode_and_cut(value.piece.text)
+
+
+def _loads(text: str) -> Sequence[object]:
+    from extract.candidates import read
+
+    return read(text, "load_capacitance_pf")
+
+
+def _take_texts(draft: Draft, texts: Sequence[Text]) -> None:
+    """Mode, cut, package and an unlabelled frequency from headings, feature lines and prose."""
+    had_mode, had_cut = bool(draft.modes), bool(draft.cuts)
+    for index, text in enumerate(texts):
+        for segment in [each.text for each in text.segments] or [text.piece.text]:
+            if not had_mode:
+                draft.modes.update(_modes(segment))
+            if not had_cut:
+                draft.cuts.update(_cuts(segment))
+            if draft.package is None and (index < FIRST_LINES or text.heading):
+                draft.package = package_in(segment)
+        if index < FIRST_LINES or len(text.piece.text) > 100:
+            draft.candidates += loose_in_prose(text.piece)
+
+
+def _modes(text: str) -> Iterable[str]:
+    from extract.drafts import modes_in
+
+    return modes_in(text)
+
+
+def _cuts(text: str) -> Iterable[str]:
+    from extract.drafts import cuts_in
+
+    return cuts_in(text)
+
+
+def _merged(drafts: Sequence[Draft]) -> list[Draft]:
+    """Drafts of one part number are one part."""
+    merged: dict[tuple[str | None, int], Draft] = {}
+    for index, draft in enumerate(drafts):
+        key = (draft.part_number, 0 if draft.part_number else index)
+        if key in merged:
+            first = merged[key]
+            first.candidates += draft.candidates
+            first.maker, first.package = first.maker or draft.maker, first.package or draft.package
+            first.modes |= draft.modes
+            first.cuts |= draft.cuts
+        else:
+            merged[key] = draft
+    return list(merged.values())
+
+
+def _finish(draft: Draft, maker: str | None, found: Found) -> None:
+    """One draft as a part, or a note why it is none."""
+    if (reason := refusal(draft.texts)) is not None:
+        _pass_over(found, draft.part_number, reason)
+        return
+    stated = {candidate.field for candidate in draft.candidates if candidate.source != "loose"}
+    if len(stated & CRYSTAL_FIELDS) == 0 or (len(stated) < 2 and "frequency_mhz" not in stated):
+        if draft.part_number and stated:
+            _pass_over(found, draft.part_number, "something without a crystal's properties")
+        return
+    found.parts.append(_part(draft, maker))
+
+
+def _part(draft: Draft, maker: str | None) -> Part:
+    mode = next(iter(draft.modes)) if len(draft.modes) == 1 else None
+    cut = _one_cut(draft.cuts)
+    readings = readings_of(draft.candidates, cut=cut, mode=mode)
+    if mode is None and cut == "tuning fork" and not draft.modes:
+        mode = "fundamental"
+    loads = any(reading.field == "load_capacitance_pf" for reading in readings)
+    series = "series" in draft.resonance
+    return Part(
+        part_number=draft.part_number,
+        maker=draft.maker or maker,
+        package=draft.package,
+        mode=mode,
+        cut=cut,
+        resonance=None if loads == series else ("load" if loads else "series"),
+        attributes=attributes_of(draft.attributes, draft.texts),
+        readings=readings,
+    )
+
+
+def _one_cut(cuts: set[str]) -> str | None:
+    return next(iter(cuts)) if len(cuts) == 1 else None
+
+
+__all__ = ["Candidate", "Found", "is_part_token", "parts_of", "replace", "wording"]

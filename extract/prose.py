@@ -1,0 +1,168 @@
+"""Running text, mail, KEY=VALUE lines and shop one-liners -> entries."""
+
+from __future__ import annotations
+
+import re
+from collections.abc import Iterator
+
+from extract import wording
+from extract.candidates import Candidate, read
+from extract.conditions import condition_of
+from extract.entries import Entry, Piece, Placed, Source, Value
+from extract.fold import fold
+from extract.meaning import meaning
+from extract.model import When
+from extract.units import kind_of
+
+_CHUNK = re.compile(r"\n|;|；|•|\s\|\s|。|‖")
+_SEPARATOR = re.compile(r"[:=](?!//)")
+_WORD_START = re.compile(r"(?<![^\s,，、。([])\S")
+_SENTENCE = re.compile(r"(?<=[^\W\d])[.;!?]\s+|(?<=[\d%)°])[.;]\s+(?=[^\W\d_])|[。；]\s*|\n")
+_LONG_BRACKET = re.compile(r"\([^()]{24,}\)")
+_UNITLESS = ("quality_factor", "capacitance_ratio")
+NEAR = 60
+
+
+def pair_entries(cell: Placed) -> list[Entry]:
+    """Every `label: value` and `KEY=VALUE` of a text, and what its sentences say where it holds no pairs."""
+    found: list[Entry] = []
+    for chunk in _CHUNK.split(fold(cell.text)):
+        if not chunk.strip():
+            continue
+        pairs, rest = split_pairs(chunk)
+        found += [_entry(label, value, cell, "pair") for label, value in pairs]
+        if rest.strip():
+            found += prose_entries(Piece(rest, cell.where, cell.confidence))
+    return found
+
+
+def split_pairs(text: str) -> tuple[list[tuple[str, str]], str]:
+    """Known labels with a colon or equals sign and what follows each; and the text before the first of them."""
+    marks: list[tuple[int, int, int]] = []
+    begin = 0
+    for match in _SEPARATOR.finditer(text):
+        start = _label_start(text, begin, match.start())
+        if start is not None:
+            marks.append((start, match.start(), match.end()))
+            begin = match.end()
+    pairs = []
+    for index, (start, end, after) in enumerate(marks):
+        until = marks[index + 1][0] if index + 1 < len(marks) else len(text)
+        pairs.append((text[start:end].strip(" -–*·、,"), text[after:until].strip(" ,，、")))
+    return pairs, text[: marks[0][0]] if marks else text
+
+
+def _label_start(text: str, begin: int, end: int) -> int | None:
+    """Where the longest known label that ends at `end` begins; None where none does."""
+    starts = [begin + match.start() for match in _WORD_START.finditer(text[begin:end])]
+    for start in starts[-10:]:
+        if is_label(text[start:end]):
+            return start
+    return None
+
+
+def is_label(text: str) -> bool:
+    """Whether a text is a label of anything: a field, an identity, an attribute, a mode, or of a row to leave alone."""
+    known = meaning(text.strip(" -–*·、,.:："))
+    return known.head is not None or known.trap is not None
+
+
+def _entry(label: str, value: str, cell: Placed, source: Source) -> Entry:
+    values = (Value(Piece(value, cell.where, cell.confidence)),) if value else ()
+    return Entry(Piece(label, cell.where, cell.confidence), values, source=source)
+
+
+def prose_entries(piece: Placed) -> list[Entry]:
+    """What sentences state: each label with the nearest amount that has the label's unit."""
+    found: list[Entry] = []
+    for sentence in _SENTENCE.split(fold(piece.text)):
+        if sentence and sentence.strip():
+            found += _sentence_entries(_LONG_BRACKET.sub(" ", sentence), piece)
+    return found
+
+
+def _sentence_entries(sentence: str, piece: Placed) -> Iterator[Entry]:
+    labels = wording.find_labels(sentence)
+    taken = 0
+    for index, label in enumerate(labels):
+        until = labels[index + 1].start if index + 1 < len(labels) else len(sentence)
+        after = sentence[label.end : until]
+        field = label.label.field
+        name = sentence[label.start : label.end]
+        if _states(after[:NEAR], field, exact=label.label.exact):
+            yield _entry(name, after, piece, "prose")
+            taken = until
+            continue
+        before = sentence[max(taken, label.start - NEAR) : label.start]
+        if field not in _UNITLESS and _states(before, field, exact=True):
+            yield _entry(name, _last_amount(before, field), piece, "prose")
+
+
+def _states(text: str, field: str, *, exact: bool) -> bool:
+    if field in _UNITLESS:
+        return exact and bool(re.match(r"\W*(?:of|is|:|=|von|di|de)?\s*[\d<>≥≤~]", text))
+    return bool(kind_of(field).pattern.search(text)) and bool(re.search(r"\d", text)) and bool(read(text, field))
+
+
+def _last_amount(text: str, field: str) -> str:
+    """The end of a text from the last number on that still reads as the field: the amount next to the label."""
+    for match in reversed(list(re.finditer(r"(?<![\d.,])[-+±≤<]?\s?\d", text))):
+        tail = text[match.start() :]
+        if read(tail, field):
+            return tail
+    return text
+
+
+_FREQUENCY = re.compile(r"(?i)(?<![\w.,±-])\d+(?:[.,]\d+)*\s?[mk]hz\b(?!\s?(?:to|-|~|…|bis|and|steps?)\s?[\d])")
+_PPM = re.compile(r"(?i)±\s?\d+(?:[.,]\d+)?(?:\s?-?[\d.,]+)?\s?ppm")
+
+
+def loose_candidates(cell: Placed) -> list[Candidate]:
+    """A shop's one-line description: what each amount must be by its unit alone. All are guesses, and say so."""
+    text = fold(cell.text)
+    found: list[Candidate] = []
+    plain = [("frequency_mhz", r"(?i)[\d.,]+\s?[mk]hz\b"), ("load_capacitance_pf", r"(?i)[\d.,]+\s?pf\b")]
+    plain += [("esr_ohm", r"(?i)[\d.,]+\s?k?(?:Ω|ohms?\b)")]
+    for field, pattern in plain:
+        amounts = re.findall(pattern, text)
+        if len(amounts) == 1:
+            found += _guesses(cell, field, amounts[0])
+    ppm = re.findall(r"(?i)±?\s?[\d.,]+\s?ppm", text)
+    for field, amount in zip(("frequency_tolerance_ppm", "frequency_stability_ppm"), ppm[:2], strict=False):
+        found += _guesses(cell, field, f"±{amount.strip(' ±')}")
+    span = condition_of(text).temperature_c
+    if span is not None and span[1] - span[0] > 40:
+        found.append(_guess(cell, "operating_temperature_c", span[0], None, span[1]))
+    return found
+
+
+def _guesses(cell: Placed, field: str, amount: str) -> list[Candidate]:
+    return [_guess(cell, field, value.min, value.typ, value.max, bare=value.bare) for value in read(amount, field)]
+
+
+def _guess(
+    cell: Placed, field: str, low: float | None, typ: float | None, high: float | None, *, bare: bool = False
+) -> Candidate:
+    doubt = () if field in ("frequency_mhz", "operating_temperature_c") else ("no label stands beside this amount",)
+    raw = " ".join(cell.text.split())
+    return Candidate(field, low, typ, high, (), When(), bare, raw, cell.where, doubt, bool(doubt), "loose")  # type: ignore[arg-type]
+
+
+def loose_in_prose(piece: Placed) -> list[Candidate]:
+    """Unlabelled amounts that a sentence makes plain: "±30 ppm at 25 °C", "±50 ppm from -20 °C to +70 °C", "12 MHz"."""
+    text = fold(piece.text)
+    found: list[Candidate] = []
+    amounts = _FREQUENCY.findall(text)
+    if len({amount.casefold() for amount in amounts}) == 1:
+        found += _guesses(piece, "frequency_mhz", amounts[0])
+    for match in _PPM.finditer(text):
+        tail = text[match.end() : match.end() + 45]
+        span = condition_of(tail).temperature_c
+        if span is not None and span[1] - span[0] > 40:
+            found += _guesses(piece, "frequency_stability_ppm", match[0])
+        elif re.match(r"\W{0,3}\w{0,3}\s?\+?2[0-9]\s?°", tail):
+            found += _guesses(piece, "frequency_tolerance_ppm", match[0])
+    span = condition_of(text).temperature_c
+    if span is not None and span[0] < 5 and span[1] - span[0] > 40:
+        found.append(_guess(piece, "operating_temperature_c", span[0], None, span[1]))
+    return found

@@ -1,0 +1,282 @@
+"""Candidates of one part -> readings: choose, join, narrow, and say where two places contradict."""
+
+from __future__ import annotations
+
+import math
+from collections.abc import Iterable, Sequence
+from dataclasses import replace
+
+from extract import plausible
+from extract.band import HIGHEST_MHZ, LOWEST_MHZ
+from extract.candidates import Candidate
+from extract.fields import field_of, fields
+from extract.model import Pair, Reading, When
+
+_RANK = {"table": 0, "note": 0, "pair": 0, "prose": 1, "key": 2, "loose": 3}
+ONE_HERTZ = 1e-6
+
+
+def readings_of(
+    candidates: Sequence[Candidate], *, cut: str | None = None, mode: str | None = None
+) -> tuple[Reading, ...]:
+    """The readings of one part, in the contract's order of fields, each with its `check` where one is due."""
+    chosen: list[Candidate] = []
+    offered = _offered(candidates)
+    for name in fields():
+        mine = [each for each in candidates if each.field == name]
+        if mine:
+            chosen += _of_field([_closed(each, offered) for each in mine], offered)
+    chosen = _with_operating_range(chosen, candidates)
+    return _written(chosen, cut, mode)
+
+
+def _offered(candidates: Sequence[Candidate]) -> Pair | None:
+    """The range of frequencies that the part is offered in."""
+    numbers = [
+        number
+        for each in candidates
+        if each.field == "frequency_mhz" and each.source in ("table", "pair")
+        for number in (each.min, each.typ, each.max, *each.options)
+        if number is not None
+    ]
+    return (min(numbers), max(numbers)) if numbers else None
+
+
+def _closed(candidate: Candidate, offered: Pair | None) -> Candidate:
+    """A band with an open end ends where the offer does."""
+    band = candidate.when.frequency_mhz
+    if band is None or (band[0] != LOWEST_MHZ and band[1] != HIGHEST_MHZ) or offered is None:
+        return candidate
+    low = offered[0] if band[0] == LOWEST_MHZ else band[0]
+    high = offered[1] if band[1] == HIGHEST_MHZ else band[1]
+    return replace(
+        candidate, when=candidate.when.model_copy(update={"frequency_mhz": (min(low, high), max(low, high))})
+    )
+
+
+def _of_field(candidates: list[Candidate], offered: Pair | None) -> list[Candidate]:
+    best = min(_rank(each) for each in candidates)
+    kept = [each for each in candidates if _rank(each) == best]
+    kept = _without_repeats(kept)
+    kept = _joined_halves(kept)
+    kept = _contradictions_marked(kept)
+    return _narrowed(kept, offered)
+
+
+def _rank(candidate: Candidate) -> float:
+    return _RANK[candidate.source] + (0.5 if candidate.inferred and candidate.source != "loose" else 0)
+
+
+def _same(one: Candidate, other: Candidate) -> bool:
+    return (
+        one.when == other.when
+        and all(_close(a, b) for a, b in zip(one.bounds[:3], other.bounds[:3], strict=True))
+        and set(one.options) == set(other.options)
+    )
+
+
+def _close(one: float | None, other: float | None) -> bool:
+    if one is None or other is None:
+        return one is other
+    return math.isclose(one, other, rel_tol=1e-9, abs_tol=1e-12)
+
+
+def _without_repeats(candidates: Iterable[Candidate]) -> list[Candidate]:
+    """The same statement in two places is one reading, at the first place; a bare number gives way to a bounded one."""
+    kept: list[Candidate] = []
+    for each in candidates:
+        if any(_same(each, other) or _says_less(each, other) for other in kept):
+            continue
+        kept = [other for other in kept if not _says_less(other, each)]
+        kept.append(each)
+    return kept
+
+
+def _says_less(one: Candidate, other: Candidate) -> bool:
+    """Whether all that `one` states is in `other`, which states more."""
+    if one.when != other.when and one.when != When():
+        return False
+    if one.options or other.options:
+        return bool(one.typ is not None and one.typ in other.options) or (
+            bool(one.options) and set(one.options) < set(other.options)
+        )
+    stated = [(a, b) for a, b in zip(one.bounds[:3], other.bounds[:3], strict=True) if a is not None]
+    if stated and all(_close(a, b) for a, b in stated):
+        return not _same(one, other)
+    only = one.typ if one.min is None and one.max is None else None
+    if only is None:
+        return False
+    if one.bare or one.field in ("frequency_tolerance_ppm", "frequency_stability_ppm", "ageing_ppm"):
+        return _close(only, other.max) or (other.typ is not None and _close(only, other.typ))
+    return False
+
+
+def _joined_halves(candidates: list[Candidate]) -> list[Candidate]:
+    """Separate rows or columns for the least and the greatest (T min, T max; typ, max) are one reading."""
+    kept: list[Candidate] = []
+    for each in candidates:
+        for index, other in enumerate(kept):
+            if (both := _both(other, each)) is not None:
+                kept[index] = both
+                break
+        else:
+            kept.append(each)
+    return kept
+
+
+def _both(one: Candidate, other: Candidate) -> Candidate | None:
+    if one.when != other.when or one.options or other.options:
+        return None
+    pairs = list(zip(one.bounds[:3], other.bounds[:3], strict=True))
+    if any(a is not None and b is not None for a, b in pairs):
+        return None
+    low, typ, high = (a if a is not None else b for a, b in pairs)
+    temperature = one.field in ("operating_temperature_c", "storage_temperature_c")
+    stated = [number for number in (low, typ, high) if number is not None]
+    if not temperature and stated != sorted(stated):
+        return None
+    raw = one.raw if other.raw == one.raw else f"{one.raw}; {other.raw}"
+    return replace(
+        one, min=low, typ=typ, max=high, raw=raw, bare=False, doubts=tuple(dict.fromkeys((*one.doubts, *other.doubts)))
+    )
+
+
+def _contradictions_marked(candidates: list[Candidate]) -> list[Candidate]:
+    """The first of two places counts; its doubt names what the other one says, and where."""
+    kept: list[Candidate] = []
+    for each in candidates:
+        rival = next((k for k, other in enumerate(kept) if _contradicts(other, each)), None)
+        if rival is None:
+            kept.append(each)
+            continue
+        first = kept[rival]
+        doubt = f"{each.where} says otherwise: {' '.join(each.raw.split())[:120]}"
+        kept[rival] = replace(first, doubts=(*first.doubts, doubt))
+    return kept
+
+
+def _contradicts(first: Candidate, second: Candidate) -> bool:
+    if first.when != second.when:
+        return _overlap(first.when, second.when) and not _same_row(first, second)
+    return not _same_cell(first, second)
+
+
+def _overlap(one: When, other: When) -> bool:
+    """Whether two bands share more than an end, all else being equal: two rows for one frequency."""
+    a, b = one.frequency_mhz, other.frequency_mhz
+    if (
+        a is None
+        or b is None
+        or one.model_copy(update={"frequency_mhz": None}) != other.model_copy(update={"frequency_mhz": None})
+    ):
+        return False
+    inside = (a[0] <= b[0] and b[1] <= a[1]) or (b[0] <= a[0] and a[1] <= b[1])
+    return a == b or (inside and a[0] < a[1] and b[0] < b[1] and False)
+
+
+def _same_cell(one: Candidate, other: Candidate) -> bool:
+    """Several values in one cell are a choice, not a contradiction."""
+    return one.where == other.where and one.raw == other.raw
+
+
+def _same_row(one: Candidate, other: Candidate) -> bool:
+    return one.where == other.where
+
+
+def _narrowed(candidates: list[Candidate], offered: Pair | None) -> list[Candidate]:
+    """A general value beside banded ones holds in the rest of the offered frequencies only."""
+    general = [each for each in candidates if each.when.frequency_mhz is None]
+    bands = [each for each in candidates if each.when.frequency_mhz is not None]
+    if not general or not bands or offered is None:
+        return candidates
+    kept: list[Candidate] = []
+    for each in candidates:
+        if each.when.frequency_mhz is not None:
+            kept.append(each)
+            continue
+        rivals = [
+            b.when.frequency_mhz for b in bands if b.when.mode in (None, each.when.mode) or each.when.mode is None
+        ]
+        rest = _rest(offered, [band for band in rivals if band is not None])
+        if rest is None:
+            kept.append(each)
+        kept += [replace(each, when=each.when.model_copy(update={"frequency_mhz": part})) for part in rest or ()]
+    return kept
+
+
+def _rest(offered: Pair, bands: Sequence[Pair]) -> list[Pair] | None:
+    """What of the offered range no band covers; None for a part of one frequency."""
+    if offered[0] == offered[1]:
+        return [] if any(low <= offered[0] <= high for low, high in bands) else None
+    rest: list[Pair] = []
+    at, touched = offered[0], False
+    for low, high in sorted(bands):
+        if low > at:
+            rest.append(
+                (at, round(low - (0 if low > offered[1] else ONE_HERTZ), 9)) if low <= offered[1] else (at, offered[1])
+            )
+        if high >= at:
+            at, touched = round(high + ONE_HERTZ, 9), True
+    if at <= offered[1] or not touched:
+        rest.append((at, offered[1]))
+    narrow = 1e-3
+    return [part for part in rest if part[1] - part[0] > narrow]
+
+
+def _with_operating_range(chosen: list[Candidate], candidates: Sequence[Candidate]) -> list[Candidate]:
+    """A temperature range printed only beside the stability is the operating range too."""
+    if any(each.field == "operating_temperature_c" for each in chosen):
+        return chosen
+    ranges: dict[Pair, Candidate] = {}
+    for each in candidates:
+        span = each.when.temperature_c
+        if each.field == "frequency_stability_ppm" and span is not None:
+            ranges.setdefault(span, each)
+    added = [
+        replace(
+            each,
+            field="operating_temperature_c",
+            min=span[0],
+            typ=None,
+            max=span[1],
+            options=(),
+            when=When(),
+            bare=False,
+        )
+        for span, each in ranges.items()
+    ]
+    return [*chosen, *added]
+
+
+def _written(chosen: Sequence[Candidate], cut: str | None, mode: str | None) -> tuple[Reading, ...]:
+    order = list(fields())
+    drafts = [_reading(each, None) for each in sorted(chosen, key=lambda each: order.index(each.field))]
+    sorted_chosen = sorted(chosen, key=lambda each: order.index(each.field))
+    found = plausible.doubts(drafts, cut, mode)
+    written = []
+    for index, each in enumerate(sorted_chosen):
+        reasons = [*each.doubts, *([found[index]] if index in found else [])]
+        written.append(_reading(each, "; ".join(dict.fromkeys(reasons)) or None))
+    return tuple(written)
+
+
+def _reading(candidate: Candidate, check: str | None) -> Reading:
+    out_of_order = _out_of_order(candidate)
+    return Reading(
+        field=candidate.field,
+        min=candidate.min,
+        typ=candidate.typ,
+        max=candidate.max,
+        options=candidate.options,
+        when=candidate.when,
+        raw=candidate.raw or field_of(candidate.field).title,
+        bare=True if candidate.bare else None,
+        where=candidate.where,
+        status="inferred" if candidate.inferred else "stated",
+        check=check or ("bounds out of order" if out_of_order else None),
+    )
+
+
+def _out_of_order(candidate: Candidate) -> bool:
+    stated = [number for number in candidate.bounds[:3] if number is not None]
+    return stated != sorted(stated)

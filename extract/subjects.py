@@ -1,0 +1,73 @@
+"""Values that stand under the name of a model, package or load -> one draft for each model."""
+
+from __future__ import annotations
+
+import re
+from dataclasses import replace
+
+from extract.candidates import Candidate
+from extract.conditions import condition_of, merged
+from extract.drafts import Draft
+from extract.identity import is_package, package_in
+from extract.meaning import part_tokens
+from extract.model import When
+
+_BETWEEN = re.compile(r"[,;/\n]|\band\b|\bund\b|、|，")
+
+
+def split_by_subject(draft: Draft) -> list[Draft]:
+    """A draft for each model that column heads name; packages and loads in column heads become conditions."""
+    subjects = list(dict.fromkeys(each.subject for each in draft.candidates if each.subject))
+    if not subjects:
+        return [draft]
+    names = list(dict.fromkeys(name for subject in subjects for name in names_in(subject)))
+    if len(names) < 2:
+        return [replace_candidates(draft, [_conditioned(each) for each in draft.candidates])]
+    return [_for_name(draft, name, names) for name in names]
+
+
+def names_in(subject: str) -> list[str]:
+    """The model names of a column head ("SQ-320, SQ-321"); empty for a package or a load."""
+    found = []
+    for piece in _BETWEEN.split(subject):
+        if not is_package(piece):
+            found += part_tokens(piece)[:1]
+    return found
+
+
+def replace_candidates(draft: Draft, candidates: list[Candidate]) -> Draft:
+    """The same draft with other candidates."""
+    draft.candidates = candidates
+    return draft
+
+
+def _for_name(draft: Draft, name: str, names: list[str]) -> Draft:
+    mine: list[Candidate] = []
+    package = draft.package
+    for each in draft.candidates:
+        own = names_in(each.subject)
+        if name in own or not own:
+            mine.append(_conditioned(each) if not own else replace(each, subject=""))
+            package = package_in(each.subject.replace(name, "")) or package if own else package
+    return Draft(
+        part_number=name,
+        maker=draft.maker,
+        package=package,
+        modes=set(draft.modes),
+        cuts=set(draft.cuts),
+        resonance=set(draft.resonance),
+        attributes=dict(draft.attributes),
+        candidates=mine,
+        texts=list(draft.texts),
+        where=draft.where,
+    )
+
+
+def _conditioned(candidate: Candidate) -> Candidate:
+    """A package in the column's head is where the value holds."""
+    if not candidate.subject:
+        return candidate
+    if is_package(candidate.subject):
+        when = merged(candidate.when, When(package=" ".join(candidate.subject.split())))
+        return replace(candidate, when=when, subject="")
+    return replace(candidate, when=merged(condition_of(candidate.subject), candidate.when), subject="")

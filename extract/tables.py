@@ -1,0 +1,252 @@
+"""Tables of cells -> entries and listings, whichever way round the table stands.
+
+Two families: *parameter tables* (a label at the head of each row) and *listings* (a property at the head of each column).
+Bands that run across the top are turned into a listing first.
+"""
+
+from __future__ import annotations
+
+from collections.abc import Iterator, Sequence
+from dataclasses import dataclass
+from itertools import pairwise
+
+from extract.documents.model import Cell, Table
+from extract.entries import Column, Entry, Item, Key, Listing, Placed, Text, Value
+from extract.heads import Head, interpret, is_unit
+from extract.keys import read_key_table
+from extract.meaning import is_part_token, meaning
+from extract.paramrows import parameter_entries
+
+Row = Sequence[Cell | None]
+
+
+def read_table(table: Table) -> list[Item]:
+    """Everything that one table says, in reading order."""
+    rows: list[Row] = [row for row in table.grid() if any(row)]
+    if not rows:
+        return []
+    if key := read_key_table(rows, table.title):
+        return list(key)
+    if _bands_across(rows):
+        rows = [list(row) for row in zip(*rows, strict=True)]
+    items: list[Item] = [Text(_titled(table), heading=True)] if table.title else []
+    for block in _blocks(rows, table.title):
+        items.extend(_read_block(block, table))
+    return items
+
+
+@dataclass(frozen=True, slots=True)
+class _Titled:
+    text: str
+    where: object
+    confidence: float = 1.0
+
+
+def _titled(table: Table) -> Placed:
+    return _Titled(table.title, table.where)  # type: ignore[return-value]
+
+
+@dataclass(slots=True)
+class _Block:
+    """Heading rows and the rows that they govern; no heading rows where the table has none."""
+
+    heads: list[Row]
+    body: list[Row]
+    title: str = ""
+
+
+def distinct(row: Row) -> list[Cell]:
+    """The cells of a row that hold text, a spanning one once, from left to right."""
+    seen: list[Cell] = []
+    for cell in row:
+        if cell is not None and cell.text.strip() and not any(cell is other for other in seen):
+            seen.append(cell)
+    return seen
+
+
+def _blocks(rows: list[Row], title: str) -> Iterator[_Block]:
+    block = _Block([], [], title)
+    index = 0
+    while index < len(rows):
+        if count := _head_rows(rows, index):
+            if block.body:
+                yield block
+            block = _Block(rows[index : index + count], [], _title_before(block.body) or title)
+            index += count
+        else:
+            block.body.append(rows[index])
+            index += 1
+    if block.body:
+        yield block
+
+
+def _title_before(body: list[Row]) -> str:
+    """A spanning row just above a heading is the new block's title."""
+    if body and len(cells := distinct(body[-1])) == 1 and not meaning(cells[0].text).value:
+        return cells[0].text
+    return ""
+
+
+def _head_rows(rows: list[Row], start: int) -> int:
+    """How many rows from `start` on are one heading; 0 where no heading begins there."""
+    if not is_head(rows[start]):
+        if start + 1 < len(rows) and _parent_of_roles(rows[start], rows[start + 1]):
+            return 2
+        return 0
+    count = 1
+    while start + count < len(rows) and count < 4 and _goes_on(rows, start, start + count):
+        count += 1
+    return count
+
+
+def _parent_of_roles(row: Row, below: Row) -> bool:
+    """A row of group names over a row of Min / Typ / Max, its label column empty or spanning both."""
+    cells = distinct(row)
+    roles = [meaning(cell.text).role for cell in distinct(below)]
+    return (
+        sum(role in ("min", "typ", "max") for role in roles) >= 2
+        and bool(cells)
+        and not any(meaning(cell.text).value and not is_part_token(cell.text) for cell in cells)
+        and not any(meaning(cell.text).head for cell in cells[:1])
+    )
+
+
+def is_head(row: Row) -> bool:
+    """Whether a row reads as the heading of what stands below it."""
+    cells = distinct(row)
+    if len(cells) < 2:
+        return False
+    known = [meaning(cell.text) for cell in cells]
+    roles = {each.role for each in known if each.role}
+    heads = {each.head for each in known if each.head}
+    values = sum(each.value and not is_unit(cell.text) for cell, each in zip(cells, known, strict=True))
+    if len(roles) >= 2 and values <= max(1, len(cells) // 2):
+        return True
+    if len(heads) >= 2 and values == 0:
+        return len(heads) + len(roles) >= 0.4 * len(cells)
+    if len(heads) >= 3 and values <= 0.34 * len(cells):
+        return True
+    tokens = len({cell.text for cell in cells[1:] if is_part_token(cell.text)})
+    if known[0].role == "parameter" or known[0].identity == "part_number":
+        return tokens >= 2 and tokens + len(roles) >= len(cells) - 2
+    return len(heads) == 1 and len(cells) == 2 and is_unit(cells[1].text) and bool(known[0].head)
+
+
+def _goes_on(rows: list[Row], start: int, index: int) -> bool:
+    """Whether row `index` still belongs to the heading that begins at `start`."""
+    row, above = rows[index], rows[index - 1]
+    cells = distinct(row)
+    spanning = [cell for cell in cells if any(cell is other for other in above)]
+    own = [cell for cell in cells if cell not in spanning]
+    if not own:
+        return bool(spanning)
+    if spanning and all(cell.row < start + (index - start) for cell in spanning):
+        return all(not meaning(cell.text).value or is_part_token(cell.text) or _short(cell) for cell in own)
+    if all(meaning(cell.text).role or is_unit(cell.text) for cell in own):
+        return True
+    first_empty = row[0] is None or not row[0].text.strip()
+    return first_empty and all(is_part_token(cell.text) or meaning(cell.text).role for cell in own)
+
+
+def _short(cell: Cell) -> bool:
+    return len(cell.text) <= 24
+
+
+def _bands_across(rows: list[Row]) -> bool:
+    """Frequency bands or loads in the first row, resistance or a mode in the rows below: the table lies on its side."""
+    if not 2 <= len(rows) <= 6 or len(rows[0]) < 3:
+        return False
+    labels = [distinct(row)[:1] for row in rows]
+    if not all(labels) or len({id(cell) for row in labels for cell in row}) < 2:
+        return False
+    fields = [meaning(cells[0].text) for cells in labels]
+    banded = fields[0].label is not None and fields[0].label.field in ("frequency_mhz", "load_capacitance_pf")
+    others = any(each.label is not None and each.label.field == "esr_ohm" for each in fields[1:])
+    values = [cell for cell in distinct(rows[0])[1:] if meaning(cell.text).value]
+    return banded and others and len(values) >= 2 and not any(meaning(cell.text).role for cell in distinct(rows[0]))
+
+
+def _read_block(block: _Block, table: Table) -> Iterator[Item]:
+    heads = [interpret(levels) for levels in _levels(block)] if block.heads else []
+    if heads and _is_listing(block, heads):
+        yield from _listings(block, heads, table)
+        return
+    yield from parameter_entries(block.body, heads, block.title)
+
+
+def _levels(block: _Block) -> list[tuple[str, ...]]:
+    columns: list[tuple[str, ...]] = []
+    for index in range(len(block.heads[0])):
+        texts: list[str] = []
+        for row in block.heads:
+            cell = row[index]
+            text = " ".join(cell.text.split()) if cell is not None else ""
+            if text and text not in texts:
+                texts.append(text)
+        columns.append(tuple(texts))
+    return columns
+
+
+def _is_listing(block: _Block, heads: list[Head]) -> bool:
+    named = {head.name for head in heads if head.name}
+    subjects = sum(bool(head.levels) and is_part_token(head.levels[-1]) for head in heads)
+    if heads[0].identity == "part_number" and subjects >= 2 and len(named) == 1:
+        return False
+    labelled = sum(_starts_with_label(row) for row in block.body)
+    if labelled >= 0.5 * len(block.body):
+        return False
+    if any(head.role == "parameter" for head in heads) and len(named) < 3:
+        return False
+    return len(named) >= 2 or (len(named) == 1 and len(heads) >= 2 and bool(heads[0].name))
+
+
+def _starts_with_label(row: Row) -> bool:
+    cells = distinct(row)
+    return bool(cells) and meaning(cells[0].text).head is not None and len(cells) > 1
+
+
+def _listings(block: _Block, heads: list[Head], table: Table) -> Iterator[Item]:
+    """The block as one listing, or as one for each group of columns where the headings repeat side by side."""
+    sections, rows = _sectioned(block.body)
+    for first, last in _folds(heads):
+        columns = tuple(Column(head.levels) for head in heads[first:last])
+        part = [row[first:last] for row in rows]
+        kept = [index for index, row in enumerate(part) if any(cell is not None for cell in row)]
+        if kept:
+            yield Listing(
+                columns,
+                [part[index] for index in kept],
+                [sections[index] for index in kept],
+                table.where,
+                block.title,
+            )
+
+
+def _sectioned(body: list[Row]) -> tuple[list[str], list[Row]]:
+    """Spanning rows are the section of the rows below them."""
+    sections: list[str] = []
+    rows: list[Row] = []
+    section = ""
+    for row in body:
+        cells = distinct(row)
+        if len(cells) == 1 and len(row) > 2 and (cells[0].column_span > 1 or row[0] is cells[0]):
+            section = cells[0].text
+        elif cells:
+            sections.append(section)
+            rows.append(row)
+    return sections, rows
+
+
+def _folds(heads: list[Head]) -> list[tuple[int, int]]:
+    """Groups of columns: one, or several where the same sequence of headings repeats."""
+    names = [head.name or head.role for head in heads]
+    for width in range(2, len(names) // 2 + 1):
+        if len(names) % width:
+            continue
+        groups = [names[start : start + width] for start in range(0, len(names), width)]
+        if any(groups[0]) and all(left == right for left, right in pairwise(groups)) and len(set(groups[0])) == width:
+            return [(start, start + width) for start in range(0, len(names), width)]
+    return [(0, len(heads))]
+
+
+__all__ = ["Entry", "Key", "Value", "distinct", "is_head", "read_table"]
