@@ -423,7 +423,19 @@ def note_lines(result: Mapping[str, Any]) -> list[str]:
     return [note["message"] if isinstance(note, Mapping) else str(note) for note in result["notes"]]
 
 
-def contributors(review: Row, key: str) -> pd.DataFrame:
+CONTRIBUTORS = {
+    "total_ppm": "What uses the ppm up",
+    "margin": "What the margin hangs on",
+    "drive_level_uw": "What the drive hangs on",
+}
+
+
+def contributor_lines(review: Row, key: str) -> list[str]:
     """What adds to the worst case of one number, greatest first."""
-    rows = review["contributors"].get(key, [])
-    return pd.DataFrame(rows)
+    return [str(one) for one in (review["contributors"].get(key) or ())]
+
+
+def open_lines(review: Row) -> list[str]:
+    """What is not settled: readings that wait for a look, and what is missing."""
+    looks = [f"☞ {title(name)}: the reading waits for a look on Sheets." for name in review["to_check"]]
+    return looks + [f"◇ {missing_name(key)}: not known." for key in review["missing"]]

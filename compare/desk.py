@@ -70,6 +70,15 @@ class Desk:
         """The bench as a file's text."""
         return self._assembled[1]
 
+    def without_last_condition(self) -> Desk:
+        """The same with the last condition taken away."""
+        last = self.conditions - 1
+        typed = {key: text for key, text in self.typed.items() if not key.startswith(f"condition.{last}.")}
+        carried = copy.deepcopy(dict(self.carried))
+        if carried.get("circuit", {}).get("condition"):
+            carried["circuit"]["condition"] = carried["circuit"]["condition"][:last]
+        return Desk(typed, self.kept, carried, last)
+
     @cached_property
     def _assembled(self) -> tuple[Bench | None, str, dict[str, str]]:
         if not any(self.typed.values()):

@@ -44,6 +44,14 @@ def script_arguments(sheets: Sequence[str], bench: str | None) -> list[str]:
     return [*(["--bench", bench] if bench is not None else []), "--", *sheets]
 
 
+def read_script_arguments(arguments: Sequence[str]) -> tuple[str | None, list[str]]:
+    """The bench and the sheets out of `script_arguments`; none of either where the script was started without."""
+    if "--" not in arguments:
+        return None, []
+    at = list(arguments).index("--")
+    return (arguments[1] if arguments[0] == "--bench" else None), list(arguments[at + 1 :])
+
+
 def port_fault(port: int) -> str | None:
     """Say in one sentence why the page cannot be served at `port`; None when it can."""
     if not 1 <= port <= 65535:

@@ -1,0 +1,32 @@
+"""The Streamlit script: it lays out the views. What they show comes from desk, shown, answers and their like."""
+
+from __future__ import annotations
+
+import streamlit as st
+
+from compare import circuit_text, pieces, shown
+from compare import page_session as session
+from compare.page_answers import choose_view, review_view
+from compare.page_circuit import circuit_view
+from compare.page_sheets import sheets_view
+
+
+def main() -> None:
+    """Lay out the views and draw the one that is asked for."""
+    st.set_page_config(page_title="quartzfolio", layout="wide")
+    st.html(pieces.style(session.palette()))
+    session.start()
+    waiting = sum(map(shown.waiting, session.sheets()))
+    pages = {}
+    views = {"sheets": sheets_view, "circuit": circuit_view, "choose": choose_view, "review": review_view}
+    for name, view in views.items():
+        looks = f" ☞ {waiting}" if name == "sheets" and waiting else ""
+        pages[name] = st.Page(view, title=name.capitalize() + looks, url_path=name, default=name == "sheets")
+    st.session_state.pages = pages
+    current = st.navigation(list(pages.values()), position="top")
+    if (bench := session.desk().bench) is not None:
+        st.html(pieces.terms_html(circuit_text.terms(bench)))
+    current.run()
+
+
+main()

@@ -1,0 +1,240 @@
+"""The views Choose and Review: what the candidates come to in the circuit, and one of them in full."""
+
+from __future__ import annotations
+
+import hashlib
+from typing import Any
+
+import streamlit as st
+
+from compare import answers, charts, export, pieces
+from compare import page_session as session
+from compare.bench import Bench
+from compare.desk import CAUTIONS, NO_CIRCUIT, NOTHING_TO_RANK, PRIVACY, field_of
+from compare.offer import find_offers
+
+COPY = """export default function({data, parentElement}) {
+  const button = parentElement.querySelector("button");
+  button.onclick = async () => { await navigator.clipboard.writeText(data); button.textContent = "Copied"; } }"""
+COPY_LOOK = """button{font:inherit;color:var(--st-text-color);background:var(--st-background-color);cursor:pointer;
+  border:1px solid var(--st-border-color);border-radius:3px;padding:.42rem .75rem}"""
+
+PART_PLACE = tuple[str, str | None]
+
+
+def ready() -> Bench | None:
+    """The bench, where there is something to judge; else the sentence that says what to do."""
+    bench = session.desk().bench
+    if not any(sheet.parts for sheet in session.sheets()):
+        st.markdown("## Nothing to rank yet")
+        st.markdown(NOTHING_TO_RANK)
+        st.page_link(st.session_state.pages["sheets"], label="Add sheets")
+        return None
+    if bench is None:
+        st.markdown("## No circuit yet")
+        st.markdown(NO_CIRCUIT)
+        if st.button("Set the circuit", key="to_circuit", type="primary"):
+            session.go("circuit")
+        return None
+    for key, fault in session.desk().faults.items():
+        st.html(pieces.fault_html(f"{field_of(key).label if key else 'Circuit'}: not used. {fault}"))
+    return bench
+
+
+def choose_view() -> None:
+    if (bench := ready()) is None:
+        return
+    result = session.ranking(bench)
+    if result is None:
+        return
+    left, right = st.columns([1.54, 1], gap="medium")
+    with left:
+        st.markdown(f"## {pieces.plain(answers.choose_heading(result, bench))}")
+        row = ranked_rows(result) if result["rows"] else None
+        others(result)
+        cautions()
+    if row is not None:
+        with right:
+            why(row, bench)
+
+
+def ranked_rows(result: dict[str, Any]) -> dict[str, Any]:
+    rows = result["rows"][:500]
+    places = [place_of(row) for row in rows]
+    start_at = places.index(st.session_state.chosen) if st.session_state.chosen in places else 0
+    order = hashlib.sha256(repr(places).encode()).hexdigest()[:12]
+    column = st.column_config
+    picked = st.dataframe(
+        answers.rank_frame(rows, session.palette()),
+        hide_index=True,
+        row_height=44,
+        height=min(38 + 44 * len(rows), 610),
+        on_select="rerun",
+        selection_mode="single-row",
+        selection_default=session.first_row(start_at),
+        key=f"ranked_{order}",
+        alt="Candidates in order, with their verdicts",
+        column_config={
+            "Place": column.NumberColumn(width=52),
+            "Part": column.TextColumn(width=138),
+            "Verdict": column.TextColumn(width=94),
+            "Look": column.TextColumn(width=50),
+            "Times over: 1 is the line": column.ImageColumn(width=208),
+            "Tightest": column.TextColumn(width=150),
+        },
+    )
+    row: dict[str, Any] = rows[session.selected_row(picked, len(rows))]
+    st.session_state.chosen = place_of(row)
+    st.markdown(f":gray[:small[{answers.strips_legend(rows)}]]")
+    save_ranking(result["rows"])
+    return row
+
+
+def place_of(row: dict[str, Any]) -> PART_PLACE:
+    return row["file"], row["part_number"]
+
+
+def save_ranking(rows: list[dict[str, Any]]) -> None:
+    table, sources = export.rank_table(rows), export.sources_table(rows)
+    with st.container(horizontal=True, vertical_alignment="center", gap="small"):
+        copy = st.components.v2.component(
+            "quartzfolio_copy", html="<button>Copy table</button>", js=COPY, css=COPY_LOOK
+        )
+        copy(data=export.as_tabs(table), key="copy_ranking", width="content")
+        workbook = export.as_xlsx({"ranking": table, "sources": sources})
+        st.download_button("Save .xlsx", workbook, "ranking.xlsx", key="save_xlsx")
+        st.download_button("Save .csv", export.as_csv(table), "ranking.csv", key="save_csv")
+
+
+def others(result: dict[str, Any]) -> None:
+    if lines := answers.note_lines(result):
+        with st.expander(f"What else there is to say ({len(lines)})", expanded=not result["rows"]):
+            for line in lines:
+                st.markdown(f"- {pieces.plain(line)}")
+
+
+def cautions() -> None:
+    st.markdown(f":gray[:small[{' '.join(CAUTIONS)} {PRIVACY}]]")
+
+
+def review_of(row: dict[str, Any], bench: Bench) -> dict[str, Any] | None:
+    """The review of the ranked part, worked out for its sheet alone."""
+    own = [sheet for sheet in session.sheets() if sheet.file == row["file"]]
+    result = session.guarded("working the part out", lambda: session.reviewed(session.key_of(bench, own), own, bench))
+    if result is None:
+        return None
+    return next((one for one in result["reviews"] if place_of(one) == place_of(row)), None)
+
+
+def why(row: dict[str, Any], bench: Bench) -> None:
+    """The chosen row's reasons: the large slack chart, the reasons in words, ppm against load."""
+    st.markdown(f"### {pieces.plain(answers.place_heading(row))}")
+    review = review_of(row, bench)
+    if review is None:
+        return
+    if said := answers.chosen_text(row):
+        st.markdown(f":gray[{pieces.plain(said)}]")
+    slack_chart(review, bench)
+    for line in answers.reason_lines(review):
+        st.markdown(f":small[{line}]")
+    load_chart(review, bench)
+    for line in answers.advice_lines(review)[:1]:
+        st.markdown(line)
+    if st.button("Review this part", key="to_review", type="primary", shortcut="V"):
+        session.go("review")
+
+
+def slack_chart(review: dict[str, Any], bench: Bench) -> None:
+    rows = answers.slack_rows(review, bench)
+    chart = charts.dressed(charts.slack_chart(rows, session.palette()), session.palette())
+    st.altair_chart(chart, theme=None, width="content", key="slack", alt="How many times over each requirement is met")
+    st.markdown(":gray[:small[▮ worst case · ○ nominal · hatched: not met · dotted: not known]]")
+
+
+def load_chart(review: dict[str, Any], bench: Bench) -> None:
+    own = [sheet for sheet in session.sheets() if sheet.file == review["file"]]
+    offer = next((one for one in find_offers(own, bench).offers if one.part.part_number == review["part_number"]), None)
+    if offer is None:
+        return
+    rated = review["chosen"].get("load_capacitance_pf", offer.load.span.mid if offer.load.stated else None)
+    pull = answers.load_pull(review, bench, rated, series=offer.series)
+    if pull is None:
+        return
+    st.markdown("### ppm against load")
+    chart = charts.dressed(charts.load_chart(pull, session.palette()), session.palette())
+    st.altair_chart(chart, theme=None, width="content", key="load", alt="Frequency shift in ppm against load in pF")
+    with st.expander("The same as a table"):
+        st.dataframe(charts.load_table(pull), hide_index=True, key="load_table", alt="Shift at nine loads")
+
+
+def review_view() -> None:
+    if (bench := ready()) is None:
+        return
+    result = session.ranking(bench)
+    if result is None:
+        return
+    if not result["rows"]:
+        st.markdown(f"## {pieces.plain(answers.choose_heading(result, bench))}")
+        others(result)
+        return
+    rows = {place_of(row): row for row in result["rows"]}
+    if st.session_state.chosen not in rows:
+        st.session_state.chosen = next(iter(rows))
+    review = review_of(rows[st.session_state.chosen], bench)
+    left, right = st.columns([1.7, 1], gap="large")
+    with right:
+        choose_part(rows)
+    if review is None:
+        return
+    with left:
+        judged(review, bench)
+    with right:
+        to_do(review)
+
+
+def choose_part(rows: dict[PART_PLACE, dict[str, Any]]) -> None:
+    def name(place: PART_PLACE) -> str:
+        return answers.place_heading(rows[place])
+
+    st.session_state.review_part = st.session_state.chosen
+    st.selectbox("Part under review", list(rows), format_func=name, key="review_part", on_change=choose)
+
+
+def choose() -> None:
+    st.session_state.chosen = st.session_state.review_part
+
+
+def judged(review: dict[str, Any], bench: Bench) -> None:
+    st.markdown(f"## {pieces.plain(answers.review_heading(review))}")
+    st.markdown(pieces.plain(answers.short_of(review)))
+    st.dataframe(answers.verdict_frame(review, bench), hide_index=True, key="verdicts", alt="Verdict by requirement")
+    for line in answers.reason_lines(review):
+        st.markdown(f":small[{line}]")
+    st.markdown("### Every number")
+    st.markdown(
+        ":gray[:small[Press a number to see how it was reached. Low and high are its ends, not worse and better.]]"
+    )
+    st.html(pieces.numbers_html(answers.numbers(review)))
+
+
+def to_do(review: dict[str, Any]) -> None:
+    """What uses it up, what would help, whom to ask, and what to heed."""
+    if questions := review["questions"]:
+        st.markdown("### Ask the maker")
+        for question in questions:
+            st.markdown(f"- {pieces.plain(question)}")
+    if lines := answers.advice_lines(review):
+        st.markdown("### What would help")
+        for line in lines:
+            st.markdown(f"- {line}")
+    for key, name in answers.CONTRIBUTORS.items():
+        if lines := answers.contributor_lines(review, key):
+            st.markdown(f"### {name}")
+            for line in lines:
+                st.markdown(f"- {pieces.plain(line)}")
+    st.markdown("### Before it is signed")
+    for line in answers.open_lines(review):
+        st.markdown(f"- {pieces.plain(line)}")
+    for caution in CAUTIONS:
+        st.markdown(f"- {caution}")
+    st.markdown(f":gray[:small[{PRIVACY}]]")

@@ -1,0 +1,173 @@
+"""The Circuit view: the bench's fields, and the circuit drawn and summed up from them."""
+
+from __future__ import annotations
+
+from collections.abc import Sequence
+
+import streamlit as st
+
+from compare import circuit_text, drawing, pieces, typed
+from compare import page_session as session
+from compare.bench import uses
+from compare.desk import Desk, carried_sentence, field_of, group, orchard_example
+
+# A pressed figure of the drawing puts the cursor into its field.
+PRESS = """export default function({data, parentElement}) {
+  const place = parentElement.querySelector("div"); place.innerHTML = data;
+  place.querySelectorAll("[data-field]").forEach(figure => { figure.onclick = () =>
+    document.querySelector(".st-key-field_" + figure.dataset.field.replaceAll(".", "_") + " input")?.focus(); }); }"""
+FIT = "svg{max-width:100%;height:auto;display:block}"
+
+
+def circuit_view() -> None:
+    left, right = st.columns([1.25, 1], gap="large")
+    with right:
+        bench_files()
+        circuit_fields()
+    set_ = session.desk()
+    bench = set_.bench
+    with left:
+        st.markdown(f"## {circuit_text.circuit_heading(bench)}")
+        if bench is None:
+            told = set_.faults.get("", "")
+            st.markdown(
+                pieces.plain(told)
+                if told
+                else "Give the frequency, and what you know of the circuit, at the right; or open a bench file."
+            )
+            return
+        st.markdown(
+            ":gray[Every capacitance carries the two nodes it lies between. 0 is ground. Press a figure to change it.]"
+        )
+        svg = drawing.circuit_svg(circuit_text.circuit_figures(bench), session.palette())
+        drawn = st.components.v2.component("quartzfolio_circuit", html="<div></div>", js=PRESS, css=FIT)
+        drawn(data=svg, key="drawing", width="stretch")
+        st.markdown(circuit_text.sum_sentence(bench))
+        for said in circuit_text.taken_sentences(bench):
+            st.markdown(f"- {pieces.plain(said)}")
+        if carried := carried_sentence(set_):
+            st.markdown(f":gray[{pieces.plain(carried)}]")
+        if st.button("Choose a crystal", key="to_choose", type="primary"):
+            session.go("choose")
+
+
+def bench_files() -> None:
+    with st.container(horizontal=True, gap="small"):
+        with st.popover("Open a bench file"):
+            file = st.file_uploader("Bench file (TOML)", type=["toml"], key=f"bench_{st.session_state.inbox}")
+            example = orchard_example()
+            for name, path in example.benches.items() if example else ():
+                if st.button(f"Orchard example: {name}", key=f"bench_{path.stem}"):
+                    session.open_bench(path.read_text(encoding="utf-8"), path.name)
+        if file is not None:
+            session.open_bench(file.getvalue().decode("utf-8-sig", "replace"), file.name)
+            st.session_state.inbox += 1
+            st.rerun()
+        text = session.desk().bench_text
+        st.download_button("Save bench file", text, "bench.toml", key="save_bench", disabled=not text)
+        st.button("Clear", key="clear_bench", on_click=session.set_desk, args=(Desk(),), disabled=not text)
+    if fault := st.session_state.get("bench_fault"):
+        st.html(pieces.fault_html(f"The bench file is not used. {fault}"))
+
+
+def circuit_fields() -> None:
+    st.markdown("### What is asked")
+    grid(group("asked"), 4)
+    st.markdown("### Capacitance")
+    grid(group("capacitance"), 4)
+    st.markdown("### Amplifier")
+    grid(group("amplifier"), 4)
+    with st.expander("The IC’s sheet gives no gm, but a limit"):
+        grid(group("rating"), 3)
+    with st.expander(f"Corners: supply and temperature ({st.session_state.conditions})"):
+        corners()
+    with st.expander("How the sheets are to be read; measured on the bench"):
+        grid(group("crystal"), 2)
+        grid(group("measured"), 3)
+
+
+def grid(asked: Sequence[typed.Field], wide: int) -> None:
+    for at in range(0, len(asked), wide):
+        for column, one in zip(
+            st.columns(wide, gap="small", vertical_alignment="bottom"), asked[at : at + wide], strict=False
+        ):
+            with column:
+                field(one.key)
+
+
+def corners() -> None:
+    st.markdown(":gray[:small[Each is one more corner; what it does not give is as above.]]")
+    for number in range(st.session_state.conditions):
+        for column, one in zip(st.columns([1.6, 1, 1, 1, 1], gap="small"), group("condition"), strict=True):
+            with column:
+                field(one.key.replace("condition.", f"condition.{number}."))
+    with st.container(horizontal=True, gap="small"):
+        if st.button("Add a corner", key="add_corner"):
+            st.session_state.conditions += 1
+            st.rerun()
+        if st.session_state.conditions and st.button("Remove the last", key="drop_corner"):
+            session.set_desk(session.desk().without_last_condition())
+            st.rerun()
+
+
+def field(key: str) -> None:
+    """One field of the bench, with what is wrong with it under it."""
+    asked, widget = field_of(key), f"field_{key.replace('.', '_')}"
+    text = st.session_state.typed.get(key, "")
+    if asked.kind in ("choice", "use"):
+        options = (
+            dict(asked.options)
+            if asked.kind == "choice"
+            else {"": "none", **{name: use.use for name, use in uses().items()}}
+        )
+        st.session_state.setdefault(widget, text or next(iter(options)))
+        st.selectbox(
+            asked.label,
+            list(options),
+            format_func=lambda option: options[option],
+            key=widget,
+            help=asked.help,
+            on_change=put,
+            args=(key, widget),
+        )
+    elif asked.kind == "flag":
+        st.session_state.setdefault(widget, text == "true")
+        st.checkbox(asked.label, key=widget, on_change=put, args=(key, widget))
+    else:
+        st.session_state.setdefault(widget, text)
+        st.text_input(
+            asked.label, key=widget, placeholder=asked.blank, help=asked.help, on_change=put, args=(key, widget)
+        )
+    if fault := session.desk().faults.get(key):
+        st.html(pieces.fault_html(fault))
+        answer(key)
+
+
+def put(key: str, widget: str) -> None:
+    """Take over what a person typed, and show it back as it was understood."""
+    value = st.session_state[widget]
+    st.session_state.typed[key] = {True: "true", False: ""}[value] if isinstance(value, bool) else value
+    understood = session.desk().understood.get(key)
+    if understood is not None and understood.value is not None:
+        settle(key, typed.shown(understood.value, field_of(key)))
+
+
+def settle(key: str, text: str, *, keep: bool = False) -> None:
+    st.session_state.typed[key] = text
+    st.session_state[f"field_{key.replace('.', '_')}"] = text
+    if keep:
+        st.session_state.kept |= {(key, text)}
+
+
+def answer(key: str) -> None:
+    """The ways out of an unlikely value: what was probably meant, or that it is so."""
+    said = session.desk().understood.get(key)
+    if said is None:
+        return
+    with st.container(horizontal=True, gap="small"):
+        if said.instead is not None:
+            meant = typed.shown(said.instead, field_of(key))
+            st.button(f"Use {meant}", key=f"use_{key}", on_click=settle, args=(key, meant))
+        if said.doubtful:
+            text = st.session_state.typed[key]
+            st.button("Keep", key=f"keep_{key}", on_click=settle, args=(key, text), kwargs={"keep": True})

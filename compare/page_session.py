@@ -1,0 +1,151 @@
+"""What the page keeps for one person's session, and what it keeps for everybody by content."""
+
+from __future__ import annotations
+
+import hashlib
+import sys
+import traceback
+from collections.abc import Callable, Sequence
+from dataclasses import dataclass
+from pathlib import Path
+from typing import Any
+
+import streamlit as st
+
+from compare import evidence, pieces
+from compare.bench import Bench, BenchError
+from compare.desk import Desk, desk_from_bench
+from compare.intake import read_bytes, read_sheets
+from compare.palette import Palette, palette_of
+from compare.serve import read_script_arguments
+from extract.model import Reading, SpecSheet
+
+
+@dataclass(frozen=True)
+class Opened:
+    """A sheet that is open, with its bytes where it did not come by name."""
+
+    sheet: SpecSheet
+    data: bytes | None = None
+
+
+def start() -> None:
+    """Fill the state once, from what the command line gave."""
+    if "opened" in st.session_state:
+        return
+    st.session_state.update(opened=[], inbox=0, chosen=None, said=[])
+    set_desk(Desk())
+    bench, names = read_script_arguments(sys.argv[1:])
+    if bench is not None:
+        open_bench(Path(bench).read_text(encoding="utf-8-sig"), bench)
+    if names:
+        with st.spinner("Reading the sheets …"):
+            intake = read_sheets(names)
+        st.session_state.opened = [Opened(sheet) for sheet in intake.sheets]
+        st.session_state.said = [note.message for note in intake.notes]
+
+
+def desk() -> Desk:
+    state = st.session_state
+    return Desk(dict(state.typed), state.kept, state.carried, state.conditions)
+
+
+def set_desk(new: Desk) -> None:
+    """Put a desk into the state; the fields are drawn afresh from it."""
+    for key in [key for key in st.session_state if str(key).startswith("field_")]:
+        del st.session_state[key]
+    st.session_state.update(typed=dict(new.typed), kept=new.kept, carried=new.carried, conditions=new.conditions)
+
+
+def open_bench(text: str, name: str) -> None:
+    try:
+        set_desk(desk_from_bench(text, name))
+    except BenchError as wrong:
+        st.session_state.bench_fault = str(wrong)
+    else:
+        st.session_state.bench_fault = ""
+
+
+def open_sheets(files: Sequence[tuple[str, bytes]]) -> None:
+    """Read files one after the other; each finished one stays, whatever the next one does."""
+    telling = st.empty()
+    for number, (name, data) in enumerate(files, start=1):
+        telling.markdown(f"Reading {number} of {len(files)}: {pieces.plain(name)}")
+        sheet = sheet_of(hashlib.sha256(data).hexdigest(), name, data)
+        if all((one.sheet.file, one.sheet.sha256) != (sheet.file, sheet.sha256) for one in st.session_state.opened):
+            st.session_state.opened = [*st.session_state.opened, Opened(sheet, data)]
+    telling.empty()
+
+
+def sheets() -> list[SpecSheet]:
+    return [one.sheet for one in st.session_state.opened]
+
+
+def palette() -> Palette:
+    return palette_of(st.context.theme.type)
+
+
+@st.cache_resource(max_entries=256, show_spinner=False)
+def sheet_of(sha256: str, name: str, _data: bytes) -> SpecSheet:  # noqa: ARG001
+    return read_bytes(_data, name)
+
+
+@st.cache_resource(max_entries=16, show_spinner="Ranking …")
+def ranked(key: str, _sheets: Sequence[SpecSheet], _bench: Bench) -> dict[str, Any]:  # noqa: ARG001
+    from compare.ranking import rank
+
+    result: dict[str, Any] = rank(_sheets, _bench)
+    return result
+
+
+@st.cache_resource(max_entries=64, show_spinner="Working the part out …")
+def reviewed(key: str, _sheets: Sequence[SpecSheet], _bench: Bench) -> dict[str, Any]:  # noqa: ARG001
+    from compare.review import review
+
+    result: dict[str, Any] = review(_sheets, _bench)
+    return result
+
+
+@st.cache_resource(max_entries=64, show_spinner=False)
+def picture(sha256: str, where: str, _one: Opened, _reading: Reading) -> Any:  # noqa: ARG001
+    data = _one.data if _one.data is not None else evidence.sheet_bytes(_one.sheet)
+    return None if data is None else evidence.page_picture(data, _one.sheet, _reading.where)
+
+
+def ranking(bench: Bench) -> dict[str, Any] | None:
+    """All that is open, ranked; None where that went wrong, which has been told then."""
+    every = sheets()
+    return guarded("ranking", lambda: ranked(key_of(bench, every), every, bench))
+
+
+def key_of(bench: Bench, of: Sequence[SpecSheet]) -> str:
+    """A key that changes with the bench or with any sheet."""
+    told = [bench.to_toml()]
+    for sheet in of:
+        told += [sheet.file, str(sheet.sha256), *(part.part_number or "" for part in sheet.parts)]
+    return hashlib.sha256("\n".join(told).encode()).hexdigest()
+
+
+def guarded(what: str, work: Callable[[], dict[str, Any]]) -> dict[str, Any] | None:
+    """Do `work`; a fault of ours is told with what happened to save, and the person's work is kept."""
+    try:
+        return work()
+    except Exception:
+        st.error(f"Something went wrong while {what}. Your work is kept.")
+        st.button("Try again", key="again")
+        st.download_button("Save what happened", traceback.format_exc(), "what_happened.txt", key="happened")
+        return None
+
+
+def first_row(row: int) -> Any:
+    return {"selection": {"rows": [row], "columns": [], "cells": []}}
+
+
+def selected_row(picked: Any, count: int) -> int:
+    rows = picked.selection.rows if picked is not None else []
+    return rows[0] if rows and rows[0] < count else 0
+
+
+def go(view: str) -> None:
+    """Show another view."""
+    st.switch_page(st.session_state.pages[view])

@@ -1,0 +1,156 @@
+"""The Sheets view: files in, one line each with its outcome, readings, and where each stands."""
+
+from __future__ import annotations
+
+import streamlit as st
+
+from compare import page_session as session
+from compare import pieces, shown
+from compare.desk import NOTHING_READ, PRIVACY, orchard_example
+from compare.page_session import Opened
+from extract.model import Reading
+
+
+def sheets_view() -> None:
+    left, middle, right = st.columns([1, 1.9, 1.5], gap="medium")
+    with left:
+        take_sheets()
+        chosen = sheet_list()
+    if chosen is None:
+        with middle:
+            st.markdown("## No sheets yet")
+            st.markdown(NOTHING_READ)
+        return
+    with middle:
+        reading = part_readings(chosen)
+    with right:
+        if reading is not None:
+            stands(chosen, reading)
+
+
+def take_sheets() -> None:
+    inbox = st.session_state.inbox
+    files = st.file_uploader("Drop sheets here", accept_multiple_files=True, key=f"sheets_{inbox}")
+    with st.container(horizontal=True, gap="small"):
+        with st.popover("Paste text"):
+            text = st.text_area("Text of a sheet, a mail or a web page", key=f"pasted_{inbox}", height=220)
+            pasted = st.button("Read this text", key="read_pasted", type="primary")
+        example = st.button("Open the orchard example", key="orchard")
+    new = [(file.name, file.getvalue()) for file in files or ()]
+    if pasted and text.strip():
+        new.append((f"pasted text {inbox + 1}.txt", text.encode()))
+    if example:
+        new += example_files()
+    if new:
+        session.open_sheets(new)
+        st.session_state.inbox += 1
+        st.rerun()
+    st.markdown(f":gray[:small[{PRIVACY} PDF, workbook, list, web page, Word document, text or picture; 50 MB each.]]")
+    for said in st.session_state.said:
+        st.markdown(pieces.plain(said))
+
+
+def example_files() -> list[tuple[str, bytes]]:
+    example = orchard_example()
+    if example is None:
+        st.session_state.said = [
+            "The orchard example is not part of this installation: it lies in the project’s sample_specs."
+        ]
+        return []
+    if session.desk().bench is None and example.benches:
+        path = next(iter(example.benches.values()))
+        session.open_bench(path.read_text(encoding="utf-8"), path.name)
+    return [(path.name, path.read_bytes()) for path in example.sheets]
+
+
+def sheet_list() -> Opened | None:
+    """One line a sheet; returns the selected one."""
+    every = st.session_state.opened
+    if not every:
+        return None
+    st.markdown(f"### {shown.heading(session.sheets())}")
+    picked = st.dataframe(
+        shown.sheets_frame(session.sheets()),
+        hide_index=True,
+        height=min(38 + 35 * len(every), 420),
+        on_select="rerun",
+        selection_mode="single-row",
+        selection_default=session.first_row(0),
+        key=f"open_{len(every)}",
+        alt="Sheets that are open, with their outcome",
+        column_config={
+            "Sheet": st.column_config.TextColumn(width=150),
+            "What": st.column_config.TextColumn(width=104),
+            "Outcome": st.column_config.TextColumn(width=76),
+        },
+    )
+    chosen: Opened = every[session.selected_row(picked, len(every))]
+    for said in shown.unread(session.sheets()):
+        st.markdown(pieces.plain(said))
+    if st.button("Close this sheet", key="close_sheet"):
+        st.session_state.opened = [one for one in every if one is not chosen]
+        st.rerun()
+    return chosen
+
+
+def part_readings(one: Opened) -> Reading | None:
+    """The readings of a sheet's part, those to look at first; returns the selected one."""
+    sheet = one.sheet
+    if not sheet.parts:
+        st.markdown(f"## {pieces.plain(sheet.file)}")
+        for said in shown.unread([sheet]):
+            st.markdown(pieces.plain(said))
+        return None
+    number = 0
+    if len(sheet.parts) > 1:
+        names = [shown.part_name(part, at) for at, part in enumerate(sheet.parts, start=1)]
+        number = st.selectbox(
+            f"Part, of {len(names)} on this sheet",
+            range(len(names)),
+            format_func=lambda at: names[at],
+            key=f"part_{sheet.sha256}_{sheet.file}",
+        )
+    part = sheet.parts[number]
+    st.markdown(f"## {pieces.plain(shown.part_name(part, number + 1))}")
+    st.markdown(f":gray[{pieces.plain(shown.part_facts(part))}]")
+    if not part.readings:
+        st.markdown("The sheet gives no values for this part.")
+        return None
+    text = st.column_config.TextColumn
+    picked = st.dataframe(
+        shown.readings_frame(part),
+        hide_index=True,
+        height=min(38 + 32 * len(part.readings), 620),
+        row_height=32,
+        on_select="rerun",
+        selection_mode="single-row",
+        selection_default=session.first_row(0),
+        key=f"readings_{sheet.sha256}_{sheet.file}_{number}",
+        alt="Readings of the part, with how we have each",
+        column_config={
+            "Reading": text(width=190),
+            "Min": text(width=62, alignment="right"),
+            "Typ": text(width=76, alignment="right"),
+            "Max": text(width=62, alignment="right"),
+            "Unit": text(width=52),
+            "How we have it": text(width=112),
+        },
+    )
+    st.markdown(f":gray[:small[{shown.HOW_LEGEND}]]")
+    for said in (*shown.attributes_lines(part), *shown.notes_of(sheet)):
+        st.markdown(f":small[{pieces.plain(said)}]")
+    return shown.in_order(part)[session.selected_row(picked, len(part.readings))]
+
+
+def stands(one: Opened, reading: Reading) -> None:
+    """Where the selected reading stands: the words printed there, and the page with a box round them."""
+    told = shown.evidence(reading)
+    st.markdown(f"### {pieces.plain(told.heading)}")
+    st.markdown(pieces.plain(told.read))
+    if told.look is not None:
+        st.html(pieces.look_html(told.look))
+    st.markdown(f":gray[:small[Printed, {pieces.plain(told.stands)}:]]")
+    st.html(pieces.printed_html(told.printed))
+    page = session.picture(one.sheet.sha256 or one.sheet.file, reading.where.model_dump_json(), one, reading)
+    if page is not None:
+        st.image(page, width="stretch", alt=f"{told.stands} of {one.sheet.file}, a box round the reading")

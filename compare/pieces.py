@@ -1,0 +1,61 @@
+"""Small pieces of HTML and markdown that the page shows, with every text of a sheet or person escaped."""
+
+from __future__ import annotations
+
+import re
+from collections.abc import Sequence
+from dataclasses import fields
+from html import escape
+from pathlib import Path
+
+from compare.answers import Number
+from compare.palette import Palette
+
+MARKDOWN = re.compile(r"([\\`*_{}\[\]()#+!|<>$~:^-])")
+
+
+def plain(text: str) -> str:
+    """Text that markdown shows as it stands."""
+    return MARKDOWN.sub(r"\\\1", text)
+
+
+def style(palette: Palette) -> str:
+    """The page's own rules, in the colours of its theme."""
+    colours = "".join(f"--qf-{one.name.replace('_', '-')}:{getattr(palette, one.name)};" for one in fields(palette))
+    rules = Path(__file__).with_name("page.css").read_text(encoding="utf-8")
+    return f"<style>:root{{{colours}}}{rules}</style>"
+
+
+def terms_html(terms: Sequence[str]) -> str:
+    """The line of terms; figures stand between ** in `terms`."""
+    said = (re.sub(r"\*\*(.+?)\*\*", r"<b>\1</b>", escape(term)) for term in terms)
+    return f'<div class="qf-terms">{"".join(f"<span>{term}</span>" for term in said)}</div>'
+
+
+def numbers_html(numbers: Sequence[Number]) -> str:
+    """Every number with its three values; pressed, a row opens to how it was reached."""
+    head = ("Number", "Low", "Nominal", "High", "Unit", "How we have it")
+    cells = "".join(f"<span{' class=n' if name in head[1:4] else ''}>{name}</span>" for name in head)
+    return f'<div class="qf-head">{cells}</div><div class="qf-numbers">{"".join(map(_number_row, numbers))}</div>'
+
+
+def _number_row(number: Number) -> str:
+    values = "".join(f'<span class="n">{escape(value)}</span>' for value in (number.low, number.mid, number.high))
+    said = f'<span class="soft">{escape(number.unit)}</span><span class="soft">{escape(number.basis)}</span>'
+    how = escape(number.how or "Nothing is said about how.")
+    return f"<details><summary><span>{escape(number.name)}</span>{values}{said}</summary><p>{how}</p></details>"
+
+
+def printed_html(text: str) -> str:
+    """Words as they are printed on the sheet."""
+    return f'<p class="qf-printed">{escape(text)}</p>'
+
+
+def look_html(text: str) -> str:
+    """Why a person must look."""
+    return f'<p class="qf-look">☞ {escape(text)}</p>'
+
+
+def fault_html(text: str) -> str:
+    """What is wrong with a field, under it."""
+    return f'<p class="qf-fault" role="alert">▼ {escape(text)}</p>'
