@@ -46,6 +46,9 @@ class Table:
         """Rows of cells, a merged cell standing in each place that it covers."""
         grid: list[list[Cell | None]] = [[None] * self.columns for _ in range(self.rows)]
         for cell in self.cells:
+            if cell.row_span == cell.column_span == 1:
+                grid[cell.row][cell.column] = cell
+                continue
             for row in range(cell.row, min(cell.row + cell.row_span, self.rows)):
                 for column in range(cell.column, min(cell.column + cell.column_span, self.columns)):
                     grid[row][column] = cell

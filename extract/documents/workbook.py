@@ -10,8 +10,9 @@ from collections.abc import Callable, Iterator, Mapping, Sequence
 from typing import Any
 
 from extract.documents import numberformat
-from extract.documents.grid import PlacedCell, address
+from extract.documents.grid import address, placed_cells
 from extract.documents.model import Cell, Document, DocumentError, Line, Segment, Table
+from extract.documents.spacing import pieces
 from extract.documents.workbookparts import SheetStyles, sheet_styles
 from extract.model import Note, Where
 
@@ -79,7 +80,8 @@ def _formula_note(name: str, style: SheetStyles) -> Iterator[Note]:
 
 def _printed(rows: list[list[Any]], style: SheetStyles) -> Grid:
     """Every value as text, as a person sees it."""
-    grid = [[value.strip() if type(value) is str else _text(value) for value in row] for row in rows]
+    plain = _Plain()
+    grid = [[plain[value] if type(value) is float else _text(value) for value in row] for row in rows]
     for (row, column), code in style.formats.items():
         if row < len(rows) and column < len(rows[row]):
             value = rows[row][column]
@@ -88,7 +90,16 @@ def _printed(rows: list[list[Any]], style: SheetStyles) -> Grid:
     return grid
 
 
+class _Plain(dict[float, str]):
+    """Numbers as text, each worked out once: lists repeat their values."""
+
+    def __missing__(self, value: float) -> str:
+        return self.setdefault(value, numberformat.general(value))
+
+
 def _text(value: Any) -> str:
+    if isinstance(value, str):
+        return value.strip()
     if isinstance(value, bool):
         return "TRUE" if value else "FALSE"
     if isinstance(value, int | float):
@@ -154,9 +165,11 @@ class _Sheet:
         return same and sum(numbers) * 4 >= 3 * sum(numbers_above) > 0
 
     def _band(self, first: int, last: int) -> Iterator[Table | Line]:
+        above = first
         while first < last and self._is_prose(first):
-            yield self._line(first, heading=True)
             first += 1
+        for row in range(above, first):
+            yield self._line(row, heading=first < last or (row == above and last - above == 1))
         end = last
         while end > first and self._is_prose(end - 1):
             end -= 1
@@ -178,7 +191,8 @@ class _Sheet:
     def _line(self, row: int, *, heading: bool) -> Line:
         column = self._filled(row)[0]
         where = Where(sheet=self.name, cell=address(row, column))
-        return Line((Segment(self.grid[row][column], where),), where, heading=heading)
+        texts = [piece.text for line in self.grid[row][column].split("\n") for piece in pieces(line)]
+        return Line(tuple(Segment(text, where) for text in texts), where, heading=heading)
 
     def _side_by_side(self, first: int, last: int) -> Iterator[tuple[int, int, int, int]]:
         """Blocks of a band (left, right, top, bottom; ends not included), parted where two tables stand."""
@@ -230,20 +244,17 @@ class _Sheet:
 
     def _table(self, left: int, right: int, top: int, bottom: int) -> Table:
         place = self._placer(top, left)
-        known: dict[str, str] = {}
-        cells: list[Cell] = []
-        for row in range(top, bottom):
-            for column, text in enumerate(self.grid[row][left:right], start=left):
-                span = self.spans.get((row, column))
-                if not text:
-                    continue
-                if span is None:
-                    cells.append(PlacedCell(known.setdefault(text, text), row - top, column - left, place))
-                else:
-                    height, width = min(span[2] + 1, bottom) - row, min(span[3] + 1, right) - column
-                    where = place(row - top, column - left)
-                    cells.append(Cell(text, row - top, column - left, where, height, width))
-        return Table(tuple(cells), bottom - top, right - left, place(0, 0))
+        cells = placed_cells([texts[left:right] for texts in self.grid[top:bottom]], place)
+        if self.spans:
+            cells = tuple(self._merged(cell, left, right, top, bottom) for cell in cells)
+        return Table(cells, bottom - top, right - left, place(0, 0))
+
+    def _merged(self, cell: Cell, left: int, right: int, top: int, bottom: int) -> Cell:
+        span = self.spans.get((cell.row + top, cell.column + left))
+        if span is None:
+            return cell
+        height, width = min(span[2] + 1, bottom) - span[0], min(span[3] + 1, right) - span[1]
+        return Cell(cell.text, cell.row, cell.column, cell.where, height, width)
 
     def _placer(self, top: int, left: int) -> Callable[[int, int], Where]:
         name = self.name

@@ -87,7 +87,7 @@ def _styles_of(sheet: bytes, codes: dict[bytes, str]) -> SheetStyles:
             name, style = _CELL_NAME.search(match.group(1)), _STYLE.search(match.group(1))
             if name and style:
                 styles.formats[int(name.group(2)) - 1, _column(name.group(1))] = codes[style.group(1)]
-    for match in _NO_RESULT.finditer(sheet):
+    for match in _NO_RESULT.finditer(sheet) if b"<f" in sheet else ():
         name = _CELL_NAME.search(match.group(1))
         if name:
             styles.uncalculated.append((name.group(1) + name.group(2)).decode())
