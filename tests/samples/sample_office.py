@@ -23,7 +23,7 @@ LIST_ROWS = """
 MLQ16-26M000-08A|Medlarwood Piezo|1.6 x 1.2|26|Fundamental|8|10|15|150|1|100|2|-40|85|0.31|4200
 MLQ20-26M000-08C|Medlarwood Piezo|2.0 x 1.6|26||8|10|15|60|1.5|100|2|-40|85|0.22|15000
 MLQ20-26M000-08E|Medlarwood Piezo|2.0 x 1.6|26|Fundamental|8|7|12|60|1.5|100|2|-40|85|0.29|6000
-RTQ32-26M000-12B|Russetfield Timing|3.2 x 2.5|26|Fundamental|12|10|15|40|3|200|2|-40|85|0.18|11000
+RTQ32-26M000-16B|Russetfield Timing|3.2 x 2.5|26|Fundamental|16|10|15|40|3|200|2|-40|85|0.18|11000
 RTQ25-26M000-08D|Russetfield Timing|2.5 x 2.0|26|Fundamental|8|30|30|50|2|200|3|-40|85|0.15|40000
 RTQ25-24M000-08A|Russetfield Timing|2.5 x 2.0|24|Fundamental|8|10|15|50|2|200|3|-40|85|0.19|900
 RTQ20-32M000-08A|Russetfield Timing|2.0 x 1.6|32|Fundamental|8|10|15|50|1.5|100|2|-40|85|0.24|27000

@@ -142,6 +142,12 @@ OSCILLATOR_ROWS = [
     ["Ageing", "-3", "", "+3", "ppm", "first year"],
 ]
 
+SCAN_HEAD = [
+    "HOLLINBRAE QUARTZ LTD",
+    "Specification for approval",
+    "Part number: HLB32-26M000-08    Package: 3.2 x 2.5 mm",
+]
+SCAN_FOOTER = "Checked: M. Tarrow        Approved: I. Lindqvist-Boyle"
 SCAN_ROWS = [
     ["Item", "Value", "Condition"],
     ["Nominal frequency", "26.000 MHz", "fundamental, AT cut"],
@@ -155,4 +161,25 @@ SCAN_ROWS = [
     ["Drive level", "100 µW max", ""],
     ["Ageing", "±2 ppm", "first year"],
     ["Insulation resistance", "500 MΩ min", "100 V DC"],
+]
+
+PICTURE_HEAD = [
+    "TAMSQUITH FREQUENCY",
+    "Tuning fork crystal TQF20-32.768-12.5",
+    "Package: 2.0 x 1.2 mm",
+]
+PICTURE_FOOTER = "TQ-D-0051, issue 2"
+PICTURE_ROWS = [
+    ["Parameter", "Value", "Remarks"],
+    ["Nominal frequency", "32.768 kHz", ""],
+    ["Frequency tolerance", "±15 ppm", "at 25 °C"],
+    ["Turnover temperature", "25 ±5 °C", ""],
+    ["Parabolic coefficient", "-0.034 ppm/°C²", "typical"],
+    ["Operating temperature", "-40 to +85 °C", ""],
+    ["Storage temperature", "-55 to +125 °C", ""],
+    ["Load capacitance", "12.5 pF", ""],
+    ["ESR", "75 kohm max", ""],
+    ["Shunt capacitance", "1.3 pF typ", ""],
+    ["Drive level", "0.5 µW max", ""],
+    ["Ageing", "±3 ppm max", "first year"],
 ]

@@ -1,4 +1,4 @@
-"""The PDF sheets of `sample_specs/`: by two PDF libraries, one printed by Chromium, one image-only scan."""
+"""The PDF sheets of `sample_specs/`: by two PDF libraries, one printed by Chromium, and two pictures of pages."""
 
 from __future__ import annotations
 
@@ -255,38 +255,46 @@ def oscillator(path: Path) -> None:
     canvas.save()
 
 
-def scan(path: Path) -> None:
-    """A page as a flat-bed scanner sees it: a little turned, soft, grey, with specks."""
-    dots = 150
-    page = Image.new("L", (int(8.27 * dots), int(11.69 * dots)), 248)
+def _scanned(heading: list[str], rows: list[list[str]], footer: str) -> Image.Image:
+    """An A4 page as a flat-bed scanner sees it at 150 dots per inch: grey and a little soft."""
+    page = Image.new("L", (1240, 1753), 248)
     draw = ImageDraw.Draw(page)
 
-    def write(x: int, y: int, text: str, size: int, bold: bool = False) -> None:
+    def write(x: int, y: int, text: str, size: int, *, bold: bool = False) -> None:
         face = "LiberationSans-Bold.ttf" if bold else "LiberationSans-Regular.ttf"
         draw.text((x, y), text, font=ImageFont.truetype(LIBERATION + face, size), fill=25)
 
-    write(110, 100, "HOLLINBRAE QUARTZ LTD", 38, bold=True)
-    write(110, 155, "Specification for approval", 28)
-    write(110, 205, "Part number: HLB32-26M000-08    Package: 3.2 x 2.5 mm", 25)
     edges, row_height, top = (110, 530, 840, 1130), 54, 270
-    for number, row in enumerate(sample_pages.SCAN_ROWS):
+    for number, line in enumerate(heading):
+        write(110, 100 + 55 * number, line, 25 if number else 38, bold=number == 0)
+    for number, row in enumerate(rows):
         y = top + number * row_height
         draw.line((edges[0], y, edges[-1], y), fill=60, width=2)
         for x, cell in zip(edges, row, strict=False):
             write(x + 14, y + 13, cell, 24, bold=number == 0)
-    bottom = top + len(sample_pages.SCAN_ROWS) * row_height
+    bottom = top + len(rows) * row_height
     draw.line((edges[0], bottom, edges[-1], bottom), fill=60, width=2)
     for x in edges:
         draw.line((x, top, x, bottom), fill=60, width=2)
-    write(110, bottom + 50, "Checked: M. Tarrow        Approved: I. Lindqvist-Boyle", 24)
+    write(110, bottom + 50, footer, 24)
+    return page.filter(ImageFilter.GaussianBlur(0.6))
+
+
+def scan(path: Path) -> None:
+    page = _scanned(sample_pages.SCAN_HEAD, sample_pages.SCAN_ROWS, sample_pages.SCAN_FOOTER)
     page = page.rotate(-0.6, resample=Image.Resampling.BICUBIC, fillcolor=248)
-    page = page.filter(ImageFilter.GaussianBlur(0.6))
     with tempfile.TemporaryDirectory() as folder:
         picture = Path(folder, "page.jpg")
         page.save(picture, quality=60)
         canvas = Canvas(str(path), pagesize=A4, invariant=1)
         canvas.drawImage(ImageReader(str(picture)), 0, 0, *A4)
         canvas.save()
+
+
+def screenshot(path: Path) -> None:
+    """The upper part of a page, straight, as a person cuts it out of a viewer."""
+    page = _scanned(sample_pages.PICTURE_HEAD, sample_pages.PICTURE_ROWS, sample_pages.PICTURE_FOOTER)
+    page.crop((60, 60, 1180, 1150)).quantize(16).save(path, optimize=True)
 
 
 MAKERS = {
@@ -296,5 +304,6 @@ MAKERS = {
     "tingyu_tyj2520_26mhz_zh.pdf": chinese_sheet,
     "kirisaka_krs15_32khz_ja.pdf": japanese_columns,
     "hollinbrae_hlb32_26mhz_scan.pdf": scan,
+    "tamsquith_tqf20_32khz.png": screenshot,
     "damsonleigh_dmx20_clock_oscillator.pdf": oscillator,
 }
