@@ -205,7 +205,7 @@ def _merged_group(
 
 
 def spans_parted(pieces: Sequence[Piece]) -> list[Piece]:
-    """Pieces with each merged cell taken apart whose texts stand over the columns below (a head without upright lines)."""
+    """Pieces with each merged cell taken apart whose texts stand over the columns below it."""
     sides = {
         piece.cell.column: (piece.cell.box[0], piece.cell.box[2]) for piece in pieces if piece.cell.column_span == 1
     }

@@ -234,7 +234,7 @@ def _text_blocks(items: Sequence[Item], place: Placer) -> list[Table | Line]:
 
 
 def _rows_joined(rows: Sequence[Sequence[Item]]) -> list[list[list[Item]]]:
-    """Rows of a table, each of one or more text lines: what goes on below a row stands nearer to it than the next row."""
+    """Rows of a table, each of one or more text lines: what goes on below a row stands nearer to it."""
     groups: list[list[list[Item]]] = []
     levels = [sum(item.level for item in row) / len(row) for row in rows]
     full = [level for level, row in zip(levels, rows, strict=True) if len(row) > 1]

@@ -7,8 +7,9 @@ from bisect import bisect_left, bisect_right
 from collections.abc import Iterable, Sequence
 from dataclasses import dataclass, replace
 
+from extract.documents import marks
 from extract.documents.symbols import translated
-from extract.documents.words import SUPERSCRIPTS, Box, Word, is_cjk, turned, turned_back
+from extract.documents.words import Box, Word, is_cjk, turned, turned_back
 
 # Characters of a lowered or raised mark: "nom", "*1)", "stg", "OPR"; longer ones are words in small type.
 LONGEST_MARK = 6
@@ -42,8 +43,6 @@ class _Run:
     base: float
     bold: bool
     glyphs: int = 1
-    # What a raised mark became: it is set apart from a word behind it.
-    closed: bool = False
 
     def take(self, other: _Run, text: str) -> None:
         self.text = text
@@ -200,14 +199,18 @@ def _marks_attached(runs: Sequence[_Run]) -> list[_Run]:
         host = _host(mark, by_end[first:last], taken)
         if host is None:
             continue
-        lowered = _lowered(mark, host)
-        host.take(mark, with_lowered(host.text, mark.text) if lowered else with_raised(host.text, mark.text))
+        if mark.base > host.base:
+            text = host.text + marks.lowered(mark.text)
+        else:
+            text = _with_raised(host.text, mark.text, _before(host, runs))
+        host.take(mark, text)
         taken.add(id(mark))
     kept = [run for run in runs if id(run) not in taken]
     for run in kept:
         if _leads_a_footnote(run, kept):
-            run.text = raised_mark(run.text)
-    return _behind_marks(kept)
+            run.text = marks.raised(run.text, "").strip()
+    # What goes on behind a mark without a space ("ppm/°C²/year") is the same word.
+    return _same_line_neighbours(kept)
 
 
 def _goes_on(mark: _Run, runs: Sequence[_Run]) -> bool:
@@ -219,10 +222,6 @@ def _goes_on(mark: _Run, runs: Sequence[_Run]) -> bool:
         and 0 <= mark.x0 - other.x1 < 0.5 * mark.size
         for other in runs
     )
-
-
-def _lowered(mark: _Run, host: _Run) -> bool:
-    return mark.base > host.base
 
 
 def _host(mark: _Run, runs: Sequence[_Run], taken: set[int]) -> _Run | None:
@@ -239,41 +238,20 @@ def _host(mark: _Run, runs: Sequence[_Run], taken: set[int]) -> _Run | None:
     return best
 
 
-def with_lowered(text: str, mark: str) -> str:
-    """Text with a lowered mark."""
-    return text + mark
+def _before(host: _Run, runs: Sequence[_Run]) -> str:
+    """Text up to the end of the host word: what stands right before it decides whether a mark is an exponent."""
+    left = [
+        run
+        for run in runs
+        if run is not host and abs(run.base - host.base) < 0.1 * host.size and 0 <= host.x0 - run.x1 < host.size
+    ]
+    nearest = max(left, key=lambda run: run.x1, default=None)
+    return f"{nearest.text} {host.text}" if nearest else host.text
 
 
-def with_raised(text: str, mark: str) -> str:
-    """Text with a raised mark: an exponent, an ordinal, or a mark that points to a footnote."""
-    if re.fullmatch(r"(st|nd|rd|th)", mark, re.I):
-        return text + mark
-    if re.fullmatch(r"[-−–+]?\d{1,2}", mark) and _takes_exponent(text, mark):
-        return text + mark.translate(SUPERSCRIPTS)
-    if re.fullmatch(r"[°oº]", mark):
-        return text + "°"
-    if mark in {"+", "-", "−", "–"}:
-        return text + mark.translate(SUPERSCRIPTS)
-    if re.search(r"[⁺⁻]$", text) and mark.isdigit():
-        return text + mark.translate(SUPERSCRIPTS)
-    return f"{text} {raised_mark(mark)}"
-
-
-def _takes_exponent(text: str, mark: str) -> bool:
-    if re.search(r"(^|[^\d.,])10$", text):
-        # 10 with a raised minus is a power; 10 with a bare raised digit is more often a value with a footnote.
-        return not mark.isdigit() or bool(re.search(r"[x×·⋅*]\s*10$", text))
-    return (
-        mark.isdigit()
-        and mark in {"2", "3"}
-        and bool(re.search(r"([/(°]|^)\s*(°?[CKTmc]|m?m|℃|\)|[CK]\))$|℃$|\)$", text))
-    )
-
-
-def raised_mark(mark: str) -> str:
-    """Form of a raised mark that points to a footnote."""
-    bare = mark.strip("()[]")
-    return f"⁽{bare.translate(SUPERSCRIPTS)}⁾" if bare.isdigit() else mark
+def _with_raised(text: str, mark: str, before: str) -> str:
+    """Text with a raised mark; a small raised letter o is how some sheets print the degree sign."""
+    return text + ("°" if mark in {"o", "º", "°"} else marks.raised(mark, before))
 
 
 def _leads_a_footnote(run: _Run, runs: Sequence[_Run]) -> bool:
@@ -287,8 +265,3 @@ def _leads_a_footnote(run: _Run, runs: Sequence[_Run]) -> bool:
         for other in runs
         if other is not run
     )
-
-
-def _behind_marks(runs: Sequence[_Run]) -> list[_Run]:
-    """Join what goes on behind a lowered or raised mark without a space ("ppm/°C²/year")."""
-    return _same_line_neighbours(runs)

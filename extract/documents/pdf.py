@@ -23,7 +23,9 @@ CATALOGUE_PAGES = 4
 # A page with fewer characters may be a picture.
 ALMOST_NO_TEXT = 25
 SCAN_DPI = 200
-NO_OCR = 'page {page} is a picture; to have its text recognised, install the extra with pip install "quartzfolio[ocr]"'
+NO_OCR = (
+    'Page {page} is a picture and was not read: install the reading of pictures with pip install "quartzfolio[ocr]".'
+)
 
 
 @dataclass(slots=True)
@@ -57,10 +59,10 @@ def _opened(data: bytes) -> Any:
         document = pypdfium2.PdfDocument(data)
     except pypdfium2.PdfiumError as fault:
         if "password" in str(fault).lower():
-            raise DocumentError("the PDF is locked with a password; save a copy without one and read that") from fault
-        raise DocumentError("the PDF is damaged or cut short and cannot be opened; fetch the file again") from fault
+            raise DocumentError("The PDF is locked with a password. Save a copy without one and read that.") from fault
+        raise DocumentError("The PDF is damaged or cut short and cannot be opened. Fetch it again.") from fault
     if len(document) == 0:
-        raise DocumentError("the PDF has no pages; fetch the file again")
+        raise DocumentError("The PDF has no pages. Fetch it again.")
     return document
 
 
@@ -135,7 +137,7 @@ def _read_text(page: Any, slow: _Plumber, number: int, frame: Frame, *, printed:
         result.notes.append(
             Note(
                 level="warning",
-                message=f"page {number}: its drawn lines cannot be read, so tables are told from where words stand",
+                message=f"Page {number}: its drawn lines cannot be read, so tables are told from where words stand; compare with the page.",
                 where=Where(page=number),
             )
         )
@@ -174,8 +176,8 @@ def _broken_notes(glyphs: Sequence[Glyph], number: int) -> list[Note]:
         return []
     shown = ", ".join(repr(text) for text, _ in Counter(glyph.text for glyph in broken).most_common(3))
     message = (
-        f"page {number}: {len(broken)} characters come out of the file's text as {shown}, since its fonts do "
-        "not say what they are; numbers near them may be wrong: compare with the page"
+        f"Page {number}: {len(broken)} characters come out of the file's text as {shown}, since its fonts do "
+        "not say what they are; numbers near them may be wrong: compare with the page."
     )
     x0, top, x1, bottom = (round(value, 1) for value in union(glyph.box for glyph in broken))
     return [Note(level="warning", message=message, where=Where(page=number, box=(x0, top, x1, bottom)))]
@@ -201,16 +203,17 @@ def _is_picture(page: Any, frame: Frame) -> bool:
 def _read_picture(page: Any, number: int, result: _Page) -> None:
     from extract.documents import scan
 
-    def place(box: Box) -> Where:
-        x0, top, x1, bottom = (round(value * 72 / SCAN_DPI, 1) for value in box)
-        return Where(page=number, box=(x0, top, x1, bottom))
-
+    place = _placer(number, 72 / SCAN_DPI)
     try:
         result.blocks += scan.read_blocks(page.render(scale=SCAN_DPI / 72).to_pil(), place)
     except DocumentError:
+        # The only fault that reading a picture in memory can have: the extra is not there.
         result.notes.append(Note(level="warning", message=NO_OCR.format(page=number), where=Where(page=number)))
         return
     result.scanned = True
+    if not result.blocks:
+        message = f"Page {number} is a picture in which no text can be made out: look at it, or give a sharper scan."
+        result.notes.append(Note(level="warning", message=message, where=Where(page=number)))
 
 
 # --- the whole file

@@ -20,8 +20,6 @@ from typing import NamedTuple
 
 Box = tuple[float, float, float, float]
 
-SUPERSCRIPTS = str.maketrans("0123456789+-−–()", "⁰¹²³⁴⁵⁶⁷⁸⁹⁺⁻⁻⁻⁽⁾")
-
 # A gap of this many text sizes parts segments. A space is 0.25 to 0.35; two spaces or justified text stay below.
 WIDE_GAP = 0.8
 
@@ -31,8 +29,8 @@ class Word:
     """A run of characters without a space.
 
     The box is in points (pixels for a picture) from the top left; `size` is the type's height in the same unit.
-    `angle` is 0 for upright text, 90 for text that reads upwards, 270 downwards, 180 upside down. `baseline` is measured
-    down from the top of the page (for upright text only); where it is not known, leave it out and the box decides.
+    `angle` is 0 for upright text, 90 for text that reads upwards, 270 downwards, 180 upside down. `baseline` is
+    measured down from the top of the page, for upright text; where it is not known, leave it out and the box decides.
     """
 
     text: str
@@ -152,7 +150,7 @@ def joined(line: Sequence[Word]) -> str:
 
 
 def text_of(words: Sequence[Word]) -> str:
-    """Text of words that stand together (a cell), a line feed between lines; sideways words are read along their lines."""
+    """Text of words that stand together (a cell), a line feed between lines; sideways ones along their lines."""
     parts = []
     for angle in sorted({word.angle for word in words}):
         chosen = [word for word in words if word.angle == angle]
