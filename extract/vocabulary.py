@@ -15,6 +15,7 @@ from typing import Any
 
 from extract.fields import fields
 from extract.fold import fold, key
+from extract.runs import Table
 
 _SECTIONS = {
     "labels", "symbols", "shared", "shared_symbols", "weak", "traps", "bounds", "roles", "identity", "attributes", "modes",
@@ -24,25 +25,29 @@ _SECTIONS = {
 
 @dataclass(frozen=True)
 class Vocabulary:
-    """Words of all languages together. Every dictionary but `phrases` goes from a key to a meaning.
+    """Words of all languages together. Every table but `phrases` goes from a key to a meaning.
 
-    `phrases` holds, for each meaning, the wordings as folded and lower case, longest first, for use in patterns.
+    `weak` are labels that decide only alone in their cell, `weak_symbols` symbols that decide only in a symbol column,
+    `filling` words that may be left over beside a wording. `phrases` holds, for each meaning, the wordings as folded and lower case, longest first, for use in patterns.
     """
 
     languages: tuple[str, ...] = ()
-    labels: dict[str, str] = field(default_factory=dict)
-    symbols: dict[str, str] = field(default_factory=dict)
+    labels: Table[str] = field(default_factory=Table)
+    symbols: Table[str] = field(default_factory=Table)
     shared: dict[str, tuple[str, ...]] = field(default_factory=dict)
     weak: frozenset[str] = frozenset()
-    traps: dict[str, str] = field(default_factory=dict)
-    bounds: dict[str, str] = field(default_factory=dict)
-    roles: dict[str, str] = field(default_factory=dict)
-    identity: dict[str, str] = field(default_factory=dict)
-    attributes: dict[str, str] = field(default_factory=dict)
-    modes: dict[str, str] = field(default_factory=dict)
-    mode_codes: dict[str, str] = field(default_factory=dict)
-    cuts: dict[str, str] = field(default_factory=dict)
-    oscillator: dict[str, str] = field(default_factory=dict)
+    weak_symbols: frozenset[str] = frozenset()
+    filling: frozenset[str] = frozenset()
+    at_words: frozenset[str] = frozenset()
+    traps: Table[str] = field(default_factory=Table)
+    bounds: Table[str] = field(default_factory=Table)
+    roles: Table[str] = field(default_factory=Table)
+    identity: Table[str] = field(default_factory=Table)
+    attributes: Table[str] = field(default_factory=Table)
+    modes: Table[str] = field(default_factory=Table)
+    mode_codes: Table[str] = field(default_factory=Table)
+    cuts: Table[str] = field(default_factory=Table)
+    oscillator: Table[str] = field(default_factory=Table)
     phrases: dict[str, tuple[str, ...]] = field(default_factory=dict)
 
 
@@ -66,14 +71,18 @@ def gather(tables: Iterable[tuple[str, dict[str, Any]]]) -> Vocabulary:
     WordingError
         A section or field that does not exist, or a label that two fields claim.
     """
-    found: dict[str, Any] = {name: {} for name in _SECTIONS - {"language", "weak"}}
+    found: dict[str, Any] = {name: Table() for name in _SECTIONS - {"language", "weak"}}
     weak: set[str] = set()
+    weak_symbols: set[str] = set()
+    filling: set[str] = set()
     languages = []
     for name, table in tables:
         if unknown := set(table) - _SECTIONS:
             raise WordingError(f"{name}: no section called {sorted(unknown)[0]!r}")
         languages.append(table.get("language", name))
         weak |= {key(word) for word in table.get("weak", {}).get("labels", [])}
+        weak_symbols |= {key(word) for word in table.get("weak", {}).get("symbols", [])}
+        filling |= {key(word) for word in table.get("weak", {}).get("filling", [])}
         for section in ("labels", "symbols"):
             _claim_fields(found[section], table.get(section, {}), name)
         for section in ("shared", "shared_symbols"):
@@ -85,14 +94,22 @@ def gather(tables: Iterable[tuple[str, dict[str, Any]]]) -> Vocabulary:
         for section, prefix in (("phrases", ""), ("bounds", ""), ("modes", "mode ")):
             for meaning, words in table.get(section, {}).items():
                 found["phrases"].setdefault(prefix + meaning, []).extend(fold(word).casefold() for word in words)
-    shared = found.pop("shared") | found.pop("shared_symbols")
+    shared = dict(found.pop("shared") | found.pop("shared_symbols"))
     if both := shared.keys() & (found["labels"].keys() | found["symbols"].keys()):
         raise WordingError(f"{sorted(both)[0]!r} is the label of one field and of several")
     found["phrases"] = {
         meaning: tuple(sorted(set(words), key=lambda word: (-len(word), word)))
         for meaning, words in found["phrases"].items()
     }
-    return Vocabulary(languages=tuple(languages), weak=frozenset(weak), shared=shared, **found)
+    return Vocabulary(
+        languages=tuple(languages),
+        weak=frozenset(weak),
+        weak_symbols=frozenset(weak_symbols),
+        filling=frozenset(filling),
+        at_words=frozenset(found["phrases"].get("at", ())),
+        shared=shared,
+        **found,
+    )
 
 
 def _claim_fields(claimed: dict[str, str], table: dict[str, list[str]], name: str) -> None:

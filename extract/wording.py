@@ -1,4 +1,4 @@
-"""What a printed label means, in any language of `wording/`: its field, its bound, the unit and conditions in it."""
+"""What a printed label or head means, in any language of `wording/`: its field, its bound, the unit and conditions in it."""
 
 from __future__ import annotations
 
@@ -6,13 +6,15 @@ import re
 from dataclasses import dataclass
 from functools import cache, lru_cache
 
-from extract.band import read_when
 from extract.fold import fold, key
+from extract.labels import EDGE, Parts, one_year_keys, take_apart, without_unit
 from extract.model import When
-from extract.units import kinds
+from extract.runs import IDEOGRAPHS, words_of
+from extract.units import factor
 from extract.vocabulary import vocabulary
 
 LONGEST_LABEL = 160
+LONGEST_HEAD = 60
 
 
 @dataclass(frozen=True, slots=True)
@@ -42,255 +44,341 @@ class FoundLabel:
     label: Label
 
 
-@dataclass(slots=True)
-class _Parts:
-    """A label taken apart: what is left in `core`, and what was found beside it."""
-
-    core: str
-    brackets: list[str]
-    bound: str | None = None
-    unit: str | None = None
-    plus_minus: bool = False
-    when: When = When()
-
-
-_NUMBERING = re.compile(r"^\s*(?:\(\d{1,2}\)|\d{1,2}(?:\.\d{1,2})?[.)、](?!\d)|[•■◆●▪○□・*·#>]+|-\s)\s*")
-_FOOTNOTE = re.compile(r"(?:\s*(?:\*+\d{0,2}\)?|[†‡§]|\^\d{1,2}\)?|\s\d{1,2}\)|\(\s?\*?\d\s?\)|※\d?|注\d?))+\s*$")
-_INNER_FOOTNOTE = re.compile(r"(?<=[a-z)])\^\d\)?|※\d|\*\d\)?|\*+(?=\s|$)")
-_BRACKET = re.compile(r"[(\[{|]\s*([^()\[\]{}|]*?)\s*[)\]}|]")
-_CONDITION = re.compile(
-    r"\s*[,;/-]?\s*(?:@|\b(?:at|bei|à|a|bij|for|ref\.?(?: to)?|referred to|reference|when|measured at)(?=\s?[+-]?\d)|(?=[+-]?\d+\s?°C))"
-    r"\s?[+-]?\d.*$",
-    re.IGNORECASE,
-)
-_AT_REST = re.compile(r"\s*@.*$")
-_SNAKE = re.compile(r"^[A-Za-z0-9]+(?:_[A-Za-z0-9]+)+$")
-_WORD = re.compile(r"[^\W\d_]+\d*(?:/[^\W\d_]+\d*)?|\d+|±|Δ", re.UNICODE)
-_TOKEN = re.compile(r"\S+")
-_EDGE = " \t\n:：.,;-=_/|~、。…"
-
-
 @lru_cache(maxsize=32768)
 def read_label(text: str) -> Label | None:
-    """What field the label `text` names, with the bound, unit, ± and conditions that stand in it; None for none or several.
+    """What field the label `text` names, with the bound, unit, ± and conditions in it; None for none, or for several.
 
     An exact wording decides first, then a wording with a symbol, unit, bound or condition beside it, then the longest
     known wording inside (`exact` False when more than filling words is left over), at last one slip of the pen.
     """
     folded = fold(text)
-    if not folded or len(folded) > LONGEST_LABEL:
+    if not folded or len(folded) > LONGEST_LABEL or key(folded).isdigit():
         return None
-    parts = _take_apart(folded)
-    return _exact(parts) or _beside_symbol(parts) or _inside(parts)
+    parts = take_apart(folded)
+    if key(parts.core) in vocabulary().shared and not parts.brackets:
+        return None
+    return _exact(parts) or _beside_symbol(parts) or _inside(parts) or _run_together(parts) or _misspelt(parts)
 
 
-def _take_apart(folded: str) -> _Parts:
-    text = _FOOTNOTE.sub("", _NUMBERING.sub("", folded)).rstrip(":：")
-    text = _FOOTNOTE.sub("", text)
-    if _SNAKE.match(text):
-        text = text.replace("_", " ")
-    parts = _Parts(core=text, brackets=[])
-    if "±" in text:
-        parts.plus_minus = True
-        text = re.sub(r"±(?!\s?\d)", " ", text)
-    text = _BRACKET.sub(lambda found: _keep_bracket(parts, found[1]), text)
-    text = _take_years(parts, text)
-    condition = _CONDITION.search(text) or _AT_REST.search(text)
-    if condition and condition.start() > 1:
-        parts.when = _joined(parts.when, read_when(condition[0]))
-        text = text[: condition.start()]
-    parts.core = _INNER_FOOTNOTE.sub("", text)
-    _take_bound(parts)
-    return parts
+def ambiguous_label(text: str) -> tuple[str, ...]:
+    """The fields a label may mean where it means several ("Frequency tolerance / stability", "Δf/f"); else ()."""
+    parts = take_apart(fold(text)[:LONGEST_LABEL])
+    shared = vocabulary().shared
+    for name in (parts.core, " ".join([parts.core, *parts.brackets]), *parts.brackets):
+        if fields := shared.get(key(name)):
+            return fields
+    named = _fields_inside(parts.core).strong
+    return tuple(named) if len(named) > 1 and read_label(text) is None else ()
 
 
-def _keep_bracket(parts: _Parts, inside: str) -> str:
-    """Sort a bracket's content into bound, unit, condition or another name of the label."""
-    words = [word for word in re.split(r"[\s,;/]+", inside) if word]
-    bounds = {vocabulary().bounds.get(key(word)) for word in words}
-    if words and None not in bounds and len(bounds) == 1:
-        parts.bound = parts.bound or bounds.pop()
-        return " "
-    plain = " ".join(word for word in words if key(word) not in vocabulary().bounds)
-    if _is_unit(inside) or _is_unit(plain):
-        parts.unit = parts.unit or (inside if _is_unit(inside) else plain)
-        parts.bound = parts.bound or next((b for b in bounds if b), None)
-        return " "
-    when = read_when(inside)
-    if when != When():
-        parts.when = _joined(parts.when, when)
-    parts.brackets.append(inside)
-    return " "
+def symbol_of(text: str) -> str | None:
+    """The field of a symbol standing alone in a symbol column ("C0", "R 1", "C_L", "B"); None where it has several."""
+    return vocabulary().symbols.get(key(text))
 
 
-def _joined(one: When, other: When) -> When:
-    return When(**{**one.model_dump(), **other.model_dump()})
-
-
-@cache
-def _years_pattern() -> re.Pattern[str]:
-    phrases = vocabulary().phrases
-    names = [*phrases.get("first_year", ()), *phrases.get("per_year", ())]
-    words = sorted(names, key=len, reverse=True)
-    one = "|".join(rf"(?<![^\W\d_]){re.escape(word)}(?![^\W_])" if word[0].isalpha() else re.escape(word) + r"(?![a-z])" for word in words)
-    years = "|".join(map(re.escape, phrases.get("years", ("years",))))
-    return re.compile(rf"(?P<many>\d{{1,2}})\s?-?(?:{years})(?![a-z])|(?P<one>{one})", re.IGNORECASE)
-
-
-def _take_years(parts: _Parts, text: str) -> str:
-    found = _years_pattern().search(text)
-    if not found:
-        return text
-    parts.when = _joined(parts.when, When(years=float(found["many"] or 1)))
-    return text[: found.start()] + " " + text[found.end() :]
-
-
-def _take_bound(parts: _Parts) -> None:
-    """Min and max words at either end belong to no wording; "typical", "nominal" and "standard" may."""
-    for _ in range(2):
-        words = parts.core.split()
-        if len(words) < 2:
-            return
-        for at, rest in ((-1, words[:-1]), (0, words[1:])):
-            bound = vocabulary().bounds.get(key(words[at]))
-            if bound in ("min", "max") and not key(" ".join(words)) in vocabulary().labels:
-                parts.bound = parts.bound or bound
-                parts.core = " ".join(rest).strip(_EDGE)
-                break
-        else:
-            return
-
-
-def _is_unit(text: str) -> bool:
-    return bool(text) and any(kind.unit(text) for kind in kinds().values())
-
-
-def _label(parts: _Parts, field: str, *, exact: bool = True, rest: str = "", symbol: bool = False) -> Label:
+def _label(parts: Parts, field: str, *, exact: bool = True, rest: str = "", symbol: bool = False) -> Label:
     return Label(field, parts.bound, parts.unit, parts.plus_minus, parts.when, exact, rest, symbol)
 
 
 def _named(core: str) -> str | None:
-    return vocabulary().labels.get(key(core))
+    wanted, labels = key(core), vocabulary().labels
+    return labels.get(wanted) or labels.get(wanted.replace("/", ""))
 
 
-def _exact(parts: _Parts) -> Label | None:
-    words = vocabulary()
-    if field := _named(parts.core):
-        return _label(parts, field)
-    if field := _named(" ".join([parts.core, *parts.brackets])):
-        return _label(parts, field)
-    stripped = _without_unit(parts)
-    if stripped and (field := _named(stripped)):
+def _exact(parts: Parts) -> Label | None:
+    for name in (parts.core, " ".join([parts.core, *parts.brackets])):
+        if field := _named(name):
+            return _label(parts, field)
+    if _symbol(parts.core, parts) is None and without_unit(parts) and (field := _named(parts.core)):
         return _label(parts, field)
     tokens = parts.core.split()
     for at, rest in ((-1, tokens[:-1]), (0, tokens[1:])):
-        if rest and words.bounds.get(key(tokens[at])) == "typ" and (field := _named(" ".join(rest))):
+        name = " ".join(rest)
+        if rest and vocabulary().bounds.get(key(tokens[at])) == "typ" and (field := _named(name) or _symbol(name, parts)):
             parts.bound = parts.bound or "typ"
-            return _label(parts, field)
+            return _label(parts, field, symbol=not _named(name))
     return None
 
 
-def _without_unit(parts: _Parts) -> str | None:
-    """The core without a unit at its end ("ESR Ω", "drive in µW", "cl pf")."""
-    tokens = parts.core.split()
-    for count in (1, 2):
-        tail = " ".join(tokens[-count:]).strip(",;/")
-        if len(tokens) > count and _is_unit(tail):
-            rest = tokens[:-count]
-            if key(rest[-1]) in ("in", "en"):
-                rest = rest[:-1]
-            if not rest:
-                return None
-            parts.unit = parts.unit or tail
-            parts.core = " ".join(rest)
-            _take_bound(parts)
-            return parts.core
-    return None
+_SAFE_LOWER = re.compile(r"esr|cl|[crlf]\d")
 
 
-def symbol_of(text: str) -> str | None:
-    """The field of a symbol standing alone ("C0", "R 1", "C_L", "B"), for a symbol column; None where it has several."""
-    return vocabulary().symbols.get(key(text))
-
-
-def _symbol(text: str) -> str | None:
-    """As `symbol_of`, for cells that may hold anything: of single letters only Q."""
-    wanted = key(text)
-    if len(wanted) == 1 and text.strip() != "Q":
+def _symbol(text: str, parts: Parts) -> str | None:
+    """As `symbol_of`, for cells that may hold anything: no single letter but Q, no lower-case word, none that is weak."""
+    wanted, printed = key(text), text.strip(EDGE)
+    if not wanted or len(wanted) > 12 or (len(wanted) == 1 and printed != "Q") or wanted in vocabulary().weak_symbols:
+        return None
+    if printed.isascii() and printed == printed.lower() and not parts.snake and not _SAFE_LOWER.fullmatch(wanted):
         return None
     return vocabulary().symbols.get(wanted)
 
 
-def _beside_symbol(parts: _Parts) -> Label | None:
-    names = [parts.core, *parts.brackets]
-    symbols = [(name, _symbol(name)) for name in names if len(key(name)) <= 12]
-    for name in parts.brackets:
-        if field := _named(name):
-            return _label(parts, field)
+def _beside_symbol(parts: Parts) -> Label | None:
+    """A wording with its symbol or another name beside it, or a symbol alone."""
     tokens = parts.core.split()
     for at in range(1, len(tokens)):
         head, tail = " ".join(tokens[:at]), " ".join(tokens[at:])
         for wording, symbol in ((head, tail), (tail, head)):
-            field = _named(wording.strip(_EDGE))
-            if field and len(key(symbol)) <= 12 and (symbol_of(symbol) == field or field in vocabulary().shared.get(key(symbol), ())):
+            field = _named(wording.strip(EDGE))
+            if field and _may_be(symbol, field):
                 return _label(parts, field)
-    for name, field in symbols:
-        if field and (name is parts.core or not parts.core.strip(_EDGE)):
-            return _label(parts, field, symbol=True)
+    for name in parts.brackets:
+        if (field := _named(name)) and not _fields_inside(parts.core).strong:
+            return _label(parts, field)
+    if field := _symbol(parts.core, parts) or _letter_with_unit(parts):
+        return _label(parts, field, symbol=True)
+    if not parts.core:
+        for name in parts.brackets:
+            if field := _symbol(name, parts):
+                return _label(parts, field, symbol=True)
     return None
 
 
-def _inside(parts: _Parts) -> Label | None:
+def _letter_with_unit(parts: Parts) -> str | None:
+    """ "f (MHz)": a single letter means its field where the unit beside it is one of that field."""
+    wanted = key(parts.core)
+    if len(wanted) != 1 or not parts.unit:
+        return None
+    fields = vocabulary().shared.get(wanted) or (vocabulary().symbols.get(wanted, ""),)
+    fitting = [field for field in fields if field and factor(parts.unit, field) is not None]
+    return fitting[0] if len(fitting) == 1 else None
+
+
+def _may_be(symbol: str, field: str) -> bool:
+    wanted = key(symbol)
+    return len(wanted) <= 12 and (vocabulary().symbols.get(wanted) == field or field in vocabulary().shared.get(wanted, ()))
+
+
+@dataclass(slots=True)
+class _Inside:
+    """Fields named by wordings inside a text, with the length of the wording, and what was left over."""
+
+    strong: dict[str, int]
+    weak: dict[str, int]
+    rest: list[str]
+
+
+@lru_cache(maxsize=8192)
+def _fields_inside(text: str) -> _Inside:
+    """What follows "at", "over", "in" and their like is a condition and names nothing, but for tolerance over temperature."""
+    known, words = vocabulary(), words_of(text)
+    inside = _Inside({}, {}, [])
+    first, condition = 0, False
+    while first < len(words):
+        run = known.labels.run_at(words, first)
+        if run is None:
+            printed = text[words[first].start : words[first].end]
+            condition = condition or printed.casefold() in known.at_words
+            symbol = known.symbols.run_at(words, first)
+            first = symbol.last + 1 if symbol else first + 1
+            if not symbol and words[first - 1].key not in known.filling and printed != "/":
+                inside.rest.append(printed)
+            continue
+        first = run.last + 1
+        if condition and inside.strong:
+            _add_condition(inside, run.meaning, text[run.start : run.end])
+            continue
+        target = inside.weak if run.key in known.weak else inside.strong
+        target[run.meaning] = max(target.get(run.meaning, 0), len(run.key))
+    return inside
+
+
+def _add_condition(inside: _Inside, field: str, printed: str) -> None:
+    if field == "operating_temperature_c" and _TOLERANCE in inside.strong:
+        inside.strong[_STABILITY] = inside.strong.pop(_TOLERANCE) + len(printed)
+    elif field not in inside.strong:
+        inside.rest.append(printed)
+
+
+_TOLERANCE, _STABILITY = "frequency_tolerance_ppm", "frequency_stability_ppm"
+
+
+def _inside(parts: Parts) -> Label | None:
+    text = " ".join([parts.core, *parts.brackets])
+    inside = _fields_inside(text)
+    named = inside.strong or inside.weak
+    if len(named) != 1 or _trap_in(text) is not None:
+        return None
+    field, length = next(iter(named.items()))
+    rest = " ".join(inside.rest)
+    left = len(key(rest))
+    if left > (1.5 * length if inside.strong else 0.5 * length):
+        return None
+    return _label(parts, field, exact=bool(inside.strong) and left == 0, rest=rest)
+
+
+def _run_together(parts: Parts) -> Label | None:
+    """Words without spaces ("Agingperyear", "LoadCapacitanceCL"): a wording first, then what may stand beside it."""
+    wanted, words = key(parts.core), vocabulary()
+    if len(wanted) < 9 or max(map(len, parts.core.split()), default=0) < 9:
+        return None
+    for length in range(len(wanted) - 1, 4, -1):
+        field, rest = words.labels.get(wanted[:length]), wanted[length:]
+        if field is None:
+            continue
+        if rest in words.bounds:
+            parts.bound = parts.bound or words.bounds[rest]
+        elif rest in one_year_keys():
+            parts.when = parts.when.model_copy(update={"years": 1.0})
+        elif words.symbols.get(rest) != field and rest not in words.filling:
+            return None
+        return _label(parts, field)
     return None
 
 
-def ambiguous_label(text: str) -> tuple[str, ...]:
-    """The fields that the label may mean where it means several ("Frequency tolerance / stability", "Δf/f"); else ()."""
-    parts = _take_apart(fold(text))
-    return vocabulary().shared.get(key(parts.core), ())
+@cache
+def _deletions() -> dict[str, set[str]]:
+    """Every long wording with each one character left out, to find a wording one slip away without comparing with all."""
+    index: dict[str, set[str]] = {}
+    for wording in vocabulary().labels:
+        if len(wording) >= 9 and wording.isalpha():
+            for shorter in _with_one_out(wording):
+                index.setdefault(shorter, set()).add(wording)
+    return index
 
 
-def role_of(text: str) -> str | None:
-    """What a table's head cell says of its column: min, typ, max, unit, parameter, symbol, condition, value, remarks ..."""
-    return vocabulary().roles.get(key(text))
+def _with_one_out(word: str) -> set[str]:
+    return {word} | {word[:at] + word[at + 1 :] for at in range(len(word))}
 
 
-def mode_of(text: str) -> str | None:
-    """ "fundamental", "third overtone" ... where `text` states one mode of vibration."""
-    return vocabulary().modes.get(key(text))
-
-
-def cut_of(text: str) -> str | None:
-    """ "AT", "BT", "SC", "tuning fork" ... where `text` states the cut."""
-    return vocabulary().cuts.get(key(text))
-
-
-def identity_label(text: str) -> str | None:
-    """ "part_number", "maker", "package", "stock_number", "customer", "date", "description" where the label asks for it."""
-    return vocabulary().identity.get(key(text))
-
-
-def attribute_label(text: str) -> str | None:
-    """The contract's attribute ("pads", "aec_q200", "moisture_level" ...) that the label names."""
-    return vocabulary().attributes.get(key(text))
-
-
-def trap_of(text: str) -> str | None:
-    """Why a row that looks like a field is none ("drive level dependency", "a reliability test"); None where it may be one."""
-    return vocabulary().traps.get(key(text))
-
-
-def oscillator_words(text: str) -> tuple[str, ...]:
-    """The words in `text` that only an oscillator's, resonator's or filter's sheet prints."""
-    return ()
-
-
-def not_stated(text: str) -> bool:
-    """Whether the cell says nothing: empty, "-", "—", "n/a", "0"."""
-    wanted = fold(text).casefold()
-    return not key(wanted) or wanted in vocabulary().phrases.get("not_stated", ())
+def _misspelt(parts: Parts) -> Label | None:
+    """One letter wrong, missing, too many or two of them swapped, in a wording of nine letters or more."""
+    wanted = key(parts.core)
+    if not 9 <= len(wanted) <= 60 or not wanted.isalpha() or _trap_in(parts.core) is not None:
+        return None
+    near = {wording for shorter in _with_one_out(wanted) for wording in _deletions().get(shorter, ())}
+    fields = {vocabulary().labels[wording] for wording in near}
+    return _label(parts, fields.pop(), exact=False) if len(fields) == 1 else None
 
 
 def find_labels(text: str) -> tuple[FoundLabel, ...]:
-    """Every label inside a longer folded text, from left to right, not overlapping; for prose and one-line dumps."""
-    return ()
+    """Every label inside a longer text, from left to right, not overlapping; positions are those of `fold(text)`.
+
+    For prose and one-line dumps. A wording that is part of many others ("frequency", "tolerance" alone) is not `exact`.
+    """
+    return _find_labels(fold(text))
+
+
+@lru_cache(maxsize=2048)
+def _find_labels(folded: str) -> tuple[FoundLabel, ...]:
+    known, words, nothing = vocabulary(), words_of(folded), Parts(core="")
+    found: list[FoundLabel] = []
+    first = 0
+    while first < len(words):
+        run = known.labels.run_at(words, first)
+        symbol = None if run else known.symbols.run_at(words, first)
+        if run is not None and not _BREAK.search(folded, run.start, run.end):
+            found.append(FoundLabel(run.start, run.end, Label(run.meaning, exact=run.key not in known.weak)))
+            first = run.last
+        elif symbol is not None and _symbol(folded[symbol.start : symbol.end], nothing):
+            found.append(FoundLabel(symbol.start, symbol.end, Label(symbol.meaning, symbol=True)))
+            first = symbol.last
+        first += 1
+    return tuple(found)
+
+
+# A wording does not go on over these.
+_BREAK = re.compile(r"[,;()]|\n\n")
+
+
+# --- heads, names and words that are no field
+
+
+def _names(text: str) -> list[str]:
+    """A head as printed, without brackets, and each of its languages or alternatives alone."""
+    folded = fold(text)
+    if len(folded) > LONGEST_HEAD:
+        return []
+    plain = re.sub(r"[(\[][^()\[\]]*[)\]]", " ", folded).strip(EDGE)
+    numbered = re.sub(r"^\s*\d{1,2}\s*[.)、]\s*", "", plain)
+    pieces = [piece for piece in re.split(r"[/|\n()\[\]:,]", folded) if piece.strip()]
+    latin = IDEOGRAPHS.sub(" ", folded).strip(EDGE)
+    return [folded, plain, numbered, *pieces, *IDEOGRAPHS.findall(folded), latin]
+
+
+def _meaning(text: str, table: dict[str, str]) -> str | None:
+    """What the head means; of several alternatives in it the first that is known."""
+    return next((table[wanted] for name in _names(text) if (wanted := key(name)) in table), None)
+
+
+@lru_cache(maxsize=8192)
+def role_of(text: str) -> str | None:
+    """What a table's head cell says of its column: min, typ, max, unit, parameter, symbol, condition, value, remarks ...
+
+    Also "mode", "cut", "band", "model", "code". A head that names a field ("ESR max") is asked of `read_label`.
+    """
+    return _meaning(text, vocabulary().roles)
+
+
+@lru_cache(maxsize=8192)
+def mode_of(text: str) -> str | None:
+    """ "fundamental", "third overtone" ... where `text` states one mode of vibration, else None.
+
+    "F", "T", "1", "3" count only as the whole of a cell; ask only where a mode is expected.
+    """
+    if code := vocabulary().mode_codes.get(key(text)):
+        return code
+    found = {run.meaning for run in vocabulary().modes.runs(fold(text)[:400])}
+    return found.pop() if len(found) == 1 else None
+
+
+_CUT_LETTERS = re.compile(r"[A-Z]{2}")
+
+
+@lru_cache(maxsize=8192)
+def cut_of(text: str) -> str | None:
+    """ "AT", "BT", "SC", "tuning fork" ... where `text` states one cut, else None; "at" in small letters is no cut."""
+    folded = fold(text)
+    found = set()
+    for run in vocabulary().cuts.runs(folded[:400]):
+        printed = folded[run.start : run.end]
+        if len(run.key) > 2 or _CUT_LETTERS.fullmatch(printed):
+            found.add(run.meaning)
+    return found.pop() if len(found) == 1 else None
+
+
+@lru_cache(maxsize=8192)
+def identity_label(text: str) -> str | None:
+    """ "part_number", "maker", "package", "stock_number", "customer", "date", "description" where the label asks for it."""
+    return _meaning(text, vocabulary().identity)
+
+
+@lru_cache(maxsize=8192)
+def attribute_label(text: str) -> str | None:
+    """The contract's attribute ("pads", "aec_q200", "moisture_level" ...) that the label names."""
+    return _meaning(text, vocabulary().attributes)
+
+
+@lru_cache(maxsize=8192)
+def trap_of(text: str) -> str | None:
+    """Why a row that looks like a field's is none ("drive level dependency", "a reliability test"), else None.
+
+    A label that is a field's exact wording is no trap, nor is a long text.
+    """
+    folded = fold(text)
+    if len(folded) > LONGEST_LABEL or role_of(text) is not None:
+        return None
+    parts = take_apart(folded)
+    if _exact(parts) is not None:
+        return None
+    return _trap_in(folded)
+
+
+def _trap_in(text: str) -> str | None:
+    known = vocabulary().traps.runs(text)
+    return known[0].meaning if known else None
+
+
+def oscillator_words(text: str) -> tuple[str, ...]:
+    """The words in `text` that only an oscillator's, resonator's or filter's sheet prints, each once, as printed."""
+    folded = fold(text)
+    found: dict[str, str] = {}
+    for run in vocabulary().oscillator.runs(folded):
+        found.setdefault(run.key, folded[run.start : run.end])
+    return tuple(found.values())
+
+
+def not_stated(text: str) -> bool:
+    """Whether the cell says nothing: empty, "-", "—", "n/a". A lone "0" is for `read_values` to judge by the field."""
+    folded = fold(text).casefold()
+    return not key(folded) or folded in vocabulary().phrases.get("not_stated", ())

@@ -1,0 +1,178 @@
+"""A label taken apart: symbol, unit, bound words, ±, conditions and footnote marks off, the wording itself left over."""
+
+from __future__ import annotations
+
+import re
+from dataclasses import dataclass, field
+from functools import cache
+
+from extract.band import joined, read_when
+from extract.fold import fold, key
+from extract.model import When
+from extract.runs import IDEOGRAPHS
+from extract.tokens import years_pattern
+from extract.units import kinds
+from extract.vocabulary import vocabulary
+
+EDGE = " \t\n:：.,;-=_/|~、。…"
+_NUMBERING = re.compile(r"^\s*(?:\(\d{1,2}\)|\d{1,2}(?:\.\d{1,2})?[.)、](?!\d)|[•■◆●▪○□・·*#>]+|-\s)\s*")
+_FOOTNOTE = re.compile(
+    r"(?:\s*(?:\*+\d{0,2}\)?|[†‡§]|\^\d{1,2}\)?|(?<=\s)\d{1,2}\)|\((?:note|\*|注|nb\.?)?\s?\*?\d\s?\)|※\d?|注\d?))+\s*$",
+    re.IGNORECASE,
+)
+_INNER_FOOTNOTE = re.compile(r"(?<=[a-z)])\^\d\)?|※\d?|\*\d\)?|\*+(?=\s|$)")
+_BRACKET = re.compile(r"[(\[{|]\s*([^()\[\]{}|]*?)\s*(?:[)\]}|]|$)")
+_SNAKE = re.compile(r"^[A-Za-z0-9]+(?:_[A-Za-z0-9]+)+$")
+_TORN = re.compile(r"(?<=[a-z])-\n(?=[a-z])")
+_PLUS_MINUS = re.compile(r"±(?!\s?\d)|\bplus[ /]?minus\b", re.IGNORECASE)
+_AT_REST = re.compile(r"\s*@.*$")
+
+
+@dataclass(slots=True)
+class Parts:
+    """A label taken apart: the wording in `core`, names in `brackets`, and what else stood there."""
+
+    core: str
+    brackets: list[str] = field(default_factory=list)
+    bound: str | None = None
+    unit: str | None = None
+    plus_minus: bool = False
+    when: When = When()
+    snake: bool = False
+
+
+def take_apart(folded: str) -> Parts:
+    """The parts of a folded label. The core keeps its case; "typical" and "nominal" stay in it (a wording may hold them)."""
+    text = _TORN.sub("", folded).replace("\n", " ")
+    text = _FOOTNOTE.sub("", _NUMBERING.sub("", text)).rstrip(EDGE)
+    text = _FOOTNOTE.sub("", text)
+    parts = Parts(core=text, snake=bool(_SNAKE.match(text)))
+    if parts.snake:
+        text = text.replace("_", " ")
+    if _PLUS_MINUS.search(text):
+        parts.plus_minus = True
+        text = _PLUS_MINUS.sub(" ", text)
+    text = _BRACKET.sub(lambda found: _keep_bracket(parts, found[1]), text)
+    text = _take_years(parts, _NUMBERING.sub("", text))
+    text = _take_condition(parts, text)
+    parts.core = " ".join(_INNER_FOOTNOTE.sub("", text).split()).strip(EDGE)
+    take_bound(parts)
+    return parts
+
+
+def _keep_bracket(parts: Parts, inside: str) -> str:
+    """Sort a bracket's content into bound, unit, condition or another name of the label."""
+    words = [word for word in re.split(r"[\s,;/]+", inside) if word]
+    bounds = [vocabulary().bounds.get(key(word)) for word in words]
+    if words and None not in bounds and len(set(bounds)) == 1:
+        parts.bound = parts.bound or bounds[0]
+        return " "
+    plain = " ".join(word for word, bound in zip(words, bounds, strict=True) if bound is None)
+    for unit in (inside.strip("± "), plain.strip("± ")):
+        if is_unit(unit):
+            parts.unit = parts.unit or unit
+            parts.plus_minus = parts.plus_minus or "±" in inside
+            parts.bound = parts.bound or next((bound for bound in bounds if bound), None)
+            return " "
+    if inside:
+        parts.when = joined(parts.when, read_when(inside))
+        parts.brackets.append(inside)
+    return " "
+
+
+@cache
+def _one_year_pattern() -> re.Pattern[str]:
+    lists = vocabulary().phrases
+    words = sorted({*lists.get("first_year", ()), *lists.get("per_year", ())}, key=len, reverse=True)
+    return re.compile("|".join(_standing_alone(word) for word in words), re.IGNORECASE)
+
+
+@cache
+def one_year_keys() -> frozenset[str]:
+    """The wordings of "per year" and "first year" as keys, for labels without spaces."""
+    lists = vocabulary().phrases
+    return frozenset(key(word) for word in (*lists.get("first_year", ()), *lists.get("per_year", ())))
+
+
+def _standing_alone(word: str) -> str:
+    before = r"(?<![^\W\d_])" if word[0].isalpha() and word[0].isascii() else ""
+    after = r"(?![^\W_])" if word[-1].isalnum() and word[-1].isascii() else ""
+    return before + re.escape(word) + after
+
+
+def _take_years(parts: Parts, text: str) -> str:
+    one, many = _one_year_pattern().search(text), years_pattern().search(text)
+    found = many if many and (not one or not one.start() <= many.start() < one.end()) else one
+    if not found:
+        return text
+    parts.when = joined(parts.when, When(years=float(many[1]) if found is many and many else 1.0))
+    return text[: found.start()] + " " + text[found.end() :]
+
+
+@cache
+def _condition_pattern() -> re.Pattern[str]:
+    """A condition at the end: "@ 25 °C", "at 100 V DC", "bei 25 °C", ", 25 °C"."""
+    words = [_standing_alone(word) for word in vocabulary().phrases.get("at", ()) if word not in ("over", "in")]
+    return re.compile(rf"\s*[,;/-]?\s*(?:@|{'|'.join(words)}|(?=[+-]?\d+\s?°\s?C))\s?(?:dc|ac|ta|tj|f|cl)?\s?=?\s?[+-]?\d.*$", re.IGNORECASE)
+
+
+def _take_condition(parts: Parts, text: str) -> str:
+    found = _condition_pattern().search(text) or _AT_REST.search(text)
+    if not found or found.start() < 1:
+        return text
+    printed = found[0].strip(EDGE)
+    parts.when = joined(parts.when, read_when(printed))
+    last = printed.split()[-1] if printed.split() else ""
+    parts.bound = parts.bound or vocabulary().bounds.get(key(last))
+    return text[: found.start()]
+
+
+def take_bound(parts: Parts) -> None:
+    """Min and max words at either end belong to no wording; "typical", "nominal" and "standard" may, and stay."""
+    for _ in range(2):
+        words = parts.core.split()
+        joined_cjk = _cjk_bound(parts)
+        if joined_cjk or len(words) < 2 or key(parts.core) in vocabulary().labels:
+            return
+        for at, rest in ((-1, words[:-1]), (0, words[1:])):
+            bound = vocabulary().bounds.get(key(words[at]))
+            if bound in ("min", "max"):
+                parts.bound = parts.bound or bound
+                parts.core = " ".join(rest).strip(EDGE)
+                break
+        else:
+            return
+
+
+def _cjk_bound(parts: Parts) -> bool:
+    """ "最大" and its like are written without a space before or after the wording."""
+    for word in vocabulary().phrases.get("max", ()) + vocabulary().phrases.get("min", ()):
+        if not IDEOGRAPHS.match(word):
+            continue
+        for rest in (parts.core.removesuffix(word), parts.core.removeprefix(word)):
+            if rest != parts.core and rest.strip(EDGE):
+                parts.bound = parts.bound or vocabulary().bounds[key(word)]
+                parts.core = rest.strip(EDGE)
+                return True
+    return False
+
+
+def without_unit(parts: Parts) -> bool:
+    """Take a unit off the end of the core ("ESR Ω", "drive in µW", "cl pf"); whether there was one."""
+    tokens = parts.core.split()
+    for count in (2, 1):
+        tail = " ".join(tokens[-count:]).strip(",;/±")
+        if len(tokens) > count and is_unit(tail):
+            rest = tokens[:-count]
+            if len(rest) > 1 and key(rest[-1]) in ("in", "en", "em"):
+                rest = rest[:-1]
+            parts.unit = parts.unit or tail
+            parts.core = " ".join(rest).strip(EDGE)
+            take_bound(parts)
+            return True
+    return False
+
+
+def is_unit(text: str) -> bool:
+    """Whether the whole text is a unit of some field, printed in any spelling."""
+    return bool(text) and len(text) < 24 and any(kind.fields and kind.unit(text) for kind in kinds().values())
