@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import re
 import zipfile
 from datetime import datetime
 from pathlib import Path
@@ -88,9 +89,9 @@ def _save_book(book: Workbook, path: Path) -> None:
         members = {name: archive.read(name) for name in archive.namelist()}
     # openpyxl stamps the moment of saving over the date that was set
     core = members["docProps/core.xml"].decode()
-    start, end = core.index("<dcterms:modified"), core.index("</dcterms:modified>")
-    stamp = f'<dcterms:modified xsi:type="dcterms:W3CDTF">{MADE.isoformat()}Z'
-    members["docProps/core.xml"] = (core[:start] + stamp + core[end:]).encode()
+    members["docProps/core.xml"] = re.sub(
+        r"(<dcterms:modified[^>]*>)[^<]*", rf"\g<1>{MADE.isoformat()}Z", core
+    ).encode()
     with zipfile.ZipFile(path, "w") as archive:
         for name, data in members.items():
             archive.writestr(name, data)
