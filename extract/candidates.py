@@ -251,6 +251,8 @@ def _one_row(
         doubts += read_value.doubts
         when = merged(when, kept(read_value.when, label.field))
     pieces = [value.piece for value, _ in parts]
+    if any(value.guessed for value, _ in parts):
+        doubts.append("the heading over this column could not be read; its place among the others says min, typ or max")
     if (
         field_of(label.field).sign == "negative"
         and bounds["max"] is not None

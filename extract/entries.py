@@ -40,13 +40,15 @@ class Value:
     """A printed value and what its column says of it.
 
     `nominal`: one value merged over Min, Typ and Max. `governed`: the sheet's only value column, with one bound word
-    over all rows. `subject`: the model, package or load in the column's head.
+    over all rows. `guessed`: the heading could not be read, and the column's place says the bound. `subject`: the
+    model, package or load in the column's head.
     """
 
     piece: Placed
     bound: Bound | None = None
     nominal: bool = False
     governed: bool = False
+    guessed: bool = False
     subject: str = ""
 
 

@@ -29,6 +29,7 @@ class Head:
     trap: str | None = None
     unit: str = ""
     extra: tuple[str, ...] = ()
+    guessed: bool = False
 
     @property
     def name(self) -> str | None:

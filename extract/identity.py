@@ -119,23 +119,29 @@ def _segments(text: Text) -> list[str]:
 
 
 def _repeated_name(texts: Sequence[Text], headers: Sequence[Text]) -> str | None:
-    """One proper word that stands alone in a page header or footer, or twice in the sheet."""
-    generic = {*identity_words()["maker"]["generic"]}
-    alone: Counter[str] = Counter()
-    everything = " ".join(fold(text.piece.text) for text in [*texts, *headers]).casefold()
-    for text in [*texts, *headers]:
+    """A proper word or two that stand alone at the top, in a page header or footer, or again and again."""
+    scores: Counter[str] = Counter()
+    for index, text in enumerate([*headers, *texts]):
+        top = 2 if index < len(headers) + 3 else 0
         for segment in _segments(text):
-            word = unfolded(segment)
-            if (
-                re.fullmatch(r"[A-ZÀ-Þ][A-Za-zÀ-ÿ]{3,}", word)
-                and word.casefold() not in generic
-                and not meaning(word).known
-            ):
-                alone[word] += 1
-    for word, _ in alone.most_common():
-        if everything.count(word.casefold()) >= 2:
-            return word
-    return None
+            for piece in re.split(r" - |[|:;,]", unfolded(segment)):
+                name = piece.strip(" .")
+                if _is_proper(name):
+                    scores[name.casefold()] += 1 + (top if scores[name.casefold()] == 0 else 0)
+    best = max(scores, key=lambda name: scores[name], default=None)
+    if best is None or scores[best] < 2:
+        return None
+    everything = " ".join(unfolded(text.piece.text) for text in [*headers, *texts])
+    found = re.search(re.escape(best), everything, re.IGNORECASE)
+    return found[0] if found else None
+
+
+def _is_proper(name: str) -> bool:
+    words = name.split()
+    generic = {*identity_words()["maker"]["generic"]}
+    if not re.fullmatch(r"[A-ZÀ-Þ][^\W\d_]{2,}(?: (?:& )?[A-ZÀ-Þ][^\W\d_]+){0,2}", name) or meaning(name).known:
+        return False
+    return not any(word.casefold() in generic for word in words) and not any(meaning(word).known for word in words)
 
 
 def _labelled(entry: Entry, what: str) -> str | None:

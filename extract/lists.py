@@ -6,6 +6,7 @@ frequency band, mode, load or package.
 
 from __future__ import annotations
 
+import re
 from collections.abc import Iterator, Sequence
 from dataclasses import dataclass, field, replace
 from functools import lru_cache
@@ -17,9 +18,10 @@ from extract.drafts import Draft
 from extract.entries import Entry, Listing, Placed
 from extract.fields import field_of
 from extract.fold import fold
-from extract.heads import Head, interpret, is_unit
+from extract.heads import BOUNDS, Head, interpret, is_unit
 from extract.meaning import meaning, part_tokens
 from extract.model import When
+from extract.units import factor
 from extract.wording import Label
 
 KEYS = ("frequency_mhz", "load_capacitance_pf")
@@ -52,7 +54,9 @@ def _column(index: int, levels: tuple[str, ...], title: str) -> _Column:
     for extra in head.extra:
         column.when = merged(column.when, condition_of(extra))
     column.subject = " ".join(extra for extra in head.extra if condition_of(extra) == When())
-    if head.trap and not head.label and not head.identity and not head.attribute:
+    if (symbol := _by_unit(head)) is not None:
+        column.label = symbol
+    elif head.trap and not head.label and not head.identity and not head.attribute:
         column.use = "trap"
     elif head.label is not None:
         column.label = replace(
@@ -65,6 +69,24 @@ def _column(index: int, levels: tuple[str, ...], title: str) -> _Column:
     elif (head.unit or head.role in ("value", "min", "typ", "max")) and (titled := meaning(title).label) is not None:
         column.label = replace(titled, bound=head.bound or titled.bound, unit=head.unit or titled.unit)
     return column
+
+
+_SYMBOL_AND_UNIT = re.compile(r"\s*(?P<symbol>[^\W\d_]\w{0,3}(?:\s(?:min|max|typ)\.?)?)\s*[(\[|/,]?\s*(?P<unit>[^()\[\]]+?)[)\]]?\s*")
+
+
+def _by_unit(head: Head) -> Label | None:
+    """A symbol that several fields share, or a letter, with a unit that only one of them has: "f (MHz)", "T min (°C)"."""
+    match = _SYMBOL_AND_UNIT.fullmatch(fold(" ".join(head.levels)))
+    if head.name is not None or match is None:
+        return None
+    word = re.sub(r"(?i)[\s_]*(min|max|typ)\.?$", "", match["symbol"])
+    names = [name for name in (wording.symbol_of(word), *wording.ambiguous_label(word)) if name]
+    for name in names:
+        if factor(match["unit"].strip(" ±"), name) is not None:
+            found = re.search(r"(?i)min|max|typ", match["symbol"])
+            bound = head.bound or (BOUNDS[found[0].casefold()] if found else None)
+            return Label(name, bound=bound, unit=match["unit"], plus_minus="±" in match["unit"])
+    return None
 
 
 def _settle(columns: list[_Column], listing: Listing) -> None:
@@ -258,7 +280,7 @@ def _series_drafts(listing: Listing, columns: list[_Column]) -> list[Draft]:
 
 
 def _row_key(row: Sequence[Placed | None], columns: list[_Column], section: str, *, alone: bool) -> tuple[When, str]:
-    when, subject = condition_of(section), ""
+    when, subject = condition_of(section), section if part_tokens(section) else ""
     for column in columns:
         cell = row[column.index]
         if cell is None or not cell.text.strip():

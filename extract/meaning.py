@@ -4,6 +4,7 @@ from __future__ import annotations
 
 import re
 import tomllib
+from collections.abc import Callable, Sequence
 from dataclasses import dataclass
 from functools import lru_cache
 from importlib import resources
@@ -14,6 +15,12 @@ from extract.fold import fold
 from extract.wording import Label
 
 _DIGIT = re.compile(r"\d")
+# A number that stands by itself or before a unit; "5hwQ2IN" and "C0" hold none.
+_NUMBER = re.compile(
+    r"(?<![A-Za-z0-9_])[-+±≤≥<>~]?\s?\d+(?:[.,]\d+)*(?=$|[\s%°)\]~,;/…*×-]|[kKMmGμun]?(?:Hz|HZ|hz|F|f|Ω|[oO]hms?|W|H|V|A|R)\b|ppm|PPM|C\b)"
+)
+_BRACKETED = re.compile(r"[(\[（]([^()\[\]（）]*)[)\]）]")
+_NUMBERING = re.compile(r"^\s*(?:\(?\d{1,2}[.)、]\s?|[•●■◆▪·*-]\s*)(?=\D)")
 _PART_TOKEN = re.compile(r"(?<![\w.,/±+×-])[A-Z0-9](?:[A-Za-z0-9]|[-./,](?=[A-Za-z0-9]))+(?![\w°%])")
 _AMOUNT = re.compile(
     r"[-+]?[\d.,]+(?:[-~/][\d.,]+)*(?:[A-Za-z]{1,2}?(?:Hz|HZ|hz|F|f|ppm|PPM|pF|C|V|A|W|H|mm|MM|s|S|g|h|R|k|K|M|pcs|th|rd|st|nd|OT|ot|Vdc|VDC|dc|ohm|Ohm|ohms|Ohms))*"
@@ -50,17 +57,33 @@ class Meaning:
 
 @lru_cache(maxsize=16384)
 def meaning(text: str) -> Meaning:
-    """Look `text` up in all vocabularies."""
+    """Look `text` up in all vocabularies; a name in two languages, or numbered, is looked up by its parts as well."""
     folded = fold(text)
+    number = bool(_NUMBER.search(folded))
     if not folded or len(folded) > 120:
-        return Meaning(None, None, None, None, None, bool(_DIGIT.search(folded)))
-    role = wording.role_of(folded)
-    identity = wording.identity_label(folded)
-    attribute = wording.attribute_label(folded)
+        return Meaning(None, None, None, None, None, number)
+    names = _names(folded)
+    role = _first(wording.role_of, names)
+    identity = _first(wording.identity_label, names)
+    attribute = _first(wording.attribute_label, names)
     label = None if role or identity else wording.read_label(folded)
-    trap = wording.trap_of(folded)
+    trap = _first(wording.trap_of, names)
     known = role or identity or attribute or (label is not None and label.exact)
-    return Meaning(label, role, identity, attribute, trap, bool(_DIGIT.search(folded)) and not known)
+    return Meaning(label, role, identity, attribute, trap, number and not known)
+
+
+def _names(folded: str) -> list[str]:
+    """The text, the text without numbering, its lines, and what stands outside and inside brackets."""
+    plain = _NUMBERING.sub("", folded).strip(" :")
+    names = [folded, plain]
+    if "\n" in plain or "(" in plain or "[" in plain:
+        names += [line.strip(" ()[]:") for line in plain.split("\n")]
+        names += [_BRACKETED.sub(" ", plain).strip(), *_BRACKETED.findall(plain)]
+    return [name for name in dict.fromkeys(names) if name]
+
+
+def _first(look_up: Callable[[str], str | None], names: Sequence[str]) -> str | None:
+    return next((found for name in names if (found := look_up(name)) is not None), None)
 
 
 @lru_cache(maxsize=16384)

@@ -9,12 +9,14 @@ from dataclasses import dataclass, field
 from extract.conditions import kinds_of
 from extract.documents.model import Cell
 from extract.entries import Entry, Item, Piece, Text, Value
-from extract.heads import Head, is_unit
+from extract.fold import fold
+from extract.heads import BOUNDS, Head, is_unit
 from extract.meaning import is_part_token, meaning
 
 Row = Sequence[Cell | None]
 _VALUE_ROLES = ("value", "min", "typ", "max")
 _CONDITION_ROLES = ("condition", "remarks")
+_PLAIN_NUMBER = re.compile(r"[-+±]?\s?\d+(?:[.,]\d+)*|-+")
 _SYMBOL = re.compile(r"[^\W\d]\w{0,2}[ _]?\w{0,8}(?:/[^\W\d]\w{0,3}[ _]?\w{0,6})?(?:\(\w\))?")
 
 
@@ -39,7 +41,7 @@ def parameter_entries(body: Sequence[Row], heads: Sequence[Head], title: str) ->
     """Entries of a parameter table, or of pairs of label and value where `heads` is empty."""
     for first, last in _halves(body, heads):
         part = [row[first:last] for row in body]
-        columns = list(heads[first:last]) or _guessed_heads(part)
+        columns = _bounds_by_place(list(heads[first:last])) or _guessed_heads(part)
         rows = list(_rows(part, columns, title))
         _hand_down_labels(rows)
         for row in rows:
@@ -70,6 +72,28 @@ def _mostly_symbols(texts: list[str]) -> bool:
     return sum(len(text) <= 8 for text in texts) >= 0.6 * len(texts)
 
 
+def _bounds_by_place(heads: list[Head]) -> list[Head]:
+    """Unreadable heads on both sides of a Typ column are Min and Max."""
+    for index in range(1, len(heads) - 1):
+        left, middle, right = heads[index - 1 : index + 2]
+        if middle.bound == "typ" and any(_is_subject(side) for side in (left, right)):
+            for at, bound in ((index - 1, BOUNDS["min"]), (index + 1, BOUNDS["max"])):
+                if _is_subject(heads[at]):
+                    heads[at] = Head(heads[at].levels, role=bound, bound=bound, guessed=True)
+    return heads
+
+
+def _numeric_columns(rows: Sequence[Row], heads: Sequence[Head]) -> list[int]:
+    """Columns of plain numbers that no heading names."""
+    found = []
+    for column, head in enumerate(heads):
+        texts = [cell.text for row in rows if column < len(row) and (cell := row[column]) is not None]
+        numbers = sum(bool(_PLAIN_NUMBER.fullmatch(fold(text))) for text in texts)
+        if head.role is None and numbers >= 2 and numbers >= 0.5 * len(texts):
+            found.append(column)
+    return found
+
+
 def _guessed_heads(rows: Sequence[Row]) -> list[Head]:
     """Roles of columns without a heading, as far as all their cells agree."""
     width = max(len(row) for row in rows)
@@ -83,6 +107,10 @@ def _guessed_heads(rows: Sequence[Row]) -> list[Head]:
             heads.append(Head((), role="symbol"))
         else:
             heads.append(Head(()))
+    numeric = _numeric_columns(rows, heads)
+    if len(numeric) == 3:
+        for column, bound in zip(numeric, ("min", "typ", "max"), strict=True):
+            heads[column] = Head((), role=bound, bound=BOUNDS[bound], guessed=True)
     return heads
 
 
@@ -199,6 +227,7 @@ def _values(cell: Cell, span: list[Head], *, governed: bool) -> list[Value]:
                 bound=next(iter(bounds)) if len(bounds) == 1 else None,
                 nominal=len(bounds) > 1,
                 governed=governed,
+                guessed=any(head.guessed for head in group),
                 subject=subject,
             )
         )

@@ -72,6 +72,8 @@ def _of_section(section: Section, shared: Draft | None, blocks: Blocks) -> list[
     if shared is not None:
         _inherit(own, shared)
     if rows:
+        stated = [each for each in own.candidates if each.source not in ("loose", "prose")]
+        own.candidates = stated
         for row in rows:
             _inherit(row, own)
         return rows

@@ -56,9 +56,18 @@ def _label_start(text: str, begin: int, end: int) -> int | None:
     """Where the longest known label that ends at `end` begins; None where none does."""
     starts = [begin + match.start() for match in _WORD_START.finditer(text[begin:end])]
     for start in starts[-10:]:
-        if is_label(text[start:end]):
+        if is_label(text[start:end]) and _may_follow(text[start:end], text[end + 1 :]):
             return start
     return None
+
+
+def _may_follow(label: str, rest: str) -> bool:
+    """Whether what stands behind the colon can be a value: behind a field's label a number, and soon."""
+    known = meaning(label.strip(" -–*·、,.:")).label
+    if known is None:
+        return True
+    number = re.search(r"\d", rest)
+    return number is not None and number.start() <= (4 if known.symbol else 30)
 
 
 def is_label(text: str) -> bool:

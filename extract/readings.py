@@ -156,6 +156,8 @@ def _contradictions_marked(candidates: list[Candidate]) -> list[Candidate]:
 
 
 def _contradicts(first: Candidate, second: Candidate) -> bool:
+    if first.source == "key" and second.source == "key":
+        return False
     if first.when != second.when:
         return _overlap(first.when, second.when) and not _same_row(first, second)
     return not _same_cell(first, second)

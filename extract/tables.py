@@ -53,6 +53,7 @@ class _Block:
     heads: list[Row]
     body: list[Row]
     title: str = ""
+    above: str = ""
 
 
 def distinct(row: Row) -> list[Cell]:
@@ -71,7 +72,8 @@ def _blocks(rows: list[Row], title: str) -> Iterator[_Block]:
         if count := _head_rows(rows, index):
             if block.body:
                 yield block
-            block = _Block(rows[index : index + count], [], _title_before(block.body) or title)
+            above = _title_before(block.body) if block.heads or block.body else ""
+            block = _Block(rows[index : index + count], [], title, above)
             index += count
         else:
             block.body.append(rows[index])
@@ -82,8 +84,9 @@ def _blocks(rows: list[Row], title: str) -> Iterator[_Block]:
 
 def _title_before(body: list[Row]) -> str:
     """A spanning row just above a heading is the new block's title."""
-    if body and len(cells := distinct(body[-1])) == 1 and not meaning(cells[0].text).value:
-        return cells[0].text
+    if body and len(cells := distinct(body[-1])) == 1:
+        text = cells[0].text
+        return text if not meaning(text).value or is_part_token(text) else ""
     return ""
 
 
@@ -171,7 +174,7 @@ def _read_block(block: _Block, table: Table) -> Iterator[Item]:
     if heads and _is_listing(block, heads):
         yield from _listings(block, heads, table)
         return
-    yield from parameter_entries(block.body, heads, block.title)
+    yield from parameter_entries(block.body, heads, block.above or block.title)
 
 
 def _levels(block: _Block) -> list[tuple[str, ...]]:
@@ -207,7 +210,7 @@ def _starts_with_label(row: Row) -> bool:
 
 def _listings(block: _Block, heads: list[Head], table: Table) -> Iterator[Item]:
     """The block as one listing, or as one for each group of columns where the headings repeat side by side."""
-    sections, rows = _sectioned(block.body)
+    sections, rows = _sectioned(block.body, block.above)
     for first, last in _folds(heads):
         columns = tuple(Column(head.levels) for head in heads[first:last])
         part = [row[first:last] for row in rows]
@@ -222,11 +225,10 @@ def _listings(block: _Block, heads: list[Head], table: Table) -> Iterator[Item]:
             )
 
 
-def _sectioned(body: list[Row]) -> tuple[list[str], list[Row]]:
+def _sectioned(body: list[Row], section: str) -> tuple[list[str], list[Row]]:
     """Spanning rows are the section of the rows below them."""
     sections: list[str] = []
     rows: list[Row] = []
-    section = ""
     for row in body:
         cells = distinct(row)
         if len(cells) == 1 and len(row) > 2 and (cells[0].column_span > 1 or row[0] is cells[0]):
