@@ -71,33 +71,6 @@ class Crystal:
             yield array(getattr(self, field.name))
 
 
-def fundamental_of(crystal: Crystal, overtone: ArrayLike, resistance_ratio: ArrayLike) -> Crystal:
-    """The fundamental of an overtone part of which only the overtone is stated: fs/n, n² C1, L1 and C0 the same.
-
-    Parameters
-    ----------
-    crystal : Crystal
-        As stated, for the overtone.
-    overtone : 1
-        n = 3, 5, ...
-    resistance_ratio : 1
-        R1 of the fundamental over the stated one: run it from 1/n² to 1.
-
-    Returns
-    -------
-    Crystal
-        With an infinite rated load, so that its nominal frequency is its series resonance and its L1 the overtone's.
-
-    References
-    ----------
-    ST AN2867 (2025), section 3.9: C1 of the third overtone is a ninth of the fundamental's, R1 about three times it.
-    """
-    frequency, load, c0, c1, r1 = crystal
-    n = array(overtone)
-    fs = motional.series_resonance_mhz(frequency, c0, c1, load)
-    return Crystal(fs / n, np.inf, c0, c1 * n**2, r1 * array(resistance_ratio))
-
-
 @dataclass(frozen=True)
 class Arm:
     """The motional arm in ohm, rad/s and farad. A pull is (ω - ωs)/ωs, `rated_pull` that of the nominal frequency."""
