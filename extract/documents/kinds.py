@@ -26,7 +26,9 @@ SHEET_SUFFIXES: dict[str, Kind] = {
     **dict.fromkeys((".png", ".jpg", ".jpeg", ".tif", ".tiff", ".bmp", ".gif"), "image"),
 }
 _DELIMITED_NAMES = frozenset({".csv", ".tsv", ".tab", ".psv"})
-_TEXT_NAMES = frozenset({".txt", ".md", ".markdown", ".eml", ".text", ".log"})
+_MARKDOWN_NAMES = frozenset({".md", ".markdown"})
+_WEB_NAMES = frozenset({".html", ".htm", ".xhtml"})
+_HTML_START = re.compile(rb"(?:\xef\xbb\xbf|\xff\xfe|\xfe\xff)?\s*<(?:!doctype html|html)", re.IGNORECASE)
 _HOW_TO_SAVE = "Save it as PDF, XLSX, CSV, HTML, DOCX, text, PNG or JPEG."
 
 
@@ -81,7 +83,7 @@ def _read_zip(data: bytes, suffix: str) -> Document:
     if any(part.startswith("xl/") for part in names) or "opendocument.spreadsheet" in kind:
         from extract.documents import workbook
 
-        return workbook.read(data)
+        return workbook.read_open(data) if "opendocument" in kind else workbook.read(data)
     if "word/document.xml" in names:
         from extract.documents import worddoc
 
@@ -112,8 +114,7 @@ def _utf16(text: str) -> bytes:
 
 
 def _read_text(data: bytes, suffix: str) -> Document:
-    from extract.documents import delimited, text, webpage
-    from extract.documents.decoding import decode
+    from extract.documents import delimited, mail, text, webpage
 
     if _is_binary(data):
         raise DocumentError(f"The file is of an unknown binary kind. {_HOW_TO_SAVE}")
@@ -121,22 +122,26 @@ def _read_text(data: bytes, suffix: str) -> Document:
         raise DocumentError("The file is in Rich Text Format. Save it as DOCX or PDF.")
     if suffix in _DELIMITED_NAMES:
         return delimited.read(data)
-    head = data[:4096].replace(b"\0", b"")
-    is_web_name = suffix in (".html", ".htm", ".xhtml", ".mht", ".mhtml")
-    if suffix not in (".md", ".markdown", ".eml") and (
-        len(_HTML_TAGS.findall(head)) > 2
-        or re.match(rb"(?:\xef\xbb\xbf)?\s*<(?:!doctype html|html)", head, re.I)
-        or is_web_name
-    ):
+    if mail.is_mail(data):
+        return mail.read(data)
+    if suffix in _MARKDOWN_NAMES:
+        return text.read(data)
+    if suffix in _WEB_NAMES or _is_web_page(data):
         return webpage.read(data)
+    return delimited.read(data) if _is_list(data) else text.read(data)
+
+
+def _is_web_page(data: bytes) -> bool:
+    head = data[:4096].replace(b"\0", b"")
+    return bool(_HTML_START.match(head)) or len(_HTML_TAGS.findall(head)) > 2
+
+
+def _is_list(data: bytes) -> bool:
+    from extract.documents import delimited, text
+    from extract.documents.decoding import decode
+
     content, _ = decode(data)
-    if (
-        suffix not in (".md", ".markdown", ".eml")
-        and not text.is_markdown(content)
-        and delimited.looks_delimited(content)
-    ):
-        return delimited.read(data)
-    return text.read(data)
+    return not text.is_markdown(content) and delimited.looks_delimited(content)
 
 
 def _is_binary(data: bytes) -> bool:

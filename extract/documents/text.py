@@ -35,8 +35,8 @@ def read(data: bytes) -> Document:
     lines = [(number, line) for number, line in enumerate(_LINE_END.split(text), start=1)]
     if is_markdown(text):
         cleaned, struck = _without_markup(lines)
-        return Document("text", tuple(_blocks(cleaned)), notes=(*notes, *struck))
-    return Document("text", tuple(_blocks(lines)), notes=notes)
+        return Document("text", tuple(blocks_of(cleaned)), notes=(*notes, *struck))
+    return Document("text", tuple(blocks_of(lines)), notes=notes)
 
 
 def is_markdown(text: str) -> bool:
@@ -65,7 +65,8 @@ def _without_markup(lines: Numbered) -> tuple[list[tuple[int, str]], list[Note]]
     return cleaned, notes
 
 
-def _blocks(lines: Numbered) -> Iterator[Table | Line]:
+def blocks_of(lines: Numbered) -> Iterator[Table | Line]:
+    """Tables and lines of numbered lines of text."""
     index = 0
     while index < len(lines):
         number, text = lines[index]

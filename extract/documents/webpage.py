@@ -3,51 +3,40 @@
 from __future__ import annotations
 
 import re
-from collections.abc import Iterator
-from dataclasses import dataclass, field
+from collections.abc import Iterator, Sequence
+from dataclasses import dataclass, field, replace
 
 from lxml import etree
 from lxml import html as lxml_html
 
-from extract.documents import marks
+from extract.documents import text as plain
 from extract.documents.decoding import decode
 from extract.documents.grid import address
 from extract.documents.model import Cell, Document, DocumentError, Line, Segment, Table
-from extract.documents.spacing import pieces
-from extract.model import Note, Where
+from extract.documents.webtext import BLOCKS, inline, is_leaf, line_of, prune, text_of, tidy
+from extract.model import Where
 
-_DROPPED = frozenset(
-    {
-        "script", "style", "nav", "noscript", "template", "svg", "math", "iframe", "object", "select", "option",
-        "button", "input", "textarea", "head", "title", "link", "meta",
-    }
-)  # fmt: skip
-_STRUCK = frozenset({"del", "s", "strike"})
-_BLOCKS = frozenset(
-    {
-        "p", "div", "section", "article", "main", "header", "footer", "aside", "ul", "ol", "li", "dl", "dt", "dd",
-        "h1", "h2", "h3", "h4", "h5", "h6", "pre", "blockquote", "figure", "figcaption", "form", "fieldset",
-        "address", "details", "summary", "center", "hr", "tr", "td", "th", "caption", "table", "body", "html",
-    }
-)  # fmt: skip
 _HEADINGS = frozenset({"h1", "h2", "h3", "h4", "h5", "h6"})
 _META = re.compile(
     rb"""<meta[^>]+charset\s*=\s*["']?\s*([\w-]+)|<\?xml[^>]+encoding\s*=\s*["']([\w-]+)""", re.IGNORECASE
 )
-_SPACES = re.compile(r"[ \t\r\n\f\u00a0\u2002-\u200a\u202f]+")
 _MOST_SPAN = 1000
+_LEAST_ALIKE = 3
 
 
 def read(data: bytes) -> Document:
     """Tables and lines of a page; `where` is the table and cell, or the line that the text starts on."""
     declared = _META.search(data[:4096])
     encoding = next((group.decode("ascii") for group in declared.groups() if group), None) if declared else None
-    text, notes = decode(data, declared=encoding)
+    content, notes = decode(data, declared=encoding)
     parser = lxml_html.HTMLParser(encoding="utf-8", huge_tree=True, remove_comments=True, remove_pis=True)
+    unmarked = re.sub(r"^\s*<\?xml[^>]*\?>", "", content)
     try:
-        root = lxml_html.document_fromstring(_without_declaration(text).encode("utf-8", "replace"), parser=parser)
+        root = lxml_html.document_fromstring(unmarked.encode("utf-8", "replace"), parser=parser)
     except (etree.ParserError, etree.XMLSyntaxError) as fault:
         raise DocumentError("The web page is empty. Save it again from the browser, with its content.") from fault
+    titles = [tidy(title.text or "") for title in root.iter("title")]
+    notes += tuple(prune(root))
     page = _Page()
     page.walk(root)
     page.close()
@@ -55,11 +44,8 @@ def read(data: bytes) -> Document:
         raise DocumentError(
             "The web page holds no text; a script may fill it in. Print it to PDF in the browser, or copy its text."
         )
-    return Document("html", tuple(page.blocks), notes=notes + tuple(page.notes))
-
-
-def _without_declaration(text: str) -> str:
-    return re.sub(r"^\s*<\?xml[^>]*\?>", "", text)
+    headers = tuple(Line((Segment(title, Where(line=1)),), Where(line=1)) for title in titles if title)
+    return Document("html", tuple(page.blocks), page_headers=headers, notes=notes)
 
 
 @dataclass(slots=True)
@@ -67,204 +53,188 @@ class _Page:
     """Collects blocks while it walks over the elements."""
 
     blocks: list[Table | Line] = field(default_factory=list)
-    notes: list[Note] = field(default_factory=list)
     tables: int = 0
-    term: list[str] = field(default_factory=list)
-    words: list[str] = field(default_factory=list)
-    line_number: int = 1
+    words: str = ""
+    line: int = 1
     heading: bool = False
 
     def walk(self, element: etree._Element) -> None:
-        """Take an element's text and children in; a block ends the line before and after it."""
-        if not isinstance(element.tag, str):
-            return
-        tag = element.tag.lower()
-        if tag in _DROPPED or _is_hidden(element):
-            return
-        if tag == "table":
+        """Take in an element; a block ends the line before and after it."""
+        tag = element.tag if isinstance(element.tag, str) else ""
+        if tag in ("table", "dl", "pre"):
             self.close()
-            self._table(element)
-            return
-        if tag == "dl":
+            {"table": self._table, "dl": self._definitions, "pre": self._preformatted}[tag](element)
+        elif tag in BLOCKS:
             self.close()
-            self._definitions(element)
-            return
-        is_block = tag in _BLOCKS
-        if is_block or tag == "br":
+            self.line = line_of(element, self.line)
+            self.heading = tag in _HEADINGS
+            if not self._alike(element):
+                self._content(element)
             self.close()
-            self.line_number = _line_of(element, self.line_number)
-        if tag in _HEADINGS:
-            self.heading = True
-        if not is_block and tag != "br" and not len(element):
-            self.words.append(_inline(element, "".join(self.words)))
-            return
-        self._content(element, keep_lines=tag == "pre")
-        if is_block:
-            self.close()
-        if tag in _HEADINGS:
             self.heading = False
+        elif tag and is_leaf(element):
+            self._text(inline(element, self.words))
+        elif tag:
+            self._content(element)
 
-    def _content(self, element: etree._Element, *, keep_lines: bool) -> None:
-        if keep_lines:
-            for offset, line in enumerate("".join(str(part) for part in element.itertext()).split("\n")):
-                self.line_number = (_line_of(element, self.line_number)) + offset
-                self.words.append(line)
-                self.close(keep_gaps=True)
-            return
-        self.words.append(element.text or "")
+    def _content(self, element: etree._Element) -> None:
+        self._text(re.sub(r"\s+", " ", element.text or ""))
         for child in element:
             self.walk(child)
-            self.words.append(child.tail or "")
+            self._text(re.sub(r"\s+", " ", child.tail or ""))
 
-    def close(self, *, keep_gaps: bool = False) -> None:
+    def _text(self, text: str) -> None:
+        """Take in running text, whose newlines are breaks."""
+        first, *others = text.split("\n")
+        self.words += first
+        for other in others:
+            self.close()
+            self.words = other
+
+    def close(self) -> None:
         """End the line."""
-        text = "".join(self.words)
-        self.words = []
-        if keep_gaps:
-            texts = [piece.text for piece in pieces(text.replace("\u00a0", " "))]
-        else:
-            tidy = _SPACES.sub(" ", text).strip()
-            texts = [tidy] if tidy else []
-        if texts:
-            where = Where(line=self.line_number)
-            self.blocks.append(Line(tuple(Segment(part, where) for part in texts), where, heading=self.heading))
+        self._line([tidy(self.words)], self.line)
+        self.words = ""
+
+    def _line(self, texts: Sequence[str], number: int) -> None:
+        where = Where(line=number)
+        segments = tuple(Segment(text, where) for text in texts if text)
+        if segments:
+            self.blocks.append(Line(segments, where, heading=self.heading))
+
+    def _preformatted(self, element: etree._Element) -> None:
+        content = "".join(str(part) for part in element.itertext())
+        start = line_of(element, self.line)
+        self.blocks.extend(plain.blocks_of(list(enumerate(content.split("\n"), start=start))))
 
     def _definitions(self, element: etree._Element) -> None:
-        """One line for each term and its description."""
-        term: etree._Element | None = None
+        """One line for each term and its descriptions."""
+        group: list[etree._Element] = []
         for item in element.iter("dt", "dd"):
-            if item.tag == "dt":
-                if term is not None:
-                    self._pair(term, None)
-                term = item
-            else:
-                self._pair(term, item)
-                term = None
-        if term is not None:
-            self._pair(term, None)
+            if item.tag == "dt" and group:
+                self._pair(group)
+                group = []
+            group.append(item)
+        self._pair(group)
 
-    def _pair(self, term: etree._Element | None, description: etree._Element | None) -> None:
-        parts = [part for part in (term, description) if part is not None]
-        texts = [text for part in parts if (text := cell_text(part))]
-        if texts:
-            first, last = (Where(line=_line_of(part, self.line_number)) for part in (parts[0], parts[-1]))
-            places = (first, last)[: len(texts)]
-            self.blocks.append(
-                Line(tuple(Segment(text, where) for text, where in zip(texts, places, strict=True)), first)
-            )
+    def _pair(self, parts: Sequence[etree._Element]) -> None:
+        if parts:
+            self._line([text_of(part) for part in parts], line_of(parts[0], self.line))
+
+    def _alike(self, parent: etree._Element) -> bool:
+        """Rows made of other elements than a table's: several children that hold equally many pieces of text each."""
+        rows = [child for child in parent if isinstance(child.tag, str)]
+        if len(rows) < _LEAST_ALIKE or not _are_rows(parent, rows):
+            return False
+        width = len(rows[0])
+        texts = [[text_of(piece) for piece in row] for row in rows]
+        places = [line_of(row, self.line) for row in rows]
+        if width == 2:
+            for row, number in zip(texts, places, strict=True):
+                self._line(row, number)
+        else:
+            cells = [
+                Cell(text, row, column, Where(line=number))
+                for row, (pieces, number) in enumerate(zip(texts, places, strict=True))
+                for column, text in enumerate(pieces)
+                if text
+            ]
+            self.blocks.append(Table(tuple(cells), len(rows), width, Where(line=places[0]), ruled=False))
+        return True
 
     def _table(self, element: etree._Element) -> None:
         if _is_layout(element):
-            for cell in _own_cells(element):
-                self._content(cell, keep_lines=False)
-                self.close()
+            for row in _own_rows(element):
+                for cell in _own_cells(row):
+                    self._content(cell)
+                    self.close()
             return
         self.tables += 1
-        table, struck = _grid(element, self.tables)
+        table = _grid(element, self.tables)
         if table.cells:
             self.blocks.append(table)
-        self.notes.extend(struck)
 
 
-def _line_of(element: etree._Element, otherwise: int) -> int:
-    found: object = element.sourceline
-    return found if isinstance(found, int) else otherwise
-
-
-def _is_hidden(element: etree._Element) -> bool:
-    style = re.sub(r"\s", "", element.get("style", "")).lower()
-    return "display:none" in style or "visibility:hidden" in style or element.get("hidden") is not None
+def _are_rows(parent: etree._Element, rows: Sequence[etree._Element]) -> bool:
+    """Whether elements look like rows: same tag, two or more leaves in each and as many in all, no text between."""
+    width = len(rows[0])
+    loose = (parent.text or "").strip() or any((row.tail or "").strip() for row in rows)
+    if loose or width < 2 or width > 30 or rows[0].tag in ("p", "a", "tr", *_HEADINGS):
+        return False
+    for row in rows:
+        pieces = [piece for piece in row if isinstance(piece.tag, str)]
+        if row.tag != rows[0].tag or len(pieces) != width or any(not is_leaf(piece) for piece in pieces):
+            return False
+        if (row.text or "").strip() or any((piece.tail or "").strip() for piece in pieces):
+            return False
+        if any(piece.tag in ("br", "img", "sub", "sup") for piece in pieces):
+            return False
+    return True
 
 
 def _is_layout(table: etree._Element) -> bool:
-    """A table that only holds other tables in their places on the page."""
+    """A table that only holds other things in their places on the page."""
+    rows = _own_rows(table)
+    if len(rows) == 1 and len(_own_cells(rows[0])) == 1:
+        return True
     inner = list(table.iter("table"))[1:]
-    if not inner:
-        return False
-    return any(len(list(one.iter("tr"))) > 1 for one in inner) and len(_own_rows(table)) <= 3 * len(inner) + 1
+    return any(len(list(one.iter("tr"))) > 1 for one in inner) and len(rows) <= 3 * len(inner) + 1
 
 
 def _own_rows(table: etree._Element) -> list[etree._Element]:
-    return [row for row in table.iter("tr") if next(row.iterancestors("table")) is table]
+    return [row for row in table.iter("tr") if next(row.iterancestors("table"), None) is table]
 
 
-def _own_cells(table: etree._Element) -> Iterator[etree._Element]:
-    for row in _own_rows(table):
-        yield from (cell for cell in row if cell.tag in ("td", "th"))
+def _own_cells(row: etree._Element) -> list[etree._Element]:
+    return [cell for cell in row if cell.tag in ("td", "th")]
 
 
-def _grid(element: etree._Element, number: int) -> tuple[Table, list[Note]]:
+def _grid(element: etree._Element, number: int) -> Table:
     rows = _own_rows(element)
-    taken: dict[tuple[int, int], bool] = {}
+    taken: set[tuple[int, int]] = set()
     cells: list[Cell] = []
-    notes: list[Note] = []
     width = 0
     for row, line in enumerate(rows):
         column = 0
-        for item in (cell for cell in line if cell.tag in ("td", "th")):
+        in_head = next(line.iterancestors("thead"), None) is not None
+        for item in _own_cells(line):
             while (row, column) in taken:
                 column += 1
             height, span = _span(item, "rowspan", len(rows) - row), _span(item, "colspan", _MOST_SPAN)
-            for covered in range(row, row + height):
-                taken.update(((covered, place), True) for place in range(column, column + span))
-            where = Where(table=number, cell=address(row, column))
-            text = cell_text(item)
-            notes.extend(_struck_note(item, where))
-            is_header = item.tag == "th" or next(line.iterancestors("thead"), None) is not None
+            for below in range(row, row + height):
+                taken.update((below, beside) for beside in range(column, column + span))
+            text = text_of(item)
             if text:
-                cells.append(Cell(text, row, column, where, height, span, is_header))
+                where = Where(table=number, cell=address(row, column))
+                cells.append(Cell(text, row, column, where, height, span, in_head or item.tag == "th"))
             column += span
             width = max(width, column)
-    caption = next((cell_text(one) for one in element.iter("caption")), "")
-    return Table(tuple(cells), len(rows), width, Where(table=number), title=caption), notes
+    caption = next((text_of(one) for one in element.iter("caption")), "")
+    return Table(tuple(_without_repeats(cells)), len(rows), width, Where(table=number), title=caption)
 
 
 def _span(cell: etree._Element, name: str, most: int) -> int:
     printed = re.match(r"\s*(\d+)", cell.get(name, "1"))
     span = int(printed.group(1)) if printed else 1
-    # Zero means "to the end" for rows.
+    # Zero rows means "to the end".
     return most if span == 0 and name == "rowspan" else max(1, min(span, most))
 
 
-def _struck_note(element: etree._Element, where: Where) -> Iterator[Note]:
-    for struck in element.iter(*_STRUCK):
-        words = _SPACES.sub(" ", "".join(str(part) for part in struck.itertext())).strip()
-        if words:
-            yield Note(level="info", message=f"Struck-out words left out: {words!r}.", where=where)
+def _without_repeats(cells: Sequence[Cell]) -> Iterator[Cell]:
+    """Cells without the label that pages for small screens repeat in front of each value."""
+    row_labels = {cell.row: cell.text for cell in cells if cell.column == 0}
+    heads = {cell.column: cell.text for cell in cells if cell.row == 0}
+    inner = [cell for cell in cells if cell.row > 0 and cell.column > 0]
+    for labels, key in ((row_labels, "row"), (heads, "column")):
+        led = [cell for cell in inner if _led_by(cell.text, labels.get(getattr(cell, key), ""))]
+        if len(led) >= _LEAST_ALIKE and 3 * len(led) >= 2 * len(inner):
+            known = {id(cell) for cell in led}
+            for cell in cells:
+                label = labels.get(getattr(cell, key), "")
+                yield replace(cell, text=cell.text[len(label) :].lstrip(" :\n")) if id(cell) in known else cell
+            return
+    yield from cells
 
 
-def cell_text(element: etree._Element) -> str:
-    """An element's text, its lines (breaks, paragraphs, list items, inner table rows) parted by newlines."""
-    text = _flow(element, "")
-    lines = (_SPACES.sub(" ", line).strip() for line in text.split("\n"))
-    stacked = "\n".join(lines)
-    # A blank line at the head holds the place of a label's heading in the cell beside it.
-    return re.sub(r"\n{3,}", "\n\n", stacked).rstrip("\n") if stacked.strip() else ""
-
-
-def _flow(element: etree._Element, before: str) -> str:
-    text = _SPACES.sub(" ", element.text or "")
-    for child in element:
-        if isinstance(child.tag, str):
-            text += _inline(child, before + text)
-        text += _SPACES.sub(" ", child.tail or "")
-    return text
-
-
-def _inline(child: etree._Element, before: str) -> str:
-    tag = child.tag.lower() if isinstance(child.tag, str) else ""
-    if tag in _DROPPED or tag in _STRUCK or _is_hidden(child):
-        return ""
-    if tag in ("br", "img"):
-        return "\n" if tag == "br" else child.get("alt") or ""
-    inner = _flow(child, before)
-    if tag == "sup":
-        return marks.raised(inner, before)
-    if tag == "sub":
-        return marks.lowered(inner)
-    if tag in ("td", "th"):
-        return inner + "  "
-    if tag in _BLOCKS and inner.strip():
-        start = "" if not before.strip() or before.endswith("\n") else "\n"
-        inner = start + inner.strip(" ") + "\n"
-    return inner
+def _led_by(text: str, label: str) -> bool:
+    return bool(label) and text.startswith(label) and text[len(label) : len(label) + 1] in (" ", ":", "\n")

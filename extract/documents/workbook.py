@@ -9,9 +9,10 @@ import zipfile
 from collections.abc import Callable, Iterator, Mapping, Sequence
 from typing import Any
 
-from extract.documents import numberformat
+from extract.documents import numberformat, opendocument
 from extract.documents.grid import address, placed_cells
 from extract.documents.model import Cell, Document, DocumentError, Line, Segment, Table
+from extract.documents.opendocument import DAMAGED, LOCKED
 from extract.documents.spacing import pieces
 from extract.documents.workbookparts import SheetStyles, sheet_styles
 from extract.model import Note, Where
@@ -19,11 +20,6 @@ from extract.model import Note, Where
 Grid = list[list[str]]
 Span = tuple[int, int, int, int]
 """First row, first column, last row, last column; all from 0, the last ones included."""
-
-_DAMAGED = (
-    "The workbook is damaged or cut short. Fetch it again, or open it in a spreadsheet program and save it as XLSX."
-)
-_LOCKED = "The workbook is locked with a password. Open it, save it without a password and try again."
 
 
 def read(data: bytes) -> Document:
@@ -34,9 +30,31 @@ def read(data: bytes) -> Document:
         with python_calamine.CalamineWorkbook.from_filelike(io.BytesIO(data)) as book:
             return _document(book, data)
     except python_calamine.PasswordError as fault:
-        raise DocumentError(_LOCKED) from fault
+        raise DocumentError(LOCKED) from fault
     except (python_calamine.CalamineError, zipfile.BadZipFile, OSError, ValueError) as fault:
-        raise DocumentError(_LOCKED if "password" in str(fault).lower() else _DAMAGED) from fault
+        raise DocumentError(LOCKED if "password" in str(fault).lower() else DAMAGED) from fault
+
+
+def read_open(data: bytes) -> Document:
+    """The same for an ODS file, whose cells hold the text that they show."""
+    blocks: list[Table | Line] = []
+    notes: list[Note] = []
+    for sheet in opendocument.read_sheets(data):
+        if sheet.hidden:
+            notes.append(_hidden_note(sheet.name))
+        else:
+            blocks.extend(_Sheet(sheet.name, sheet.grid, sheet.spans).blocks())
+    return _whole(blocks, notes)
+
+
+def _hidden_note(name: str) -> Note:
+    return Note(level="info", message=f"Hidden sheet {name!r} left out.", where=Where(sheet=name))
+
+
+def _whole(blocks: list[Table | Line], notes: list[Note]) -> Document:
+    if not blocks:
+        raise DocumentError("No sheet that the workbook shows holds any text. Look whether the right file was saved.")
+    return Document("xlsx", tuple(blocks), notes=tuple(notes))
 
 
 def _document(book: Any, data: bytes) -> Document:
@@ -49,9 +67,7 @@ def _document(book: Any, data: bytes) -> Document:
         if sheet.typ != SheetTypeEnum.WorkSheet:
             continue
         if sheet.visible != SheetVisibleEnum.Visible:
-            notes.append(
-                Note(level="info", message=f"Hidden sheet {sheet.name!r} left out.", where=Where(sheet=sheet.name))
-            )
+            notes.append(_hidden_note(sheet.name))
             continue
         content = book.get_sheet_by_name(sheet.name)
         style = styles.get(sheet.name, SheetStyles())
@@ -60,11 +76,7 @@ def _document(book: Any, data: bytes) -> Document:
         spans = [(*first, *last) for first, last in content.merged_cell_ranges or ()]
         blocks.extend(_Sheet(sheet.name, grid, spans).blocks())
         notes.extend(_formula_note(sheet.name, style))
-    if not blocks:
-        raise DocumentError(
-            "The workbook holds no text in any sheet that is shown. Look whether the right file was saved."
-        )
-    return Document("xlsx", tuple(blocks), notes=tuple(notes))
+    return _whole(blocks, notes)
 
 
 def _formula_note(name: str, style: SheetStyles) -> Iterator[Note]:
