@@ -17,7 +17,7 @@ from compare.circuit_text import ppm_limit_text, ppm_limits
 from compare.drawing import as_address, slack_strip_svg
 from compare.figures import count_word, frequency_text, number, ordinal, signed, spread, with_unit
 from compare.palette import Palette
-from compare.shown import title
+from compare.shown import NAMES
 from extract.model import FIELD_NAMES
 
 Row = Mapping[str, Any]
@@ -135,7 +135,7 @@ def times(value: float | None) -> str:
 def missing_name(key: str) -> str:
     """A field of the sheet, or a key of the bench, by the name a person knows."""
     if key in FIELD_NAMES:
-        return {"esr_ohm": "ESR"}.get(key, title(key))
+        return NAMES[key]
     from compare.desk import field_key, field_of
 
     found = field_key(key)
@@ -182,8 +182,7 @@ def place_heading(row: Row) -> str:
 def chosen_text(row: Row) -> str:
     """How the part must be ordered for the verdict to hold; "" where there is no choice."""
     said = [
-        f"{title(key).lower() if key in FIELD_NAMES else key} {_option(key, value)}"
-        for key, value in row["chosen"].items()
+        f"{NAMES[key] if key in FIELD_NAMES else key} {_option(key, value)}" for key, value in row["chosen"].items()
     ]
     return f"Ordered with {', '.join(said)}." if said else ""
 
@@ -259,30 +258,31 @@ def _worse_end(figure: Row, bench: Bench) -> float | None:
     return max(ends, key=lambda end: end / high if end > 0 else end / low if end < 0 else 0.0)
 
 
-def reason_lines(review: Row) -> list[str]:
-    """One line for each requirement asked: mark, name and the reason in words."""
-    return [
-        f"{MARKS.get(one['verdict'] or '', '◇')} **{FULL_NAMES.get(one['about'], one['about'])}**: {_sentence(one)}"
-        for one in review["reasons"]
-    ]
-
-
 def _sentence(reason: Row) -> str:
-    estimated = ", ".join(title(name).lower() for name in reason.get("estimated", ()))
+    estimated = ", ".join(NAMES.get(name, name) for name in reason.get("estimated", ()))
     return str(reason["message"]) + (f" (estimated: {estimated})" if estimated else "")
 
 
-def verdict_frame(review: Row, bench: Bench) -> pd.DataFrame:
-    """Verdict by requirement: what was asked, the worst case, how many times over, and the verdict."""
+@dataclass(frozen=True)
+class Judged:
+    """One requirement of a review, as shown: worst case against what was asked, times over, verdict, and why."""
+
+    requirement: str
+    worst: str
+    times_over: str
+    verdict: str
+    why: str
+
+
+def judged(review: Row, bench: Bench) -> list[Judged]:
+    """Verdict by requirement, one row for each reason."""
     rows = []
-    for about in dict.fromkeys(reason["about"] for reason in review["reasons"]):
-        verdicts = [reason["verdict"] for reason in review["reasons"] if reason["about"] == about]
-        worst = next((words for words in ("falls short", "cannot tell", None, "meets") if words in verdicts), None)
-        slack = review["slack"].get(about)
-        said = _said(review, about, bench) if about in review["slack"] and about in FIGURES else ""
-        over = times(slack) if about in review["slack"] else ""
-        rows.append((FULL_NAMES.get(about, about), said, over, verdict(worst)))
-    return pd.DataFrame(rows, columns=["Requirement", "Worst case", "Times over", "Verdict"])
+    for reason in review["reasons"]:
+        about, has_slack = reason["about"], reason["about"] in review["slack"] and reason["about"] in FIGURES
+        said = _said(review, about, bench) if has_slack else ""
+        over = times(review["slack"][about]) if has_slack else ""
+        rows.append(Judged(FULL_NAMES.get(about, about), said, over, verdict(reason["verdict"]), _sentence(reason)))
+    return rows
 
 
 def review_heading(review: Row) -> str:
@@ -437,5 +437,5 @@ def contributor_lines(review: Row, key: str) -> list[str]:
 
 def open_lines(review: Row) -> list[str]:
     """What is not settled: readings that wait for a look, and what is missing."""
-    looks = [f"☞ {title(name)}: the reading waits for a look on Sheets." for name in review["to_check"]]
+    looks = [f"☞ {NAMES.get(name, name)}: the reading waits for a look on Sheets." for name in review["to_check"]]
     return looks + [f"◇ {missing_name(key)}: not known." for key in review["missing"]]

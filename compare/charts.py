@@ -47,7 +47,7 @@ def dressed(chart: Any, palette: Palette, font: str = FONT) -> Any:
 
 @dataclass(frozen=True, slots=True)
 class Slack:
-    """One requirement: how many times over it is met at worst and nominally (None: not known), and the figures in words."""
+    """One requirement: how many times over it is met at worst and nominally (None: not known), and that in words."""
 
     requirement: str
     worst: float | None
@@ -131,7 +131,7 @@ def _slack_frame(rows: Sequence[Slack]) -> pd.DataFrame:
 
 @dataclass(frozen=True, slots=True)
 class LoadPull:
-    """What the chart of ppm against load needs. `room_*_ppm`: what the other causes leave of the limit, None if no limit.
+    """What the chart of ppm against load needs. `room_*_ppm`: what the other causes leave of the limit; None: no limit.
 
     `rated_pf` is None for a series-resonant part: the shift then counts from series resonance.
     """
@@ -146,7 +146,7 @@ class LoadPull:
     room_high_ppm: float | None = None
 
     def shift_ppm(self, load_pf: float) -> float:
-        """Shift against the rated load, C1/2 (1/(C0+CL) - 1/(C0+CL rated)); IEC 60444-7's pulling relation."""
+        """Shift against the rated load: C1/2 (1/(C0+CL) - 1/(C0+CL rated)), for C1 << C0+CL."""
         rated = 0.0 if self.rated_pf is None else 1 / (self.shunt_capacitance_pf + self.rated_pf)
         return self.motional_capacitance_ff / 2 * (1 / (self.shunt_capacitance_pf + load_pf) - rated) * 1e3
 
@@ -200,9 +200,9 @@ def _room(pull: LoadPull, palette: Palette, x: Channel, y: Channel, size: tuple[
     width, height = size
     layers = []
     for room, edge in ((pull.room_low_ppm, bottom), (pull.room_high_ppm, top)):
-        if room is None or not bottom < room < top:
+        if room is None or not _inside(room, bottom, top):
             continue
-        low, high = sorted((room, edge))
+        low, high = min(room, edge), max(room, edge)
         share = height * (high - low) / (top - bottom)
         layers.append(_hatched((left, right), (low, high), palette, x, y, (width, share)))
         layers.append(_one(at=room).mark_rule(color=palette.ink, strokeWidth=1.5).encode(y=y("at")))
@@ -210,41 +210,38 @@ def _room(pull: LoadPull, palette: Palette, x: Channel, y: Channel, size: tuple[
 
 
 def _load_words(pull: LoadPull, x: Channel, y: Channel) -> Any:
+    """Figures at their marks. The curve falls to the right, so words stand above it there and below it at the left."""
     (left, right), (bottom, top) = _load_ends(pull), _shift_ends(pull)
-    em = (top - bottom) / 210
-    shift = pull.shift_ppm(pull.mid_pf)
-    words: list[dict[str, Any]] = []
-    circuit_right = pull.mid_pf < (left + right) / 2
-    pad = (right - left) / 60
+    line, pad, shift = (top - bottom) / 210, (right - left) / 60, pull.shift_ppm(pull.mid_pf)
     here = f"circuit {pull.mid_pf:.2f} pF, {_signed(shift)} ppm"
-    words.append(
-        {"x": pull.mid_pf + (pad if circuit_right else -pad), "y": shift + 12 * em, "t": here, "right": circuit_right}
-    )
-    if pull.rated_pf is not None:
-        after = pull.rated_pf < (left + right) / 2
-        at = pull.rated_pf + (pad / 2 if after else -pad / 2)
-        words.append({"x": at, "y": bottom + 9 * em, "t": f"rated {pull.rated_pf:g} pF", "right": after})
-    if pull.room_high_ppm is not None and bottom < pull.room_high_ppm < top:
-        text = f"room left for load {_signed(pull.room_high_ppm)} ppm"
-        words.append({"x": right - pad / 2, "y": pull.room_high_ppm + 8 * em, "t": text, "right": False})
-    if pull.room_low_ppm is not None and bottom < pull.room_low_ppm < top:
-        words.append(
-            {
-                "x": right - pad / 2,
-                "y": pull.room_low_ppm - 8 * em,
-                "t": f"{_signed(pull.room_low_ppm)} ppm",
-                "right": False,
-            }
-        )
-    frame = pd.DataFrame(words)
-    text = [
-        alt.Chart(frame[frame["right"] == to_right])
-        .mark_text(align="left" if to_right else "right")
+    rated = pull.rated_pf
+    # Clear of the dashed line at the rated load, where that would run through the words.
+    start = pull.mid_pf if rated is None or not pull.mid_pf < rated else rated
+    above = start < left + 0.5 * (right - left)
+    at, height = (start + pad, shift + 12 * line) if above else (pull.mid_pf - pad, shift - 14 * line)
+    words = [(at, height, here, above)]
+    if rated is not None:
+        at_right = rated < (left + right) / 2
+        words.append((rated + (pad if at_right else -pad) / 2, bottom + 9 * line, f"rated {rated:g} pF", at_right))
+    if _inside(pull.room_high_ppm, bottom, top):
+        said = f"room left for load {_signed(pull.room_high_ppm or 0.0)} ppm"
+        words.append((right - pad / 2, (pull.room_high_ppm or 0.0) + 8 * line, said, False))
+    if _inside(pull.room_low_ppm, bottom, top):
+        low = pull.room_low_ppm or 0.0
+        words.append((left + pad / 2, low - 9 * line, f"{_signed(low)} ppm", True))
+    frame = pd.DataFrame(words, columns=["x", "y", "t", "starts"])
+    layers = [
+        alt.Chart(frame[frame["starts"] == starts])
+        .mark_text(align="left" if starts else "right")
         .encode(x=x("x"), y=y("y"), text="t")
-        for to_right in (True, False)
-        if (frame["right"] == to_right).any()
+        for starts in (True, False)
+        if (frame["starts"] == starts).any()
     ]
-    return alt.layer(*text)
+    return alt.layer(*layers)
+
+
+def _inside(room: float | None, bottom: float, top: float) -> bool:
+    return room is not None and bottom < room < top
 
 
 def _load_ends(pull: LoadPull) -> tuple[float, float]:
@@ -258,7 +255,7 @@ def _shift_ends(pull: LoadPull) -> tuple[float, float]:
     seen = [pull.shift_ppm(load) for load in (pull.low_pf, pull.mid_pf, pull.high_pf)]
     rooms = [room for room in (pull.room_low_ppm, pull.room_high_ppm) if room is not None]
     # A limit far outside what the load does would flatten the curve: then it is left out of the picture.
-    reach = 4 * max(max(map(abs, seen)), 5)
+    reach = 4 * max(*map(abs, seen), 5)
     points = [0.0, *seen, *(room for room in rooms if abs(room) < reach)]
     low, high = min(points), max(points)
     margin = max(0.35 * (high - low), 5)
@@ -273,7 +270,7 @@ def _one(**fields: float) -> Any:
     return alt.Chart(pd.DataFrame([fields]))
 
 
-def _hatched(
+def _hatched(  # noqa: PLR0917
     xs: tuple[float, float],
     ys: tuple[float, float],
     palette: Palette,

@@ -9,6 +9,9 @@ from compare.desk import field_key, field_of
 from compare.drawing import CircuitFigures, Mark
 from compare.figures import exact, frequency_text, number, spread, with_unit
 
+SET_IT = "Give the frequency, and what you know of the circuit, at the right; or open a bench file."
+READ_IT = "Each capacitance carries the two nodes it lies between. 0 is ground. Press a figure to change it."
+
 
 def terms(bench: Bench) -> list[str]:
     """The line of terms: what is asked, the circuit's load and its gm, each a short text with the figures in bold."""

@@ -97,11 +97,6 @@ def field_of(key: str) -> Field:
     return fields()[".".join(["condition", *parts[2:]]) if parts[0] == "condition" else key]
 
 
-def group(name: str) -> list[Field]:
-    """The fields of one group of the form, in order."""
-    return [asked for asked in fields().values() if asked.group == name]
-
-
 def _place(key: str) -> Path_:
     """Where a field's value stands in the file; `.low` and `.high` of a pair share a place."""
     parts = key.split(".")
@@ -116,13 +111,14 @@ def _place(key: str) -> Path_:
 
 def field_key(place: str) -> str:
     """The field that a fault of the bench file speaks of (`circuit.condition[1].swing_v`); "" where there is none."""
-    parts = (
-        place.removeprefix("circuit.").split(".") if ".rating." in place or ".condition[" in place else place.split(".")
-    )
+    if place == "requirement":
+        return "requirement.frequency_mhz"
+    inner = place.removeprefix("circuit.")
+    parts = (inner if inner.startswith(("rating.", "condition[")) else place).split(".")
     if parts[0].startswith("condition["):
-        parts = ["condition", str(int(parts[0][len("condition[") : -1]) - 1), *parts[1:]]
-    key = ".".join(parts)
-    for candidate in (key, f"{key}.low"):
+        number = int(parts[0].removeprefix("condition[").removesuffix("]"))
+        parts = ["condition", str(number - 1), *parts[1:]]
+    for candidate in (".".join(parts), ".".join([*parts, "low"])):
         try:
             field_of(candidate)
         except KeyError:

@@ -58,14 +58,12 @@ def circuit_svg(figures: CircuitFigures, palette: Palette) -> str:
     pen = _Pen(palette)
     _amplifier(pen, figures)
     _crystal(pen, figures)
-    output_inside = figures.output_inside
+    right = [("fitted", figures.output_fitted), ("stray", figures.output_stray)]
     if figures.series_resistor is None:
-        right = (("fitted", figures.output_fitted), ("stray", figures.output_stray), ("inside IC", output_inside))
-        _bank(pen, "B", RIGHT, (0, 68, 142), right)
+        right.append(("inside IC", figures.output_inside))
     else:
-        right = (("fitted", figures.output_fitted), ("stray", figures.output_stray))
-        _bank(pen, "B", RIGHT, (0, 68), right)
         _ahead_of_resistor(pen, figures)
+    _bank(pen, "B", RIGHT, (0, 68, 142)[: len(right)], right)
     left = (("inside IC", figures.input_inside), ("stray", figures.input_stray), ("fitted", figures.input_fitted))
     _bank(pen, "A", LEFT, (-142, -68, 0), left)
     _node(pen, "A", LEFT, ("amplifier", "input"), -1)
@@ -259,8 +257,9 @@ def _strip(times: float | None, y: float, tightest: bool, palette: Palette) -> s
     colour = palette.short if short else palette.accent if tightest else palette.edge
     heavy = tightest or short
     start, end = _strip_x(1.0), _strip_x(times)
+    width = 4 if heavy else 2
     return (
-        f'<line x1="{start:.1f}" x2="{end:.1f}" y1="{y}" y2="{y}" stroke="{colour}" stroke-width="{4 if heavy else 2}"/>'
+        f'<line x1="{start:.1f}" x2="{end:.1f}" y1="{y}" y2="{y}" stroke="{colour}" stroke-width="{width}"/>'
         f'<circle cx="{end:.1f}" cy="{y}" r="{2.6 if heavy else 1.8}" fill="{colour}"/>'
     )
 

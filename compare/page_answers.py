@@ -135,8 +135,11 @@ def why(row: dict[str, Any], bench: Bench) -> None:
     if said := answers.chosen_text(row):
         st.markdown(f":gray[{pieces.plain(said)}]")
     slack_chart(review, bench)
-    for line in answers.reason_lines(review):
-        st.markdown(f":small[{line}]")
+    lines = (
+        f":small[{one.verdict[0]} **{pieces.plain(one.requirement)}**: {pieces.plain(one.why)}]"
+        for one in answers.judged(review, bench)
+    )
+    st.markdown("  \n".join(lines))
     load_chart(review, bench)
     for line in answers.advice_lines(review)[:1]:
         st.markdown(line)
@@ -207,9 +210,7 @@ def choose() -> None:
 def judged(review: dict[str, Any], bench: Bench) -> None:
     st.markdown(f"## {pieces.plain(answers.review_heading(review))}")
     st.markdown(pieces.plain(answers.short_of(review)))
-    st.dataframe(answers.verdict_frame(review, bench), hide_index=True, key="verdicts", alt="Verdict by requirement")
-    for line in answers.reason_lines(review):
-        st.markdown(f":small[{line}]")
+    st.html(pieces.judged_html(answers.judged(review, bench)))
     st.markdown("### Every number")
     st.markdown(
         ":gray[:small[Press a number to see how it was reached. Low and high are its ends, not worse and better.]]"

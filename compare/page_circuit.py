@@ -2,21 +2,19 @@
 
 from __future__ import annotations
 
-from collections.abc import Sequence
-
 import streamlit as st
 
 from compare import circuit_text, drawing, pieces, typed
 from compare import page_session as session
 from compare.bench import uses
-from compare.desk import Desk, carried_sentence, field_of, group, orchard_example
+from compare.desk import Desk, carried_sentence, field_of, orchard_example
 
 # A pressed figure of the drawing puts the cursor into its field.
 PRESS = """export default function({data, parentElement}) {
   const place = parentElement.querySelector("div"); place.innerHTML = data;
   place.querySelectorAll("[data-field]").forEach(figure => { figure.onclick = () =>
     document.querySelector(".st-key-field_" + figure.dataset.field.replaceAll(".", "_") + " input")?.focus(); }); }"""
-FIT = "svg{max-width:100%;height:auto;display:block}"
+FIT = "div{width:100%}svg{width:100%;max-width:800px;height:auto;display:block}"
 
 
 def circuit_view() -> None:
@@ -24,31 +22,30 @@ def circuit_view() -> None:
     with right:
         bench_files()
         circuit_fields()
-    set_ = session.desk()
-    bench = set_.bench
     with left:
-        st.markdown(f"## {circuit_text.circuit_heading(bench)}")
-        if bench is None:
-            told = set_.faults.get("", "")
-            st.markdown(
-                pieces.plain(told)
-                if told
-                else "Give the frequency, and what you know of the circuit, at the right; or open a bench file."
-            )
-            return
-        st.markdown(
-            ":gray[Every capacitance carries the two nodes it lies between. 0 is ground. Press a figure to change it.]"
-        )
-        svg = drawing.circuit_svg(circuit_text.circuit_figures(bench), session.palette())
-        drawn = st.components.v2.component("quartzfolio_circuit", html="<div></div>", js=PRESS, css=FIT)
-        drawn(data=svg, key="drawing", width="stretch")
-        st.markdown(circuit_text.sum_sentence(bench))
-        for said in circuit_text.taken_sentences(bench):
-            st.markdown(f"- {pieces.plain(said)}")
-        if carried := carried_sentence(set_):
-            st.markdown(f":gray[{pieces.plain(carried)}]")
-        if st.button("Choose a crystal", key="to_choose", type="primary"):
+        drawn = summed_up(session.desk())
+        corners()
+        if drawn and st.button("Choose a crystal", key="to_choose", type="primary", shortcut="N"):
             session.go("choose")
+
+
+def summed_up(desk: Desk) -> bool:
+    """The drawing, the sum in words and what was taken by default; False where there is no bench yet."""
+    bench = desk.bench
+    st.markdown(f"## {circuit_text.circuit_heading(bench)}")
+    if bench is None:
+        st.markdown(pieces.plain(desk.faults.get("", "")) or circuit_text.SET_IT)
+        return False
+    st.markdown(f":gray[{circuit_text.READ_IT}]")
+    show = st.components.v2.component("quartzfolio_circuit", html="<div></div>", js=PRESS, css=FIT)
+    svg = drawing.circuit_svg(circuit_text.circuit_figures(bench), session.palette())
+    show(data=svg, key="drawing", width="stretch")
+    st.markdown(circuit_text.sum_sentence(bench))
+    for said in circuit_text.taken_sentences(bench):
+        st.markdown(f"- {pieces.plain(said)}")
+    if carried := carried_sentence(desk):
+        st.markdown(f":gray[{pieces.plain(carried)}]")
+    return True
 
 
 def bench_files() -> None:
@@ -72,35 +69,33 @@ def bench_files() -> None:
 
 def circuit_fields() -> None:
     st.markdown("### What is asked")
-    grid(group("asked"), 4)
+    form("asked")
     st.markdown("### Capacitance")
-    grid(group("capacitance"), 4)
+    form("capacitance")
     st.markdown("### Amplifier")
-    grid(group("amplifier"), 4)
+    form("amplifier")
     with st.expander("The IC’s sheet gives no gm, but a limit"):
-        grid(group("rating"), 3)
-    with st.expander(f"Corners: supply and temperature ({st.session_state.conditions})"):
-        corners()
+        form("rating")
     with st.expander("How the sheets are to be read; measured on the bench"):
-        grid(group("crystal"), 2)
-        grid(group("measured"), 3)
+        form("crystal")
+        form("measured")
 
 
-def grid(asked: Sequence[typed.Field], wide: int) -> None:
-    for at in range(0, len(asked), wide):
-        for column, one in zip(
-            st.columns(wide, gap="small", vertical_alignment="bottom"), asked[at : at + wide], strict=False
-        ):
-            with column:
-                field(one.key)
+def form(group: str, number: int | None = None) -> None:
+    """The rows of a group of fields; `number` is that of a condition."""
+    for row in typed.layout(group):
+        columns = st.columns([width for _, width in row], gap="small", vertical_alignment="bottom")
+        for column, (asked, _) in zip(columns, row, strict=True):
+            if asked is not None:
+                with column:
+                    field(asked.key if number is None else asked.key.replace("condition.", f"condition.{number}."))
 
 
 def corners() -> None:
-    st.markdown(":gray[:small[Each is one more corner; what it does not give is as above.]]")
+    st.markdown("### Corners: supply and temperature")
+    st.markdown(":gray[:small[Each is one more corner; what it does not give is as in the circuit.]]")
     for number in range(st.session_state.conditions):
-        for column, one in zip(st.columns([1.6, 1, 1, 1, 1], gap="small"), group("condition"), strict=True):
-            with column:
-                field(one.key.replace("condition.", f"condition.{number}."))
+        form("condition", number)
     with st.container(horizontal=True, gap="small"):
         if st.button("Add a corner", key="add_corner"):
             st.session_state.conditions += 1

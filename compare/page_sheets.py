@@ -12,7 +12,7 @@ from extract.model import Reading
 
 
 def sheets_view() -> None:
-    left, middle, right = st.columns([1, 1.9, 1.5], gap="medium")
+    left, middle, right = st.columns([1, 1.85, 1.3], gap="small")
     with left:
         take_sheets()
         chosen = sheet_list()
@@ -72,16 +72,16 @@ def sheet_list() -> Opened | None:
     picked = st.dataframe(
         shown.sheets_frame(session.sheets()),
         hide_index=True,
-        height=min(38 + 35 * len(every), 420),
+        height=fitting(len(every), 35, 420),
         on_select="rerun",
         selection_mode="single-row",
         selection_default=session.first_row(0),
         key=f"open_{len(every)}",
         alt="Sheets that are open, with their outcome",
         column_config={
-            "Sheet": st.column_config.TextColumn(width=150),
-            "What": st.column_config.TextColumn(width=104),
-            "Outcome": st.column_config.TextColumn(width=76),
+            "Sheet": st.column_config.TextColumn(width=176),
+            "Outcome": st.column_config.TextColumn(width=78),
+            "What": st.column_config.TextColumn(width=150),
         },
     )
     chosen: Opened = every[session.selected_row(picked, len(every))]
@@ -91,6 +91,11 @@ def sheet_list() -> Opened | None:
         st.session_state.opened = [one for one in every if one is not chosen]
         st.rerun()
     return chosen
+
+
+def fitting(rows: int, each: int, most: int) -> int:
+    """Height in pixels at which a grid shows all its rows, up to `most`."""
+    return min(40 + each * (rows + 1) - each // 2, most)
 
 
 def part_readings(one: Opened) -> Reading | None:
@@ -120,7 +125,7 @@ def part_readings(one: Opened) -> Reading | None:
     picked = st.dataframe(
         shown.readings_frame(part),
         hide_index=True,
-        height=min(38 + 32 * len(part.readings), 620),
+        height=fitting(len(part.readings), 32, 620),
         row_height=32,
         on_select="rerun",
         selection_mode="single-row",
@@ -128,12 +133,12 @@ def part_readings(one: Opened) -> Reading | None:
         key=f"readings_{sheet.sha256}_{sheet.file}_{number}",
         alt="Readings of the part, with how we have each",
         column_config={
-            "Reading": text(width=190),
-            "Min": text(width=62, alignment="right"),
+            "Reading": text(width=158),
+            "Min": text(width=58, alignment="right"),
             "Typ": text(width=76, alignment="right"),
-            "Max": text(width=62, alignment="right"),
+            "Max": text(width=58, alignment="right"),
             "Unit": text(width=52),
-            "How we have it": text(width=112),
+            "How we have it": text(width=108),
         },
     )
     st.markdown(f":gray[:small[{shown.HOW_LEGEND}]]")

@@ -8,7 +8,7 @@ from dataclasses import fields
 from html import escape
 from pathlib import Path
 
-from compare.answers import Number
+from compare.answers import Judged, Number
 from compare.palette import Palette
 
 MARKDOWN = re.compile(r"([\\`*_{}\[\]()#+!|<>$~:^-])")
@@ -44,6 +44,19 @@ def _number_row(number: Number) -> str:
     said = f'<span class="soft">{escape(number.unit)}</span><span class="soft">{escape(number.basis)}</span>'
     how = escape(number.how or "Nothing is said about how.")
     return f"<details><summary><span>{escape(number.name)}</span>{values}{said}</summary><p>{how}</p></details>"
+
+
+def judged_html(rows: Sequence[Judged]) -> str:
+    """Verdict by requirement as a table whose reasons may run over several lines."""
+    head = "".join(f"<th>{name}</th>" for name in ("Requirement", "Worst case", "Times over", "Verdict", "Why"))
+    body = "".join(map(_judged_row, rows))
+    return f'<table class="qf-table"><thead><tr>{head}</tr></thead><tbody>{body}</tbody></table>'
+
+
+def _judged_row(row: Judged) -> str:
+    look = "short" if row.verdict.startswith("▼") else "v"
+    cells = (("", row.requirement), ("n", row.worst), ("n", row.times_over), (look, row.verdict), ("soft", row.why))
+    return "<tr>" + "".join(f'<td class="{kind}">{escape(text)}</td>' for kind, text in cells) + "</tr>"
 
 
 def printed_html(text: str) -> str:

@@ -26,6 +26,29 @@ HOW = {"stated": "stated", "inferred": "∴ inferred", "entered": "✎ entered"}
 HOW_LEGEND = "stated: printed there · ∴ inferred: worked out from other readings · ☞ look: a person must decide"
 
 
+# Short names for a row; `title` gives the trade's full ones.
+NAMES = {
+    "frequency_mhz": "Frequency",
+    "frequency_tolerance_ppm": "Make tolerance",
+    "frequency_stability_ppm": "Drift over temperature",
+    "ageing_ppm": "Ageing",
+    "operating_temperature_c": "Operating range",
+    "storage_temperature_c": "Storage range",
+    "load_capacitance_pf": "Rated load CL",
+    "esr_ohm": "ESR",
+    "shunt_capacitance_pf": "Shunt C0",
+    "motional_capacitance_ff": "Motional C1",
+    "motional_inductance_mh": "Motional L1",
+    "quality_factor": "Quality factor Q",
+    "capacitance_ratio": "C0/C1",
+    "pulling_sensitivity_ppm_per_pf": "Pulling sensitivity",
+    "drive_level_uw": "Drive level",
+    "turnover_temperature_c": "Turnover",
+    "parabolic_coefficient_ppm_per_c2": "Parabolic coefficient",
+    "insulation_resistance_megohm": "Insulation",
+}
+
+
 def waiting(sheet: SpecSheet) -> int:
     """How many readings of a sheet a person must look at."""
     return sum(reading.check is not None for part in sheet.parts for reading in part.readings)
@@ -33,8 +56,8 @@ def waiting(sheet: SpecSheet) -> int:
 
 def sheets_frame(sheets: Sequence[SpecSheet]) -> pd.DataFrame:
     """One row a sheet, in the order opened: file, what it is, and its outcome."""
-    rows = [(sheet.file.rsplit("/", 1)[-1], _what(sheet), _outcome(sheet)) for sheet in sheets]
-    return pd.DataFrame(rows, columns=["Sheet", "What", "Outcome"])
+    rows = [(sheet.file.rsplit("/", 1)[-1], _outcome(sheet), _what(sheet)) for sheet in sheets]
+    return pd.DataFrame(rows, columns=["Sheet", "Outcome", "What"])
 
 
 def _what(sheet: SpecSheet) -> str:
@@ -129,7 +152,7 @@ def readings_frame(part: Part) -> pd.DataFrame:
     """A part's readings in the order of `in_order`: name, bounds as text, unit, where it holds, how we have it."""
     rows = [
         (
-            title(reading.field),
+            NAMES[reading.field],
             _bound(reading, reading.min),
             _options(reading) if reading.options else _bound(reading, reading.typ),
             _bound(reading, reading.max),

@@ -2,12 +2,14 @@
 
 from __future__ import annotations
 
+import math
 import re
 import tomllib
 from collections.abc import Mapping
 from dataclasses import dataclass, field
 from functools import cache
 from pathlib import Path
+from typing import Any
 
 from compare.figures import exact, with_unit
 
@@ -56,15 +58,25 @@ def fields() -> dict[str, Field]:
     }
 
 
+def layout(group: str) -> list[list[tuple[Field | None, int]]]:
+    """The form's rows of one group: each place a field, or None, with its width in places."""
+    own = {one.key.partition(".")[2]: one for one in fields().values() if one.group == group}
+    rows: list[list[tuple[Field | None, int]]] = []
+    for row in _table()["layout"][group]:
+        places = [place.partition("*") for place in row]
+        rows.append([(own[name] if name else None, int(width or 1)) for name, _, width in places])
+    return rows
+
+
 @cache
-def _table() -> dict[str, list[dict[str, str]]]:
+def _table() -> dict[str, Any]:
     return tomllib.loads(Path(__file__).with_name("typed.toml").read_text(encoding="utf-8"))
 
 
 @cache
 def units(unit: str) -> Mapping[str, float]:
     """Spellings that may be typed in a field of this unit, with the factor to it; empty for a ratio."""
-    known: Mapping[str, Mapping[str, float]] = _table()["unit"]  # type: ignore[assignment]
+    known: Mapping[str, Mapping[str, float]] = _table()["unit"]
     return known.get(unit, {})
 
 
@@ -94,7 +106,7 @@ def understand(text: str, asked: Field, *, kept: bool = False) -> Typed:
 
 def shown(value: float, asked: Field) -> str:
     """The value as the field shows it back: `12.5 pF`."""
-    return with_unit(exact(value), asked.unit)
+    return "without end" if math.isinf(value) else with_unit(exact(value), asked.unit)
 
 
 def _plain(text: str) -> str:

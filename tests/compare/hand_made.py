@@ -1,4 +1,4 @@
-"""Sheets and results by hand, in the data contract's shape, for the tests of the page. Makers and parts are invented."""
+"""Sheets and results by hand, in the data contract's shape, for the page's tests. Makers and parts are invented."""
 
 from __future__ import annotations
 
