@@ -13,8 +13,13 @@ from pathlib import Path
 import numpy as np
 from numpy.polynomial import Polynomial
 
+from hypothesis import settings
+
 from compare.circuit import Circuit
 from compare.oscillation import Crystal
+
+settings.register_profile("any machine", deadline=None)
+settings.load_profile("any machine")
 
 DATA = Path(__file__).parent / "data"
 REFERENCE = json.loads((DATA / "reference.json").read_text(encoding="utf-8"))
