@@ -2,29 +2,18 @@
 
 from __future__ import annotations
 
-import re
 from collections.abc import Callable, Sequence
-from dataclasses import dataclass, replace
+from dataclasses import replace
 
 from extract.documents.columns import Span, borders_of, columns_of, placed
 from extract.documents.model import Cell, Table
+from extract.documents.piece import Piece
+from extract.documents.rows import rows_parted
 from extract.documents.ruled import GridCell
-from extract.documents.words import Box, Word, confidence_of, in_lines, split_at_gaps, text_of, union
+from extract.documents.words import Box, Word, confidence_of, split_at_gaps, text_of, union
 from extract.model import Where
 
 Placer = Callable[[Box], Where]
-
-
-@dataclass(frozen=True, slots=True)
-class Piece:
-    """A cell in the making with its words."""
-
-    cell: GridCell
-    words: tuple[Word, ...]
-
-    @property
-    def lines(self) -> list[list[Word]]:
-        return in_lines([word for word in self.words if not word.angle])
 
 
 def table_of(pieces: Sequence[Piece], place: Placer, *, ruled: bool, title: str = "") -> Table:
@@ -223,153 +212,3 @@ def spans_parted(pieces: Sequence[Piece]) -> list[Piece]:
                 continue
         result.append(piece)
     return result
-
-
-# --- rows
-
-_VALUE = re.compile(r"^[\s<>≤≥≦≧~±+\-−–(\[]*\d|^[-–—−]+$")
-
-
-def rows_parted(pieces: Sequence[Piece]) -> list[Piece]:
-    """Pieces with each grid row parted where several cells hold values line by line."""
-    result = list(pieces)
-    count = max(piece.cell.row + piece.cell.row_span for piece in pieces)
-    for row in range(count - 1, -1, -1):
-        own = [piece for piece in result if piece.cell.row == row and piece.cell.row_span == 1]
-        levels = _levels(own)
-        if len(levels) > 1:
-            result = _row_parted(result, own, row, levels)
-    return result
-
-
-def _levels(own: Sequence[Piece]) -> list[float]:
-    """Heights of the text lines that are rows of their own; none where the row is only one."""
-    valued = [piece for piece in own if len(piece.lines) > 1 and _is_stack_of_values(piece)]
-    if len(valued) >= 2:
-        tallest = max(valued, key=lambda piece: len(piece.lines))
-        levels = [_level(line) for line in tallest.lines]
-        if sum(_stands_on(piece, levels) for piece in valued) >= 2:
-            return _with_labels_outside(levels, own)
-    return _fresh_levels(own)
-
-
-def _with_labels_outside(levels: list[float], own: Sequence[Piece]) -> list[float]:
-    """Levels with those of lines that stand a row's height above the first or below the last."""
-    pitch = (levels[-1] - levels[0]) / (len(levels) - 1)
-    others = [_level(line) for piece in own for line in piece.lines]
-    above = [level for level in others if level < levels[0] - 0.75 * pitch]
-    below = [level for level in others if level > levels[-1] + 0.75 * pitch]
-    # More than one is text that runs on, as in a wrapped label beside two values.
-    above, below = (side if len(side) == 1 else [] for side in (above, below))
-    return above + levels + below
-
-
-def _stands_on(piece: Piece, levels: Sequence[float]) -> bool:
-    near = 0.4 * max(word.size for word in piece.words)
-    return all(any(abs(_level(line) - level) < near for level in levels) for line in piece.lines)
-
-
-def _fresh_levels(own: Sequence[Piece]) -> list[float]:
-    """Levels of three or more lines that stand in several cells and each begin a text of their own; else none."""
-    stacked = [piece for piece in sorted(own, key=lambda piece: piece.cell.column) if len(piece.lines) > 2]
-    if len(stacked) < 2:
-        return []
-    words = [word for piece in own for word in piece.words if not word.angle]
-    lines = in_lines(words)
-    column_of = {id(word): piece.cell.column for piece in own for word in piece.words}
-    shared = [line for line in lines if len({column_of[id(word)] for word in line}) > 1]
-    fresh = all(_begins_text(line[0].text) for line in shared)
-    if len(shared) < 3 or len(shared) < 0.6 * len(lines) or not fresh:
-        return []
-    return [_level(line) for line in shared]
-
-
-def _begins_text(text: str) -> bool:
-    return not text[0].islower() and text[0] not in "(（[,;"
-
-
-def _level(line: Sequence[Word]) -> float:
-    return sum(word.line_y for word in line) / len(line)
-
-
-def _is_stack_of_values(piece: Piece) -> bool:
-    lines = [" ".join(word.text for word in line) for line in piece.lines]
-    return all(_VALUE.search(line) for line in lines)
-
-
-def _row_parted(pieces: Sequence[Piece], own: Sequence[Piece], row: int, levels: Sequence[float]) -> list[Piece]:
-    added = len(levels) - 1
-    result: list[Piece] = []
-    for piece in pieces:
-        cell = piece.cell
-        if any(piece is one for one in own):
-            result += _down(piece, levels)
-        elif cell.row > row:
-            result.append(replace(piece, cell=replace(cell, row=cell.row + added)))
-        elif cell.row + cell.row_span > row:
-            result.append(replace(piece, cell=replace(cell, row_span=cell.row_span + added)))
-        else:
-            result.append(piece)
-    return result
-
-
-def _down(piece: Piece, levels: Sequence[float]) -> list[Piece]:
-    """One cell's lines over the new rows: line for line, or spanning the rows that a text is centred on."""
-    cell, lines = piece.cell, piece.lines
-    if not lines:
-        return [replace(piece, cell=replace(cell, row_span=len(levels)))]
-    pitch = (levels[-1] - levels[0]) / (len(levels) - 1)
-    borders = [cell.box[1]]
-    # A baseline lies low in its line; the border is a third of the pitch below it.
-    borders += [
-        (above + below) / 2 + 0.15 * (below - above) - 0.3 * min(below - above, 8.0)
-        for above, below in zip(levels, levels[1:], strict=False)
-    ]
-    borders.append(cell.box[3])
-    groups = _centred(lines, levels, pitch)
-    made = []
-    for first, last, words in groups:
-        box = (cell.box[0], borders[first], cell.box[2], borders[last + 1])
-        made.append(Piece(replace(cell, row=cell.row + first, row_span=last - first + 1, box=box), tuple(words)))
-    return made
-
-
-def _centred(
-    lines: Sequence[Sequence[Word]], levels: Sequence[float], pitch: float
-) -> list[tuple[int, int, list[Word]]]:
-    """Rows (first, last) that each block of lines belongs to."""
-    if len(lines) == len(levels):
-        return [(index, index, list(line)) for index, line in enumerate(lines)]
-    blocks: list[list[list[Word]]] = []
-    for line in lines:
-        if blocks and _level(line) - _level(blocks[-1][-1]) < 0.8 * pitch and len(lines) < len(levels):
-            blocks[-1].append(list(line))
-        else:
-            blocks.append([list(line)])
-    if len(blocks) == 1:
-        return [(0, len(levels) - 1, [word for line in lines for word in line])]
-    return _shared_out(blocks, levels, pitch)
-
-
-def _shared_out(
-    blocks: Sequence[Sequence[Sequence[Word]]], levels: Sequence[float], pitch: float
-) -> list[tuple[int, int, list[Word]]]:
-    """Rows shared out so that each block stands in the middle of its own; else each at the row nearest to it."""
-    result: list[tuple[int, int, list[Word]]] = []
-    first = 0
-    for block in blocks:
-        centre = (_level(block[0]) + _level(block[-1])) / 2
-        last = round(2 * (centre - levels[0]) / pitch - first)
-        if last < first or last >= len(levels):
-            result = []
-            break
-        result.append((first, last, [word for line in block for word in line]))
-        first = last + 1
-    if result and first == len(levels):
-        return result
-    nearest: dict[int, list[Word]] = {}
-    for block in blocks:
-        for line in block:
-            index = min(range(len(levels)), key=lambda row: abs(levels[row] - _level(line)))
-            nearest.setdefault(index, []).extend(line)
-    return [(index, index, words) for index, words in sorted(nearest.items())]

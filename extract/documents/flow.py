@@ -6,9 +6,10 @@ import re
 from collections.abc import Callable, Sequence
 from dataclasses import dataclass
 
-from extract.documents.cells import Piece, table_of
+from extract.documents.cells import table_of
 from extract.documents.columns import columns_of, overlap, placed, span_of
 from extract.documents.model import Line, Segment, Table
+from extract.documents.piece import Piece
 from extract.documents.ruled import GridCell
 from extract.documents.words import Box, Word, confidence_of, in_lines, joined, split_at_gaps, union
 from extract.model import Where

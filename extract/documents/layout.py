@@ -5,9 +5,10 @@ from __future__ import annotations
 from collections.abc import Callable, Sequence
 from dataclasses import replace
 
-from extract.documents.cells import Piece, table_of
+from extract.documents.cells import table_of
 from extract.documents.flow import Item, blocks_of, in_reading_order, items_of
 from extract.documents.model import Line, Table
+from extract.documents.piece import Piece
 from extract.documents.ruled import Grid, grids_of, stacks_of
 from extract.documents.stacks import stack_grids
 from extract.documents.words import (
@@ -31,8 +32,8 @@ FRAME_WIDTH, FRAME_HEIGHT = 0.5, 0.22
 BOXED = 0.25
 # A greater closed box with so few level lines is a frame round the page or a part of it.
 FRAME_ROWS = 4
-# A table lying sideways has at least so many words.
-SIDEWAYS_WORDS = 16
+# A table lying sideways has at least so many words, or most of the page's.
+SIDEWAYS_WORDS, MOSTLY = 16, 0.7
 
 
 def arrange(
@@ -68,7 +69,7 @@ def arrange(
 def _sideways_region(words: Sequence[Word], rulings: Sequence[Ruling], angle: int) -> Box | None:
     """Box of a whole table or page that lies on its side; None where there are only some sideways words."""
     chosen = [word for word in words if word.angle == angle]
-    if len(chosen) < SIDEWAYS_WORDS:
+    if not chosen or (len(chosen) < SIDEWAYS_WORDS and len(chosen) < MOSTLY * len(words)):
         return None
     region = union(word.box for word in chosen)
     # Turned texts in the head of an upright table have the table's upright words in the same lines.

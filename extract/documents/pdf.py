@@ -137,7 +137,7 @@ def _read_text(page: Any, slow: _Plumber, number: int, frame: Frame, *, printed:
         result.notes.append(
             Note(
                 level="warning",
-                message=f"Page {number}: its drawn lines cannot be read, so tables are told from where words stand; compare with the page.",
+                message=f"Page {number}: its drawn lines cannot be read; tables are told from where words stand alone.",
                 where=Where(page=number),
             )
         )

@@ -1,0 +1,20 @@
+"""A cell in the making."""
+
+from __future__ import annotations
+
+from dataclasses import dataclass
+
+from extract.documents.ruled import GridCell
+from extract.documents.words import Word, in_lines
+
+
+@dataclass(frozen=True, slots=True)
+class Piece:
+    """A cell in the making with its words."""
+
+    cell: GridCell
+    words: tuple[Word, ...]
+
+    @property
+    def lines(self) -> list[list[Word]]:
+        return in_lines([word for word in self.words if not word.angle])
