@@ -16,15 +16,19 @@ DAYS_PER_YEAR = 365.0
 SECONDS_PER_DAY = 86400.0
 
 
-def ageing_factor(rule: AgeingRule, from_years: ArrayLike, to_years: ArrayLike) -> Array:
+def ageing_factor(
+    rule: AgeingRule, from_years: ArrayLike, to_years: ArrayLike, rate_per_day: ArrayLike = AGEING_RATE_PER_DAY
+) -> Array:
     """Ageing after Y years over that after y years: ln(B d Y + 1) / ln(B d y + 1), or Y/y; 1 for Y <= y.
 
     Parameters
     ----------
     rule : "logarithm" or "linear"
-        "logarithm" with B = 0.01 a day and d = 365 days a year; "linear" is far too much for quartz, and safe.
+        "logarithm" with d = 365 days a year; "linear" is far too much for quartz, and safe.
     from_years, to_years : years, above zero
         y, for which the sheet states it, and Y, for which it is wanted.
+    rate_per_day : 1/day
+        B.
 
     Returns
     -------
@@ -47,7 +51,7 @@ def ageing_factor(rule: AgeingRule, from_years: ArrayLike, to_years: ArrayLike) 
     longer = np.maximum(wanted, stated)
     if rule == "linear":
         return longer / stated
-    per_year = AGEING_RATE_PER_DAY * DAYS_PER_YEAR
+    per_year = array(rate_per_day) * DAYS_PER_YEAR
     factor: Array = np.log1p(per_year * longer) / np.log1p(per_year * stated)
     return factor
 

@@ -6,9 +6,9 @@ from dataclasses import replace
 
 import numpy as np
 import pytest
-from circuit_cases import CASES, REFERENCE, circuit_of
 from hypothesis import given
 from hypothesis import strategies as st
+from reference_loops import CASES, REFERENCE, circuit_of
 
 from compare.circuit import Circuit, series_load_pf, terminal_impedance_ohm, turning_transconductance_ms
 

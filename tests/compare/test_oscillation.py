@@ -8,9 +8,9 @@ import numpy as np
 import pytest
 import scipy.linalg
 import scipy.optimize
-from circuit_cases import CASES, Loop, circuit_of, crystal_of, swing_of
 from hypothesis import given
 from hypothesis import strategies as st
+from reference_loops import CASES, Loop, circuit_of, crystal_of, swing_of
 
 from compare.circuit import Circuit
 from compare.oscillation import Crystal, amplifier_swing_v, analyse

@@ -4,7 +4,7 @@ from __future__ import annotations
 
 import numpy as np
 import pytest
-from circuit_cases import CASES, REFERENCE, circuit_of, corners_of, crystal_of, swing_of
+from reference_loops import CASES, REFERENCE, circuit_of, corners_of, crystal_of, swing_of
 
 from compare.oscillation import analyse
 

@@ -11,9 +11,8 @@ from dataclasses import dataclass
 from pathlib import Path
 
 import numpy as np
-from numpy.polynomial import Polynomial
-
 from hypothesis import settings
+from numpy.polynomial import Polynomial
 
 from compare.circuit import Circuit
 from compare.oscillation import Crystal
