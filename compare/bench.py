@@ -149,6 +149,18 @@ class Requirement(_Table):
     drive_headroom: Above0 = 1.0
     startup_ms: Above0 | None = None
 
+    @property
+    def limits_ppm(self) -> Range | None:
+        """Lower and upper limit on the frequency error: of `total_ppm` and the use the tighter end on each side.
+
+        None where neither sets a limit.
+        """
+        ends = [] if self.total_ppm is None else [(-self.total_ppm, self.total_ppm)]
+        use = None if self.use is None else uses()[self.use]
+        if use is not None and use.low_ppm is not None and use.high_ppm is not None:
+            ends.append((use.low_ppm, use.high_ppm))
+        return (max(low for low, _ in ends), min(high for _, high in ends)) if ends else None
+
     @model_validator(mode="after")
     def _use_is_listed(self) -> Self:
         if self.use is not None and self.use not in uses():

@@ -1,0 +1,219 @@
+"""Offers as columns: for each root quantity an array over parts, its estimate where the sheet is silent.
+
+Axes are (setting, end, part); the ends are low, mid and high.
+"""
+
+from __future__ import annotations
+
+from collections.abc import Sequence
+from dataclasses import dataclass
+from functools import lru_cache
+from typing import Any
+
+import numpy as np
+from numpy.typing import NDArray
+
+from compare import motional
+from compare.bench import Bench
+from compare.circuit import Array
+from compare.offer import C1_ROUTES, Offer
+from compare.stated import Span, Taken
+
+Flags = NDArray[np.bool_]
+Whole = NDArray[np.int_]
+LOW, MID, HIGH = 0, 1, 2
+ESTIMATED = len(C1_ROUTES)
+"""Index of the route "no reading leads to C1"."""
+DISAGREES = 0.1
+
+
+@dataclass(frozen=True)
+class Columns:
+    """What is known of each part's crystal.
+
+    Attributes
+    ----------
+    frequency_mhz, load_pf, overtone : (n,)
+        `load_pf` inf for a series part, NaN where none is stated; `overtone` NaN where the mode is not known.
+    esr_ohm, shunt_pf, motional_ff : (settings, 3, n)
+        R1 or ESR as stated, C0, C1; low, mid, high.
+    shunt_floor_pf : (n,)
+        Low end of C0 for what is reckoned of frequency: an estimate where only a limit is stated, else C0's own.
+    shunt_missing, shunt_loose, motional_estimated : (n,) bool
+    route : (n,) int
+        Index into C1_ROUTES of the reading that C1 comes from; ESTIMATED where none leads to it.
+    other_routes_ff : (routes, n)
+        C1 by every other stated value, for the check.
+    """
+
+    offers: tuple[Offer, ...]
+    frequency_mhz: Array
+    load_pf: Array
+    overtone: Array
+    esr_ohm: Array
+    shunt_pf: Array
+    shunt_floor_pf: Array
+    shunt_missing: Flags
+    shunt_loose: Flags
+    motional_ff: Array
+    motional_estimated: Flags
+    route: Whole
+    other_routes_ff: Array
+    shunt_basis: tuple[str, ...]
+    motional_basis: tuple[str, ...]
+
+    def __len__(self) -> int:
+        return len(self.offers)
+
+    def take(self, which: Sequence[int] | Whole) -> Columns:
+        """The columns of some of the parts, by index."""
+        index = np.asarray(which, dtype=int)
+        picked: dict[str, Any] = {
+            name: value[..., index] if isinstance(value, np.ndarray) else tuple(value[at] for at in index)
+            for name, value in vars(self).items()
+        }
+        return Columns(**picked)
+
+
+def make_columns(offers: Sequence[Offer], bench: Bench) -> Columns:
+    """Columns of the offers, estimates filled in."""
+    n, settings = len(offers), range(len(bench.settings))
+    frequency = np.array([o.frequency_mhz for o in offers], dtype=float)
+    load = np.array([o.load.span.mid for o in offers], dtype=float)
+    esr = np.stack([spans([o.at[s].esr for o in offers]) for s in settings])
+    shunt = np.stack([spans([o.at[s].shunt_capacitance for o in offers]) for s in settings])
+    guess, shunt_basis = _shunt_estimates(offers)
+    missing = np.isnan(shunt[0, MID])
+    loose = np.array([o.at[0].shunt_capacitance.limit_alone for o in offers], dtype=bool)
+    shunt = np.where(np.isnan(shunt), guess, shunt)
+    floor = np.where(loose, np.minimum(guess[LOW], shunt[0, LOW]), shunt[:, LOW].min(axis=0))
+    routes = [_by_every_route(offers, s, (frequency, load), (esr[s], shunt[s], floor)) for s in settings]
+    route = _first_known(routes[0][:, MID])
+    known_shunt = ~(missing | loose)
+    c1_guess, motional_basis = _motional_estimates(offers, shunt[0], known_shunt)
+    c1 = np.stack([_along(route, by_route, routes[0]) for by_route in routes])
+    by_shunt = np.isin(route, [C1_ROUTES.index("capacitance_ratio"), C1_ROUTES.index("pulling_sensitivity_ppm_per_pf")])
+    return Columns(
+        offers=tuple(offers),
+        frequency_mhz=frequency,
+        load_pf=load,
+        overtone=np.array([o.overtone or np.nan for o in offers], dtype=float),
+        esr_ohm=esr,
+        shunt_pf=shunt,
+        shunt_floor_pf=floor,
+        shunt_missing=missing,
+        shunt_loose=loose & ~missing,
+        motional_ff=np.where(np.isnan(c1), c1_guess, c1),
+        motional_estimated=(route == ESTIMATED) | (by_shunt & ~known_shunt),
+        route=route,
+        other_routes_ff=routes[0][:, MID].reshape(len(C1_ROUTES), n),
+        shunt_basis=shunt_basis,
+        motional_basis=motional_basis,
+    )
+
+
+def spans(takens: Sequence[Taken]) -> Array:
+    """(3, n) low, mid, high."""
+    return ends([taken.span for taken in takens])
+
+
+def ends(listed: Sequence[Span]) -> Array:
+    """(3, n) low, mid, high of spans."""
+    return np.array([(s.low, s.mid, s.high) for s in listed], dtype=float).reshape(-1, 3).T
+
+
+Ends = tuple[float, float, float]
+
+
+def cut_of(offer: Offer) -> str | None:
+    return "tuning fork" if offer.fork else offer.part.cut
+
+
+def _shunt_estimates(offers: Sequence[Offer]) -> tuple[Array, tuple[str, ...]]:
+    """(3, n) C0 as it is likely to be, nothing above a limit that is stated, and what each rests on."""
+    found = [
+        _shunt_estimate(cut_of(o), o.frequency_mhz, o.part.package, _limit(o.at[0].shunt_capacitance)) for o in offers
+    ]
+    return np.array([values for values, _ in found], dtype=float).reshape(-1, 3).T, tuple(basis for _, basis in found)
+
+
+def _limit(shunt: Taken) -> float:
+    return shunt.span.high if shunt.limit_alone else np.inf
+
+
+@lru_cache(maxsize=4096)
+def _shunt_estimate(cut: str | None, frequency_mhz: float, package: str | None, limit_pf: float) -> tuple[Ends, str]:
+    guess = motional.estimate_shunt_capacitance_pf(cut, frequency_mhz, package, limit_pf)
+    return (float(guess.low), float(guess.mid), float(guess.high)), guess.basis
+
+
+def _motional_estimates(offers: Sequence[Offer], shunt: Array, known: Flags) -> tuple[Array, tuple[str, ...]]:
+    """(3, n) C1 as it is likely to be, and what each rests on. A mode that is not known may be either of two."""
+    found = []
+    for at, o in enumerate(offers):
+        c0 = (float(shunt[LOW, at]), float(shunt[MID, at]), float(shunt[HIGH, at])) if known[at] else None
+        orders = (o.overtone,) if o.overtone else (1, 3)
+        of_part = (cut_of(o), o.frequency_mhz, o.part.package)
+        guesses = [_motional_estimate(order, of_part, _limit(o.at[0].shunt_capacitance), c0) for order in orders]
+        lows, mids, highs = zip(*(values for values, _ in guesses), strict=True)
+        found.append(((min(lows), mids[0], max(highs)), "; or ".join(basis for _, basis in guesses)))
+    return np.array([values for values, _ in found], dtype=float).reshape(-1, 3).T, tuple(basis for _, basis in found)
+
+
+@lru_cache(maxsize=4096)
+def _motional_estimate(
+    overtone: int,
+    of_part: tuple[str | None, float, str | None],
+    limit_pf: float,
+    shunt_pf: Ends | None,
+) -> tuple[Ends, str]:
+    c0 = None if shunt_pf is None else (np.array(shunt_pf[0]), np.array(shunt_pf[1]), np.array(shunt_pf[2]))
+    cut, frequency_mhz, package = of_part
+    guess = motional.estimate_motional_capacitance_ff(
+        cut, overtone, frequency_mhz, package, shunt_capacitance_pf=c0, limit_pf=limit_pf
+    )
+    return (float(guess.low), float(guess.mid), float(guess.high)), guess.basis
+
+
+def _first_known(by_route: Array) -> Whole:
+    """Index of the first route that leads to a value; ESTIMATED where none does."""
+    known = np.isfinite(by_route)
+    return np.where(known.any(axis=0), known.argmax(axis=0), ESTIMATED)
+
+
+def _along(route: Whole, here: Array, at_room: Array) -> Array:
+    """(3, n) of the chosen route; where this setting has no value for it, the one at room."""
+    none = np.full((1, *here.shape[1:]), np.nan)
+    parts = np.arange(here.shape[-1])
+    own = np.concatenate([here, none])[route, :, parts].T
+    room = np.concatenate([at_room, none])[route, :, parts].T
+    return np.where(np.isnan(own), room, own)
+
+
+def _by_every_route(
+    offers: Sequence[Offer], setting: int, of_part: tuple[Array, Array], at_setting: tuple[Array, Array, Array]
+) -> Array:
+    """C1 in fF by each route, (routes, 3, n); NaN where the route is not stated or lacks what it needs.
+
+    The ends go with those of what each route divides by, so that the low end is the least that the readings allow.
+    """
+    frequency, load = of_part
+    esr, shunt, floor = at_setting
+    low_shunt = np.stack([floor, shunt[MID], shunt[HIGH]])
+    no_load = np.where(np.isnan(load), np.inf, load)  # a part in ten thousand of what L1 comes to
+    stated = {name: spans([o.at[setting].motional.get(name, Taken()) for o in offers]) for name in C1_ROUTES}
+    pulling = np.abs(stated["pulling_sensitivity_ppm_per_pf"])
+    with np.errstate(all="ignore"):
+        routes = [
+            stated["motional_capacitance_ff"],
+            motional.motional_capacitance_from_inductance_ff(
+                stated["motional_inductance_mh"][::-1], frequency, low_shunt, no_load
+            ),
+            motional.motional_capacitance_from_ratio_ff(stated["capacitance_ratio"][::-1], low_shunt),
+            motional.motional_capacitance_from_pulling_ff(np.sort(pulling, axis=0), low_shunt, load),
+            motional.motional_capacitance_from_quality_ff(
+                stated["quality_factor"][::-1], esr[::-1], frequency, low_shunt, no_load
+            ),
+        ]
+        found = np.stack(routes)
+        return np.where(np.isfinite(found) & (found > 0), found, np.nan)

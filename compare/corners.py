@@ -1,0 +1,360 @@
+"""Worst case: the whole chain run at each corner of its roots, so an input that counts twice moves in both at once.
+
+Roots are the capacitance at each node, the transconductance, and the crystal's own spans. What is fitted, stray and
+inside the IC at one node only ever counts as its sum, so the corners of the sums are those of each moving by itself. Every
+condition of the bench is a set of corners of its own. Where a range of transconductance spans a turning point of the
+negative resistance that point is one more corner.
+"""
+
+from __future__ import annotations
+
+import itertools
+from collections.abc import Iterator, Sequence
+from dataclasses import dataclass, field
+from typing import Any
+
+import numpy as np
+from numpy.typing import NDArray
+
+from compare.bench import Bench, CircuitKeys, Setting
+from compare.circuit import Array, Circuit, turning_transconductance_ms
+from compare.columns import HIGH, LOW, MID, Columns, Flags
+from compare.oscillation import Crystal, End, Limiter, analyse
+from compare.rating import from_critical_ms, from_esr_ms, from_negative_resistance_ms, list_row
+
+BY_SHUNT_FLOOR = (
+    "motional_inductance_mh",
+    "quality_factor",
+    "series_resonance_mhz",
+    "parallel_resonance_mhz",
+    "load_error_ppm",
+    "trim_ppm_per_pf",
+)
+"""Numbers of frequency: where C0 is a loose limit their low end of C0 is an estimate. All others use the limit."""
+AT_MOST = 1 << 21
+"""Array elements of one key held at a time."""
+MOST_CORNERS = 3 * 2 * 2 * 16 * 4
+"""Ends of C0, C1 and ESR, corners of four capacitances, transconductances with turning points."""
+SHUNT_FLOOR = 2
+"""Index on the C0 axis of the estimated low end; 0 and 1 are the stated ends."""
+
+
+@dataclass(frozen=True)
+class Nodes:
+    """Capacitance at each node as (low, nominal, high), pF."""
+
+    input_pf: tuple[float, float, float]
+    output_pf: tuple[float, float, float]
+    across_pf: tuple[float, float, float]
+    amplifier_output_pf: tuple[float, float, float]
+
+    @classmethod
+    def of(cls, keys: CircuitKeys) -> Nodes:
+        """Sums of all that stands at each node; NaN where the fitted capacitor is not known."""
+        inside = _toleranced(keys.internal_at_each_pin_pf, keys.internal_tolerance_percent)
+        amplifier = _toleranced(keys.amplifier_output_pf, keys.stray_tolerance_percent)
+        after_resistor = keys.series_resistor_ohm == 0
+        stray = {
+            end: _toleranced(getattr(keys, f"{end}_stray_pf"), keys.stray_tolerance(f"{end}_stray_pf"))
+            for end in ("input", "output", "across")
+        }
+        fitted = {end: _fitted(keys, end) for end in ("input", "output")}
+        zero = (0.0, 0.0, 0.0)
+        return cls(
+            input_pf=_sum(fitted["input"], stray["input"], inside),
+            output_pf=_sum(fitted["output"], stray["output"], inside if after_resistor else zero),
+            across_pf=stray["across"],
+            amplifier_output_pf=_sum(amplifier, zero if after_resistor else inside),
+        )
+
+
+def _toleranced(value: float, percent: float) -> tuple[float, float, float]:
+    return value * (1 - percent / 100), value, value * (1 + percent / 100)
+
+
+def _fitted(keys: CircuitKeys, end: str) -> tuple[float, float, float]:
+    value = keys.input_capacitor_pf if end == "input" else keys.output_capacitor_pf
+    return _toleranced(np.nan if value is None else value, keys.capacitor_tolerance_percent)
+
+
+def _sum(*ends: tuple[float, float, float]) -> tuple[float, float, float]:
+    low, mid, high = (sum(values) for values in zip(*ends, strict=True))
+    return low, mid, high
+
+
+@dataclass
+class Envelope:
+    """One key over its corners. Arrays are (n, C0 ends, C1 ends): the estimates' axes stay open for the verdict.
+
+    `low` and `high` pass over corners where there is no such number; `some_without` tells that there were any.
+    """
+
+    low: Array
+    high: Array
+    some_without: Flags
+
+
+@dataclass
+class Reckoned:
+    """What the corners gave: for each key its envelope, and `nominal` (n,) from nominal circuit values."""
+
+    nominal: dict[str, Array] = field(default_factory=dict)
+    over: dict[str, Envelope] = field(default_factory=dict)
+    too_much_gain: Array = field(default_factory=lambda: np.empty(0))
+    """(n,) the IC's greatest transconductance over the one where oscillation stops again, in the worst corner."""
+
+    def low(self, key: str) -> Array:
+        """(n,) low end over every corner that counts for the key."""
+        counting = self._counting(key, self.over[key].low)
+        return _ignoring_nan(np.fmin, counting)
+
+    def high(self, key: str) -> Array:
+        """(n,) high end over every corner that counts for the key."""
+        counting = self._counting(key, self.over[key].high)
+        return _ignoring_nan(np.fmax, counting)
+
+    def some_without(self, key: str) -> Flags:
+        """(n,) true where some corner has no such number."""
+        found: Flags = np.logical_or.reduce(self._counting(key, self.over[key].some_without), axis=(1, 2))
+        return found
+
+    def _counting(self, key: str, values: NDArray[Any]) -> NDArray[Any]:
+        return values if key in BY_SHUNT_FLOOR else values[:, :SHUNT_FLOOR]
+
+
+def _ignoring_nan(reduce: np.ufunc, values: Array) -> Array:
+    reduced: Array = reduce.reduce(reduce.reduce(values, axis=2), axis=1)
+    return reduced
+
+
+def reckon(columns: Columns, bench: Bench) -> Reckoned:
+    """Every number of every part, nominal and over the corners."""
+    n = len(columns)
+    size = AT_MOST // MOST_CORNERS
+    pieces = [_reckon_piece(columns.take(range(start, min(start + size, n))), bench) for start in range(0, n, size)]
+    return _joined(pieces) if pieces else Reckoned()
+
+
+def _joined(pieces: Sequence[Reckoned]) -> Reckoned:
+    if len(pieces) == 1:
+        return pieces[0]
+    keys = pieces[0].over
+    nominal = {key: np.concatenate([p.nominal[key] for p in pieces]) for key in pieces[0].nominal}
+    over = {
+        key: Envelope(*(np.concatenate([getattr(p.over[key], name) for p in pieces]) for name in vars(keys[key])))
+        for key in keys
+    }
+    return Reckoned(nominal, over, np.concatenate([p.too_much_gain for p in pieces]))
+
+
+def _reckon_piece(columns: Columns, bench: Bench) -> Reckoned:
+    base = bench.settings[0]
+    limiter: Limiter = "output" if base.circuit.limiter == "output" else "transconductance"
+    nominal = analyse_nominal(columns, bench, limiter)
+    reckoned = Reckoned(nominal, {}, np.full(len(columns), -np.inf))
+    for number, setting in enumerate(bench.settings):
+        for found, greatest_gm, shunt_index in _corner_sets(columns, bench, number, setting):
+            for key, values in found.items():
+                _widen(reckoned.over, key, values, shunt_index)
+            ratio = (greatest_gm / found["greatest_transconductance_ms"])[:, shunt_index[:SHUNT_FLOOR]]
+            worst = np.nan_to_num(ratio, nan=-np.inf).max(axis=tuple(range(1, ratio.ndim)))
+            reckoned.too_much_gain = np.maximum(reckoned.too_much_gain, worst)
+    return reckoned
+
+
+def analyse_nominal(columns: Columns, bench: Bench, limiter: Limiter) -> dict[str, Array]:
+    """Every key at nominal circuit values and the sheets' mid readings, (n,)."""
+    setting = as_reckoned(bench.settings[0].circuit, bench)
+    nodes = Nodes.of(setting)
+    esr = motional_resistance_ohm(columns, bench, columns.esr_ohm[0, MID], columns.shunt_pf[0, MID])
+    esr = esr + _added_resistance(bench, 0)
+    crystal = _crystal(columns, columns.shunt_pf[0, MID], columns.motional_ff[0, MID], esr)
+    capacitances = [getattr(nodes, name)[MID] for name in ("input_pf", "output_pf", "across_pf", "amplifier_output_pf")]
+    gm = nominal_transconductance_ms(setting, bench, columns.shunt_pf[0, MID])
+    circuit = make_circuit(setting, bench, capacitances, gm)
+    return analyse(circuit, crystal, *_swing(setting), limiter, setting.probe_pf)
+
+
+def nominal_transconductance_ms(setting: CircuitKeys, bench: Bench, shunt_pf: Array) -> Array:
+    """Transconductance of a setting at its nominal: stated, else from the IC's rating; NaN where not known."""
+    stated = setting.transconductance_range_ms
+    if stated is not None:
+        return np.full(np.shape(shunt_pf), stated[MID])
+    return rated_gm(setting, bench, shunt_pf)
+
+
+def rated_gm(setting: CircuitKeys, bench: Bench, shunt_pf: Array) -> Array:
+    """Least transconductance that the IC's rating stands for; NaN where there is no rating or it lacks something.
+
+    `shunt_pf` is the part's C0, used where the rating names none of its own.
+    """
+    rating, frequency = setting.rating, bench.requirement.frequency_mhz
+    if rating is None or rating.kind is None:
+        return np.full(np.shape(shunt_pf), np.nan)
+    c0 = shunt_pf if rating.shunt_capacitance_pf is None else np.full(np.shape(shunt_pf), rating.shunt_capacitance_pf)
+    load, factor = rating.load_pf or np.nan, rating.factor_inside
+    if rating.critical_transconductance_max_ms is not None:
+        return from_critical_ms(rating.critical_transconductance_max_ms, factor) + 0 * c0
+    if rating.negative_resistance_ohm is not None:
+        return from_negative_resistance_ms(rating.negative_resistance_ohm, frequency, load, factor) + 0 * c0
+    limit = rating.esr_max_ohm
+    if isinstance(limit, tuple):
+        row = list_row(limit, frequency, lossless_load_pf(setting))
+        load, limit = (np.nan, np.nan) if row is None else row[2:]
+    return from_esr_ms(limit or np.nan, frequency, load, c0, factor, esr_means=rating.esr_means)
+
+
+def lossless_load_pf(setting: CircuitKeys) -> float:
+    """Cin Cout/(Cin + Cout) + Cx at nominal values; NaN where a capacitor is not known."""
+    nodes = Nodes.of(setting)
+    c_in, c_out = nodes.input_pf[MID], nodes.output_pf[MID]
+    if setting.series_resistor_ohm == 0:
+        c_out += nodes.amplifier_output_pf[MID]
+    return c_in * c_out / (c_in + c_out) + nodes.across_pf[MID]
+
+
+def motional_resistance_ohm(columns: Columns, bench: Bench, esr_ohm: Array, shunt_pf: Array) -> Array:
+    """R1 by the way the sheets' ESR is to be read: itself, or ESR / (1 + C0/CL)² where it is stated at the load.
+
+    With no rated load the ESR itself is taken: the safe side.
+    """
+    if bench.crystal.esr_means == "motional":
+        return esr_ohm
+    load = columns.load_pf.reshape((-1,) + (1,) * (max(np.ndim(esr_ohm), np.ndim(shunt_pf)) - 1))
+    factor = np.where(np.isnan(load), 1.0, (1 + shunt_pf / load) ** 2)
+    return esr_ohm / factor
+
+
+def _crystal(columns: Columns, shunt: Array, motional: Array, esr: Array) -> Crystal:
+    dimensions = max(np.ndim(shunt), np.ndim(motional), np.ndim(esr))
+    shape = (-1,) + (1,) * (dimensions - 1)
+    return Crystal(columns.frequency_mhz.reshape(shape), columns.load_pf.reshape(shape), shunt, motional, esr)
+
+
+def as_reckoned(keys: CircuitKeys, bench: Bench) -> CircuitKeys:
+    """The keys with the series resistor taken out where it is counted as so much more ESR."""
+    if bench.crystal.series_resistor_rule != "add to ESR":
+        return keys
+    return keys.model_copy(update={"series_resistor_ohm": 0.0})
+
+
+def make_circuit(keys: CircuitKeys, bench: Bench, capacitances: Sequence[Array | float], gm: Array) -> Circuit:
+    """Circuit from `as_reckoned` keys, with capacitances at input, output, across and amplifier output."""
+    c_in, c_out, across, amplifier = capacitances
+    return Circuit(
+        c_in,
+        c_out,
+        across,
+        amplifier,
+        transconductance_ms=gm,
+        series_resistor_ohm=keys.series_resistor_ohm,
+        feedback_resistor_kohm=keys.feedback_kohm(bench.requirement.frequency_mhz),
+        output_resistance_kohm=keys.output_resistance_kohm,
+    )
+
+
+def _swing(keys: CircuitKeys) -> tuple[float, End]:
+    return np.nan if keys.swing_peak_v is None else keys.swing_peak_v, keys.swing_at
+
+
+def _corner_sets(
+    columns: Columns, bench: Bench, number: int, setting: Setting
+) -> Iterator[tuple[dict[str, Array], Array, Sequence[int]]]:
+    """For each limiter that may hold: every key at every corner, axes (part, C0, C1, ESR, node capacitances, gm).
+
+    Beside it the IC's greatest transconductance, and which index on the C0 axis stands for low, high and estimated low.
+    """
+    keys = setting.circuit
+    shunt, shunt_index = _shunt_ends(columns, number, with_floor=True)
+    crystal = crystal_at(columns, bench, number, shunt)
+    circuit, greatest_gm = corner_circuit(bench, keys, shunt)
+    limiters: tuple[Limiter, ...] = ("transconductance", "output") if keys.limiter == "unknown" else (keys.limiter,)
+    for limiter in limiters:
+        yield analyse(circuit, crystal, *_swing(keys), limiter, keys.probe_pf), greatest_gm, shunt_index
+
+
+def crystal_at(columns: Columns, bench: Bench, number: int, shunt: Array) -> Crystal:
+    """The crystals at the ends of their spans in one setting: C1 on axis 2, R1 on axis 3."""
+    motional = _two_ends(columns.motional_ff[number])[:, None, :, None, None, None]
+    esr = _two_ends(columns.esr_ohm[number])[:, None, None, :, None, None]
+    esr = motional_resistance_ohm(columns, bench, esr, shunt) + _added_resistance(bench, number)
+    return _crystal(columns, shunt, motional, esr)
+
+
+def corner_circuit(bench: Bench, stated: CircuitKeys, shunt: Array) -> tuple[Circuit, Array]:
+    """The circuit at its corners: node capacitances on axis 4, transconductances on axis 5; and the IC's greatest."""
+    keys = as_reckoned(stated, bench)
+    capacitances = _capacitance_corners(Nodes.of(keys))
+    gm, greatest_gm = _transconductances(bench, keys, (capacitances, shunt))
+    return make_circuit(keys, bench, capacitances, gm), greatest_gm
+
+
+def shunt_ends(columns: Columns, number: int) -> Array:
+    """C0 at its stated ends, on axis 1."""
+    return _shunt_ends(columns, number, with_floor=False)[0]
+
+
+def _shunt_ends(columns: Columns, number: int, *, with_floor: bool) -> tuple[Array, list[int]]:
+    """C0 low, high and estimated low on axis 1, each that differs once, and the index of each of the three."""
+    low, high = columns.shunt_pf[number, LOW], columns.shunt_pf[number, HIGH]
+    floor = np.minimum(columns.shunt_floor_pf, low) if with_floor else low
+    distinct, index = [low], [0]
+    for values in (high, floor):
+        same = next((at for at, known in enumerate(distinct) if np.array_equal(known, values)), None)
+        if same is None:
+            distinct.append(values)
+        index.append(len(distinct) - 1 if same is None else same)
+    return np.stack(distinct, axis=-1)[:, :, None, None, None, None], index
+
+
+def _added_resistance(bench: Bench, number: int) -> float:
+    if bench.crystal.series_resistor_rule != "add to ESR":
+        return 0.0
+    return bench.settings[number].circuit.series_resistor_ohm
+
+
+def _two_ends(span: Array) -> Array:
+    low, high = span[LOW], span[HIGH]
+    same = np.array_equal(low, high, equal_nan=True)
+    return low[:, None] if same else np.stack([low, high], axis=-1)
+
+
+def _capacitance_corners(nodes: Nodes) -> list[Array]:
+    """Input, output, across and amplifier output, each (1, 1, 1, 1, k, 1), over every combination of their ends."""
+    ends = [sorted({span[LOW], span[HIGH]}) if span[LOW] == span[LOW] else [np.nan] for span in vars(nodes).values()]
+    combinations = np.array(list(itertools.product(*ends)))
+    return [combinations[:, column].reshape(1, 1, 1, 1, -1, 1) for column in range(combinations.shape[1])]
+
+
+def _transconductances(bench: Bench, keys: CircuitKeys, of: tuple[Sequence[Array], Array]) -> tuple[Array, Array]:
+    """Transconductances to try, on the last axis, and the IC's greatest (NaN where it is not known)."""
+    capacitances, shunt = of
+    stated = keys.transconductance_range_ms
+    if stated is None:
+        return rated_gm(keys, bench, shunt), np.full((1,) * 6, np.nan)
+    low, _, high = stated
+    if low == high:
+        return np.full((1,) * 6, low), np.full((1,) * 6, np.nan)
+    circuit = make_circuit(keys, bench, capacitances, np.full((1,) * 6, low))
+    frequency = bench.requirement.frequency_mhz
+    turning = [np.clip(turning_transconductance_ms(circuit, frequency, c0), low, high) for c0 in (0.0, shunt)]
+    ends = [np.full((1,) * 6, low), np.full((1,) * 6, high), *turning]
+    shape = np.broadcast_shapes(*(x.shape for x in ends))
+    return np.concatenate([np.broadcast_to(x, shape) for x in ends], axis=-1), np.full((1,) * 6, high)
+
+
+def _widen(over: dict[str, Envelope], key: str, values: Array, shunt_index: Sequence[int]) -> None:
+    corners = (3, 4, 5)
+    parts, motional = values.shape[0], 2
+
+    def spread(reduced: NDArray[Any]) -> NDArray[Any]:
+        return np.broadcast_to(reduced[:, shunt_index], (parts, len(shunt_index), motional)).copy()
+
+    without = spread(np.logical_or.reduce(np.isnan(values), axis=corners))
+    low = spread(np.fmin.reduce(values, axis=corners))
+    high = spread(np.fmax.reduce(values, axis=corners))
+    if key in over:
+        known = over[key]
+        low, high = np.fmin(known.low, low), np.fmax(known.high, high)
+        without = without | known.some_without
+    over[key] = Envelope(low, high, without)

@@ -1,0 +1,256 @@
+"""Sentences: how each number was reached, why a requirement is met or not, and what to ask whom."""
+
+from __future__ import annotations
+
+import math
+from collections.abc import Callable, Iterable, Mapping, Sequence
+from dataclasses import dataclass
+
+from compare.bench import Bench, CircuitKeys
+from compare.offer import Offer
+from compare.stated import Taken
+from extract.model import Reading
+
+Ends = tuple[float, float, float]
+SYMBOLS = {
+    "esr_ohm": ("R1", "Ω"),
+    "shunt_capacitance_pf": ("C0", "pF"),
+    "motional_capacitance_ff": ("C1", "fF"),
+    "motional_inductance_mh": ("L1", "mH"),
+    "quality_factor": ("Q", ""),
+    "capacitance_ratio": ("C0/C1", ""),
+    "pulling_sensitivity_ppm_per_pf": ("pulling", "ppm/pF"),
+    "load_capacitance_pf": ("rated CL", "pF"),
+    "drive_level_uw": ("rated drive", "µW"),
+    "frequency_tolerance_ppm": ("make tolerance", "ppm"),
+    "frequency_stability_ppm": ("stability", "ppm"),
+    "ageing_ppm": ("ageing", "ppm"),
+    "operating_temperature_c": ("range", "°C"),
+    "turnover_temperature_c": ("T0", "°C"),
+    "parabolic_coefficient_ppm_per_c2": ("k", "ppm/°C²"),
+}
+FIELD_WORDS = {
+    "esr_ohm": "ESR",
+    "shunt_capacitance_pf": "shunt capacitance C0",
+    "motional_capacitance_ff": "motional capacitance C1",
+    "load_capacitance_pf": "rated load capacitance",
+    "drive_level_uw": "rated drive level",
+    "frequency_tolerance_ppm": "make tolerance",
+    "frequency_stability_ppm": "stability over temperature",
+    "ageing_ppm": "ageing",
+    "operating_temperature_c": "operating temperature range",
+    "turnover_temperature_c": "turnover temperature",
+    "parabolic_coefficient_ppm_per_c2": "parabolic coefficient",
+    "mode": "mode of vibration",
+}
+
+
+def figure(value: float | None, digits: int = 4) -> str:
+    """A number as a person writes it; `none` where there is none."""
+    if value is None or math.isnan(value):
+        return "none"
+    if math.isinf(value):
+        return "inf"
+    text = f"{value:.{digits}g}"
+    if "e" not in text:
+        return text
+    return f"{value:.0f}" if 1 <= abs(value) < 1e9 else text
+
+
+def ends_text(ends: Sequence[float], unit: str = "") -> str:
+    """`60 Ω`, or `40/50/60 Ω` for low, mid and high that differ."""
+    shown = list(dict.fromkeys(figure(value) for value in ends))
+    text = "/".join(figure(value) for value in ends) if len(shown) > 1 else shown[0]
+    return f"{text} {unit}".rstrip()
+
+
+def place(reading: Reading) -> str:
+    """Where it stands, with the word for a value that is not plainly stated."""
+    how = "" if reading.status == "stated" else f", {reading.status}"
+    return f"{reading.where}{how}{', to be looked at' if reading.check else ''}"
+
+
+def bound_word(taken: Taken) -> str:
+    if taken.limit_alone:
+        return " at most, limit used for all ends" if any(r.field == "esr_ohm" for r in taken.readings) else " at most"
+    return " typical, no limit" if taken.typical_only and any(r.field == "esr_ohm" for r in taken.readings) else ""
+
+
+def reading_text(name: str, taken: Taken) -> str:
+    """`R1 60 Ω at most (page 1)`: symbol, value, bound and place."""
+    symbol, unit = SYMBOLS[name]
+    if not taken.readings and not taken.stated:
+        return f"{symbol} not stated"
+    span = taken.span
+    value = "none (series resonance)" if math.isinf(span.mid) else ends_text((span.low, span.mid, span.high), unit)
+    places = "; ".join(dict.fromkeys(place(r) for r in taken.readings[:2]))
+    return f"{symbol} {value}{bound_word(taken)}" + (f" ({places})" if places else "")
+
+
+@dataclass(frozen=True)
+class Subject:
+    """One part in its circuit, with the numbers that the sentences quote."""
+
+    offer: Offer
+    bench: Bench
+    ends: Mapping[str, Ends]
+    lacking: Mapping[str, tuple[str, ...]]
+    c1_said: str
+    c0_said: str
+    budget_said: str
+    gm_said: str
+
+    @property
+    def circuit(self) -> CircuitKeys:
+        return self.bench.settings[0].circuit
+
+    def esr(self) -> str:
+        text = reading_text("esr_ohm", self.offer.at[0].esr)
+        if self.bench.crystal.esr_means == "at load":
+            text += ', read as RL: R1 = ESR/(1 + C0/CL rated)² (crystal.esr_means "at load")'
+        if self.bench.crystal.series_resistor_rule == "add to ESR":
+            added = figure(self.circuit.series_resistor_ohm)
+            text += f", plus the series resistor {added} Ω as ESR (crystal.series_resistor_rule)"
+        return text
+
+    def mid(self, key: str) -> str:
+        return figure(self.ends[key][1])
+
+    def capacitors(self) -> str:
+        keys, parts = self.circuit, []
+        for end, symbol in (("input", "Cin"), ("output", "Cout")):
+            fitted = getattr(keys, f"{end}_capacitor_pf")
+            stray = getattr(keys, f"{end}_stray_pf")
+            inside = keys.internal_at_each_pin_pf if end == "input" or keys.series_resistor_ohm == 0 else 0.0
+            terms = " + ".join(figure(v) for v in (fitted, stray, *([inside] if inside else [])))
+            parts.append(f"{symbol} {terms} pF")
+        text = f"{', '.join(parts)}, across {figure(keys.across_stray_pf)} pF"
+        text += f", Rf {figure(keys.feedback_kohm(self.offer.frequency_mhz))} kΩ"
+        if not math.isinf(keys.output_resistance_kohm):
+            text += f", Ro {figure(keys.output_resistance_kohm)} kΩ"
+        if keys.series_resistor_ohm:
+            text += f", Rd {figure(keys.series_resistor_ohm)} Ω"
+        return text
+
+    def load(self) -> str:
+        return reading_text("load_capacitance_pf", self.offer.load)
+
+
+def how(key: str, subject: Subject) -> str:
+    """One line: formula, readings with their places, values put in; or why there is no such number."""
+    lacking = subject.lacking[key]
+    if lacking:
+        return f"cannot be had: {', '.join(f'{name} not known' for name in lacking)}"
+    line = HOW[key](subject)
+    if all(math.isnan(end) for end in subject.ends[key]):
+        return f"there is none: {NONE.get(key, 'the circuit cannot oscillate with this crystal')}; {line}"
+    return line
+
+
+NONE = {
+    "startup_ms": "it does not start",
+    "greatest_esr_ohm": "no R1 would be low enough",
+    "allowed_esr_ohm": "no R1 would be low enough",
+    "greatest_transconductance_ms": "nothing bounds it, or the circuit cannot oscillate with this crystal",
+}
+
+
+def _inductance(s: Subject) -> str:
+    stated = s.offer.at[0].motional.get("motional_inductance_mh")
+    if stated is not None:
+        return f"as stated: {reading_text('motional_inductance_mh', stated)}"
+    return f"L1 = (1 + C1/(C0 + CL))/(ω² C1); {s.c1_said}, {s.c0_said}, {s.load()}"
+
+
+def _quality(s: Subject) -> str:
+    stated = s.offer.at[0].motional.get("quality_factor")
+    if stated is not None:
+        return f"as stated: {reading_text('quality_factor', stated)}"
+    return f"Q = 1/(ωs C1 R1); {s.c1_said}, {s.esr()}"
+
+
+def _series(s: Subject) -> str:
+    if s.offer.series:
+        return f"fs = f: a series-resonant part, f {s.offer.case.frequencies_mhz[0]:.10g} MHz"
+    return f"fs = f/√(1 + C1/(C0 + CL)); f {s.offer.frequency_mhz:.10g} MHz, {s.c1_said}, {s.c0_said}, {s.load()}"
+
+
+def _circuit_load(s: Subject) -> str:
+    return f"CL = -1/(ω Im Z) of the circuit at its critical transconductance, C0 not in; {s.capacitors()}"
+
+
+def _load_error(s: Subject) -> str:
+    against = "fs (series-resonant part)" if s.offer.series else s.load()
+    return (
+        "(f - f rated)/f rated, f = fs √(1 + C1/(C0 + CL)); "
+        f"circuit's CL {s.mid('circuit_load_pf')} pF against {against}; {s.c1_said}, {s.c0_said}"
+    )
+
+
+def _drive(s: Subject) -> str:
+    keys = s.circuit
+    probe = f", {figure(keys.probe_pf)} pF of probe counted there" if keys.probe_pf else ""
+    return (
+        f"P = I² R1, I = ω Cin V (1 + (C0 + Cx)/Cs) with the circuit's losses counted; V {figure(keys.swing_v)} V "
+        f"{keys.swing_as} at the {keys.swing_at} end{probe}; {s.esr()}, {s.c0_said}; {s.capacitors()}"
+    )
+
+
+def _margin(s: Subject) -> str:
+    rn, rl = s.mid("negative_resistance_ohm"), s.mid("load_resonance_resistance_ohm")
+    return f"-Rn/RL = {rn.removeprefix('-')}/{rl}; {s.gm_said}, {s.esr()}, {s.c0_said}; {s.capacitors()}"
+
+
+def _gain_ratio(s: Subject) -> str:
+    return f"gm/critical gm, critical {s.mid('critical_transconductance_ms')} mS; {s.gm_said}, {s.esr()}"
+
+
+HOW: dict[str, Callable[[Subject], str]] = {
+    "motional_capacitance_ff": lambda s: s.c1_said,
+    "motional_inductance_mh": _inductance,
+    "quality_factor": _quality,
+    "series_resonance_mhz": _series,
+    "parallel_resonance_mhz": lambda s: (
+        f"fp = fs √(1 + C1/C0); fs {s.ends['series_resonance_mhz'][1]:.9g} MHz, {s.c1_said}, {s.c0_said}"
+    ),
+    "circuit_load_pf": _circuit_load,
+    "load_resonance_resistance_ohm": lambda s: (
+        f"RL = R1 (1 + C0/CL)²; {s.esr()}, {s.c0_said}, CL {s.mid('circuit_load_pf')} pF"
+    ),
+    "negative_resistance_ohm": lambda s: (
+        f"Re Z of the active circuit at {s.offer.frequency_mhz:.10g} MHz, C0 not in; {s.gm_said}; {s.capacitors()}"
+    ),
+    "margin": _margin,
+    "gain_ratio": _gain_ratio,
+    "resistance_headroom": lambda s: (
+        f"-Re Z/R1, C0 taken into the circuit; {s.gm_said}, {s.esr()}, {s.c0_said}; {s.capacitors()}"
+    ),
+    "greatest_esr_ohm": lambda s: (
+        f"R1 at which R1 + Re Z = 0, C0 taken into the circuit; {s.gm_said}, {s.c0_said}; {s.capacitors()}"
+    ),
+    "allowed_esr_ohm": lambda s: (
+        f"greatest ESR/margin = {s.mid('greatest_esr_ohm')}/{figure(s.bench.requirement.margin)} "
+        f"({s.bench.requirement.margin_source})"
+    ),
+    "critical_transconductance_ms": lambda s: (
+        f"least gm with Re Z + R1 = 0 and Im Z + X1 = 0, C0 in; {s.esr()}, {s.c0_said}; {s.capacitors()}"
+    ),
+    "greatest_transconductance_ms": lambda s: (
+        f"greatest gm with Re Z + R1 = 0 and Im Z + X1 = 0, C0 in; {s.esr()}, {s.c0_said}; {s.capacitors()}"
+    ),
+    "load_error_ppm": _load_error,
+    "trim_ppm_per_pf": lambda s: (
+        f"df/(f dCL) = -C1/(2 (C0 + CL)²); {s.c1_said}, {s.c0_said}, circuit's CL {s.mid('circuit_load_pf')} pF"
+    ),
+    "drive_level_uw": _drive,
+    "startup_ms": lambda s: (
+        f"ln(10⁵)/σ, σ ≈ (-Re Z - R1)/(2 L1), C0 in; {s.gm_said}, {s.esr()}, {s.c0_said}, {s.c1_said}"
+    ),
+    "total_ppm": lambda s: s.budget_said,
+}
+
+
+def joined(words: Iterable[str]) -> str:
+    """`a`, `a and b`, `a, b and c`."""
+    listed = list(words)
+    return " and ".join(filter(None, [", ".join(listed[:-1]), *listed[-1:]]))

@@ -1,0 +1,440 @@
+"""Which parts offer the bench's frequency, and each as one offer: options chosen, readings taken."""
+
+from __future__ import annotations
+
+import math
+import re
+from collections.abc import Iterable, Mapping, Sequence
+from dataclasses import dataclass, field, replace
+
+from compare.bench import Bench
+from compare.stated import (
+    NOTHING,
+    Case,
+    Span,
+    Taken,
+    holds,
+    narrowest,
+    rated_drive,
+    readings_for,
+    span_of,
+    take,
+    union,
+)
+from extract.model import Part, Reading, SpecSheet
+
+SAME_PPM, ROUNDED_PPM, NEAR_PPM = 1.0, 50.0, 500.0
+OVERTONES = {"fundamental": 1, "third": 3, "fifth": 5, "seventh": 7, "ninth": 9}
+MODE_UNKNOWN_ABOVE_MHZ = 20.0  # common practice, no source: third overtones are sold from there up
+FORK_BELOW_MHZ = 0.2  # common practice, no source: what is neither called a fork nor an AT strip down here is a fork
+C1_ROUTES = (
+    "motional_capacitance_ff",
+    "motional_inductance_mh",
+    "capacitance_ratio",
+    "pulling_sensitivity_ppm_per_pf",
+    "quality_factor",
+)
+Band = tuple[float, float]
+
+
+@dataclass(frozen=True)
+class AtSetting:
+    """The readings that a condition of the circuit takes: those stated for its temperature, else those for room."""
+
+    esr: Taken
+    shunt_capacitance: Taken
+    motional: Mapping[str, Taken]
+    """Whatever is stated of C1, L1, C0/C1, pulling and Q."""
+    room_only: bool
+
+
+@dataclass(frozen=True)
+class Offer:
+    """One part as it would be ordered for this bench."""
+
+    sheet: SpecSheet
+    part: Part
+    case: Case
+    mode: str | None
+    overtone: int | None
+    fork: bool
+    series: bool
+    load: Taken
+    """Rated load in pF, inf for a series-resonant part."""
+    load_options: tuple[float, ...]
+    load_range: Band | None
+    at: tuple[AtSetting, ...]
+    """One for each setting of the bench."""
+    tolerance: Taken
+    stability: Taken
+    loosest: Mapping[str, Taken]
+    """Tolerance and stability at their loosest option, where there is a choice."""
+    ageing: Taken
+    ageing_years: float
+    operating_range: Taken
+    stability_band: Band | None
+    turnover: Taken
+    parabolic: Taken
+    drive: Taken
+    chosen: Mapping[str, object]
+    said: tuple[tuple[str, str], ...] = ()
+    """(what it is about, sentence) for each rule that was used in taking the readings."""
+
+    @property
+    def frequency_mhz(self) -> float:
+        return self.case.frequencies_mhz[0]
+
+    @property
+    def mode_known(self) -> bool:
+        return self.overtone is not None
+
+    def taken(self) -> dict[str, Taken]:
+        """What is taken of each field, at the circuit itself."""
+        room = self.at[0]
+        by_field = {
+            "esr_ohm": room.esr,
+            "shunt_capacitance_pf": room.shunt_capacitance,
+            **room.motional,
+            "load_capacitance_pf": self.load,
+            "frequency_tolerance_ppm": self.tolerance,
+            "frequency_stability_ppm": self.stability,
+            "ageing_ppm": self.ageing,
+            "operating_temperature_c": self.operating_range,
+            "turnover_temperature_c": self.turnover,
+            "parabolic_coefficient_ppm_per_c2": self.parabolic,
+            "drive_level_uw": self.drive,
+        }
+        return {name: taken for name, taken in by_field.items() if taken.readings}
+
+
+@dataclass(frozen=True)
+class Match:
+    """How a part stands to the bench's frequency: `printed_mhz` where it offers it, else the reason in `said`."""
+
+    printed_mhz: float | None
+    said: str = ""
+
+
+@dataclass
+class Offers:
+    """The parts that offer the frequency, in the order read, and a note for each that does not."""
+
+    offers: list[Offer] = field(default_factory=list)
+    notes: list[dict[str, object]] = field(default_factory=list)
+
+
+def find_offers(sheets: Sequence[SpecSheet], bench: Bench) -> Offers:
+    """Every part that offers the bench's frequency; its load still open where the sheet leaves a choice."""
+    found = Offers()
+    for sheet in sheets:
+        for part in sheet.parts:
+            match = match_frequency(part, bench.requirement.frequency_mhz)
+            if match.printed_mhz is None:
+                found.notes.append({"level": "info", "message": f"{named(sheet, part)}: {match.said}", "where": None})
+            else:
+                found.offers.append(make_offer(sheet, part, match, bench))
+    return found
+
+
+def named(sheet: SpecSheet, part: Part) -> str:
+    return f"{sheet.file}, {part.part_number}" if part.part_number else sheet.file
+
+
+def match_frequency(part: Part, asked_mhz: float) -> Match:
+    """Whether the part offers the frequency, and how."""
+    readings = [r for r in part.readings if r.field == "frequency_mhz"]
+    if not readings:
+        return Match(None, "states no frequency")
+    named_ones = [(value, r) for r in readings for value in _named_frequencies(r)]
+    for value, _ in named_ones:
+        if _ppm(value, asked_mhz) <= SAME_PPM:
+            return Match(value)
+    for value, reading in named_ones:
+        decimals = decimals_printed(reading.raw, value)
+        if _ppm(value, asked_mhz) <= ROUNDED_PPM and math.isclose(round(asked_mhz, decimals), value, rel_tol=1e-9):
+            apart = f"{asked_mhz:.10g} MHz rounded to what is printed ({_ppm(value, asked_mhz):.1f} ppm apart)"
+            return Match(value, f"the sheet's {value:.10g} MHz is taken as the bench's {apart}")
+    if any(_in_range(r, asked_mhz) for r in readings):
+        return Match(asked_mhz)
+    return Match(None, _why_not(named_ones, readings, asked_mhz))
+
+
+def _named_frequencies(reading: Reading) -> list[float]:
+    return [value for value in (reading.typ, *reading.options) if value is not None]
+
+
+def _in_range(reading: Reading, asked_mhz: float) -> bool:
+    if reading.min is None or reading.max is None:
+        return False
+    slack = asked_mhz * SAME_PPM * 1e-6
+    return reading.min - slack <= asked_mhz <= reading.max + slack
+
+
+def _ppm(value: float, asked: float) -> float:
+    return abs(value / asked - 1) * 1e6
+
+
+def decimals_printed(raw: str, value_mhz: float) -> int:
+    """Decimals, counted in MHz, of the number in `raw` that stands for the value; 12 where it cannot be found there."""
+    for number in re.findall(r"\d+(?:[.,]\d+)*", raw):
+        for text in {number, number.replace(",", "."), number.replace(",", "")}:
+            if text.count(".") > 1:
+                continue
+            for shift in (0, 3, 6):
+                if math.isclose(float(text) / 10**shift, value_mhz, rel_tol=1e-12):
+                    return len(text.partition(".")[2]) + shift
+    return len(f"{value_mhz:.12g}".partition(".")[2])
+
+
+def _why_not(named_ones: Sequence[tuple[float, Reading]], readings: Sequence[Reading], asked: float) -> str:
+    if named_ones:
+        nearest = min((value for value, _ in named_ones), key=lambda value: _ppm(value, asked))
+        if _ppm(nearest, asked) <= NEAR_PPM:
+            return f"near, but not {asked:.10g} MHz: {nearest:.10g} MHz is {_ppm(nearest, asked):.3g} ppm off"
+    ends = [f"{r.min:.10g} to {r.max:.10g} MHz" for r in readings if r.min is not None and r.max is not None]
+    values = [f"{value:.10g} MHz" for value, _ in named_ones]
+    listed = ", ".join([*values[:5], *(["..."] if len(values) > 5 else []), *ends[:3]])
+    return f"does not offer {asked:.10g} MHz" + (f" (states {listed})" if listed else "")
+
+
+def make_offer(sheet: SpecSheet, part: Part, match: Match, bench: Bench, load_pf: float | None = None) -> Offer:
+    """The part as it would be ordered. `load_pf` settles the load where the sheet leaves a choice."""
+    asked = bench.requirement
+    said: list[tuple[str, str]] = [("frequency_mhz", match.said)] if match.said else []
+    chosen: dict[str, object] = {}
+    frequencies = tuple(dict.fromkeys((asked.frequency_mhz, match.printed_mhz or asked.frequency_mhz)))
+    case = Case(frequencies, package=part.package)
+    fork = is_fork(part, case)
+    mode = _settle_mode(part, case, fork=fork, trap=bench.circuit.overtone_trap, chosen=chosen, said=said)
+    case = replace(case, mode=mode)
+    series = part.resonance == "series"
+    options, load_range = ((), None) if series else _load_choice(part, case)
+    load = _load(part, case, series=series, load_pf=load_pf, open_choice=bool(options or load_range))
+    case = replace(case, load_pf=load.span.mid if load.stated else None)
+    if load_pf is not None:
+        chosen["load_capacitance_pf"] = load_pf
+    operating = _settle_range(part, case, asked.temperature_c, chosen, said)
+    stability, band = _stability(part, case, asked.temperature_c, operating, fork)
+    tolerance, loose_tolerance = _tightest(take(part, "frequency_tolerance_ppm", case), chosen)
+    stability, loose_stability = _tightest(stability, chosen)
+    loosest = {"frequency_tolerance_ppm": loose_tolerance, "frequency_stability_ppm": loose_stability}
+    ageing, years = _ageing(part, case, asked.years)
+    return Offer(
+        sheet=sheet,
+        part=part,
+        case=case,
+        mode=mode,
+        overtone=overtone_of(mode),
+        fork=fork,
+        series=series,
+        load=load,
+        load_options=options,
+        load_range=load_range,
+        at=tuple(_at_setting(part, case, setting.temperature_c) for setting in bench.settings),
+        tolerance=tolerance,
+        stability=stability,
+        loosest={name: taken for name, taken in loosest.items() if taken is not None},
+        ageing=ageing,
+        ageing_years=years,
+        operating_range=operating,
+        stability_band=band,
+        turnover=take(part, "turnover_temperature_c", case),
+        parabolic=take(part, "parabolic_coefficient_ppm_per_c2", case),
+        drive=rated_drive(part, case),
+        chosen=chosen,
+        said=tuple(said),
+    )
+
+
+def with_load(offer: Offer, load_pf: float, bench: Bench) -> Offer:
+    """The same part ordered with the load given."""
+    match = Match(
+        offer.case.frequencies_mhz[-1], next((text for about, text in offer.said if about == "frequency_mhz"), "")
+    )
+    made = make_offer(offer.sheet, offer.part, match, bench, load_pf)
+    return replace(made, load_options=offer.load_options, load_range=offer.load_range)
+
+
+def is_fork(part: Part, case: Case) -> bool:
+    """A tuning fork by its cut, by its coefficients, or by a frequency at which nothing else is sold."""
+    if part.cut is not None:
+        return part.cut == "tuning fork"
+    fields = {r.field for r in part.readings}
+    if fields & {"turnover_temperature_c", "parabolic_coefficient_ppm_per_c2"}:
+        return True
+    return case.frequencies_mhz[0] < FORK_BELOW_MHZ and "frequency_stability_ppm" not in fields
+
+
+def overtone_of(mode: str | None) -> int | None:
+    """1 for "fundamental", 3 for "third overtone"; None where the words name none."""
+    if mode is None:
+        return None
+    words = mode.casefold()
+    for word, order in OVERTONES.items():
+        if word in words:
+            return order
+    digits = re.match(r"\s*(\d+)", words)
+    return int(digits[1]) if digits and int(digits[1]) % 2 else None
+
+
+def _settle_mode(
+    part: Part, case: Case, *, fork: bool, trap: bool, chosen: dict[str, object], said: list[tuple[str, str]]
+) -> str | None:
+    if part.mode is not None:
+        return part.mode
+    modes = _modes_offered(part, case)
+    if len(modes) > 1:
+        overtones = [mode for mode in modes if overtone_of(mode) != 1]
+        mode = min(overtones if trap and overtones else modes, key=lambda mode: overtone_of(mode) or 99)
+        why = "for the circuit has an overtone trap" if trap and overtones else "for the circuit has no overtone trap"
+        chosen["mode"] = mode
+        said.append(("mode", f"offered as {' and '.join(sorted(modes))}: {mode} taken, {why}"))
+        return mode
+    if modes:
+        return modes.pop()
+    frequency = case.frequencies_mhz[0]
+    if fork or frequency <= MODE_UNKNOWN_ABOVE_MHZ:
+        why = "a tuning fork" if fork else f"not above {MODE_UNKNOWN_ABOVE_MHZ:g} MHz"
+        said.append(("mode", f"mode not stated: taken as fundamental, as {why} (common practice, no source)"))
+        return "fundamental"
+    return None
+
+
+def _modes_offered(part: Part, case: Case) -> set[str]:
+    """Modes that frequency readings name for this frequency, else those that any reading names for it."""
+    frequency = case.frequencies_mhz[0]
+    offering = [
+        r
+        for r in part.readings
+        if r.field == "frequency_mhz"
+        and (_in_range(r, frequency) or any(v in case.frequencies_mhz for v in _named_frequencies(r)))
+    ]
+    modes = {r.when.mode for r in offering if r.when.mode and holds(r.when, case)}
+    return modes or {r.when.mode for r in part.readings if r.when.mode and holds(r.when, case)}
+
+
+def _load_choice(part: Part, case: Case) -> tuple[tuple[float, ...], Band | None]:
+    """The loads that may be ordered: a list, or a range; neither where the sheet fixes one or states none."""
+    found = readings_for(part, "load_capacitance_pf", replace(case, load_pf=None))
+    if not found or any(r.typ is not None and not r.options for r in found):
+        fixed = sorted({r.typ for r in found if r.typ is not None})
+        return (tuple(fixed), None) if len(fixed) > 1 else ((), None)
+    options = sorted({value for r in found for value in r.options})
+    if options:
+        return tuple(options), None
+    ranges = [(r.min, r.max) for r in found if r.min is not None and r.max is not None]
+    return (), (min(low for low, _ in ranges), max(high for _, high in ranges)) if ranges else None
+
+
+def _load(part: Part, case: Case, *, series: bool, load_pf: float | None, open_choice: bool) -> Taken:
+    found = tuple(readings_for(part, "load_capacitance_pf", case))
+    if series:
+        return Taken(Span.at(math.inf))
+    if load_pf is not None:
+        return Taken(Span.at(load_pf), found)
+    if open_choice or not found:
+        return Taken(readings=found)
+    reading = found[0]
+    value = next(v for v in (reading.typ, reading.max, reading.min) if v is not None)
+    return Taken(Span.at(value), found)
+
+
+def covers(band: Band, product: Band) -> bool:
+    return band[0] <= product[0] and product[1] <= band[1]
+
+
+def band_of(reading: Reading) -> Band | None:
+    return (reading.min, reading.max) if reading.min is not None and reading.max is not None else None
+
+
+def _settle_range(
+    part: Part, case: Case, product: Band | None, chosen: dict[str, object], said: list[tuple[str, str]]
+) -> Taken:
+    """Of several ranges the narrowest that covers the product's, else the widest."""
+    readings = readings_for(part, "operating_temperature_c", replace(case, temperature_c=None))
+    ranges = [(band, r) for r in readings if (band := band_of(r)) is not None]
+    if not ranges:
+        return Taken(readings=tuple(readings))
+    covering = [pair for pair in ranges if product and covers(pair[0], product)]
+    width = {id(r): band[1] - band[0] for band, r in ranges}
+    if covering:
+        (low, high), reading = min(covering, key=lambda pair: width[id(pair[1])])
+    else:
+        (low, high), reading = max(ranges, key=lambda pair: width[id(pair[1])])
+    if len({band for band, _ in ranges}) > 1:
+        chosen["operating_temperature_c"] = [low, high]
+        why = "the narrowest that covers the product's" if covering else "the widest"
+        said.append(("operating_temperature_c", f"range {low:g} to {high:g} °C taken, {why} of {len(ranges)} offered"))
+    return Taken(Span(low, (low + high) / 2, high), (reading,))
+
+
+def _stability(part: Part, case: Case, product: Band | None, operating: Taken, fork: bool) -> tuple[Taken, Band | None]:
+    """Stability for the range that is asked, and the band of temperature it is stated for (None: the part's range)."""
+    if fork:
+        return NOTHING, None
+    anywhere = replace(case, temperature_c=None)
+    found = [r for r in part.readings if r.field == "frequency_stability_ppm" and holds(r.when, anywhere)]
+    own = (operating.span.low, operating.span.high) if operating.stated else None
+    for need in (product, own):
+        covering = [r for r in found if need and r.when.temperature_c and covers(r.when.temperature_c, need)]
+        if covering:
+            return _stability_of(narrowest(covering))
+    plain = [r for r in found if r.when.temperature_c is None]
+    if plain:
+        return _stability_of(narrowest(plain))
+    return _stability_of(sorted(found, key=_band_width)[-1:])
+
+
+def _band_width(reading: Reading) -> float:
+    low, high = reading.when.temperature_c or (0.0, 0.0)
+    return high - low
+
+
+def _stability_of(readings: Sequence[Reading]) -> tuple[Taken, Band | None]:
+    if not readings:
+        return NOTHING, None
+    several = f"{len(readings)} readings of frequency_stability_ppm hold; the worse counts for each requirement"
+    taken = Taken(union([span_of(r) for r in readings]), tuple(readings), said=(several,) if len(readings) > 1 else ())
+    return taken, readings[0].when.temperature_c
+
+
+def _tightest(taken: Taken, chosen: dict[str, object]) -> tuple[Taken, Taken | None]:
+    """The tightest option, and the same at the loosest one; a single value is no choice."""
+    if not taken.readings or not all(r.options for r in taken.readings):
+        return taken, None
+    options = sorted({abs(value) for r in taken.readings for value in r.options})
+    if len(options) > 1:
+        chosen[taken.readings[0].field] = options[0]
+    tight, loose = (replace(taken, span=Span(-size, 0.0, size)) for size in (options[0], options[-1]))
+    return tight, loose if len(options) > 1 else None
+
+
+def _ageing(part: Part, case: Case, years: float) -> tuple[Taken, float]:
+    """The reading that answers for the years asked: one stated for as long or longer, else the longest stated."""
+    found = [r for r in part.readings if r.field == "ageing_ppm" and holds(r.when, case)]
+    if not found:
+        return NOTHING, 1.0
+    spans = sorted({r.when.years or 1.0 for r in found})
+    stated_years = next((y for y in spans if y >= years), spans[-1])
+    counting = narrowest(r for r in found if (r.when.years or 1.0) == stated_years)
+    return Taken(union([span_of(r) for r in counting]), tuple(counting)), stated_years
+
+
+def _at_setting(part: Part, case: Case, temperature_c: float | None) -> AtSetting:
+    warm = case if temperature_c is None else replace(case, temperature_c=temperature_c)
+
+    def at(name: str) -> Taken:
+        taken = take(part, name, warm)
+        # Nothing is stated for this temperature: what holds at room is used, and the message says so.
+        return taken if taken.readings else take(part, name, case)
+
+    esr = at("esr_ohm")
+    motional = {name: taken for name in C1_ROUTES if (taken := at(name)).readings}
+    stated_here = any(r.when.temperature_c and holds(r.when, warm) for r in esr.readings)
+    room_only = temperature_c is not None and bool(esr.readings) and not stated_here
+    return AtSetting(esr, at("shunt_capacitance_pf"), motional, room_only)
+
+
+def fields_to_check(takens: Iterable[Taken]) -> list[str]:
+    """Fields whose reading, as used, asks for a look."""
+    return sorted({r.field for taken in takens for r in taken.readings if r.check})

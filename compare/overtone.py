@@ -1,0 +1,85 @@
+"""Mode: an overtone part is judged with its fundamental in the same circuit, which may be the one that grows."""
+
+from __future__ import annotations
+
+import numpy as np
+
+from compare.bench import Bench, Setting
+from compare.circuit import Array
+from compare.columns import Columns, Flags
+from compare.corners import corner_circuit, crystal_at, shunt_ends
+from compare.motional import series_resonance_mhz
+from compare.oscillation import Crystal, analyse
+from compare.verdict import CANNOT_TELL, FALLS_SHORT, MEETS, Judged, Silence, transconductance_missing
+
+GREATEST_FUNDAMENTAL_ESR = 1.0
+"""The fundamental's R1 lies between 1/n² of the stated one, as of one blank, and the stated one itself."""
+
+
+def judge_mode(columns: Columns, bench: Bench, known: Silence) -> Judged | None:
+    """Verdict on the mode of each part that is an overtone or may be one; None where there is no such part."""
+    overtone = np.nan_to_num(columns.overtone, nan=0.0) > 1
+    unknown = np.isnan(columns.overtone)
+    n = len(columns)
+    if not (overtone | unknown).any():
+        return None
+    faster, starts = np.zeros(n, dtype=bool), np.zeros(n, dtype=bool)
+    which = np.flatnonzero(overtone)
+    if which.size:
+        faster[which], starts[which] = fundamental_against(columns.take(which), bench)
+    trap = bench.circuit.overtone_trap
+    missing = {"mode": unknown} if unknown.any() else {}
+    for key, flags in _lacking(columns, bench, known).items():
+        if (flags & overtone).any() and not trap:
+            missing[key] = flags & overtone
+    lacking = np.logical_or.reduce([unknown, *missing.values()])
+    by_circuit = np.where(faster, FALLS_SHORT, np.where(starts, CANNOT_TELL, MEETS))
+    verdict = np.where(lacking, CANNOT_TELL, MEETS if trap else by_circuit)
+    none = np.full(n, np.nan)
+    return Judged("mode", overtone | unknown, verdict, none, none.copy(), missing)
+
+
+def _lacking(columns: Columns, bench: Bench, known: Silence) -> dict[str, Flags]:
+    keys = {key: np.full(len(columns), gone) for key, gone in known.bench_keys.items() if key != "circuit.swing_v"}
+    return keys | {"esr_ohm": known.esr} | transconductance_missing(columns, bench)
+
+
+def fundamental_against(columns: Columns, bench: Bench) -> tuple[Flags, Flags]:
+    """(n,) whether the fundamental grows faster than the overtone at any corner, and whether it can start at any."""
+    faster, starts = np.zeros(len(columns), dtype=bool), np.zeros(len(columns), dtype=bool)
+    for number, setting in enumerate(bench.settings):
+        own, fundamental = _growths(columns, bench, number, setting)
+        corners = tuple(range(1, own.ndim))
+        faster |= (fundamental > own).any(axis=corners)
+        starts |= (fundamental > 0).any(axis=corners)
+    return faster, starts
+
+
+def _growths(columns: Columns, bench: Bench, number: int, setting: Setting) -> tuple[Array, Array]:
+    """Growth (1/ms, 0 where it does not start) of the overtone and of its fundamental at each corner.
+
+    The fundamental: f/n, L1 the same, C1 n² times, C0 the same, R1 1/n² of the stated one and once the stated one.
+    """
+    shunt = shunt_ends(columns, number)
+    crystal = crystal_at(columns, bench, number, shunt)
+    circuit, _ = corner_circuit(bench, setting.circuit, shunt)
+    order = columns.overtone.reshape(-1, 1, 1, 1, 1, 1)
+    fs = series_resonance_mhz(*np.broadcast_arrays(*_with_known_load(crystal)))
+    own = _growth(analyse(circuit, crystal)["startup_ms"])
+    _, _, _, motional, esr = crystal
+    lower = [
+        Crystal(fs / order, np.inf, shunt, motional * order**2, esr * part)
+        for part in (1 / order**2, GREATEST_FUNDAMENTAL_ESR)
+    ]
+    grown = [_growth(analyse(circuit, one)["startup_ms"]) for one in lower]
+    return own, np.maximum(*np.broadcast_arrays(*grown))
+
+
+def _with_known_load(crystal: Crystal) -> tuple[Array, Array, Array, Array]:
+    frequency, load, shunt, motional, _ = crystal
+    # Where no rated load is stated the nominal frequency stands for fs: some hundred ppm, which growth does not feel.
+    return frequency, shunt, motional, np.where(np.isnan(load), np.inf, load)
+
+
+def _growth(startup_ms: Array) -> Array:
+    return np.nan_to_num(1 / startup_ms, nan=0.0)

@@ -1,0 +1,299 @@
+"""From sheets and bench to columns of numbers and verdicts; what review and ranking share."""
+
+from __future__ import annotations
+
+import math
+from collections.abc import Mapping, Sequence
+from dataclasses import dataclass, replace
+from typing import Any
+
+import numpy as np
+
+from compare.bench import Bench
+from compare.circuit import Array
+from compare.columns import MID, Columns, Whole, make_columns
+from compare.corners import Reckoned, lossless_load_pf, reckon
+from compare.explain import Subject, how
+from compare.offer import Offer, Offers, fields_to_check, find_offers, with_load
+from compare.overtone import judge_mode
+from compare.questions import question
+from compare.reasons import Standing, budget_words, reasons
+from compare.result import Number, numbers
+from compare.sources import ageing_words, c0_words, c1_words, gm_words, remarks
+from compare.terms import Total, total_ppm
+from compare.verdict import (
+    CANNOT_TELL,
+    FALLS_SHORT,
+    GAINS,
+    MEETS,
+    WORDS,
+    Judged,
+    judge,
+    of_part,
+    ppm_slack,
+    silence,
+)
+from extract.model import SpecSheet
+
+
+@dataclass(frozen=True)
+class Reckoning:
+    """Everything that is known of all parts in the circuit, a column each."""
+
+    bench: Bench
+    columns: Columns
+    reckoned: Reckoned
+    total: Total
+    numbers: Mapping[str, Number]
+    judged: Mapping[str, Judged]
+    verdict: Whole
+    loosest_slack: Array
+    notes: tuple[dict[str, Any], ...]
+
+    def __len__(self) -> int:
+        return len(self.columns)
+
+
+def reckon_sheets(sheets: Sequence[SpecSheet], bench: Bench) -> Reckoning | Offers:
+    """All parts that offer the frequency, reckoned together; the offers alone where there is none."""
+    found = find_offers(sheets, bench)
+    found.notes += bench_notes(bench)
+    if not found.offers:
+        return found
+    offers = choose_loads(found.offers, bench)
+    return reckon_offers(offers, bench, found.notes)
+
+
+def reckon_offers(offers: Sequence[Offer], bench: Bench, notes: Sequence[dict[str, Any]] = ()) -> Reckoning:
+    """Columns, corners, numbers and verdicts of offers whose options are settled."""
+    columns = make_columns(offers, bench)
+    reckoned = reckon(columns, bench)
+    judged, total = judge(columns, bench, reckoned)
+    known = silence(columns, bench)
+    mode = judge_mode(columns, bench, known)
+    if mode is not None:
+        judged["mode"] = mode
+    least = judge_least_esr(columns, bench)
+    if least is not None:
+        judged["esr_ohm"] = least
+    rating = judge_rating(columns, bench)
+    if rating is not None:
+        judged["rating"] = rating
+    return Reckoning(
+        bench=bench,
+        columns=columns,
+        reckoned=reckoned,
+        total=total,
+        numbers=numbers(columns, bench, reckoned, total, known),
+        judged=judged,
+        verdict=of_part(judged, len(columns)),
+        loosest_slack=_loosest_slack(columns, bench, reckoned),
+        notes=tuple(notes),
+    )
+
+
+def bench_notes(bench: Bench) -> list[dict[str, Any]]:
+    """What the bench leaves open: defaults taken, ppm not judged."""
+    said = list(bench.taken)
+    asked = bench.requirement
+    if asked.use is not None and asked.limits_ppm is None:
+        said.append(f"requirement.use {asked.use} sets no single limit and total_ppm is not given: ppm is not judged")
+    return [{"level": "info", "message": text, "where": None} for text in said]
+
+
+def choose_loads(offers: Sequence[Offer], bench: Bench) -> list[Offer]:
+    """Each offer with its load settled: the option with the least worst-case load error in this circuit."""
+    open_ones = [at for at, offer in enumerate(offers) if offer.load_options or offer.load_range]
+    settled = list(offers)
+    nominal = lossless_load_pf(bench.settings[0].circuit)
+    if not open_ones or math.isnan(nominal):
+        return settled
+    guessed = [with_load(offers[at], _nearest(offers[at], nominal), bench) for at in open_ones]
+    columns = make_columns(guessed, bench)
+    reckoned = reckon(columns, bench)
+    loads = [reckoned.low("circuit_load_pf"), reckoned.nominal["circuit_load_pf"], reckoned.high("circuit_load_pf")]
+    for number, (at, guess) in enumerate(zip(open_ones, guessed, strict=True)):
+        low, mid, high = (float(values[number]) for values in loads)
+        if math.isnan(mid):  # no ESR, no steady state: the lossless load serves for choosing
+            low = mid = high = nominal
+        load, why = _best_load(offers[at], (low, mid, high), float(columns.shunt_pf[0, MID, number]))
+        chosen = guess if load == guess.load.span.mid else with_load(offers[at], load, bench)
+        settled[at] = replace(chosen, said=(*chosen.said, ("load_capacitance_pf", why)))
+    return settled
+
+
+def _nearest(offer: Offer, load_pf: float) -> float:
+    if offer.load_range is not None:
+        return min(max(load_pf, offer.load_range[0]), offer.load_range[1])
+    return min(offer.load_options, key=lambda option: abs(option - load_pf))
+
+
+def _best_load(offer: Offer, circuit: tuple[float, float, float], shunt_pf: float) -> tuple[float, str]:
+    """The rated load to order, and why. Whatever C1 is, it scales every option's error alike."""
+    low, mid, high = circuit
+    if offer.load_range is not None:
+        nearest = _nearest(offer, mid)
+        inside = "the circuit's own nominal load" if nearest == mid else "the end of the range nearest to the circuit's"
+        return (
+            nearest,
+            f"a load of {nearest:.4g} pF taken of {offer.load_range[0]:g} to {offer.load_range[1]:g}, {inside}",
+        )
+
+    def error(option: float) -> float:
+        return max(abs(1 / (shunt_pf + end) - 1 / (shunt_pf + option)) for end in (low, high))
+
+    best = min(offer.load_options, key=error)
+    listed = ", ".join(f"{option:g}" for option in offer.load_options)
+    return best, f"a load of {best:g} pF taken of {listed}: the least worst-case load error in this circuit"
+
+
+def _loosest_slack(columns: Columns, bench: Bench, reckoned: Reckoned) -> Array:
+    """Slack of total_ppm with every option at its loosest; NaN where the part leaves no choice."""
+    limits = bench.requirement.limits_ppm
+    choice = np.array([bool(o.loosest) for o in columns.offers], dtype=bool)
+    if limits is None or not choice.any():
+        return np.full(len(columns), np.nan)
+    total = total_ppm(columns, bench, reckoned, loosest=True)
+    slack: Array = ppm_slack(total.low, total.high, limits).min(axis=(1, 2))
+    return np.where(choice, slack, np.nan)
+
+
+def judge_least_esr(columns: Columns, bench: Bench) -> Judged | None:
+    """The part's least ESR against the least that the IC allows; only a greatest one stated is "cannot tell"."""
+    floors = [s.circuit.rating.esr_min_ohm for s in bench.settings if s.circuit.rating is not None]
+    asked = [floor for floor in floors if floor is not None]
+    if not asked:
+        return None
+    verdict = np.array([_least_esr_verdict(o, max(asked)) for o in columns.offers], dtype=int)
+    none = np.full(len(columns), np.nan)
+    cannot = verdict == CANNOT_TELL
+    missing = {"least_esr_ohm": cannot} if cannot.any() else {}
+    return Judged("esr_ohm", np.ones(len(columns), dtype=bool), verdict, none, none.copy(), missing)
+
+
+def _least_esr_verdict(offer: Offer, floor: float) -> int:
+    taken = [at.esr for at in offer.at]
+    if not all(one.stated for one in taken):
+        return CANNOT_TELL
+    if min(one.span.high for one in taken) < floor or min(one.span.mid for one in taken) < floor:
+        return FALLS_SHORT
+    if all(r.min is not None for one in taken for r in one.readings):
+        return MEETS if min(one.span.low for one in taken) >= floor else FALLS_SHORT
+    return CANNOT_TELL
+
+
+def judge_rating(columns: Columns, bench: Bench) -> Judged | None:
+    """Beside a stated transconductance, the IC's rating as one more reason: the least of the three gains by it."""
+    both = [s for s in bench.settings if s.circuit.transconductance_ms is not None and s.circuit.rating is not None]
+    if not any(s.circuit.rating is not None and s.circuit.rating.kind is not None for s in both):
+        return None
+    by_rating = bench_by_rating(bench)
+    judged, _ = judge(columns, by_rating, reckon(columns, by_rating))
+    gains = [judged[key] for key in GAINS]
+    slack = np.min([one.slack for one in gains], axis=0)
+    missing: dict[str, Any] = {}
+    estimated: dict[str, Any] = {}
+    for one in gains:
+        missing |= one.missing
+        estimated |= one.estimated
+    return Judged(
+        about="rating",
+        asked=np.ones(len(columns), dtype=bool),
+        verdict=np.min([one.verdict for one in gains], axis=0),
+        slack=slack,
+        worst=np.min([one.worst for one in gains], axis=0),
+        missing=missing,
+        estimated=estimated,
+        typical_only=gains[0].typical_only,
+    )
+
+
+def bench_by_rating(bench: Bench) -> Bench:
+    """The bench as if the IC's sheet gave its rating alone."""
+    none = {"transconductance_ms": None}
+    conditions = tuple(condition.model_copy(update=none) for condition in bench.circuit.condition)
+    circuit = bench.circuit.model_copy(update={**none, "condition": conditions})
+    return bench.model_copy(update={"circuit": circuit})
+
+
+def part_result(reckoning: Reckoning, at: int) -> dict[str, Any]:
+    """One part's keys of the review, JSON-ready: identity, numbers, verdict, reasons, missing, questions, slack."""
+    standing, columns = _standing(reckoning, at), reckoning.columns
+    offer, bench = standing.subject.offer, reckoning.bench
+    judged = {key: one for key, one in reckoning.judged.items() if one.asked[at]}
+    missing = missing_of(judged, at)
+    slack = {key: _or_none(float(one.slack[at])) for key, one in judged.items()}
+    known = {key: value for key, value in slack.items() if value is not None}
+    load = standing.subject.ends["circuit_load_pf"][1]
+    return {
+        "file": offer.sheet.file,
+        "part_number": offer.part.part_number,
+        "maker": offer.part.maker,
+        "package": offer.part.package,
+        "mode": offer.mode,
+        **{key: _number(reckoning.numbers[key], standing.subject, key, at) for key in reckoning.numbers},
+        "verdict": WORDS[int(reckoning.verdict[at])],
+        "reasons": reasons(judged, standing),
+        "missing": ["esr_ohm" if name == "least_esr_ohm" else name for name in missing],
+        "questions": [question(name, offer, bench, load) for name in missing],
+        "chosen": dict(offer.chosen),
+        "to_check": fields_to_check(offer.taken().values()),
+        "slack": slack,
+        "tightest": min(known, key=lambda key: known[key]) if known else None,
+        "remarks": remarks(columns, at),
+    }
+
+
+def missing_of(judged: Mapping[str, Judged], at: int) -> list[str]:
+    """What a verdict wanted: fields and keys not known, limits not stated, estimates that settle nothing."""
+    found: dict[str, None] = {}
+    for one in judged.values():
+        found |= {name: None for name, flags in one.missing.items() if flags[at]}
+        if one.verdict[at] == CANNOT_TELL:
+            found |= {name: None for name, flags in one.estimated.items() if flags[at]}
+            if len(one.typical_only) and one.typical_only[at]:
+                found["esr_ohm"] = None
+    if "esr_ohm" in found:
+        found.pop("least_esr_ohm", None)
+    return list(found)
+
+
+def _or_none(value: float) -> float | None:
+    return value if math.isfinite(value) else None
+
+
+def _number(number: Number, subject: Subject, key: str, at: int) -> dict[str, Any]:
+    low, mid, high = (_or_none(float(value)) for value in number.ends[:, at])
+    basis = "stated" if number.stated[at] else "estimated" if number.estimated[at] else "derived"
+    return {"low": low, "mid": mid, "high": high, "how": how(key, subject), "basis": basis}
+
+
+def _standing(reckoning: Reckoning, at: int) -> Standing:
+    columns, bench = reckoning.columns, reckoning.bench
+    offer = columns.offers[at]
+    ends = {key: _ends(number, at) for key, number in reckoning.numbers.items()}
+    lacking = {
+        key: tuple(name for name, flags in number.lacking.items() if flags[at])
+        for key, number in reckoning.numbers.items()
+    }
+    subject = Subject(offer, bench, ends, lacking, c1_words(columns, at), c0_words(columns, at), "", gm_words(bench))
+    stop = float(reckoning.reckoned.low("greatest_transconductance_ms")[at])
+    standing = Standing(
+        at=at,
+        subject=subject,
+        numbers=reckoning.numbers,
+        total=reckoning.total,
+        loosest_slack=float(reckoning.loosest_slack[at]),
+        greatest_gm=stop if math.isfinite(stop) else math.nan,
+    )
+    return replace(standing, subject=replace(subject, budget_said=_budget_how(standing)))
+
+
+def _ends(number: Number, at: int) -> tuple[float, float, float]:
+    low, mid, high = (float(value) for value in number.ends[:, at])
+    return low, mid, high
+
+
+def _budget_how(standing: Standing) -> str:
+    offer, bench = standing.subject.offer, standing.bench
+    return f"{budget_words(standing)}; {ageing_words(offer, bench)}"

@@ -1,0 +1,193 @@
+"""Which of a part's readings hold in a case, and what span their printed bounds stand for."""
+
+from __future__ import annotations
+
+import math
+from collections.abc import Callable, Iterable, Sequence
+from dataclasses import dataclass
+
+from extract.model import Part, Reading, When
+
+ROOM_C = 25.0
+END_SLACK = 1e-6  # a band end printed with few decimals still belongs to the band
+MID_AT_LIMIT = ("esr_ohm", "shunt_capacitance_pf", "drive_level_uw")
+ONE_SIDED_AS_BOTH = ("frequency_tolerance_ppm", "frequency_stability_ppm", "ageing_ppm")
+
+
+@dataclass(frozen=True)
+class Span:
+    """Low, mid and high as numbers; NaN where there is none."""
+
+    low: float
+    mid: float
+    high: float
+
+    @classmethod
+    def at(cls, value: float) -> Span:
+        return cls(value, value, value)
+
+    @property
+    def known(self) -> bool:
+        return not math.isnan(self.mid)
+
+
+UNKNOWN = Span.at(math.nan)
+
+
+@dataclass(frozen=True)
+class Case:
+    """The case that a reading must hold in. None: not settled, so that any band may hold."""
+
+    frequencies_mhz: tuple[float, ...]
+    mode: str | None = None
+    load_pf: float | None = None
+    package: str | None = None
+    temperature_c: float | None = ROOM_C
+
+
+@dataclass(frozen=True)
+class Taken:
+    """A field as it is taken: its span, the readings it comes from, and what kind of promise they are.
+
+    `limit_alone`: a greatest value and nothing else. `typical_only`: printed as typical, with no limit.
+    `at_temperature`: the readings are stated for a band of temperature.
+    """
+
+    span: Span = UNKNOWN
+    readings: tuple[Reading, ...] = ()
+    limit_alone: bool = False
+    typical_only: bool = False
+    at_temperature: bool = False
+    said: tuple[str, ...] = ()
+
+    @property
+    def stated(self) -> bool:
+        return self.span.known
+
+
+NOTHING = Taken()
+
+
+def _in_band(value: float, band: tuple[float, float]) -> bool:
+    slack = END_SLACK * max(abs(band[0]), abs(band[1]))
+    return band[0] - slack <= value <= band[1] + slack
+
+
+def holds(when: When, case: Case) -> bool:
+    """True where `when` does not speak against the case."""
+    if when.frequency_mhz and not any(_in_band(f, when.frequency_mhz) for f in case.frequencies_mhz):
+        return False
+    if when.load_capacitance_pf and case.load_pf is not None and not _in_band(case.load_pf, when.load_capacitance_pf):
+        return False
+    temperature = case.temperature_c
+    if when.temperature_c and temperature is not None and not _in_band(temperature, when.temperature_c):
+        return False
+    if when.mode and case.mode and when.mode != case.mode:
+        return False
+    return not (when.package and case.package and when.package.casefold() != case.package.casefold())
+
+
+def _as_bands(when: When) -> tuple[tuple[float, float] | str | None, ...]:
+    return when.frequency_mhz, when.load_capacitance_pf, when.temperature_c, when.mode, when.package
+
+
+def narrower(one: When, other: When) -> bool:
+    """True where `one` lies inside `other` and is not the same."""
+    ones, others = _as_bands(one), _as_bands(other)
+    return ones != others and all(_inside(a, b) for a, b in zip(ones, others, strict=True))
+
+
+def _inside(a: tuple[float, float] | str | None, b: tuple[float, float] | str | None) -> bool:
+    if b is None or a == b:
+        return True
+    if isinstance(a, tuple) and isinstance(b, tuple):
+        return b[0] <= a[0] and a[1] <= b[1]
+    return False
+
+
+def narrowest(readings: Iterable[Reading]) -> list[Reading]:
+    """Those that no other one lies inside of: a narrower `when` goes before a wider."""
+    listed = list(readings)
+    return [one for one in listed if not any(narrower(other.when, one.when) for other in listed)]
+
+
+def readings_for(part: Part, field: str, case: Case) -> list[Reading]:
+    """The readings of a field that count in the case; empty where no band holds it."""
+    return narrowest(r for r in part.readings if r.field == field and holds(r.when, case))
+
+
+def printed(reading: Reading) -> list[float]:
+    """Every number of a reading."""
+    return [v for v in (reading.min, reading.typ, reading.max, *reading.options) if v is not None]
+
+
+def span_of(reading: Reading) -> Span:
+    """Bounds as a span: an end that is open is taken at the nearest stated value; mid is typical, else the limit."""
+    if reading.field in ONE_SIDED_AS_BOTH and reading.min is None:
+        return _both_ways(reading)
+    values = printed(reading)
+    low, high = min(values), max(values)
+    if reading.typ is not None:
+        return Span(low, reading.typ, high)
+    if reading.field in ONE_SIDED_AS_BOTH:
+        return Span(low, min(max(0.0, low), high), high)
+    return Span(low, high if reading.field in MID_AT_LIMIT else (low + high) / 2, high)
+
+
+def _both_ways(reading: Reading) -> Span:
+    """One number alone for a ppm error is its size, to either side."""
+    size = max(abs(value) for value in printed(reading))
+    return Span(-size, 0.0, size)
+
+
+def union(spans: Sequence[Span]) -> Span:
+    """Of several readings that hold, the worse for each requirement: the span over all of them."""
+    if not spans:
+        return UNKNOWN
+    greatest = max(spans, key=lambda span: span.high)
+    return Span(min(s.low for s in spans), greatest.mid, greatest.high)
+
+
+def take(part: Part, field: str, case: Case, only: Callable[[Reading], bool] | None = None) -> Taken:
+    """A field as the case takes it."""
+    found = [r for r in readings_for(part, field, case) if only is None or only(r)]
+    if not found:
+        return NOTHING
+    said = (f"{len(found)} readings of {field} hold; the worse counts for each requirement",) if len(found) > 1 else ()
+    return Taken(
+        span=union([span_of(r) for r in found]),
+        readings=tuple(found),
+        limit_alone=all(_is_limit_alone(r) for r in found),
+        typical_only=all(_is_typical_only(r) for r in found),
+        at_temperature=any(r.when.temperature_c is not None for r in found),
+        said=said,
+    )
+
+
+def _is_limit_alone(reading: Reading) -> bool:
+    if reading.options or reading.min is not None:
+        return False
+    if reading.typ is not None:
+        return reading.bare is True and reading.max is None
+    return reading.max is not None
+
+
+def _is_typical_only(reading: Reading) -> bool:
+    """No greatest value is promised: typical (and not bare), or a least one alone."""
+    return reading.max is None and not reading.options and reading.bare is not True
+
+
+def rated_drive(part: Part, case: Case) -> Taken:
+    """The rated drive: max, else a bare value, else typ; of several readings the least."""
+    found = readings_for(part, "drive_level_uw", case)
+    if not found:
+        return NOTHING
+    limits = [r for r in found if r.max is not None] or [r for r in found if r.bare and r.typ is not None] or found
+    rated = min(_rating(r) for r in limits)
+    return Taken(Span.at(rated), tuple(r for r in limits if _rating(r) == rated))
+
+
+def _rating(reading: Reading) -> float:
+    if reading.max is not None:
+        return reading.max
+    return reading.typ if reading.typ is not None else max(printed(reading))
