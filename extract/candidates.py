@@ -16,6 +16,7 @@ from extract.fold import fold
 from extract.heads import is_unit
 from extract.meaning import meaning
 from extract.model import FieldName, When, Where
+from extract.units import unit_at
 from extract.wording import Label
 
 _PLUS_MINUS = re.compile(r"±")
@@ -66,7 +67,13 @@ def entry_candidates(entry: Entry) -> list[Candidate]:
     for subject in dict.fromkeys(value.subject for value in entry.values):
         values = [value for value in entry.values if value.subject == subject]
         found += _of_subject(entry, label, when, subject, values)
-    return found
+    return [each for each in found if not _lone_temperature(each)]
+
+
+def _lone_temperature(candidate: Candidate) -> bool:
+    """One temperature with no bound is no range: it is where something was measured."""
+    ranged = candidate.field in ("operating_temperature_c", "storage_temperature_c")
+    return ranged and candidate.min is None and candidate.max is None
 
 
 @lru_cache(maxsize=8192)
@@ -129,14 +136,18 @@ def _foreign(value: Value, label: Label) -> bool:
     if not said:
         return False
     return not read(text, label.field, None, None) or bool(
-        label.field == "esr_ohm" and "frequency_mhz" in said and not _has_unit(text, label.field)
+        label.field == "esr_ohm" and "frequency_mhz" in said and not has_unit(text, label.field)
     )
 
 
-def _has_unit(text: str, field: str) -> bool:
-    from extract.units import kind_of
+_BEHIND_NUMBER = re.compile(r"(?<=\d)(?!\d)")
 
-    return bool(kind_of(field).pattern.search(fold(text)))
+
+@lru_cache(maxsize=16384)
+def has_unit(text: str, field: str) -> bool:
+    """Whether a number with a unit of `field` stands in the text."""
+    folded = fold(text)
+    return any(unit_at(folded, field, match.start()) for match in _BEHIND_NUMBER.finditer(folded))
 
 
 def _single(entry: Entry, label: Label, when: When, subject: str, value: Value) -> list[Candidate]:

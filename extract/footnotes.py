@@ -6,12 +6,11 @@ import re
 from collections.abc import Iterable
 from dataclasses import replace
 
-from extract.candidates import Candidate, entry_candidates, label_of, read
+from extract.candidates import Candidate, entry_candidates, has_unit, label_of, read
 from extract.conditions import condition_of, kept, merged
 from extract.entries import Entry, Piece, Placed, Value
 from extract.fold import fold
 from extract.model import When
-from extract.units import kind_of
 
 _MARK = r"\*{1,3}\d{0,2}|※\s?\d{0,2}|[†‡§]|注\s?\d+|(?:note|fn)\.?\s?\d{1,2}"
 _LINE = re.compile(
@@ -52,7 +51,7 @@ def noted_candidates(entry: Entry, notes: dict[str, tuple[str, Placed]]) -> list
     found: list[Candidate] = []
     for mark in sorted(marks_in(texts) & notes.keys()):
         text, place = notes[mark]
-        if not kind_of(label.field).pattern.search(text):
+        if not has_unit(text, label.field):
             continue
         for part in re.split(r"[;；]", text):
             found += _narrower(entry, part, place, label.field)

@@ -49,7 +49,7 @@ def is_unit(text: str) -> bool:
     bare = _TRIM.sub("", fold(text))
     if not bare or len(bare) > 16:
         return False
-    return any((unit := kind.unit(bare)) is not None and not unit.guessed for kind in units.kinds().values())
+    return any((unit := kind.unit(bare)) is not None and unit.sort == "sizes" for kind in units.kinds().values())
 
 
 @lru_cache(maxsize=4096)

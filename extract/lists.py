@@ -222,8 +222,8 @@ def _take_field(draft: Draft, cell: Placed, column: _Column) -> None:
     ):
         draft.resonance.add("series")
     draft.candidates.extend(cell_candidates(cell, column, kept(column.when, label.field)))
-    if mode := condition_of(cell.text).mode:
-        draft.modes.add(mode)
+    if label.field == "frequency_mhz":
+        draft.take_mode_and_cut(cell.text)
 
 
 def _take_use(draft: Draft, cell: Placed, column: _Column) -> None:
@@ -233,6 +233,7 @@ def _take_use(draft: Draft, cell: Placed, column: _Column) -> None:
         return
     if column.use in ("maker", "package"):
         setattr(draft, column.use, getattr(draft, column.use) or text)
+        draft.take_mode_and_cut(text)
     elif column.use in ("mode", "cut") or not column.use or column.use == "description":
         draft.take_mode_and_cut(text, codes=column.use == "mode")
     elif column.use.startswith("attribute "):

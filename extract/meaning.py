@@ -19,7 +19,7 @@ _DIGIT = re.compile(r"\d")
 _NUMBER = re.compile(
     r"(?<![A-Za-z0-9_])[-+±≤≥<>~]?\s?\d+(?:[.,]\d+)*(?=$|[\s%°)\]~,;/…*×-]|[kKMmGμun]?(?:Hz|HZ|hz|F|f|Ω|[oO]hms?|W|H|V|A|R)\b|ppm|PPM|C\b)"
 )
-_BRACKETED = re.compile(r"[(\[（]([^()\[\]（）]*)[)\]）]")
+_EAST = re.compile(r"[\u3040-\u30ff\u3400-\u9fff\uac00-\ud7af]{2,}")
 _NUMBERING = re.compile(r"^\s*(?:\(?\d{1,2}[.)、]\s?|[•●■◆▪·*-]\s*)(?=\D)")
 _PART_TOKEN = re.compile(r"(?<![\w.,/±+×-])[A-Z0-9](?:[A-Za-z0-9]|[-./,](?=[A-Za-z0-9]))+(?![\w°%])")
 _AMOUNT = re.compile(
@@ -66,19 +66,18 @@ def meaning(text: str) -> Meaning:
     role = _first(wording.role_of, names)
     identity = _first(wording.identity_label, names)
     attribute = _first(wording.attribute_label, names)
-    label = None if role or identity else wording.read_label(folded)
+    label = None if (role and role != "band") or identity else wording.read_label(folded)
     trap = _first(wording.trap_of, names)
     known = role or identity or attribute or (label is not None and label.exact)
     return Meaning(label, role, identity, attribute, trap, number and not known)
 
 
 def _names(folded: str) -> list[str]:
-    """The text, the text without numbering, its lines, and what stands outside and inside brackets."""
+    """The text, the text without numbering, and where it is in two scripts each of them."""
     plain = _NUMBERING.sub("", folded).strip(" :")
     names = [folded, plain]
-    if "\n" in plain or "(" in plain or "[" in plain:
-        names += [line.strip(" ()[]:") for line in plain.split("\n")]
-        names += [_BRACKETED.sub(" ", plain).strip(), *_BRACKETED.findall(plain)]
+    if _EAST.search(plain) and re.search(r"[A-Za-z]{2}", plain):
+        names += [re.sub(r"[^\x00-\u02ff]+", " ", plain).strip(" ()[]:/"), *_EAST.findall(plain)]
     return [name for name in dict.fromkeys(names) if name]
 
 

@@ -271,4 +271,7 @@ def _items(row: _Row) -> Iterator[Item]:
             yield Entry(row.label, (), row.unit, row.symbol, tuple(row.conditions), row.section)
         return
     label = Piece(row.label_text, row.label.where, row.label.confidence)
+    if not meaning(row.label_text).known:
+        yield Text(label)
+        yield from (Text(value.piece) for value in row.values)
     yield Entry(label, tuple(row.values), row.unit, row.symbol, tuple(row.conditions), row.section)

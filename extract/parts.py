@@ -2,25 +2,26 @@
 
 from __future__ import annotations
 
-from collections.abc import Iterable, Sequence
-from dataclasses import dataclass, field, replace
+from collections.abc import Sequence
+from dataclasses import dataclass, field
 
-from extract import wording
 from extract.attributes import attributes_of
 from extract.blocks import Blocks
-from extract.candidates import Candidate, entry_candidates, key_candidates
-from extract.drafts import Draft
+from extract.candidates import entry_candidates, key_candidates, label_of, read
+from extract.drafts import Draft, cuts_in, modes_in
 from extract.entries import Entry, Key, Listing, Text
 from extract.footnotes import noted_candidates
 from extract.identity import FIRST_LINES, maker_of, package_in, part_number_of, texts_of
 from extract.lists import listing_drafts
-from extract.meaning import is_part_token, part_tokens
+from extract.fold import fold
+from extract.meaning import part_tokens
 from extract.model import Note, Part
 from extract.prose import loose_in_prose
 from extract.readings import readings_of
 from extract.refusals import refusal
 from extract.sections import Section, sections
 from extract.subjects import split_by_subject
+from extract.vocabulary import vocabulary
 
 CRYSTAL_FIELDS = frozenset({
     "frequency_mhz", "load_capacitance_pf", "esr_ohm", "shunt_capacitance_pf", "motional_capacitance_ff", "drive_level_uw",
@@ -115,10 +116,8 @@ def _take_entry(draft: Draft, entry: Entry, blocks: Blocks) -> None:
     found = entry_candidates(entry)
     draft.candidates += found
     draft.candidates += noted_candidates(entry, blocks.notes)
-    if any(each.field == "load_capacitance_pf" for each in found) or "load" in entry.label.text.casefold():
-        for value in entry.values:
-            if any(each.series for each in _loads(value.piece.text)):
-                draft.resonance.add("series")
+    if _offers_series(entry):
+        draft.resonance.add("series")
     if found:
         for text in entry.conditions:
             draft.take_mode_and_cut(text)
@@ -127,10 +126,14 @@ def _take_entry(draft: Draft, entry: Entry, blocks: Blocks) -> None:
                 draft.take_mode_and_cut(value.piece.text)
 
 
-def _loads(text: str) -> Sequence[object]:
-    from extract.candidates import read
-
-    return read(text, "load_capacitance_pf")
+def _offers_series(entry: Entry) -> bool:
+    """Whether a load's row offers series resonance outright, not on request."""
+    label = label_of(entry)
+    if label is None or label.field != "load_capacitance_pf":
+        return False
+    text = " ".join([*(value.piece.text for value in entry.values), *entry.conditions])
+    asked = any(word in fold(text).casefold() for word in vocabulary().phrases.get("request", ()))
+    return not asked and any(each.series for value in entry.values for each in read(value.piece.text, label.field))
 
 
 def _take_texts(draft: Draft, texts: Sequence[Text]) -> None:
@@ -139,25 +142,13 @@ def _take_texts(draft: Draft, texts: Sequence[Text]) -> None:
     for index, text in enumerate(texts):
         for segment in [each.text for each in text.segments] or [text.piece.text]:
             if not had_mode:
-                draft.modes.update(_modes(segment))
+                draft.modes.update(modes_in(segment))
             if not had_cut:
-                draft.cuts.update(_cuts(segment))
+                draft.cuts.update(cuts_in(segment))
             if draft.package is None and (index < FIRST_LINES or text.heading):
                 draft.package = package_in(segment)
         if index < FIRST_LINES or len(text.piece.text) > 100:
             draft.candidates += loose_in_prose(text.piece)
-
-
-def _modes(text: str) -> Iterable[str]:
-    from extract.drafts import modes_in
-
-    return modes_in(text)
-
-
-def _cuts(text: str) -> Iterable[str]:
-    from extract.drafts import cuts_in
-
-    return cuts_in(text)
 
 
 def _merged(drafts: Sequence[Draft]) -> list[Draft]:
@@ -212,5 +203,3 @@ def _part(draft: Draft, maker: str | None) -> Part:
 def _one_cut(cuts: set[str]) -> str | None:
     return next(iter(cuts)) if len(cuts) == 1 else None
 
-
-__all__ = ["Candidate", "Found", "is_part_token", "parts_of", "replace", "wording"]

@@ -6,13 +6,12 @@ import re
 from collections.abc import Iterator
 
 from extract import wording
-from extract.candidates import Candidate, read
+from extract.candidates import Candidate, has_unit, read
 from extract.conditions import condition_of
 from extract.entries import Entry, Piece, Placed, Source, Value
 from extract.fold import fold
 from extract.meaning import meaning
 from extract.model import When
-from extract.units import kind_of
 
 _CHUNK = re.compile(r"\n|;|；|•|\s\|\s|。|‖")
 _SEPARATOR = re.compile(r"[:=](?!//)")
@@ -67,7 +66,9 @@ def _may_follow(label: str, rest: str) -> bool:
     if known is None:
         return True
     number = re.search(r"\d", rest)
-    return number is not None and number.start() <= (4 if known.symbol else 30)
+    if number is None or "=" in rest[: number.start()]:
+        return False
+    return number.start() <= (4 if known.symbol else 30)
 
 
 def is_label(text: str) -> bool:
@@ -110,7 +111,7 @@ def _sentence_entries(sentence: str, piece: Placed) -> Iterator[Entry]:
 def _states(text: str, field: str, *, exact: bool) -> bool:
     if field in _UNITLESS:
         return exact and bool(re.match(r"\W*(?:of|is|:|=|von|di|de)?\s*[\d<>≥≤~]", text))
-    return bool(kind_of(field).pattern.search(text)) and bool(re.search(r"\d", text)) and bool(read(text, field))
+    return has_unit(text, field) and bool(re.search(r"\d", text)) and bool(read(text, field))
 
 
 def _last_amount(text: str, field: str) -> str:
