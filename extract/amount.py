@@ -10,7 +10,7 @@ import re
 from dataclasses import replace
 from functools import lru_cache
 
-from extract.attach import Amount, attach, own_amounts
+from extract.attach import Amount, attach, own_amounts, share_years
 from extract.band import joined, when_of
 from extract.bounds import Heading, Value, values_of
 from extract.fields import Field, field_of
@@ -77,6 +77,8 @@ def _read(
     amounts = own_amounts(items, pieces, row)
     _give_units(amounts, pieces, heading, row)
     attach(items, amounts, row)
+    if row.name == "ageing_ppm":
+        share_years(amounts)
     values = [value for value in values_of(amounts, row, heading) if not value.empty or value.doubts]
     if row.name == "load_capacitance_pf" and _offers_series(items, text):
         values.append(Value(series=True))
@@ -94,7 +96,8 @@ def _heading(unit: str | None, bound: str | None, plus_minus: bool, decimal: str
     found = unit_at(stripped, field_name)
     when = when_of(stripped[found[2] :] if found else stripped)
     named = (found[0], found[1]) if found else None
-    return Heading(named, bound, plus_minus or "±" in printed, when, decimal)
+    alien = stripped if named is None and key(stripped) and when == When() else ""
+    return Heading(named, bound, plus_minus or "±" in printed, when, decimal, alien)
 
 
 def _give_units(amounts: list[Amount], pieces: list[Token], heading: Heading, row: Field) -> None:
@@ -106,8 +109,8 @@ def _give_units(amounts: list[Amount], pieces: list[Token], heading: Heading, ro
         unit = later or free or earlier
         name, scale = (unit.text, unit.value) if unit else heading.unit or ("", 1.0)
         if not name and row.unit and row.sign != "either":
-            amount.doubts.append(f"unit not printed, taken as {row.unit}")
-        elif name == "ppm" and row.name == "pulling_sensitivity_ppm_per_pf" or name in ("x10", "×10"):
+            amount.doubts.append(_no_unit(heading, row))
+        elif name and guessed(name, row.name):
             amount.doubts.append(f"unit printed as {name!r}, taken as {row.unit}")
         group = amount.group
         high = group.high_unit.value if group.high_unit and not group.percent else scale
@@ -115,6 +118,12 @@ def _give_units(amounts: list[Amount], pieces: list[Token], heading: Heading, ro
         amount.low = _scaled(amount, group.low, low, row, heading, name)
         if group.high is not None:
             amount.high = _scaled(amount, group.high, 1.0 if group.percent else high, row, heading, name)
+
+
+def _no_unit(heading: Heading, row: Field) -> str:
+    if heading.alien:
+        return f"{heading.alien!r} is no unit of {row.title}; taken as {row.unit}"
+    return f"unit not printed, taken as {row.unit}"
 
 
 def _scaled(amount: Amount, token: Token, scale: float, row: Field, heading: Heading, unit: str) -> float:

@@ -136,3 +136,11 @@ def _until_next(items: list[Item], after: list[Amount], position: int, sort: str
         return after[:1]
     end = next((i for i in range(position + 1, len(items)) if _sort_of(items[i]) == sort), len(items))
     return [amount for amount in after if amount.position < end]
+
+
+def share_years(amounts: list[Amount]) -> None:
+    """One year count in the text holds for its typical and its limit alike: "±1 ppm/year typ., ±3 ppm max."."""
+    stated = {amount.when.years for amount in amounts} - {None}
+    if len(stated) == 1:
+        for amount in amounts:
+            amount.when = joined(When(years=next(iter(stated))), amount.when)

@@ -35,13 +35,14 @@ class Value:
 
 @dataclass(frozen=True, slots=True)
 class Heading:
-    """What the label or column says of all numbers below it."""
+    """What the label or column says of all numbers below it. `alien`: its unit is none of the field's."""
 
     unit: tuple[str, float] | None = None
     bound: str | None = None
     plus_minus: bool = False
     when: When = When()
     decimal: str | None = None
+    alien: str = ""
 
 
 def values_of(amounts: list[Amount], row: Field, heading: Heading) -> list[Value]:
@@ -55,11 +56,12 @@ def values_of(amounts: list[Amount], row: Field, heading: Heading) -> list[Value
 
 def _together(amounts: list[Amount], row: Field, heading: Heading) -> list[Value]:
     """The amounts under one condition: numbers to choose from are options, unlike bounds fill one value."""
-    loose = [a for a in amounts if _is_loose(a, row, heading)]
-    if len(loose) > 1 and (row.choice or not _typ_and_limit(loose, row)):
-        made = [_options(loose, row, heading)] + [_single(a, row, heading) for a in amounts if a not in loose]
-    else:
-        made = [_single(a, row, heading) for a in amounts]
+    loose = [a for a in amounts if _is_loose(a)]
+    if row.choice and loose:
+        # A bound word behind a list speaks of all of it: "8, 10, 12 pF max".
+        loose = [a for a in amounts if a in loose or (a.group.shape == "single" and a.bound == _common_bound(amounts))]
+    made = [_options(loose, row, heading)] if len(loose) > 1 else []
+    made += [_single(a, row, heading) for a in amounts if not made or a not in loose]
     out: list[Value] = []
     for value in made:
         fitting = next((i for i, other in enumerate(out) if _fits(other, value)), None)
@@ -67,19 +69,24 @@ def _together(amounts: list[Amount], row: Field, heading: Heading) -> list[Value
             out.append(value)
         else:
             out[fitting] = _merge(out[fitting], value)
-    return [_in_order(value, row) for value in _typ_beside_limit(out, row)]
+    out = _typ_beside_limit(out, row)
+    refused = [doubt for value in out if value.empty for doubt in value.doubts]
+    kept = [value for value in out if not value.empty] or out
+    kept[0] = replace(kept[0], doubts=tuple(dict.fromkeys((*kept[0].doubts, *refused))))
+    return [_in_order(value) for value in kept]
 
 
-def _is_loose(amount: Amount, row: Field, heading: Heading) -> bool:
+def _common_bound(amounts: list[Amount]) -> str | None:
+    bounds = {amount.bound for amount in amounts} - {None}
+    return bounds.pop() if len(bounds) == 1 else ""
+
+
+def _is_loose(amount: Amount) -> bool:
     """A number that may be one of several to choose from."""
     shape = amount.group.shape
     if shape == "pm":
         return amount.bound != "typ"
-    return shape == "single" and (amount.bound is None or (row.choice and amount.bound != "typ"))
-
-
-def _typ_and_limit(loose: list[Amount], row: Field) -> bool:
-    return False
+    return shape == "single" and amount.bound is None
 
 
 def _options(amounts: list[Amount], row: Field, heading: Heading) -> Value:
@@ -149,8 +156,8 @@ def _range(amount: Amount, row: Field, heading: Heading, doubts: tuple[str, ...]
         return Value(options=(low, high), doubts=(*doubts, "a span of grades to order from"))
     if row.sign == "negative" and low > 0 and high > 0:
         low, high, doubts = -low, -high, (*doubts, _LOST_MINUS)
-    if row.sign == "positive" and low < 0:
-        low, doubts = abs(low), (*doubts, "a minus sign before a quantity that is never negative")
+    if row.sign in ("positive", "magnitude") and low < 0:
+        low, high, doubts = abs(low), abs(high), (*doubts, *_unless_magnitude(row))
     if low > high and row.name == "esr_ohm":
         return Value(max=low, doubts=(*doubts, f"runs from {low:g} Ω at the low end of the frequency range to {high:g} Ω at the high end"))
     low, high = min(low, high), max(low, high)
@@ -159,12 +166,16 @@ def _range(amount: Amount, row: Field, heading: Heading, doubts: tuple[str, ...]
     return Value(min=low or (0.0 if row.sign == "either" else None), max=high, doubts=doubts)
 
 
+def _unless_magnitude(row: Field) -> tuple[str, ...]:
+    return () if row.sign == "magnitude" else ("a minus sign before a quantity that is never negative",)
+
+
 def _number(amount: Amount, row: Field, heading: Heading, doubts: tuple[str, ...]) -> Value:
     value, bound, signed = amount.low, amount.bound or heading.bound, bool(amount.group.low.meaning)
     if value == 0 and row.sign != "either":
         return Value()
-    if row.sign == "positive" and value < 0:
-        value, doubts = abs(value), (*doubts, "a minus sign before a quantity that is never negative")
+    if row.sign in ("positive", "magnitude") and value < 0:
+        value, doubts = abs(value), (*doubts, *_unless_magnitude(row))
     if row.sign == "negative":
         if value > 0:
             value, doubts = -value, (*doubts, _LOST_MINUS)
@@ -227,8 +238,7 @@ def _typ_beside_limit(values: list[Value], row: Field) -> list[Value]:
     return values
 
 
-def _in_order(value: Value, row: Field) -> Value:
-    """A limit on the size of a negative coefficient is its min, also where it stands beside the typical value."""
+def _in_order(value: Value) -> Value:
     stated = [number for number in (value.min, value.typ, value.max) if number is not None]
     if stated != sorted(stated):
         return replace(value, doubts=(*value.doubts, "the bounds are out of order"))

@@ -8,7 +8,7 @@ from functools import cache
 from importlib import resources
 from typing import Any, Literal
 
-Sign = Literal["positive", "symmetric", "either", "negative"]
+Sign = Literal["positive", "magnitude", "symmetric", "either", "negative"]
 
 
 @dataclass(frozen=True, slots=True)
@@ -32,7 +32,7 @@ class Field:
 
     def plausible(self, value: float, *, tuning_fork: bool | None = None) -> bool:
         """Whether `value`, in the field's unit, may be believed; of either kind of part when `tuning_fork` is None."""
-        size = abs(value) if self.sign in ("symmetric", "negative") else value
+        size = abs(value) if self.sign in ("symmetric", "negative", "magnitude") else value
         kinds = {True: (self.fork,), False: (self.mhz,), None: (self.mhz, self.fork)}[tuning_fork]
         return any(low <= size <= high for low, high in kinds)
 

@@ -83,6 +83,8 @@ class _Reader:
                 self._group()
             elif kind == "compare" and self.kind(1) in ("number", "pm"):
                 self._compared()
+            elif kind in ("bound", "above", "from") and self._limits_foreign():
+                self._limited(kind)
             else:
                 self._word(kind)
         return self.items
@@ -105,6 +107,16 @@ class _Reader:
         made = self._group()
         if made is not None and made.bound is None:
             made.bound = "max" if sign.meaning == "<" else "min"
+
+    def _limits_foreign(self) -> bool:
+        """ "below 16 MHz", "from 12 MHz" beside a value: a word that bounds the condition, not the value."""
+        return self.kind(1) == "number" and self.kind(2) == "other" and self.kind(3) not in ("to", "pm")
+
+    def _limited(self, kind: str) -> None:
+        word = self.take()
+        made = self._group()
+        if made is not None and made.bound is None:
+            made.bound = word.meaning if kind == "bound" and word.meaning != "typ" else "min"
 
     def _group(self) -> Group | None:
         start = self.at

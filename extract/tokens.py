@@ -49,29 +49,32 @@ _NEAR_NUMBER = frozenset({"number", "unit", "other"})
 
 
 @cache
-def _phrases() -> dict[str, re.Pattern[str]]:
-    """Wordings by their first character; a Latin word ends where no letter follows, an ideograph anywhere."""
-    kind_of = {}
+def _phrases() -> dict[str, tuple[tuple[str, str], ...]]:
+    """(wording, kind) by the wording's first character, the longest first; also without the spaces in them."""
+    kind_of: dict[str, str] = {}
     lists = vocabulary().phrases
-    for kind in [*(k for k in lists if k.startswith("mode ")), *_WORD_KINDS]:
+    for kind in [*(name for name in lists if name.startswith("mode ")), *_WORD_KINDS]:
         for word in lists.get(kind, ()):
             if word not in _MARKS:
                 kind_of.setdefault(word, kind)
-    by_first: dict[str, list[str]] = {}
+                if len(word) > 5:
+                    kind_of.setdefault(word.replace(" ", ""), kind)
+    by_first: dict[str, list[tuple[str, str]]] = {}
     for word in sorted(kind_of, key=len, reverse=True):
-        by_first.setdefault(word[0], []).append(word)
-    _kinds.update(kind_of)
-    return {first: re.compile("|".join(map(_word_pattern, words))) for first, words in by_first.items()}
+        by_first.setdefault(word[0], []).append((word, kind_of[word]))
+    return {first: tuple(words) for first, words in by_first.items()}
 
 
-_kinds: dict[str, str] = {}
-
-
-def _word_pattern(word: str) -> str:
-    pattern = r"\s*".join(re.escape(piece) for piece in word.split())
-    if _IDEOGRAPH.match(word[-1]) or not (word[-1].isalnum() or word[-1] == "."):
-        return pattern
-    return pattern + r"(?![^\W\d_\u3040-\u30ff\u3400-\u9fff])" + (r"\.?" if word[-1] != "." else "")
+def _phrase_at(lower: str, at: int) -> tuple[str, int] | None:
+    """(kind, end) of the longest wording at `at`; a Latin one ends where no letter follows, an ideograph anywhere."""
+    for word, kind in _phrases().get(lower[at], ()):
+        if lower.startswith(word, at):
+            end = at + len(word)
+            if not word[-1].isalpha() or not word[-1].isascii() and _IDEOGRAPH.match(word[-1]):
+                return kind, end
+            if end == len(lower) or not lower[end].isalpha() or _IDEOGRAPH.match(lower[end]):
+                return kind, end + (end < len(lower) and lower[end] == ".")
+    return None
 
 
 @cache
@@ -111,29 +114,22 @@ def _next(text: str, lower: str, at: int, field: str, before: list[Token]) -> It
 
 
 def _phrase(text: str, lower: str, at: int, before: list[Token]) -> list[Token]:
-    pattern = _phrases().get(lower[at])
-    found = pattern.match(lower, at) if pattern else None
+    found = _phrase_at(lower, at)
     if not found or (lower[at].isalpha() and _inside_word(lower, at) and not _ends_known(before, at)):
         return []
-    words = found[0].rstrip(".")
-    kind = _kinds.get(found[0]) or _kinds.get(words) or _kinds.get(" ".join(words.split())) or _spaced_kind(words)
+    kind, end = found
+    printed = text[at:end]
     if kind in ("first_year", "per_year"):
-        return [Token("years", found[0], at, found.end(), meaning=kind, value=1.0)]
+        return [Token("years", printed, at, end, meaning=kind, value=1.0)]
     if kind in ("min", "typ", "max"):
-        return [Token("bound", found[0], at, found.end(), meaning=kind)]
+        return [Token("bound", printed, at, end, meaning=kind)]
     if kind.startswith("mode "):
-        return [Token("mode", found[0], at, found.end(), meaning=kind[5:])]
-    return [Token("pm" if kind == "plus_minus" else kind, found[0], at, found.end())]
+        return [Token("mode", printed, at, end, meaning=kind[5:])]
+    return [Token("pm" if kind == "plus_minus" else kind, printed, at, end)]
 
 
 def _inside_word(text: str, at: int) -> bool:
     return at > 0 and text[at - 1].isascii() and text[at - 1].isalpha()
-
-
-def _spaced_kind(words: str) -> str:
-    """A phrase whose words ran together or stood apart."""
-    squeezed = "".join(words.split())
-    return next(kind for word, kind in _kinds.items() if "".join(word.split()).rstrip(".") == squeezed.rstrip("."))
 
 
 def _years(text: str, at: int) -> list[Token]:
@@ -145,6 +141,8 @@ def _signed_number(text: str, at: int, field: str, before: list[Token]) -> list[
     """A number with its sign and its unit; a dash between two numbers is a range."""
     last = before[-1] if before else None
     sign, start = "", at
+    if text.startswith("--", at) and not before:
+        return [Token("blank", "--", at, at + len(text[at:]) - len(text[at:].lstrip("- ")))]
     if text[at] in "+-":
         start = at + 1
         while start < len(text) and text[start] == " ":
@@ -216,8 +214,7 @@ def _unit_after(
 
 def _starts_word(text: str, at: int) -> bool:
     """Whether a known word follows a number without a space ("60Max", "25typ", "2x")."""
-    pattern = _phrases().get(text[at].lower())
-    return bool(pattern and pattern.match(text.lower(), at)) or text[at] in "xX"
+    return text[at] in "xX" or _phrase_at(text.lower(), at) is not None
 
 
 def _free_unit(text: str, at: int, field: str, before: list[Token]) -> list[Token]:

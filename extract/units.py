@@ -11,19 +11,22 @@ from typing import Any
 
 from extract.fold import fold
 
-_TIMES = str.maketrans("×·*", "xxx")
-_DROPPED = re.compile(r"[\s.()\[\]{}']")
+_TIMES = str.maketrans("×·*X", "xxxx")
+_DROPPED = frozenset(" .()[]{}'\n")
+_LONGEST = 40
 # What may follow a unit without a space: a bound word ("200µWMax."), or anything that is no letter and no digit.
-_END = r"(?:(?![a-zα-ωéäöüß\d])|(?=max|min|typ|nom|std|per\b|over|at\b|to\b|dc\b|ac\b|or\b|and\b))"
+_END = re.compile(
+    r"(?![a-zα-ωéäöüß\d])|(?=max|min|typ|nom|std|mit|per\b|over|at\b|to\b|dc\b|ac\b|or\b|and\b|x\d)", re.IGNORECASE
+)
 
 
 @dataclass(frozen=True, slots=True)
 class Unit:
-    """One spelling: its kind of quantity, its factor to the kind's base unit, and whether something is missing in it."""
+    """One spelling: its kind of quantity, its factor to the base unit, and its section in the table (sizes, bare, guessed)."""
 
     kind: str
     to_base: float
-    guessed: bool
+    sort: str
 
 
 @dataclass(frozen=True)
@@ -35,38 +38,30 @@ class Kind:
     pint: str
     exact: dict[str, Unit] = field(repr=False)
     caseless: dict[str, Unit] = field(repr=False)
-    pattern: re.Pattern[str] = field(repr=False)
 
     def unit(self, printed: str) -> Unit | None:
-        spelling = _spelling(printed)
+        """The unit that `printed` is as a whole, in any case, with any spaces and brackets in it."""
+        return self.look_up(_spelling(printed))
+
+    def look_up(self, spelling: str) -> Unit | None:
         return self.exact.get(spelling) or self.caseless.get(spelling.casefold())
 
 
 def _spelling(printed: str) -> str:
-    return _DROPPED.sub("", fold(printed)).translate(_TIMES)
-
-
-def _pattern_of(spelling: str) -> str:
-    between = r"[\s().]{0,3}" if "/" in spelling or "^" in spelling else " ?"
-    body = between.join("[x×*·]" if c == "x" else re.escape(c) for c in spelling)
-    if spelling.startswith("x10"):
-        body = "(?:" + body + ")"
-    return body
+    return "".join(char for char in fold(printed).translate(_TIMES) if char not in _DROPPED)
 
 
 def _kind(name: str, table: dict[str, Any]) -> Kind:
     exact: dict[str, Unit] = {}
     caseless: dict[str, Unit] = {}
-    for guessed, sizes in ((False, table["sizes"]), (True, table.get("guessed", {}))):
-        for size, spellings in sizes.items():
+    for sort in ("sizes", "bare", "guessed"):
+        for size, spellings in table.get(sort, {}).items():
             for printed in spellings:
-                spelling, unit = _spelling(printed), Unit(name, float(size), guessed)
+                spelling, unit = _spelling(printed), Unit(name, float(size), sort)
                 if exact.setdefault(spelling, unit).to_base != unit.to_base:
                     raise ValueError(f"units.toml: {printed!r} has two sizes in [{name}]")
                 caseless.setdefault(spelling.casefold(), unit)
-    longest_first = sorted(exact, key=len, reverse=True)
-    pattern = re.compile("(?:" + "|".join(map(_pattern_of, longest_first)) + ")" + _END, re.IGNORECASE)
-    return Kind(name, {k: float(v) for k, v in table["fields"].items()}, table["pint"], exact, caseless, pattern)
+    return Kind(name, {k: float(v) for k, v in table["fields"].items()}, table["pint"], exact, caseless)
 
 
 @cache
@@ -94,41 +89,67 @@ def factor(printed_unit: str, field: str) -> float | None:
 
 
 def guessed(printed_unit: str, field: str) -> bool:
-    """Whether `printed_unit` lacks something that the field had to supply ("K" for kΩ, "ppm" for ppm/pF)."""
+    """Whether `printed_unit` lacks something that the field had to supply ("ppm" for ppm/pF, "MW" for mW)."""
     unit = kind_of(field).unit(printed_unit)
-    return unit is not None and unit.guessed
+    return unit is not None and unit.sort == "guessed"
 
 
 def unit_at(text: str, field: str, start: int = 0) -> tuple[str, float, int] | None:
     """The unit of `field` printed in folded `text` at `start` (spaces skipped): (unit text, factor, end), else None."""
     kind = kind_of(field)
-    found = _match(kind, text, start)
-    if found is None:
-        return None
-    unit = kind.unit(found[0])
-    assert unit is not None, found[0]  # noqa: S101 - the pattern is made from the same spellings
-    return found[0], _rounded(unit.to_base * kind.fields[field]), found.end()
+    for begin, end, spelling in _spellings_at(text, start):
+        if unit := kind.look_up(spelling):
+            return text[begin:end], _rounded(unit.to_base * kind.fields[field]), end
+    return None
+
+
+# These are no quantity of their own: a bare "k" or "ppm" beside a foreign number belongs to the kinds above.
+_NEVER_FOREIGN = frozenset({"number", "pulling", "parabola"})
+
+
+@cache
+def _foreign(own: str) -> dict[str, Unit]:
+    """The units of every other kind by caseless spelling, but for those that are one only beside their own field."""
+    found: dict[str, Unit] = {}
+    for kind in kinds().values():
+        if kind.name != own and kind.name not in _NEVER_FOREIGN:
+            for spelling, unit in kind.caseless.items():
+                if unit.sort == "sizes":
+                    found.setdefault(spelling, unit)
+    return found
 
 
 def other_unit_at(text: str, field: str, start: int = 0) -> tuple[str, float, int] | None:
     """A unit of another kind than that of `field`: (kind's name, factor to the kind's base unit, end), else None."""
-    own = kind_of(field)
-    best: tuple[str, float, int] | None = None
-    for kind in kinds().values():
-        if kind is own or kind.name in ("number", "pulling", "parabola"):
-            continue
-        found = _match(kind, text, start)
-        if found is not None and (best is None or found.end() > best[2]):
-            unit = kind.unit(found[0])
-            if unit is not None and not (unit.guessed and len(found[0]) == 1):
-                best = (kind.name, unit.to_base, found.end())
-    return best
+    table = _foreign(kind_of(field).name)
+    for _, end, spelling in _spellings_at(text, start):
+        if unit := table.get(spelling.casefold()):
+            exact = kinds()[unit.kind].exact.get(spelling)
+            if exact is None and len(spelling) == 1 and spelling.casefold() != "c":
+                continue
+            return unit.kind, (exact or unit).to_base, end
+    return None
 
 
-def _match(kind: Kind, text: str, start: int) -> re.Match[str] | None:
+def _spellings_at(text: str, start: int) -> list[tuple[int, int, str]]:
+    """What may be a unit at `start`: (begin, end, spelling without spaces and brackets), the longest first."""
     while start < len(text) and text[start] == " ":
         start += 1
-    return kind.pattern.match(text, start)
+    if start == len(text) or text[start] in _DROPPED or text[start].isdecimal() and not text.startswith("10", start):
+        return [] if not text.startswith("0C", start) else [(start, start + 2, "0C")]
+    spelling, found, gap = "", [], 0
+    for at in range(start, min(start + _LONGEST, len(text))):
+        char = text[at]
+        if char in _DROPPED:
+            gap += 1
+            if gap > 3:
+                break
+            continue
+        gap = 0
+        spelling += char.translate(_TIMES)
+        if _END.match(text, at + 1):
+            found.append((start, at + 1, spelling))
+    return found[::-1]
 
 
 def _rounded(value: float) -> float:
