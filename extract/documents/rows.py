@@ -3,9 +3,9 @@
 from __future__ import annotations
 
 import re
+from bisect import bisect_left
 from collections.abc import Sequence
-from dataclasses import replace
-from enum import Enum
+from dataclasses import dataclass, replace
 
 from extract.documents.piece import Piece
 from extract.documents.words import Word, in_lines, joined
@@ -32,19 +32,25 @@ def _levels(own: Sequence[Piece]) -> list[float]:
         tallest = max(valued, key=lambda piece: len(piece.lines))
         levels = [_level(line) for line in tallest.lines]
         if sum(_stands_on(piece, levels) for piece in valued) >= 2:
-            return _with_labels_outside(levels, own)
+            return _with_label_lines(levels, own)
     return _fresh_levels(own)
 
 
-def _with_labels_outside(levels: list[float], own: Sequence[Piece]) -> list[float]:
-    """Levels with those of lines that stand a row's height above the first or below the last."""
-    pitch = (levels[-1] - levels[0]) / (len(levels) - 1)
-    others = [_level(line) for piece in own for line in piece.lines]
-    above = [level for level in others if level < levels[0] - 0.75 * pitch]
-    below = [level for level in others if level > levels[-1] + 0.75 * pitch]
+def _with_label_lines(levels: list[float], own: Sequence[Piece]) -> list[float]:
+    """Levels with those of lines that stand on their own above, below or between them (the heading of some bands)."""
+    pitch = _pitch(levels)
+    lines = sorted(_level(line) for piece in own for line in piece.lines)
+    loose = [level for level in lines if min(abs(level - other) for other in levels) > 0.75 * pitch]
+    above = [level for level in loose if level < levels[0]]
+    below = [level for level in loose if level > levels[-1]]
     # More than one is text that runs on, as in a wrapped label beside two values.
-    above, below = (side if len(side) == 1 else [] for side in (above, below))
-    return above + levels + below
+    outside = [level for side in (above, below) if len(side) == 1 for level in side]
+    between = [level for level in loose if levels[0] < level < levels[-1]]
+    added: list[float] = []
+    for level in sorted(outside + between):
+        if not added or level - added[-1] > 0.75 * pitch:
+            added.append(level)
+    return sorted(levels + added)
 
 
 def _stands_on(piece: Piece, levels: Sequence[float]) -> bool:
@@ -82,7 +88,7 @@ def _is_stack_of_values(piece: Piece) -> bool:
 
 def _row_parted(pieces: Sequence[Piece], own: Sequence[Piece], row: int, levels: Sequence[float]) -> list[Piece]:
     added = len(levels) - 1
-    labels = _Labels.of(own, levels)
+    labels = _labels_of(own, levels)
     result: list[Piece] = []
     for piece in pieces:
         cell = piece.cell
@@ -97,20 +103,30 @@ def _row_parted(pieces: Sequence[Piece], own: Sequence[Piece], row: int, levels:
     return result
 
 
-class _Labels(Enum):
-    """What the first filled column says of the rows, which decides whether a text may be meant for several."""
+@dataclass(frozen=True, slots=True)
+class _Labels:
+    """What the first filled column says of the rows, which decides whether a text may be meant for several.
 
-    ONE_FOR_ALL = 1
-    ONE_FOR_SOME = 2
-    ONE_EACH = 3
+    `groups` are the rows (first, last) of each label where the labels share the rows out evenly.
+    """
 
-    @classmethod
-    def of(cls, own: Sequence[Piece], levels: Sequence[float]) -> _Labels:
-        first = min((piece for piece in own if piece.lines), key=lambda piece: piece.cell.column)
-        count = len(_blocks(first.lines, levels))
-        if count == 1:
-            return cls.ONE_FOR_ALL
-        return cls.ONE_FOR_SOME if count < len(levels) else cls.ONE_EACH
+    count: int
+    rows: int
+    groups: tuple[tuple[int, int], ...]
+
+    def group_round(self, index: float) -> tuple[int, int] | None:
+        """Rows of one label in whose middle the index stands; None where there is no such label."""
+        for first, last in self.groups:
+            if last > first and abs(index - (first + last) / 2) < 0.3:
+                return first, last
+        return None
+
+
+def _labels_of(own: Sequence[Piece], levels: Sequence[float]) -> _Labels:
+    first = min((piece for piece in own if piece.lines), key=lambda piece: piece.cell.column)
+    blocks = _blocks(first.lines, levels)
+    groups = tuple((top, bottom) for top, bottom, _ in _shared_out(blocks, levels))
+    return _Labels(len(blocks), len(levels), groups)
 
 
 def _down(piece: Piece, levels: Sequence[float], labels: _Labels) -> list[Piece]:
@@ -134,20 +150,34 @@ def _rows_of(
 ) -> list[tuple[int, int, list[Word]]]:
     """Rows (first, last) that each text of a cell belongs to."""
     blocks = _blocks(lines, levels)
-    off = all(not _on_level(line, levels) for block in blocks for line in block)
+    off = any(not _on_level(line, levels) for line in lines)
     values = all(_VALUE.search(joined(line)) for line in lines)
     # A value on a row's level is that row's, unless the rows share one label and it stands in their middle.
-    if labels is _Labels.ONE_FOR_ALL and len(blocks) == 1 and (not values or _is_middle(blocks[0], levels)):
+    if labels.count == len(blocks) == 1 and (not values or _is_middle(blocks[0], levels)):
         return [(0, len(levels) - 1, [word for line in lines for word in line])]
-    if off or (labels is not _Labels.ONE_EACH and not values):
+    if len(blocks) != len(levels) and (off or (labels.count < labels.rows and not values)):
         shared = _shared_out(blocks, levels)
         if shared:
             return shared
-    nearest: dict[int, list[Word]] = {}
+    groups: dict[tuple[int, int], list[Word]] = {}
     for line in lines:
-        index = min(range(len(levels)), key=lambda row: abs(levels[row] - _level(line)))
-        nearest.setdefault(index, []).extend(line)
-    return [(index, index, words) for index, words in sorted(nearest.items())]
+        place = _index_at(_level(line), levels)
+        row = min(max(round(place), 0), len(levels) - 1)
+        rows = None if values else labels.group_round(place)
+        groups.setdefault(rows or (row, row), []).extend(line)
+    return [(first, last, words) for (first, last), words in sorted(_apart(groups).items())]
+
+
+def _apart(groups: dict[tuple[int, int], list[Word]]) -> dict[tuple[int, int], list[Word]]:
+    """Groups of rows that do not share any; where they would, each text keeps to the row in the middle of its own."""
+    taken = [row for first, last in groups for row in range(first, last + 1)]
+    if len(taken) == len(set(taken)):
+        return groups
+    apart: dict[tuple[int, int], list[Word]] = {}
+    for (first, last), words in groups.items():
+        row = (first + last) // 2
+        apart.setdefault((row, row), []).extend(words)
+    return apart
 
 
 def _is_middle(block: Sequence[Sequence[Word]], levels: Sequence[float]) -> bool:
@@ -156,11 +186,19 @@ def _is_middle(block: Sequence[Sequence[Word]], levels: Sequence[float]) -> bool
 
 
 def _pitch(levels: Sequence[float]) -> float:
-    return (levels[-1] - levels[0]) / (len(levels) - 1)
+    """Usual distance between two levels."""
+    gaps = sorted(below - above for above, below in zip(levels, levels[1:], strict=False))
+    return gaps[len(gaps) // 2]
 
 
 def _on_level(line: Sequence[Word], levels: Sequence[float]) -> bool:
-    return min(abs(level - _level(line)) for level in levels) < 0.2 * _pitch(levels)
+    return min(abs(level - _level(line)) for level in levels) < 0.3 * _pitch(levels)
+
+
+def _index_at(y: float, levels: Sequence[float]) -> float:
+    """Row number at that height, between two rows a fraction."""
+    after = min(max(bisect_left(levels, y), 1), len(levels) - 1)
+    return after - 1 + (y - levels[after - 1]) / (levels[after] - levels[after - 1])
 
 
 def _blocks(lines: Sequence[list[Word]], levels: Sequence[float]) -> list[list[list[Word]]]:
@@ -185,7 +223,7 @@ def _shared_out(
     first = 0
     for block in blocks:
         centre = (_level(block[0]) + _level(block[-1])) / 2
-        last = round(2 * (centre - levels[0]) / _pitch(levels) - first)
+        last = round(2 * _index_at(centre, levels) - first)
         if last < first or last >= len(levels):
             return []
         result.append((first, last, [word for line in block for word in line]))
