@@ -90,7 +90,8 @@ def load_reactance_ohm(
     omega = 2 * np.pi * frequency_mhz * MEGA
     b, y = omega * shunt_capacitance_pf * PICO, omega * load_capacitance_pf * PICO
     k = b * (b + y)
-    root = np.sqrt(y**2 - (2 * k * esr_ohm) ** 2)
+    with np.errstate(invalid="ignore"):
+        root = np.sqrt(y**2 - (2 * k * esr_ohm) ** 2)
     reactance = 2 * (1 + k * esr_ohm**2) / ((y + 2 * b) + root)
     slope = (b * (esr_ohm**2 + reactance**2) - reactance) / root * omega * PICO
     return reactance, slope
