@@ -12,7 +12,7 @@ from functools import lru_cache
 
 from extract.attach import Amount, attach, own_amounts, share_years
 from extract.band import joined, when_of
-from extract.bounds import Heading, Value, values_of
+from extract.bounds import Heading, Value, give_bounds, values_of
 from extract.fields import Field, field_of
 from extract.fold import fold, key
 from extract.groups import Item, read_items
@@ -47,7 +47,8 @@ def read_values(
     unit
         As printed in the label, head or unit column ("kΩ", "±ppm", "×10⁻⁶/year"); a unit in the text goes before.
     bound
-        "min", "typ" or "max" where a heading or label says so; a word in the text goes before. For a ± field it gives
+        "min", "typ" or "max" where a heading or label says so, or several for as many numbers ("typ/max" over "10/100");
+        a word in the text goes before. For a ± field it gives
         that bound alone ("10" under Max is max 10, not ±10): `as_plus_minus` makes both ends where the Min cell is empty.
     plus_minus
         The label or head prints ±.
@@ -77,6 +78,7 @@ def _read(
     amounts = own_amounts(items, pieces, row)
     _give_units(amounts, pieces, heading, row)
     attach(items, amounts, row)
+    heading = give_bounds(amounts, heading)
     if row.name == "ageing_ppm":
         share_years(amounts)
     values = [value for value in values_of(amounts, row, heading) if not value.empty or value.doubts]

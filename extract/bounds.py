@@ -45,6 +45,17 @@ class Heading:
     alien: str = ""
 
 
+def give_bounds(amounts: list[Amount], heading: Heading) -> Heading:
+    """A heading of several bounds ("typ/max") gives them to as many numbers in turn, and is nothing to other cells."""
+    if heading.bound is None or "/" not in heading.bound:
+        return heading
+    bounds = heading.bound.split("/")
+    if len(amounts) == len(bounds) and not any(amount.bound for amount in amounts):
+        for amount, bound in zip(amounts, bounds, strict=True):
+            amount.bound = bound
+    return replace(heading, bound=None)
+
+
 def values_of(amounts: list[Amount], row: Field, heading: Heading) -> list[Value]:
     """One value for each condition and each choice of ranges, in the order printed."""
     clusters: dict[When, list[Amount]] = {}

@@ -64,8 +64,8 @@ def _keep_bracket(parts: Parts, inside: str) -> str:
     """Sort a bracket's content into bound, unit, condition or another name of the label."""
     words = [word for word in re.split(r"[\s,;/]+", inside) if word]
     bounds = [vocabulary().bounds.get(key(word)) for word in words]
-    if words and None not in bounds and len(set(bounds)) == 1:
-        parts.bound = parts.bound or bounds[0]
+    if words and None not in bounds:
+        parts.bound = parts.bound or "/".join(dict.fromkeys(bound for bound in bounds if bound))
         return " "
     plain = " ".join(word for word, bound in zip(words, bounds, strict=True) if bound is None)
     for unit in (inside.strip("± "), plain.strip("± ")):
@@ -109,26 +109,38 @@ def _take_years(parts: Parts, text: str) -> str:
     return text[: found.start()] + " " + text[found.end() :]
 
 
+# "-40 to +85", with or without its unit.
+_RANGE = r"(?=[+-]?\d+(?:[.,]\d+)?\s?(?:°\s?C|C|[MkK]Hz)?\s?(?:~|…|to|bis|-|/)\s?[+-]?\d)"
+
+
 @cache
 def _condition_pattern() -> re.Pattern[str]:
     """A condition at the end: "@ 25 °C", "at 100 V DC", "bei 25 °C", ", 25 °C"."""
     words = [_standing_alone(word) for word in vocabulary().phrases.get("at", ()) if word not in ("over", "in")]
-    return re.compile(rf"\s*[,;/-]?\s*(?:@|{'|'.join(words)}|(?=[+-]?\d+\s?°\s?C))\s?(?:dc|ac|ta|tj|f|cl)?\s?=?\s?[+-]?\d.*$", re.IGNORECASE)
+    return re.compile(rf"\s*(?:[,;/]|-(?=\s))?\s*(?:@|{'|'.join(words)}|(?=[+-]?\d+\s?°\s?C)|{_RANGE})\s?(?:dc|ac|ta|tj|f|cl)?\s?=?\s?[+-]?\d.*$", re.IGNORECASE)
 
 
 def _take_condition(parts: Parts, text: str) -> str:
     found = _condition_pattern().search(text) or _AT_REST.search(text)
     if not found or found.start() < 1:
         return text
-    printed = found[0].strip(EDGE)
+    printed = found[0].strip(EDGE.replace("-", ""))
     parts.when = joined(parts.when, read_when(printed))
     last = printed.split()[-1] if printed.split() else ""
     parts.bound = parts.bound or vocabulary().bounds.get(key(last))
     return text[: found.start()]
 
 
+_SEVERAL_BOUNDS = re.compile(r"[\s(\[]*(?P<first>[a-z.]+)\s?[/,]\s?(?P<second>[a-z.]+)[\s)\]]*$", re.IGNORECASE)
+
+
 def take_bound(parts: Parts) -> None:
     """Min and max words at either end belong to no wording; "typical", "nominal" and "standard" may, and stay."""
+    if found := _SEVERAL_BOUNDS.search(parts.core):
+        bounds = [vocabulary().bounds.get(key(found[name])) for name in ("first", "second")]
+        if bounds[0] and bounds[1] and bounds[0] != bounds[1] and found.start() > 0:
+            parts.bound = parts.bound or f"{bounds[0]}/{bounds[1]}"
+            parts.core = parts.core[: found.start()].strip(EDGE)
     for _ in range(2):
         words = parts.core.split()
         joined_cjk = _cjk_bound(parts)

@@ -19,8 +19,16 @@ from extract.runs import Table
 
 _SECTIONS = {
     "labels", "symbols", "shared", "shared_symbols", "weak", "traps", "bounds", "roles", "identity", "attributes", "modes",
-    "mode_codes", "cuts", "phrases", "oscillator", "language",
+    "mode_codes", "cuts", "phrases", "oscillator", "language", "yearly",
 }  # fmt: skip
+
+
+_SETS = (
+    ("weak", "weak", "labels"),
+    ("weak_symbols", "weak", "symbols"),
+    ("filling", "weak", "filling"),
+    ("yearly", "yearly", "labels"),
+)
 
 
 @dataclass(frozen=True)
@@ -28,7 +36,7 @@ class Vocabulary:
     """Words of all languages together. Every table but `phrases` goes from a key to a meaning.
 
     `weak` are labels that decide only alone in their cell, `weak_symbols` symbols that decide only in a symbol column,
-    `filling` words that may be left over beside a wording. `phrases` holds, for each meaning, the wordings as folded and lower case, longest first, for use in patterns.
+    `filling` words that may be left over beside a wording, `yearly` ageing labels that say "in one year" themselves. `phrases` holds, for each meaning, the wordings as folded and lower case, longest first, for use in patterns.
     """
 
     languages: tuple[str, ...] = ()
@@ -38,6 +46,7 @@ class Vocabulary:
     weak: frozenset[str] = frozenset()
     weak_symbols: frozenset[str] = frozenset()
     filling: frozenset[str] = frozenset()
+    yearly: frozenset[str] = frozenset()
     at_words: frozenset[str] = frozenset()
     traps: Table[str] = field(default_factory=Table)
     bounds: Table[str] = field(default_factory=Table)
@@ -71,18 +80,15 @@ def gather(tables: Iterable[tuple[str, dict[str, Any]]]) -> Vocabulary:
     WordingError
         A section or field that does not exist, or a label that two fields claim.
     """
-    found: dict[str, Any] = {name: Table() for name in _SECTIONS - {"language", "weak"}}
-    weak: set[str] = set()
-    weak_symbols: set[str] = set()
-    filling: set[str] = set()
+    found: dict[str, Any] = {name: Table() for name in _SECTIONS - {"language", "weak", "yearly"}}
+    sets: dict[str, set[str]] = {"weak": set(), "weak_symbols": set(), "filling": set(), "yearly": set()}
     languages = []
     for name, table in tables:
         if unknown := set(table) - _SECTIONS:
             raise WordingError(f"{name}: no section called {sorted(unknown)[0]!r}")
         languages.append(table.get("language", name))
-        weak |= {key(word) for word in table.get("weak", {}).get("labels", [])}
-        weak_symbols |= {key(word) for word in table.get("weak", {}).get("symbols", [])}
-        filling |= {key(word) for word in table.get("weak", {}).get("filling", [])}
+        for target, section, name_in_it in _SETS:
+            sets[target] |= {key(word) for word in table.get(section, {}).get(name_in_it, [])}
         for section in ("labels", "symbols"):
             _claim_fields(found[section], table.get(section, {}), name)
         for section in ("shared", "shared_symbols"):
@@ -103,9 +109,7 @@ def gather(tables: Iterable[tuple[str, dict[str, Any]]]) -> Vocabulary:
     }
     return Vocabulary(
         languages=tuple(languages),
-        weak=frozenset(weak),
-        weak_symbols=frozenset(weak_symbols),
-        filling=frozenset(filling),
+        **{name: frozenset(words) for name, words in sets.items()},
         at_words=frozenset(found["phrases"].get("at", ())),
         shared=shared,
         **found,

@@ -21,7 +21,8 @@ LONGEST_HEAD = 60
 class Label:
     """A label read.
 
-    `unit` is as printed; `plus_minus` says that the label itself prints ±; `exact` is False for a partial or misspelt
+    `bound` is "min", "typ", "max", or several in the order of the numbers below ("typ/max"), which `read_values` takes as
+    it is. `unit` is as printed; `plus_minus` says that the label itself prints ±; `exact` is False for a partial or misspelt
     match; `rest` is what was left over; `symbol` says that only a symbol (CL, R1) stood there, no wording.
     """
 
@@ -64,7 +65,7 @@ def ambiguous_label(text: str) -> tuple[str, ...]:
     """The fields a label may mean where it means several ("Frequency tolerance / stability", "Δf/f"); else ()."""
     parts = take_apart(fold(text)[:LONGEST_LABEL])
     shared = vocabulary().shared
-    for name in (parts.core, " ".join([parts.core, *parts.brackets]), *parts.brackets):
+    for name in (" ".join([parts.core, *parts.brackets]), parts.core, *parts.brackets):
         if fields := shared.get(key(name)):
             return fields
     named = _fields_inside(parts.core).strong
@@ -77,7 +78,10 @@ def symbol_of(text: str) -> str | None:
 
 
 def _label(parts: Parts, field: str, *, exact: bool = True, rest: str = "", symbol: bool = False) -> Label:
-    return Label(field, parts.bound, parts.unit, parts.plus_minus, parts.when, exact, rest, symbol)
+    when = parts.when
+    if when.years is None and key(parts.core) in vocabulary().yearly:
+        when = when.model_copy(update={"years": 1.0})
+    return Label(field, parts.bound, parts.unit, parts.plus_minus, when, exact, rest, symbol)
 
 
 def _named(core: str) -> str | None:
@@ -125,13 +129,26 @@ def _beside_symbol(parts: Parts) -> Label | None:
     for name in parts.brackets:
         if (field := _named(name)) and not _fields_inside(parts.core).strong:
             return _label(parts, field)
-    if field := _symbol(parts.core, parts) or _letter_with_unit(parts):
+    if field := _symbol(parts.core, parts) or _letter_with_unit(parts) or _bounded_symbol(parts):
         return _label(parts, field, symbol=True)
     if not parts.core:
         for name in parts.brackets:
             if field := _symbol(name, parts):
                 return _label(parts, field, symbol=True)
     return None
+
+
+_BOUNDED = re.compile(r"(?P<symbol>[A-Za-z]{1,3}\d?)[ ._]?(?P<bound>min|typ|max)", re.IGNORECASE)
+
+
+def _bounded_symbol(parts: Parts) -> str | None:
+    """ "Tmax", "C0max", "ESRmin": a symbol and a bound in one word."""
+    found = _BOUNDED.fullmatch(parts.core)
+    field = vocabulary().symbols.get(key(found["symbol"])) if found else None
+    if found is None or field is None:
+        return None
+    parts.bound = found["bound"].lower()
+    return field
 
 
 def _letter_with_unit(parts: Parts) -> str | None:
@@ -171,7 +188,7 @@ def _fields_inside(text: str) -> _Inside:
             condition = condition or printed.casefold() in known.at_words
             symbol = known.symbols.run_at(words, first)
             first = symbol.last + 1 if symbol else first + 1
-            if not symbol and words[first - 1].key not in known.filling and printed != "/":
+            if not symbol and words[first - 1].key not in known.filling | known.at_words and printed != "/":
                 inside.rest.append(printed)
             continue
         first = run.last + 1
@@ -186,7 +203,7 @@ def _fields_inside(text: str) -> _Inside:
 def _add_condition(inside: _Inside, field: str, printed: str) -> None:
     if field == "operating_temperature_c" and _TOLERANCE in inside.strong:
         inside.strong[_STABILITY] = inside.strong.pop(_TOLERANCE) + len(printed)
-    elif field not in inside.strong:
+    elif field not in inside.strong and not (field == "operating_temperature_c" and _STABILITY in inside.strong):
         inside.rest.append(printed)
 
 
@@ -284,21 +301,27 @@ _BREAK = re.compile(r"[,;()]|\n\n")
 # --- heads, names and words that are no field
 
 
-def _names(text: str) -> list[str]:
-    """A head as printed, without brackets, and each of its languages or alternatives alone."""
+def _names(text: str) -> tuple[list[str], list[str]]:
+    """A head as printed and without brackets or number; then each of its languages and alternatives alone."""
     folded = fold(text)
     if len(folded) > LONGEST_HEAD:
-        return []
+        return [], []
     plain = re.sub(r"[(\[][^()\[\]]*[)\]]", " ", folded).strip(EDGE)
     numbered = re.sub(r"^\s*\d{1,2}\s*[.)、]\s*", "", plain)
     pieces = [piece for piece in re.split(r"[/|\n()\[\]:,]", folded) if piece.strip()]
     latin = IDEOGRAPHS.sub(" ", folded).strip(EDGE)
-    return [folded, plain, numbered, *pieces, *IDEOGRAPHS.findall(folded), latin]
+    return [folded, plain, numbered], [*pieces, *IDEOGRAPHS.findall(folded), latin]
 
 
 def _meaning(text: str, table: dict[str, str]) -> str | None:
-    """What the head means; of several alternatives in it the first that is known."""
-    return next((table[wanted] for name in _names(text) if (wanted := key(name)) in table), None)
+    """What the head means; of several languages or alternatives in it the first that is known, unless it is a field's label."""
+    whole, pieces = _names(text)
+    for name in whole:
+        if (wanted := key(name)) in table:
+            return table[wanted]
+    if not pieces or read_label(text) is not None:
+        return None
+    return next((table[wanted] for name in pieces if (wanted := key(name)) in table), None)
 
 
 @lru_cache(maxsize=8192)
