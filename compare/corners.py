@@ -1,9 +1,9 @@
 """Worst case: the whole chain run at each corner of its roots, so an input that counts twice moves in both at once.
 
 Roots are the capacitance at each node, the transconductance, and the crystal's own spans. What is fitted, stray and
-inside the IC at one node only ever counts as its sum, so the corners of the sums are those of each moving by itself. Every
-condition of the bench is a set of corners of its own. Where a range of transconductance spans a turning point of the
-negative resistance that point is one more corner.
+inside the IC at one node only ever counts as its sum, so the corners of the sums are those of each moving by itself.
+Every condition of the bench is a set of corners of its own. Where a range of transconductance spans a turning point of
+the negative resistance that point is one more corner.
 """
 
 from __future__ import annotations
@@ -148,9 +148,7 @@ def _joined(pieces: Sequence[Reckoned]) -> Reckoned:
 
 
 def _reckon_piece(columns: Columns, bench: Bench) -> Reckoned:
-    base = bench.settings[0]
-    limiter: Limiter = "output" if base.circuit.limiter == "output" else "transconductance"
-    nominal = analyse_nominal(columns, bench, limiter)
+    nominal = analyse_nominal(columns, bench, limiters_of(bench.settings[0].circuit)[0])
     reckoned = Reckoned(nominal, {}, np.full(len(columns), -np.inf))
     for number, setting in enumerate(bench.settings):
         for found, greatest_gm, shunt_index in _corner_sets(columns, bench, number, setting):
@@ -172,7 +170,7 @@ def analyse_nominal(columns: Columns, bench: Bench, limiter: Limiter) -> dict[st
     capacitances = [getattr(nodes, name)[MID] for name in ("input_pf", "output_pf", "across_pf", "amplifier_output_pf")]
     gm = nominal_transconductance_ms(setting, bench, columns.shunt_pf[0, MID])
     circuit = make_circuit(setting, bench, capacitances, gm)
-    return analyse(circuit, crystal, *_swing(setting), limiter, setting.probe_pf)
+    return analyse(circuit, crystal, *swing_of(setting), limiter, setting.probe_pf)
 
 
 def nominal_transconductance_ms(setting: CircuitKeys, bench: Bench, shunt_pf: Array) -> Array:
@@ -253,7 +251,7 @@ def make_circuit(keys: CircuitKeys, bench: Bench, capacitances: Sequence[Array |
     )
 
 
-def _swing(keys: CircuitKeys) -> tuple[float, End]:
+def swing_of(keys: CircuitKeys) -> tuple[float, End]:
     return np.nan if keys.swing_peak_v is None else keys.swing_peak_v, keys.swing_at
 
 
@@ -268,9 +266,12 @@ def _corner_sets(
     shunt, shunt_index = _shunt_ends(columns, number, with_floor=True)
     crystal = crystal_at(columns, bench, number, shunt)
     circuit, greatest_gm = corner_circuit(bench, keys, shunt)
-    limiters: tuple[Limiter, ...] = ("transconductance", "output") if keys.limiter == "unknown" else (keys.limiter,)
-    for limiter in limiters:
-        yield analyse(circuit, crystal, *_swing(keys), limiter, keys.probe_pf), greatest_gm, shunt_index
+    for limiter in limiters_of(keys):
+        yield analyse(circuit, crystal, *swing_of(keys), limiter, keys.probe_pf), greatest_gm, shunt_index
+
+
+def limiters_of(keys: CircuitKeys) -> tuple[Limiter, ...]:
+    return ("transconductance", "output") if keys.limiter == "unknown" else (keys.limiter,)
 
 
 def crystal_at(columns: Columns, bench: Bench, number: int, shunt: Array) -> Crystal:
@@ -281,10 +282,15 @@ def crystal_at(columns: Columns, bench: Bench, number: int, shunt: Array) -> Cry
     return _crystal(columns, shunt, motional, esr)
 
 
-def corner_circuit(bench: Bench, stated: CircuitKeys, shunt: Array) -> tuple[Circuit, Array]:
-    """The circuit at its corners: node capacitances on axis 4, transconductances on axis 5; and the IC's greatest."""
+def corner_circuit(
+    bench: Bench, stated: CircuitKeys, shunt: Array, capacitances: Sequence[Array] | None = None
+) -> tuple[Circuit, Array]:
+    """The circuit at its corners: node capacitances on axis 4, transconductances on axis 5; and the IC's greatest.
+
+    `capacitances` stands for corners of others than the bench's own.
+    """
     keys = as_reckoned(stated, bench)
-    capacitances = _capacitance_corners(Nodes.of(keys))
+    capacitances = _capacitance_corners(Nodes.of(keys)) if capacitances is None else capacitances
     gm, greatest_gm = _transconductances(bench, keys, (capacitances, shunt))
     return make_circuit(keys, bench, capacitances, gm), greatest_gm
 

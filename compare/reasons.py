@@ -211,7 +211,10 @@ def _range(one: Judged, standing: Standing) -> str:
     own = f"the part's range {figure(span.low)} to {figure(span.high)} °C" if offer.operating_range.stated else ""
     stability = f"its stability's {band[0]:g} to {band[1]:g} °C" if band else ""
     held = WORDS[int(one.verdict[standing.at])] == "meets"
-    return f"{joined(filter(None, (own, stability)))} {'hold' if held else 'do not hold'} {wanted}"
+    ranges = [words for words in (own, stability) if words]
+    several = len(ranges) > 1
+    verb = ("hold" if several else "holds") if held else ("do not both hold" if several else "does not hold")
+    return f"{joined(ranges)} {verb} {wanted}"
 
 
 def _mode(one: Judged, standing: Standing) -> str:
@@ -223,8 +226,8 @@ def _mode(one: Judged, standing: Standing) -> str:
         )
     if trap:
         return (
-            f"{offer.mode}, judged by its own numbers: the bench has an overtone trap, but the trap is not in the model, "
-            "so prove it on the board"
+            f"{offer.mode}, judged by its own numbers: the bench has an overtone trap, but the trap is not in the "
+            "model, so prove it on the board"
         )
     return {
         "meets": f"{offer.mode}: its fundamental cannot start in this circuit",

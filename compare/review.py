@@ -6,8 +6,11 @@ from collections.abc import Sequence
 from typing import Any
 
 from compare.bench import Bench
+from compare.bench_readings import measured_numbers
+from compare.contributors import contributors_of
 from compare.offer import Offers
-from compare.reckoning import part_result, reckon_sheets
+from compare.reckoning import Reckoning, part_result, reckon_sheets
+from compare.trial import advice_for
 from extract.model import SpecSheet
 
 SCHEMA = "quartzfolio/review/1"
@@ -18,5 +21,18 @@ def review(sheets: Sequence[SpecSheet], bench: Bench) -> dict[str, Any]:
     reckoning = reckon_sheets(sheets, bench)
     if isinstance(reckoning, Offers):
         return {"schema": SCHEMA, "reviews": [], "notes": list(reckoning.notes)}
-    reviews = [part_result(reckoning, at) for at in range(len(reckoning))]
+    reviews = [_reviewed(reckoning, at) for at in range(len(reckoning))]
     return {"schema": SCHEMA, "reviews": reviews, "notes": list(reckoning.notes)}
+
+
+def _reviewed(reckoning: Reckoning, at: int) -> dict[str, Any]:
+    columns, bench = reckoning.columns, reckoning.bench
+    advice, sentences = advice_for(columns, bench, reckoning.total, reckoning.judged, at)
+    rl_ohm = reckoning.numbers["load_resonance_resistance_ohm"].ends[:, at]
+    return {
+        **part_result(reckoning, at),
+        **measured_numbers(columns, bench, at, (float(rl_ohm[0]), float(rl_ohm[1]), float(rl_ohm[2]))),
+        "contributors": contributors_of(columns, bench, reckoning.total, at),
+        "advice": advice,
+        "advice_messages": sentences,
+    }

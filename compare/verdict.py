@@ -10,7 +10,7 @@ import numpy as np
 from compare.bench import Bench
 from compare.circuit import Array
 from compare.columns import MID, Columns, Flags, Whole, spans
-from compare.corners import SHUNT_FLOOR, Reckoned
+from compare.corners import SHUNT_FLOOR, Reckoned, rated_gm
 from compare.offer import Offer, covers
 from compare.terms import Total, total_ppm
 
@@ -109,13 +109,12 @@ def transconductance_missing(columns: Columns, bench: Bench) -> dict[str, Flags]
             continue
         if keys.rating is None or keys.rating.kind is None:
             missing["circuit.transconductance_ms"] = np.ones(n, dtype=bool)
-        elif _needs_load(keys.rating.kind, keys.rating.esr_max_ohm) and keys.rating.load_pf is None:
+        elif isinstance(keys.rating.esr_max_ohm, tuple):
+            if np.isnan(rated_gm(keys, bench, np.zeros(()))):
+                missing["circuit.rating.esr_max_ohm"] = np.ones(n, dtype=bool)
+        elif keys.rating.kind != "critical_transconductance_max_ms" and keys.rating.load_pf is None:
             missing["circuit.rating.load_pf"] = np.ones(n, dtype=bool)
     return missing
-
-
-def _needs_load(kind: str, esr_max: object) -> bool:
-    return kind != "critical_transconductance_max_ms" and not isinstance(esr_max, tuple)
 
 
 def decide(slack: Array, by_shunt: Flags, by_motional: Flags, best: Array | None = None) -> tuple[Array, Array]:

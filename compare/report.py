@@ -1,0 +1,338 @@
+"""Rank, review and extract as text for a terminal: 100 columns at most, marks beside words, sources beside numbers."""
+
+from __future__ import annotations
+
+import unicodedata
+from collections.abc import Iterable, Iterator, Mapping, Sequence
+from typing import Any
+
+from compare.explain import FIELD_WORDS, SYMBOLS, figure
+from extract.model import Part, Reading, SpecSheet, When
+
+WIDTH = 100
+MOST_ROWS = 60
+MARKS = {"meets": "▲", "falls short": "▼", "cannot tell": "◇", None: "·"}
+NAMES = {
+    "margin": "margin",
+    "gain_ratio": "gain ratio",
+    "resistance_headroom": "R1 headroom",
+    "total_ppm": "ppm, all causes",
+    "drive_level_uw": "drive level",
+    "startup_ms": "start-up",
+    "operating_temperature_c": "temperature range",
+    "mode": "mode",
+    "esr_ohm": "least ESR",
+    "rating": "IC's rating",
+    "circuit.output_resistance_kohm": "series resistor",
+}
+NUMBERS = {
+    "motional_capacitance_ff": "C1, fF",
+    "motional_inductance_mh": "L1, mH",
+    "quality_factor": "Q",
+    "series_resonance_mhz": "fs, MHz",
+    "parallel_resonance_mhz": "fp, MHz",
+    "circuit_load_pf": "circuit's load, pF",
+    "load_resonance_resistance_ohm": "RL, Ω",
+    "negative_resistance_ohm": "negative resistance, Ω",
+    "margin": "margin",
+    "gain_ratio": "gain ratio",
+    "resistance_headroom": "R1 headroom",
+    "greatest_esr_ohm": "greatest ESR, Ω",
+    "allowed_esr_ohm": "allowed ESR, Ω",
+    "critical_transconductance_ms": "critical gm, mS",
+    "greatest_transconductance_ms": "greatest gm, mS",
+    "load_error_ppm": "load error, ppm",
+    "trim_ppm_per_pf": "trim, ppm/pF",
+    "drive_level_uw": "drive level, µW",
+    "startup_ms": "start-up, ms",
+    "total_ppm": "all causes, ppm",
+    "measured_load_pf": "measured load, pF",
+    "measured_stray_pf": "measured stray, pF",
+    "measured_motional_capacitance_ff": "measured C1, fF",
+    "measured_negative_resistance_ohm": "measured Rn, Ω",
+    "measured_margin": "measured margin",
+    "measured_startup_ms": "measured start-up, ms",
+}
+CAUTIONS = (
+    "An estimate is no measurement: where a number is marked estimated, get the value from the maker.",
+    "Prove the margin on the real board, over temperature and supply; samples that start are no proof.",
+    "Typical transconductance is not the least; ESR here is R1 unless the bench says otherwise.",
+    "Drive-level dependence, spurious modes, layout, leakage and supply noise are not in this reckoning.",
+)
+
+
+def display_width(text: str) -> int:
+    """Columns that the text takes in a terminal: two for a wide character, none for a combining one."""
+    wide = sum(unicodedata.east_asian_width(c) in "WF" for c in text)
+    return len(text) + wide - sum(unicodedata.combining(c) != 0 for c in text)
+
+
+def fitted(text: str, width: int) -> str:
+    """The text in exactly `width` columns, cut with … where it is longer."""
+    if display_width(text) > width:
+        while display_width(text) > width - 1:
+            text = text[:-1]
+        text += "…"
+    return text + " " * (width - display_width(text))
+
+
+def wrapped(text: str, first: str = "", rest: str | None = None) -> list[str]:
+    """Lines of at most WIDTH columns; the first begins with `first`, the others with `rest`."""
+    rest = " " * display_width(first) if rest is None else rest
+    lines, line = [], first
+    for word in text.split():
+        for piece in _pieces(word, WIDTH - display_width(rest)):
+            gap = "" if line in (first, rest) else " "
+            if display_width(line) + len(gap) + display_width(piece) > WIDTH and line not in (first, rest):
+                lines.append(line.rstrip())
+                line, gap = rest, ""
+            line += gap + piece
+    return [*lines, line.rstrip()]
+
+
+def _pieces(word: str, width: int) -> Iterator[str]:
+    """A word that no line would hold, in pieces that one does."""
+    while display_width(word) > width:
+        end = len(word)
+        while display_width(word[:end]) > width:
+            end -= 1
+        yield word[:end]
+        word = word[end:]
+    yield word
+
+
+def times(slack: float | None) -> str:
+    return "not known" if slack is None else f"{figure(slack, 3)} times"
+
+
+def rank_text(result: Mapping[str, Any]) -> str:
+    """The ranking as text: a table, then the reason for each place, notes and cautions."""
+    rows: Sequence[Mapping[str, Any]] = result["rows"]
+    lines = [_rank_heading(rows), ""]
+    if rows:
+        widths = (5, 13, 26, 20, 32)
+        lines.append(_row(("place", "verdict", "part", "maker", "tightest requirement"), widths))
+        lines += [_rank_line(row, widths) for row in rows[:MOST_ROWS]]
+        if len(rows) > MOST_ROWS:
+            lines.append(f"... and {len(rows) - MOST_ROWS} more; --json gives all of them")
+        lines += ["", "Why", *(line for row in rows[:MOST_ROWS] for line in _why(row))]
+    return _with_end(lines, result["notes"], bool(rows))
+
+
+def _rank_heading(rows: Sequence[Mapping[str, Any]]) -> str:
+    if not rows:
+        return "No part offers the frequency asked."
+    counts = {words: sum(row["verdict"] == words for row in rows) for words in ("meets", "cannot tell", "falls short")}
+    said = ", ".join(f"{MARKS[words]} {count} {words}" for words, count in counts.items() if count)
+    return f"{len(rows)} part{'s offer' if len(rows) != 1 else ' offers'} the frequency: {said}"
+
+
+def _row(cells: Iterable[str], widths: Sequence[int]) -> str:
+    return " ".join(fitted(cell, width) for cell, width in zip(cells, widths, strict=True)).rstrip()
+
+
+def _rank_line(row: Mapping[str, Any], widths: Sequence[int]) -> str:
+    tightest = row["tightest"]
+    told = f"{NAMES.get(tightest, tightest)} {times(row['slack'][tightest])}" if tightest else "none known"
+    verdict = f"{MARKS[row['verdict']]} {row['verdict']}"
+    return _row((f"{row['place']:>4}", verdict, _part_name(row), row["maker"] or "-", told), widths)
+
+
+def _part_name(row: Mapping[str, Any]) -> str:
+    return str(row["part_number"] or row["file"])
+
+
+def _why(row: Mapping[str, Any]) -> list[str]:
+    """The part with its file, then what decides its place: what is not met, what cannot be told, else the tightest."""
+    about = ", ".join(filter(None, (row["maker"], row["package"], row["mode"], row["file"])))
+    lines = wrapped(f"{MARKS[row['verdict']]} {_part_name(row)} ({about})", f"{row['place']:>4} ", "       ")
+    decisive = [r for r in row["reasons"] if r["verdict"] == row["verdict"] and row["verdict"] != "meets"]
+    if not decisive:
+        decisive = [r for r in row["reasons"] if r["about"] == row["tightest"]]
+    for reason in _grouped(decisive):
+        lines += _reason(reason, "       ")
+    if row["tightest"] in NUMBERS and row["tightest"] in row:
+        lines += wrapped(row[row["tightest"]]["how"], "         from: ", "           ")
+    lines += _chosen(row, "       ")
+    if row["to_check"]:
+        lines += wrapped(f"look at first: {', '.join(map(_field, row['to_check']))}", "       ")
+    return lines
+
+
+def _grouped(reasons: Sequence[Mapping[str, Any]]) -> list[dict[str, Any]]:
+    """Reasons with the same words told once, for all that they are about."""
+    told: dict[str, dict[str, Any]] = {}
+    for reason in reasons:
+        name = NAMES.get(reason["about"], reason["about"])
+        if reason["message"] in told:
+            told[reason["message"]]["about"] += f", {name}"
+        else:
+            told[reason["message"]] = {**reason, "about": name}
+    return list(told.values())
+
+
+def _reason(reason: Mapping[str, Any], indent: str) -> list[str]:
+    name = NAMES.get(reason["about"], reason["about"])
+    return wrapped(f"{name}: {reason['message']}", f"{indent}{MARKS[reason['verdict']]} ", f"{indent}  ")
+
+
+def _chosen(row: Mapping[str, Any], indent: str) -> list[str]:
+    if not row["chosen"]:
+        return []
+    said = ", ".join(f"{_field(key)} {_value(value)}" for key, value in row["chosen"].items())
+    return wrapped(f"holds for a part ordered with: {said}", indent, f"{indent}  ")
+
+
+def _value(value: Any) -> str:
+    if isinstance(value, list | tuple):
+        return " to ".join(figure(end) for end in value)
+    return figure(value) if isinstance(value, int | float) else str(value)
+
+
+def _field(name: str) -> str:
+    return FIELD_WORDS.get(name, name)
+
+
+def review_text(result: Mapping[str, Any]) -> str:
+    """Each review as text: verdict, requirements, every number with its source, what is open, notes and cautions."""
+    reviews: Sequence[Mapping[str, Any]] = result["reviews"]
+    lines = [] if reviews else ["No part offers the frequency asked."]
+    for review in reviews:
+        lines += [*_review_lines(review), ""]
+    return _with_end(lines, result["notes"], bool(reviews))
+
+
+def _review_lines(review: Mapping[str, Any]) -> Iterator[str]:
+    about = ", ".join(filter(None, (review["maker"], review["package"], review["mode"], review["file"])))
+    yield from wrapped(f"{_part_name(review)} ({about})")
+    yield f"{MARKS[review['verdict']]} {review['verdict']}"
+    yield from _chosen(review, "  ")
+    for reason in review["reasons"]:
+        yield from _reason(reason, "  ")
+    yield ""
+    yield _row(("", "number", "low", "mid", "high", "basis"), (1, 24, 13, 13, 13, 10))
+    for key, name in NUMBERS.items():
+        if key in review:
+            yield from _number_lines(name, review[key])
+    for title, sentences in _open_points(review):
+        yield ""
+        yield title
+        for sentence in sentences:
+            yield from wrapped(sentence, "  - ")
+
+
+def _number_lines(name: str, number: Mapping[str, Any]) -> Iterator[str]:
+    digits = 9 if name.endswith("MHz") else 4
+    ends = [figure(number[end], digits) for end in ("low", "mid", "high")]
+    yield _row(("", name, *ends, number["basis"]), (1, 24, 13, 13, 13, 10))
+    yield from wrapped(number["how"], "      ", "        ")
+
+
+def _open_points(review: Mapping[str, Any]) -> Iterator[tuple[str, list[str]]]:
+    points = {
+        "How the sheet was taken": [one["message"] for one in review["remarks"]],
+        "Look at these readings first": [_field(name) for name in review["to_check"]],
+        "Ask": list(review["questions"]),
+        "Measured": [review["measured_message"]] if "measured_message" in review else [],
+        "What the worst case hangs on": [
+            f"{NAMES.get(key, key)}: " + "; ".join(one["message"] for one in listed[:4])
+            for key, listed in review.get("contributors", {}).items()
+            if listed
+        ],
+        "What would help": [*map(_advice, review.get("advice", ())), *review.get("advice_messages", ())],
+    }
+    yield from ((title, sentences) for title, sentences in points.items() if sentences)
+
+
+def _advice(one: Mapping[str, Any]) -> str:
+    if one["what"] == "load capacitors":
+        first, second = one["values_pf"]
+        return (
+            f"load capacitors {figure(first)} pF at the input and {figure(second)} pF at the output: load error "
+            f"{figure(one['load_error_ppm'], 3)} ppm and margin {figure(one['margin'], 3)} in the worst case"
+        )
+    return (
+        f"series resistor {figure(one['series_resistor_ohm'])} Ω: drive level {figure(one['drive_level_uw'], 3)} µW and "
+        f"margin {figure(one['margin'], 3)} in the worst case"
+    )
+
+
+def _with_end(lines: list[str], notes: Sequence[Any], cautions: bool) -> str:
+    said = [note["message"] if isinstance(note, Mapping) else str(note) for note in notes]
+    if said:
+        lines += ["", "Notes"]
+        lines += [line for note in said for line in wrapped(note, "  - ")]
+    if cautions:
+        lines += ["", "Cautions"]
+        lines += [line for caution in CAUTIONS for line in wrapped(caution, "  - ")]
+    return "\n".join(lines).strip("\n")
+
+
+def extract_text(sheets: Sequence[SpecSheet]) -> str:
+    """What the sheets say: each reading with its bounds, where it holds, where it stands and how it was had."""
+    lines: list[str] = []
+    for sheet in sheets:
+        scan = ", a scan" if sheet.scan else ""
+        count = f"{len(sheet.parts)} part{'' if len(sheet.parts) == 1 else 's'}"
+        lines += wrapped(f"{sheet.file} ({sheet.kind}{scan}): {count}")
+        for note in sheet.notes:
+            where = f" ({note.where})" if note.where is not None else ""
+            lines += wrapped(f"{note.level}: {note.message}{where}", "  ")
+        for part in sheet.parts:
+            lines += _part_lines(part)
+        lines.append("")
+    return "\n".join(lines).strip("\n")
+
+
+def _part_lines(part: Part) -> Iterator[str]:
+    resonance = "series resonance" if part.resonance == "series" else None
+    about = ", ".join(filter(None, (part.maker, part.package, part.mode, part.cut, resonance)))
+    yield ""
+    yield from wrapped(f"{part.part_number or 'series without a part number'}" + (f" ({about})" if about else ""), "  ")
+    widths = (29, 9, 9, 9, 11, 29)
+    yield "  " + _row(("reading", "min", "typ", "max", "unit", "where"), widths)
+    for reading in part.readings:
+        yield from _reading_lines(reading, widths)
+
+
+def _reading_lines(reading: Reading, widths: Sequence[int]) -> Iterator[str]:
+    unit = SYMBOLS.get(reading.field, ("", ""))[1] or UNITS.get(reading.field, "")
+    bounds = [figure(value, 8) if value is not None else "" for value in (reading.min, reading.typ, reading.max)]
+    how = "" if reading.status == "stated" else f"{reading.status}, "
+    name = FIELD_WORDS.get(reading.field, reading.field)
+    yield "  " + _row((name, *bounds, unit, f"{how}{reading.where}"), widths)
+    extra = []
+    if reading.options:
+        extra.append(f"options {', '.join(figure(value) for value in reading.options)}")
+    if holds := when_text(reading.when):
+        extra.append(holds)
+    if reading.bare:
+        extra.append("no bound stated")
+    if extra:
+        yield from wrapped("; ".join(extra), "      ")
+    if reading.check:
+        yield from wrapped(f"look: {reading.check}", "      ")
+
+
+UNITS = {"frequency_mhz": "MHz", "storage_temperature_c": "°C", "insulation_resistance_megohm": "MΩ"}
+
+
+def _band_text(band: tuple[float, float], unit: str) -> str:
+    low, high = (figure(end, 8) for end in band)
+    return f"at {low} {unit}" if low == high else f"{low} to {high} {unit}"
+
+
+def when_text(when: When) -> str:
+    """Where a reading holds, in words; empty where it holds everywhere."""
+    bands = {"MHz": when.frequency_mhz, "pF": when.load_capacitance_pf, "°C": when.temperature_c}
+    said = [
+        f"at {figure(band[0], 8)} {unit}"
+        if band[0] == band[1]
+        else f"{figure(band[0], 8)} to {figure(band[1], 8)} {unit}"
+        for unit, band in bands.items()
+        if band is not None
+    ]
+    said += [word for word in (when.mode, when.package) if word]
+    if when.years is not None:
+        said.append(f"after {figure(when.years)} year{'' if when.years == 1 else 's'}")
+    return ", ".join(said)
