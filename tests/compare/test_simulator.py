@@ -88,7 +88,7 @@ def parameters(circuit: Circuit, crystal: Crystal) -> str:
     c_in, c_out, across, amplifier, gm, rd, rf, ro = (float(x) for x in circuit)
     frequency, load, c0, c1, r1 = (float(x) for x in crystal)
     l1 = (1 + c1 * 1e-3 / (c0 + load)) / ((2e6 * np.pi * frequency) ** 2 * c1 * 1e-15)
-    resistors = {"rd": rd or 1e-3, "rf": min(rf * 1e3, 1e15), "ro": min(ro * 1e3, 1e15), "r1": r1}
+    resistors = {"rd": rd or 1e-6, "rf": min(rf * 1e3, 1e15), "ro": min(ro * 1e3, 1e15), "r1": r1}
     others = {"f": frequency * 1e6, "gm": gm * 1e-3, "l1": l1, "c1": c1 * 1e-15}
     capacitors = {"cin": c_in, "cout": c_out, "cx": across, "cp": amplifier, "c0": c0}
     values = resistors | others | {name: value * 1e-12 for name, value in capacitors.items()}
