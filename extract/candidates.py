@@ -162,7 +162,7 @@ def _single(entry: Entry, label: Label, when: When, subject: str, value: Value) 
             entry, label, merged(when, kept(each.when, label.field)), subject, value.piece, each, nominal=value.nominal
         )
         for each in found
-        if not each.empty
+        if not each.empty and not each.series
     ]
 
 
@@ -196,7 +196,7 @@ def _candidate(
         bare=bare,
         raw=_raw(entry, [piece]),
         where=piece.where,
-        doubts=_doubts(label, [piece], value.doubts),
+        doubts=label_doubts(label, [piece], value.doubts),
         inferred=not label.exact,
         source=entry.source,
         subject=subject,
@@ -209,7 +209,8 @@ def _raw(entry: Entry, pieces: Iterable[Placed]) -> str:
     return " ".join(" ".join(text.split()) for text in texts if text.strip())
 
 
-def _doubts(label: Label, pieces: Iterable[Placed], doubts: Iterable[str]) -> tuple[str, ...]:
+def label_doubts(label: Label, pieces: Iterable[Placed], doubts: Iterable[str]) -> tuple[str, ...]:
+    """Reasons to look at a reading: those of the amount, a label that is only nearly one, an unsure recogniser."""
     found = list(doubts)
     if not label.exact:
         found.append(f"the label is only like that of {field_of(label.field).title}")
@@ -229,7 +230,9 @@ def _joined(entry: Entry, label: Label, when: When, subject: str, values: Sequen
     for value in values:
         unit = _bare_unit(entry.unit or label.unit or None)
         pm = (label.plus_minus or bool(_PLUS_MINUS.search(fold(entry.unit)))) and len(values) == 1
-        found = read(value.piece.text, label.field, unit, value.bound or label.bound, plus_minus=pm)
+        bound = value.bound or label.bound
+        found = read(value.piece.text, label.field, unit, None if pm and bound == "typ" else bound, plus_minus=pm)
+        found = tuple(each for each in found if not each.series)
         if len(found) == 1 and not found[0].options and _plain(found[0]):
             parts.append((value, found[0]))
         else:
@@ -279,7 +282,7 @@ def _one_row(
         bare=bare and field_of(label.field).bare,
         raw=_raw(entry, pieces),
         where=pieces[0].where,
-        doubts=_doubts(label, pieces, doubts),
+        doubts=label_doubts(label, pieces, doubts),
         inferred=not label.exact,
         source=entry.source,
         subject=subject,

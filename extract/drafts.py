@@ -65,7 +65,9 @@ def _runs(text: str, longest: int = 4) -> Iterator[str]:
 @lru_cache(maxsize=8192)
 def modes_in(text: str, *, codes: bool = False) -> frozenset[str]:
     """Every mode of vibration that a text names."""
-    whole = wording.mode_of(text) or (vocabulary().mode_codes.get(key(text)) if codes else None)
+    coded = sum(character.isalpha() for character in text) < 2
+    whole = wording.mode_of(text) if codes or not coded else None
+    whole = whole or (vocabulary().mode_codes.get(key(text)) if codes else None)
     if whole is not None:
         return frozenset({whole})
     known = vocabulary().modes

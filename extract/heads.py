@@ -76,7 +76,7 @@ def interpret(levels: tuple[str, ...]) -> Head:
 
 def _unnamed(levels: tuple[str, ...], known: list[Meaning], bound: Bound | None, unit: str) -> Head:
     whole = meaning(" ".join(levels)) if levels else None
-    if whole is not None and whole.head is not None:
+    if whole is not None and (whole.head is not None or (whole.label is not None and whole.trap is None)):
         return _head(levels, whole, bound, unit, ())
     trap = next((each.trap for each in known if each.trap), None)
     role = next((each.role for each in reversed(known) if each.role), None)
@@ -85,7 +85,7 @@ def _unnamed(levels: tuple[str, ...], known: list[Meaning], bound: Bound | None,
 
 
 def _head(levels: tuple[str, ...], base: Meaning, bound: Bound | None, unit: str, extra: tuple[str, ...]) -> Head:
-    label = base.label if base.label is not None and base.label.exact else None
+    label = base.label
     return Head(
         levels,
         label=label,

@@ -5,6 +5,7 @@ from __future__ import annotations
 from collections.abc import Iterator, Sequence
 
 from extract.documents.model import Line
+from extract.dumps import column_dump
 from extract.entries import Entry, Item, Key, Piece, Text, Value
 from extract.fold import fold
 from extract.footnotes import footnote_of
@@ -19,9 +20,16 @@ def line_items(lines: Sequence[Line]) -> list[Item]:
     items: list[Item] = []
     index = 0
     while index < len(lines):
-        taken = _key_run(lines, index, items) or _label_over_value(lines, index, items) or _one(lines[index], items)
+        taken = _dump(lines, index, items) or _key_run(lines, index, items) or _label_over_value(lines, index, items) or _one(lines[index], items)
         index += taken
     return items
+
+
+def _dump(lines: Sequence[Line], index: int, items: list[Item]) -> int:
+    entries, taken = column_dump(lines, index)
+    items.extend(_text(line) for line in lines[index : index + taken])
+    items.extend(entries)
+    return taken
 
 
 def _text(line: Line) -> Text:

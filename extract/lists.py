@@ -12,7 +12,7 @@ from dataclasses import dataclass, field, replace
 from functools import lru_cache
 
 from extract import wording
-from extract.candidates import Candidate, confidence_doubts, read
+from extract.candidates import Candidate, label_doubts, read
 from extract.conditions import band_of, condition_of, kept, merged
 from extract.drafts import Draft
 from extract.entries import Entry, Listing, Placed
@@ -155,7 +155,8 @@ def cell_candidates(cell: Placed, column: _Column, when: When, subject: str = ""
             bare=value.bare and known.bare,
             raw=f"{column.head.levels[-1] if len(column.head.levels) == 1 else ' '.join(column.head.levels)} {cell.text}".strip(),
             where=cell.where,
-            doubts=(*value.doubts, *confidence_doubts(cell.confidence)),
+            doubts=label_doubts(label, [cell], value.doubts),
+            inferred=not label.exact,
             source="table",
             subject=subject,
         )

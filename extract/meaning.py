@@ -17,7 +17,7 @@ from extract.wording import Label
 _DIGIT = re.compile(r"\d")
 # A number that stands by itself or before a unit; "5hwQ2IN" and "C0" hold none.
 _NUMBER = re.compile(
-    r"(?<![A-Za-z0-9_])[-+±≤≥<>~]?\s?\d+(?:[.,]\d+)*(?=$|[\s%°)\]~,;/…*×-]|[kKMmGμun]?(?:Hz|HZ|hz|F|f|Ω|[oO]hms?|W|H|V|A|R)\b|ppm|PPM|C\b)"
+    r"(?<![A-Za-z0-9_])[-+±≤≥<>~]?\s?\d+(?:[.,]\d+)*(?=$|[\s%°)\]~,;/…*×≤≥<>±-]|[kKM](?:[\s≤≥<>~-]|$)|[kKMmGμun]?(?:Hz|HZ|hz|F|f|Ω|[oO]hms?|W|H|V|A|R)\b|ppm|PPM|C\b)"
 )
 _EAST = re.compile(r"[\u3040-\u30ff\u3400-\u9fff\uac00-\ud7af]{2,}")
 _NUMBERING = re.compile(r"^\s*(?:\(?\d{1,2}[.)、]\s?|[•●■◆▪·*-]\s*)(?=\D)")

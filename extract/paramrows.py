@@ -8,14 +8,16 @@ from dataclasses import dataclass, field
 
 from extract.conditions import kinds_of
 from extract.documents.model import Cell
-from extract.entries import Entry, Item, Piece, Text, Value
+from extract.entries import Entry, Item, Key, Piece, Text, Value
 from extract.fold import fold
 from extract.heads import BOUNDS, Head, is_unit
+from extract.keys import choices_in, key_label
 from extract.meaning import is_part_token, meaning
 
 Row = Sequence[Cell | None]
 _VALUE_ROLES = ("value", "min", "typ", "max")
 _CONDITION_ROLES = ("condition", "remarks")
+_KEY_ROLES = ("mode", "cut", "band", "model")
 _PLAIN_NUMBER = re.compile(r"[-+±]?\s?\d+(?:[.,]\d+)*|-+")
 _SYMBOL = re.compile(r"[^\W\d]\w{0,2}[ _]?\w{0,8}(?:/[^\W\d]\w{0,3}[ _]?\w{0,6})?(?:\(\w\))?")
 
@@ -204,6 +206,8 @@ def _place(found: _Row, cell: Cell, head: Head, span: list[Head], *, governed: b
         found.conditions.append(cell.text)
     elif any(role in _VALUE_ROLES for role in roles) or _is_subject(head):
         found.values.extend(_values(cell, span, governed=governed))
+    elif head.role in _KEY_ROLES or head.label is not None:
+        found.conditions.append(cell.text)
     elif is_unit(cell.text) and not found.unit:
         found.unit = cell.text
     elif not found.values and not found.symbol and _looks_like_symbol(cell.text) and not meaning(cell.text).value:
@@ -260,6 +264,13 @@ def _nearer(row: _Row, above: _Row | None, below: _Row | None) -> _Row | None:
     return above
 
 
+def _choices(value: Value) -> list[tuple[str, Piece]]:
+    """Codes and meanings of a cell that holds two or more of them and nothing else."""
+    found = choices_in(value.piece.text)
+    where, sure = value.piece.where, value.piece.confidence
+    return [(code, Piece(text, where, sure)) for code, text in found] if len(found) >= 2 else []
+
+
 def _items(row: _Row) -> Iterator[Item]:
     if row.label is None:
         for value in row.values:
@@ -271,7 +282,11 @@ def _items(row: _Row) -> Iterator[Item]:
             yield Entry(row.label, (), row.unit, row.symbol, tuple(row.conditions), row.section)
         return
     label = Piece(row.label_text, row.label.where, row.label.confidence)
-    if not meaning(row.label_text).known:
+    known = meaning(row.label_text)
+    if known.head is None and known.trap is None:
         yield Text(label)
         yield from (Text(value.piece) for value in row.values)
+    if keys := [choice for value in row.values for choice in _choices(value)]:
+        yield Key(Piece(key_label(label.text), label.where), tuple(keys))
+        return
     yield Entry(label, tuple(row.values), row.unit, row.symbol, tuple(row.conditions), row.section)

@@ -3,7 +3,7 @@
 from __future__ import annotations
 
 from collections.abc import Sequence
-from dataclasses import dataclass, field
+from dataclasses import dataclass, field, replace
 
 from extract.attributes import attributes_of
 from extract.blocks import Blocks
@@ -100,8 +100,12 @@ def _draft(section: Section, blocks: Blocks) -> Draft:
     draft = Draft()
     texts = [item for item in section.items if isinstance(item, Text)]
     entries = [item for item in section.items if isinstance(item, Entry)]
-    for entry in entries:
-        _take_entry(draft, entry, blocks)
+    heading = ""
+    for item in section.items:
+        if isinstance(item, Text) and item.heading:
+            heading = item.piece.text
+        elif isinstance(item, Entry):
+            _take_entry(draft, item, blocks, heading)
     draft.take_identity(entries)
     if draft.part_number is not None and not part_tokens(draft.part_number):
         draft.part_number = None
@@ -112,8 +116,14 @@ def _draft(section: Section, blocks: Blocks) -> Draft:
     return draft
 
 
-def _take_entry(draft: Draft, entry: Entry, blocks: Blocks) -> None:
+def _take_entry(draft: Draft, entry: Entry, blocks: Blocks, heading: str) -> None:
+    about = [heading, entry.section]
+    if says(about, "reliability"):
+        return
     found = entry_candidates(entry)
+    if says(about, "ordering"):
+        draft.candidates += [replace(each, source="key") for each in found]
+        return
     draft.candidates += found
     draft.candidates += noted_candidates(entry, blocks.notes)
     if _offers_series(entry):
@@ -124,6 +134,12 @@ def _take_entry(draft: Draft, entry: Entry, blocks: Blocks) -> None:
         if found[0].field == "frequency_mhz":
             for value in entry.values:
                 draft.take_mode_and_cut(value.piece.text)
+
+
+def says(texts: Sequence[str], kind: str) -> bool:
+    """Whether a heading is one of ordering keys ("ordering") or of tests ("reliability")."""
+    words = vocabulary().phrases.get(kind, ())
+    return any(word in fold(text).casefold() for text in texts if text and len(text) < 80 for word in words)
 
 
 def _offers_series(entry: Entry) -> bool:

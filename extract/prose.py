@@ -123,7 +123,10 @@ def _last_amount(text: str, field: str) -> str:
     return text
 
 
-_FREQUENCY = re.compile(r"(?i)(?<![\w.,±-])\d+(?:[.,]\d+)*\s?[mk]hz\b(?!\s?(?:to|-|~|…|bis|and|steps?)\s?[\d])")
+_FREQUENCY = re.compile(r"(?i)(?<![\w.,±-])\d+(?:[.,]\d+)*\s?[mk]hz\b")
+_FREQUENCIES = re.compile(
+    r"(?i)(?<![\w.,±-])\d+(?:[.,]\d+)*\s?(?:[mk]hz)?\s?(?:to|-|~|…|bis|à|a|至)\s?\d+(?:[.,]\d+)*\s?[mk]hz\b"
+)
 _PPM = re.compile(r"(?i)±\s?\d+(?:[.,]\d+)?(?:\s?-?[\d.,]+)?\s?ppm")
 
 
@@ -162,8 +165,11 @@ def loose_in_prose(piece: Placed) -> list[Candidate]:
     """Unlabelled amounts that a sentence makes plain: "±30 ppm at 25 °C", "±50 ppm from -20 °C to +70 °C", "12 MHz"."""
     text = fold(piece.text)
     found: list[Candidate] = []
-    amounts = _FREQUENCY.findall(text)
-    if len({amount.casefold() for amount in amounts}) == 1:
+    ranges = _FREQUENCIES.findall(text)
+    amounts = _FREQUENCY.findall(_FREQUENCIES.sub(" ", text))
+    if len(ranges) == 1 and not amounts:
+        found += _guesses(piece, "frequency_mhz", ranges[0])
+    elif not ranges and len({amount.casefold() for amount in amounts}) == 1:
         found += _guesses(piece, "frequency_mhz", amounts[0])
     for match in _PPM.finditer(text):
         tail = text[match.end() : match.end() + 45]

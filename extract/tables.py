@@ -7,15 +7,17 @@ Bands that run across the top are turned into a listing first.
 from __future__ import annotations
 
 from collections.abc import Iterator, Sequence
-from dataclasses import dataclass
+from dataclasses import dataclass, replace
 from itertools import pairwise
 
 from extract.documents.model import Cell, Table
 from extract.entries import Column, Entry, Item, Key, Listing, Placed, Text, Value
+from extract.fold import key
 from extract.heads import Head, interpret, is_unit
 from extract.keys import read_key_table
 from extract.meaning import is_part_token, meaning
 from extract.paramrows import parameter_entries
+from extract.vocabulary import vocabulary
 
 Row = Sequence[Cell | None]
 
@@ -25,8 +27,8 @@ def read_table(table: Table) -> list[Item]:
     rows: list[Row] = [row for row in table.grid() if any(row)]
     if not rows:
         return []
-    if key := read_key_table(rows, table.title):
-        return list(key)
+    if keys := read_key_table(rows, table.title):
+        return list(keys)
     if _bands_across(rows):
         rows = [list(row) for row in zip(*rows, strict=True)]
     items: list[Item] = [Text(_titled(table), heading=True)] if table.title else []
@@ -121,7 +123,7 @@ def is_head(row: Row) -> bool:
         return False
     known = [meaning(cell.text) for cell in cells]
     roles = {each.role for each in known if each.role}
-    heads = {each.head for each in known if each.head}
+    heads = {each.head or (each.label.field if each.label else None) for each in known} - {None}
     values = sum(each.value and not is_unit(cell.text) for cell, each in zip(cells, known, strict=True))
     if len(roles) >= 2 and values <= max(1, len(cells) // 2):
         return True
@@ -166,15 +168,27 @@ def _bands_across(rows: list[Row]) -> bool:
     banded = fields[0].label is not None and fields[0].label.field in ("frequency_mhz", "load_capacitance_pf")
     others = any(each.label is not None and each.label.field == "esr_ohm" for each in fields[1:])
     values = [cell for cell in distinct(rows[0])[1:] if meaning(cell.text).value]
-    return banded and others and len(values) >= 2 and not any(meaning(cell.text).role for cell in distinct(rows[0]))
+    return banded and others and len(values) >= 2 and all(meaning(cell.text).role in (None, "band") for cell in distinct(rows[0]))
 
 
 def _read_block(block: _Block, table: Table) -> Iterator[Item]:
-    heads = [interpret(levels) for levels in _levels(block)] if block.heads else []
+    heads = _typ_beside_bounds([interpret(levels) for levels in _levels(block)]) if block.heads else []
     if heads and _is_listing(block, heads):
         yield from _listings(block, heads, table)
         return
     yield from parameter_entries(block.body, heads, block.above or block.title)
+
+
+def _typ_beside_bounds(heads: list[Head]) -> list[Head]:
+    """ "Typ" is a type beside Maker and Package, and typical beside Min or Max."""
+    if not any(head.bound in ("min", "max") or head.role in ("unit", "condition") for head in heads):
+        return heads
+    return [
+        replace(head, role="typ", bound="typ", identity=None, extra=head.levels[:-1] if len(head.levels) > 1 else ())
+        if head.bound is None and head.levels and vocabulary().bounds.get(key(head.levels[-1])) == "typ"
+        else head
+        for head in heads
+    ]
 
 
 def _levels(block: _Block) -> list[tuple[str, ...]]:
