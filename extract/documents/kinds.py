@@ -72,11 +72,13 @@ def read_document(data: bytes, name: str) -> Document:
 
 
 def _read_zip(data: bytes, suffix: str) -> Document:
+    from extract.documents.opendocument import ZIP_FAULTS
+
     try:
         with zipfile.ZipFile(io.BytesIO(data)) as archive:
             names = set(archive.namelist())
             kind = archive.read("mimetype").decode("ascii", "replace") if "mimetype" in names else ""
-    except (zipfile.BadZipFile, NotImplementedError, RuntimeError, OSError) as fault:
+    except ZIP_FAULTS as fault:
         raise DocumentError(
             "The file is damaged or cut short (its ZIP directory cannot be read). Fetch it again."
         ) from fault

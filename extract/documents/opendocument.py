@@ -7,6 +7,7 @@ from __future__ import annotations
 
 import io
 import zipfile
+import zlib
 from collections.abc import Iterator
 from dataclasses import dataclass, field
 
@@ -19,10 +20,14 @@ _TABLE = "{urn:oasis:names:tc:opendocument:xmlns:table:1.0}"
 _TEXT = "{urn:oasis:names:tc:opendocument:xmlns:text:1.0}"
 _OFFICE = "{urn:oasis:names:tc:opendocument:xmlns:office:1.0}"
 _STYLE = "{urn:oasis:names:tc:opendocument:xmlns:style:1.0}"
-DAMAGED = (
-    "The workbook is damaged or cut short. Fetch it again, or open it in a spreadsheet program and save it as XLSX."
-)
+DAMAGED = "The workbook is damaged or cut short. Fetch it again, or open it and save it as XLSX."
+
 LOCKED = "The workbook is locked with a password. Open it, save it without a password and try again."
+# What the standard library and lxml raise for an archive whose bytes are wrong somewhere.
+ZIP_FAULTS = (
+    zipfile.BadZipFile, zlib.error, etree.XMLSyntaxError, KeyError, OSError, EOFError, ValueError, RuntimeError,
+    NotImplementedError,
+)  # fmt: skip
 # Empty rows and columns are repeated to the sheet's end; what is not empty repeats a few times only.
 _MOST_REPEATS = 1000
 
@@ -46,7 +51,7 @@ def read_sheets(data: bytes) -> list[OpenSheet]:
             root = etree.fromstring(
                 archive.read("content.xml"), etree.XMLParser(huge_tree=True, resolve_entities=False)
             )
-    except (zipfile.BadZipFile, KeyError, etree.XMLSyntaxError, OSError) as fault:
+    except ZIP_FAULTS as fault:
         raise DocumentError(DAMAGED) from fault
     hidden = _hidden_styles(root)
     return [_sheet(table, hidden) for table in root.iter(f"{_TABLE}table")]

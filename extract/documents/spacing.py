@@ -13,7 +13,7 @@ from extract.model import Where
 LEAST_LINES = 3
 _GAP = re.compile(r"[ \u00a0]{2,}|\u3000+|\t+")
 _LEADER = re.compile(r"(?<=[^\s.·…_])\s?(?:\.{3,}|…{2,}|·{3,}|(?:\s\.){3,}|_{4,})\s*(?=\S)")
-_RULE = re.compile(r"\s*(?:[-=_─━=*+|│]{3,}\s*)+$")
+_RULE_SIGNS = frozenset("-=_─━*+|│")
 
 
 @dataclass(frozen=True, slots=True)
@@ -27,7 +27,8 @@ class Piece:
 
 def is_rule(text: str) -> bool:
     """Whether a line is only drawn: dashes, equals signs, the border of a box."""
-    return bool(_RULE.match(text))
+    drawn = "".join(text.split())
+    return len(drawn) >= 3 and _RULE_SIGNS.issuperset(drawn)
 
 
 def printed_width(text: str) -> int:

@@ -30,7 +30,7 @@ def read(data: bytes) -> Document:
     encoding = next((group.decode("ascii") for group in declared.groups() if group), None) if declared else None
     content, notes = decode(data, declared=encoding)
     parser = lxml_html.HTMLParser(encoding="utf-8", huge_tree=True, remove_comments=True, remove_pis=True)
-    unmarked = re.sub(r"^\s*<\?xml[^>]*\?>", "", content)
+    unmarked = re.sub(r"[\0-\x08\x0b\x0c\x0e-\x1f]", " ", re.sub(r"^\s*<\?xml[^>]*\?>", "", content))
     try:
         root = lxml_html.document_fromstring(unmarked.encode("utf-8", "replace"), parser=parser)
     except (etree.ParserError, etree.XMLSyntaxError) as fault:

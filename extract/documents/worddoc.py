@@ -13,6 +13,7 @@ from lxml import etree
 from extract.documents import marks, spacing
 from extract.documents.grid import address
 from extract.documents.model import Cell, Document, DocumentError, Line, Segment, Table
+from extract.documents.opendocument import ZIP_FAULTS
 from extract.model import Note, Where
 
 _W = "{http://schemas.openxmlformats.org/wordprocessingml/2006/main}"
@@ -35,7 +36,7 @@ def read(data: bytes) -> Document:
     try:
         with zipfile.ZipFile(io.BytesIO(data)) as archive:
             return _Reader(archive).document()
-    except (zipfile.BadZipFile, KeyError, etree.XMLSyntaxError, OSError, NotImplementedError, RuntimeError) as fault:
+    except ZIP_FAULTS as fault:
         raise DocumentError(
             "The Word document is damaged or cut short. Fetch it again, or open it in Word and save it as DOCX or PDF."
         ) from fault

@@ -5,14 +5,13 @@ from __future__ import annotations
 import datetime
 import io
 import re
-import zipfile
 from collections.abc import Callable, Iterator, Mapping, Sequence
 from typing import Any
 
 from extract.documents import numberformat, opendocument
 from extract.documents.grid import address, placed_cells
 from extract.documents.model import Cell, Document, DocumentError, Line, Segment, Table
-from extract.documents.opendocument import DAMAGED, LOCKED
+from extract.documents.opendocument import DAMAGED, LOCKED, ZIP_FAULTS
 from extract.documents.spacing import pieces
 from extract.documents.workbookparts import SheetStyles, sheet_styles
 from extract.model import Note, Where
@@ -31,7 +30,7 @@ def read(data: bytes) -> Document:
             return _document(book, data)
     except python_calamine.PasswordError as fault:
         raise DocumentError(LOCKED) from fault
-    except (python_calamine.CalamineError, zipfile.BadZipFile, OSError, ValueError) as fault:
+    except (python_calamine.CalamineError, *ZIP_FAULTS) as fault:
         raise DocumentError(LOCKED if "password" in str(fault).lower() else DAMAGED) from fault
 
 
