@@ -15,7 +15,7 @@ from compare.bench import Bench
 from compare.charts import LoadPull, Slack
 from compare.circuit_text import ppm_limit_text, ppm_limits
 from compare.drawing import as_address, slack_strip_svg
-from compare.figures import count_word, frequency_text, number, ordinal, signed, spread, with_unit
+from compare.figures import count_word, frequency_text, number, ordinal, signed, spread, with_minus, with_unit
 from compare.palette import Palette
 from compare.shown import NAMES
 from extract.model import FIELD_NAMES
@@ -60,6 +60,7 @@ FIGURES = {
     "measured_motional_capacitance_ff": Figure("Measured: C1", "fF"),
     "measured_negative_resistance_ohm": Figure("Measured: negative resistance", "Ω", 4),
     "measured_margin": Figure("Measured: margin"),
+    "measured_startup_ms": Figure("Measured: start-up time", "ms"),
 }
 # In the order of the strips; the last ones are yes or no, in words and never as strips.
 SHORT_NAMES = {
@@ -73,6 +74,7 @@ SHORT_NAMES = {
     "mode": "Mode",
     "esr_ohm": "Least ESR",
     "rating": "IC’s rating",
+    "circuit.output_resistance_kohm": "Series resistor",
 }
 FULL_NAMES = SHORT_NAMES | {
     "margin": "Margin as a bench test sees it",
@@ -116,13 +118,17 @@ def row_name(row: Row) -> str:
 
 
 def tightest_text(row: Row) -> str:
-    """`ppm in all 1.10 times`; for what cannot be told, what is missing; "" where nothing is known."""
-    tightest = row["tightest"]
-    known = "" if tightest is None else f"{SHORT_NAMES.get(tightest, tightest)} {times(row['slack'][tightest])}"
-    if row["verdict"] != "cannot tell" or not row["missing"]:
-        return known
-    lacking = f"{missing_name(row['missing'][0])} not stated"
-    return f"{lacking}; known: {known}" if known else lacking
+    """What decides the place: `ppm in all 1.10 times`, `Range` where a yes or no decides, `ESR not stated`; else ""."""
+    name = row["tightest"]
+    if row["verdict"] == "cannot tell" and row["missing"]:
+        key = row["missing"][0]
+        return f"{missing_name(key)} not {'stated' if key in FIELD_NAMES else 'known'}"
+    slack = None if name is None else row["slack"][name]
+    if row["verdict"] != "meets" and (slack is None or slack >= 1):
+        decides = [reason["about"] for reason in row["reasons"] if reason["verdict"] == row["verdict"]]
+        if decides:
+            return SHORT_NAMES.get(decides[0], str(decides[0]))
+    return "" if name is None else f"{SHORT_NAMES.get(name, name)} {times(slack)}"
 
 
 def times(value: float | None) -> str:
@@ -258,11 +264,6 @@ def _worse_end(figure: Row, bench: Bench) -> float | None:
     return max(ends, key=lambda end: end / high if end > 0 else end / low if end < 0 else 0.0)
 
 
-def _sentence(reason: Row) -> str:
-    estimated = ", ".join(NAMES.get(name, name) for name in reason.get("estimated", ()))
-    return str(reason["message"]) + (f" (estimated: {estimated})" if estimated else "")
-
-
 @dataclass(frozen=True)
 class Judged:
     """One requirement of a review, as shown: worst case against what was asked, times over, verdict, and why."""
@@ -273,6 +274,10 @@ class Judged:
     verdict: str
     why: str
 
+    @property
+    def meets(self) -> bool:
+        return self.verdict == verdict("meets")
+
 
 def judged(review: Row, bench: Bench) -> list[Judged]:
     """Verdict by requirement, one row for each reason."""
@@ -281,7 +286,9 @@ def judged(review: Row, bench: Bench) -> list[Judged]:
         about, has_slack = reason["about"], reason["about"] in review["slack"] and reason["about"] in FIGURES
         said = _said(review, about, bench) if has_slack else ""
         over = times(review["slack"][about]) if has_slack else ""
-        rows.append(Judged(FULL_NAMES.get(about, about), said, over, verdict(reason["verdict"]), _sentence(reason)))
+        rows.append(
+            Judged(FULL_NAMES.get(about, about), said, over, verdict(reason["verdict"]), with_minus(reason["message"]))
+        )
     return rows
 
 
@@ -304,15 +311,9 @@ def short_of(review: Row) -> str:
         if reason["verdict"] == review["verdict"]
     ]
     if review["verdict"] == "meets":
-        least = tightest_text({**review, "tightest": tightest(review)})
+        least = tightest_text(review)
         return f"Tightest: {least}." if least else ""
     return f"{'Short' if review['verdict'] == 'falls short' else 'Open'}: {'; '.join(dict.fromkeys(about))}."
-
-
-def tightest(review: Row) -> str | None:
-    """The requirement with the least slack; None where none is known."""
-    known = {name: slack for name, slack in review["slack"].items() if slack is not None}
-    return min(known, key=lambda name: known[name]) if known else None
 
 
 @dataclass(frozen=True)
@@ -342,7 +343,7 @@ def _number(figure: Row, shown: Figure) -> Number:
 
     basis = figure["basis"] or ""
     said = "∴ estimated" if basis == "estimated" else basis
-    return Number(shown.name, end("low"), end("mid"), end("high"), shown.unit, said, figure["how"] or "")
+    return Number(shown.name, end("low"), end("mid"), end("high"), shown.unit, said, with_minus(figure["how"] or ""))
 
 
 def load_pull(review: Row, bench: Bench, rated_pf: float | None, *, series: bool) -> LoadPull | None:
@@ -385,37 +386,18 @@ def _room(total: Row, shift: Row, bench: Bench) -> tuple[float | None, float | N
 
 def advice_lines(review: Row) -> list[str]:
     """What would help, best first: E24 pairs with what they do in the worst case, or a series resistor."""
-    said = []
-    for advice in review["advice"]:
-        if isinstance(advice, str):
-            said.append(advice)
-        elif "values_pf" in advice:
-            first, second = advice["values_pf"]
-            error, margin = (_worst(advice.get(key)) for key in ("load_error_ppm", "margin"))
-            said.append(
-                f"With **{number(first)} pF from A** and **{number(second)} pF from B** to ground: "
-                f"load error at most {with_unit(error, 'ppm')}, margin {margin}."
-            )
-        else:
-            said.append(_other_advice(advice))
-    return said
+    return [*map(_advice, review.get("advice", ())), *map(with_minus, review.get("advice_messages", ()))]
 
 
-def _worst(value: Any) -> str:
-    if isinstance(value, Mapping):
-        ends = [abs(end) for end in (value["low"], value["high"]) if end is not None]
-        return number(max(ends)) if ends else "not known"
-    return number(value)
-
-
-def _other_advice(advice: Row) -> str:
-    words = [
-        f"{key.replace('_', ' ')} {number(value) if isinstance(value, float) else value}"
-        for key, value in advice.items()
-        if key != "what"
-    ]
-    what = str(advice["what"])
-    return f"{what[0].upper()}{what[1:]}: {', '.join(words)}."
+def _advice(advice: Row) -> str:
+    margin = number(advice["margin"])
+    if "values_pf" in advice:
+        first, second = (number(value) for value in advice["values_pf"])
+        error = advice["load_error_ppm"]
+        off = "not known" if error is None else with_unit(number(abs(error)), "ppm")
+        return f"**{first} pF** from A and **{second} pF** from B to ground: load error at most {off}, margin {margin}."
+    ohm, drive = number(advice["series_resistor_ohm"]), number(advice["drive_level_uw"])
+    return f"A series resistor of **{ohm} Ω**: drive at most {drive} µW, margin {margin}."
 
 
 def note_lines(result: Mapping[str, Any]) -> list[str]:
@@ -430,12 +412,40 @@ CONTRIBUTORS = {
 }
 
 
-def contributor_lines(review: Row, key: str) -> list[str]:
-    """What adds to the worst case of one number, greatest first."""
-    return [str(one) for one in (review["contributors"].get(key) or ())]
+@dataclass(frozen=True)
+class Share:
+    """What one input adds to a worst case, and how large that is beside the greatest (0 to 1)."""
+
+    name: str
+    adds: str
+    share: float
+
+
+def shares(review: Row, key: str, most: int = 6) -> list[Share]:
+    """What adds to the worst case of one number, greatest first, without those below a fiftieth of the greatest."""
+    rows = review.get("contributors", {}).get(key) or ()
+    greatest = max((abs(row["adds"]) for row in rows), default=0.0)
+    unit = FIGURES[key].unit
+    return [
+        Share(_input_name(row["input"]), with_unit(number(abs(row["adds"])), unit), abs(row["adds"]) / greatest)
+        for row in rows[:most]
+        if greatest and abs(row["adds"]) >= greatest / 50
+    ]
+
+
+def _input_name(key: str) -> str:
+    return missing_name(key) if key in FIELD_NAMES or "." in key else key[0].upper() + key[1:]
+
+
+def _sentence(message: str) -> str:
+    text = with_minus(message).rstrip(".")
+    return f"{text[:1].upper()}{text[1:]}."
 
 
 def open_lines(review: Row) -> list[str]:
     """What is not settled: readings that wait for a look, and what is missing."""
+    remarks = [_sentence(remark["message"]) for remark in review.get("remarks", ())]
+    if "measured_message" in review:
+        remarks.append(_sentence(review["measured_message"]))
     looks = [f"☞ {NAMES.get(name, name)}: the reading waits for a look on Sheets." for name in review["to_check"]]
-    return looks + [f"◇ {missing_name(key)}: not known." for key in review["missing"]]
+    return remarks + looks + [f"◇ {missing_name(key)}: not known." for key in review["missing"]]

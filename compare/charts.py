@@ -27,7 +27,7 @@ Channel = Callable[[str], Any]
 def dressed(chart: Any, palette: Palette, font: str = FONT) -> Any:
     """Put the page's colours, type and axes on a chart; the page shows it with `theme=None`."""
     return (
-        chart.configure(background=palette.page, font=font, padding={"left": 2, "right": 2, "top": 4, "bottom": 2})
+        chart.configure(background=palette.page, font=font, padding=4, autosize="pad")
         .configure_view(stroke=None)
         .configure_axis(
             labelColor=palette.soft,

@@ -4,6 +4,7 @@ from __future__ import annotations
 
 import hashlib
 import io
+from dataclasses import dataclass
 from pathlib import Path
 from typing import TYPE_CHECKING
 
@@ -18,7 +19,15 @@ WIDEST = 1700
 BOX_COLOUR, PAD = (91, 63, 143), 3.0
 
 
-def page_picture(data: bytes, sheet: SpecSheet, where: Where) -> Image | None:
+@dataclass(frozen=True)
+class Pictured:
+    """A page with its box drawn, and the part round the box, to be read without a glass (None: no box)."""
+
+    page: Image
+    close_up: Image | None
+
+
+def page_picture(data: bytes, sheet: SpecSheet, where: Where) -> Pictured | None:
     """The page that `where` names with its box drawn; None where the kind of file has no picture.
 
     A box counts in points of a PDF page and pixels of a picture, from the top left as a viewer shows the page.
@@ -32,9 +41,21 @@ def page_picture(data: bytes, sheet: SpecSheet, where: Where) -> Image | None:
     if page.width > WIDEST:
         ratio = WIDEST / page.width
         page, scale = page.resize((WIDEST, round(page.height * ratio))), scale * ratio
-    if where.box is not None:
-        _draw_box(page, [end * scale for end in where.box], scale)
-    return page
+    if where.box is None:
+        return Pictured(page, None)
+    box = [end * scale for end in where.box]
+    _draw_box(page, box, scale)
+    return Pictured(page, _close_up(page, box))
+
+
+def _close_up(page: Image, box: list[float]) -> Image:
+    """Half a page wide, so that label, value and unit of a table's row stand in it."""
+    x0, top, x1, bottom = box
+    width = min(max(0.52 * page.width, 1.2 * (x1 - x0)), page.width)
+    height = min(max(0.3 * width, 1.6 * (bottom - top)), page.height)
+    left = min(max((x0 + x1 - width) / 2, 0), page.width - width)
+    upper = min(max((top + bottom - height) / 2, 0), page.height - height)
+    return page.crop((round(left), round(upper), round(left + width), round(upper + height)))
 
 
 def sheet_bytes(sheet: SpecSheet) -> bytes | None:

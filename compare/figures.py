@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 import math
+import re
 
 MINUS, UP_TO = "−", "…"
 
@@ -51,6 +52,14 @@ def signed(value: float | None, digits: int = 3) -> str:
     """`+18.9`, `−0.4`, `0`: for shifts and ppm."""
     text = number(value, digits)
     return f"+{text}" if value is not None and value > 0 and text != "0" else text
+
+
+HYPHEN_AS_MINUS = re.compile(r"(?<![\w.)-])-(?=[\d.∞])")
+
+
+def with_minus(text: str) -> str:
+    """A sentence with − where a hyphen stands for it, as before `-40`; part numbers and words keep theirs."""
+    return HYPHEN_AS_MINUS.sub(MINUS, text)
 
 
 COUNTS = ("None", "One", "Two", "Three", "Four", "Five", "Six", "Seven", "Eight", "Nine", "Ten", "Eleven", "Twelve")

@@ -26,7 +26,9 @@ def main() -> None:
     current = st.navigation(list(pages.values()), position="top")
     if (bench := session.desk().bench) is not None:
         st.html(pieces.terms_html(circuit_text.terms(bench)))
+    session.told_of_reading()
     current.run()
+    session.read_next()
 
 
 main()

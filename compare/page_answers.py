@@ -135,16 +135,24 @@ def why(row: dict[str, Any], bench: Bench) -> None:
     if said := answers.chosen_text(row):
         st.markdown(f":gray[{pieces.plain(said)}]")
     slack_chart(review, bench)
-    lines = (
-        f":small[{one.verdict[0]} **{pieces.plain(one.requirement)}**: {pieces.plain(one.why)}]"
-        for one in answers.judged(review, bench)
-    )
-    st.markdown("  \n".join(lines))
+    reasons_of(review, bench)
     load_chart(review, bench)
     for line in answers.advice_lines(review)[:1]:
         st.markdown(line)
     if st.button("Review this part", key="to_review", type="primary", shortcut="V"):
         session.go("review")
+
+
+def reasons_of(review: dict[str, Any], bench: Bench) -> None:
+    """The reasons that decide in full; those that meet a step away."""
+    rows = answers.judged(review, bench)
+    deciding = [one for one in rows if not one.meets]
+    for one in deciding:
+        st.markdown(f"{one.verdict[0]} **{pieces.plain(one.requirement)}**: {pieces.plain(one.why)}")
+    met = [one for one in rows if one.meets]
+    with st.expander(f"Why the other {len(met)} meet" if deciding else f"Why all {len(met)} meet"):
+        for one in met:
+            st.markdown(f":small[▲ **{pieces.plain(one.requirement)}**: {pieces.plain(one.why)}]")
 
 
 def slack_chart(review: dict[str, Any], bench: Bench) -> None:
@@ -225,14 +233,13 @@ def to_do(review: dict[str, Any]) -> None:
         for question in questions:
             st.markdown(f"- {pieces.plain(question)}")
     if lines := answers.advice_lines(review):
-        st.markdown("### What would help")
+        st.markdown("### Load capacitors and what else would help")
         for line in lines:
             st.markdown(f"- {line}")
     for key, name in answers.CONTRIBUTORS.items():
-        if lines := answers.contributor_lines(review, key):
+        if shares := answers.shares(review, key):
             st.markdown(f"### {name}")
-            for line in lines:
-                st.markdown(f"- {pieces.plain(line)}")
+            st.html(pieces.shares_html(shares))
     st.markdown("### Before it is signed")
     for line in answers.open_lines(review):
         st.markdown(f"- {pieces.plain(line)}")

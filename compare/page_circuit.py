@@ -9,12 +9,13 @@ from compare import page_session as session
 from compare.bench import uses
 from compare.desk import Desk, carried_sentence, field_of, orchard_example
 
-# A pressed figure of the drawing puts the cursor into its field.
+# The drawing fits its column, and a pressed figure puts the cursor into its field.
 PRESS = """export default function({data, parentElement}) {
   const place = parentElement.querySelector("div"); place.innerHTML = data;
+  const svg = place.firstElementChild;
+  svg.removeAttribute("height"); svg.style.cssText = "width:100%;max-width:800px;display:block";
   place.querySelectorAll("[data-field]").forEach(figure => { figure.onclick = () =>
     document.querySelector(".st-key-field_" + figure.dataset.field.replaceAll(".", "_") + " input")?.focus(); }); }"""
-FIT = "div{width:100%}svg{width:100%;max-width:800px;height:auto;display:block}"
 
 
 def circuit_view() -> None:
@@ -37,7 +38,7 @@ def summed_up(desk: Desk) -> bool:
         st.markdown(pieces.plain(desk.faults.get("", "")) or circuit_text.SET_IT)
         return False
     st.markdown(f":gray[{circuit_text.READ_IT}]")
-    show = st.components.v2.component("quartzfolio_circuit", html="<div></div>", js=PRESS, css=FIT)
+    show = st.components.v2.component("quartzfolio_circuit", html="<div></div>", js=PRESS)
     svg = drawing.circuit_svg(circuit_text.circuit_figures(bench), session.palette())
     show(data=svg, key="drawing", width="stretch")
     st.markdown(circuit_text.sum_sentence(bench))

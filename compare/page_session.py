@@ -33,7 +33,7 @@ def start() -> None:
     """Fill the state once, from what the command line gave."""
     if "opened" in st.session_state:
         return
-    st.session_state.update(opened=[], inbox=0, chosen=None, said=[])
+    st.session_state.update(opened=[], pending=[], asked_for=0, inbox=0, chosen=None, said=[])
     set_desk(Desk())
     bench, names = read_script_arguments(sys.argv[1:])
     if bench is not None:
@@ -67,14 +67,42 @@ def open_bench(text: str, name: str) -> None:
 
 
 def open_sheets(files: Sequence[tuple[str, bytes]]) -> None:
-    """Read files one after the other; each finished one stays, whatever the next one does."""
-    telling = st.empty()
-    for number, (name, data) in enumerate(files, start=1):
-        telling.markdown(f"Reading {number} of {len(files)}: {pieces.plain(name)}")
-        sheet = sheet_of(hashlib.sha256(data).hexdigest(), name, data)
-        if all((one.sheet.file, one.sheet.sha256) != (sheet.file, sheet.sha256) for one in st.session_state.opened):
-            st.session_state.opened = [*st.session_state.opened, Opened(sheet, data)]
-    telling.empty()
+    """Put files in the queue; `read_next` reads them one by one, and each finished one can be used at once."""
+    state = st.session_state
+    state.pending = [*state.pending, *files]
+    state.asked_for = state.asked_for + len(files) if len(state.pending) > len(files) else len(files)
+
+
+def told_of_reading() -> None:
+    """Which sheet is being read, and the button that stops it."""
+    state = st.session_state
+    if not state.pending:
+        return
+    name = state.pending[0][0]
+    with st.container(horizontal=True, vertical_alignment="center", gap="small"):
+        at = state.asked_for - len(state.pending) + 1
+        st.markdown(f"Reading {at} of {state.asked_for}: {pieces.plain(name)} …", width="content")
+        st.button("Stop", key="stop_reading", on_click=stop_reading)
+
+
+def stop_reading() -> None:
+    state = st.session_state
+    read = state.asked_for - len(state.pending)
+    state.said = [f"Stopped. {read} of {state.asked_for} were read; open the rest again when you want them."]
+    state.pending = []
+
+
+def read_next() -> None:
+    """Read one sheet of the queue and draw again. It comes last in a run, so that the page stands meanwhile."""
+    state = st.session_state
+    if not state.pending:
+        return
+    name, data = state.pending[0]
+    sheet = sheet_of(hashlib.sha256(data).hexdigest(), name, data)
+    if all((one.sheet.file, one.sheet.sha256) != (sheet.file, sheet.sha256) for one in state.opened):
+        state.opened = [*state.opened, Opened(sheet, data)]
+    state.pending = state.pending[1:]
+    st.rerun()
 
 
 def sheets() -> list[SpecSheet]:
@@ -131,6 +159,7 @@ def guarded(what: str, work: Callable[[], dict[str, Any]]) -> dict[str, Any] | N
     try:
         return work()
     except Exception:
+        traceback.print_exc()
         st.error(f"Something went wrong while {what}. Your work is kept.")
         st.button("Try again", key="again")
         st.download_button("Save what happened", traceback.format_exc(), "what_happened.txt", key="happened")

@@ -2,6 +2,8 @@
 
 from __future__ import annotations
 
+from typing import Any
+
 import streamlit as st
 
 from compare import page_session as session
@@ -69,13 +71,16 @@ def sheet_list() -> Opened | None:
     if not every:
         return None
     st.markdown(f"### {shown.heading(session.sheets())}")
+    identities = [(one.sheet.file, one.sheet.sha256) for one in every]
+    before = st.session_state.get("sheet")
+    start = identities.index(before) if before in identities else 0
     picked = st.dataframe(
         shown.sheets_frame(session.sheets()),
         hide_index=True,
-        height=fitting(len(every), 35, 420),
+        height=fitting(len(every), 12),
         on_select="rerun",
         selection_mode="single-row",
-        selection_default=session.first_row(0),
+        selection_default=session.first_row(start),
         key=f"open_{len(every)}",
         alt="Sheets that are open, with their outcome",
         column_config={
@@ -85,17 +90,18 @@ def sheet_list() -> Opened | None:
         },
     )
     chosen: Opened = every[session.selected_row(picked, len(every))]
-    for said in shown.unread(session.sheets()):
-        st.markdown(pieces.plain(said))
+    st.session_state.sheet = (chosen.sheet.file, chosen.sheet.sha256)
+    for said in shown.unread([one.sheet for one in every if one is not chosen]):
+        st.markdown(f":small[{pieces.plain(said)}]")
     if st.button("Close this sheet", key="close_sheet"):
         st.session_state.opened = [one for one in every if one is not chosen]
         st.rerun()
     return chosen
 
 
-def fitting(rows: int, each: int, most: int) -> int:
-    """Height in pixels at which a grid shows all its rows, up to `most`."""
-    return min(40 + each * (rows + 1) - each // 2, most)
+def fitting(rows: int, most: int) -> Any:
+    """As high as its rows; a grid of more than `most` scrolls."""
+    return "content" if rows <= most else 36 * most
 
 
 def part_readings(one: Opened) -> Reading | None:
@@ -125,7 +131,7 @@ def part_readings(one: Opened) -> Reading | None:
     picked = st.dataframe(
         shown.readings_frame(part),
         hide_index=True,
-        height=fitting(len(part.readings), 32, 620),
+        height=fitting(len(part.readings), 20),
         row_height=32,
         on_select="rerun",
         selection_mode="single-row",
@@ -142,8 +148,8 @@ def part_readings(one: Opened) -> Reading | None:
         },
     )
     st.markdown(f":gray[:small[{shown.HOW_LEGEND}]]")
-    for said in (*shown.attributes_lines(part), *shown.notes_of(sheet)):
-        st.markdown(f":small[{pieces.plain(said)}]")
+    further = (*shown.attributes_lines(part), *shown.notes_of(sheet))
+    st.markdown("  \n".join(f":small[{pieces.plain(said)}]" for said in further))
     return shown.in_order(part)[session.selected_row(picked, len(part.readings))]
 
 
@@ -156,6 +162,9 @@ def stands(one: Opened, reading: Reading) -> None:
         st.html(pieces.look_html(told.look))
     st.markdown(f":gray[:small[Printed, {pieces.plain(told.stands)}:]]")
     st.html(pieces.printed_html(told.printed))
-    page = session.picture(one.sheet.sha256 or one.sheet.file, reading.where.model_dump_json(), one, reading)
-    if page is not None:
-        st.image(page, width="stretch", alt=f"{told.stands} of {one.sheet.file}, a box round the reading")
+    pictured = session.picture(one.sheet.sha256 or one.sheet.file, reading.where.model_dump_json(), one, reading)
+    if pictured is None:
+        return
+    if pictured.close_up is not None:
+        st.image(pictured.close_up, width="stretch", alt="The reading as it is printed, a box round it")
+    st.image(pictured.page, width="stretch", alt=f"{told.stands} of {one.sheet.file}, a box round the reading")

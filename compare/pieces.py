@@ -8,7 +8,7 @@ from dataclasses import fields
 from html import escape
 from pathlib import Path
 
-from compare.answers import Judged, Number
+from compare.answers import Judged, Number, Share
 from compare.palette import Palette
 
 MARKDOWN = re.compile(r"([\\`*_{}\[\]()#+!|<>$~:^-])")
@@ -57,6 +57,16 @@ def _judged_row(row: Judged) -> str:
     look = "short" if row.verdict.startswith("▼") else "v"
     cells = (("", row.requirement), ("n", row.worst), ("n", row.times_over), (look, row.verdict), ("soft", row.why))
     return "<tr>" + "".join(f'<td class="{kind}">{escape(text)}</td>' for kind, text in cells) + "</tr>"
+
+
+def shares_html(shares: Sequence[Share]) -> str:
+    """What adds to a worst case: name, bar and figure."""
+    rows = (
+        f'<tr><td>{escape(one.name)}</td><td><div class="qf-bar" style="width:{100 * one.share:.0f}%"></div></td>'
+        f'<td class="n">{escape(one.adds)}</td></tr>'
+        for one in shares
+    )
+    return f'<table class="qf-table qf-shares"><tbody>{"".join(rows)}</tbody></table>'
 
 
 def printed_html(text: str) -> str:

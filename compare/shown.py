@@ -56,8 +56,14 @@ def waiting(sheet: SpecSheet) -> int:
 
 def sheets_frame(sheets: Sequence[SpecSheet]) -> pd.DataFrame:
     """One row a sheet, in the order opened: file, what it is, and its outcome."""
-    rows = [(sheet.file.rsplit("/", 1)[-1], _outcome(sheet), _what(sheet)) for sheet in sheets]
+    rows = [(file_name(sheet), _outcome(sheet), _what(sheet)) for sheet in sheets]
     return pd.DataFrame(rows, columns=["Sheet", "Outcome", "What"])
+
+
+def file_name(sheet: SpecSheet, longest: int = 25) -> str:
+    """The file's name without its folders; a long one loses its middle, for its end tells the kind."""
+    name = sheet.file.rsplit("/", 1)[-1]
+    return name if len(name) <= longest else f"{name[: longest - 10]}…{name[-9:]}"
 
 
 def _what(sheet: SpecSheet) -> str:
