@@ -6,6 +6,7 @@ import re
 from collections.abc import Callable, Sequence
 from dataclasses import dataclass
 
+from extract.documents.bands import bands_of, goes_on, stacked
 from extract.documents.cells import table_of
 from extract.documents.columns import columns_of, overlap, placed, span_of
 from extract.documents.model import Line, Segment, Table
@@ -220,32 +221,80 @@ def _text_blocks(items: Sequence[Item], place: Placer) -> list[Table | Line]:
     if not items:
         return []
     size = _usual_size(items)
-    rows = _rows(items)
+    bands = _bands(items)
     blocks: list[Table | Line] = []
     start = 0
-    while start < len(rows):
-        end = _table_end(rows, start, size)
+    while start < len(bands):
+        end = _table_end(bands, start, size)
         if end > start:
-            blocks.append(_loose_table(rows[start:end], place))
+            blocks.append(_loose_table(bands[start:end], place))
             start = end
         else:
-            blocks.append(_line(rows[start], size, place))
+            blocks += [_line(row, size, place) for row in bands[start].rows]
             start += 1
     return blocks
 
 
-def _rows_joined(rows: Sequence[Sequence[Item]]) -> list[list[list[Item]]]:
-    """Rows of a table, each of one or more text lines: what goes on below a row stands nearer to it."""
-    groups: list[list[list[Item]]] = []
-    levels = [sum(item.level for item in row) / len(row) for row in rows]
-    full = [level for level, row in zip(levels, rows, strict=True) if len(row) > 1]
-    pitch = min((below - above for above, below in zip(full, full[1:], strict=False)), default=0.0)
-    for index, row in enumerate(rows):
-        if index and len(row) == 1 and levels[index] - levels[index - 1] < 0.75 * pitch:
-            groups[-1].append(list(row))
+@dataclass(frozen=True, slots=True)
+class _Band:
+    """Rows of items that overlap in height: one row of a table, or one line of text."""
+
+    rows: tuple[tuple[Item, ...], ...]
+
+    @property
+    def items(self) -> list[Item]:
+        return [item for row in self.rows for item in row]
+
+    @property
+    def segments(self) -> list[list[Word]]:
+        return stacked([item.words for item in self.items])
+
+    @property
+    def top(self) -> float:
+        return min(item.box[1] for item in self.items)
+
+    @property
+    def bottom(self) -> float:
+        return max(item.box[3] for item in self.items)
+
+    @property
+    def size(self) -> float:
+        return max(item.size for item in self.items)
+
+    @property
+    def level(self) -> float:
+        return sum(item.level for item in self.items) / len(self.items)
+
+
+def _bands(items: Sequence[Item]) -> list[_Band]:
+    rows = _rows(items)
+    row_of = {id(word): row for row in rows for item in row for word in item.words}
+    bands = bands_of([[word for item in row for word in item.words] for row in rows])
+    return [_Band(tuple(tuple(row_of[id(line[0])]) for line in band)) for band in bands]
+
+
+def _bands_joined(bands: Sequence[_Band]) -> list[list[_Band]]:
+    """Rows of a table, each of one or more bands: what goes on below a row stands nearer to it than the next row."""
+    full = [band for band in bands if len(band.segments) > 1]
+    pitch = min((below.level - above.level for above, below in zip(full, full[1:], strict=False)), default=0.0)
+    gaps = sorted(below.top - above.bottom for above, below in zip(bands, bands[1:], strict=False))
+    usual = gaps[len(gaps) // 2] if gaps else 0.0
+    groups: list[list[_Band]] = []
+    for band in bands:
+        before = groups[-1][-1] if groups else None
+        if before is not None and _continues(before, band, pitch, usual):
+            groups[-1].append(band)
         else:
-            groups.append([list(row)])
+            groups.append([band])
     return groups
+
+
+def _continues(before: _Band, band: _Band, pitch: float, usual: float) -> bool:
+    if len(band.segments) == 1 and band.level - before.level < 0.75 * pitch:
+        return True
+    near = band.top - before.bottom < 0.6 * usual
+    fewer = len(band.segments) < len(before.segments)
+    return near and (fewer or goes_on(band.segments[0][0].text))
 
 
 def _rows(items: Sequence[Item]) -> list[list[Item]]:
@@ -279,52 +328,43 @@ def _line(row: Sequence[Item], size: float, place: Placer) -> Line:
     return Line(segments, place(union(item.box for item in row)), heading)
 
 
-def _table_end(rows: Sequence[Sequence[Item]], start: int, size: float) -> int:
-    """Index behind the last row of a table that begins at this row; the row's own index where none begins."""
-    if len(rows[start]) < 2:
+def _table_end(bands: Sequence[_Band], start: int, size: float) -> int:
+    """Index behind the last band of a table that begins at this one; its own index where none begins."""
+    if len(bands[start].segments) < 2:
         return start
     end, several = start, 0
     last_full = start
-    while end < len(rows):
-        if end > start and rows[end][0].box[1] - _bottom(rows[end - 1]) > 2.2 * size:
+    while end < len(bands):
+        if end > start and bands[end].top - bands[end - 1].bottom > 2.2 * size:
             break
-        if len(rows[end]) >= 2:
-            if _has_other_size(rows[end], rows[start]) and several > 1:
+        if len(bands[end].segments) >= 2:
+            if not 0.7 < bands[end].size / bands[start].size < 1.4 and several > 1:
                 break
             several += 1
             last_full = end + 1
-        elif end - last_full >= 2 or _is_heading(rows[end], size):
+        elif end - last_full >= 2 or _is_heading(bands[end], size):
             break
         end += 1
-    end = _longest_in_columns(rows, start, last_full)
-    if end > start and end < len(rows) and len(rows[end]) == 1 and len(_rows_joined(rows[start : end + 1])[-1]) > 1:
-        end += 1
+    end = _longest_in_columns(bands, start, last_full)
+    if start < end < len(bands) and len(bands[end].segments) == 1:
+        end += len(_bands_joined(bands[start : end + 1])[-1]) > 1
     return end
 
 
-def _bottom(row: Sequence[Item]) -> float:
-    return max(item.box[3] for item in row)
+def _is_heading(band: _Band, size: float) -> bool:
+    return all(word.bold for item in band.items for word in item.words) or band.size > 1.15 * size
 
 
-def _has_other_size(row: Sequence[Item], first: Sequence[Item]) -> bool:
-    one, other = max(item.size for item in row), max(item.size for item in first)
-    return not 0.7 < one / other < 1.4
-
-
-def _is_heading(row: Sequence[Item], size: float) -> bool:
-    return all(word.bold for item in row for word in item.words) or max(item.size for item in row) > 1.15 * size
-
-
-def _longest_in_columns(rows: Sequence[Sequence[Item]], start: int, end: int) -> int:
-    """Index behind the most rows from the start that stand in columns; the start where that is fewer than three."""
+def _longest_in_columns(bands: Sequence[_Band], start: int, end: int) -> int:
+    """Index behind the most bands from the start that stand in columns; the start where that is fewer than three."""
     while end - start >= 3:
-        lines = [[list(item.words) for item in row] for row in rows[start:end]]
+        lines = [band.segments for band in bands[start:end]]
         full = [line for line in lines if len(line) > 1]
         columns = columns_of(lines)
         if len(full) >= 3 and len(columns) > 1 and _fits(full, columns):
             return end
         end -= 1
-        while end > start and len(rows[end - 1]) < 2:
+        while end > start and len(bands[end - 1].segments) < 2:
             end -= 1
     return start
 
@@ -336,16 +376,16 @@ def _fits(lines: Sequence[Sequence[list[Word]]], columns: Sequence[tuple[float, 
     return good >= 0.8 * len(lines) and sum(begins) >= 0.5 * len(lines)
 
 
-def _loose_table(rows: Sequence[Sequence[Item]], place: Placer) -> Table:
-    left = min(item.box[0] for row in rows for item in row)
-    right = max(item.box[2] for row in rows for item in row)
-    groups = _rows_joined(rows)
-    tops = [min(item.box[1] for row in group for item in row) for group in groups]
-    bottoms = [max(item.box[3] for row in group for item in row) for group in groups]
+def _loose_table(bands: Sequence[_Band], place: Placer) -> Table:
+    left = min(item.box[0] for band in bands for item in band.items)
+    right = max(item.box[2] for band in bands for item in band.items)
+    groups = _bands_joined(bands)
+    tops = [group[0].top for group in groups]
+    bottoms = [group[-1].bottom for group in groups]
     borders = [tops[0], *[(bottom + top) / 2 for bottom, top in zip(bottoms, tops[1:], strict=False)], bottoms[-1]]
     pieces = []
     for index, group in enumerate(groups):
         box = (left, borders[index], right, borders[index + 1])
-        words = tuple(word for row in group for item in row for word in item.words)
+        words = tuple(word for band in group for item in band.items for word in item.words)
         pieces.append(Piece(GridCell(index, 0, 1, 1, box), words))
     return table_of(pieces, place, ruled=False)

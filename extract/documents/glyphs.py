@@ -9,10 +9,13 @@ from dataclasses import dataclass, replace
 
 from extract.documents import marks
 from extract.documents.symbols import translated
-from extract.documents.words import Box, Word, is_cjk, turned, turned_back
+from extract.documents.words import Box, Ruling, Word, is_cjk, turned, turned_back
 
 # Characters of a lowered or raised mark: "nom", "*1)", "stg", "OPR"; longer ones are words in small type.
 LONGEST_MARK = 6
+# Points: a longer line underlines words, not one sign.
+LONGEST_UNDERLINE = 14.0
+UNDERLINED = {"<": "≤", ">": "≥"}
 
 
 @dataclass(frozen=True, slots=True)
@@ -49,6 +52,25 @@ class _Run:
         self.x0, self.x1 = min(self.x0, other.x0), max(self.x1, other.x1)
         self.top, self.bottom = min(self.top, other.top), max(self.bottom, other.bottom)
         self.glyphs += other.glyphs
+
+
+def with_underlined_signs(glyphs: Sequence[Glyph], rulings: Sequence[Ruling]) -> list[Glyph]:
+    """Glyphs with < and > that have a short line drawn under them as ≤ and ≥."""
+    short = [ruling for ruling in rulings if ruling.horizontal and ruling.x1 - ruling.x0 < LONGEST_UNDERLINE]
+    if not short:
+        return list(glyphs)
+    return [
+        replace(glyph, text=UNDERLINED[glyph.text])
+        if glyph.text in UNDERLINED and any(_is_under(ruling, glyph) for ruling in short)
+        else glyph
+        for glyph in glyphs
+    ]
+
+
+def _is_under(ruling: Ruling, glyph: Glyph) -> bool:
+    x0, _, x1, _ = glyph.box
+    shared = min(x1, ruling.x1) - max(x0, ruling.x0)
+    return shared > 0.6 * (x1 - x0) and -0.1 * glyph.size < ruling.top - glyph.base < 0.3 * glyph.size
 
 
 def words_of(glyphs: Sequence[Glyph], width: float, height: float) -> list[Word]:

@@ -10,7 +10,7 @@ from collections.abc import Callable, Sequence
 from dataclasses import dataclass, field
 from typing import Any
 
-from extract.documents.glyphs import Glyph, words_of
+from extract.documents.glyphs import Glyph, with_underlined_signs, words_of
 from extract.documents.layout import arrange
 from extract.documents.model import Document, DocumentError, Line, Segment, Table
 from extract.documents.pdf_page import Frame, pdfium_frame, pdfium_glyphs, plumbed
@@ -141,7 +141,7 @@ def _read_text(page: Any, slow: _Plumber, number: int, frame: Frame, *, printed:
                 where=Where(page=number),
             )
         )
-    straight = [glyph for glyph in glyphs if glyph.angle in (0, 90, 180, 270)]
+    straight = with_underlined_signs([glyph for glyph in glyphs if glyph.angle in (0, 90, 180, 270)], rulings)
     place = _placer(number)
     result.blocks += arrange(words_of(straight, *frame.size), rulings, place, width=frame.size[0], height=frame.size[1])
     result.blocks += _slanted_lines([glyph for glyph in glyphs if glyph.angle % 90], place)

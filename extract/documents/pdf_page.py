@@ -17,6 +17,8 @@ from typing import Any
 from extract.documents.glyphs import Glyph
 from extract.documents.words import Box, Ruling, union
 
+# Points: fills this near to one another show no line between them.
+ABUTTING = 0.6
 RawBox = tuple[float, float, float, float]
 
 
@@ -106,14 +108,40 @@ def _visible_edges(page: Any, width: float, height: float) -> list[dict[str, Any
     from pdfplumber.utils.geometry import curve_to_edges, line_to_edge, rect_to_edges
 
     edges = [line_to_edge(line) for line in page.lines]
+    fills = []
     for rect in page.rects:
-        fills_page = rect["width"] > 0.97 * width and rect["height"] > 0.9 * height
-        if not fills_page and (rect.get("stroke") or _is_coloured(rect)):
+        if rect["width"] > 0.97 * width and rect["height"] > 0.9 * height:
+            continue
+        if rect.get("stroke"):
             edges += rect_to_edges(rect)
+        elif _is_coloured(rect):
+            fills.append(rect)
+    for fill in _abutting_joined(fills):
+        edges += rect_to_edges(fill)
     for curve in page.curves:
         if curve.get("stroke") or _is_coloured(curve):
             edges += [edge for edge in curve_to_edges(curve) if edge.get("orientation") in ("h", "v")]
     return [edge for edge in edges if edge.get("orientation") in ("h", "v")]
+
+
+def _abutting_joined(fills: Iterable[dict[str, Any]]) -> list[dict[str, Any]]:
+    """Fills of one colour that stand edge to edge in a row as one: no line shows between them (striped tables)."""
+    joined: list[dict[str, Any]] = []
+    for fill in sorted(
+        fills, key=lambda rect: (str(rect["non_stroking_color"]), round(rect["top"]), round(rect["bottom"]), rect["x0"])
+    ):
+        last = joined[-1] if joined else None
+        if (
+            last is not None
+            and last["non_stroking_color"] == fill["non_stroking_color"]
+            and abs(last["top"] - fill["top"]) < ABUTTING
+            and abs(last["bottom"] - fill["bottom"]) < ABUTTING
+            and abs(last["x1"] - fill["x0"]) < ABUTTING
+        ):
+            last.update(x1=fill["x1"], width=fill["x1"] - last["x0"])
+        else:
+            joined.append(dict(fill))
+    return joined
 
 
 def _is_coloured(shape: dict[str, Any]) -> bool:

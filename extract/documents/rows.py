@@ -7,9 +7,12 @@ from bisect import bisect_left
 from collections.abc import Sequence
 from dataclasses import dataclass, replace
 
+from extract.documents.bands import bands_of, bottom_of, goes_on, top_of
 from extract.documents.piece import Piece
 from extract.documents.words import Word, in_lines, joined
 
+# A table with more rows between its lines has a line for each.
+FEW_ROWS = 3
 _VALUE = re.compile(r"^[\s<>≤≥≦≧~±+\-−–(\[]*\d|^[-–—−]+$")
 
 
@@ -20,8 +23,12 @@ def rows_parted(pieces: Sequence[Piece]) -> list[Piece]:
     for row in range(count - 1, -1, -1):
         own = [piece for piece in result if piece.cell.row == row and piece.cell.row_span == 1]
         levels = _levels(own)
+        borders = [] if levels else _row_borders(own, strict=count > FEW_ROWS)
+        levels = levels if levels or borders else _fresh_levels(own)
         if len(levels) > 1:
             result = _row_parted(result, own, row, levels)
+        elif borders:
+            result = _cut(result, own, row, borders)
     return result
 
 
@@ -33,7 +40,7 @@ def _levels(own: Sequence[Piece]) -> list[float]:
         levels = [_level(line) for line in tallest.lines]
         if sum(_stands_on(piece, levels) for piece in valued) >= 2:
             return _with_label_lines(levels, own)
-    return _fresh_levels(own)
+    return []
 
 
 def _with_label_lines(levels: list[float], own: Sequence[Piece]) -> list[float]:
@@ -58,23 +65,92 @@ def _stands_on(piece: Piece, levels: Sequence[float]) -> bool:
     return all(any(abs(_level(line) - level) < near for level in levels) for line in piece.lines)
 
 
+def _row_borders(own: Sequence[Piece], strict: bool) -> list[float]:
+    """Heights between rows of a band in which no line is drawn; none where the band is one row.
+
+    Where each row of the table has its line, text on several levels is text that runs on (strict): rows are parted only
+    where three or more lines fill several cells and each begins a text of its own.
+    """
+    column_of = {id(word): piece.cell.column for piece in own for word in piece.words}
+    lines = in_lines([word for piece in own for word in piece.words if not word.angle])
+    bands = _joined_bands(bands_of(lines), column_of)
+    full = [band for band in bands if len({column_of[id(word)] for line in band for word in line}) > 1]
+    fresh = [band for band in full if not goes_on(band[0][0].text)]
+    least = 3 if strict else 2
+    if len(full) < least or len(full) < 0.6 * len(bands) or len(fresh) < (1.0 if strict else 0.7) * len(full):
+        return []
+    if any(_holds_rows(band, column_of) for band in bands):
+        return []
+    return [(bottom_of(above) + top_of(below)) / 2 for above, below in zip(bands, bands[1:], strict=False)]
+
+
+def _holds_rows(band: Sequence[Sequence[Word]], column_of: dict[int, int]) -> bool:
+    """Tell whether lines of one column in a band are items of a list rather than one text (values, bullets)."""
+    firsts: dict[int, list[str]] = {}
+    for line in band:
+        begins: dict[int, str] = {}
+        for word in line:
+            begins.setdefault(column_of[id(word)], word.text)
+        for column, text in begins.items():
+            firsts.setdefault(column, []).append(text)
+    return any(len(texts) > 1 and _is_list(texts) for texts in firsts.values())
+
+
+def _is_list(texts: Sequence[str]) -> bool:
+    marked = len({text[0] for text in texts}) == 1 and texts[0][0] in "•:▪■-"
+    return marked or all(_VALUE.search(text) for text in texts)
+
+
 def _fresh_levels(own: Sequence[Piece]) -> list[float]:
     """Levels of three or more lines that stand in several cells and each begin a text of their own; else none."""
-    stacked = [piece for piece in sorted(own, key=lambda piece: piece.cell.column) if len(piece.lines) > 2]
-    if len(stacked) < 2:
-        return []
-    words = [word for piece in own for word in piece.words if not word.angle]
-    lines = in_lines(words)
     column_of = {id(word): piece.cell.column for piece in own for word in piece.words}
+    lines = in_lines([word for piece in own for word in piece.words if not word.angle])
     shared = [line for line in lines if len({column_of[id(word)] for word in line}) > 1]
-    fresh = all(_begins_text(line[0].text) for line in shared)
-    if len(shared) < 3 or len(shared) < 0.6 * len(lines) or not fresh:
+    if len(shared) < 3 or len(shared) < 0.6 * len(lines) or any(goes_on(line[0].text) for line in shared):
         return []
     return [_level(line) for line in shared]
 
 
-def _begins_text(text: str) -> bool:
-    return not text[0].islower() and text[0] not in "(（[,;"
+def _joined_bands(bands: Sequence[list[list[Word]]], column_of: dict[int, int]) -> list[list[list[Word]]]:
+    """Bands with those joined to the one above that stand nearer to it than usual and go on with its texts."""
+    gaps = sorted(top_of(below) - bottom_of(above) for above, below in zip(bands, bands[1:], strict=False))
+    usual = gaps[len(gaps) // 2] if gaps else 0.0
+    result: list[list[list[Word]]] = []
+    for band in bands:
+        columns = {column_of[id(word)] for line in band for word in line}
+        before = result[-1] if result else None
+        if before is not None and top_of(band) - bottom_of(before) < 0.6 * usual:
+            filled = {column_of[id(word)] for line in before for word in line}
+            if columns < filled or goes_on(band[0][0].text):
+                before.extend(band)
+                continue
+        result.append(list(band))
+    return result
+
+
+def _cut(pieces: Sequence[Piece], own: Sequence[Piece], row: int, borders: Sequence[float]) -> list[Piece]:
+    """Pieces with those of one grid row cut at the borders."""
+    result = _moved_down([piece for piece in pieces if not any(piece is one for one in own)], row, len(borders))
+    for piece in own:
+        left, top, right, bottom = piece.cell.box
+        edges = [top, *borders, bottom]
+        for index, (upper, lower) in enumerate(zip(edges, edges[1:], strict=False)):
+            words = tuple(word for word in piece.words if upper <= word.centre[1] < lower)
+            result.append(Piece(replace(piece.cell, row=row + index, box=(left, upper, right, lower)), words))
+    return result
+
+
+def _moved_down(pieces: Sequence[Piece], row: int, added: int) -> list[Piece]:
+    """Pieces of the other rows as they stand when the row has been parted into more."""
+    result: list[Piece] = []
+    for piece in pieces:
+        cell = piece.cell
+        if cell.row > row:
+            cell = replace(cell, row=cell.row + added)
+        elif cell.row + cell.row_span > row:
+            cell = replace(cell, row_span=cell.row_span + added)
+        result.append(replace(piece, cell=cell))
+    return result
 
 
 def _level(line: Sequence[Word]) -> float:
@@ -87,19 +163,11 @@ def _is_stack_of_values(piece: Piece) -> bool:
 
 
 def _row_parted(pieces: Sequence[Piece], own: Sequence[Piece], row: int, levels: Sequence[float]) -> list[Piece]:
-    added = len(levels) - 1
     labels = _labels_of(own, levels)
-    result: list[Piece] = []
-    for piece in pieces:
-        cell = piece.cell
-        if any(piece is one for one in own):
-            result += _down(piece, levels, labels)
-        elif cell.row > row:
-            result.append(replace(piece, cell=replace(cell, row=cell.row + added)))
-        elif cell.row + cell.row_span > row:
-            result.append(replace(piece, cell=replace(cell, row_span=cell.row_span + added)))
-        else:
-            result.append(piece)
+    others = [piece for piece in pieces if not any(piece is one for one in own)]
+    result = _moved_down(others, row, len(levels) - 1)
+    for piece in own:
+        result += _down(piece, levels, labels)
     return result
 
 

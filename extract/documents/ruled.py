@@ -14,6 +14,8 @@ SNAP = 1.5
 REACH = 2.0
 # Shorter lines are underlined signs, ticks and arrow heads.
 SHORTEST = 5.0
+# Shorter pieces with gaps of at most this between them are a dashed or dotted line.
+DASH, DASH_GAP = 8.0, 5.0
 
 
 @dataclass(frozen=True, slots=True)
@@ -63,9 +65,7 @@ def grids_of(rulings: Iterable[Ruling]) -> list[Grid]:
 
     A side that is not drawn is taken as drawn: tables are often open left and right.
     """
-    pieces = _merged(
-        [ruling for ruling in rulings if max(ruling.x1 - ruling.x0, ruling.bottom - ruling.top) >= SHORTEST]
-    )
+    pieces = [piece for piece in _merged(list(rulings)) if _length(piece) >= SHORTEST]
     grids = []
     for group in _connected(pieces):
         if sum(piece.horizontal for piece in group) >= 2 or any(not piece.horizontal for piece in group):
@@ -83,7 +83,7 @@ def stacks_of(
     Lines of the tables found so far and of frames round the page are left out. A line may be drawn column by column,
     with gaps; the sides of closed boxes that stand next to one another are not taken for one.
     """
-    level = [ruling for ruling in rulings if ruling.horizontal and ruling.x1 - ruling.x0 >= SHORTEST]
+    level = [ruling for ruling in rulings if ruling.horizontal]
     sides = [ruling for ruling in level if any(_on(ruling, box) for box in boxes)]
     others = [ruling for ruling in level if not any(_on(ruling, box) for box in boxes)]
     loose = [
@@ -132,6 +132,10 @@ def _merged(rulings: Sequence[Ruling], gap: float = REACH) -> list[Ruling]:
     return merged
 
 
+def _length(ruling: Ruling) -> float:
+    return max(ruling.x1 - ruling.x0, ruling.bottom - ruling.top)
+
+
 def _axis(ruling: Ruling) -> tuple[float, float, float]:
     if ruling.horizontal:
         return ((ruling.top + ruling.bottom) / 2, ruling.x0, ruling.x1)
@@ -150,8 +154,11 @@ def _snapped(lines: list[tuple[float, float, float]]) -> list[tuple[float, list[
 
 def _joined(stretches: Iterable[tuple[float, float]], gap: float) -> list[tuple[float, float]]:
     joined: list[tuple[float, float]] = []
+    last_length = 0.0
     for start, end in sorted(stretches):
-        if joined and start - joined[-1][1] <= gap:
+        short = bool(joined) and end - start < DASH and last_length < DASH
+        last_length = end - start
+        if joined and start - joined[-1][1] <= (max(gap, DASH_GAP) if short else gap):
             joined[-1] = (joined[-1][0], max(joined[-1][1], end))
         else:
             joined.append((start, end))

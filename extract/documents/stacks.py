@@ -4,6 +4,7 @@ from __future__ import annotations
 
 from collections.abc import Sequence
 
+from extract.documents.bands import bands_of, bottom_of, stacked, top_of
 from extract.documents.ruled import Grid, GridCell
 from extract.documents.words import Ruling, Word, in_lines, split_at_gaps
 
@@ -36,7 +37,7 @@ def stack_grids(stack: Sequence[Ruling], words: Sequence[Word]) -> list[Grid]:
     return grids
 
 
-def _parted(ys: Sequence[float], lines: Sequence[Sequence[Word]]) -> list[list[float]]:
+def _parted(ys: Sequence[float], lines: Sequence[list[Word]]) -> list[list[float]]:
     size = _usual_size([line for line in lines if ys[0] < _middle(line) < ys[-1]])
     parts = [[ys[0]]]
     for above, below in zip(ys, ys[1:], strict=False):
@@ -66,32 +67,32 @@ def _is_heading(lines: Sequence[Sequence[Word]], size: float) -> bool:
     return all(len(split_at_gaps(line)) == 1 and max(word.size for word in line) > BIGGER * size for line in lines)
 
 
-def _with_rows_beside(ys: Sequence[float], lines: Sequence[Sequence[Word]], width: float) -> list[float]:
+def _with_rows_beside(ys: Sequence[float], lines: Sequence[list[Word]], width: float) -> list[float]:
     """Borders with those of rows above the first line (one row, of several lines) and below the last (a row each)."""
     borders = list(ys)
     pitch = min((below - above for above, below in zip(ys, ys[1:], strict=False)), default=0.0)
     size = _usual_size([line for line in lines if ys[0] < _middle(line) < ys[-1]])
     top = ys[0]
-    for line in reversed([line for line in lines if _middle(line) < ys[0]]):
-        if top - max(word.bottom for word in line) > _reach(line, pitch if top == ys[0] else 0.0):
+    for band in reversed(bands_of([line for line in lines if _middle(line) < ys[0]])):
+        if top - bottom_of(band) > _reach(band[0], pitch if top == ys[0] else 0.0):
             break
-        if not _is_row(line, size, width):
+        if not _is_row(band, size, width):
             break
-        top = min(top, min(word.top for word in line) - 1)
+        top = min(top, top_of(band) - 1)
     if top < ys[0]:
         borders.insert(0, top)
-    for line in [line for line in lines if _middle(line) > ys[-1]]:
-        if min(word.top for word in line) - borders[-1] > _reach(line, pitch) or not _is_row(line, size, width):
+    for band in bands_of([line for line in lines if _middle(line) > ys[-1]]):
+        if top_of(band) - borders[-1] > _reach(band[0], pitch) or not _is_row(band, size, width):
             break
-        borders.append(max(word.bottom for word in line) + 1)
+        borders.append(bottom_of(band) + 1)
     return borders
 
 
-def _is_row(line: Sequence[Word], size: float, width: float) -> bool:
-    """Tell whether a line looks like a table's row: several short texts in the type of the rest."""
-    segments = split_at_gaps(line)
+def _is_row(band: Sequence[Sequence[Word]], size: float, width: float) -> bool:
+    """Tell whether a band looks like a table's row: several short texts in the type of the rest."""
+    segments = stacked([segment for line in band for segment in split_at_gaps(line)])
     short = all(segment[-1].x1 - segment[0].x0 < 0.45 * width for segment in segments)
-    return len(segments) > 1 and short and max(word.size for word in line) > 0.9 * size
+    return len(segments) > 1 and short and max(word.size for line in band for word in line) > 0.75 * size
 
 
 def _reach(line: Sequence[Word], pitch: float) -> float:
