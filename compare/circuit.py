@@ -133,19 +133,36 @@ def angular(frequency_mhz: ArrayLike) -> Array:
     return omega
 
 
+def polynomial(s: Complex, *coefficients: Array) -> Complex:
+    """Sum of coefficients[n] s^n; leading ones that are zero throughout cost nothing."""
+    at = len(coefficients) - 1
+    while at > 0 and not np.any(coefficients[at]):
+        at -= 1
+    value: Complex = coefficients[at] + 0j
+    for coefficient in coefficients[:at][::-1]:
+        value = value * s + coefficient
+    return value
+
+
 def over_transconductance(net: Network, s: Complex, c_shunt: Array) -> Mobius:
     """Impedance between the crystal's ends as a function of gm (S), at the complex frequency s (rad/s).
 
-    `c_shunt` (F) is added across the ends: the crystal's C0 where the motional arm's view is wanted, else zero.
+    `c_shunt` (F) is added across the ends: the crystal's C0 where the motional arm's view is wanted, else zero. S and N
+    of the module docstring, ordered by powers of s, so that what depends on the circuit alone is worked out once.
     """
-    rd, gf = net.r_series, net.g_feedback
-    yo: Complex = net.g_output + s * net.c_amp
-    d = 1 + rd * (yo + gf)
-    s_in, s_out, s_across = s * net.c_in, s * net.c_out, s * (net.c_across + c_shunt)
-    s_one = 1 + rd * gf
-    s_zero = (s_in + s_out) * d + yo * s_one
-    n_one = gf * (1 + rd * s_out)
-    n_zero = s_in * (s_out * d + yo + gf) + gf * (s_out * (1 + rd * yo) + yo)
+    c_in, c_out, c_amp = net.c_in, net.c_out, net.c_amp
+    rd, gf, go = net.r_series, net.g_feedback, net.g_output
+    d_zero, d_one, s_one = 1 + rd * (go + gf), rd * c_amp, 1 + rd * gf
+    s_zero = polynomial(s, go * s_one, (c_in + c_out) * d_zero + c_amp * s_one, (c_in + c_out) * d_one)
+    n_zero = polynomial(
+        s,
+        gf * go,
+        c_in * (go + gf) + c_out * gf * (1 + rd * go) + c_amp * gf,
+        c_in * (c_out * d_zero + c_amp) + c_out * gf * d_one,
+        c_in * c_out * d_one,
+    )
+    n_one = polynomial(s, gf, gf * rd * c_out)
+    s_across = s * (net.c_across + c_shunt)
     return Mobius(s_zero, s_one + 0j, s_across * s_zero + n_zero, s_across * s_one + n_one)
 
 

@@ -39,7 +39,7 @@ def ngspice() -> str:
 def run(ngspice: str, deck: Path) -> dict[str, float]:
     """What a deck prints as `name = value` or `RESULT name value`."""
     done = subprocess.run(
-        [ngspice, "-b", deck.name], cwd=deck.parent, capture_output=True, text=True, timeout=120, check=False
+        [ngspice, "-b", deck.name], cwd=deck.parent, capture_output=True, text=True, timeout=300, check=False
     )
     text = done.stdout + done.stderr
     assert "RESULT" in text or "=" in text, text[-2000:]
