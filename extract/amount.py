@@ -110,7 +110,10 @@ def _give_units(amounts: list[Amount], pieces: list[Token], heading: Heading, ro
         earlier = next((a.printed_unit for a in reversed(amounts[:index]) if a.printed_unit), None)
         unit = later or free or earlier
         name, scale = (unit.text, unit.value) if unit else heading.unit or ("", 1.0)
-        if not name and row.unit and row.sign != "either":
+        if not name and row.name == "frequency_mhz" and _is_khz(amount, row):
+            name, scale = "kHz", 1e-3
+            amount.doubts.append("unit not printed, taken as kHz")
+        elif not name and row.unit and row.sign != "either":
             amount.doubts.append(_no_unit(heading, row))
         elif name and guessed(name, row.name):
             amount.doubts.append(f"unit printed as {name!r}, taken as {row.unit}")
@@ -120,6 +123,12 @@ def _give_units(amounts: list[Amount], pieces: list[Token], heading: Heading, ro
         amount.low = _scaled(amount, group.low, low, row, heading, name)
         if group.high is not None:
             amount.high = _scaled(amount, group.high, 1.0 if group.percent else high, row, heading, name)
+
+
+def _is_khz(amount: Amount, row: Field) -> bool:
+    """A frequency without a unit that no crystal has in MHz, and one may have in kHz ("16000")."""
+    size = amount.group.low.number.plain if amount.group.low.number else 0.0
+    return not row.plausible(size) and row.plausible(size / 1000)
 
 
 def _no_unit(heading: Heading, row: Field) -> str:
@@ -150,7 +159,15 @@ def _refused(items: list[Item], pieces: list[Token], row: Field) -> list[Value]:
             return [Value(doubts=(f"letters touch the number {piece.text!r}; left out",))]
         if piece.kind == "broken":
             return [Value(doubts=(f"{piece.text!r} is no number; left out",))]
+    groups = [item.group for item in items if item.group is not None]
+    if len(groups) == 1 and groups[0].shape == "single" and groups[0].foreign in _FIELD_KINDS:
+        unit = groups[0].low_unit.text.strip() if groups[0].low_unit else ""
+        return [Value(doubts=(f"no unit called {unit} for {row.title} ({row.unit or 'a plain number'}); left out",))]
     return []
+
+
+# A lone number in one of these is a slip or another field's; volts, degrees and MHz alone are conditions.
+_FIELD_KINDS = frozenset({"resistance", "capacitance", "relative", "power", "inductance", "pulling", "parabola", "current"})
 
 
 def as_plus_minus(value: Value) -> Value:

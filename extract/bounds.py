@@ -67,6 +67,7 @@ def values_of(amounts: list[Amount], row: Field, heading: Heading) -> list[Value
 
 def _together(amounts: list[Amount], row: Field, heading: Heading) -> list[Value]:
     """The amounts under one condition: numbers to choose from are options, unlike bounds fill one value."""
+    amounts = _without_zero(amounts, row)
     loose = [a for a in amounts if _is_loose(a)]
     if row.choice and loose:
         # A bound word behind a list speaks of all of it: "8, 10, 12 pF max".
@@ -85,6 +86,14 @@ def _together(amounts: list[Amount], row: Field, heading: Heading) -> list[Value
     kept = [value for value in out if not value.empty] or out
     kept[0] = replace(kept[0], doubts=tuple(dict.fromkeys((*kept[0].doubts, *refused))))
     return [_in_order(value) for value in kept]
+
+
+def _without_zero(amounts: list[Amount], row: Field) -> list[Amount]:
+    """ "0 | 5" of a quantity that is never zero is a lower end that says nothing, and a limit."""
+    if row.sign != "positive" or len(amounts) != 2 or amounts[0].low != 0 or not all(_is_loose(a) for a in amounts):
+        return amounts
+    amounts[1].bound = "max"
+    return amounts[1:]
 
 
 def _common_bound(amounts: list[Amount]) -> str | None:
@@ -148,8 +157,6 @@ def _centre(amount: Amount, row: Field, doubts: tuple[str, ...]) -> Value:
     middle, half = amount.low, abs(amount.high or 0.0)
     if amount.group.percent:
         unit = amount.group.high_unit
-        if unit is not None and unit.value < 1e-3:
-            return Value(typ=middle, doubts=doubts)
         half = abs(middle) * half * (unit.value if unit else 0.01)
     if row.sign == "negative" and middle > 0:
         middle, doubts = -middle, (*doubts, _LOST_MINUS)

@@ -168,7 +168,7 @@ class _Reader:
         made.low_unit = self.take_unit()
         if self._bracket_then_pm():
             self.take()
-        if self.kind() == "pm" and self.kind(1) == "number":
+        if self.kind() == "pm" and self.kind(1) == "number" and not self._other_quantity(made.low_unit):
             self.take()
             made.shape, made.high, made.high_unit = "centre", self.take(), self.take_unit()
         elif self.kind() == "to" and self.kind(1) == "pm" and self.kind(2) == "number":
@@ -193,6 +193,14 @@ class _Reader:
                 self.take()
             made.shape, made.high, made.high_unit = "range", self.take(), self.take_unit()
         return made
+
+    def _other_quantity(self, unit: Token | None) -> bool:
+        """ "32.768 kHz ±20 ppm": a tolerance in a unit of its own is no half width; in percent it is."""
+        if unit is None or self.kind(2) not in _UNITS:
+            return False
+        half = self.tokens[self.at + 2]
+        percent = half.meaning == "relative" and half.value > 1e-3
+        return not percent and (half.kind, half.meaning) != (unit.kind, unit.meaning)
 
     def _bracket_then_pm(self) -> bool:
         return self.kind() == "open" and self.kind(1) == "pm" and self.kind(2) == "number" and self.field_name not in _PPM

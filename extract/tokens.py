@@ -6,9 +6,10 @@ import re
 from collections.abc import Iterator
 from dataclasses import dataclass
 from functools import cache
+from itertools import pairwise
 
 from extract.number import NUMBER, Number, numbers
-from extract.units import other_unit_at, unit_at
+from extract.units import kind_of, other_unit_at, unit_at
 from extract.vocabulary import vocabulary
 
 
@@ -99,7 +100,15 @@ def tokens(text: str, field: str) -> list[Token]:
         for token in _next(text, lower, at, field, found):
             found.append(token)
             at = token.end
-    return [token for token in found if token.kind != "blank"]
+    return _spoken_signs([token for token in found if token.kind != "blank"])
+
+
+def _spoken_signs(found: list[Token]) -> list[Token]:
+    """ "minus 40 to plus 85"."""
+    for word, number in pairwise(found):
+        if word.kind in ("minus", "plus") and number.kind == "number" and not number.meaning:
+            number.meaning = "-" if word.kind == "minus" else "+"
+    return [token for token in found if token.kind not in ("minus", "plus")]
 
 
 def _next(text: str, lower: str, at: int, field: str, before: list[Token]) -> Iterator[Token]:
@@ -168,7 +177,7 @@ def _ends_known(before: list[Token], at: int) -> bool:
 
 def _numbers(text: str, start: int, found: re.Match[str], sign: str, field: str, *, glued: bool) -> list[Token]:
     printed, end = found[0], found.end()
-    if " " in printed and unit_at(text, field, end) is None:
+    if " " in printed and unit_at(text, field, end) is None and kind_of(field).name != "number":
         printed = printed.split(" ")[0]
         end = start + len(printed)
     made: list[Token] = []

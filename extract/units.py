@@ -97,14 +97,14 @@ def guessed(printed_unit: str, field: str) -> bool:
 def unit_at(text: str, field: str, start: int = 0) -> tuple[str, float, int] | None:
     """The unit of `field` printed in folded `text` at `start` (spaces skipped): (unit text, factor, end), else None."""
     kind = kind_of(field)
+    foreign = _foreign(kind.name)
     for begin, end, spelling in _spellings_at(text, start):
         if unit := kind.look_up(spelling):
             return text[begin:end], _rounded(unit.to_base * kind.fields[field]), end
+        if "/" in spelling and spelling.casefold() in foreign:
+            # "ppm/°C²" is no ppm, and "ppm/pF" is none.
+            return None
     return None
-
-
-# These are no quantity of their own: a bare "k" or "ppm" beside a foreign number belongs to the kinds above.
-_NEVER_FOREIGN = frozenset({"number", "pulling", "parabola"})
 
 
 @cache
@@ -112,7 +112,7 @@ def _foreign(own: str) -> dict[str, Unit]:
     """The units of every other kind by caseless spelling, but for those that are one only beside their own field."""
     found: dict[str, Unit] = {}
     for kind in kinds().values():
-        if kind.name != own and kind.name not in _NEVER_FOREIGN:
+        if kind.name not in (own, "number"):
             for spelling, unit in kind.caseless.items():
                 if unit.sort == "sizes":
                     found.setdefault(spelling, unit)
