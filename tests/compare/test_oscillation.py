@@ -46,34 +46,60 @@ CIRCUITS = st.builds(
 )
 
 
+FORKS = st.builds(
+    quartz,
+    st.just(0.032768),
+    st.sampled_from([6.0, 7.0, 9.0, 12.5]),
+    st.floats(0.7, 2),
+    st.floats(220, 800),
+    st.floats(20e3, 100e3),
+)
+FORK_CIRCUITS = st.builds(
+    Circuit,
+    st.floats(8, 30),
+    st.floats(8, 30),
+    st.floats(0.2, 2),
+    st.sampled_from([0.0, 3.0]),
+    st.floats(0.001, 0.05),
+    st.sampled_from([0.0, 100e3, 470e3]),
+    st.one_of(st.floats(1e3, 3e3), st.sampled_from([5e3, 10e3, 22e3, np.inf])),
+    st.sampled_from([300.0, 1e3, 3e3, 10e3, np.inf]),
+)
+LOOPS = st.one_of(st.tuples(CIRCUITS, PARTS), st.tuples(FORK_CIRCUITS, FORKS))
+"""Also circuits that hardly oscillate or do not: one in twenty of the forks'."""
+
+
 def scalar(found: dict, key: str) -> float:
     return float(found[key])
 
 
-@given(CIRCUITS, PARTS)
-def test_startup_is_that_of_the_characteristic_polynomials_pole(circuit: Circuit, crystal: Crystal) -> None:
-    pole = Loop.of(circuit, crystal).pole(float(circuit.transconductance_ms) * 1e-3)
+@given(LOOPS)
+def test_startup_is_that_of_the_characteristic_polynomials_pole(loop: tuple[Circuit, Crystal]) -> None:
+    circuit, crystal = loop
+    pole = Loop.of(circuit, crystal).pole(float(np.asarray(circuit.transconductance_ms)) * 1e-3)
     startup = scalar(analyse(circuit, crystal), "startup_ms")
     rate = 0.0 if np.isnan(startup) else 1e3 * np.log(1e5) / startup
     # The judge works in doubles: its pole is good to some 1e-12 of the frequency.
     assert rate == pytest.approx(max(pole.real, 0.0), rel=1e-6, abs=1e-11 * abs(pole.imag))
 
 
-@given(CIRCUITS, PARTS)
-def test_transconductance_limits_are_the_roots_on_the_axis(circuit: Circuit, crystal: Crystal) -> None:
-    roots = Loop.of(circuit, crystal).transconductance_limits()
-    found = analyse(circuit, crystal)
+@given(LOOPS)
+def test_transconductance_limits_are_the_roots_on_the_axis(loop: tuple[Circuit, Crystal]) -> None:
+    roots = Loop.of(*loop).transconductance_limits()
+    found = analyse(*loop)
     critical = scalar(found, "critical_transconductance_ms")
     if len(roots) < 2:
         # One root alone is a pair that the 1 % window or rounding has cut: no judge.
         assert roots or np.isnan(critical)
         return
-    assert critical == pytest.approx(1e3 * roots[0][0], rel=1e-5)
-    assert scalar(found, "greatest_transconductance_ms") == pytest.approx(1e3 * roots[1][0], rel=1e-4)
+    near = roots[1][0] < 2 * roots[0][0]
+    assert critical == pytest.approx(1e3 * roots[0][0], rel=1e-3 if near else 1e-5)
+    assert scalar(found, "greatest_transconductance_ms") == pytest.approx(1e3 * roots[1][0], rel=1e-3)
 
 
-@given(CIRCUITS, PARTS)
-def test_it_starts_exactly_between_the_limits(circuit: Circuit, crystal: Crystal) -> None:
+@given(LOOPS)
+def test_it_starts_exactly_between_the_limits(loop: tuple[Circuit, Crystal]) -> None:
+    circuit, crystal = loop
     limits = analyse(circuit, crystal)
     critical, greatest = (scalar(limits, f"{name}_transconductance_ms") for name in ("critical", "greatest"))
     if np.isnan(critical):
@@ -83,6 +109,14 @@ def test_it_starts_exactly_between_the_limits(circuit: Circuit, crystal: Crystal
     starts = ~np.isnan(analyse(replace(circuit, transconductance_ms=tried), crystal)["startup_ms"])
     if greatest > 1.05 * critical:
         assert starts.tolist() == [False, True, True, False]
+
+
+@given(LOOPS)
+def test_headroom_above_one_is_what_starts(loop: tuple[Circuit, Crystal]) -> None:
+    found = analyse(*loop)
+    headroom = scalar(found, "resistance_headroom")
+    if abs(headroom - 1) > 0.01:
+        assert (headroom > 1) == (not np.isnan(scalar(found, "startup_ms")))
 
 
 def state_matrix_growth(circuit: Circuit, crystal: Crystal) -> float:

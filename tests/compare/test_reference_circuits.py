@@ -31,6 +31,32 @@ def test_case(name: str) -> None:
             assert float(found[key]) == pytest.approx(expected, abs=allowed(case, key, expected)), key
 
 
+SEVEN_DIGITS = (
+    "motional_inductance_mh",
+    "quality_factor",
+    "circuit_load_pf",
+    "load_resonance_resistance_ohm",
+    "negative_resistance_ohm",
+    "margin",
+    "resistance_headroom",
+    "gain_ratio",
+    "critical_transconductance_ms",
+    "drive_level_uw",
+    "startup_ms",
+)
+"""The reference is good to 1e-6 and more, and two exact routes have no reason to differ."""
+
+
+@pytest.mark.parametrize("name", CASES)
+def test_exact_numbers_agree_to_seven_digits(name: str) -> None:
+    case = CASES[name]
+    keys = case["bench"]["circuit"]
+    found = analyse(circuit_of(keys), crystal_of(case["crystal"]), *swing_of(keys))
+    for key in SEVEN_DIGITS:
+        if case["expected"][key] is not None:
+            assert float(found[key]) == pytest.approx(case["expected"][key], rel=1e-7), key
+
+
 @pytest.mark.parametrize("name", [name for name, case in CASES.items() if case["more"].get("output_limited")])
 def test_case_with_an_output_that_clips(name: str) -> None:
     case = CASES[name]
