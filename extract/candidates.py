@@ -12,11 +12,12 @@ from extract import amount, wording
 from extract.conditions import condition_of, kept, merged
 from extract.entries import Entry, Key, Placed, Source, Value
 from extract.fields import field_of
-from extract.fold import fold
+from extract.fold import fold, key
 from extract.heads import is_unit
 from extract.meaning import meaning
 from extract.model import FieldName, When, Where
 from extract.units import unit_at
+from extract.vocabulary import vocabulary
 from extract.wording import Label
 
 _PLUS_MINUS = re.compile(r"±")
@@ -81,7 +82,23 @@ def _label(text: str) -> Label | None:
     folded = fold(text)
     if wording.trap_of(folded):
         return None
-    return meaning(text).label
+    label = meaning(text).label
+    return label if label is None or label.exact else settled(label)
+
+
+_MEASURED_AT = re.compile(r"(?i)[\d.,±+\-\s]+|°?\bC\b|\b(?:[DA]C)?\s?\d*\s?V(?:\s?[DA]C)?\b|\b[km]?Hz\b|\b(?:DC|AC)\b")
+
+
+def settled(label: Label) -> Label:
+    """A partial match whose rest is only a bound word, a mode or where it was measured is as good as the wording itself."""
+    rest = _MEASURED_AT.sub(" ", label.rest).strip()
+    bound = vocabulary().bounds.get(key(rest))
+    if bound is not None and label.bound in (None, bound):
+        return replace(label, bound=bound, exact=True)
+    modes = vocabulary().modes
+    if not key(rest) or all(key(word) in modes or key(word) in ("overtone", "mode", "at") for word in rest.split()):
+        return replace(label, exact=bool(label.rest))
+    return label
 
 
 def label_of(entry: Entry) -> Label | None:
@@ -290,15 +307,15 @@ def _one_row(
     )
 
 
-def key_candidates(key: Key) -> Iterator[Candidate]:
+def key_candidates(ordering: Key) -> Iterator[Candidate]:
     """What can be ordered, where the sheet states it nowhere else: one list of options, or a range for each code."""
-    label = _label(key.label.text)
+    label = _label(ordering.label.text)
     if label is None or not label.exact:
         return
     numbers: list[float] = []
-    raws = [f"{code} {piece.text}" for code, piece in key.choices]
-    entry = Entry(key.label, (), label.unit or "")
-    for _, piece in key.choices:
+    raws = [f"{code} {piece.text}" for code, piece in ordering.choices]
+    entry = Entry(ordering.label, (), label.unit or "")
+    for _, piece in ordering.choices:
         for value in read(piece.text, label.field, label.unit, None, plus_minus=label.plus_minus):
             symmetric = value.min is not None and value.max is not None and value.min == -value.max
             if symmetric and value.max is not None:
@@ -309,7 +326,7 @@ def key_candidates(key: Key) -> Iterator[Candidate]:
                 found = _candidate(entry, label, When(), "", piece, value)
                 yield replace(found, source="key")
     if numbers:
-        first = key.choices[0][1]
+        first = ordering.choices[0][1]
         chosen = amount.Value(None, None, None, tuple(dict.fromkeys(numbers)), When(), False, (), first.text)
         found = _candidate(entry, label, When(), "", first, chosen)
-        yield replace(found, source="key", raw=f"{key.label.text} {'; '.join(raws)}")
+        yield replace(found, source="key", raw=f"{ordering.label.text} {'; '.join(raws)}")

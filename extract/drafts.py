@@ -11,7 +11,8 @@ from extract import wording
 from extract.candidates import Candidate
 from extract.entries import Entry
 from extract.fold import fold, key
-from extract.meaning import meaning
+from extract.identity import package_in
+from extract.meaning import meaning, part_tokens
 from extract.model import Where
 from extract.vocabulary import vocabulary
 
@@ -46,7 +47,9 @@ class Draft:
             if not entry.values:
                 continue
             text = " ".join(entry.values[0].piece.text.split())
-            if known.identity in ("part_number", "maker", "package") and not wording.not_stated(text):
+            if known.identity == "part_number" and not part_tokens(text) and package_in(text):
+                self.package = self.package or text
+            elif known.identity in ("part_number", "maker", "package") and not wording.not_stated(text):
                 if getattr(self, known.identity) is None:
                     setattr(self, known.identity, text)
             elif known.role in ("mode", "cut"):

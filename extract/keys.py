@@ -48,6 +48,21 @@ def read_key_table(rows: Sequence[Row], title: str) -> list[Key]:
     return _columns_of_keys(rows) or _rows_of_keys(rows) or _code_columns(rows, title)
 
 
+def take_code_rows(rows: Sequence[Row]) -> tuple[list[Key], list[Row]]:
+    """Rows of codes under rows of values ("CL 6 7 8 ..." over "Code N P Q ..."), and the rows that are left."""
+    keys: list[Key] = []
+    left: list[Row] = []
+    for row in rows:
+        cells = _distinct(row)
+        if len(cells) > 2 and meaning(cells[0].text).role == "code" and left:
+            values = _distinct(left.pop())
+            choices = tuple((code.text, value) for code, value in zip(cells[1:], values[1:], strict=False))
+            keys.append(Key(Piece(key_label(values[0].text), values[0].where), choices))
+        else:
+            left.append(row)
+    return keys, left
+
+
 def _distinct(cells: Sequence[Cell | None]) -> list[Cell]:
     seen: list[Cell] = []
     for cell in cells:

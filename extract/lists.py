@@ -19,6 +19,7 @@ from extract.entries import Entry, Listing, Placed
 from extract.fields import field_of
 from extract.fold import fold
 from extract.heads import BOUNDS, Head, interpret, is_unit
+from extract.identity import package_in
 from extract.meaning import meaning, part_tokens
 from extract.model import When
 from extract.units import factor
@@ -232,11 +233,15 @@ def _take_use(draft: Draft, cell: Placed, column: _Column) -> None:
     draft.texts.append(text)
     if wording.not_stated(text):
         return
+    if wording.oscillator_words(column.head.levels[-1] if column.head.levels else ""):
+        draft.texts.append(" ".join(column.head.levels))
     if column.use in ("maker", "package"):
         setattr(draft, column.use, getattr(draft, column.use) or text)
         draft.take_mode_and_cut(text)
     elif column.use in ("mode", "cut") or not column.use or column.use == "description":
         draft.take_mode_and_cut(text, codes=column.use == "mode")
+    elif column.use == "trap" and package_in(text):
+        draft.package = draft.package or text
     elif column.use.startswith("attribute "):
         draft.attributes.setdefault(column.use.removeprefix("attribute "), text)
 

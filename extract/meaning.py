@@ -63,7 +63,7 @@ def meaning(text: str) -> Meaning:
     if not folded or len(folded) > 120:
         return Meaning(None, None, None, None, None, number)
     names = _names(folded)
-    role = _first(wording.role_of, names)
+    role = None if number else _first(wording.role_of, names)
     identity = _first(wording.identity_label, names)
     attribute = _first(wording.attribute_label, names)
     label = None if (role and role != "band") or identity else wording.read_label(folded)

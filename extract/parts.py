@@ -44,7 +44,7 @@ def parts_of(blocks: Blocks) -> Found:
     common = next((section for section in split if section.name is None), Section(None))
     shared = _draft(common, blocks)
     named = [section for section in split if section.name is not None]
-    maker = maker_of(blocks.items, blocks.headers)
+    maker = maker_of(common.items if named else blocks.items, blocks.headers)
     drafts: list[Draft] = []
     reason = None
     for section in named or [common]:
@@ -71,6 +71,7 @@ def _of_section(section: Section, shared: Draft | None, blocks: Blocks) -> list[
         if each.part_number is None:
             own.candidates += each.candidates
     if shared is not None:
+        own.maker = own.maker or maker_of(section.items, ())
         _inherit(own, shared)
     if rows:
         stated = [each for each in own.candidates if each.source not in ("loose", "prose")]
@@ -185,7 +186,7 @@ def _merged(drafts: Sequence[Draft]) -> list[Draft]:
 
 def _finish(draft: Draft, maker: str | None, found: Found) -> None:
     """One draft as a part, or a note why it is none."""
-    if (reason := refusal(draft.texts)) is not None:
+    if (reason := refusal(draft.texts, least=1)) is not None:
         _pass_over(found, draft.part_number, reason)
         return
     stated = {candidate.field for candidate in draft.candidates if candidate.source != "loose"}

@@ -12,11 +12,16 @@ from extract.entries import Entry, Piece, Placed, Source, Value
 from extract.fold import fold
 from extract.meaning import meaning
 from extract.model import When
+from extract.vocabulary import vocabulary
 
 _CHUNK = re.compile(r"\n|;|；|•|\s\|\s|。|‖")
 _SEPARATOR = re.compile(r"[:=](?!//)")
 _WORD_START = re.compile(r"(?<![^\s,，、。([])\S")
-_SENTENCE = re.compile(r"(?<=[^\W\d])[.;!?]\s+|(?<=[\d%)°])[.;]\s+(?=[^\W\d_])|[。；]\s*|\n")
+_ABBREVIATED = "".join(f"(?<!{word})" for word in ("max", "min", "typ", "nom", "std", "ref", "req", "emp", "cap", "res", "mfr", "mfg"))
+_SENTENCE = re.compile(
+    rf"(?i:{_ABBREVIATED})(?<=[^\W\d])[.;!?]\s+(?=[^\W\d_])(?![a-zà-ÿ])|(?<=[\d%)°])[.;]\s+(?=[^\W\d_])|[。；]\s*|\n"
+)
+_NEW_SENTENCE = re.compile(r"\d[^.]{0,6}\.\s|\)\.?\s(?=\S+\s)")
 _LONG_BRACKET = re.compile(r"\([^()]{24,}\)")
 _UNITLESS = ("quality_factor", "capacitance_ratio")
 NEAR = 60
@@ -29,7 +34,10 @@ def pair_entries(cell: Placed) -> list[Entry]:
         if not chunk.strip():
             continue
         pairs, rest = split_pairs(chunk)
-        found += [_entry(label, value, cell, "pair") for label, value in pairs]
+        for label, value in pairs:
+            stated, *more = _SENTENCE.split(value, maxsplit=1)
+            found.append(_entry(label, stated, cell, "pair"))
+            found += prose_entries(Piece(more[0], cell.where, cell.confidence)) if more and more[0] else []
         if rest.strip():
             found += prose_entries(Piece(rest, cell.where, cell.confidence))
     return found
@@ -55,6 +63,8 @@ def _label_start(text: str, begin: int, end: int) -> int | None:
     """Where the longest known label that ends at `end` begins; None where none does."""
     starts = [begin + match.start() for match in _WORD_START.finditer(text[begin:end])]
     for start in starts[-10:]:
+        if _NEW_SENTENCE.search(text[start:end]):
+            continue
         if is_label(text[start:end]) and _may_follow(text[start:end], text[end + 1 :]):
             return start
     return None
@@ -87,7 +97,7 @@ def prose_entries(piece: Placed) -> list[Entry]:
     found: list[Entry] = []
     for sentence in _SENTENCE.split(fold(piece.text)):
         if sentence and sentence.strip():
-            found += _sentence_entries(_LONG_BRACKET.sub(" ", sentence), piece)
+            found += _sentence_entries(fold(_LONG_BRACKET.sub(" ", sentence)), piece)
     return found
 
 
@@ -162,8 +172,23 @@ def _guess(
 
 
 def loose_in_prose(piece: Placed) -> list[Candidate]:
-    """Unlabelled amounts that a sentence makes plain: "±30 ppm at 25 °C", "±50 ppm from -20 °C to +70 °C", "12 MHz"."""
-    text = fold(piece.text)
+    """Unlabelled amounts that a clause makes plain: "±30 ppm at 25 °C", "±50 ppm from -20 °C to +70 °C", "12 MHz"."""
+    found: list[Candidate] = []
+    for sentence in _SENTENCE.split(fold(piece.text)):
+        for clause in re.split(r"\s?[;；]\s", sentence or ""):
+            if clause and not _on_request(clause):
+                found += _loose_in_clause(Piece(clause, piece.where, piece.confidence))
+    frequencies = {each.bounds for each in found if each.field == "frequency_mhz"}
+    return [each for each in found if each.field != "frequency_mhz" or len(frequencies) == 1]
+
+
+def _on_request(clause: str) -> bool:
+    folded = clause.casefold()
+    return any(word in folded for word in vocabulary().phrases.get("request", ()) if len(word) > 6)
+
+
+def _loose_in_clause(piece: Piece) -> list[Candidate]:
+    text = piece.text
     found: list[Candidate] = []
     ranges = _FREQUENCIES.findall(text)
     amounts = _FREQUENCY.findall(_FREQUENCIES.sub(" ", text))
@@ -179,6 +204,7 @@ def loose_in_prose(piece: Placed) -> list[Candidate]:
         elif re.match(r"\W{0,3}\w{0,3}\s?\+?2[0-9]\s?°", tail):
             found += _guesses(piece, "frequency_tolerance_ppm", match[0])
     span = condition_of(text).temperature_c
-    if span is not None and span[0] < 5 and span[1] - span[0] > 40:
+    stored = any(label.label.field == "storage_temperature_c" for label in wording.find_labels(text))
+    if span is not None and span[0] < 5 and span[1] - span[0] > 40 and not stored:
         found.append(_guess(piece, "operating_temperature_c", span[0], None, span[1]))
     return found

@@ -15,21 +15,15 @@ def _words(text: str) -> tuple[str, ...]:
     return tuple(wording.oscillator_words(text))
 
 
-def refusal(texts: Iterable[str]) -> str | None:
-    """Why the texts are not about a crystal; None where they may be."""
-    words = {key(word) for text in texts for word in _words(text)}
-    kinds: dict[str, int] = {}
-    for word in words:
-        kind = vocabulary().oscillator.get(word, "words")
-        kinds[kind] = kinds.get(kind, 0) + 1
-    return _REASONS(kinds)
+def refusal(texts: Iterable[str], *, least: int = 2) -> str | None:
+    """Why the texts are not about a crystal; None where they may be.
 
-
-def _REASONS(kinds: dict[str, int]) -> str | None:  # noqa: N802
-    if kinds.get("words", 0) >= 2:
-        return "an oscillator"
-    if kinds.get("resonator", 0):
-        return "another kind of resonator or a filter"
-    if kinds.get("requirement", 0):
+    `least` is how many different words of an oscillator's sheet it takes: one beside a list's row, two in a sheet.
+    """
+    found = {key(word) for text in texts for word in _words(text)}
+    kinds = [vocabulary().oscillator.get(word, "words") for word in found]
+    if "requirement" in kinds:
         return "a list of what a chip asks of a crystal"
-    return None
+    if kinds.count("words") >= least:
+        return "an oscillator"
+    return "another kind of resonator or a filter" if "resonator" in kinds else None

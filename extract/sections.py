@@ -6,7 +6,7 @@ from collections.abc import Sequence
 from dataclasses import dataclass, field
 
 from extract.entries import Entry, Item, Listing, Text
-from extract.identity import unfolded
+from extract.identity import package_in, unfolded
 from extract.meaning import identity_words, meaning, part_tokens
 
 LEAST_ENTRIES = 3
@@ -60,7 +60,7 @@ def _named_in_heading(item: Text) -> str | None:
     ):
         return None
     at = text.find(tokens[0])
-    if at == 0 or item.heading:
+    if at == 0 or item.heading or package_in(text) or any(word in lowered for word in identity_words()["crystal"]["words"]):
         before = lowered[:at].rstrip(" :#.(-")
         return None if any(before.endswith(word) for word in identity_words()["not_parts"]["before"]) else tokens[0]
     return None

@@ -11,10 +11,10 @@ from dataclasses import dataclass, replace
 from itertools import pairwise
 
 from extract.documents.model import Cell, Table
-from extract.entries import Column, Entry, Item, Key, Listing, Placed, Text, Value
+from extract.entries import Column, Item, Listing, Piece, Text
 from extract.fold import key
 from extract.heads import Head, interpret, is_unit
-from extract.keys import read_key_table
+from extract.keys import read_key_table, take_code_rows
 from extract.meaning import is_part_token, meaning
 from extract.paramrows import parameter_entries
 from extract.vocabulary import vocabulary
@@ -31,21 +31,12 @@ def read_table(table: Table) -> list[Item]:
         return list(keys)
     if _bands_across(rows):
         rows = [list(row) for row in zip(*rows, strict=True)]
-    items: list[Item] = [Text(_titled(table), heading=True)] if table.title else []
+    items: list[Item] = [Text(Piece(table.title, table.where), heading=True)] if table.title else []
+    keys, rows = take_code_rows(rows)
+    items += keys
     for block in _blocks(rows, table.title):
         items.extend(_read_block(block, table))
     return items
-
-
-@dataclass(frozen=True, slots=True)
-class _Titled:
-    text: str
-    where: object
-    confidence: float = 1.0
-
-
-def _titled(table: Table) -> Placed:
-    return _Titled(table.title, table.where)  # type: ignore[return-value]
 
 
 @dataclass(slots=True)
@@ -264,5 +255,3 @@ def _folds(heads: list[Head]) -> list[tuple[int, int]]:
             return [(start, start + width) for start in range(0, len(names), width)]
     return [(0, len(heads))]
 
-
-__all__ = ["Entry", "Key", "Value", "distinct", "is_head", "read_table"]
