@@ -5,7 +5,7 @@ from __future__ import annotations
 from collections.abc import Callable, Sequence
 from dataclasses import replace
 
-from extract.documents.columns import Span, borders_of, columns_of, placed
+from extract.documents.columns import Span, borders_of, columns_of, fine_columns_of, placed
 from extract.documents.model import Cell, Table
 from extract.documents.piece import Piece
 from extract.documents.rows import rows_parted
@@ -64,7 +64,7 @@ def lines_parted(pieces: Sequence[Piece]) -> list[Piece]:
     """
     if any(piece.cell.column or piece.cell.column_span > 1 for piece in pieces):
         return list(pieces)
-    columns = columns_of([split_at_gaps(line) for piece in pieces for line in piece.lines])
+    columns = _all_columns([line for piece in pieces for line in piece.lines])
     result: list[Piece] = []
     for piece in sorted(pieces, key=lambda piece: piece.cell.row):
         for box, words in _chunks(piece, columns):
@@ -112,10 +112,16 @@ def columns_parted(pieces: Sequence[Piece]) -> list[Piece]:
 def _columns_in(own: Sequence[Piece]) -> list[Span]:
     """Columns inside one grid column; texts merged over them, which stand in the middle, do not hide them."""
     apart = [piece for piece in own if not _in_middle(piece)]
-    columns = columns_of([split_at_gaps(line) for piece in apart for line in piece.lines])
+    columns = _all_columns([line for piece in apart for line in piece.lines])
     if len(columns) > 1 and not any(_is_middle_column(piece, columns) for piece in apart):
         return columns
-    return columns_of([split_at_gaps(line) for piece in own for line in piece.lines])
+    return _all_columns([line for piece in own for line in piece.lines])
+
+
+def _all_columns(lines: Sequence[list[Word]]) -> list[Span]:
+    """Columns by wide gaps, or by narrow ones where these show more."""
+    columns, fine = columns_of([split_at_gaps(line) for line in lines]), fine_columns_of(lines)
+    return fine if len(fine) > len(columns) else columns
 
 
 def _column_parted(pieces: Sequence[Piece], own: Sequence[Piece], column: int, columns: Sequence[Span]) -> list[Piece]:

@@ -4,7 +4,7 @@ from __future__ import annotations
 
 from collections.abc import Sequence
 
-from extract.documents.words import Word, split_at_gaps
+from extract.documents.words import Word, is_fine_gap, split_at_gaps
 
 Span = tuple[float, float]
 Segment = list[Word]
@@ -31,6 +31,34 @@ def columns_of(lines: Sequence[Sequence[Segment]]) -> list[Span]:
     columns = _with_lonely(columns, [span for line in spans for span in line])
     columns = [column for column in columns if _has_company(column, columns, several)]
     return columns if len(columns) > 1 else [_whole(spans)]
+
+
+def fine_columns_of(lines: Sequence[Sequence[Word]]) -> list[Span]:
+    """Narrow columns: stripes that nearly all of four or more lines leave free; none where there are none."""
+    split = [split_at_gaps(line, is_fine_gap) for line in lines]
+    several = [line for line in split if len(line) > 1]
+    if len(several) < 4 or len(several) < 0.8 * len(split):
+        return []
+    spans = [[span_of(segment) for segment in line] for line in split]
+    columns = _covered([span for line in spans for span in line], int(0.34 * len(split)))
+    merged = columns[:1]
+    for column in columns[1:]:
+        if sum(_part(line, merged[-1], column) for line in spans) >= 0.5 * len(spans):
+            merged.append(column)
+        else:
+            merged[-1] = (merged[-1][0], column[1])
+    return merged if len(merged) > 1 else []
+
+
+def _part(line: Sequence[Span], left: Span, right: Span) -> bool:
+    """Tell whether the line has a text in each of two neighbouring columns."""
+    return any(
+        overlap(before, left) > 0
+        and overlap(after, right) > 0
+        and overlap(before, right) <= 0
+        and overlap(after, left) <= 0
+        for before, after in zip(line, line[1:], strict=False)
+    )
 
 
 def _whole(spans: Sequence[Sequence[Span]]) -> Span:

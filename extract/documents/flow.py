@@ -4,15 +4,15 @@ from __future__ import annotations
 
 import re
 from collections.abc import Callable, Sequence
-from dataclasses import dataclass
+from dataclasses import dataclass, replace
 
 from extract.documents.bands import bands_of, goes_on, stacked
 from extract.documents.cells import table_of
-from extract.documents.columns import columns_of, overlap, placed, span_of
+from extract.documents.columns import columns_of, fine_columns_of, overlap, placed, span_of
 from extract.documents.model import Line, Segment, Table
 from extract.documents.piece import Piece
 from extract.documents.ruled import GridCell
-from extract.documents.words import Box, Word, confidence_of, in_lines, joined, split_at_gaps, union
+from extract.documents.words import Box, Word, confidence_of, in_lines, is_fine_gap, joined, split_at_gaps, union
 from extract.model import Where
 
 Placer = Callable[[Box], Where]
@@ -20,8 +20,9 @@ Placer = Callable[[Box], Where]
 # Text sizes: the narrowest gutter between two columns of text.
 TEXT_GUTTER = 1.2
 # Three dots or one ellipsis stand for "to" in a range; leaders are longer.
-_LEADER = re.compile(r"^[.·․‥_]{4,}$|^…{2,}$")
-_TRAILING_LEADER = re.compile(r"^(?P<text>.*?[^.·․‥…_])(?P<dots>[.·․‥_]{4,}|…{2,})$")
+LEAST_DOTS = 4
+SINGLE_DOTS = frozenset({".", "·", "․", "…", ". .", "_"})
+_LEADER = re.compile(r"[.·․‥_]{4,}|…{2,}")
 
 
 @dataclass(frozen=True, slots=True)
@@ -52,34 +53,37 @@ def items_of(words: Sequence[Word]) -> list[Item]:
 
 def _without_leaders(segment: Sequence[Word]) -> list[list[Word]]:
     parts: list[list[Word]] = [[]]
-    dots = 0
-    for word in segment:
-        found = _TRAILING_LEADER.match(word.text)
-        if _LEADER.match(word.text):
-            parts.append([])
-        elif found:
-            parts[-1].append(_cut_to(word, found["text"]))
-            parts.append([])
-        elif word.text in {".", "·", "•", "_"}:
-            dots += 1
-            parts[-1].append(word)
-            if dots >= 4:
-                parts[-1] = parts[-1][:-4] if dots == 4 else parts[-1][:-1]
-                if dots == 4:
-                    parts.append([])
+    for index, word in enumerate(segment):
+        if word.text in SINGLE_DOTS and _dots_in_a_row(segment, index) >= LEAST_DOTS:
+            if parts[-1]:
+                parts.append([])
             continue
-        else:
+        pieces = _LEADER.split(word.text)
+        if len(pieces) == 1:
             parts[-1].append(word)
-        dots = 0
+            continue
+        for number, text in enumerate(pieces):
+            if number:
+                parts.append([])
+            if text:
+                parts[-1].append(_part_of(word, text))
     return [part for part in parts if part]
 
 
-def _cut_to(word: Word, text: str) -> Word:
-    share = len(text) / len(word.text)
-    return Word(
-        text, word.x0, word.top, word.x0 + share * (word.x1 - word.x0), word.bottom, word.size, word.angle,
-        word.confidence, word.baseline, word.bold,
-    )  # fmt: skip
+def _dots_in_a_row(segment: Sequence[Word], index: int) -> int:
+    first, last = index, index
+    while first > 0 and segment[first - 1].text in SINGLE_DOTS:
+        first -= 1
+    while last + 1 < len(segment) and segment[last + 1].text in SINGLE_DOTS:
+        last += 1
+    return last - first + 1
+
+
+def _part_of(word: Word, text: str) -> Word:
+    """Word that is a part of another, its place by its share of the characters."""
+    start = word.text.index(text)
+    width = (word.x1 - word.x0) / len(word.text)
+    return replace(word, text=text, x0=word.x0 + start * width, x1=word.x0 + (start + len(text)) * width)
 
 
 # --- reading order
@@ -125,7 +129,8 @@ def _rows_across(left: Sequence[Item], right: Sequence[Item], middle: float) -> 
     kept: list[Item] = []
     for row in reversed(_rows(text)):
         sides = {(item.box[0] + item.box[2]) / 2 < middle for item in row}
-        if len(sides) == 2 and (len(row) >= 4 or lowest > 0):
+        level = max(item.level for item in row) - min(item.level for item in row) < 0.12 * row[0].size
+        if len(sides) == 2 and level and (len(row) >= 4 or lowest > 0):
             tail = row + kept + tail
             kept = []
         elif lowest > 0 and len(sides) == 1:
@@ -226,6 +231,8 @@ def _text_blocks(items: Sequence[Item], place: Placer) -> list[Table | Line]:
     start = 0
     while start < len(bands):
         end = _table_end(bands, start, size)
+        if end == start:
+            end = _fine_table_end(bands, start, size)
         if end > start:
             blocks.append(_loose_table(bands[start:end], place))
             start = end
@@ -248,6 +255,10 @@ class _Band:
     @property
     def segments(self) -> list[list[Word]]:
         return stacked([item.words for item in self.items])
+
+    @property
+    def fine_segments(self) -> list[list[Word]]:
+        return stacked([part for item in self.items for part in split_at_gaps(item.words, is_fine_gap)])
 
     @property
     def top(self) -> float:
@@ -292,9 +303,11 @@ def _bands_joined(bands: Sequence[_Band]) -> list[list[_Band]]:
 def _continues(before: _Band, band: _Band, pitch: float, usual: float) -> bool:
     if len(band.segments) == 1 and band.level - before.level < 0.75 * pitch:
         return True
-    near = band.top - before.bottom < 0.6 * usual
-    fewer = len(band.segments) < len(before.segments)
-    return near and (fewer or goes_on(band.segments[0][0].text))
+    gap, segments = band.top - before.bottom, band.segments
+    begins = segments[0][0].text
+    if len(segments) == 1 and goes_on(begins) and len(begins) > 3 and gap < 1.1 * usual:
+        return True
+    return gap < 0.6 * usual and (len(segments) < len(before.segments) or goes_on(begins))
 
 
 def _rows(items: Sequence[Item]) -> list[list[Item]]:
@@ -349,6 +362,21 @@ def _table_end(bands: Sequence[_Band], start: int, size: float) -> int:
     if start < end < len(bands) and len(bands[end].segments) == 1:
         end += len(_bands_joined(bands[start : end + 1])[-1]) > 1
     return end
+
+
+def _fine_table_end(bands: Sequence[_Band], start: int, size: float) -> int:
+    """Index behind the last band of a table of narrow columns that begins at this one; else its own index."""
+    end = start
+    while end < len(bands) and len(bands[end].fine_segments) > 1 and bands[end].size < 1.15 * size:
+        if end > start and bands[end].top - bands[end - 1].bottom > 1.5 * size:
+            break
+        end += 1
+    while end - start >= 4:
+        words = [[word for item in band.items for word in item.words] for band in bands[start:end]]
+        if fine_columns_of([sorted(line, key=lambda word: word.x0) for line in words]):
+            return end
+        end -= 1
+    return start
 
 
 def _is_heading(band: _Band, size: float) -> bool:

@@ -13,6 +13,7 @@ from extract.documents.words import Box, Ruling, Word, is_cjk, turned, turned_ba
 
 # Characters of a lowered or raised mark: "nom", "*1)", "stg", "OPR"; longer ones are words in small type.
 LONGEST_MARK = 6
+LEADING_MARK = re.compile(r"\(?\d{1,2}\)?|\*\d?\)?|[†‡]")
 # Points: a longer line underlines words, not one sign.
 LONGEST_UNDERLINE = 14.0
 UNDERLINED = {"<": "≤", ">": "≥"}
@@ -45,13 +46,13 @@ class _Run:
     size: float
     base: float
     bold: bool
-    glyphs: int = 1
+    # Distance between the last two letters.
+    spacing: float = 0.0
 
     def take(self, other: _Run, text: str) -> None:
         self.text = text
         self.x0, self.x1 = min(self.x0, other.x0), max(self.x1, other.x1)
         self.top, self.bottom = min(self.top, other.top), max(self.bottom, other.bottom)
-        self.glyphs += other.glyphs
 
 
 def with_underlined_signs(glyphs: Sequence[Glyph], rulings: Sequence[Ruling]) -> list[Glyph]:
@@ -136,8 +137,11 @@ def _runs(glyphs: Sequence[Glyph]) -> list[_Run]:
         bold = bool(re.search(r"bold|black|heavy|demi", glyph.font, re.I))
         run = _Run(text, *glyph.box, size=glyph.size, base=glyph.base, bold=bold)
         if runs and not broken and _continues(runs[-1], run, spaced):
+            runs[-1].spacing = run.x0 - runs[-1].x1
             runs[-1].take(run, runs[-1].text + text)
         else:
+            if runs and abs(runs[-1].base - run.base) < 0.1 * run.size:
+                run.spacing = runs[-1].spacing
             runs.append(run)
         broken = False
     return runs
@@ -150,6 +154,8 @@ def _continues(run: _Run, glyph: _Run, spaced: bool) -> bool:
     gap = glyph.x0 - run.x1
     if gap < -0.6 * size:
         return False
+    if run.spacing > 0.06 * size and gap < 1.25 * run.spacing:
+        return True
     last, first = run.text[-1], glyph.text[0]
     if spaced and last.isalpha() and first.isalpha() and not (is_cjk(last) or is_cjk(first)):
         # Where the page sets its spaces as characters, a gap without one inside letters is loose type, no space.
@@ -214,12 +220,12 @@ def _marks_attached(runs: Sequence[_Run]) -> list[_Run]:
     ends = [run.x1 for run in by_end]
     taken: set[int] = set()
     for mark in sorted(runs, key=lambda run: run.x0):
-        if mark.size > 0.85 * largest or len(mark.text) > LONGEST_MARK or _goes_on(mark, runs):
+        if mark.size > 0.85 * largest or len(mark.text) > LONGEST_MARK:
             continue
         first = bisect_left(ends, mark.x0 - 3 * largest)
         last = bisect_right(ends, mark.x0 + 0.35 * largest)
         host = _host(mark, by_end[first:last], taken)
-        if host is None:
+        if host is None or _goes_on(mark, runs):
             continue
         if mark.base > host.base:
             text = host.text + marks.lowered(mark.text)
@@ -228,9 +234,13 @@ def _marks_attached(runs: Sequence[_Run]) -> list[_Run]:
         host.take(mark, text)
         taken.add(id(mark))
     kept = [run for run in runs if id(run) not in taken]
+    leading = set()
     for run in kept:
-        if _leads_a_footnote(run, kept):
-            run.text = marks.raised(run.text, "").strip()
+        led = _led_by(run, kept) if LEADING_MARK.fullmatch(run.text) else None
+        if led is not None:
+            led.take(run, f"{marks.raised(run.text, '').strip()} {led.text}")
+            leading.add(id(run))
+    kept = [run for run in kept if id(run) not in leading]
     # What goes on behind a mark without a space ("ppm/°C²/year") is the same word.
     return _same_line_neighbours(kept)
 
@@ -276,14 +286,11 @@ def _with_raised(text: str, mark: str, before: str) -> str:
     return text + ("°" if mark in {"o", "º", "°"} else marks.raised(mark, before))
 
 
-def _leads_a_footnote(run: _Run, runs: Sequence[_Run]) -> bool:
-    """Tell whether a loose small digit stands raised before a bigger word: the mark at a footnote's beginning."""
-    if not re.fullmatch(r"\(?\d{1,2}\)?", run.text):
-        return False
-    return any(
-        run.size < 0.85 * other.size
-        and -0.1 * other.size < other.x0 - run.x1 < 0.6 * other.size
-        and 0.15 * other.size < other.base - run.base < 0.75 * other.size
-        for other in runs
-        if other is not run
-    )
+def _led_by(mark: _Run, runs: Sequence[_Run]) -> _Run | None:
+    """Give the bigger word that a loose raised mark stands before, at a footnote's beginning; else None."""
+    for other in runs:
+        near = -0.1 * other.size < other.x0 - mark.x1 < 0.6 * other.size
+        raised = 0.15 * other.size < other.base - mark.base < 0.75 * other.size
+        if other is not mark and mark.size < 0.85 * other.size and near and raised:
+            return other
+    return None

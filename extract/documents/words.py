@@ -20,8 +20,10 @@ from typing import NamedTuple
 
 Box = tuple[float, float, float, float]
 
-# A gap of this many text sizes parts segments. A space is 0.25 to 0.35; two spaces or justified text stay below.
+# A gap of this many text sizes parts segments. A space is 0.25 to 0.35; two or three spaces stay below.
 WIDE_GAP = 0.8
+# This much parts them where all lines of a table leave the same stripe free.
+FINE_GAP = 0.42
 
 
 @dataclass(frozen=True, slots=True)
@@ -176,11 +178,20 @@ def split_at_gaps(line: Sequence[Word], wide: Callable[[Word, Word], bool] | Non
     return groups
 
 
-BULLETS = frozenset("•●▪■◆◇○·‣⁃∙–*-")
+BULLETS = frozenset("•●▪■◆◇○·‣⁃∙")
 
 
 def is_wide_gap(left: Word, right: Word) -> bool:
     """Tell whether two neighbours on a line stand apart; a bullet belongs to its text."""
-    if left.text in BULLETS and right.x0 - left.x1 < 2.5 * left.size and left.text not in "-–*":
+    return _apart(left, right, WIDE_GAP)
+
+
+def is_fine_gap(left: Word, right: Word) -> bool:
+    """Tell whether two neighbours may stand in narrow columns."""
+    return _apart(left, right, FINE_GAP)
+
+
+def _apart(left: Word, right: Word, gap: float) -> bool:
+    if left.text in BULLETS and right.x0 - left.x1 < 2.5 * left.size:
         return False
-    return right.x0 - left.x1 > WIDE_GAP * max(left.size, right.size)
+    return right.x0 - left.x1 > gap * max(left.size, right.size)
