@@ -43,7 +43,7 @@ def read(data: bytes) -> Document:
     text, notes = decode(data)
     lines = _lines(text)
     skipped = 0
-    if lines and lines[0].lower().startswith("sep=") and len(lines[0].strip()) == 5:
+    if lines and lines[0].lower().startswith("sep=") and len(lines[0].rstrip("\n")) == 5:
         delimiter, skipped = lines[0][4], 1
     else:
         delimiter = sniff(text) or ","

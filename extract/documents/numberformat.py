@@ -8,7 +8,7 @@ from __future__ import annotations
 
 import math
 import re
-from dataclasses import dataclass
+from dataclasses import dataclass, replace
 from functools import lru_cache
 
 _SECTION_SPLIT = re.compile(r';(?=(?:[^"]*"[^"]*")*[^"]*$)')
@@ -28,6 +28,7 @@ class _Section:
     least_digits: int
     scale: float
     exponent: bool = False
+    word: bool = False
 
 
 def general(value: float) -> str:
@@ -58,7 +59,9 @@ def shown(value: float, code: str) -> str:
         return general(value)
     section, magnitude = _choose(sections, value)
     scaled = magnitude * section.scale
-    if section.decimals is None:
+    if section.word:
+        digits = ""
+    elif section.decimals is None:
         digits = general(scaled)
     elif section.exponent:
         digits = f"{scaled:.{section.decimals}E}"
@@ -76,7 +79,8 @@ def _choose(sections: tuple[_Section, ...], value: float) -> tuple[_Section, flo
             return section, -value
         return section, value
     if value == 0 and len(sections) > 2:
-        return sections[2], value
+        zero = sections[2]
+        return (replace(zero, word=True) if zero.decimals is None and zero.before else zero), value
     return sections[0], value
 
 

@@ -13,6 +13,8 @@ from extract.model import Where
 LEAST_LINES = 3
 _GAP = re.compile(r"[ \u00a0]{2,}|\u3000+|\t+")
 _LEADER = re.compile(r"(?<=[^\s.·…_])\s?(?:\.{3,}|…{2,}|·{3,}|(?:\s\.){3,}|_{4,})\s*(?=\S)")
+_NUMBER_ENDS = re.compile(r"(?:\d|℃|°\s?C?)\s*$")
+_NUMBER_STARTS = re.compile(r"\s*[+\-−–±]?\s*\d")
 _RULE_SIGNS = frozenset("-=_─━*+|│")
 
 
@@ -41,7 +43,7 @@ def printed_width(text: str) -> int:
 
 def pieces(text: str) -> list[Piece]:
     """Runs of words of a line, parted by tabs, by two or more spaces, a wide space or leader dots."""
-    text = _LEADER.sub(lambda dots: " " * max(2, len(dots.group())), text.expandtabs(8))
+    text = _LEADER.sub(_without_dots, text.expandtabs(8))
     found, position = [], 0
     for match in re.finditer(_GAP.pattern + r"|$", text):
         run = text[position : match.start()]
@@ -50,6 +52,15 @@ def pieces(text: str) -> list[Piece]:
             found.append(Piece(run.strip(), start, printed_width(text[: match.start()])))
         position = match.end()
     return found
+
+
+def _without_dots(leader: re.Match[str]) -> str:
+    """A leader as a gap; three dots from one number to the next are a range and stay."""
+    before, after = leader.string[: leader.start()], leader.string[leader.end() :]
+    few = leader.group().strip() in ("...", "…", "……", ". . .")
+    if few and _NUMBER_ENDS.search(before) and _NUMBER_STARTS.match(after):
+        return leader.group()
+    return " " * max(2, len(leader.group()))
 
 
 def by_position(lines: Sequence[tuple[int, str]]) -> Table | None:
@@ -120,13 +131,26 @@ def _merged(stretches: Sequence[tuple[int, int]]) -> list[tuple[int, int]]:
 def _holds(printed: Sequence[tuple[int, Sequence[Piece]]], columns: Sequence[tuple[int, int]]) -> bool:
     """Whether the lines really share the columns: most lines fill two or more, most columns are filled repeatedly."""
     filled = [0] * len(columns)
-    full_lines = 0
+    full_lines = crowded = 0
     for _, row in printed:
         touched = {index for piece in row for index in _touched(piece, columns)}
         full_lines += len(touched) > 1
+        crowded += len(row) > len(touched)
         for index in touched:
             filled[index] += 1
-    return full_lines * 3 >= len(printed) * 2 and sum(count > 1 for count in filled) >= 2
+    if crowded * 4 > len(printed):
+        return False
+    shared = full_lines * 3 >= len(printed) * 2 and sum(count > 1 for count in filled) >= 2
+    return shared and any(_is_aligned([row for _, row in printed], column) for column in columns[1:])
+
+
+def _is_aligned(rows: Sequence[Sequence[Piece]], column: tuple[int, int]) -> bool:
+    """Whether most pieces in a column start, end or are centred at the same position."""
+    own = [piece for row in rows for piece in row if column[0] <= piece.start and piece.end <= column[1]]
+    if len(own) < 2:
+        return False
+    edges = ([piece.start for piece in own], [piece.end for piece in own], [(p.start + p.end) // 2 for p in own])
+    return any(max(sum(abs(one - other) <= 1 for other in edge) for one in edge) * 5 >= 3 * len(own) for edge in edges)
 
 
 def _touched(piece: Piece, columns: Sequence[tuple[int, int]]) -> list[int]:

@@ -21,7 +21,7 @@ _BOX_RULE = re.compile(r"\s*[+├┌└╔╠╚┏┣┗][-=+─━═┬┼┴
 _HEADING = re.compile(r"\s{0,3}#{1,6}\s+(.*?)\s*#*\s*$")
 _UNDERLINE = re.compile(r"\s{0,3}(=|-){3,}\s*$")
 _BOLD = re.compile(r"(\*\*|__)(?=\S)(.+?)(?<=\S)\1")
-_STRUCK = re.compile(r"~~(?=\S)(.+?)(?<=\S)~~")
+_STRUCK = re.compile(r" ?~~(?=\S)(.+?)(?<=\S)~~")
 _LINK = re.compile(r"!?\[([^\]]*)\]\([^)]*\)")
 _RAISED = re.compile(r"<sup>(.*?)</sup>", re.IGNORECASE)
 _LOWERED = re.compile(r"<sub>(.*?)</sub>", re.IGNORECASE)

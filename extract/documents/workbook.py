@@ -75,7 +75,22 @@ def _document(book: Any, data: bytes) -> Document:
         spans = [(*first, *last) for first, last in content.merged_cell_ranges or ()]
         blocks.extend(_Sheet(sheet.name, grid, spans).blocks())
         notes.extend(_formula_note(sheet.name, style))
+    if _has_old_formats(data):
+        notes.append(
+            Note(
+                level="warning",
+                message="This old XLS file shows words by number formats, which only XLSX gives: save it as XLSX.",
+            )
+        )
     return _whole(blocks, notes)
+
+
+def _has_old_formats(data: bytes) -> bool:
+    """Whether an XLS file (not a ZIP archive) holds a number format with words in it."""
+    if data.startswith(b"PK"):
+        return False
+    wide = rb'[0#?]\0(?:\\\0)?(?:[ _]\0)*"\0(?:[^"\0][\0-\xff]){1,20}"\0'
+    return bool(re.search(rb'[0#?]\\?[ _]*"[^"\0-\x1f]{1,20}"', data) or re.search(wide, data))
 
 
 def _formula_note(name: str, style: SheetStyles) -> Iterator[Note]:
@@ -139,7 +154,7 @@ class _Sheet:
     def blocks(self) -> Iterator[Table | Line]:
         """Titles, tables and footnotes from top to bottom."""
         for first, last in self._bands():
-            yield from self._band(first, last)
+            yield from self._band(first, last, is_last=last == len(self.grid))
 
     def _filled(self, row: int) -> list[int]:
         return [column for column, text in enumerate(self.grid[row]) if text]
@@ -175,12 +190,12 @@ class _Sheet:
         numbers_above = [any(sign.isdigit() for sign in self.grid[band[1] - 1][column]) for column in above]
         return same and sum(numbers) * 4 >= 3 * sum(numbers_above) > 0
 
-    def _band(self, first: int, last: int) -> Iterator[Table | Line]:
+    def _band(self, first: int, last: int, *, is_last: bool) -> Iterator[Table | Line]:
         above = first
         while first < last and self._is_prose(first):
             first += 1
         for row in range(above, first):
-            yield self._line(row, heading=first < last or (row == above and last - above == 1))
+            yield self._line(row, heading=first < last or (last - above == 1 and not is_last))
         end = last
         while end > first and self._is_prose(end - 1):
             end -= 1
