@@ -10,7 +10,7 @@ import math
 import tomllib
 from collections.abc import Sequence
 from dataclasses import dataclass
-from functools import cache
+from functools import cache, lru_cache
 from pathlib import Path
 from typing import Annotated, Any, Literal, Self
 
@@ -310,6 +310,18 @@ class Setting:
     circuit: CircuitKeys
 
 
+@lru_cache(maxsize=64)
+def _settings(circuit: Circuit, _given: tuple[frozenset[str], ...]) -> tuple[Setting, ...]:
+    """Every setting of a circuit. Equal circuits may differ in what was given, so that is part of the key."""
+    shared = {key: getattr(circuit, key) for key in circuit.given - {"condition"}}
+    settings = [Setting("", None, CircuitKeys.model_validate(shared))]
+    for number, condition in enumerate(circuit.condition, start=1):
+        own = {key: getattr(condition, key) for key in condition.given - {"name", "temperature_c"}}
+        keys = CircuitKeys.model_validate(shared | own)
+        settings.append(Setting(condition.name or f"condition {number}", condition.temperature_c, keys))
+    return tuple(settings)
+
+
 class Bench(_Table):
     """A circuit and what is asked of it. Equal benches write equal files."""
 
@@ -321,13 +333,7 @@ class Bench(_Table):
     @property
     def settings(self) -> tuple[Setting, ...]:
         """[circuit] itself first, then every condition, each with all keys resolved."""
-        shared = {key: getattr(self.circuit, key) for key in self.circuit.given - {"condition"}}
-        settings = [Setting("", None, CircuitKeys.model_validate(shared))]
-        for number, condition in enumerate(self.circuit.condition, start=1):
-            own = {key: getattr(condition, key) for key in condition.given - {"name", "temperature_c"}}
-            keys = CircuitKeys.model_validate(shared | own)
-            settings.append(Setting(condition.name or f"condition {number}", condition.temperature_c, keys))
-        return tuple(settings)
+        return _settings(self.circuit, (self.circuit.given, *(one.given for one in self.circuit.condition)))
 
     @property
     def taken(self) -> tuple[str, ...]:

@@ -5,6 +5,7 @@ from __future__ import annotations
 import math
 from collections.abc import Callable, Iterable, Mapping, Sequence
 from dataclasses import dataclass
+from functools import cached_property
 
 from compare.bench import Bench, CircuitKeys
 from compare.offer import Offer
@@ -88,22 +89,78 @@ def reading_text(name: str, taken: Taken) -> str:
 
 
 @dataclass(frozen=True)
+class BenchWords:
+    """What the sentences say of the circuit, the same for every part."""
+
+    circuit: CircuitKeys
+    capacitors: str
+    transconductance: str
+
+
+def bench_words(bench: Bench) -> BenchWords:
+    """The circuit's capacitances and resistors, and its transconductance with where it comes from."""
+    keys = bench.settings[0].circuit
+    return BenchWords(keys, _capacitors(keys, bench.requirement.frequency_mhz), _transconductance(keys))
+
+
+def _capacitors(keys: CircuitKeys, frequency_mhz: float) -> str:
+    parts = []
+    for end, symbol in (("input", "Cin"), ("output", "Cout")):
+        inside = keys.internal_at_each_pin_pf if end == "input" or keys.series_resistor_ohm == 0 else 0.0
+        terms = (getattr(keys, f"{end}_capacitor_pf"), getattr(keys, f"{end}_stray_pf"), inside or None)
+        parts.append(f"{symbol} {' + '.join(figure(term) for term in terms if term is not None)} pF")
+    parts += [f"across {figure(keys.across_stray_pf)} pF", f"Rf {figure(keys.feedback_kohm(frequency_mhz))} kΩ"]
+    if not math.isinf(keys.output_resistance_kohm):
+        parts.append(f"Ro {figure(keys.output_resistance_kohm)} kΩ")
+    if keys.series_resistor_ohm:
+        parts.append(f"Rd {figure(keys.series_resistor_ohm)} Ω")
+    if keys.limiter != "transconductance":
+        spans = "the output" if keys.limiter == "output" else "either transconductance or output"
+        parts.append(f"amplitude limited by {spans} (circuit.limiter)")
+    return ", ".join(parts)
+
+
+def _transconductance(keys: CircuitKeys) -> str:
+    stated = keys.transconductance_range_ms
+    if stated is not None:
+        return f"gm {ends_text(stated, 'mS')}" + (", nominal the geometric mean" if stated[0] != stated[2] else "")
+    if keys.rating is None or keys.rating.kind is None:
+        return "gm not known"
+    forms = {
+        "critical_transconductance_max_ms": "F gm_crit",
+        "negative_resistance_ohm": "F |R| ω² (2 CL)²",
+        "esr_max_ohm": "F 4 R ω² (CL + C0)²" if keys.rating.esr_means == "motional" else "F 4 R ω² CL²",
+    }
+    factor = figure(keys.rating.factor_inside)
+    return f"gm from the IC's rating, {forms[keys.rating.kind]} with F {factor} (circuit.rating.{keys.rating.kind})"
+
+
+@dataclass(frozen=True)
 class Subject:
     """One part in its circuit, with the numbers that the sentences quote."""
 
     offer: Offer
     bench: Bench
+    words: BenchWords
     ends: Mapping[str, Ends]
     lacking: Mapping[str, tuple[str, ...]]
-    c1_said: str
-    c0_said: str
-    budget_said: str
-    gm_said: str
+    c1: str
+    c0: str
+    budget: str = ""
 
     @property
     def circuit(self) -> CircuitKeys:
-        return self.bench.settings[0].circuit
+        return self.words.circuit
 
+    @property
+    def capacitors(self) -> str:
+        return self.words.capacitors
+
+    @property
+    def gm(self) -> str:
+        return self.words.transconductance
+
+    @cached_property
     def esr(self) -> str:
         text = reading_text("esr_ohm", self.offer.at[0].esr)
         if self.bench.crystal.esr_means == "at load":
@@ -113,27 +170,12 @@ class Subject:
             text += f", plus the series resistor {added} Ω as ESR (crystal.series_resistor_rule)"
         return text
 
-    def mid(self, key: str) -> str:
-        return figure(self.ends[key][1])
-
-    def capacitors(self) -> str:
-        keys, parts = self.circuit, []
-        for end, symbol in (("input", "Cin"), ("output", "Cout")):
-            fitted = getattr(keys, f"{end}_capacitor_pf")
-            stray = getattr(keys, f"{end}_stray_pf")
-            inside = keys.internal_at_each_pin_pf if end == "input" or keys.series_resistor_ohm == 0 else 0.0
-            terms = " + ".join(figure(v) for v in (fitted, stray, *([inside] if inside else [])))
-            parts.append(f"{symbol} {terms} pF")
-        text = f"{', '.join(parts)}, across {figure(keys.across_stray_pf)} pF"
-        text += f", Rf {figure(keys.feedback_kohm(self.offer.frequency_mhz))} kΩ"
-        if not math.isinf(keys.output_resistance_kohm):
-            text += f", Ro {figure(keys.output_resistance_kohm)} kΩ"
-        if keys.series_resistor_ohm:
-            text += f", Rd {figure(keys.series_resistor_ohm)} Ω"
-        return text
-
+    @cached_property
     def load(self) -> str:
         return reading_text("load_capacitance_pf", self.offer.load)
+
+    def mid(self, key: str) -> str:
+        return figure(self.ends[key][1])
 
 
 def how(key: str, subject: Subject) -> str:
@@ -159,31 +201,31 @@ def _inductance(s: Subject) -> str:
     stated = s.offer.at[0].motional.get("motional_inductance_mh")
     if stated is not None:
         return f"as stated: {reading_text('motional_inductance_mh', stated)}"
-    return f"L1 = (1 + C1/(C0 + CL))/(ω² C1); {s.c1_said}, {s.c0_said}, {s.load()}"
+    return f"L1 = (1 + C1/(C0 + CL))/(ω² C1); {s.c1}, {s.c0}, {s.load}"
 
 
 def _quality(s: Subject) -> str:
     stated = s.offer.at[0].motional.get("quality_factor")
     if stated is not None:
         return f"as stated: {reading_text('quality_factor', stated)}"
-    return f"Q = 1/(ωs C1 R1); {s.c1_said}, {s.esr()}"
+    return f"Q = 1/(ωs C1 R1); {s.c1}, {s.esr}"
 
 
 def _series(s: Subject) -> str:
     if s.offer.series:
         return f"fs = f: a series-resonant part, f {s.offer.case.frequencies_mhz[0]:.10g} MHz"
-    return f"fs = f/√(1 + C1/(C0 + CL)); f {s.offer.frequency_mhz:.10g} MHz, {s.c1_said}, {s.c0_said}, {s.load()}"
+    return f"fs = f/√(1 + C1/(C0 + CL)); f {s.offer.frequency_mhz:.10g} MHz, {s.c1}, {s.c0}, {s.load}"
 
 
 def _circuit_load(s: Subject) -> str:
-    return f"CL = -1/(ω Im Z) of the circuit at its critical transconductance, C0 not in; {s.capacitors()}"
+    return f"CL = -1/(ω Im Z) of the circuit at its critical transconductance, C0 not in; {s.capacitors}"
 
 
 def _load_error(s: Subject) -> str:
-    against = "fs (series-resonant part)" if s.offer.series else s.load()
+    against = "fs (series-resonant part)" if s.offer.series else s.load
     return (
         "(f - f rated)/f rated, f = fs √(1 + C1/(C0 + CL)); "
-        f"circuit's CL {s.mid('circuit_load_pf')} pF against {against}; {s.c1_said}, {s.c0_said}"
+        f"circuit's CL {s.mid('circuit_load_pf')} pF against {against}; {s.c1}, {s.c0}"
     )
 
 
@@ -192,61 +234,57 @@ def _drive(s: Subject) -> str:
     probe = f", {figure(keys.probe_pf)} pF of probe counted there" if keys.probe_pf else ""
     return (
         f"P = I² R1, I = ω Cin V (1 + (C0 + Cx)/Cs) with the circuit's losses counted; V {figure(keys.swing_v)} V "
-        f"{keys.swing_as} at the {keys.swing_at} end{probe}; {s.esr()}, {s.c0_said}; {s.capacitors()}"
+        f"{keys.swing_as} at the {keys.swing_at} end{probe}; {s.esr}, {s.c0}; {s.capacitors}"
     )
 
 
 def _margin(s: Subject) -> str:
     rn, rl = s.mid("negative_resistance_ohm"), s.mid("load_resonance_resistance_ohm")
-    return f"-Rn/RL = {rn.removeprefix('-')}/{rl}; {s.gm_said}, {s.esr()}, {s.c0_said}; {s.capacitors()}"
+    return f"-Rn/RL = {rn.removeprefix('-')}/{rl}; {s.gm}, {s.esr}, {s.c0}; {s.capacitors}"
 
 
 def _gain_ratio(s: Subject) -> str:
-    return f"gm/critical gm, critical {s.mid('critical_transconductance_ms')} mS; {s.gm_said}, {s.esr()}"
+    return f"gm/critical gm, critical {s.mid('critical_transconductance_ms')} mS; {s.gm}, {s.esr}"
 
 
 HOW: dict[str, Callable[[Subject], str]] = {
-    "motional_capacitance_ff": lambda s: s.c1_said,
+    "motional_capacitance_ff": lambda s: s.c1,
     "motional_inductance_mh": _inductance,
     "quality_factor": _quality,
     "series_resonance_mhz": _series,
     "parallel_resonance_mhz": lambda s: (
-        f"fp = fs √(1 + C1/C0); fs {s.ends['series_resonance_mhz'][1]:.9g} MHz, {s.c1_said}, {s.c0_said}"
+        f"fp = fs √(1 + C1/C0); fs {s.ends['series_resonance_mhz'][1]:.9g} MHz, {s.c1}, {s.c0}"
     ),
     "circuit_load_pf": _circuit_load,
     "load_resonance_resistance_ohm": lambda s: (
-        f"RL = R1 (1 + C0/CL)²; {s.esr()}, {s.c0_said}, CL {s.mid('circuit_load_pf')} pF"
+        f"RL = R1 (1 + C0/CL)²; {s.esr}, {s.c0}, CL {s.mid('circuit_load_pf')} pF"
     ),
     "negative_resistance_ohm": lambda s: (
-        f"Re Z of the active circuit at {s.offer.frequency_mhz:.10g} MHz, C0 not in; {s.gm_said}; {s.capacitors()}"
+        f"Re Z of the active circuit at {s.offer.frequency_mhz:.10g} MHz, C0 not in; {s.gm}; {s.capacitors}"
     ),
     "margin": _margin,
     "gain_ratio": _gain_ratio,
-    "resistance_headroom": lambda s: (
-        f"-Re Z/R1, C0 taken into the circuit; {s.gm_said}, {s.esr()}, {s.c0_said}; {s.capacitors()}"
-    ),
+    "resistance_headroom": lambda s: f"-Re Z/R1, C0 taken into the circuit; {s.gm}, {s.esr}, {s.c0}; {s.capacitors}",
     "greatest_esr_ohm": lambda s: (
-        f"R1 at which R1 + Re Z = 0, C0 taken into the circuit; {s.gm_said}, {s.c0_said}; {s.capacitors()}"
+        f"R1 at which R1 + Re Z = 0, C0 taken into the circuit; {s.gm}, {s.c0}; {s.capacitors}"
     ),
     "allowed_esr_ohm": lambda s: (
         f"greatest ESR/margin = {s.mid('greatest_esr_ohm')}/{figure(s.bench.requirement.margin)} "
         f"({s.bench.requirement.margin_source})"
     ),
     "critical_transconductance_ms": lambda s: (
-        f"least gm with Re Z + R1 = 0 and Im Z + X1 = 0, C0 in; {s.esr()}, {s.c0_said}; {s.capacitors()}"
+        f"least gm with Re Z + R1 = 0 and Im Z + X1 = 0, C0 in; {s.esr}, {s.c0}; {s.capacitors}"
     ),
     "greatest_transconductance_ms": lambda s: (
-        f"greatest gm with Re Z + R1 = 0 and Im Z + X1 = 0, C0 in; {s.esr()}, {s.c0_said}; {s.capacitors()}"
+        f"greatest gm with Re Z + R1 = 0 and Im Z + X1 = 0, C0 in; {s.esr}, {s.c0}; {s.capacitors}"
     ),
     "load_error_ppm": _load_error,
     "trim_ppm_per_pf": lambda s: (
-        f"df/(f dCL) = -C1/(2 (C0 + CL)²); {s.c1_said}, {s.c0_said}, circuit's CL {s.mid('circuit_load_pf')} pF"
+        f"df/(f dCL) = -C1/(2 (C0 + CL)²); {s.c1}, {s.c0}, circuit's CL {s.mid('circuit_load_pf')} pF"
     ),
     "drive_level_uw": _drive,
-    "startup_ms": lambda s: (
-        f"ln(10⁵)/σ, σ ≈ (-Re Z - R1)/(2 L1), C0 in; {s.gm_said}, {s.esr()}, {s.c0_said}, {s.c1_said}"
-    ),
-    "total_ppm": lambda s: s.budget_said,
+    "startup_ms": lambda s: f"ln(10⁵)/σ, σ ≈ (-Re Z - R1)/(2 L1), C0 in; {s.gm}, {s.esr}, {s.c0}, {s.c1}",
+    "total_ppm": lambda s: s.budget,
 }
 
 

@@ -177,7 +177,7 @@ def _ppm(value: float, asked: float) -> float:
 def decimals_printed(raw: str, value_mhz: float) -> int:
     """Decimals, counted in MHz, of the number in `raw` that stands for the value; 12 where it cannot be found there."""
     for number in re.findall(r"\d+(?:[.,]\d+)*", raw):
-        for text in {number, number.replace(",", "."), number.replace(",", "")}:
+        for text in (number.replace(",", "."), number.replace(",", "")):
             if text.count(".") > 1:
                 continue
             for shift in (0, 3, 6):

@@ -13,13 +13,13 @@ from compare.bench import Bench
 from compare.circuit import Array
 from compare.columns import MID, Columns, Whole, make_columns
 from compare.corners import Reckoned, lossless_load_pf, reckon
-from compare.explain import Subject, how
+from compare.explain import BenchWords, Subject, bench_words, how
 from compare.offer import Offer, Offers, fields_to_check, find_offers, with_load
 from compare.overtone import judge_mode
 from compare.questions import question
 from compare.reasons import Standing, budget_words, reasons
 from compare.result import Number, numbers
-from compare.sources import ageing_words, c0_words, c1_words, gm_words, remarks
+from compare.sources import ageing_words, c0_words, c1_words, remarks
 from compare.terms import Total, total_ppm
 from compare.verdict import (
     CANNOT_TELL,
@@ -48,6 +48,9 @@ class Reckoning:
     judged: Mapping[str, Judged]
     verdict: Whole
     loosest_slack: Array
+    greatest_gm: Array
+    """(n,) least transconductance of all corners above which oscillation stops again; not finite where none."""
+    words: BenchWords
     notes: tuple[dict[str, Any], ...]
 
     def __len__(self) -> int:
@@ -88,6 +91,8 @@ def reckon_offers(offers: Sequence[Offer], bench: Bench, notes: Sequence[dict[st
         judged=judged,
         verdict=of_part(judged, len(columns)),
         loosest_slack=_loosest_slack(columns, bench, reckoned),
+        greatest_gm=reckoned.low("greatest_transconductance_ms"),
+        words=bench_words(bench),
         notes=tuple(notes),
     )
 
@@ -276,8 +281,8 @@ def _standing(reckoning: Reckoning, at: int) -> Standing:
         key: tuple(name for name, flags in number.lacking.items() if flags[at])
         for key, number in reckoning.numbers.items()
     }
-    subject = Subject(offer, bench, ends, lacking, c1_words(columns, at), c0_words(columns, at), "", gm_words(bench))
-    stop = float(reckoning.reckoned.low("greatest_transconductance_ms")[at])
+    subject = Subject(offer, bench, reckoning.words, ends, lacking, c1_words(columns, at), c0_words(columns, at))
+    stop = float(reckoning.greatest_gm[at])
     standing = Standing(
         at=at,
         subject=subject,
@@ -286,7 +291,7 @@ def _standing(reckoning: Reckoning, at: int) -> Standing:
         loosest_slack=float(reckoning.loosest_slack[at]),
         greatest_gm=stop if math.isfinite(stop) else math.nan,
     )
-    return replace(standing, subject=replace(subject, budget_said=_budget_how(standing)))
+    return replace(standing, subject=replace(subject, budget=_budget_how(standing)))
 
 
 def _ends(number: Number, at: int) -> tuple[float, float, float]:

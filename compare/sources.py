@@ -55,23 +55,6 @@ def c0_words(columns: Columns, at: int) -> str:
     return f"{text}, typical alone, used as it stands" if taken.typical_only else text
 
 
-def gm_words(bench: Bench) -> str:
-    """The transconductance and where it comes from."""
-    keys = bench.settings[0].circuit
-    stated = keys.transconductance_range_ms
-    if stated is not None:
-        return f"gm {ends_text(stated, 'mS')}" + (", nominal the geometric mean" if stated[0] != stated[2] else "")
-    if keys.rating is None or keys.rating.kind is None:
-        return "gm not known"
-    forms = {
-        "critical_transconductance_max_ms": "F gm_crit",
-        "negative_resistance_ohm": "F |R| ω² (2 CL)²",
-        "esr_max_ohm": "F 4 R ω² (CL + C0)²" if keys.rating.esr_means == "motional" else "F 4 R ω² CL²",
-    }
-    factor = figure(keys.rating.factor_inside)
-    return f"gm from the IC's rating, {forms[keys.rating.kind]} with F {factor} (circuit.rating.{keys.rating.kind})"
-
-
 def remarks(columns: Columns, at: int) -> list[dict[str, str]]:
     """Every rule that was used in taking the readings, and stated values that do not agree."""
     offer = columns.offers[at]

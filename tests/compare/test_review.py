@@ -1,10 +1,8 @@
-"""A part in its circuit from sheet to verdict, held against reference circuits that were solved outside this project."""
+"""A part in its circuit from sheet to verdict, against reference circuits that were solved outside this project."""
 
-import json
-import math
 
 import pytest
-from made_sheets import CASES, REFERENCE, bench, case_bench, case_sheet, part, reading, sheet, usual
+from made_sheets import CASES, REFERENCE, bench, case_bench, case_sheet, sheet, usual
 
 from compare.review import review
 
