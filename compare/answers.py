@@ -187,10 +187,13 @@ def place_heading(row: Row) -> str:
 
 def chosen_text(row: Row) -> str:
     """How the part must be ordered for the verdict to hold; "" where there is no choice."""
-    said = [
-        f"{NAMES[key] if key in FIELD_NAMES else key} {_option(key, value)}" for key, value in row["chosen"].items()
-    ]
+    said = [f"{_small(NAMES.get(key, key))} {_option(key, value)}" for key, value in row["chosen"].items()]
     return f"Ordered with {', '.join(said)}." if said else ""
+
+
+def _small(name: str) -> str:
+    """A name inside a sentence: `rated load CL`, but `ESR` and `C0/C1` as they are."""
+    return name if name[1:2].isupper() or name[1:2].isdigit() else name[:1].lower() + name[1:]
 
 
 def _option(key: str, value: Any) -> str:
@@ -434,7 +437,10 @@ def shares(review: Row, key: str, most: int = 6) -> list[Share]:
 
 
 def _input_name(key: str) -> str:
-    return missing_name(key) if key in FIELD_NAMES or "." in key else key[0].upper() + key[1:]
+    if key in FIELD_NAMES or "." in key:
+        return missing_name(key)
+    named = key.replace("condition ", "corner: ")
+    return named[:1].upper() + named[1:]
 
 
 def _sentence(message: str) -> str:

@@ -18,8 +18,12 @@ import pandas as pd
 from compare.palette import Palette
 
 WIDTH = 440
+# Pixels: a letter of the charts' type at most, and the frame that the axis leaves of WIDTH.
+LETTER, FRAME = 6, 390
 # The name under which Streamlit serves its own copy of the typeface.
 FONT = "Source Sans, sans-serif"
+# Streamlit fits frame and axis together into the height that is given.
+AXIS = 44
 SIGNED = "(datum.value > 0 ? '+' : datum.value < 0 ? '−' : '') + format(abs(datum.value), '~g')"
 Channel = Callable[[str], Any]
 
@@ -27,7 +31,7 @@ Channel = Callable[[str], Any]
 def dressed(chart: Any, palette: Palette, font: str = FONT) -> Any:
     """Put the page's colours, type and axes on a chart; the page shows it with `theme=None`."""
     return (
-        chart.configure(background=palette.page, font=font, padding=4, autosize="pad")
+        chart.configure(background=palette.page, font=font, padding=4)
         .configure_view(stroke=None)
         .configure_axis(
             labelColor=palette.soft,
@@ -64,7 +68,8 @@ def slack_chart(rows: Sequence[Slack], palette: Palette, width: int = WIDTH) -> 
     What lies beyond 0.4 or 40 is drawn at the edge; the figures beside it are the true ones.
     """
     frame, left, right = _slack_frame(rows), 90, width - 118
-    count, height = len(frame), 25 * max(len(frame), 1)
+    count = len(frame)
+    height = 25 * max(count, 1)
     scale = alt.Scale(type="log", domain=list(SLACK_ENDS), range=[left, right])
     axis = alt.Axis(values=[0.5, 1, 2, 5, 10, 20], format="~g", domain=False)
 
@@ -97,7 +102,7 @@ def slack_chart(rows: Sequence[Slack], palette: Palette, width: int = WIDTH) -> 
     )
     said = every.mark_text(align="right").encode(x=alt.value(width), y=y("place"), text="said", color=weight)
     line = _one(at=1).mark_rule(color=palette.ink, strokeWidth=1.5).encode(x=x("at"))
-    return (zone + span + worst + nominal + dotted + name + said + line).properties(width=width, height=height)
+    return (zone + span + worst + nominal + dotted + name + said + line).properties(width=width, height=height + AXIS)
 
 
 def _slack_frame(rows: Sequence[Slack]) -> pd.DataFrame:
@@ -109,6 +114,8 @@ def _slack_frame(rows: Sequence[Slack]) -> pd.DataFrame:
         chosen = times if times is not None else other
         return 1.0 if chosen is None else min(max(chosen, low), high * 0.95)
 
+    kinds = {"requirement": str, "said": str, "worst": float, "nominal": float, "known": bool, "short": bool}
+    kinds |= {"tightest": bool, "place": int, "from": float, "to": float}
     return pd.DataFrame(
         [
             {
@@ -125,8 +132,8 @@ def _slack_frame(rows: Sequence[Slack]) -> pd.DataFrame:
             }
             for place, row in enumerate(rows)
         ],
-        columns=["requirement", "said", "worst", "nominal", "known", "short", "tightest", "place", "from", "to"],
-    ).astype({"known": bool})
+        columns=list(kinds),
+    ).astype(kinds)
 
 
 @dataclass(frozen=True, slots=True)
@@ -215,11 +222,15 @@ def _load_words(pull: LoadPull, x: Channel, y: Channel) -> Any:
     line, pad, shift = (top - bottom) / 210, (right - left) / 60, pull.shift_ppm(pull.mid_pf)
     here = f"circuit {pull.mid_pf:.2f} pF, {_signed(shift)} ppm"
     rated = pull.rated_pf
-    # Clear of the dashed line at the rated load, where that would run through the words.
-    start = pull.mid_pf if rated is None or not pull.mid_pf < rated else rated
-    above = start < left + 0.5 * (right - left)
-    at, height = (start + pad, shift + 12 * line) if above else (pull.mid_pf - pad, shift - 14 * line)
-    words = [(at, height, here, above)]
+    wide = LETTER * len(here) / FRAME * (right - left)
+    # Best clear of the dashed line at the rated load; where there is no room for that, across it.
+    beyond = pull.mid_pf if rated is None or not pull.mid_pf < rated else rated
+    if beyond + pad + wide <= right:
+        words = [(beyond + pad, shift + 12 * line, here, True)]
+    elif pull.mid_pf - pad - wide >= left:
+        words = [(pull.mid_pf - pad, shift - 14 * line, here, False)]
+    else:
+        words = [(pull.mid_pf + pad, shift + 12 * line, here, True)]
     if rated is not None:
         at_right = rated < (left + right) / 2
         words.append((rated + (pad if at_right else -pad) / 2, bottom + 9 * line, f"rated {rated:g} pF", at_right))
@@ -255,7 +266,7 @@ def _shift_ends(pull: LoadPull) -> tuple[float, float]:
     seen = [pull.shift_ppm(load) for load in (pull.low_pf, pull.mid_pf, pull.high_pf)]
     rooms = [room for room in (pull.room_low_ppm, pull.room_high_ppm) if room is not None]
     # A limit far outside what the load does would flatten the curve: then it is left out of the picture.
-    reach = 4 * max(*map(abs, seen), 5)
+    reach = 8 * max(*map(abs, seen), 5)
     points = [0.0, *seen, *(room for room in rooms if abs(room) < reach)]
     low, high = min(points), max(points)
     margin = max(0.35 * (high - low), 5)

@@ -49,11 +49,11 @@ def page_picture(data: bytes, sheet: SpecSheet, where: Where) -> Pictured | None
 
 
 def _close_up(page: Image, box: list[float]) -> Image:
-    """Half a page wide, so that label, value and unit of a table's row stand in it."""
+    """Well over half a page wide and more to the left than to the right, so that the row's label stands in it."""
     x0, top, x1, bottom = box
-    width = min(max(0.52 * page.width, 1.2 * (x1 - x0)), page.width)
+    width = min(max(0.62 * page.width, 1.2 * (x1 - x0)), page.width)
     height = min(max(0.3 * width, 1.6 * (bottom - top)), page.height)
-    left = min(max((x0 + x1 - width) / 2, 0), page.width - width)
+    left = min(max((x0 + x1) / 2 - 0.62 * width, 0), page.width - width)
     upper = min(max((top + bottom - height) / 2, 0), page.height - height)
     return page.crop((round(left), round(upper), round(left + width), round(upper + height)))
 
@@ -91,5 +91,5 @@ def _draw_box(page: Image, box: list[float], scale: float) -> None:
 
     pad = PAD * scale
     x0, top, x1, bottom = box[0] - pad, box[1] - pad, box[2] + pad, box[3] + pad
-    width = max(2, round(1.2 * scale))
+    width = max(2, round(1.6 * scale))
     ImageDraw.Draw(page).rectangle((x0, top, max(x1, x0 + 1), max(bottom, top + 1)), outline=BOX_COLOUR, width=width)

@@ -16,8 +16,8 @@ from compare.offer import find_offers
 COPY = """export default function({data, parentElement}) {
   const button = parentElement.querySelector("button");
   button.onclick = async () => { await navigator.clipboard.writeText(data); button.textContent = "Copied"; } }"""
-COPY_LOOK = """button{font:inherit;color:var(--st-text-color);background:var(--st-background-color);cursor:pointer;
-  border:1px solid var(--st-border-color);border-radius:3px;padding:.42rem .75rem}"""
+COPY_LOOK = """button{font:inherit;font-size:.875rem;color:var(--st-text-color);background:var(--st-background-color);
+  cursor:pointer;border:1px solid var(--st-border-color);border-radius:3px;padding:.42rem .75rem}"""
 
 PART_PLACE = tuple[str, str | None]
 

@@ -84,9 +84,8 @@ def sheet_list() -> Opened | None:
         key=f"open_{len(every)}",
         alt="Sheets that are open, with their outcome",
         column_config={
-            "Sheet": st.column_config.TextColumn(width=176),
-            "Outcome": st.column_config.TextColumn(width=78),
-            "What": st.column_config.TextColumn(width=150),
+            "Sheet": st.column_config.TextColumn(width=160),
+            "Outcome": st.column_config.TextColumn(width=90),
         },
     )
     chosen: Opened = every[session.selected_row(picked, len(every))]

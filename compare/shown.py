@@ -12,15 +12,6 @@ from compare.figures import counted, exact, spread
 from extract.fields import field_of
 from extract.model import Note, Part, Reading, SpecSheet, When, Where
 
-KINDS = {
-    "pdf": "PDF",
-    "xlsx": "workbook",
-    "csv": "list",
-    "html": "web page",
-    "docx": "Word document",
-    "text": "text",
-    "image": "picture",
-}
 LOOK, SHORT = "☞", "▼"
 HOW = {"stated": "stated", "inferred": "∴ inferred", "entered": "✎ entered"}
 HOW_LEGEND = "stated: printed there · ∴ inferred: worked out from other readings · ☞ look: a person must decide"
@@ -55,27 +46,21 @@ def waiting(sheet: SpecSheet) -> int:
 
 
 def sheets_frame(sheets: Sequence[SpecSheet]) -> pd.DataFrame:
-    """One row a sheet, in the order opened: file, what it is, and its outcome."""
-    rows = [(file_name(sheet), _outcome(sheet), _what(sheet)) for sheet in sheets]
-    return pd.DataFrame(rows, columns=["Sheet", "Outcome", "What"])
+    """One row a sheet, in the order opened: file and outcome."""
+    return pd.DataFrame([(file_name(sheet), _outcome(sheet)) for sheet in sheets], columns=["Sheet", "Outcome"])
 
 
-def file_name(sheet: SpecSheet, longest: int = 25) -> str:
+def file_name(sheet: SpecSheet, longest: int = 22) -> str:
     """The file's name without its folders; a long one loses its middle, for its end tells the kind."""
     name = sheet.file.rsplit("/", 1)[-1]
     return name if len(name) <= longest else f"{name[: longest - 10]}…{name[-9:]}"
-
-
-def _what(sheet: SpecSheet) -> str:
-    kind = "scan" if sheet.scan else KINDS[sheet.kind]
-    return f"{kind}, {counted(len(sheet.parts), 'part')}"
 
 
 def _outcome(sheet: SpecSheet) -> str:
     if not sheet.parts:
         return f"{SHORT} not read" if _errors(sheet) else f"{SHORT} no crystal"
     wait = waiting(sheet)
-    return f"{LOOK} {wait}" if wait else "read"
+    return counted(len(sheet.parts), "part") + (f", {LOOK} {wait}" if wait else "")
 
 
 def _errors(sheet: SpecSheet) -> list[Note]:
