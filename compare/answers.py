@@ -125,7 +125,7 @@ def tightest_text(row: Row) -> str:
         return f"{missing_name(key)} not {'stated' if key in FIELD_NAMES else 'known'}"
     slack = None if name is None else row["slack"][name]
     if row["verdict"] != "meets" and (slack is None or slack >= 1):
-        decides = [reason["about"] for reason in row["reasons"] if reason["verdict"] == row["verdict"]]
+        decides = [reason["about"] for reason in row.get("reasons", ()) if reason["verdict"] == row["verdict"]]
         if decides:
             return SHORT_NAMES.get(decides[0], str(decides[0]))
     return "" if name is None else f"{SHORT_NAMES.get(name, name)} {times(slack)}"

@@ -148,7 +148,19 @@ def row(place, part_number, verdict="meets", slack=None, **changed):
     told["slack"] = told["slack"] if slack is None else slack
     known = {name: value for name, value in told["slack"].items() if value is not None}
     told["tightest"] = min(known, key=known.get) if known else None
-    kept = ("file", "part_number", "maker", "package", "mode", "verdict", "missing", "chosen", "to_check", "slack")
+    kept = (
+        "file",
+        "part_number",
+        "maker",
+        "package",
+        "mode",
+        "verdict",
+        "missing",
+        "chosen",
+        "to_check",
+        "slack",
+        "reasons",
+    )
     return {"place": place, **{key: told[key] for key in (*kept, "tightest", *FIGURES)}, **changed}
 
 
