@@ -13,12 +13,14 @@ from extract.documents.ruled import GridCell
 from extract.documents.words import Box, Word, confidence_of, split_at_gaps, text_of, union
 from extract.model import Where
 
+# Points: a narrower empty column is the space between two lines.
+NARROWEST_COLUMN = 10.0
 Placer = Callable[[Box], Where]
 
 
 def table_of(pieces: Sequence[Piece], place: Placer, *, ruled: bool, title: str = "") -> Table:
     """Table of cells that hold words, after columns and rows have been parted where the words show more than lines."""
-    pieces = without_empty(rows_parted(spans_parted(columns_parted(lines_parted(pieces)))))
+    pieces, columns = without_empty(rows_parted(spans_parted(columns_parted(lines_parted(pieces)))))
     box = union(piece.cell.box for piece in pieces)
     cells = tuple(
         Cell(
@@ -35,15 +37,18 @@ def table_of(pieces: Sequence[Piece], place: Placer, *, ruled: bool, title: str 
         if piece.words
     )
     rows = max(piece.cell.row + piece.cell.row_span for piece in pieces)
-    columns = max(piece.cell.column + piece.cell.column_span for piece in pieces)
     return Table(cells, rows, columns, place(box), title, ruled)
 
 
-def without_empty(pieces: Sequence[Piece]) -> list[Piece]:
-    """Pieces with words, the rows and columns in which no text begins left out."""
+def without_empty(pieces: Sequence[Piece]) -> tuple[list[Piece], int]:
+    """Pieces with words, and the number of columns: rows and columns in which no text begins are left out.
+
+    A column of empty cells stays, so that the parts of a table over several pages keep their columns.
+    """
     filled = [piece for piece in pieces if piece.words]
     rows = sorted({piece.cell.row for piece in filled})
-    columns = sorted({piece.cell.column for piece in filled})
+    wide = [piece.cell for piece in pieces if piece.cell.box[2] - piece.cell.box[0] > NARROWEST_COLUMN]
+    columns = sorted({piece.cell.column for piece in filled} | {cell.column for cell in wide if cell.column_span == 1})
     result = []
     for piece in filled:
         cell = piece.cell
@@ -51,7 +56,7 @@ def without_empty(pieces: Sequence[Piece]) -> list[Piece]:
         covered = [column for column in columns if cell.column <= column < cell.column + cell.column_span]
         kept = GridCell(rows.index(cell.row), columns.index(cell.column), len(covered_rows), len(covered), cell.box)
         result.append(replace(piece, cell=kept))
-    return result
+    return result, len(columns)
 
 
 # --- columns

@@ -110,8 +110,12 @@ def _arranged(
     for grid in boxes:
         if _area(grid.box) <= BOXED * width * height:
             rest = _boxed(grid.box, rest, place, boxed)
-    items = items_of(rest) + boxed + _nested(tables)
-    return [block for flow in in_reading_order(items) for block in blocks_of(flow, place)]
+    items = items_of([word for word in rest if not word.angle]) + boxed + _nested(tables)
+    blocks = [block for flow in in_reading_order(items) for block in blocks_of(flow, place)]
+    for angle in sorted({word.angle for word in rest} - {0}):
+        sideways = [word for word in rest if word.angle == angle]
+        blocks += _arranged_sideways(sideways, [], angle, place, width=width, height=height)
+    return blocks
 
 
 def _area(box: Box) -> float:

@@ -130,7 +130,7 @@ def _placer(number: int, scale: float = 1.0) -> Callable[[Box], Where]:
 def _read_text(page: Any, slow: _Plumber, number: int, frame: Frame, *, printed: int, result: _Page) -> None:
     content = slow.page(number, frame)
     glyphs, rulings = content if content else ([], [])
-    readable = sum(not glyph.text.isspace() and not glyph.text.startswith("(cid:") for glyph in glyphs)
+    readable = sum(len(glyph.text.strip()) for glyph in glyphs if not glyph.text.startswith("(cid:"))
     if readable < 0.7 * printed:
         glyphs = pdfium_glyphs(page, frame)
     if content is None:
