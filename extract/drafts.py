@@ -4,7 +4,7 @@ from __future__ import annotations
 
 import re
 from collections.abc import Iterable, Iterator
-from dataclasses import dataclass, field
+from dataclasses import dataclass, field, replace
 from functools import lru_cache
 
 from extract import wording
@@ -22,7 +22,11 @@ _WORD = re.compile(r"[^\s,;:()\[\]|]+")
 
 @dataclass(slots=True)
 class Draft:
-    """What a sheet says of one part. `texts` are the words beside its values, for what it is not."""
+    """What a sheet says of one part.
+
+    `texts` are the words beside its values, for what it is not. `crystal`: its own row calls it one; `other`: rows beside
+    it do and its own does not. `by_subject`: identity entries under the name of a model in a column head.
+    """
 
     part_number: str | None = None
     maker: str | None = None
@@ -34,6 +38,9 @@ class Draft:
     candidates: list[Candidate] = field(default_factory=list)
     texts: list[str] = field(default_factory=list)
     where: Where | None = None
+    crystal: bool = False
+    other: bool = False
+    by_subject: dict[str, list[Entry]] = field(default_factory=dict)
 
     def take_mode_and_cut(self, text: str, *, codes: bool = False) -> None:
         """Note the modes and cuts that a text prints; single letters count only in a mode's own cell (`codes`)."""
@@ -45,6 +52,11 @@ class Draft:
         for entry in entries:
             known = meaning(entry.label.text)
             if not entry.values:
+                continue
+            if any(value.subject for value in entry.values):
+                for value in entry.values:
+                    own = replace(entry, values=(replace(value, subject=""),))
+                    self.by_subject.setdefault(value.subject, []).append(own)
                 continue
             text = " ".join(entry.values[0].piece.text.split())
             if known.identity == "part_number" and not part_tokens(text) and package_in(text):

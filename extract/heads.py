@@ -7,9 +7,11 @@ from dataclasses import dataclass
 from functools import lru_cache
 
 from extract import units
+from extract.conditions import condition_of
 from extract.entries import Bound
 from extract.fold import fold
 from extract.meaning import Meaning, meaning
+from extract.model import When
 from extract.wording import Label
 
 BOUNDS: dict[str, Bound] = {"min": "min", "typ": "typ", "max": "max"}
@@ -36,11 +38,14 @@ class Head:
         """What the column holds: a field, an identity or an attribute."""
         if self.trap:
             return f"trap {self.trap}"
+        beside = "".join(f" {extra}" for extra in self.extra)
         if self.label is not None:
-            return f"{self.label.field} {' '.join(self.extra)}".strip()
+            return self.label.field + beside
         if self.role in ("mode", "cut", "band", "model", "code"):
             return self.role
-        return self.identity or (f"attribute {self.attribute}" if self.attribute else None)
+        if self.identity:
+            return self.identity + beside
+        return f"attribute {self.attribute}" if self.attribute else None
 
 
 @lru_cache(maxsize=8192)
@@ -52,9 +57,23 @@ def is_unit(text: str) -> bool:
     return any((unit := kind.unit(bare)) is not None and unit.sort == "sizes" for kind in units.kinds().values())
 
 
+_CONDITION = re.compile(r"^(?P<name>[^\d±]*[^\d±\s(,@-])[\s(,@]+(?P<condition>[-+±]?\d.*)$", re.DOTALL)
+
+
+def _parted(levels: tuple[str, ...]) -> tuple[str, ...]:
+    """A level such as "Part number -20 to +70 °C" as two: the name, and where its column holds."""
+    if len(levels) != 1 or meaning(levels[0]).head is not None:
+        return levels
+    match = _CONDITION.match(fold(levels[0]))
+    if match is None or meaning(match["name"]).head is None or condition_of(match["condition"]) == When():
+        return levels
+    return match["name"], match["condition"].rstrip(")")
+
+
 @lru_cache(maxsize=4096)
 def interpret(levels: tuple[str, ...]) -> Head:
     """Put the levels of one heading together: the label from one of them or from all, the bound and unit from any."""
+    levels = _parted(levels)
     known = [meaning(level) for level in levels]
     bound = next((BOUNDS[each.role] for each in reversed(known) if each.role in BOUNDS), None)
     unit = next((level for level in reversed(levels) if is_unit(level)), "")

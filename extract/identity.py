@@ -82,7 +82,7 @@ def _name_score(name: str, words: dict[str, list[str]]) -> int:
     if not 2 <= len(parts) <= 6 or any(any(c.isdigit() for c in part) for part in parts):
         return 0
     generic = {*words["generic"]}
-    if parts[0].casefold() in generic or all(part.casefold() in generic for part in parts):
+    if len(parts[0]) < 2 or parts[0].casefold() in generic or all(part.casefold() in generic for part in parts):
         return 0
     bare = [part.replace(".", "") for part in parts]
     if any(part in words["legal"] for part in bare[1:]) or name.endswith(("e.K.", "e.K", "e. K.")):
@@ -91,8 +91,8 @@ def _name_score(name: str, words: dict[str, list[str]]) -> int:
     return 3 if bare[-1].casefold() in trade and bare[0].casefold() not in trade else 0
 
 
-def maker_of(items: Sequence[Item], headers: Sequence[Text]) -> str | None:
-    """The company that the sheet names as its maker; None where it names none."""
+def maker_of(items: Sequence[Item], headers: Sequence[Text], *, sure: bool = False) -> str | None:
+    """The company that the sheet names as its maker; None where it names none. `sure` leaves out mere proper words."""
     labelled = [value for item in items if isinstance(item, Entry) and (value := _labelled(item, "maker"))]
     if labelled:
         return latin_or_whole(labelled[0])
@@ -106,7 +106,7 @@ def maker_of(items: Sequence[Item], headers: Sequence[Text]) -> str | None:
                 scores[name] += (sure + weight) if scores[name] == 0 else 1
     if scores:
         return max(scores, key=lambda name: (scores[name], len(name)))
-    return _repeated_name(texts, headers)
+    return None if sure else _repeated_name(texts, headers)
 
 
 def latin_or_whole(text: str) -> str:
@@ -198,6 +198,12 @@ def _score_tokens(text: Text, weight: int, scores: Counter[str]) -> None:
         score += 2 if text.heading else 0
         score += 1 if "-" in token or len(token) > 8 else 0
         scores[token] += score if scores[token] <= 0 else min(score, 2)
+
+
+def speaks_of_a_crystal(texts: Iterable[str]) -> bool:
+    """Whether any of the texts has a word for a quartz crystal."""
+    words = identity_words()["crystal"]["words"]
+    return any(word in fold(text).casefold() for text in texts for word in words)
 
 
 def texts_of(items: Iterable[Item]) -> list[str]:

@@ -137,9 +137,12 @@ def _key_run(lines: Sequence[Line], index: int, items: list[Item]) -> int:
 
 
 def _label_above(items: Sequence[Item]) -> Piece | None:
-    """The last line, if it is a label of a field."""
-    for item in reversed(items[-2:]):
-        if isinstance(item, Text) and is_label(key_label(item.piece.text)):
+    """The line above the choices, if it is a label or a short heading without a number."""
+    for item in reversed(items[-1:]):
+        if not isinstance(item, Text):
+            return None
+        text = key_label(item.piece.text)
+        if is_label(text) or (len(text) <= 60 and not any(character.isdigit() for character in text)):
             return Piece(item.piece.text, item.piece.where)
     return None
 

@@ -19,7 +19,7 @@ from extract.entries import Entry, Listing, Placed
 from extract.fields import field_of
 from extract.fold import fold
 from extract.heads import BOUNDS, Head, interpret, is_unit
-from extract.identity import package_in
+from extract.identity import package_in, speaks_of_a_crystal
 from extract.meaning import meaning, part_tokens
 from extract.model import When
 from extract.units import factor
@@ -45,8 +45,19 @@ def listing_drafts(listing: Listing) -> list[Draft]:
     columns = [_column(index, column.levels, listing.title) for index, column in enumerate(listing.columns)]
     _settle(columns, listing)
     if any(column.use == "part_number" for column in columns):
-        return list(_part_drafts(listing, columns))
+        return _crystals_among(list(_part_drafts(listing, columns)))
     return _series_drafts(listing, columns)
+
+
+def _crystals_among(drafts: list[Draft]) -> list[Draft]:
+    """In a list of mixed parts some rows say that they are crystals; the others are left out."""
+    crystals = [speaks_of_a_crystal(draft.texts) for draft in drafts]
+    if not any(crystals):
+        return drafts
+    for draft, crystal in zip(drafts, crystals, strict=True):
+        draft.other = not crystal
+        draft.crystal = crystal
+    return drafts
 
 
 def _column(index: int, levels: tuple[str, ...], title: str) -> _Column:
@@ -230,7 +241,8 @@ def _take_field(draft: Draft, cell: Placed, column: _Column) -> None:
 
 def _take_use(draft: Draft, cell: Placed, column: _Column) -> None:
     text = " ".join(cell.text.split())
-    draft.texts.append(text)
+    if column.use != "maker":
+        draft.texts.append(text)
     if wording.not_stated(text):
         return
     if wording.oscillator_words(column.head.levels[-1] if column.head.levels else ""):

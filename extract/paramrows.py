@@ -4,7 +4,7 @@ from __future__ import annotations
 
 import re
 from collections.abc import Iterator, Sequence
-from dataclasses import dataclass, field
+from dataclasses import dataclass, field, replace
 
 from extract.conditions import kinds_of
 from extract.documents.model import Cell
@@ -47,7 +47,8 @@ def parameter_entries(body: Sequence[Row], heads: Sequence[Head], title: str) ->
         rows = list(_rows(part, columns, title))
         _hand_down_labels(rows)
         for row in rows:
-            yield from _items(row)
+            for each in _unstacked(row):
+                yield from _items(each)
 
 
 def _halves(body: Sequence[Row], heads: Sequence[Head]) -> list[tuple[int, int]]:
@@ -262,6 +263,29 @@ def _nearer(row: _Row, above: _Row | None, below: _Row | None) -> _Row | None:
     if kinds and (kinds & below.kinds()):
         return below
     return above
+
+
+def _unstacked(row: _Row) -> list[_Row]:
+    """A cell with several labels, one a line, beside cells with as many lines: one row for each label."""
+    labels = [line for line in row.label_text.split("\n") if line.strip()]
+    if len(labels) < 2 or row.label is None or not all(_is_label(line) for line in labels):
+        return [row]
+    columns = [value.piece.text.split("\n") for value in row.values]
+    if not columns or any(len(lines) != len(labels) for lines in columns):
+        return [row]
+    rows = []
+    for index, label in enumerate(labels):
+        values = [
+            replace(value, piece=Piece(lines[index], value.piece.where, value.piece.confidence))
+            for value, lines in zip(row.values, columns, strict=True)
+        ]
+        rows.append(replace(row, label_text=label, values=values, symbol="", unit=_line(row.unit, index, len(labels))))
+    return rows
+
+
+def _line(text: str, index: int, count: int) -> str:
+    lines = text.split("\n")
+    return lines[index] if len(lines) == count else text
 
 
 def _choices(value: Value) -> list[tuple[str, Piece]]:

@@ -71,7 +71,7 @@ def _of_section(section: Section, shared: Draft | None, blocks: Blocks) -> list[
         if each.part_number is None:
             own.candidates += each.candidates
     if shared is not None:
-        own.maker = own.maker or maker_of(section.items, ())
+        own.maker = own.maker or maker_of(section.items, (), sure=True)
         _inherit(own, shared)
     if rows:
         stated = [each for each in own.candidates if each.source not in ("loose", "prose")]
@@ -189,7 +189,9 @@ def _finish(draft: Draft, maker: str | None, found: Found) -> None:
     if (reason := refusal(draft.texts, least=1)) is not None:
         _pass_over(found, draft.part_number, reason)
         return
-    stated = {candidate.field for candidate in draft.candidates if candidate.source != "loose"}
+    if draft.other:
+        return
+    stated = {candidate.field for candidate in draft.candidates if candidate.source != "loose" or draft.crystal}
     if len(stated & CRYSTAL_FIELDS) == 0 or (len(stated) < 2 and "frequency_mhz" not in stated):
         if draft.part_number and stated:
             _pass_over(found, draft.part_number, "something without a crystal's properties")

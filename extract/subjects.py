@@ -49,18 +49,16 @@ def _for_name(draft: Draft, name: str, names: list[str]) -> Draft:
         if name in own or not own:
             mine.append(_conditioned(each) if not own else replace(each, subject=""))
             package = package_in(each.subject.replace(name, "")) or package if own else package
-    return Draft(
-        part_number=name,
-        maker=draft.maker,
-        package=package,
-        modes=set(draft.modes),
-        cuts=set(draft.cuts),
-        resonance=set(draft.resonance),
-        attributes=dict(draft.attributes),
-        candidates=mine,
-        texts=list(draft.texts),
-        where=draft.where,
-    )
+    own = Draft(resonance=set(draft.resonance), candidates=mine, texts=list(draft.texts), where=draft.where)
+    entries = [entry for subject, each in draft.by_subject.items() if name in names_in(subject) for entry in each]
+    own.take_identity(entries)
+    for entry in entries:
+        own.take_mode_and_cut(entry.values[0].piece.text)
+    own.part_number = name
+    own.maker, own.package = own.maker or draft.maker, own.package or package
+    own.modes, own.cuts = own.modes or set(draft.modes), own.cuts or set(draft.cuts)
+    own.attributes = draft.attributes | own.attributes
+    return own
 
 
 def _conditioned(candidate: Candidate) -> Candidate:

@@ -12,7 +12,7 @@ from itertools import pairwise
 
 from extract.documents.model import Cell, Table
 from extract.entries import Column, Item, Listing, Piece, Text
-from extract.fold import key
+from extract.fold import fold, key
 from extract.heads import Head, interpret, is_unit
 from extract.keys import read_key_table, take_code_rows
 from extract.meaning import is_part_token, meaning
@@ -114,8 +114,12 @@ def is_head(row: Row) -> bool:
         return False
     known = [meaning(cell.text) for cell in cells]
     roles = {each.role for each in known if each.role}
-    heads = {each.head or (each.label.field if each.label else None) for each in known} - {None}
-    values = sum(each.value and not is_unit(cell.text) for cell, each in zip(cells, known, strict=True))
+    names = [_column_name(cell.text) for cell in cells]
+    heads = {name for name in names if name}
+    values = sum(
+        each.value and name is None and not is_unit(cell.text)
+        for cell, each, name in zip(cells, known, names, strict=True)
+    )
     if len(roles) >= 2 and values <= max(1, len(cells) // 2):
         return True
     if len(heads) >= 2 and values == 0:
@@ -126,6 +130,17 @@ def is_head(row: Row) -> bool:
     if known[0].role == "parameter" or known[0].identity == "part_number":
         return tokens >= 2 and tokens + len(roles) >= len(cells) - 2
     return len(heads) == 1 and len(cells) == 2 and is_unit(cells[1].text) and bool(known[0].head)
+
+
+def _column_name(text: str) -> str | None:
+    """What a column under this heading would hold; None for a text that begins like a value or only nearly is a label."""
+    head = interpret((text,))
+    if head.label is not None and not head.label.exact and meaning(text).value:
+        return None
+    return None if fold(text)[:1] in _VALUE_STARTS else head.name
+
+
+_VALUE_STARTS = frozenset("0123456789-+±≤≥<>~")
 
 
 def _goes_on(rows: list[Row], start: int, index: int) -> bool:
