@@ -7,7 +7,7 @@ word beside them is given to the group it speaks of (`attach`), and `bounds` mak
 from __future__ import annotations
 
 import re
-from dataclasses import replace
+from dataclasses import dataclass, replace
 from functools import lru_cache
 
 from extract.attach import Amount, attach, own_amounts, share_years
@@ -20,7 +20,6 @@ from extract.model import When
 from extract.number import Number, decide
 from extract.tokens import Token, tokens
 from extract.units import guessed, unit_at
-from extract.vocabulary import vocabulary
 
 __all__ = ["Value", "as_plus_minus", "decimal_mark", "field_for", "read_values"]
 
@@ -47,9 +46,9 @@ def read_values(
     unit
         As printed in the label, head or unit column ("kΩ", "±ppm", "×10⁻⁶/year"); a unit in the text goes before.
     bound
-        "min", "typ" or "max" where a heading or label says so, or several for as many numbers ("typ/max" over "10/100");
-        a word in the text goes before. For a ± field it gives
-        that bound alone ("10" under Max is max 10, not ±10): `as_plus_minus` makes both ends where the Min cell is empty.
+        "min", "typ" or "max" where a heading or label says so, or several for as many numbers ("typ/max" over
+        "10/100"); a word in the text goes before. For a ± field it gives that bound alone ("10" under Max is max 10,
+        not ±10): `as_plus_minus` makes both ends where the Min cell is empty.
     plus_minus
         The label or head prints ±.
     decimal
@@ -58,18 +57,26 @@ def read_values(
     Returns
     -------
     list of Value
-        In the order printed, one for each condition (band, temperature range, years, mode) or choice of ranges. What had
-        to be refused is a value without bounds (`empty`) whose doubts say why; it is there only if nothing else is.
+        In the order printed, one for each condition (band, temperature range, years, mode) or choice of ranges. What
+        had to be refused is a value without bounds (`empty`) whose doubts say why; it is there only if nothing else is.
     """
-    return list(_read(text, field, unit, bound, plus_minus, decimal))
+    return list(_read(text, field, _Given(unit, bound, plus_minus, decimal)))
+
+
+@dataclass(frozen=True, slots=True)
+class _Given:
+    """What the caller knows from label, head and sheet, as printed."""
+
+    unit: str | None
+    bound: str | None
+    plus_minus: bool
+    decimal: str | None
 
 
 @lru_cache(maxsize=65536)
-def _read(
-    text: str, field_name: str, unit: str | None, bound: str | None, plus_minus: bool, decimal: str | None
-) -> tuple[Value, ...]:
+def _read(text: str, field_name: str, given: _Given) -> tuple[Value, ...]:
     row = field_of(field_name)
-    heading = _heading(unit, bound, plus_minus, decimal, field_name)
+    heading = _heading(given, field_name)
     pieces = tokens(fold(text)[:LONGEST_AMOUNT], field_name)
     if len(pieces) > 1 and pieces[0].kind == "pm" and pieces[1].kind == "unit":
         heading = replace(heading, plus_minus=True, unit=(pieces[1].text, pieces[1].value))
@@ -90,16 +97,16 @@ def _read(
     return tuple(replace(value, raw=raw, when=joined(heading.when, value.when)) for value in values)
 
 
-def _heading(unit: str | None, bound: str | None, plus_minus: bool, decimal: str | None, field_name: str) -> Heading:
-    if not unit:
-        return Heading(None, bound, plus_minus, When(), decimal)
-    printed = fold(unit)
+def _heading(given: _Given, field_name: str) -> Heading:
+    if not given.unit:
+        return Heading(None, given.bound, given.plus_minus, When(), given.decimal)
+    printed = fold(given.unit)
     stripped = printed.strip("±()[] ")
     found = unit_at(stripped, field_name)
     when = when_of(stripped[found[2] :] if found else stripped)
     named = (found[0], found[1]) if found else None
     alien = stripped if named is None and key(stripped) and when == When() else ""
-    return Heading(named, bound, plus_minus or "±" in printed, when, decimal, alien)
+    return Heading(named, given.bound, given.plus_minus or "±" in printed, when, given.decimal, alien)
 
 
 def _give_units(amounts: list[Amount], pieces: list[Token], heading: Heading, row: Field) -> None:
@@ -120,9 +127,9 @@ def _give_units(amounts: list[Amount], pieces: list[Token], heading: Heading, ro
         group = amount.group
         high = group.high_unit.value if group.high_unit and not group.percent else scale
         low = group.low_unit.value if group.low_unit else high
-        amount.low = _scaled(amount, group.low, low, row, heading, name)
+        amount.low = _scaled(amount, group.low, (name, low), row, heading.decimal)
         if group.high is not None:
-            amount.high = _scaled(amount, group.high, 1.0 if group.percent else high, row, heading, name)
+            amount.high = _scaled(amount, group.high, (name, 1.0 if group.percent else high), row, heading.decimal)
 
 
 def _is_khz(amount: Amount, row: Field) -> bool:
@@ -137,8 +144,10 @@ def _no_unit(heading: Heading, row: Field) -> str:
     return f"unit not printed, taken as {row.unit}"
 
 
-def _scaled(amount: Amount, token: Token, scale: float, row: Field, heading: Heading, unit: str) -> float:
-    value, doubt = decide(token.number or Number("", 0.0), scale, row, decimal=heading.decimal, unit=unit)
+def _scaled(amount: Amount, token: Token, unit: tuple[str, float], row: Field, decimal: str | None) -> float:
+    """The number meant, in the field's unit; `unit` is what it is printed in, and its factor."""
+    name, scale = unit
+    value, doubt = decide(token.number or Number("", 0.0), scale, row, decimal=decimal, unit=name)
     if doubt and doubt not in amount.doubts:
         amount.doubts.append(doubt)
     return float(f"{(-value if token.meaning == '-' else value) * scale:.12g}")
@@ -167,7 +176,9 @@ def _refused(items: list[Item], pieces: list[Token], row: Field) -> list[Value]:
 
 
 # A lone number in one of these is a slip or another field's; volts, degrees and MHz alone are conditions.
-_FIELD_KINDS = frozenset({"resistance", "capacitance", "relative", "power", "inductance", "pulling", "parabola", "current"})
+_FIELD_KINDS = frozenset(
+    {"resistance", "capacitance", "relative", "power", "inductance", "pulling", "parabola", "current"}
+)
 
 
 def as_plus_minus(value: Value) -> Value:
@@ -178,7 +189,9 @@ def as_plus_minus(value: Value) -> Value:
     return replace(value, min=-abs(size), typ=None, max=abs(size), bare=False)
 
 
-_PER_SQUARE = re.compile(r"/\s?\(?\s?(?:Δ\s?)?(?:°\s?C?|C|K|T|deg\s?C?)\s?\)?\s?\^?2|/\s?\(?Δ?°?[CK]\)?\s?\^2|°C\^?-2", re.IGNORECASE)
+_PER_SQUARE = re.compile(
+    r"/\s?\(?\s?(?:Δ\s?)?(?:°\s?C?|C|K|T|deg\s?C?)\s?\)?\s?\^?2|/\s?\(?Δ?°?[CK]\)?\s?\^2|°C\^?-2", re.IGNORECASE
+)
 
 
 def field_for(text: str, field: str) -> str:
@@ -193,7 +206,7 @@ _COMMA = re.compile(r"(?<![\d.,])(?:\d+,(?:\d{1,2}|\d{4,})|0,\d+)(?![\d.,])")
 
 
 def decimal_mark(text: str) -> str | None:
-    """The decimal mark that a whole sheet uses, from the numbers in which it can be nothing else; None where they differ."""
+    """The decimal mark of a whole sheet, from the numbers in which it can be nothing else; None where they differ."""
     folded = fold(text)
     points, commas = len(_POINT.findall(folded)), len(_COMMA.findall(folded))
     if points > 3 * commas:

@@ -13,8 +13,8 @@ from extract.tokens import Token
 _SPEAKING = frozenset({"bound", "request", "standard", "from", "years", "mode"})
 # Between a number without a unit and the number whose unit it shares stands nothing but these.
 _LIST_MARKS = frozenset(
-    {"sep", "or", "open", "close", "bound", "standard", "compare", "to", "unit", "slash", "number", "pm", "line", "years"}
-    | {"equals", "colon", "mode", "from", "series"}
+    {"sep", "or", "open", "close", "bound", "standard", "compare", "to", "unit", "slash", "number", "pm", "line"}
+    | {"years", "equals", "colon", "mode", "from", "series"}
 )  # fmt: skip
 
 
@@ -45,7 +45,12 @@ def own_amounts(items: list[Item], pieces: list[Token], row: Field) -> list[Amou
     found: list[Amount] = []
     for position, item in enumerate(items):
         group = item.group
-        if group is None or group.foreign is not None or group.low.glued or (group.high is not None and group.high.glued):
+        if (
+            group is None
+            or group.foreign is not None
+            or group.low.glued
+            or (group.high is not None and group.high.glued)
+        ):
             continue
         if group.before.startswith("symbol") or (group.before == "at" and found and not group.bound):
             continue
@@ -100,30 +105,37 @@ def _targets(items: list[Item], amounts: list[Amount], position: int) -> list[Am
     """The amounts that the item at `position` speaks of.
 
     Of its own segment (between commas, brackets, lines) the only one, or of several the one after it where such words
-    stand first there, else the one before. Alone in its segment: those that follow on its line where nothing precedes it
-    there, else the last one before, else the next.
+    stand first there, else the one before. Alone in its segment: those that follow on its line where nothing precedes
+    it there, else the last one before, else the next.
     """
     item, sort = items[position], _sort_of(items[position])
-    before = [amount for amount in amounts if amount.position < position]
-    after = [amount for amount in amounts if amount.position > position]
     if sort == "from":
-        return after[:1]
+        return [amount for amount in amounts if amount.position > position][:1]
     own = [amount for amount in amounts if items[amount.position].segment == item.segment]
     if len(own) == 1:
         return own
-    if own:
-        first = next(i for i, each in enumerate(items) if each.segment == item.segment and _sort_of(each) == sort)
-        if first < own[0].position:
-            return [amount for amount in own if amount.position > position][:1]
-        return [amount for amount in own if amount.position < position][-1:]
-    same_line = [amount for amount in before if items[amount.position].line == item.line]
-    if sort in ("request", "standard"):
+    return _of_several(items, own, position, sort) if own else _of_none(items, amounts, position, sort)
+
+
+def _of_several(items: list[Item], own: list[Amount], position: int, sort: str) -> list[Amount]:
+    """The one after the word where such words stand first in the segment, else the one before it."""
+    segment = items[position].segment
+    first = next(i for i, each in enumerate(items) if each.segment == segment and _sort_of(each) == sort)
+    if first < own[0].position:
+        return [amount for amount in own if amount.position > position][:1]
+    return [amount for amount in own if amount.position < position][-1:]
+
+
+def _of_none(items: list[Item], amounts: list[Amount], position: int, sort: str) -> list[Amount]:
+    """No amount in the word's own segment: the last one before it, or those that follow it on its line or after."""
+    before = [amount for amount in amounts if amount.position < position]
+    after = [amount for amount in amounts if amount.position > position]
+    same_line = [amount for amount in before if items[amount.position].line == items[position].line]
+    if same_line or sort in ("request", "standard"):
         return same_line[-1:]
-    if not same_line and _value_follows_on_line(items, after, item.line):
+    if not before or _value_follows_on_line(items, after, items[position].line):
         return _until_next(items, after, position, sort)
-    if same_line:
-        return same_line[-1:]
-    return before[-1:] or _until_next(items, after, position, sort)
+    return before[-1:]
 
 
 def _value_follows_on_line(items: list[Item], after: list[Amount], line: int) -> bool:
@@ -131,7 +143,7 @@ def _value_follows_on_line(items: list[Item], after: list[Amount], line: int) ->
 
 
 def _until_next(items: list[Item], after: list[Amount], position: int, sort: str) -> list[Amount]:
-    """A mode, band or year count at the head speaks of all that follows up to the next of its sort; a bound of the next."""
+    """A mode, band or year count at the head speaks of all up to the next of its sort; a bound of the next number."""
     if sort == "bound":
         return after[:1]
     end = next((i for i in range(position + 1, len(items)) if _sort_of(items[i]) == sort), len(items))

@@ -19,7 +19,7 @@ _DEPENDS_ON_LOAD = frozenset(
     {"esr_ohm", "pulling_sensitivity_ppm_per_pf", "frequency_tolerance_ppm", "drive_level_uw", "frequency_mhz", ""}
 )
 # A single frequency behind "at" is a band of resistance, and of nothing else: C0 is measured "at 1 MHz".
-_DEPENDS_ON_FREQUENCY = frozenset({"esr_ohm", "drive_level_uw", "frequency_tolerance_ppm", "frequency_stability_ppm", ""})
+_DEPENDS_ON_FREQUENCY = frozenset({"esr_ohm", "drive_level_uw", "frequency_tolerance_ppm", "frequency_stability_ppm"})
 _KINDS = {"frequency": "frequency_mhz", "temperature": "operating_temperature_c", "capacitance": "load_capacitance_pf"}
 
 
@@ -34,7 +34,7 @@ def joined(one: When, other: When) -> When:
 
 @lru_cache(maxsize=16384)
 def read_when(text: str) -> When:
-    """The conditions of validity printed in `text`: "-20 to +70 °C", "12 ≤ f < 16 MHz", "CL = 12.5 pF", "10 years", "3rd OT".
+    """Where the value beside `text` holds: "-20 to +70 °C", "12 ≤ f < 16 MHz", "CL = 12.5 pF", "10 years", "3rd OT".
 
     Reference and measuring conditions ("25 °C ±3 °C", "at 1 MHz", "100 V DC") restrict nothing and give an empty When.
     """
@@ -60,24 +60,28 @@ def condition(group: Group, field: str, *, own: str = "") -> When:
     `own` is the kind of quantity that the group's own units are of, where the text was read for conditions alone.
     """
     kind = group.foreign or (own if group.low_unit or group.high_unit else "")
-    if kind not in _KINDS or group.low.glued:
-        if group.before == "symbol load_capacitance_pf" and field in _DEPENDS_ON_LOAD and not kind:
-            load = _size(group.low, None, "load_capacitance_pf")
-            return When(load_capacitance_pf=(load, load))
+    if not kind and group.before == "symbol load_capacitance_pf" and field in _DEPENDS_ON_LOAD:
+        load = _size(group.low, None, "load_capacitance_pf")
+        return When(load_capacitance_pf=(load, load))
+    ends = _ends(group, _KINDS[kind], kind) if kind in _KINDS and not group.low.glued else None
+    if ends is None or not _limits(group, kind, field):
         return When()
-    ends = _ends(group, _KINDS[kind], kind)
-    if ends is None:
-        return When()
-    single = group.shape == "single" and group.bound is None
+    return When(**{_KEYS[kind]: ends})
+
+
+_KEYS = {"frequency": "frequency_mhz", "temperature": "temperature_c", "capacitance": "load_capacitance_pf"}
+
+
+def _limits(group: Group, kind: str, field: str) -> bool:
+    """Whether the quantity restricts the value, or only says how it was measured or what it refers to."""
     if kind == "temperature":
-        return When() if single or group.shape != "range" else When(temperature_c=ends)
-    if kind == "frequency":
-        if group.shape not in ("range", "single") or (single and group.before == "at" and field not in _DEPENDS_ON_FREQUENCY - {""}):
-            return When()
-        return When(frequency_mhz=ends)
-    if field not in _DEPENDS_ON_LOAD or group.shape not in ("range", "single"):
-        return When()
-    return When(load_capacitance_pf=ends)
+        return group.shape == "range"
+    if group.shape not in ("range", "single"):
+        return False
+    if kind == "capacitance":
+        return field in _DEPENDS_ON_LOAD
+    measured_at = group.shape == "single" and group.bound is None and group.before == "at"
+    return not measured_at or field in _DEPENDS_ON_FREQUENCY
 
 
 def _ends(group: Group, field: str, kind: str) -> tuple[float, float] | None:
@@ -107,7 +111,7 @@ def _size(number: Token, unit: Token | None, field: str) -> float:
 def read_band(text: str, unit: str | None = None) -> tuple[float, float] | None:
     """A frequency band as printed, in MHz; None where `text` is none.
 
-    "12.001 - 20.000", "8 ~ 11.2892MHz", "16.0 MHz ≤ f < 18.0 MHz", "13560 to 15999kHz", "below 10 MHz", a single "12.000".
+    "12.001 - 20.000", "8 ~ 11.2892MHz", "16.0 MHz ≤ f < 18.0 MHz", "13560 to 15999kHz", "below 10 MHz", "12.000" alone.
     `unit` is the head's ("MHz", "kHz"). Without any unit a number too great for MHz is kHz.
     """
     when = when_of(fold(text) if unit is None else _with_unit(fold(text), unit))

@@ -62,7 +62,9 @@ def values_of(amounts: list[Amount], row: Field, heading: Heading) -> list[Value
     for amount in amounts:
         if not amount.request:
             clusters.setdefault(amount.when, []).append(amount)
-    return [replace(value, when=when) for when, members in clusters.items() for value in _together(members, row, heading)]
+    return [
+        replace(value, when=when) for when, members in clusters.items() for value in _together(members, row, heading)
+    ]
 
 
 def _together(amounts: list[Amount], row: Field, heading: Heading) -> list[Value]:
@@ -89,7 +91,7 @@ def _together(amounts: list[Amount], row: Field, heading: Heading) -> list[Value
 
 
 def _without_zero(amounts: list[Amount], row: Field) -> list[Amount]:
-    """ "0 | 5" of a quantity that is never zero is a lower end that says nothing, and a limit."""
+    """Of a quantity that is never zero, "0 | 5" is a lower end that says nothing, and a limit."""
     if row.sign != "positive" or len(amounts) != 2 or amounts[0].low != 0 or not all(_is_loose(a) for a in amounts):
         return amounts
     amounts[1].bound = "max"
@@ -136,7 +138,9 @@ def _single(amount: Amount, row: Field, heading: Heading) -> Value:
     if shape == "pm":
         return _plus_minus(amount, row, doubts)
     if shape == "grades":
-        return Value(options=(amount.low, amount.high or amount.low), doubts=(*doubts, "a span of grades to order from"))
+        return Value(
+            options=(amount.low, amount.high or amount.low), doubts=(*doubts, "a span of grades to order from")
+        )
     if shape == "centre" and amount.high is not None:
         return _centre(amount, row, doubts)
     if shape == "range" and amount.high is not None:
@@ -162,7 +166,9 @@ def _centre(amount: Amount, row: Field, doubts: tuple[str, ...]) -> Value:
         middle, doubts = -middle, (*doubts, _LOST_MINUS)
     if row.sign == "symmetric" and middle:
         doubts = (*doubts, "a centre with a tolerance is unusual here")
-    return Value(min=round(middle - half, row.decimals), typ=middle, max=round(middle + half, row.decimals), doubts=doubts)
+    return Value(
+        min=round(middle - half, row.decimals), typ=middle, max=round(middle + half, row.decimals), doubts=doubts
+    )
 
 
 _LOST_MINUS = "printed without a minus sign, taken as negative"
@@ -177,7 +183,13 @@ def _range(amount: Amount, row: Field, heading: Heading, doubts: tuple[str, ...]
     if row.sign in ("positive", "magnitude") and low < 0:
         low, high, doubts = abs(low), abs(high), (*doubts, *_unless_magnitude(row))
     if low > high and row.name == "esr_ohm":
-        return Value(max=low, doubts=(*doubts, f"runs from {low:g} Ω at the low end of the frequency range to {high:g} Ω at the high end"))
+        return Value(
+            max=low,
+            doubts=(
+                *doubts,
+                f"runs from {low:g} Ω at the low end of the frequency range to {high:g} Ω at the high end",
+            ),
+        )
     low, high = min(low, high), max(low, high)
     if amount.bound == "typ":
         return Value(doubts=(*doubts, f"typical is printed as a range, {low:g} to {high:g} {row.unit}"))
@@ -204,7 +216,7 @@ def _number(amount: Amount, row: Field, heading: Heading, doubts: tuple[str, ...
 
 
 def _magnitude(size: float, amount: Amount, heading: Heading, doubts: tuple[str, ...]) -> Value:
-    """A ppm figure without a sign: ± where a heading prints it or a word in the text bounds it, else a guess that is said."""
+    """A ppm figure without a sign: ± where a heading prints it, the heading's bound, else a guess that is said."""
     if "typ" in (amount.bound, heading.bound) and amount.bound in (None, "typ"):
         return Value(typ=size, doubts=doubts)
     if heading.plus_minus:

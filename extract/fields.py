@@ -13,7 +13,7 @@ Sign = Literal["positive", "magnitude", "symmetric", "either", "negative"]
 
 @dataclass(frozen=True, slots=True)
 class Field:
-    """What is known of a field before any sheet is read. `mhz` and `fork` are (low, high) in `unit`, magnitudes for ppm.
+    """What is known of a field before any sheet is read. `mhz`, `fork`: (low, high) in `unit`, magnitudes for ppm.
 
     `limit` is the bound that its one number usually is; `choice` says that a list of numbers is the buyer's choice.
     """

@@ -37,7 +37,9 @@ _ONE_FOR_ONE = {
     **dict.fromkeys("】〕〗", "]"),
     **dict.fromkeys("〈《", "<"),
     **dict.fromkeys("〉》", ">"),
-    **dict.fromkeys("\u00a0\u2000\u2001\u2002\u2003\u2004\u2005\u2006\u2007\u2008\u2009\u200a\u202f\u205f\u3000\t", " "),
+    **dict.fromkeys(
+        "\u00a0\u2000\u2001\u2002\u2003\u2004\u2005\u2006\u2007\u2008\u2009\u200a\u202f\u205f\u3000\t", " "
+    ),
     **dict.fromkeys("\u00ad\u200b\u200c\u200d\u2060\ufeff", ""),
     "µ": "μ",
     "Ω": "Ω",
@@ -59,7 +61,18 @@ _SUPERSCRIPTS = str.maketrans("⁰¹²³⁴⁵⁶⁷⁸⁹⁺⁻", "0123456789+-
 _SUPERSCRIPT_RUN = re.compile("[⁻⁺]?[¹²³⁴⁵⁶⁷⁸⁹][⁰¹²³⁴⁵⁶⁷⁸⁹]*|[⁻⁺][⁰¹²³⁴⁵⁶⁷⁸⁹]+")
 
 # UTF-8 read as Windows-1252, the commonest mojibake of pasted mail and shop lists.
-_MOJIBAKE = {"Â±": "±", "Â°": "°", "Âµ": "μ", "Î¼": "μ", "Î©": "Ω", "â„¦": "Ω", "Ã—": "×", "â€“": "-", "â‰¤": "≤", "Â²": "²"}
+_MOJIBAKE = {
+    "Â±": "±",
+    "Â°": "°",
+    "Âµ": "μ",
+    "Î¼": "μ",
+    "Î©": "Ω",
+    "â„¦": "Ω",
+    "Ã—": "×",
+    "â€“": "-",
+    "â‰¤": "≤",
+    "Â²": "²",
+}
 _MOJIBAKE_RUN = re.compile("|".join(map(re.escape, _MOJIBAKE)))
 
 _SPELT = [
@@ -79,7 +92,7 @@ def fold(text: str) -> str:
     """`text` with one glyph for each sign: "－４０℃～＋８５℃" and "−40 °C – +85 °C" come out in the same characters.
 
     Dashes and minus signs become "-", tildes "~", dots of a range "…", micro "μ", ohm "Ω", "+/-" "±", full-width
-    characters their plain ones, "㏀" "kΩ", "℃" "°C", a raised exponent "^-6", Symbol-font code points what the page shows.
+    characters their plain ones, "㏀" "kΩ", "℃" "°C", a raised exponent "^-6", Symbol-font codes what the page shows.
     Runs of spaces become one, line breaks stay.
     """
     if "Â" in text or "Î" in text or "â" in text or "Ã" in text:

@@ -1,4 +1,4 @@
-"""Numbers that belong together: a range, ±, centre and tolerance, a pair of signs; each with its unit and what stands by it."""
+"""Numbers that belong together: a range, ±, centre and tolerance, a pair of signs; each with its unit."""
 
 from __future__ import annotations
 
@@ -44,7 +44,7 @@ class Group:
 
 @dataclass(slots=True)
 class Item:
-    """A group, or a word that says something of one, in the order printed. `segment` counts commas, brackets and lines."""
+    """A group, or a word that says something of one, in the order printed. `segment` counts commas, brackets, lines."""
 
     segment: int
     line: int
@@ -98,7 +98,7 @@ class _Reader:
         self.items.append(Item(self.segment, self.line, word=token))
 
     def _skip_reference(self) -> None:
-        """ "See table 1", "note 3": the number is no value."""
+        """The number of "see table 1" is no value."""
         while self.at < len(self.tokens) and self.kind() not in ("sep", "line", "close"):
             self.take()
 
@@ -109,8 +109,9 @@ class _Reader:
             made.bound = "max" if sign.meaning == "<" else "min"
 
     def _limits_foreign(self) -> bool:
-        """ "below 16 MHz", "from 12 MHz" beside a value: a word that bounds the condition, not the value."""
-        return self.kind(1) == "number" and self.kind(2) == "other" and self.kind(3) not in ("to", "pm")
+        """In "60 Ω below 16 MHz" the word bounds the condition, not the value."""
+        units = ("other",) if self.field_name else _UNITS
+        return self.kind(1) == "number" and self.kind(2) in units and self.kind(3) not in ("to", "pm")
 
     def _limited(self, kind: str) -> None:
         word = self.take()
@@ -195,7 +196,7 @@ class _Reader:
         return made
 
     def _other_quantity(self, unit: Token | None) -> bool:
-        """ "32.768 kHz ±20 ppm": a tolerance in a unit of its own is no half width; in percent it is."""
+        """Whether ± begins another quantity ("32.768 kHz ±20 ppm"); in percent or the same unit it is a half width."""
         if unit is None or self.kind(2) not in _UNITS:
             return False
         half = self.tokens[self.at + 2]
@@ -203,7 +204,9 @@ class _Reader:
         return not percent and (half.kind, half.meaning) != (unit.kind, unit.meaning)
 
     def _bracket_then_pm(self) -> bool:
-        return self.kind() == "open" and self.kind(1) == "pm" and self.kind(2) == "number" and self.field_name not in _PPM
+        return (
+            self.kind() == "open" and self.kind(1) == "pm" and self.kind(2) == "number" and self.field_name not in _PPM
+        )
 
     def _range_follows(self) -> bool:
         if self.between and self.kind() == "or" and self.kind(1) == "number":
@@ -214,11 +217,16 @@ class _Reader:
         )
 
     def _letter_between(self) -> bool:
-        """ "3.5 MHz ≤ f < 4.0 MHz"."""
-        return self.kind() == "compare" and self.kind(1) == "word" and self.kind(2) == "compare" and self.kind(3) == "number"
+        """Whether a letter stands between two ends ("3.5 MHz ≤ f < 4.0 MHz")."""
+        return (
+            self.kind() == "compare"
+            and self.kind(1) == "word"
+            and self.kind(2) == "compare"
+            and self.kind(3) == "number"
+        )
 
     def _signs_follow(self, low: Token) -> bool:
-        """ "-5/+15", "+15 -5", "-40 +85" (the range sign lost); for temperatures "-40/85" as well."""
+        """Whether two signs make a pair: "-5/+15", "-40 +85" (the range sign lost); of temperatures also "-40/85"."""
         ahead = 1 if self.kind() == "slash" else 0
         if self.kind(ahead) != "number":
             return False

@@ -1,4 +1,4 @@
-"""A label taken apart: symbol, unit, bound words, ±, conditions and footnote marks off, the wording itself left over."""
+"""A label taken apart: unit, bound words, ±, conditions and footnote marks off, the wording itself left over."""
 
 from __future__ import annotations
 
@@ -7,7 +7,7 @@ from dataclasses import dataclass, field
 from functools import cache
 
 from extract.band import joined, read_when
-from extract.fold import fold, key
+from extract.fold import key
 from extract.model import When
 from extract.runs import IDEOGRAPHS
 from extract.tokens import years_pattern
@@ -42,7 +42,7 @@ class Parts:
 
 
 def take_apart(folded: str) -> Parts:
-    """The parts of a folded label. The core keeps its case; "typical" and "nominal" stay in it (a wording may hold them)."""
+    """The parts of a folded label; "typical" and "nominal" stay in the core, since a wording may hold them."""
     text = _TORN.sub("", folded).replace("\n", " ")
     text = _FOOTNOTE.sub("", _NUMBERING.sub("", text)).rstrip(EDGE)
     text = _FOOTNOTE.sub("", text)
@@ -117,7 +117,10 @@ _RANGE = r"(?=[+-]?\d+(?:[.,]\d+)?\s?(?:°\s?C|C|[MkK]Hz)?\s?(?:~|…|to|bis|-|/
 def _condition_pattern() -> re.Pattern[str]:
     """A condition at the end: "@ 25 °C", "at 100 V DC", "bei 25 °C", ", 25 °C"."""
     words = [_standing_alone(word) for word in vocabulary().phrases.get("at", ()) if word not in ("over", "in")]
-    return re.compile(rf"\s*(?:[,;/]|-(?=\s))?\s*(?:@|{'|'.join(words)}|(?=[+-]?\d+\s?°\s?C)|{_RANGE})\s?(?:dc|ac|ta|tj|f|cl)?\s?=?\s?[+-]?\d.*$", re.IGNORECASE)
+    return re.compile(
+        rf"\s*(?:[,;/]|-(?=\s))?\s*(?:@|{'|'.join(words)}|(?=[+-]?\d+\s?°\s?C)|{_RANGE})\s?(?:dc|ac|ta|tj|f|cl)?\s?=?\s?[+-]?\d.*$",
+        re.IGNORECASE,
+    )
 
 
 def _take_condition(parts: Parts, text: str) -> str:
@@ -157,7 +160,7 @@ def take_bound(parts: Parts) -> None:
 
 
 def _cjk_bound(parts: Parts) -> bool:
-    """ "最大" and its like are written without a space before or after the wording."""
+    """Take off a bound word in ideographs ("最大"), written without a space; whether there was one."""
     for word in vocabulary().phrases.get("max", ()) + vocabulary().phrases.get("min", ()):
         if not IDEOGRAPHS.match(word):
             continue

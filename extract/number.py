@@ -1,4 +1,4 @@
-"""Printed numbers: decimal point or comma, thousands in points, commas, spaces or apostrophes, and which of them is meant."""
+"""Printed numbers: decimal mark or thousands, in points, commas, spaces or apostrophes, and which is meant."""
 
 from __future__ import annotations
 

@@ -1,4 +1,4 @@
-"""Runs of words in a text that a table of wordings knows: the longest from each start, whatever stands between the words."""
+"""Runs of words that a table of wordings knows: the longest from each start, whatever stands between the words."""
 
 from __future__ import annotations
 

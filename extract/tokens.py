@@ -15,7 +15,7 @@ from extract.vocabulary import vocabulary
 
 @dataclass(slots=True)
 class Token:
-    """One piece of folded text. What `meaning` holds depends on `kind`:
+    """One piece of folded text; what `meaning` holds depends on `kind`.
 
     number: its sign ("", "+", "-"); bound: "min", "typ", "max"; compare: "<" or ">"; mode: its name; other: the kind of
     quantity. `value` is the `Number`, and for own units and others the factor, for years the number of years.
@@ -33,13 +33,14 @@ class Token:
 
 # Which meaning a word has that stands in several lists of the wording files: the first of these.
 _WORD_KINDS = (
-    "first_year", "per_year", "others", "request", "standard", "min", "typ", "max", "series", "plus_minus", "see", "between", "to", "or",
-    "from", "for", "at", "minus", "plus", "above", "below",
+    "first_year", "per_year", "others", "request", "standard", "min", "typ", "max", "series", "plus_minus", "see",
+    "between", "to", "or", "from", "for", "at", "minus", "plus", "above", "below",
 )  # fmt: skip
 _MARKS = {
-    "±": "pm", "~": "to", "…": "to", "<": "compare", "≤": "compare", ">": "compare", "≥": "compare", ",": "sep", ";": "sep",
-    "、": "sep", "。": "sep", "|": "sep", "\n": "line", "/": "slash", "(": "open", "[": "open", "{": "open", ")": "close",
-    "]": "close", "}": "close", "@": "at", ":": "colon", "=": "equals", "×": "times", "*": "star", "&": "or", "∞": "series",
+    "±": "pm", "~": "to", "…": "to", "<": "compare", "≤": "compare", ">": "compare", "≥": "compare",
+    ",": "sep", ";": "sep", "、": "sep", "。": "sep", "|": "sep", "\n": "line", "/": "slash",
+    "(": "open", "[": "open", "{": "open", ")": "close", "]": "close", "}": "close",
+    "@": "at", ":": "colon", "=": "equals", "×": "times", "*": "star", "&": "or", "∞": "series",
 }  # fmt: skip
 _COMPARE = {"<": "<", "≤": "<", ">": ">", "≥": ">"}
 _WORD = re.compile(r"[^\W\d_](?:[\w.^]*\w)?", re.UNICODE)
@@ -80,7 +81,7 @@ def _phrase_at(lower: str, at: int) -> tuple[str, int] | None:
 
 @cache
 def years_pattern() -> re.Pattern[str]:
-    """ "10 years", "10-year", "10年" in any language, at the start of a number."""
+    """A number of years in any language: "10 years", "10-year", "10年"."""
     names = sorted(vocabulary().phrases.get("years", ("years",)), key=len, reverse=True)
     words = "|".join(re.escape(name) + ("(?![a-z])" if name[-1].isascii() else "") for name in names)
     return re.compile(rf"(\d{{1,2}})\s?-?(?:\.\s?)?(?:{words})", re.IGNORECASE)
@@ -104,7 +105,7 @@ def tokens(text: str, field: str) -> list[Token]:
 
 
 def _spoken_signs(found: list[Token]) -> list[Token]:
-    """ "minus 40 to plus 85"."""
+    """Give numbers the signs that are written as words: "minus 40 to plus 85"."""
     for word, number in pairwise(found):
         if word.kind in ("minus", "plus") and number.kind == "number" and not number.meaning:
             number.meaning = "-" if word.kind == "minus" else "+"
@@ -195,16 +196,14 @@ def _numbers(text: str, start: int, found: re.Match[str], sign: str, field: str,
 
 
 def _torn_exponent(printed: str, text: str, end: int, field: str) -> tuple[str, tuple[str, float, int]] | None:
-    """ "2010-6" and "50 10-6": the times sign of ×10⁻⁶ is lost, and with it the gap before the ten."""
+    """Number and unit of "2010-6": the times sign of ×10⁻⁶ is lost, and with it the gap before the ten."""
     if not printed.endswith("10") or len(printed) < 3:
         return None
     unit = unit_at(text, field, end - 2)
     return (printed[:-2], unit) if unit and unit[0].startswith("10") else None
 
 
-def _unit_after(
-    text: str, end: int, field: str, unit: tuple[str, float, int] | None, number: Token
-) -> list[Token]:
+def _unit_after(text: str, end: int, field: str, unit: tuple[str, float, int] | None, number: Token) -> list[Token]:
     if unit is not None:
         return [Token("unit", unit[0], end, unit[2], value=unit[1])]
     if power := _TIMES_TEN.match(text, end):

@@ -22,7 +22,7 @@ _END = re.compile(
 
 @dataclass(frozen=True, slots=True)
 class Unit:
-    """One spelling: its kind of quantity, its factor to the base unit, and its section in the table (sizes, bare, guessed)."""
+    """One spelling: its kind of quantity, its factor to the base unit, its section (sizes, bare, guessed)."""
 
     kind: str
     to_base: float
@@ -82,7 +82,7 @@ def kind_of(field_name: str) -> Kind:
 
 @lru_cache(maxsize=4096)
 def factor(printed_unit: str, field: str) -> float | None:
-    """What one `printed_unit` is in the unit of `field` ("kΩ" for `esr_ohm`: 1000.0); None where it is no unit of it."""
+    """What one `printed_unit` is in the unit of `field` ("kΩ" for `esr_ohm`: 1000.0); None where it is none of it."""
     kind = kind_of(field)
     unit = kind.unit(printed_unit)
     return None if unit is None else _rounded(unit.to_base * kind.fields[field])

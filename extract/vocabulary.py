@@ -18,8 +18,8 @@ from extract.fold import fold, key
 from extract.runs import Table
 
 _SECTIONS = {
-    "labels", "symbols", "shared", "shared_symbols", "weak", "traps", "bounds", "roles", "identity", "attributes", "modes",
-    "mode_codes", "cuts", "phrases", "oscillator", "language", "yearly",
+    "labels", "symbols", "shared", "shared_symbols", "weak", "traps", "bounds", "roles", "identity", "attributes",
+    "modes", "mode_codes", "cuts", "phrases", "oscillator", "language", "yearly",
 }  # fmt: skip
 
 
@@ -36,7 +36,8 @@ class Vocabulary:
     """Words of all languages together. Every table but `phrases` goes from a key to a meaning.
 
     `weak` are labels that decide only alone in their cell, `weak_symbols` symbols that decide only in a symbol column,
-    `filling` words that may be left over beside a wording, `yearly` ageing labels that say "in one year" themselves. `phrases` holds, for each meaning, the wordings as folded and lower case, longest first, for use in patterns.
+    `filling` words that may be left over beside a wording, `yearly` ageing labels that say "in one year" themselves.
+    `phrases` holds, for each meaning, the wordings as folded and in lower case, longest first.
     """
 
     languages: tuple[str, ...] = ()
@@ -93,7 +94,17 @@ def gather(tables: Iterable[tuple[str, dict[str, Any]]]) -> Vocabulary:
             _claim_fields(found[section], table.get(section, {}), name)
         for section in ("shared", "shared_symbols"):
             found[section] |= {key(word): tuple(names) for word, names in table.get(section, {}).items()}
-        for section in ("traps", "bounds", "roles", "identity", "attributes", "modes", "mode_codes", "cuts", "oscillator"):
+        for section in (
+            "traps",
+            "bounds",
+            "roles",
+            "identity",
+            "attributes",
+            "modes",
+            "mode_codes",
+            "cuts",
+            "oscillator",
+        ):
             for meaning, words in table.get(section, {}).items():
                 for word in words:
                     found[section].setdefault(key(word) or fold(word), meaning)

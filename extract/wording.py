@@ -1,4 +1,4 @@
-"""What a printed label or head means, in any language of `wording/`: its field, its bound, the unit and conditions in it."""
+"""What a printed label or head means, in any language of `wording/`: its field, bound, unit and conditions."""
 
 from __future__ import annotations
 
@@ -15,15 +15,17 @@ from extract.vocabulary import vocabulary
 
 LONGEST_LABEL = 160
 LONGEST_HEAD = 60
+# In words; a longer one makes a sentence of a label.
+LONGEST_CONDITION = 6
 
 
 @dataclass(frozen=True, slots=True)
 class Label:
     """A label read.
 
-    `bound` is "min", "typ", "max", or several in the order of the numbers below ("typ/max"), which `read_values` takes as
-    it is. `unit` is as printed; `plus_minus` says that the label itself prints ±; `exact` is False for a partial or misspelt
-    match; `rest` is what was left over; `symbol` says that only a symbol (CL, R1) stood there, no wording.
+    `bound` is "min", "typ", "max", or several in the order of the numbers below ("typ/max"), which `read_values` takes
+    as it is. `unit` is as printed; `plus_minus`: the label prints ±; `exact` is False for a partial or misspelt match;
+    `rest` is what was left over; `symbol` says that only a symbol (CL, R1) stood there, no wording.
     """
 
     field: str
@@ -98,7 +100,11 @@ def _exact(parts: Parts) -> Label | None:
     tokens = parts.core.split()
     for at, rest in ((-1, tokens[:-1]), (0, tokens[1:])):
         name = " ".join(rest)
-        if rest and vocabulary().bounds.get(key(tokens[at])) == "typ" and (field := _named(name) or _symbol(name, parts)):
+        if (
+            rest
+            and vocabulary().bounds.get(key(tokens[at])) == "typ"
+            and (field := _named(name) or _symbol(name, parts))
+        ):
             parts.bound = parts.bound or "typ"
             return _label(parts, field, symbol=not _named(name))
     return None
@@ -108,7 +114,7 @@ _SAFE_LOWER = re.compile(r"esr|cl|[crlf]\d")
 
 
 def _symbol(text: str, parts: Parts) -> str | None:
-    """As `symbol_of`, for cells that may hold anything: no single letter but Q, no lower-case word, none that is weak."""
+    """As `symbol_of`, for cells that may hold anything: no single letter but Q, no lower-case word, no weak one."""
     wanted, printed = key(text), text.strip(EDGE)
     if not wanted or len(wanted) > 12 or (len(wanted) == 1 and printed != "Q") or wanted in vocabulary().weak_symbols:
         return None
@@ -142,7 +148,7 @@ _BOUNDED = re.compile(r"(?P<symbol>[A-Za-z]{1,3}\d?)[ ._]?(?P<bound>min|typ|max)
 
 
 def _bounded_symbol(parts: Parts) -> str | None:
-    """ "Tmax", "C0max", "ESRmin": a symbol and a bound in one word."""
+    """The field of a symbol and a bound in one word: "Tmax", "C0max"."""
     found = _BOUNDED.fullmatch(parts.core)
     field = vocabulary().symbols.get(key(found["symbol"])) if found else None
     if found is None or field is None:
@@ -152,7 +158,7 @@ def _bounded_symbol(parts: Parts) -> str | None:
 
 
 def _letter_with_unit(parts: Parts) -> str | None:
-    """ "f (MHz)": a single letter means its field where the unit beside it is one of that field."""
+    """The field of a single letter whose unit stands beside it: "f (MHz)"."""
     wanted = key(parts.core)
     if len(wanted) != 1 or not parts.unit:
         return None
@@ -163,23 +169,29 @@ def _letter_with_unit(parts: Parts) -> str | None:
 
 def _may_be(symbol: str, field: str) -> bool:
     wanted = key(symbol)
-    return len(wanted) <= 12 and (vocabulary().symbols.get(wanted) == field or field in vocabulary().shared.get(wanted, ()))
+    return len(wanted) <= 12 and (
+        vocabulary().symbols.get(wanted) == field or field in vocabulary().shared.get(wanted, ())
+    )
 
 
 @dataclass(slots=True)
 class _Inside:
-    """Fields named by wordings inside a text, with the length of the wording, and what was left over."""
+    """Fields named by wordings inside a text, with the length of the wording, and what was left over.
+
+    `condition` is what was left over behind "at", "over", "in" and their like.
+    """
 
     strong: dict[str, int]
     weak: dict[str, int]
     rest: list[str]
+    condition: list[str]
 
 
 @lru_cache(maxsize=8192)
 def _fields_inside(text: str) -> _Inside:
-    """What follows "at", "over", "in" and their like is a condition and names nothing, but for tolerance over temperature."""
+    """What follows "at", "over", "in" is a condition and names nothing, but for a tolerance over temperature."""
     known, words = vocabulary(), words_of(text)
-    inside = _Inside({}, {}, [])
+    inside = _Inside({}, {}, [], [])
     first, condition = 0, False
     while first < len(words):
         run = known.labels.run_at(words, first)
@@ -189,7 +201,7 @@ def _fields_inside(text: str) -> _Inside:
             symbol = known.symbols.run_at(words, first)
             first = symbol.last + 1 if symbol else first + 1
             if not symbol and words[first - 1].key not in known.filling | known.at_words and printed != "/":
-                inside.rest.append(printed)
+                (inside.condition if condition and (inside.strong or inside.weak) else inside.rest).append(printed)
             continue
         first = run.last + 1
         if condition and inside.strong:
@@ -204,7 +216,7 @@ def _add_condition(inside: _Inside, field: str, printed: str) -> None:
     if field == "operating_temperature_c" and _TOLERANCE in inside.strong:
         inside.strong[_STABILITY] = inside.strong.pop(_TOLERANCE) + len(printed)
     elif field not in inside.strong and not (field == "operating_temperature_c" and _STABILITY in inside.strong):
-        inside.rest.append(printed)
+        inside.condition.append(printed)
 
 
 _TOLERANCE, _STABILITY = "frequency_tolerance_ppm", "frequency_stability_ppm"
@@ -217,11 +229,10 @@ def _inside(parts: Parts) -> Label | None:
     if len(named) != 1 or _trap_in(text) is not None:
         return None
     field, length = next(iter(named.items()))
-    rest = " ".join(inside.rest)
-    left = len(key(rest))
-    if left > (1.5 * length if inside.strong else 0.5 * length):
+    rest, left = " ".join([*inside.rest, *inside.condition]), len(key("".join(inside.rest)))
+    if left > (1.5 * length if inside.strong else 0.5 * length) or len(inside.condition) > LONGEST_CONDITION:
         return None
-    return _label(parts, field, exact=bool(inside.strong) and left == 0, rest=rest)
+    return _label(parts, field, exact=bool(inside.strong) and not rest, rest=rest)
 
 
 def _run_together(parts: Parts) -> Label | None:
@@ -245,7 +256,7 @@ def _run_together(parts: Parts) -> Label | None:
 
 @cache
 def _deletions() -> dict[str, set[str]]:
-    """Every long wording with each one character left out, to find a wording one slip away without comparing with all."""
+    """Every long wording with each one character left out: a wording one slip away is found without comparing all."""
     index: dict[str, set[str]] = {}
     for wording in vocabulary().labels:
         if len(wording) >= 9 and wording.isalpha():
@@ -314,7 +325,7 @@ def _names(text: str) -> tuple[list[str], list[str]]:
 
 
 def _meaning(text: str, table: dict[str, str]) -> str | None:
-    """What the head means; of several languages or alternatives in it the first that is known, unless it is a field's label."""
+    """What the head means; of several languages or alternatives the first that is known, unless a field is named."""
     whole, pieces = _names(text)
     for name in whole:
         if (wanted := key(name)) in table:
@@ -326,7 +337,7 @@ def _meaning(text: str, table: dict[str, str]) -> str | None:
 
 @lru_cache(maxsize=8192)
 def role_of(text: str) -> str | None:
-    """What a table's head cell says of its column: min, typ, max, unit, parameter, symbol, condition, value, remarks ...
+    """What a table's head cell says of its column: min, typ, max, unit, parameter, symbol, condition, value, remarks.
 
     Also "mode", "cut", "band", "model", "code". A head that names a field ("ESR max") is asked of `read_label`.
     """
@@ -335,7 +346,7 @@ def role_of(text: str) -> str | None:
 
 @lru_cache(maxsize=8192)
 def mode_of(text: str) -> str | None:
-    """ "fundamental", "third overtone" ... where `text` states one mode of vibration, else None.
+    """The mode of vibration, "fundamental", "third overtone" ..., where `text` states one, else None.
 
     "F", "T", "1", "3" count only as the whole of a cell; ask only where a mode is expected.
     """
@@ -350,7 +361,7 @@ _CUT_LETTERS = re.compile(r"[A-Z]{2}")
 
 @lru_cache(maxsize=8192)
 def cut_of(text: str) -> str | None:
-    """ "AT", "BT", "SC", "tuning fork" ... where `text` states one cut, else None; "at" in small letters is no cut."""
+    """The cut, "AT", "BT", "SC", "tuning fork" ..., where `text` states one; "at" in small letters is none."""
     folded = fold(text)
     found = set()
     for run in vocabulary().cuts.runs(folded[:400]):
@@ -362,7 +373,7 @@ def cut_of(text: str) -> str | None:
 
 @lru_cache(maxsize=8192)
 def identity_label(text: str) -> str | None:
-    """ "part_number", "maker", "package", "stock_number", "customer", "date", "description" where the label asks for it."""
+    """What a label asks for: part_number, maker, package, stock_number, customer, date, description; else None."""
     return _meaning(text, vocabulary().identity)
 
 

@@ -12,15 +12,30 @@ from extract.amount import Value, as_plus_minus, decimal_mark, field_for, read_v
 from extract.model import When
 
 TOL, STAB, AGE = "frequency_tolerance_ppm", "frequency_stability_ppm", "ageing_ppm"
-FREQ, LOAD, ESR, C0, C1 = "frequency_mhz", "load_capacitance_pf", "esr_ohm", "shunt_capacitance_pf", "motional_capacitance_ff"
+FREQ, LOAD, ESR, C0, C1 = (
+    "frequency_mhz",
+    "load_capacitance_pf",
+    "esr_ohm",
+    "shunt_capacitance_pf",
+    "motional_capacitance_ff",
+)
 OPER, TURN, PARA = "operating_temperature_c", "turnover_temperature_c", "parabolic_coefficient_ppm_per_c2"
-DRIVE, INS, Q, PULL = "drive_level_uw", "insulation_resistance_megohm", "quality_factor", "pulling_sensitivity_ppm_per_pf"
+DRIVE, INS, Q, PULL = (
+    "drive_level_uw",
+    "insulation_resistance_megohm",
+    "quality_factor",
+    "pulling_sensitivity_ppm_per_pf",
+)
 
 
 def said(value: Value) -> dict[str, Any]:
     """What a value states, without its doubts and its text."""
     names = ("min", "typ", "max", "options", "bare", "series")
-    stated = {name: getattr(value, name) for name in names if getattr(value, name) not in (None, ()) and getattr(value, name) is not False}
+    stated = {
+        name: getattr(value, name)
+        for name in names
+        if getattr(value, name) not in (None, ()) and getattr(value, name) is not False
+    }
     return stated | {name: condition for name, condition in value.when if condition is not None}
 
 
@@ -307,14 +322,24 @@ def written(number: float, mark: str) -> str:
     return f"{number:.1f}".replace(".", mark)
 
 
-@given(number=TENTHS, mark=MARKS, unit=OHMS, form=st.sampled_from(["{} max.", "max. {}", "≤ {}", "<{}", "{}以下", "höchstens {}"]))
+@given(
+    number=TENTHS,
+    mark=MARKS,
+    unit=OHMS,
+    form=st.sampled_from(["{} max.", "max. {}", "≤ {}", "<{}", "{}以下", "höchstens {}"]),
+)
 def test_a_greatest_resistance_reads_back(number, mark, unit, form):
     (value,) = read_values(form.format(written(number, mark) + unit[0]), ESR)
     assert value.max == pytest.approx(number * unit[1], rel=1e-12)
     assert (value.min, value.typ, value.doubts) == (None, None, ())
 
 
-@given(number=TENTHS, mark=MARKS, sign=st.sampled_from(["±", "+/-", "± ", "+ / - ", "±"]), unit=st.sampled_from(["ppm", " PPM", "×10⁻⁶", " x 10-6"]))
+@given(
+    number=TENTHS,
+    mark=MARKS,
+    sign=st.sampled_from(["±", "+/-", "± ", "+ / - ", "±"]),
+    unit=st.sampled_from(["ppm", " PPM", "×10⁻⁶", " x 10-6"]),
+)
 def test_a_plus_minus_value_reads_back(number, mark, sign, unit):
     (value,) = read_values(sign + written(number, mark) + unit, TOL)
     assert (value.min, value.max, value.doubts) == (-number, number, ())
@@ -336,7 +361,10 @@ def test_a_temperature_range_reads_back(low, width, between, unit, minus):
     assert (value.min, value.max) == (low, high)
 
 
-@given(numbers=st.lists(TENTHS.filter(lambda n: n < 100), min_size=2, max_size=6, unique=True), between=st.sampled_from([", ", " / ", " or ", "; ", "、"]))
+@given(
+    numbers=st.lists(TENTHS.filter(lambda n: n < 100), min_size=2, max_size=6, unique=True),
+    between=st.sampled_from([", ", " / ", " or ", "; ", "、"]),
+)
 def test_a_list_to_choose_from_reads_back(numbers, between):
     (value,) = read_values(between.join(f"{n:.1f}" for n in numbers) + " pF", LOAD)
     assert value.options == tuple(numbers)
