@@ -199,7 +199,7 @@ def rated_gm(setting: CircuitKeys, bench: Bench, shunt_pf: Array) -> Array:
     if isinstance(limit, tuple):
         row = list_row(limit, frequency, lossless_load_pf(setting))
         load, limit = (np.nan, np.nan) if row is None else row[2:]
-    return from_esr_ms(limit or np.nan, frequency, load, c0, factor, esr_means=rating.esr_means)
+    return from_esr_ms(limit or np.nan, frequency, load, c0, factor, esr_means=rating.esr_means) + 0 * c0
 
 
 def lossless_load_pf(setting: CircuitKeys) -> float:

@@ -144,7 +144,7 @@ def _total(one: Judged, standing: Standing) -> str:
 
 
 def signed(value: float) -> str:
-    return f"{value:+.3g}" if not math.isnan(value) else "?"
+    return f"{value + 0.0:+.3g}" if not math.isnan(value) else "?"
 
 
 def limit_words(bench: Bench) -> str:
