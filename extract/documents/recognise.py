@@ -16,6 +16,7 @@ from typing import Any
 import cv2
 import numpy as np
 
+from extract.documents.slips import mended
 from extract.documents.straighten import Picture, Pixels, ink_of
 from extract.documents.words import Box, Ruling, Word
 
@@ -199,7 +200,7 @@ def askew_lines(picture: Picture, lines: Sequence[TypeLine]) -> list[Word]:
     """Stamps and the like: each line whole, with its spaces."""
     crops = [cut_out(picture.pixels, line) for line in lines]
     return [
-        Word(_mended(reading.text), *line.box, size=line.box[3] - line.box[1], confidence=round(reading.confidence, 3))
+        Word(mended(reading.text), *line.box, size=line.box[3] - line.box[1], confidence=round(reading.confidence, 3))
         for line, reading in zip(lines, read_crops(crops), strict=True)
         if reading.confidence >= _LEAST_CONFIDENCE
     ]
@@ -222,42 +223,47 @@ def _tall_words(picture: Picture, lines: Sequence[TypeLine]) -> list[Word]:
 
 
 def _words(box: Box, crop: Pixels, reading: Reading) -> list[Word]:
-    """A line's words with their boxes: from character to character, moved to the edges of the ink."""
+    """A line's pieces with their boxes. Words with plain spaces between them stay one: the line holds them together.
+
+    The space of typewriter faces is as wide as the gap between columns in others, so that boxes alone would mislead.
+    """
     x0, top, x1, bottom = box
     height = bottom - top
-    groups = _groups(reading, crop)
     scale = (x1 - x0) / max(1, crop.shape[1])
-    size = height * (1 - 2 * _MARGIN)
-    words = [
+    return [
         Word(
-            _mended(group.text),
-            x0 + group.start * scale,
+            mended(" ".join(group.text for group in piece)),
+            x0 + piece[0].start * scale,
             top + _MARGIN * height,
-            x0 + group.end * scale,
+            x0 + piece[-1].end * scale,
             bottom - _MARGIN * height,
-            size=size,
-            confidence=round(group.confidence, 3),
+            size=height * (1 - 2 * _MARGIN),
+            confidence=round(min(group.confidence for group in piece), 3),
         )
-        for group in groups
+        for piece in _pieces(_groups(reading, crop))
     ]
-    wide = [group.far_from_last for group in groups]
-    return [word for word in _drawn_together(words, wide, size) if not _LEADER.fullmatch(word.text)]
 
 
-def _drawn_together(words: Sequence[Word], wide: Sequence[bool], size: float) -> list[Word]:
-    """Words with a plain space between them, moved so close that no reader takes the space for a gap between columns.
+def _pieces(groups: Sequence[_Group]) -> list[list[_Group]]:
+    """Groups that stand together, without leader dots, which part them."""
+    pieces: list[list[_Group]] = []
+    parted = True
+    for index, group in enumerate(groups):
+        if _LEADER.fullmatch(group.text) and not _is_range(groups[index - 1 : index + 2]):
+            parted = True
+            continue
+        if parted or group.far_from_last:
+            pieces.append([])
+        pieces[-1].append(group)
+        parted = False
+    return pieces
 
-    The space of typewriter faces is as wide as the gap between columns in others.
-    """
-    most = 0.6 * size
-    moved = list(words)
-    for index in range(1, len(moved)):
-        left, right = moved[index - 1], moved[index]
-        excess = right.x0 - left.x1 - most
-        if excess > 0 and not wide[index]:
-            moved[index - 1] = replace(left, x1=left.x1 + excess / 2)
-            moved[index] = replace(right, x0=right.x0 - excess / 2)
-    return moved
+
+def _is_range(three: Sequence[_Group]) -> bool:
+    """Whether dots stand between two numbers, as in -40 ... +85."""
+    if len(three) < 3 or len(three[1].text) > 3:
+        return False
+    return bool(re.search(r"[\d℃]$|°C$", three[0].text) and re.match(r"[-+−±]?\d", three[2].text))
 
 
 @dataclass(frozen=True, slots=True)
@@ -337,24 +343,3 @@ def _ink_edges(inked: np.ndarray[Any, np.dtype[np.bool_]], start: float, end: fl
     if not len(columns):
         return start, end
     return int(start) + float(columns[0]), int(start) + float(columns[-1]) + 1.0
-
-
-# What a recogniser takes for another sign because both look alike, told by its neighbours alone.
-_SLIPS = (
-    (re.compile(r"°\s*℃|°℃"), "℃"),
-    (re.compile(r"°°"), "°"),
-    (re.compile(r"(?<=[A-Za-z])0(?=[A-Za-z])"), "O"),
-)
-
-
-def _mended(text: str) -> str:
-    mended = text
-    for index, (slip, right) in enumerate(_SLIPS):
-        is_zero = index == len(_SLIPS) - 1
-        if is_zero and len(re.findall(r"\d", mended)) != 1:
-            continue
-        found = slip.sub(right, mended)
-        if is_zero and mended.replace("0", "").islower():
-            found = found.replace("O", "o") if not mended.startswith("k") else found
-        mended = found
-    return mended
