@@ -74,15 +74,34 @@ def _is_under(ruling: Ruling, glyph: Glyph) -> bool:
     return shared > 0.6 * (x1 - x0) and -0.1 * glyph.size < ruling.top - glyph.base < 0.3 * glyph.size
 
 
-def words_of(glyphs: Sequence[Glyph], width: float, height: float) -> list[Word]:
-    """Words of a page of that size (as shown), each in the page's own frame with the angle at which it reads."""
+def words_of(glyphs: Sequence[Glyph], width: float, height: float, rulings: Sequence[Ruling] = ()) -> list[Word]:
+    """Words of a page of that size (as shown), each in the page's own frame with the angle at which it reads.
+
+    An upright line drawn between two letters parts words, however near they stand: narrow cells of a table.
+    """
     words: list[Word] = []
+    fences = _Fences(rulings)
     for angle in sorted({glyph.angle for glyph in glyphs}):
         chosen = [glyph for glyph in glyphs if glyph.angle == angle]
         if angle:
             chosen = [replace(glyph, box=turned(glyph.box, angle, width, height)) for glyph in chosen]
-        words += [_word(run, angle, width, height) for run in _runs_put_right(chosen)]
+        runs = _runs_put_right(chosen, _Fences(()) if angle else fences)
+        words += [_word(run, angle, width, height) for run in runs]
     return words
+
+
+class _Fences:
+    """Upright lines, to be asked whether one stands between two letters."""
+
+    def __init__(self, rulings: Sequence[Ruling]) -> None:
+        upright = [ruling for ruling in rulings if not ruling.horizontal and ruling.bottom - ruling.top > 5]
+        self._lines = sorted(upright, key=lambda ruling: ruling.x0)
+        self._xs = [ruling.x0 for ruling in self._lines]
+
+    def between(self, left: _Run, right: _Run) -> bool:
+        first, last = bisect_left(self._xs, left.x1 - 0.3), bisect_right(self._xs, right.x0 + 0.3)
+        middle = (left.top + left.bottom) / 2
+        return any(line.top <= middle <= line.bottom for line in self._lines[first:last])
 
 
 def _word(run: _Run, angle: int, width: float, height: float) -> Word:
@@ -90,11 +109,11 @@ def _word(run: _Run, angle: int, width: float, height: float) -> Word:
     return Word(run.text, *box, size=run.size, angle=angle, baseline=None if angle else run.base, bold=run.bold)
 
 
-def _runs_put_right(glyphs: Sequence[Glyph]) -> list[_Run]:
-    runs = _runs(_struck_once(glyphs))
-    runs = _same_line_neighbours(runs)
-    runs = _letter_spaced(runs)
-    return _marks_attached(runs)
+def _runs_put_right(glyphs: Sequence[Glyph], fences: _Fences) -> list[_Run]:
+    runs = _runs(_struck_once(glyphs), fences)
+    runs = _same_line_neighbours(runs, fences)
+    runs = _letter_spaced(runs, fences)
+    return _marks_attached(runs, fences)
 
 
 def _struck_once(glyphs: Iterable[Glyph]) -> list[Glyph]:
@@ -123,7 +142,7 @@ def _struck_once(glyphs: Iterable[Glyph]) -> list[Glyph]:
     return kept
 
 
-def _runs(glyphs: Sequence[Glyph]) -> list[_Run]:
+def _runs(glyphs: Sequence[Glyph], fences: _Fences) -> list[_Run]:
     """Words in the order in which the page draws them, so that lines printed over one another stay apart."""
     spaces = sum(glyph.text.isspace() for glyph in glyphs)
     spaced = spaces > 0.03 * len(glyphs)
@@ -136,7 +155,7 @@ def _runs(glyphs: Sequence[Glyph]) -> list[_Run]:
             continue
         bold = bool(re.search(r"bold|black|heavy|demi", glyph.font, re.I))
         run = _Run(text, *glyph.box, size=glyph.size, base=glyph.base, bold=bold)
-        if runs and not broken and _continues(runs[-1], run, spaced):
+        if runs and not broken and _continues(runs[-1], run, spaced) and not fences.between(runs[-1], run):
             runs[-1].spacing = run.x0 - runs[-1].x1
             runs[-1].take(run, runs[-1].text + text)
         else:
@@ -163,7 +182,7 @@ def _continues(run: _Run, glyph: _Run, spaced: bool) -> bool:
     return gap < 0.2 * size
 
 
-def _same_line_neighbours(runs: Sequence[_Run]) -> list[_Run]:
+def _same_line_neighbours(runs: Sequence[_Run], fences: _Fences) -> list[_Run]:
     """Join runs that touch on one baseline although they were drawn at different times."""
     joined: list[_Run] = []
     for run in sorted(runs, key=lambda run: (round(run.base, 1), run.x0)):
@@ -174,20 +193,20 @@ def _same_line_neighbours(runs: Sequence[_Run]) -> list[_Run]:
             and abs(run.size - last.size) < 0.12 * run.size
             and -0.1 * run.size < run.x0 - last.x1 < 0.06 * run.size
         )
-        if last is not None and touching:
+        if last is not None and touching and not fences.between(last, run):
             last.take(run, last.text + run.text)
         else:
             joined.append(run)
     return joined
 
 
-def _letter_spaced(runs: Sequence[_Run]) -> list[_Run]:
+def _letter_spaced(runs: Sequence[_Run], fences: _Fences) -> list[_Run]:
     """Join letters set apart with a space each: four or more single letters at even gaps."""
     joined: list[_Run] = []
     start = 0
     while start < len(runs):
         end = start + 1
-        while end < len(runs) and _next_letter(runs[start : end + 1]):
+        while end < len(runs) and _next_letter(runs[start : end + 1]) and not fences.between(runs[end - 1], runs[end]):
             end += 1
         if end - start >= 4:
             first = runs[start]
@@ -213,7 +232,7 @@ def _next_letter(letters: Sequence[_Run]) -> bool:
     return not gaps or gap < 1.5 * max(gaps) + 0.1 * last.size
 
 
-def _marks_attached(runs: Sequence[_Run]) -> list[_Run]:
+def _marks_attached(runs: Sequence[_Run], fences: _Fences) -> list[_Run]:
     """Join lowered and raised small type to the word that it stands behind."""
     largest = max((run.size for run in runs), default=0.0)
     by_end = sorted(runs, key=lambda run: run.x1)
@@ -225,7 +244,7 @@ def _marks_attached(runs: Sequence[_Run]) -> list[_Run]:
         first = bisect_left(ends, mark.x0 - 3 * largest)
         last = bisect_right(ends, mark.x0 + 0.35 * largest)
         host = _host(mark, by_end[first:last], taken)
-        if host is None or _goes_on(mark, runs):
+        if host is None or _goes_on(mark, runs) or fences.between(host, mark):
             continue
         if mark.base > host.base:
             text = host.text + marks.lowered(mark.text)
@@ -242,7 +261,7 @@ def _marks_attached(runs: Sequence[_Run]) -> list[_Run]:
             leading.add(id(run))
     kept = [run for run in kept if id(run) not in leading]
     # What goes on behind a mark without a space ("ppm/°C²/year") is the same word.
-    return _same_line_neighbours(kept)
+    return _same_line_neighbours(kept, fences)
 
 
 def _goes_on(mark: _Run, runs: Sequence[_Run]) -> bool:

@@ -14,17 +14,30 @@ from extract.documents.glyphs import Glyph, with_underlined_signs, words_of
 from extract.documents.layout import arrange
 from extract.documents.model import Document, DocumentError, Line, Segment, Table
 from extract.documents.pdf_page import Frame, pdfium_frame, pdfium_glyphs, plumbed
-from extract.documents.symbols import is_broken
-from extract.documents.words import Box
+from extract.documents.pdf_pictures import Pictures, pictures_of
+from extract.documents.symbols import is_broken, translated
+from extract.documents.words import Box, inside, union
 from extract.model import Note, Where
 
 # A file of more pages is a catalogue: its pages are looked through before they are read.
 CATALOGUE_PAGES = 4
+# Where less of a page's text than this share comes out of pdfplumber, it cannot read one of the fonts.
+MOST = 0.97
 # A page with fewer characters may be a picture.
 ALMOST_NO_TEXT = 25
+# A page with fewer characters and a large picture may have its table in the picture.
+LITTLE_TEXT = 300
 SCAN_DPI = 200
 NO_OCR = (
     'Page {page} is a picture and was not read: install the reading of pictures with pip install "quartzfolio[ocr]".'
+)
+HIDDEN_TEXT = (
+    "Page {page} is a picture; its text was recognised by the program that made the file: compare every number with the "
+    "page."
+)
+NO_OCR_BESIDE = (
+    "Page {page} holds a large picture that was not read: look at it, or install the reading of pictures with "
+    'pip install "quartzfolio[ocr]".'
 )
 
 
@@ -37,15 +50,32 @@ class _Page:
     scanned: bool = False
     height: float = 0.0
 
+    def warn(self, message: str, number: int) -> None:
+        self.notes.append(Note(level="warning", message=message, where=Where(page=number)))
 
-def read(data: bytes) -> Document:
-    """Tables and lines of a PDF, page by page; DocumentError for one that is damaged, locked or empty."""
+
+def read(data: bytes, wanted: Callable[[str], bool] | None = None) -> Document:
+    """Tables and lines of a PDF, page by page.
+
+    Parameters
+    ----------
+    data
+        The file's bytes.
+    wanted
+        Tells from a page's bare text whether the page is worth a close look. In a catalogue the pages that are not come
+        as plain lines without boxes, at a fiftieth of the time; without this, those are the pages without any digit.
+
+    Raises
+    ------
+    DocumentError
+        The file is damaged, locked or without pages.
+    """
     # The parser reports each oddity of a font; a reader of the sheet can do nothing about them.
     logging.getLogger("pdfminer").setLevel(logging.ERROR)
     quick = _opened(data)
     try:
         slow = _Plumber(data)
-        pages = [_read_page(quick, slow, number) for number in range(1, len(quick) + 1)]
+        pages = [_read_page(quick, slow, number, wanted) for number in range(1, len(quick) + 1)]
         slow.close()
     finally:
         quick.close()
@@ -96,7 +126,7 @@ class _Plumber:
             self._file.close()
 
 
-def _read_page(quick: Any, slow: _Plumber, number: int) -> _Page:
+def _read_page(quick: Any, slow: _Plumber, number: int, wanted: Callable[[str], bool] | None) -> _Page:
     page = quick[number - 1]
     frame = pdfium_frame(page)
     text_page = page.get_textpage()
@@ -104,14 +134,28 @@ def _read_page(quick: Any, slow: _Plumber, number: int) -> _Page:
     text_page.close()
     printed = len(re.sub(r"\s", "", text))
     result = _Page(height=frame.size[1])
-    if printed < ALMOST_NO_TEXT and _is_picture(page, frame):
-        _read_picture(page, number, result)
-    elif len(quick) > CATALOGUE_PAGES and printed and not re.search(r"\d", text):
+    unwanted = len(quick) > CATALOGUE_PAGES and printed > ALMOST_NO_TEXT and not (wanted or _has_digit)(text)
+    if unwanted:
         result.blocks += [_plain_line(line, number) for line in text.splitlines() if line.strip()]
-    elif printed:
-        _read_text(page, slow, number, frame, printed=printed, result=result)
+    else:
+        pictures = pictures_of(page, frame)
+        if printed < ALMOST_NO_TEXT and pictures.instead_of_text:
+            result.scanned = _read_picture(page, number, result)
+        elif pictures.with_hidden_text and (blocks := _picture_blocks(page, number)):
+            result.blocks += blocks
+            result.scanned = True
+        elif printed:
+            if pictures.with_hidden_text:
+                result.warn(HIDDEN_TEXT.format(page=number), number)
+            _read_text(page, slow, number, frame, printed=printed, result=result)
+            if printed < LITTLE_TEXT and pictures.boxes:
+                _read_pictures_beside_text(page, number, pictures, result)
     page.close()
     return result
+
+
+def _has_digit(text: str) -> bool:
+    return bool(re.search(r"\d", text))
 
 
 def _plain_line(text: str, number: int) -> Line:
@@ -131,27 +175,22 @@ def _read_text(page: Any, slow: _Plumber, number: int, frame: Frame, *, printed:
     content = slow.page(number, frame)
     glyphs, rulings = content if content else ([], [])
     readable = sum(len(glyph.text.strip()) for glyph in glyphs if not glyph.text.startswith("(cid:"))
-    if readable < 0.7 * printed:
+    if readable < MOST * printed:
         glyphs = pdfium_glyphs(page, frame)
     if content is None:
-        result.notes.append(
-            Note(
-                level="warning",
-                message=f"Page {number}: its drawn lines cannot be read; tables are told from where words stand alone.",
-                where=Where(page=number),
-            )
-        )
+        message = f"Page {number}: its drawn lines cannot be read; tables are told from where words stand alone."
+        result.warn(message, number)
     straight = with_underlined_signs([glyph for glyph in glyphs if glyph.angle in (0, 90, 180, 270)], rulings)
     place = _placer(number)
-    result.blocks += arrange(words_of(straight, *frame.size), rulings, place, width=frame.size[0], height=frame.size[1])
+    result.blocks += arrange(
+        words_of(straight, *frame.size, rulings), rulings, place, width=frame.size[0], height=frame.size[1]
+    )
     result.blocks += _slanted_lines([glyph for glyph in glyphs if glyph.angle % 90], place)
     result.notes += _broken_notes(glyphs, number)
 
 
 def _slanted_lines(glyphs: Sequence[Glyph], place: Callable[[Box], Where]) -> list[Table | Line]:
     """Text at an angle (a watermark, a stamp), a line for each run in the order in which it is drawn."""
-    from extract.documents.words import union
-
     runs: list[list[Glyph]] = []
     for glyph in glyphs:
         if runs and runs[-1][-1].angle == glyph.angle and abs(runs[-1][-1].base - glyph.base) < 3 * glyph.size:
@@ -168,9 +207,6 @@ def _slanted_lines(glyphs: Sequence[Glyph], place: Callable[[Box], Where]) -> li
 
 
 def _broken_notes(glyphs: Sequence[Glyph], number: int) -> list[Note]:
-    from extract.documents.symbols import translated
-    from extract.documents.words import union
-
     broken = [glyph for glyph in glyphs if is_broken(translated(glyph.text, glyph.font))]
     if not broken:
         return []
@@ -186,34 +222,41 @@ def _broken_notes(glyphs: Sequence[Glyph], number: int) -> list[Note]:
 # --- pictures
 
 
-def _is_picture(page: Any, frame: Frame) -> bool:
-    """Tell whether a page without text shows a picture or text drawn as outlines."""
-    from pypdfium2 import raw
+def _read_picture(page: Any, number: int, result: _Page) -> bool:
+    """Read the page as a picture; False, and a note, where the extra that reads pictures is not there."""
+    blocks = _picture_blocks(page, number)
+    if blocks is None:
+        result.warn(NO_OCR.format(page=number), number)
+        return False
+    result.blocks += blocks
+    if not blocks:
+        result.warn(
+            f"Page {number} is a picture in which no text can be made out: look at it, or give a sharper scan.", number
+        )
+    return True
 
-    paths, area = 0, 0.0
-    for item in page.get_objects(max_depth=4):
-        if item.type == raw.FPDF_PAGEOBJ_IMAGE:
-            x0, y0, x1, y1 = item.get_bounds()
-            area += abs((x1 - x0) * (y1 - y0))
-        elif item.type == raw.FPDF_PAGEOBJ_PATH:
-            paths += 1
-    return area > 0.2 * frame.size[0] * frame.size[1] or paths > 60
+
+def _read_pictures_beside_text(page: Any, number: int, pictures: Pictures, result: _Page) -> None:
+    """Add what stands in a page's large pictures; its own text is read apart."""
+    blocks = _picture_blocks(page, number)
+    if blocks is None:
+        result.warn(NO_OCR_BESIDE.format(page=number), number)
+        return
+    for block in blocks:
+        box = block.where.box
+        if box is not None and any(inside(box, picture, 0.0) for picture in pictures.boxes):
+            result.blocks.append(block)
 
 
-def _read_picture(page: Any, number: int, result: _Page) -> None:
+def _picture_blocks(page: Any, number: int) -> list[Table | Line] | None:
+    """Tables and lines recognised in the page as drawn; None where the extra that reads pictures is not there."""
     from extract.documents import scan
 
-    place = _placer(number, 72 / SCAN_DPI)
     try:
-        result.blocks += scan.read_blocks(page.render(scale=SCAN_DPI / 72).to_pil(), place)
+        return scan.read_blocks(page.render(scale=SCAN_DPI / 72).to_pil(), _placer(number, 72 / SCAN_DPI))
     except DocumentError:
-        # The only fault that reading a picture in memory can have: the extra is not there.
-        result.notes.append(Note(level="warning", message=NO_OCR.format(page=number), where=Where(page=number)))
-        return
-    result.scanned = True
-    if not result.blocks:
-        message = f"Page {number} is a picture in which no text can be made out: look at it, or give a sharper scan."
-        result.notes.append(Note(level="warning", message=message, where=Where(page=number)))
+        # The only fault that reading a picture in memory can have.
+        return None
 
 
 # --- the whole file

@@ -187,6 +187,8 @@ def pdfium_glyphs(page: Any, frame: Frame) -> list[Glyph]:
         size = _size(raw, text_page, index)
         corner, other = frame.shown(rect.left, rect.top), frame.shown(rect.right, rect.bottom)
         box = _type_box(union([(*corner, *corner), (*other, *other)]), frame.shown(x.value, y.value), angle, size)
+        if box[2] < 0 or box[3] < 0 or box[0] > width or box[1] > height:
+            continue
         base = _base(angle, *frame.shown(x.value, y.value), width, height)
         glyphs.append(Glyph(chr(code), box, size, _font_name(raw, text_page, index), angle, base))
     text_page.close()

@@ -232,6 +232,9 @@ def _rows_of(
         place = _index_at(_level(line), levels)
         row = min(max(round(place), 0), len(levels) - 1)
         rows = None if values else labels.group_round(place)
+        if rows is None and not _on_level(line, levels):
+            first = min(int(place), len(levels) - 2)
+            rows = (first, first + 1)
         groups.setdefault(rows or (row, row), []).extend(line)
     return [(first, last, words) for (first, last), words in sorted(_apart(groups).items())]
 
@@ -266,7 +269,8 @@ def _on_level(line: Sequence[Word], levels: Sequence[float]) -> bool:
 def _index_at(y: float, levels: Sequence[float]) -> float:
     """Row number at that height, between two rows a fraction."""
     after = min(max(bisect_left(levels, y), 1), len(levels) - 1)
-    return after - 1 + (y - levels[after - 1]) / (levels[after] - levels[after - 1])
+    index = after - 1 + (y - levels[after - 1]) / (levels[after] - levels[after - 1])
+    return min(max(index, 0.0), len(levels) - 1.0)
 
 
 def _blocks(lines: Sequence[list[Word]], levels: Sequence[float]) -> list[list[list[Word]]]:

@@ -177,6 +177,20 @@ def test_lowered_and_raised_type_is_told_from_its_place(parts, read):
     assert text_of(pdf.read(drawn(rising(*parts)))) == [read]
 
 
+def test_an_upright_line_parts_words_that_nearly_touch():
+    def page(paper):
+        for x in (60, 100, 140):
+            paper.line(x, 250, x, 310)
+        for y in (250, 270, 290, 310):
+            paper.line(60, y, 140, y)
+        for row, (left, right) in enumerate((("CL", "ESR"), ("12 pF", "80 Ohm"), ("8 pF", "60 Ohm"))):
+            paper.drawRightString(99.5, 297 - 20 * row, left)
+            paper.drawString(100.5, 297 - 20 * row, right)
+
+    (table,) = tables_of(pdf.read(drawn(page)))
+    assert grid_of(table) == [["CL", "ESR"], ["12 pF", "80 Ohm"], ["8 pF", "60 Ohm"]]
+
+
 def test_text_struck_twice_is_read_once():
     def page(paper):
         for shift in (0, 0.3, 0.6):
@@ -336,6 +350,15 @@ def test_a_catalogue_page_without_numbers_keeps_its_text_but_no_boxes():
     assert len(tables_of(document)) == 4
 
 
+def test_a_caller_can_say_which_pages_of_a_catalogue_it_wants():
+    data = drawn(
+        *(lambda paper, n=n: paper.drawString(60, 200, f"This page is about part number {n}") for n in range(6))
+    )
+    document = pdf.read(data, wanted=lambda text: "number 3" in text)
+    assert [block.where.page for block in document.blocks] == [1, 2, 3, 4, 5, 6]
+    assert [block.where.page for block in document.blocks if block.where.box] == [4]
+
+
 # --- pictures
 
 
@@ -351,8 +374,7 @@ def picture_page(paper):
 
 
 def test_a_picture_without_the_extra_is_told_of_with_what_to_install(monkeypatch):
-    monkeypatch.setitem(sys.modules, "rapidocr", None)
-    monkeypatch.delitem(sys.modules, "extract.documents.recognise", raising=False)
+    without_extra(monkeypatch)
     document = pdf.read(drawn(ruled, picture_page))
     assert [(note.level, note.message, note.where.page) for note in document.notes] == [
         (
@@ -364,6 +386,44 @@ def test_a_picture_without_the_extra_is_told_of_with_what_to_install(monkeypatch
     ]
     assert len(tables_of(document)) == 1
     assert not document.scan
+
+
+def without_extra(monkeypatch):
+    monkeypatch.setitem(sys.modules, "rapidocr", None)
+    monkeypatch.delitem(sys.modules, "extract.documents.recognise", raising=False)
+
+
+def test_a_large_picture_beside_a_little_text_is_told_of(monkeypatch):
+    without_extra(monkeypatch)
+
+    def page(paper):
+        picture_page(paper)
+        paper.drawString(60, 380, "Crystal unit QX-20, 3.2 x 2.5 mm, for radio modules")
+
+    document = pdf.read(drawn(page))
+    assert [line.text for line in document.blocks] == ["Crystal unit QX-20, 3.2 x 2.5 mm, for radio modules"]
+    assert [note.message for note in document.notes] == [
+        "Page 1 holds a large picture that was not read: look at it, or install the reading of pictures with "
+        'pip install "quartzfolio[ocr]".'
+    ]
+
+
+def test_a_scans_hidden_text_is_read_where_the_picture_cannot_be(monkeypatch):
+    without_extra(monkeypatch)
+
+    def page(paper):
+        picture_page(paper)
+        line = paper.beginText(60, 300)
+        line.setTextRenderMode(3)
+        line.textLine("Load capacitance 12 pF and a frequency of 24.000 MHz")
+        paper.drawText(line)
+
+    document = pdf.read(drawn(page))
+    assert [line.text for line in document.blocks] == ["Load capacitance 12 pF and a frequency of 24.000 MHz"]
+    assert [note.message for note in document.notes] == [
+        "Page 1 is a picture; its text was recognised by the program that made the file: compare every number with "
+        "the page."
+    ]
 
 
 @pytest.mark.ocr
