@@ -32,8 +32,8 @@ NO_OCR = (
     'Page {page} is a picture and was not read: install the reading of pictures with pip install "quartzfolio[ocr]".'
 )
 HIDDEN_TEXT = (
-    "Page {page} is a picture; its text was recognised by the program that made the file: compare every number with the "
-    "page."
+    "Page {page} is a picture; its text was recognised by the program that made the file: compare every number with "
+    "the page."
 )
 NO_OCR_BESIDE = (
     "Page {page} holds a large picture that was not read: look at it, or install the reading of pictures with "
@@ -145,10 +145,10 @@ def _read_page(quick: Any, slow: _Plumber, number: int, wanted: Callable[[str], 
             result.blocks += blocks
             result.scanned = True
         elif printed:
+            _read_text(page, slow, number, frame, printed=printed, result=result)
             if pictures.with_hidden_text:
                 result.warn(HIDDEN_TEXT.format(page=number), number)
-            _read_text(page, slow, number, frame, printed=printed, result=result)
-            if printed < LITTLE_TEXT and pictures.boxes:
+            elif printed < LITTLE_TEXT and pictures.boxes:
                 _read_pictures_beside_text(page, number, pictures, result)
     page.close()
     return result
