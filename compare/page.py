@@ -11,6 +11,14 @@ from compare.page_circuit import circuit_view
 from compare.page_sheets import sheets_view
 
 
+def keys(views: list[str]) -> None:
+    """A button for each view, for its key: the navigation at the top has none."""
+    with st.container(horizontal=True, gap="medium"):
+        for number, view in enumerate(views, start=1):
+            if st.button(view.capitalize(), key=f"go_{view}", type="tertiary", shortcut=str(number)):
+                session.go(view)
+
+
 def main() -> None:
     """Lay out the views and draw the one that is asked for."""
     st.set_page_config(page_title="quartzfolio", layout="wide")
@@ -28,6 +36,7 @@ def main() -> None:
         st.html(pieces.terms_html(circuit_text.terms(bench)))
     session.told_of_reading()
     current.run()
+    keys(list(views))
     session.read_next()
 
 

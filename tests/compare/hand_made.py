@@ -39,6 +39,18 @@ LOCKED = SpecSheet(
     kind="pdf",
     notes=(Note(level="error", message="locked with a password; save it without one"),),
 )
+MAIL = """Part number ABX-26
+Nominal frequency 26.000 MHz, fundamental, AT cut
+Frequency tolerance ±10 ppm at 25 °C
+Frequency stability ±15 ppm
+Operating temperature -40 to 85 °C
+Load capacitance 8 pF
+ESR 50 Ω max
+Shunt capacitance C0 1.2 pF max
+Motional capacitance C1 2.4 fF typ
+Drive level 100 µW max
+Ageing ±2 ppm first year
+"""
 BENCH_TEXT = """
 [requirement]
 frequency_mhz = 26.0

@@ -1,0 +1,148 @@
+"""One whole job in a real browser: sheet, circuit, ranking, review; and nothing leaves the machine."""
+
+import os
+import re
+import shutil
+import socket
+import subprocess
+import sys
+import time
+from pathlib import Path
+from urllib.parse import urlsplit
+
+import hand_made
+import pytest
+
+pytestmark = pytest.mark.browser
+NAMES = ("chromium", "chromium-browser", "google-chrome", "chrome")
+HOME = ("127.0.0.1", "localhost")
+
+
+def chromium():
+    """The system's Chromium; none is downloaded. A run that must not skip (CI=true) fails without it."""
+    found = next(filter(None, map(shutil.which, NAMES)), None)
+    if found is None:
+        told = "no Chromium on this machine: install the package chromium"
+        if os.environ.get("CI") == "true":
+            pytest.fail(told)
+        pytest.skip(told)
+    return found
+
+
+def free_port():
+    with socket.socket() as probe:
+        probe.bind(("127.0.0.1", 0))
+        return probe.getsockname()[1]
+
+
+@pytest.fixture(scope="module")
+def address(tmp_path_factory):
+    """The page as the command starts it, from a folder that has no settings of its own."""
+    folder, port = tmp_path_factory.mktemp("elsewhere"), free_port()
+    (folder / "bench.toml").write_text(hand_made.BENCH_TEXT, encoding="utf-8")
+    command = [sys.executable, "-c", "import sys; from compare.command import main; sys.exit(main())", "page"]
+    with (folder / "log.txt").open("w") as log:
+        server = subprocess.Popen(
+            [*command, "--bench", "bench.toml", "--port", str(port)], cwd=folder, stdout=log, stderr=subprocess.STDOUT
+        )
+        try:
+            wait_for(port, server, folder / "log.txt")
+            yield f"http://127.0.0.1:{port}"
+        finally:
+            server.terminate()
+            server.wait(20)
+
+
+def wait_for(port, server, log):
+    for _ in range(120):
+        if server.poll() is not None:
+            break
+        try:
+            socket.create_connection(("127.0.0.1", port), timeout=2).close()
+            return
+        except OSError:
+            time.sleep(0.25)
+    pytest.fail(f"the page did not start: {log.read_text()}")
+
+
+@pytest.fixture
+def view(address):
+    """A page of the browser that notes each request's host."""
+    executable = chromium()
+    sync_api = pytest.importorskip("playwright.sync_api")
+    with sync_api.sync_playwright() as playwright:
+        browser = playwright.chromium.launch(executable_path=executable, args=["--no-sandbox"])
+        context = browser.new_context(viewport={"width": 1440, "height": 900})
+        page = context.new_page()
+        page.hosts, page.faults = set(), []
+        page.on("request", lambda request: page.hosts.add(urlsplit(request.url).hostname))
+        page.on("websocket", lambda socket: page.hosts.add(urlsplit(socket.url).hostname))
+        page.on("pageerror", lambda fault: page.faults.append(str(fault)))
+        page.goto(address)
+        page.get_by_text("Drop sheets here").wait_for(timeout=60_000)
+        yield page
+        browser.close()
+
+
+def test_a_sheet_is_dropped_judged_and_reviewed_and_nothing_leaves_the_machine(view, tmp_path):
+    sheet = tmp_path / "offer.txt"
+    sheet.write_text(hand_made.MAIL, encoding="utf-8")
+    view.locator("input[type=file]").first.set_input_files(str(sheet))
+    view.get_by_role("heading", name="ABX-26").wait_for(timeout=60_000)
+
+    view.get_by_role("link", name="Circuit").click()
+    view.get_by_role("heading", name="The circuit presents 7.70 pF").wait_for()
+    field = view.get_by_label("Fitted, A–0")
+    field.fill("12,5")
+    field.press("Enter")
+    view.get_by_role("heading", name="The circuit presents 7.82 pF").wait_for()
+    assert field.input_value() == "12.5 pF"
+
+    view.get_by_role("link", name="Choose").click()
+    view.get_by_role("heading", name="The one part that offers it").wait_for()
+    view.get_by_role("heading", name="1st: ABX-26").wait_for()
+    view.locator(".stVegaLiteChart").first.wait_for()
+    with view.expect_download() as download:
+        view.get_by_role("button", name="Save .csv").click()
+    assert "ABX-26" in Path(download.value.path()).read_text(encoding="utf-8-sig")
+
+    view.get_by_role("button", name="Review this part").click()
+    row = view.locator(".qf-numbers details", has_text="Margin").first
+    row.locator("summary").click()
+    assert "Rn/RL" in row.locator("p").inner_text()
+
+    assert view.faults == []
+    assert {host for host in view.hosts if host is not None} <= set(HOME)
+
+
+def test_a_pressed_figure_of_the_drawing_puts_the_cursor_into_its_field(view):
+    view.get_by_role("link", name="Circuit").click()
+    figure = view.locator('[data-field="circuit.across_stray_pf"]')
+    figure.wait_for()
+    figure.click()
+    assert view.evaluate("document.activeElement.getAttribute('aria-label')") == "Stray, A–B"
+
+
+def test_the_drawing_and_the_table_stay_inside_a_narrow_window(view):
+    view.set_viewport_size({"width": 1280, "height": 800})
+    view.get_by_role("link", name="Circuit").click()
+    view.locator('[data-field="circuit.across_stray_pf"]').wait_for()
+    drawing = view.locator(".st-key-drawing svg").first.bounding_box()
+    fields = view.get_by_label("Frequency").first.bounding_box()
+    assert drawing["x"] + drawing["width"] <= fields["x"]
+    assert view.evaluate("document.documentElement.scrollWidth") <= 1280
+
+
+def test_the_keys_of_the_views_work(view):
+    view.get_by_role("heading", name="No sheets yet").wait_for()
+    view.keyboard.press("2")
+    view.get_by_role("heading", name=re.compile("The circuit presents")).wait_for()
+
+
+def test_nobody_but_this_machine_is_answered(address):
+    port = int(address.rsplit(":", 1)[1])
+    names = {entry[4][0] for entry in socket.getaddrinfo(socket.gethostname(), None, socket.AF_INET)}
+    for other in names - {"127.0.0.1"}:
+        with socket.socket() as probe:
+            probe.settimeout(2)
+            assert probe.connect_ex((other, port)) != 0
