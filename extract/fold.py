@@ -86,6 +86,9 @@ _SPELT = [
     (re.compile(r" ?\n[ \n]*"), "\n"),
 ]
 
+# Words with single marks between them, in which nothing can fold.
+_SIMPLE = re.compile(r"(?:[A-Za-z0-9]++[ /(),:;%-]?+)*+")
+
 
 @lru_cache(maxsize=65536)
 def fold(text: str) -> str:
@@ -97,6 +100,8 @@ def fold(text: str) -> str:
     """
     if "Â" in text or "Î" in text or "â" in text or "Ã" in text:
         text = _MOJIBAKE_RUN.sub(lambda found: _MOJIBAKE[found[0]], text)
+    if _SIMPLE.fullmatch(text):
+        return text.strip()
     if not text.isascii():
         text = _SUPERSCRIPT_RUN.sub(lambda found: "^" + found[0].translate(_SUPERSCRIPTS), text)
         text = unicodedata.normalize("NFKC", text.translate(_TRANSLATE)).translate(_TRANSLATE)

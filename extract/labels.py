@@ -9,9 +9,9 @@ from functools import cache
 from extract.band import joined, read_when
 from extract.fold import key
 from extract.model import When
-from extract.runs import IDEOGRAPHS
+from extract.runs import IDEOGRAPHS, Table
 from extract.tokens import years_pattern
-from extract.units import kinds
+from extract.units import is_unit
 from extract.vocabulary import vocabulary
 
 EDGE = " \t\n:：.,;-=_/|~、。…"
@@ -81,32 +81,32 @@ def _keep_bracket(parts: Parts, inside: str) -> str:
 
 
 @cache
-def _one_year_pattern() -> re.Pattern[str]:
+def one_year_words() -> Table[float]:
+    """The wordings of "per year" and "first year", by key."""
     lists = vocabulary().phrases
-    words = sorted({*lists.get("first_year", ()), *lists.get("per_year", ())}, key=len, reverse=True)
-    return re.compile("|".join(_standing_alone(word) for word in words), re.IGNORECASE)
+    return Table({key(word): 1.0 for word in (*lists.get("first_year", ()), *lists.get("per_year", ()))})
 
 
-@cache
-def one_year_keys() -> frozenset[str]:
-    """The wordings of "per year" and "first year" as keys, for labels without spaces."""
-    lists = vocabulary().phrases
-    return frozenset(key(word) for word in (*lists.get("first_year", ()), *lists.get("per_year", ())))
+_DIGIT = re.compile(r"\d")
+
+
+def _take_years(parts: Parts, text: str) -> str:
+    runs = one_year_words().runs(text)
+    one = (runs[0].start, runs[0].end) if runs else None
+    many = years_pattern().search(text) if _DIGIT.search(text) else None
+    if many and (one is None or not one[0] <= many.start() < one[1]):
+        parts.when = joined(parts.when, When(years=float(many[1])))
+        return text[: many.start()] + " " + text[many.end() :]
+    if one is None:
+        return text
+    parts.when = joined(parts.when, When(years=1.0))
+    return text[: one[0]] + " " + text[one[1] :]
 
 
 def _standing_alone(word: str) -> str:
     before = r"(?<![^\W\d_])" if word[0].isalpha() and word[0].isascii() else ""
     after = r"(?![^\W_])" if word[-1].isalnum() and word[-1].isascii() else ""
     return before + re.escape(word) + after
-
-
-def _take_years(parts: Parts, text: str) -> str:
-    one, many = _one_year_pattern().search(text), years_pattern().search(text)
-    found = many if many and (not one or not one.start() <= many.start() < one.end()) else one
-    if not found:
-        return text
-    parts.when = joined(parts.when, When(years=float(many[1]) if found is many and many else 1.0))
-    return text[: found.start()] + " " + text[found.end() :]
 
 
 # "-40 to +85", with or without its unit.
@@ -124,6 +124,8 @@ def _condition_pattern() -> re.Pattern[str]:
 
 
 def _take_condition(parts: Parts, text: str) -> str:
+    if "@" not in text and not _DIGIT.search(text):
+        return text
     found = _condition_pattern().search(text) or _AT_REST.search(text)
     if not found or found.start() < 1:
         return text
@@ -161,6 +163,8 @@ def take_bound(parts: Parts) -> None:
 
 def _cjk_bound(parts: Parts) -> bool:
     """Take off a bound word in ideographs ("最大"), written without a space; whether there was one."""
+    if not IDEOGRAPHS.search(parts.core):
+        return False
     for word in vocabulary().phrases.get("max", ()) + vocabulary().phrases.get("min", ()):
         if not IDEOGRAPHS.match(word):
             continue
@@ -186,8 +190,3 @@ def without_unit(parts: Parts) -> bool:
             take_bound(parts)
             return True
     return False
-
-
-def is_unit(text: str) -> bool:
-    """Whether the whole text is a unit of some field, printed in any spelling."""
-    return bool(text) and len(text) < 24 and any(kind.fields and kind.unit(text) for kind in kinds().values())

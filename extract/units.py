@@ -80,6 +80,17 @@ def kind_of(field_name: str) -> Kind:
     raise KeyError(field_name)
 
 
+@cache
+def _of_fields() -> frozenset[str]:
+    """The caseless spellings of all units that some field is read in."""
+    return frozenset(spelling for kind in kinds().values() if kind.fields for spelling in kind.caseless)
+
+
+def is_unit(text: str) -> bool:
+    """Whether the whole text is a unit of some field, printed in any spelling."""
+    return bool(text) and len(text) < _LONGEST and _spelling(text).casefold() in _of_fields()
+
+
 @lru_cache(maxsize=4096)
 def factor(printed_unit: str, field: str) -> float | None:
     """What one `printed_unit` is in the unit of `field` ("kΩ" for `esr_ohm`: 1000.0); None where it is none of it."""

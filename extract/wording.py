@@ -7,7 +7,7 @@ from dataclasses import dataclass
 from functools import cache, lru_cache
 
 from extract.fold import fold, key
-from extract.labels import EDGE, Parts, one_year_keys, take_apart, without_unit
+from extract.labels import EDGE, Parts, one_year_words, take_apart, without_unit
 from extract.model import When
 from extract.runs import IDEOGRAPHS, words_of
 from extract.units import factor
@@ -246,7 +246,7 @@ def _run_together(parts: Parts) -> Label | None:
             continue
         if rest in words.bounds:
             parts.bound = parts.bound or words.bounds[rest]
-        elif rest in one_year_keys():
+        elif rest in one_year_words():
             parts.when = parts.when.model_copy(update={"years": 1.0})
         elif words.symbols.get(rest) != field and rest not in words.filling:
             return None
