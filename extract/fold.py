@@ -126,7 +126,8 @@ def _key(text: str) -> str:
     if not folded.isascii():
         folded = "".join(c for c in unicodedata.normalize("NFD", folded) if c not in _ACCENTS)
         folded = unicodedata.normalize("NFC", folded)
-    return "".join(c for c in folded if c.isalnum() or c == "/")
+    return _NOT_IN_KEY.sub("", folded)
 
 
+_NOT_IN_KEY = re.compile(r"[^\w/]|_")
 _ACCENTS = frozenset("\u0300\u0301\u0302\u0303\u0304\u0306\u0308\u030a\u030c\u0327\u0328")
