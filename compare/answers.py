@@ -15,12 +15,24 @@ from compare.bench import Bench
 from compare.charts import LoadPull, Slack
 from compare.circuit_text import ppm_limit_text, ppm_limits
 from compare.drawing import as_address, slack_strip_svg
-from compare.figures import count_word, frequency_text, number, ordinal, signed, spread, with_minus, with_unit
+from compare.figures import (
+    CLOCK_BELOW_MHZ,
+    SECONDS_A_DAY_PER_PPM,
+    count_word,
+    frequency_text,
+    number,
+    ordinal,
+    signed,
+    spread,
+    with_minus,
+    with_unit,
+)
 from compare.palette import Palette
 from compare.shown import NAMES
 from extract.model import FIELD_NAMES
 
 Row = Mapping[str, Any]
+ENDS = ("low", "mid", "high")
 MARKS = {"meets": "▲", "falls short": "▼", "cannot tell": "◇"}
 
 
@@ -332,21 +344,36 @@ class Number:
     how: str
 
 
-def numbers(review: Row) -> list[Number]:
-    """Every number that the review has, in the order of FIGURES."""
-    return [_number(review[key], shown) for key, shown in FIGURES.items() if key in review]
+def numbers(review: Row, bench: Bench) -> list[Number]:
+    """Every number that the review has, in the order of FIGURES; of a clock the error in seconds a day as well."""
+    shown = [_number(review[key], figure) for key, figure in FIGURES.items() if key in review]
+    if bench.requirement.frequency_mhz < CLOCK_BELOW_MHZ and "total_ppm" in review:
+        total = review["total_ppm"]
+        daily = {end: None if total[end] is None else total[end] * SECONDS_A_DAY_PER_PPM for end in ENDS}
+        how = f"frequency error in ppm times {SECONDS_A_DAY_PER_PPM} s a day"
+        day = {**daily, "how": how, "basis": total["basis"]}
+        named = Figure("The same for a clock", "s a day", sign=True)
+        shown.insert(1 + [one.name for one in shown].index(FIGURES["total_ppm"].name), _number(day, named))
+    return shown
 
 
 def _number(figure: Row, shown: Figure) -> Number:
+    factor, unit = (1e3, "µS") if _is_small_gm(figure, shown) else (1.0, shown.unit)
+
     def end(name: str) -> str:
-        value = figure[name]
-        if value is None:
+        if figure[name] is None:
             return "—"
+        value = figure[name] * factor
         return signed(value, shown.digits) if shown.sign else number(value, shown.digits)
 
     basis = figure["basis"] or ""
     said = "∴ estimated" if basis == "estimated" else basis
-    return Number(shown.name, end("low"), end("mid"), end("high"), shown.unit, said, with_minus(figure["how"] or ""))
+    return Number(shown.name, end("low"), end("mid"), end("high"), unit, said, with_minus(figure["how"] or ""))
+
+
+def _is_small_gm(figure: Row, shown: Figure) -> bool:
+    """Whether a transconductance is said in µS, as watch oscillators' sheets say it."""
+    return shown.unit == "mS" and all((figure[end] or 0) < 0.1 for end in ENDS)
 
 
 def load_pull(review: Row, bench: Bench, rated_pf: float | None, *, series: bool) -> LoadPull | None:

@@ -7,7 +7,7 @@ from dataclasses import dataclass
 from compare.bench import Bench, CircuitKeys, uses
 from compare.desk import field_key, field_of
 from compare.drawing import CircuitFigures, Mark
-from compare.figures import exact, frequency_text, number, spread, with_unit
+from compare.figures import CLOCK_BELOW_MHZ, SECONDS_A_DAY_PER_PPM, exact, frequency_text, number, spread, with_unit
 
 SET_IT = "Give the frequency, and what you know of the circuit, at the right; or open a bench file."
 READ_IT = "Each capacitance carries the two nodes it lies between. 0 is ground. Press a figure to change it."
@@ -18,7 +18,8 @@ def terms(bench: Bench) -> list[str]:
     asked = bench.requirement
     said = [f"Asked at **{frequency_text(asked.frequency_mhz)}**"]
     if limit := ppm_limit_text(bench):
-        said.append(f"**{limit}** in all, {number(asked.years)} years")
+        day = f" ({day})" if (day := seconds_a_day_text(bench)) else ""
+        said.append(f"**{limit}**{day} in all, {number(asked.years)} years")
     if asked.temperature_c is not None:
         said.append(f"**{temperatures(asked.temperature_c)}**")
     source = "by default" if asked.margin_source == "default" else asked.margin_source
@@ -55,6 +56,15 @@ def ppm_limit_text(bench: Bench) -> str:
     """`±50 ppm`; "" where no limit is set."""
     limits = ppm_limits(bench)
     return "" if limits is None else spread(*limits, "ppm")
+
+
+def seconds_a_day_text(bench: Bench) -> str:
+    """`±4.32 s a day`: the limit as a clock's error, for parts under 1 MHz; else ""."""
+    limits = ppm_limits(bench)
+    if limits is None or bench.requirement.frequency_mhz >= CLOCK_BELOW_MHZ:
+        return ""
+    low, high = limits
+    return spread(low * SECONDS_A_DAY_PER_PPM, high * SECONDS_A_DAY_PER_PPM, "s a day")
 
 
 def gm_over_all(bench: Bench) -> tuple[float, float] | None:

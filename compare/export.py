@@ -7,12 +7,11 @@ import io
 from collections.abc import Mapping, Sequence
 from typing import Any
 
-from compare.answers import FIGURES, SHORT_NAMES, asked_strips, row_name
+from compare.answers import ENDS, FIGURES, SHORT_NAMES, asked_strips, row_name
 from compare.figures import with_unit
 
 Row = Mapping[str, Any]
 Table = tuple[list[str], list[list[Any]]]
-ENDS = ("low", "mid", "high")
 
 
 def rank_table(rows: Sequence[Row]) -> Table:

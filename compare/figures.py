@@ -83,6 +83,11 @@ def counted(count: int, one: str, many: str = "") -> str:
     return f"{count} {one if count == 1 else many or one + 's'}"
 
 
+# A million seconds are 11.57 days: 1 ppm is 0.0864 s a day.
+SECONDS_A_DAY_PER_PPM = 0.0864
+CLOCK_BELOW_MHZ = 1.0
+
+
 def frequency_text(frequency_mhz: float) -> str:
     """`26 MHz`, `32.768 kHz`: the unit that the trade says it in."""
     if frequency_mhz < 1:

@@ -223,7 +223,7 @@ def judged(review: dict[str, Any], bench: Bench) -> None:
     st.markdown(
         ":gray[:small[Press a number to see how it was reached. Low and high are its ends, not worse and better.]]"
     )
-    st.html(pieces.numbers_html(answers.numbers(review)))
+    st.html(pieces.numbers_html(answers.numbers(review, bench)))
 
 
 def to_do(review: dict[str, Any]) -> None:

@@ -129,7 +129,7 @@ def test_under_the_heading_stands_what_decides():
 
 
 def test_every_number_has_three_values_a_unit_and_how():
-    rows = {one.name: one for one in answers.numbers(hand_made.review())}
+    rows = {one.name: one for one in answers.numbers(hand_made.review(), BENCH)}
     load = rows["Load that the circuit presents"]
     assert (load.low, load.mid, load.high, load.unit) == ("7.38", "7.698", "8.01", "pF")
     assert load.how == "A–0 14.6 pF in series with B–0 14.6 pF, and 0.4 pF"
@@ -140,7 +140,7 @@ def test_every_number_has_three_values_a_unit_and_how():
 
 def test_an_estimate_is_marked_and_a_missing_end_is_a_dash():
     changed = hand_made.review(motional_capacitance_ff=hand_made.figure(1.0, 2.0, None, "estimated", "estimated"))
-    c1 = next(one for one in answers.numbers(changed) if one.name == "Motional capacitance C1")
+    c1 = next(one for one in answers.numbers(changed, BENCH) if one.name == "Motional capacitance C1")
     assert (c1.basis, c1.high) == ("∴ estimated", "—")
 
 
@@ -199,3 +199,20 @@ def test_what_is_open_is_listed_before_it_is_signed():
 def test_notes_of_either_shape_are_read():
     notes = [{"level": "info", "message": "x.pdf: states no frequency", "where": None}, "plain"]
     assert answers.note_lines(hand_made.ranking(notes=notes)) == ["x.pdf: states no frequency", "plain"]
+
+
+WATCH = read_bench("[requirement]\nfrequency_mhz = 0.032768\ntotal_ppm = 200.0\n", "watch.toml")
+
+
+def test_a_clocks_error_is_said_in_seconds_a_day_too():
+    # 100 ppm of 86 400 s are 8.64 s.
+    review = hand_made.review(total_ppm=hand_made.figure(-100.0, 0.0, 50.0))
+    day = next(one for one in answers.numbers(review, WATCH) if one.name == "The same for a clock")
+    assert (day.low, day.high, day.unit) == ("−8.64", "+4.32", "s a day")
+    assert all(one.name != "The same for a clock" for one in answers.numbers(review, BENCH))
+
+
+def test_a_small_transconductance_is_said_in_microsiemens():
+    review = hand_made.review(critical_transconductance_ms=hand_made.figure(0.001, 0.0012, 0.0023))
+    critical = next(one for one in answers.numbers(review, WATCH) if one.name == "Critical transconductance")
+    assert (critical.low, critical.mid, critical.high, critical.unit) == ("1", "1.2", "2.3", "µS")

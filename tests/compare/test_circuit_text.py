@@ -100,3 +100,8 @@ def test_the_drawing_tells_given_taken_none_and_not_known_apart():
     assert circuit_figures(BENCH).input_stray.text == "2.6 pF"
     assert figures.series_resistor is None
     assert circuit_figures(WITH_RESISTOR).series_resistor.text == "470 Ω"
+
+
+def test_a_clocks_limit_is_said_in_seconds_a_day_too():
+    watch = read_bench("[requirement]\nfrequency_mhz = 0.032768\ntotal_ppm = 50.0\n", "watch.toml")
+    assert "**±50 ppm** (±4.32 s a day) in all, 10 years" in terms(watch)
