@@ -1,12 +1,13 @@
-"""Big grids at little cost: cell addresses, and cells that work out their place only when somebody asks for it."""
+"""What the readers of grids share: cell addresses, light cells for big lists, titles of tables."""
 
 from __future__ import annotations
 
 import gc
-from collections.abc import Callable, Iterator
+from collections.abc import Callable, Iterable, Iterator
 from contextlib import contextmanager
+from dataclasses import replace
 
-from extract.documents.model import Cell
+from extract.documents.model import Cell, Line, Table
 from extract.model import Where
 
 Placer = Callable[[int, int], Where]
@@ -82,3 +83,15 @@ def garbage_left() -> Iterator[None]:
     finally:
         if was_on:
             gc.enable()
+
+
+def titled(blocks: Iterable[Table | Line]) -> tuple[Table | Line, ...]:
+    """Blocks in their order; a table without a title has the heading that stands right above it."""
+    result: list[Table | Line] = []
+    for block in blocks:
+        above = result[-1] if result else None
+        if isinstance(block, Table) and not block.title and isinstance(above, Line) and above.heading:
+            result.append(replace(block, title=above.text))
+        else:
+            result.append(block)
+    return tuple(result)

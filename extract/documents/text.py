@@ -8,6 +8,7 @@ from collections.abc import Iterator, Sequence
 
 from extract.documents import marks, spacing
 from extract.documents.decoding import decode
+from extract.documents.grid import titled
 from extract.documents.model import Cell, Document, Line, Segment, Table
 from extract.model import Note, Where
 
@@ -35,8 +36,8 @@ def read(data: bytes) -> Document:
     lines = [(number, line) for number, line in enumerate(_LINE_END.split(text), start=1)]
     if is_markdown(text):
         cleaned, struck = _without_markup(lines)
-        return Document("text", tuple(blocks_of(cleaned)), notes=(*notes, *struck))
-    return Document("text", tuple(blocks_of(lines)), notes=notes)
+        return Document("text", titled(blocks_of(cleaned)), notes=(*notes, *struck))
+    return Document("text", titled(blocks_of(lines)), notes=notes)
 
 
 def is_markdown(text: str) -> bool:

@@ -11,7 +11,7 @@ from lxml import html as lxml_html
 
 from extract.documents import text as plain
 from extract.documents.decoding import decode
-from extract.documents.grid import address
+from extract.documents.grid import address, titled
 from extract.documents.model import Cell, Document, DocumentError, Line, Segment, Table
 from extract.documents.webtext import BLOCKS, inline, is_leaf, line_of, prune, text_of, tidy
 from extract.model import Where
@@ -45,7 +45,7 @@ def read(data: bytes) -> Document:
             "The web page holds no text; a script may fill it in. Print it to PDF in the browser, or copy its text."
         )
     headers = tuple(Line((Segment(title, Where(line=1)),), Where(line=1)) for title in titles if title)
-    return Document("html", tuple(page.blocks), page_headers=headers, notes=notes)
+    return Document("html", titled(page.blocks), page_headers=headers, notes=notes)
 
 
 @dataclass(slots=True)

@@ -11,7 +11,7 @@ from dataclasses import dataclass, field
 from lxml import etree
 
 from extract.documents import marks, spacing
-from extract.documents.grid import address
+from extract.documents.grid import address, titled
 from extract.documents.model import Cell, Document, DocumentError, Line, Segment, Table
 from extract.documents.opendocument import ZIP_FAULTS
 from extract.model import Note, Where
@@ -80,7 +80,7 @@ class _Reader:
         headers = tuple(self._page_headers(names))
         if not self.blocks and not headers:
             raise DocumentError("The Word document holds no text; it may hold pictures only. Save them as PDF or PNG.")
-        return Document("docx", tuple(self.blocks), page_headers=headers, notes=tuple(self.notes))
+        return Document("docx", titled(self.blocks), page_headers=headers, notes=tuple(self.notes))
 
     def _flow(self, parent: etree._Element) -> None:
         """Paragraphs and tables in their order; paragraphs with the same tabs are a table."""

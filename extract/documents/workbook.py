@@ -9,7 +9,7 @@ from collections.abc import Callable, Iterator, Mapping, Sequence
 from typing import Any
 
 from extract.documents import numberformat, opendocument
-from extract.documents.grid import address, placed_cells
+from extract.documents.grid import address, placed_cells, titled
 from extract.documents.model import Cell, Document, DocumentError, Line, Segment, Table
 from extract.documents.opendocument import DAMAGED, LOCKED, ZIP_FAULTS
 from extract.documents.spacing import pieces
@@ -53,7 +53,7 @@ def _hidden_note(name: str) -> Note:
 def _whole(blocks: list[Table | Line], notes: list[Note]) -> Document:
     if not blocks:
         raise DocumentError("No sheet that the workbook shows holds any text. Look whether the right file was saved.")
-    return Document("xlsx", tuple(blocks), notes=tuple(notes))
+    return Document("xlsx", titled(blocks), notes=tuple(notes))
 
 
 def _document(book: Any, data: bytes) -> Document:

@@ -7,8 +7,8 @@ from hypothesis import given
 from hypothesis import strategies as st
 from openpyxl.utils import get_column_letter
 
-from extract.documents.grid import address, column_letters, placed_cells
-from extract.documents.model import Cell
+from extract.documents.grid import address, column_letters, placed_cells, titled
+from extract.documents.model import Cell, Line, Segment, Table
 from extract.model import Where
 
 
@@ -37,3 +37,13 @@ def test_a_light_cell_cannot_be_changed() -> None:
     (cell,) = placed_cells([["60"]], place)
     with pytest.raises(AttributeError):
         cell.text = "61"  # type: ignore[misc]
+
+
+def test_a_table_has_the_heading_right_above_as_its_title() -> None:
+    table = Table((), 1, 1, Where(table=1))
+    heading, prose = (
+        Line((Segment(text, Where(line=1)),), Where(line=1), heading=is_heading)
+        for text, is_heading in (("VX-32", True), ("see below", False))
+    )
+    blocks = titled([heading, table, table, prose, table])
+    assert [block.title for block in blocks if isinstance(block, Table)] == ["VX-32", "", ""]
