@@ -49,9 +49,7 @@ def _labels(lines: Sequence[Line], start: int) -> list[Line]:
     return run[:known]
 
 
-def _columns(
-    lines: Sequence[Line], start: int, count: int
-) -> tuple[list[Line], list[str], int] | None:
+def _columns(lines: Sequence[Line], start: int, count: int) -> tuple[list[Line], list[str], int] | None:
     """The run of values and the run of units, each as long as the run of labels; values end where units begin."""
     for begin in range(start, min(len(lines) - count, start + 4 * count)):
         values = lines[begin : begin + count]

@@ -12,7 +12,8 @@ from extract.footnotes import footnote_of
 from extract.heads import is_unit
 from extract.keys import choices_in, key_label
 from extract.meaning import meaning
-from extract.prose import is_label, pair_entries, prose_entries, split_pairs
+from extract.prose import is_label, pair_entries, split_pairs
+from extract.streams import fragments, paragraph, stream_entries
 
 
 def line_items(lines: Sequence[Line]) -> list[Item]:
@@ -20,7 +21,13 @@ def line_items(lines: Sequence[Line]) -> list[Item]:
     items: list[Item] = []
     index = 0
     while index < len(lines):
-        taken = _dump(lines, index, items) or _key_run(lines, index, items) or _label_over_value(lines, index, items) or _one(lines[index], items)
+        taken = (
+            _dump(lines, index, items)
+            or _key_run(lines, index, items)
+            or _stream(lines, index, items)
+            or _label_over_value(lines, index, items)
+            or _one(lines[index], items)
+        )
         index += taken
     return items
 
@@ -30,6 +37,25 @@ def _dump(lines: Sequence[Line], index: int, items: list[Item]) -> int:
     items.extend(_text(line) for line in lines[index : index + taken])
     items.extend(entries)
     return taken
+
+
+def _stream(lines: Sequence[Line], index: int, items: list[Item]) -> int:
+    """A wrapped paragraph, or a run of broken lines, read as one text; a quoted line of mail is somebody else's."""
+    if lines[index].text.lstrip().startswith(">"):
+        return 1
+    if (count := fragments(lines, index)) > 1:
+        items.extend(_text(line) for line in lines[index : index + count])
+        items.extend(stream_entries(lines[index : index + count], "pair"))
+        return count
+    count = paragraph(lines, index)
+    if count < 2:
+        return 0
+    run = lines[index : index + count]
+    whole = " ".join(line.text for line in run)
+    items.append(Text(Piece(whole, run[0].where), segments=tuple(segment for line in run for segment in line.segments)))
+    if footnote_of(whole) is None:
+        items.extend(stream_entries(run, "prose"))
+    return count
 
 
 def _text(line: Line) -> Text:
@@ -145,6 +171,3 @@ def _label_above(items: Sequence[Item]) -> Piece | None:
         if is_label(text) or (len(text) <= 60 and not any(character.isdigit() for character in text)):
             return Piece(item.piece.text, item.piece.where)
     return None
-
-
-__all__ = ["line_items", "prose_entries"]

@@ -83,7 +83,9 @@ def _column(index: int, levels: tuple[str, ...], title: str) -> _Column:
     return column
 
 
-_SYMBOL_AND_UNIT = re.compile(r"\s*(?P<symbol>[^\W\d_]\w{0,3}(?:\s(?:min|max|typ)\.?)?)\s*[(\[|/,]?\s*(?P<unit>[^()\[\]]+?)[)\]]?\s*")
+_SYMBOL_AND_UNIT = re.compile(
+    r"\s*(?P<symbol>[^\W\d_]\w{0,3}(?:\s(?:min|max|typ)\.?)?)\s*[(\[|/,]?\s*(?P<unit>[^()\[\]]+?)[)\]]?\s*"
+)
 
 
 def _by_unit(head: Head) -> Label | None:

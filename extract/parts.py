@@ -221,4 +221,3 @@ def _part(draft: Draft, maker: str | None) -> Part:
 
 def _one_cut(cuts: set[str]) -> str | None:
     return next(iter(cuts)) if len(cuts) == 1 else None
-

@@ -4,6 +4,7 @@ from __future__ import annotations
 
 import re
 from collections.abc import Iterator
+from dataclasses import replace
 
 from extract import wording
 from extract.candidates import Candidate, has_unit, read
@@ -12,12 +13,15 @@ from extract.entries import Entry, Piece, Placed, Source, Value
 from extract.fold import fold
 from extract.meaning import meaning
 from extract.model import When
+from extract.units import unit_at
 from extract.vocabulary import vocabulary
 
 _CHUNK = re.compile(r"\n|;|；|•|\s\|\s|。|‖")
 _SEPARATOR = re.compile(r"[:=](?!//)")
 _WORD_START = re.compile(r"(?<![^\s,，、。([])\S")
-_ABBREVIATED = "".join(f"(?<!{word})" for word in ("max", "min", "typ", "nom", "std", "ref", "req", "emp", "cap", "res", "mfr", "mfg"))
+_ABBREVIATED = "".join(
+    f"(?<!{word})" for word in ("max", "min", "typ", "nom", "std", "ref", "req", "emp", "cap", "res", "mfr", "mfg")
+)
 _SENTENCE = re.compile(
     rf"(?i:{_ABBREVIATED})(?<=[^\W\d])[.;!?]\s+(?=[^\W\d_])(?![a-zà-ÿ])|(?<=[\d%)°])[.;]\s+(?=[^\W\d_])|[。；]\s*|\n"
 )
@@ -102,20 +106,63 @@ def prose_entries(piece: Placed) -> list[Entry]:
 
 
 def _sentence_entries(sentence: str, piece: Placed) -> Iterator[Entry]:
+    """Each label with its amount: the one directly before it that no other label took, else the next behind it."""
     labels = wording.find_labels(sentence)
     taken = 0
     for index, label in enumerate(labels):
         until = labels[index + 1].start if index + 1 < len(labels) else len(sentence)
-        after = sentence[label.end : until]
-        field = label.label.field
-        name = sentence[label.start : label.end]
-        if _states(after[:NEAR], field, exact=label.label.exact):
-            yield _entry(name, after, piece, "prose")
+        after, before = sentence[label.end : until], sentence[taken : label.start]
+        field, name = label.label.field, sentence[label.start : label.end]
+        amount = None if field in _UNITLESS else _adjacent(before, field)
+        if amount is not None:
+            yield _entry(name, amount, piece, "prose")
+            taken = label.end
+        elif bands := _zipped_bands(after, field):
+            for band, value in bands:
+                values = (Value(Piece(value, piece.where, piece.confidence)),)
+                yield Entry(Piece(name, piece.where), values, conditions=(band,), source="prose")
             taken = until
-            continue
-        before = sentence[max(taken, label.start - NEAR) : label.start]
-        if field not in _UNITLESS and _states(before, field, exact=True):
-            yield _entry(name, _last_amount(before, field), piece, "prose")
+        elif _states(after[:NEAR], field, exact=label.label.exact):
+            yield _entry(name, after, piece, "prose")
+            taken = label.end + _amount_end(after, field)
+        elif field not in _UNITLESS and _states(before[-NEAR:], field, exact=True):
+            yield _entry(name, _last_amount(before[-NEAR:], field), piece, "prose")
+            taken = label.end
+
+
+def _adjacent(before: str, field: str) -> str | None:
+    """The amount that ends right before a label ("±10 ppm tolerance", "a 9 pF load capacitance")."""
+    tail = before[-NEAR:].rstrip(" -")
+    for match in re.finditer(r"(?<![\w.,±+-])[-+±≤≥<>~]?\s?\d", tail):
+        end = _amount_end(tail[match.start() :], field)
+        if end and match.start() + end >= len(tail):
+            return tail[match.start() :]
+    return None
+
+
+def _amount_end(text: str, field: str) -> int:
+    """Where the first amount with a unit of `field` ends, its bound word included; 0 where there is none."""
+    for match in re.finditer(r"(?<=\d)(?![\d])", text):
+        found = unit_at(text, field, match.start())
+        if found is not None:
+            bound = re.match(r"\s?(?:max|min|typ|maximum|minimum|typical)\b\.?", text[found[2] :], re.IGNORECASE)
+            return found[2] + (bound.end() if bound else 0)
+    return 0
+
+
+def _zipped_bands(text: str, field: str) -> list[tuple[str, str]]:
+    """Several frequency bands and behind them as many resistances, from a dump that reads columns one by one."""
+    if field != "esr_ohm":
+        return []
+    bands = list(_FREQUENCIES.finditer(text))
+    if len(bands) < 2:
+        return []
+    rest = text[bands[-1].end() :]
+    values = _OHMS.findall(rest)
+    between = text[bands[0].start() : bands[-1].end()]
+    if len(values) != len(bands) or _OHMS.search(between):
+        return []
+    return [(band[0], value) for band, value in zip(bands, values, strict=True)]
 
 
 def _states(text: str, field: str, *, exact: bool) -> bool:
@@ -137,6 +184,7 @@ _FREQUENCY = re.compile(r"(?i)(?<![\w.,±-])\d+(?:[.,]\d+)*\s?[mk]hz\b")
 _FREQUENCIES = re.compile(
     r"(?i)(?<![\w.,±-])\d+(?:[.,]\d+)*\s?(?:[mk]hz)?\s?(?:to|-|~|…|bis|à|a|至)\s?\d+(?:[.,]\d+)*\s?[mk]hz\b"
 )
+_OHMS = re.compile(r"(?i)\d+(?:[.,]\d+)?\s?[km]?(?:Ω|ohms?)(?:\s?(?:max|typ)\b\.?)?")
 _PPM = re.compile(r"(?i)±\s?\d+(?:[.,]\d+)?(?:\s?-?[\d.,]+)?\s?ppm")
 
 
@@ -200,9 +248,11 @@ def _loose_in_clause(piece: Piece) -> list[Candidate]:
         tail = text[match.end() : match.end() + 45]
         span = condition_of(tail).temperature_c
         if span is not None and span[1] - span[0] > 40:
-            found += _guesses(piece, "frequency_stability_ppm", match[0])
+            plain = _guesses(piece, "frequency_stability_ppm", match[0])
+            found += [replace(each, doubts=(), inferred=False) for each in plain]
         elif re.match(r"\W{0,3}\w{0,3}\s?\+?2[0-9]\s?°", tail):
-            found += _guesses(piece, "frequency_tolerance_ppm", match[0])
+            plain = _guesses(piece, "frequency_tolerance_ppm", match[0])
+            found += [replace(each, doubts=(), inferred=False) for each in plain]
     span = condition_of(text).temperature_c
     stored = any(label.label.field == "storage_temperature_c" for label in wording.find_labels(text))
     if span is not None and span[0] < 5 and span[1] - span[0] > 40 and not stored:

@@ -60,7 +60,12 @@ def _named_in_heading(item: Text) -> str | None:
     ):
         return None
     at = text.find(tokens[0])
-    if at == 0 or item.heading or package_in(text) or any(word in lowered for word in identity_words()["crystal"]["words"]):
+    if (
+        at == 0
+        or item.heading
+        or package_in(text)
+        or any(word in lowered for word in identity_words()["crystal"]["words"])
+    ):
         before = lowered[:at].rstrip(" :#.(-")
         return None if any(before.endswith(word) for word in identity_words()["not_parts"]["before"]) else tokens[0]
     return None

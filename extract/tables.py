@@ -174,7 +174,12 @@ def _bands_across(rows: list[Row]) -> bool:
     banded = fields[0].label is not None and fields[0].label.field in ("frequency_mhz", "load_capacitance_pf")
     others = any(each.label is not None and each.label.field == "esr_ohm" for each in fields[1:])
     values = [cell for cell in distinct(rows[0])[1:] if meaning(cell.text).value]
-    return banded and others and len(values) >= 2 and all(meaning(cell.text).role in (None, "band") for cell in distinct(rows[0]))
+    return (
+        banded
+        and others
+        and len(values) >= 2
+        and all(meaning(cell.text).role in (None, "band") for cell in distinct(rows[0]))
+    )
 
 
 def _read_block(block: _Block, table: Table) -> Iterator[Item]:
@@ -269,4 +274,3 @@ def _folds(heads: list[Head]) -> list[tuple[int, int]]:
         if any(groups[0]) and all(left == right for left, right in pairwise(groups)) and len(set(groups[0])) == width:
             return [(start, start + width) for start in range(0, len(names), width)]
     return [(0, len(heads))]
-

@@ -1,0 +1,120 @@
+"""Lines that belong together: wrapped paragraphs, and pages whose labels, values and units were broken over lines."""
+
+from __future__ import annotations
+
+import re
+from collections.abc import Sequence
+from dataclasses import replace
+
+from extract.documents.model import Line
+from extract.entries import Entry, Piece, Source, Value
+from extract.fold import fold
+from extract.heads import is_unit
+from extract.meaning import meaning
+from extract.prose import is_label, pair_entries, split_pairs
+
+WIDE = 45
+LEAST_FRAGMENTS = 6
+_BULLET = re.compile(r"^\s*(?:[•▪■◆●*·-]\s|\d{1,2}[.)]\s|\[|※)")
+_OPEN_END = re.compile(r"(?:[\d±]|\b(?:to|over|of|at|and|bis|von|bei|und)|[~…(,/])\s*$")
+
+
+def paragraph(lines: Sequence[Line], start: int) -> int:
+    """How many lines from `start` on are one wrapped paragraph of prose; 1 where the next is a line of its own."""
+    end = start
+    while end < len(lines) and _is_prose(lines[end]) and (end == start or _follows(lines[end - 1], lines[end])):
+        end += 1
+        if len(lines[end - 1].text) < WIDE:
+            break
+    return end - start
+
+
+def _is_prose(line: Line) -> bool:
+    if len(line.segments) != 1 or line.heading or _BULLET.match(line.text) or line.text.lstrip().startswith(">"):
+        return False
+    pairs, rest = split_pairs(fold(line.text))
+    return not pairs or bool(rest.strip())
+
+
+def _follows(above: Line, line: Line) -> bool:
+    """Whether two lines stand one right below the other, as far as their places tell."""
+    if above.where.line is not None and line.where.line is not None:
+        return line.where.line - above.where.line == 1
+    if above.where.page != line.where.page:
+        return False
+    return True
+
+
+def fragments(lines: Sequence[Line], start: int) -> int:
+    """How many lines from `start` on are pieces of labels, values and units; 0 where most lines stand by themselves."""
+    end = start
+    while (
+        end < len(lines)
+        and not lines[end].heading
+        and len(lines[end].text) <= 70
+        and not _BULLET.match(lines[end].text)
+    ):
+        end += 1
+    run = lines[start:end]
+    if len(run) < LEAST_FRAGMENTS or not is_label(_first_words(run)):
+        return 0
+    broken = sum(_is_broken(line, run[index + 1] if index + 1 < len(run) else None) for index, line in enumerate(run))
+    return len(run) if broken >= 3 and broken >= 0.15 * len(run) else 0
+
+
+def _first_words(run: Sequence[Line]) -> str:
+    """A run of fragments begins with a label, on one line or two."""
+    first = fold(run[0].text)
+    if is_label(first):
+        return first
+    two = f"{first} {fold(run[1].text)}"
+    words = two.split()
+    return next(
+        (" ".join(words[:count]) for count in range(len(words), 0, -1) if is_label(" ".join(words[:count]))), first
+    )
+
+
+def _is_broken(line: Line, below: Line | None) -> bool:
+    """A line that says nothing without its neighbour: a unit, a bound word, a value with its unit on the next line."""
+    text = fold(line.text)
+    known = meaning(text)
+    if is_unit(text) or known.role in ("min", "typ", "max"):
+        return True
+    if below is None:
+        return False
+    next_text = fold(below.text)
+    if _OPEN_END.search(text) and not is_label(next_text):
+        return True
+    halves = not known.known and not known.value and not is_label(next_text) and is_label(f"{text} {next_text}")
+    return halves
+
+
+def stream_entries(lines: Sequence[Line], source: Source) -> list[Entry]:
+    """What the lines say when they are read as one text; each value in the place of its own line."""
+    text = fold(" ".join(line.text for line in lines))
+    found = pair_entries(Piece(text, lines[0].where))
+    placed: list[Entry] = []
+    at = 0
+    for entry in found:
+        values = []
+        for value in entry.values:
+            line, at = _line_of(value.piece.text, lines, at)
+            values.append(replace(value, piece=Piece(value.piece.text, line.where, _sure(line))))
+        placed.append(replace(entry, values=tuple(values), source=entry.source if source == "prose" else source))
+    return placed
+
+
+def _sure(line: Line) -> float:
+    return min((segment.confidence for segment in line.segments), default=1.0)
+
+
+def _line_of(text: str, lines: Sequence[Line], start: int) -> tuple[Line, int]:
+    """The first line from `start` on that holds the first number of a text."""
+    number = re.search(r"[-+±]?\d+(?:[.,]\d+)*", text)
+    for index in range(start, len(lines)):
+        if number is None or number[0] in fold(lines[index].text):
+            return lines[index], index
+    return lines[start if start < len(lines) else 0], start
+
+
+__all__ = ["Value", "fragments", "paragraph", "stream_entries"]
