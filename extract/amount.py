@@ -169,6 +169,8 @@ def _refused(items: list[Item], pieces: list[Token], row: Field) -> list[Value]:
         if piece.kind == "broken":
             return [Value(doubts=(f"{piece.text!r} is no number; left out",))]
     groups = [item.group for item in items if item.group is not None]
+    if not groups and any(piece.kind == "pm" for piece in pieces) and any(piece.kind == "word" for piece in pieces):
+        return [Value(doubts=("no number stands behind ±; left out",))]
     if len(groups) == 1 and groups[0].shape == "single" and groups[0].foreign in _FIELD_KINDS:
         unit = groups[0].low_unit.text.strip() if groups[0].low_unit else ""
         return [Value(doubts=(f"no unit called {unit} for {row.title} ({row.unit or 'a plain number'}); left out",))]

@@ -42,7 +42,7 @@ class Parts:
 
 
 def take_apart(folded: str) -> Parts:
-    """The parts of a folded label; "typical" and "nominal" stay in the core, since a wording may hold them."""
+    """The parts of a folded label; "nominal" and "standard" stay in the core, since a wording may hold them."""
     text = _TORN.sub("", folded).replace("\n", " ")
     text = _FOOTNOTE.sub("", _NUMBERING.sub("", text)).rstrip(EDGE)
     text = _FOOTNOTE.sub("", text)
@@ -63,21 +63,31 @@ def take_apart(folded: str) -> Parts:
 def _keep_bracket(parts: Parts, inside: str) -> str:
     """Sort a bracket's content into bound, unit, condition or another name of the label."""
     words = [word for word in re.split(r"[\s,;/]+", inside) if word]
-    bounds = [vocabulary().bounds.get(key(word)) for word in words]
+    bounds = [None if is_nominal(word) else vocabulary().bounds.get(key(word)) for word in words]
     if words and None not in bounds:
         parts.bound = parts.bound or "/".join(dict.fromkeys(bound for bound in bounds if bound))
         return " "
-    plain = " ".join(word for word, bound in zip(words, bounds, strict=True) if bound is None)
-    for unit in (inside.strip("± "), plain.strip("± ")):
-        if is_unit(unit):
-            parts.unit = parts.unit or unit
-            parts.plus_minus = parts.plus_minus or "±" in inside
-            parts.bound = parts.bound or next((bound for bound in bounds if bound), None)
-            return " "
+    parts.bound = parts.bound or next((bound for bound in bounds if bound), None)
+    unit, rest = _unit_in(parts, inside, words, bounds)
+    if unit:
+        parts.unit = parts.unit or unit
+        parts.plus_minus = parts.plus_minus or "±" in inside
+        parts.when = joined(parts.when, read_when(rest)) if rest else parts.when
+        return " "
     if inside:
         parts.when = joined(parts.when, read_when(inside))
         parts.brackets.append(inside)
     return " "
+
+
+def _unit_in(parts: Parts, inside: str, words: list[str], bounds: list[str | None]) -> tuple[str, str]:
+    """The unit that a bracket holds ("µW", "Ω max", "±ppm", "ppm @25 °C", "ppm/year"), and the condition behind it."""
+    plain = " ".join(word for word, bound in zip(words, bounds, strict=True) if bound is None)
+    before, _, condition = inside.partition("@")
+    for unit, rest in ((inside, ""), (plain, ""), (before, condition), (_take_years(parts, inside), "")):
+        if is_unit(unit.strip("± /")):
+            return unit.strip("± /"), rest
+    return "", ""
 
 
 @cache
@@ -133,6 +143,8 @@ def _take_condition(parts: Parts, text: str) -> str:
     parts.when = joined(parts.when, read_when(printed))
     last = printed.split()[-1] if printed.split() else ""
     parts.bound = parts.bound or vocabulary().bounds.get(key(last))
+    if re.search(r"\s(?:in|en)\s\S+$", printed) and is_unit(last):
+        parts.unit = parts.unit or last
     return text[: found.start()]
 
 
@@ -140,7 +152,7 @@ _SEVERAL_BOUNDS = re.compile(r"[\s(\[]*(?P<first>[a-z.]+)\s?[/,]\s?(?P<second>[a
 
 
 def take_bound(parts: Parts) -> None:
-    """Min and max words at either end belong to no wording; "typical", "nominal" and "standard" may, and stay."""
+    """Bound words at either end belong to no wording; "nominal" and "standard" may, and stay."""
     if found := _SEVERAL_BOUNDS.search(parts.core):
         bounds = [vocabulary().bounds.get(key(found[name])) for name in ("first", "second")]
         if bounds[0] and bounds[1] and bounds[0] != bounds[1] and found.start() > 0:
@@ -153,12 +165,17 @@ def take_bound(parts: Parts) -> None:
             return
         for at, rest in ((-1, words[:-1]), (0, words[1:])):
             bound = vocabulary().bounds.get(key(words[at]))
-            if bound in ("min", "max"):
+            if bound in ("min", "max") or (bound == "typ" and not is_nominal(words[at])):
                 parts.bound = parts.bound or bound
                 parts.core = " ".join(rest).strip(EDGE)
                 break
         else:
             return
+
+
+def is_nominal(word: str) -> bool:
+    """Whether the word names the usual value without calling it typical ("nominal", "standard", "type")."""
+    return word.casefold().strip(".") in vocabulary().phrases.get("nominal", ()) or key(word) == "type"
 
 
 def _cjk_bound(parts: Parts) -> bool:
@@ -178,9 +195,9 @@ def _cjk_bound(parts: Parts) -> bool:
 
 def without_unit(parts: Parts) -> bool:
     """Take a unit off the end of the core ("ESR Ω", "drive in µW", "cl pf"); whether there was one."""
-    tokens = parts.core.split()
+    tokens = re.sub(r"/(?=[^/\s]+$)", " / ", parts.core).split()
     for count in (2, 1):
-        tail = " ".join(tokens[-count:]).strip(",;/±")
+        tail = " ".join(tokens[-count:]).strip(",;/± ")
         if len(tokens) > count and is_unit(tail):
             rest = tokens[:-count]
             if len(rest) > 1 and key(rest[-1]) in ("in", "en", "em"):

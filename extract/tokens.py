@@ -101,7 +101,25 @@ def tokens(text: str, field: str) -> list[Token]:
         for token in _next(text, lower, at, field, found):
             found.append(token)
             at = token.end
-    return _spoken_signs([token for token in found if token.kind != "blank"])
+    return _spoken_signs(_without_torn_exponent([token for token in found if token.kind != "blank"]))
+
+
+def _without_torn_exponent(found: list[Token]) -> list[Token]:
+    """Drop the exponent that stands once more by itself: "20 10-6 / year  -6"."""
+    if not any(token.kind == "unit" and "10" in token.text for token in found):
+        return found
+    for at in range(len(found) - 1, 0, -1):
+        token, before = found[at], found[at - 1]
+        lone = (
+            token.kind == "number"
+            and token.text == "6"
+            and (at + 1 == len(found) or found[at + 1].kind not in _NEAR_NUMBER)
+        )
+        if lone and token.meaning == "-":
+            return found[:at] + found[at + 1 :]
+        if lone and before.kind == "to" and before.meaning == "-":
+            return found[: at - 1] + found[at + 1 :]
+    return found
 
 
 def _spoken_signs(found: list[Token]) -> list[Token]:
@@ -168,8 +186,16 @@ def _signed_number(text: str, at: int, field: str, before: list[Token]) -> list[
         found = NUMBER.match(text, at)
     if not found:
         return []
+    if not sign and (power := _bare_power(text, at, field)):
+        return [power]
     glued_before = _inside_word(text, at) and not _ends_known(before, at)
     return _numbers(text, start, found, sign, field, glued=glued_before)
+
+
+def _bare_power(text: str, at: int, field: str) -> Token | None:
+    """The unit "10-6" where a number should be: it stands in a unit column, its number elsewhere."""
+    unit = unit_at(text, field, at) if text.startswith("10", at) else None
+    return Token("unit", unit[0], at, unit[2], meaning="free", value=unit[1]) if unit else None
 
 
 def _ends_known(before: list[Token], at: int) -> bool:

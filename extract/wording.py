@@ -7,7 +7,7 @@ from dataclasses import dataclass
 from functools import cache, lru_cache
 
 from extract.fold import fold, key
-from extract.labels import EDGE, Parts, one_year_words, take_apart, without_unit
+from extract.labels import EDGE, Parts, is_nominal, one_year_words, take_apart, without_unit
 from extract.model import When
 from extract.runs import IDEOGRAPHS, words_of
 from extract.units import factor
@@ -65,13 +65,15 @@ def read_label(text: str) -> Label | None:
 
 def ambiguous_label(text: str) -> tuple[str, ...]:
     """The fields a label may mean where it means several ("Frequency tolerance / stability", "Δf/f"); else ()."""
+    if read_label(text) is not None:
+        return ()
     parts = take_apart(fold(text)[:LONGEST_LABEL])
     shared = vocabulary().shared
     for name in (" ".join([parts.core, *parts.brackets]), parts.core, *parts.brackets):
         if fields := shared.get(key(name)):
             return fields
     named = _fields_inside(parts.core).strong
-    return tuple(named) if len(named) > 1 and read_label(text) is None else ()
+    return tuple(named) if len(named) > 1 else ()
 
 
 def symbol_of(text: str) -> str | None:
@@ -83,7 +85,10 @@ def _label(parts: Parts, field: str, *, exact: bool = True, rest: str = "", symb
     when = parts.when
     if when.years is None and key(parts.core) in vocabulary().yearly:
         when = when.model_copy(update={"years": 1.0})
-    return Label(field, parts.bound, parts.unit, parts.plus_minus, when, exact, rest, symbol)
+    # A letter or two in brackets may be a symbol as well as a unit ("Parabolic coefficient (K)").
+    symbol_like = parts.unit is not None and len(parts.unit) <= 2 and factor(parts.unit, field) is None
+    unit = None if symbol_like else parts.unit
+    return Label(field, parts.bound, unit, parts.plus_minus, when, exact, rest, symbol)
 
 
 def _named(core: str) -> str | None:
@@ -92,7 +97,9 @@ def _named(core: str) -> str | None:
 
 
 def _exact(parts: Parts) -> Label | None:
-    for name in (parts.core, " ".join([parts.core, *parts.brackets])):
+    head, comma, tail = parts.core.partition(",")
+    turned = [f"{tail} {head}"] if comma else []
+    for name in (parts.core, " ".join([parts.core, *parts.brackets]), *turned):
         if field := _named(name):
             return _label(parts, field)
     if _symbol(parts.core, parts) is None and without_unit(parts) and (field := _named(parts.core)):
@@ -105,7 +112,7 @@ def _exact(parts: Parts) -> Label | None:
             and vocabulary().bounds.get(key(tokens[at])) == "typ"
             and (field := _named(name) or _symbol(name, parts))
         ):
-            parts.bound = parts.bound or "typ"
+            parts.bound = parts.bound or (None if is_nominal(tokens[at]) else "typ")
             return _label(parts, field, symbol=not _named(name))
     return None
 
@@ -134,6 +141,9 @@ def _beside_symbol(parts: Parts) -> Label | None:
                 return _label(parts, field)
     for name in parts.brackets:
         if (field := _named(name)) and not _fields_inside(parts.core).strong:
+            return _label(parts, field)
+    for field in vocabulary().shared.get(key(parts.core), ()):
+        if any(vocabulary().symbols.get(key(name)) == field for name in parts.brackets):
             return _label(parts, field)
     if field := _symbol(parts.core, parts) or _letter_with_unit(parts) or _bounded_symbol(parts):
         return _label(parts, field, symbol=True)

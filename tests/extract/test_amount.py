@@ -74,6 +74,9 @@ FORMS = [
     ("+/-20 ppm", TOL, [{"min": -20, "max": 20}]),
     ("± 20×10⁻⁶", TOL, [{"min": -20, "max": 20}]),
     ("±20x10-6", TOL, [{"min": -20, "max": 20}]),
+    ("±20 10-6 -6", TOL, [{"min": -20, "max": 20}]),
+    ("±5010-6", TOL, [{"min": -50, "max": 50}]),
+    ("10-6 / year", AGE, []),
     ("±0.002 %", TOL, [{"min": -20, "max": 20}]),
     ("< ±5 ppm", AGE, [{"min": -5, "max": 5}]),
     ("+15/-5 ppm", TOL, [{"min": -5, "max": 15}]),
@@ -228,6 +231,7 @@ def test_a_guess_is_said(printed, field, doubt):
 
 REFUSED = [
     ("5S ppm", AGE, "letters touch the number '5'; left out"),
+    ("±Sppm", AGE, "no number stands behind ±; left out"),
     ("19.12.2011", LOAD, "'19.12.2011' is no number; left out"),
     ("60 mA", ESR, "no unit called mA for equivalent series resistance (Ω); left out"),
     ("-0.04 ppm/°C² max", STAB, "no unit called ppm/°C^2 for frequency stability over temperature (ppm); left out"),

@@ -169,6 +169,18 @@ PARTS = [
     ("f (MHz)", FREQ, None, "MHz", False),
     ("Drive Level (µW) Typ/Max", DRIVE, "typ/max", "μW", False),
     ("等価直列抵抗（最大）", ESR, "max", None, False),
+    ("Equivalent Series Resistance (ESR max)", ESR, "max", None, False),
+    ("Drive Level DL typ.", DRIVE, "typ", None, False),
+    ("Nominal load capacitance", LOAD, None, None, False),
+    ("Frequency tolerance (standard)", TOL, None, None, False),
+    ("Aging (ppm/year)", AGE, None, "ppm", False),
+    ("Tolerance (ppm @25C)", TOL, None, "ppm", False),
+    ("Toleranz bei 25°C in ppm", TOL, None, "ppm", False),
+    ("Frequency/MHz", FREQ, None, "MHz", False),
+    ("ESR / Ω", ESR, None, "Ω", False),
+    ("Parabolic coefficient (K)", PARA, None, None, False),
+    ("Capacitance, load (pF)", LOAD, None, "pF", False),
+    ("Capacitance (C0)", C0, None, None, False),
     ("最大励振レベル", DRIVE, "max", None, False),
 ]
 
