@@ -8,7 +8,7 @@ from dataclasses import dataclass, replace
 
 from extract.documents.bands import bands_of, goes_on, stacked
 from extract.documents.cells import table_of
-from extract.documents.columns import columns_of, fine_columns_of, overlap, placed, span_of
+from extract.documents.columns import Span, columns_of, fine_columns_of, overlap, placed, span_of
 from extract.documents.model import Line, Segment, Table
 from extract.documents.piece import Piece
 from extract.documents.ruled import GridCell
@@ -359,9 +359,24 @@ def _table_end(bands: Sequence[_Band], start: int, size: float) -> int:
             break
         end += 1
     end = _longest_in_columns(bands, start, last_full)
-    if start < end < len(bands) and len(bands[end].segments) == 1:
+    if end == start:
+        return start
+    columns = columns_of([band.segments for band in bands[start:end]])
+    pitch = (bands[end - 1].level - bands[start].level) / (end - start - 1)
+    while end < len(bands) and _is_rest_of_column(bands[end - 1], bands[end], columns, pitch):
+        end += 1
+    if end < len(bands) and len(bands[end].segments) == 1:
         end += len(_bands_joined(bands[start : end + 1])[-1]) > 1
     return end
+
+
+def _is_rest_of_column(before: _Band, band: _Band, columns: Sequence[Span], pitch: float) -> bool:
+    """Tell whether a lone text at a table's foot stands in a column other than the first, at the pitch of the rows."""
+    if len(band.segments) != 1 or band.level - before.level > 1.2 * pitch:
+        return False
+    span = span_of(band.segments[0])
+    touched = [index for index, column in enumerate(columns) if overlap(span, column) > 0]
+    return len(touched) == 1 and touched[0] > 0 and span[0] > columns[touched[0]][0] - 0.3 * band.size
 
 
 def _fine_table_end(bands: Sequence[_Band], start: int, size: float) -> int:

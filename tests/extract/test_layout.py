@@ -203,6 +203,38 @@ def test_a_text_over_several_columns_spans_them():
     assert (merged.column, merged.column_span) == (1, 3)
 
 
+def test_the_column_that_goes_on_below_the_others_belongs_to_the_table():
+    body = [
+        ["Tolerance", "Stability"],
+        ["1 = ±10 ppm", "A = ±15 ppm"],
+        ["2 = ±20 ppm", "B = ±20 ppm"],
+        ["", "C = ±30 ppm"],
+    ]
+    table = only_table(blocks(rows(body, [54, 204])))
+    assert texts(table) == [[cell or None for cell in row] for row in body]
+
+
+def test_a_list_set_in_two_columns_under_one_head_is_one_list():
+    head = ["MHz", "Part", "MHz", "Part"]
+    body = [["8.000", "QX-1", "16.000", "QX-3"], ["12.000", "QX-2", "20.000", "QX-4"]]
+    xs, ys = [50, 110, 180, 240, 310], [97, 113, 129, 145]
+    table = only_table(blocks(rows([head, *body], [54, 114, 184, 244]), grid(xs, ys)))
+    assert texts(table) == [
+        ["MHz", "Part"],
+        ["8.000", "QX-1"],
+        ["12.000", "QX-2"],
+        ["16.000", "QX-3"],
+        ["20.000", "QX-4"],
+    ]
+    assert table.cells[-1].where.box == (240, 129, 310, 145)
+
+
+def test_minimum_and_maximum_twice_beside_one_label_column_stay_columns():
+    body = [["Item", "Min", "Max", "Min", "Max"], ["Load", "8", "12", "6", "9"], ["C0", "1", "2", "1", "3"]]
+    xs, ys = [50, 110, 180, 240, 310, 370], [97, 113, 129, 145]
+    assert texts(only_table(blocks(rows(body, [54, 114, 184, 244, 314]), grid(xs, ys)))) == body
+
+
 # --- lines and reading order
 
 
