@@ -9,18 +9,25 @@ import numpy as np
 
 from compare.bench import Bench
 from compare.offer import Offers
-from compare.reckoning import Reckoning, part_result, reckon_sheets
+from compare.reckoning import Reckoning, bare_result, part_result, reckon_sheets
 from extract.model import SpecSheet
 
 SCHEMA = "quartzfolio/rank/1"
 
 
-def rank(sheets: Sequence[SpecSheet], bench: Bench) -> dict[str, Any]:
-    """Rank every part that offers the bench's frequency; JSON-ready."""
+def rank(sheets: Sequence[SpecSheet], bench: Bench, *, shown: int | None = None) -> dict[str, Any]:
+    """Rank every part that offers the bench's frequency; JSON-ready.
+
+    `shown`: for a list of thousands, how many rows carry their sentences (`how`, reasons, questions, remarks); the rows
+    after them have places, numbers, verdicts and slack alone. None, the rule: all of them.
+    """
     reckoning = reckon_sheets(sheets, bench)
     if isinstance(reckoning, Offers):
         return {"schema": SCHEMA, "rows": [], "notes": list(reckoning.notes)}
-    rows = [{"place": place, **part_result(reckoning, at)} for place, at in enumerate(order(reckoning), start=1)]
+    rows = [
+        {"place": place, **(part_result if shown is None or place <= shown else bare_result)(reckoning, at)}
+        for place, at in enumerate(order(reckoning), start=1)
+    ]
     return {"schema": SCHEMA, "rows": rows, "notes": list(reckoning.notes)}
 
 

@@ -131,7 +131,6 @@ def _total(one: Judged, standing: Standing) -> str:
     parts = [
         f"{signed(low)} to {signed(high)} ppm against {limit_words(standing.bench)}: "
         f"{times(float(one.worst[standing.at]))}",
-        budget_words(standing),
     ]
     if not math.isnan(standing.loosest_slack):
         options = joined(

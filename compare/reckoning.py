@@ -226,26 +226,40 @@ def part_result(reckoning: Reckoning, at: int) -> dict[str, Any]:
     standing, columns = _standing(reckoning, at), reckoning.columns
     offer, bench = standing.subject.offer, reckoning.bench
     judged = {key: one for key, one in reckoning.judged.items() if one.asked[at]}
-    missing = missing_of(judged, at)
+    load = standing.subject.ends["circuit_load_pf"][1]
+    bare = bare_result(reckoning, at)
+    for key in reckoning.numbers:
+        bare[key]["how"] = how(key, standing.subject)
+    return {
+        **bare,
+        "reasons": reasons(judged, standing),
+        "questions": [question(name, offer, bench, load) for name in missing_of(judged, at)],
+        "remarks": remarks(columns, at),
+    }
+
+
+def bare_result(reckoning: Reckoning, at: int) -> dict[str, Any]:
+    """One part's identity, numbers, verdict and slack, without the sentences."""
+    offer = reckoning.columns.offers[at]
+    judged = {key: one for key, one in reckoning.judged.items() if one.asked[at]}
     slack = {key: _or_none(float(one.slack[at])) for key, one in judged.items()}
     known = {key: value for key, value in slack.items() if value is not None}
-    load = standing.subject.ends["circuit_load_pf"][1]
     return {
         "file": offer.sheet.file,
         "part_number": offer.part.part_number,
         "maker": offer.part.maker,
         "package": offer.part.package,
         "mode": offer.mode,
-        **{key: _number(reckoning.numbers[key], standing.subject, key, at) for key in reckoning.numbers},
+        **{key: _number(number, at) for key, number in reckoning.numbers.items()},
         "verdict": WORDS[int(reckoning.verdict[at])],
-        "reasons": reasons(judged, standing),
-        "missing": ["esr_ohm" if name == "least_esr_ohm" else name for name in missing],
-        "questions": [question(name, offer, bench, load) for name in missing],
+        "reasons": [],
+        "missing": ["esr_ohm" if name == "least_esr_ohm" else name for name in missing_of(judged, at)],
+        "questions": [],
         "chosen": dict(offer.chosen),
         "to_check": fields_to_check(offer.taken().values()),
         "slack": slack,
         "tightest": min(known, key=lambda key: known[key]) if known else None,
-        "remarks": remarks(columns, at),
+        "remarks": [],
     }
 
 
@@ -267,10 +281,10 @@ def _or_none(value: float) -> float | None:
     return value if math.isfinite(value) else None
 
 
-def _number(number: Number, subject: Subject, key: str, at: int) -> dict[str, Any]:
-    low, mid, high = (_or_none(float(value)) for value in number.ends[:, at])
+def _number(number: Number, at: int) -> dict[str, Any]:
+    low, mid, high = (_or_none(value) for value in number.ends[:, at].tolist())
     basis = "stated" if number.stated[at] else "estimated" if number.estimated[at] else "derived"
-    return {"low": low, "mid": mid, "high": high, "how": how(key, subject), "basis": basis}
+    return {"low": low, "mid": mid, "high": high, "how": "", "basis": basis}
 
 
 def _standing(reckoning: Reckoning, at: int) -> Standing:
