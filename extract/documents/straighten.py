@@ -152,8 +152,24 @@ def rulings_of(ink: Pixels) -> list[Ruling]:
 
 
 def without_strokes(rulings: list[Ruling], type_boxes: list[Box]) -> list[Ruling]:
-    """Rulings without the bars and stems of large letters, short ones inside a line of type."""
-    return [ruling for ruling in rulings if not any(_is_stroke(ruling, box) for box in type_boxes)]
+    """Rulings without the bars and stems of letters: short ones inside a line of type, level ones amid it."""
+    return [
+        ruling
+        for ruling in rulings
+        if not any(_is_stroke(ruling, box) for box in type_boxes) and not _runs_through(ruling, type_boxes)
+    ]
+
+
+def _runs_through(ruling: Ruling, boxes: list[Box]) -> bool:
+    """Whether half of a level ruling lies in the middle of lines of type: small type runs together into bars."""
+    if not ruling.horizontal:
+        return False
+    inside = sum(
+        max(0.0, min(ruling.x1, x1) - max(ruling.x0, x0))
+        for x0, top, x1, bottom in boxes
+        if top + 0.2 * (bottom - top) < ruling.top < bottom - 0.2 * (bottom - top)
+    )
+    return 2 * inside > ruling.x1 - ruling.x0
 
 
 def _is_stroke(ruling: Ruling, box: Box) -> bool:

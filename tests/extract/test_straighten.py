@@ -72,3 +72,8 @@ def test_drawn_lines_are_found_and_letters_are_not() -> None:
 def test_the_stem_of_a_large_letter_is_no_ruling() -> None:
     stem, side = Ruling(20, 12, 20, 38), Ruling(5, 0, 5, 300)
     assert straighten.without_strokes([stem, side], [(10, 10, 200, 40)]) == [side]
+
+
+def test_a_bar_of_small_type_is_no_ruling_but_an_underline_is() -> None:
+    bar, underline = Ruling(10, 25, 190, 25), Ruling(10, 41, 200, 41)
+    assert straighten.without_strokes([bar, underline], [(10, 10, 200, 40)]) == [underline]
