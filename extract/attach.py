@@ -72,7 +72,7 @@ def attach(items: list[Item], amounts: list[Amount], row: Field) -> None:
         return
     own = {amount.position for amount in amounts}
     for position, item in enumerate(items):
-        if item.word is not None and item.word.kind in _SPEAKING:
+        if item.word is not None and item.word.kind in _SPEAKING and not _of_others(items, position):
             for amount in _targets(items, amounts, position):
                 _say(amount, item.word)
         elif item.group is not None and position not in own:
@@ -80,6 +80,14 @@ def attach(items: list[Item], amounts: list[Amount], row: Field) -> None:
             if when != When():
                 for amount in _targets(items, amounts, position):
                     amount.when = joined(amount.when, when)
+
+
+def _of_others(items: list[Item], position: int) -> bool:
+    """Whether "on request" speaks of other values than those printed: "8 pF (others on request)"."""
+    item = items[position]
+    if item.word is None or item.word.kind != "request":
+        return False
+    return any(each.segment == item.segment and each.word is not None and each.word.kind == "others" for each in items)
 
 
 def _say(amount: Amount, word: Token) -> None:
@@ -130,6 +138,9 @@ def _of_none(items: list[Item], amounts: list[Amount], position: int, sort: str)
     """No amount in the word's own segment: the last one before it, or those that follow it on its line or after."""
     before = [amount for amount in amounts if amount.position < position]
     after = [amount for amount in amounts if amount.position > position]
+    follows = items[position + 1].word if position + 1 < len(items) else None
+    if follows is not None and follows.kind == "colon" and after:
+        return _until_next(items, after, position, sort)
     same_line = [amount for amount in before if items[amount.position].line == items[position].line]
     if same_line or sort in ("request", "standard"):
         return same_line[-1:]

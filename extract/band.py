@@ -79,7 +79,8 @@ def _limits(group: Group, kind: str, field: str) -> bool:
     if group.shape not in ("range", "single"):
         return False
     if kind == "capacitance":
-        return field in _DEPENDS_ON_LOAD
+        other_symbol = group.before.startswith("symbol") and group.before != "symbol load_capacitance_pf"
+        return field in _DEPENDS_ON_LOAD and not other_symbol
     measured_at = group.shape == "single" and group.bound is None and group.before == "at"
     return not measured_at or field in _DEPENDS_ON_FREQUENCY
 

@@ -83,6 +83,8 @@ class _Reader:
                 self._group()
             elif kind == "compare" and self.kind(1) in ("number", "pm"):
                 self._compared()
+            elif kind == "to" and self.kind(1) == "number" and self._opens_range():
+                self._limited("bound")
             elif kind in ("bound", "above", "from") and self._limits_foreign():
                 self._limited(kind)
             else:
@@ -113,11 +115,21 @@ class _Reader:
         units = ("other",) if self.field_name else _UNITS
         return self.kind(1) == "number" and self.kind(2) in units and self.kind(3) not in ("to", "pm")
 
+    def _opens_range(self) -> bool:
+        """Whether "to" has no lower end before it ("fundamental to 40 MHz"); "a" and "à" are "at" as well."""
+        word = self.tokens[self.at].text
+        return (
+            word.isalpha()
+            and len(word) > 1
+            and self.kind(-1) not in ("number", "unit", "other")
+            and self.kind(2) in _UNITS
+        )
+
     def _limited(self, kind: str) -> None:
         word = self.take()
         made = self._group()
-        if made is not None and made.bound is None:
-            made.bound = word.meaning if kind == "bound" and word.meaning != "typ" else "min"
+        if made is not None and made.bound is None and made.shape == "single":
+            made.bound = "min" if kind != "bound" or word.meaning == "min" else "max"
 
     def _group(self) -> Group | None:
         start = self.at
@@ -233,7 +245,7 @@ class _Reader:
         high = self.tokens[self.at + ahead]
         if {low.meaning, high.meaning} == {"-", "+"}:
             return True
-        return bool(ahead and self.plain_pair and low.meaning == "-")
+        return self.plain_pair and low.meaning == "-" and not high.meaning
 
 
 _PPM = frozenset({"frequency_tolerance_ppm", "frequency_stability_ppm", "ageing_ppm", "frequency_mhz"})

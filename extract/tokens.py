@@ -47,6 +47,9 @@ _WORD = re.compile(r"[^\W\d_](?:[\w.^]*\w)?", re.UNICODE)
 _IDEOGRAPH = re.compile(r"[\u3040-\u30ff\u3400-\u9fff\uac00-\ud7af]")
 _TIMES_TEN = re.compile(r"\s?(?:[x×*·]\s?10\s?\^?\s?|[eE])([+-]?\s?\d{1,2})(?![\d.])")
 _ORDINAL = re.compile(r"(?:st|nd|rd|th)\b", re.IGNORECASE)
+# "-(0.035 ± 0.005)" and "(-40) to 125".
+_SIGN_BEFORE_BRACKET = re.compile(r"-\(\s?(?=[\d.])")
+_SIGN_IN_BRACKET = re.compile(r"\(\s?([-+]\d+(?:[.,]\d+)?)\s?\)")
 _NEAR_NUMBER = frozenset({"number", "unit", "other"})
 
 
@@ -90,6 +93,7 @@ def years_pattern() -> re.Pattern[str]:
 def tokens(text: str, field: str) -> list[Token]:
     """The pieces of folded `text`, seen by a reader who looks for a value of `field`."""
     found: list[Token] = []
+    text = _SIGN_BEFORE_BRACKET.sub("(-", _SIGN_IN_BRACKET.sub(r" \1 ", text))
     lower = text.casefold()
     if len(lower) != len(text):
         lower = text.lower() if len(text.lower()) == len(text) else text
@@ -176,7 +180,11 @@ def _signed_number(text: str, at: int, field: str, before: list[Token]) -> list[
         while start < len(text) and text[start] == " ":
             start += 1
         after_number = last is not None and last.kind in _NEAR_NUMBER
-        if text[at] == "-" and after_number:
+        if (
+            text[at] == "-"
+            and after_number
+            and not (start == at + 1 and text[at - 1] == " " and _after_plus_minus(before))
+        ):
             return [Token("to", "-", at, at + 1, meaning="-")]
         found = NUMBER.match(text, start)
         if not found or start - at > 2:
@@ -200,6 +208,12 @@ def _bare_power(text: str, at: int, field: str) -> Token | None:
 
 def _ends_known(before: list[Token], at: int) -> bool:
     return bool(before) and before[-1].end == at and before[-1].kind not in ("word", "blank")
+
+
+def _after_plus_minus(before: list[Token]) -> bool:
+    """Whether the number before is a ±, which begins no range: "±15 ppm -20 ~ +70 °C"."""
+    numbers_before = [at for at, token in enumerate(before) if token.kind == "number"]
+    return bool(numbers_before) and numbers_before[-1] > 0 and before[numbers_before[-1] - 1].kind == "pm"
 
 
 def _numbers(text: str, start: int, found: re.Match[str], sign: str, field: str, *, glued: bool) -> list[Token]:

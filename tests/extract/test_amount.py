@@ -167,6 +167,17 @@ FORMS = [
         AGE,
         [{"min": -3, "max": 3, "years": 1}, {"min": -10, "max": 10, "years": 10}],
     ),
+    ("±15ppm -20~+70°C", STAB, [{"min": -15, "max": 15, "temperature_c": (-20, 70)}]),
+    (
+        "Fundamental: 60 Ω max; 3rd overtone: 100 Ω max",
+        ESR,
+        [{"max": 60, "mode": "fundamental"}, {"max": 100, "mode": "third overtone"}],
+    ),
+    ("60Ω max. ; C0 = 3 pF", ESR, [{"max": 60}]),
+    ("8pF (other on request)", LOAD, [{"typ": 8}]),
+    ("-(0.035±0.005) ppm/°C²", PARA, [{"min": -0.04, "typ": -0.035, "max": -0.03}]),
+    ("(-40) to 125 °C", OPER, [{"min": -40, "max": 125}]),
+    ("-40 85", OPER, [{"min": -40, "max": 85}]),
     # other languages
     ("höchstens 60 Ω", ESR, [{"max": 60}]),
     ("von -40 bis +85 °C", OPER, [{"min": -40, "max": 85}]),
