@@ -17,8 +17,10 @@ from compare import motional
 from compare.bench import Bench
 from compare.circuit import Array
 from compare.offer import C1_ROUTES, Offer
+from compare.prefix import FEMTO, PICO
 from compare.stated import Span, Taken
 
+SHUNT_FROM = ("motional_capacitance_ff", "capacitance_ratio")
 Flags = NDArray[np.bool_]
 Whole = NDArray[np.int_]
 LOW, MID, HIGH = 0, 1, 2
@@ -39,7 +41,8 @@ class Columns:
         R1 or ESR as stated, C0, C1; low, mid, high.
     shunt_floor_pf : (n,)
         Low end of C0 for what is reckoned of frequency: an estimate where only a limit is stated, else C0's own.
-    shunt_missing, shunt_loose, motional_estimated : (n,) bool
+    shunt_missing, shunt_derived, shunt_loose, motional_estimated : (n,) bool
+        C0 is estimated throughout, had from C1 and C0/C1, or stated as a limit alone; C1 is estimated.
     route : (n,) int
         Index into C1_ROUTES of the reading that C1 comes from; ESTIMATED where none leads to it.
     other_routes_ff : (routes, n)
@@ -54,6 +57,7 @@ class Columns:
     shunt_pf: Array
     shunt_floor_pf: Array
     shunt_missing: Flags
+    shunt_derived: Flags
     shunt_loose: Flags
     motional_ff: Array
     motional_estimated: Flags
@@ -83,6 +87,9 @@ def make_columns(offers: Sequence[Offer], bench: Bench) -> Columns:
     esr = np.stack([spans([o.at[s].esr for o in offers]) for s in settings])
     shunt = np.stack([spans([o.at[s].shunt_capacitance for o in offers]) for s in settings])
     guess, shunt_basis = _shunt_estimates(offers)
+    from_ratio = np.stack([_shunt_from_ratio(offers, s) for s in settings])
+    shunt_derived = np.isnan(shunt[0, MID]) & ~np.isnan(from_ratio[0, MID])
+    shunt = np.where(np.isnan(shunt), from_ratio, shunt)
     missing = np.isnan(shunt[0, MID])
     loose = np.array([o.at[0].shunt_capacitance.limit_alone for o in offers], dtype=bool)
     shunt = np.where(np.isnan(shunt), guess, shunt)
@@ -102,6 +109,7 @@ def make_columns(offers: Sequence[Offer], bench: Bench) -> Columns:
         shunt_pf=shunt,
         shunt_floor_pf=floor,
         shunt_missing=missing,
+        shunt_derived=shunt_derived,
         shunt_loose=loose & ~missing,
         motional_ff=np.where(np.isnan(c1), c1_guess, c1),
         motional_estimated=(route == ESTIMATED) | (by_shunt & ~known_shunt),
@@ -173,6 +181,13 @@ def _motional_estimate(
         cut, overtone, frequency_mhz, package, shunt_capacitance_pf=c0, limit_pf=limit_pf
     )
     return (float(guess.low), float(guess.mid), float(guess.high)), guess.basis
+
+
+def _shunt_from_ratio(offers: Sequence[Offer], setting: int) -> Array:
+    """(3, n) C0 = C1 (C0/C1), where both are stated."""
+    stated = [spans([o.at[setting].motional.get(name, Taken()) for o in offers]) for name in SHUNT_FROM]
+    shunt: Array = stated[0] * stated[1] * FEMTO / PICO
+    return shunt
 
 
 def _first_known(by_route: Array) -> Whole:

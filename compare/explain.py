@@ -8,6 +8,7 @@ from dataclasses import dataclass
 from functools import cached_property
 
 from compare.bench import Bench, CircuitKeys
+from compare.motional import estimate_quality_factor
 from compare.offer import Offer
 from compare.stated import Taken
 from extract.model import Reading
@@ -201,6 +202,8 @@ def _inductance(s: Subject) -> str:
     stated = s.offer.at[0].motional.get("motional_inductance_mh")
     if stated is not None:
         return f"as stated: {reading_text('motional_inductance_mh', stated)}"
+    if not s.offer.load.stated:
+        return f"L1 = 1/(ω² C1), fs taken as the nominal frequency, for no rated load is stated; {s.c1}"
     return f"L1 = (1 + C1/(C0 + CL))/(ω² C1); {s.c1}, {s.c0}, {s.load}"
 
 
@@ -208,6 +211,8 @@ def _quality(s: Subject) -> str:
     stated = s.offer.at[0].motional.get("quality_factor")
     if stated is not None:
         return f"as stated: {reading_text('quality_factor', stated)}"
+    if not s.offer.at[0].esr.stated:
+        return f"Q estimated, for no ESR is stated: {estimate_quality_factor().basis}"
     return f"Q = 1/(ωs C1 R1); {s.c1}, {s.esr}"
 
 

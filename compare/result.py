@@ -7,6 +7,7 @@ from dataclasses import dataclass, field
 
 import numpy as np
 
+from compare import motional
 from compare.bench import Bench
 from compare.circuit import Array
 from compare.columns import HIGH, LOW, MID, Columns, Flags, spans
@@ -19,8 +20,8 @@ CIRCUIT = ("circuit.input_capacitor_pf", "circuit.output_capacitor_pf")
 GAIN = (*CIRCUIT, "transconductance", "esr_ohm")
 NEEDS: dict[str, tuple[str, ...]] = {
     "motional_capacitance_ff": (),
-    "motional_inductance_mh": ("load_capacitance_pf",),
-    "quality_factor": ("load_capacitance_pf", "esr_ohm"),
+    "motional_inductance_mh": (),
+    "quality_factor": (),
     "series_resonance_mhz": ("load_capacitance_pf",),
     "parallel_resonance_mhz": ("load_capacitance_pf",),
     "circuit_load_pf": (*CIRCUIT, "esr_ohm"),
@@ -74,6 +75,7 @@ def numbers(columns: Columns, bench: Bench, reckoned: Reckoned, total: Total, kn
         ends = np.where(gone, np.nan, ends)
         none = np.zeros(len(columns), dtype=bool)
         found[key] = Number(np.where(np.isinf(ends), np.nan, ends), _estimated(key, columns, total), none, short_of)
+    _fill_arm(found, columns)
     for key in ("motional_inductance_mh", "quality_factor"):
         _put_stated(found[key], spans([o.at[0].motional.get(key, Taken()) for o in columns.offers]))
     found["motional_capacitance_ff"].stated = columns.route == 0
@@ -123,6 +125,20 @@ def _estimated(key: str, columns: Columns, total: Total) -> Flags:
             for flags in term.estimated.values():
                 rests |= flags
     return rests
+
+
+def _fill_arm(found: dict[str, Number], columns: Columns) -> None:
+    """L1 and Q without a rated load (fs taken as the nominal frequency), and an estimate of Q without an ESR."""
+    c1, frequency = found["motional_capacitance_ff"].ends[::-1], columns.frequency_mhz
+    no_load = np.isnan(columns.load_pf)
+    esr = np.stack([columns.esr_ohm[:, HIGH].max(axis=0), columns.esr_ohm[0, MID], columns.esr_ohm[:, LOW].min(axis=0)])
+    inductance, quality = found["motional_inductance_mh"], found["quality_factor"]
+    inductance.ends = np.where(no_load, motional.motional_inductance_mh(frequency, c1), inductance.ends)
+    quality.ends = np.where(no_load, motional.quality_factor(frequency, c1, esr), quality.ends)
+    guess = motional.estimate_quality_factor()
+    silent = np.isnan(quality.ends[MID])
+    quality.ends = np.where(silent, np.array([[guess.low], [guess.mid], [guess.high]], dtype=float), quality.ends)
+    quality.estimated = quality.estimated | silent
 
 
 def _put_stated(number: Number, span: Array) -> None:

@@ -4,7 +4,7 @@ from __future__ import annotations
 
 from compare.bench import Bench
 from compare.budget import ageing_factor
-from compare.columns import DISAGREES, ESTIMATED, HIGH, LOW, MID, Columns
+from compare.columns import DISAGREES, ESTIMATED, HIGH, LOW, MID, SHUNT_FROM, Columns
 from compare.explain import FIELD_WORDS, ends_text, figure, reading_text
 from compare.motional import estimate_first_year_ageing_ppm
 from compare.offer import C1_ROUTES, Offer
@@ -48,6 +48,10 @@ def c0_words(columns: Columns, at: int) -> str:
     if columns.shunt_missing[at]:
         value = ends_text([float(end) for end in columns.shunt_pf[0, :, at]], "pF")
         return f"C0 {value} estimated ({columns.shunt_basis[at]})"
+    if columns.shunt_derived[at]:
+        value = ends_text([float(end) for end in columns.shunt_pf[0, :, at]], "pF")
+        sources = [reading_text(name, columns.offers[at].at[0].motional[name]) for name in SHUNT_FROM]
+        return f"C0 {value} = C1 (C0/C1) from {' and '.join(sources)}"
     text = reading_text("shunt_capacitance_pf", taken)
     if columns.shunt_loose[at]:
         floor = figure(float(columns.shunt_floor_pf[at]))

@@ -108,6 +108,8 @@ def _inside(a: tuple[float, float] | str | None, b: tuple[float, float] | str | 
 def narrowest(readings: Iterable[Reading]) -> list[Reading]:
     """Those that no other one lies inside of: a narrower `when` goes before a wider."""
     listed = list(readings)
+    if len(listed) < 2:
+        return listed
     return [one for one in listed if not any(narrower(other.when, one.when) for other in listed)]
 
 

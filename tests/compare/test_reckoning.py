@@ -154,3 +154,23 @@ def test_the_greatest_transconductance_of_a_rating_is_said_not_to_be_known():
 def test_defaults_taken_are_told_in_notes():
     at = read_bench("[requirement]\nfrequency_mhz = 16.0\n", "bench.toml")
     assert [note["message"] for note in review([sheet(usual())], at)["notes"]] == list(at.taken)
+
+
+def test_c0_follows_from_c1_and_their_ratio_where_both_are_stated():
+    both = (exactly("motional_capacitance_ff", 4.5), exactly("capacitance_ratio", 1500 / 4.5))
+    found = reviewed(usual(*BASE[::2], *both, without=("shunt_capacitance_pf",)))
+    assert found["margin"]["mid"] == pytest.approx(reviewed(usual(*BASE, both[0]))["margin"]["mid"])
+    assert reason(found, "margin")["estimated"] == []
+    assert "C0 1.5 pF = C1 (C0/C1)" in found["margin"]["how"]
+
+
+def test_l1_is_had_without_a_rated_load():
+    found = reviewed(usual(*BASE[1:], exactly("motional_capacitance_ff", 4.5), without=("load_capacitance_pf",)))
+    assert found["motional_inductance_mh"]["mid"] == pytest.approx(1 / (OMEGA**2 * 4.5e-15) * 1e3)
+    assert found["series_resonance_mhz"]["how"] == "cannot be had: load_capacitance_pf not known"
+
+
+def test_q_is_an_estimate_without_an_esr():
+    """10 000 to 100 000 for common units (a handbook's range)."""
+    number = reviewed(usual(without=("esr_ohm",)))["quality_factor"]
+    assert (number["low"], number["high"], number["basis"]) == (1e4, 1e5, "estimated")
