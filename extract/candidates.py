@@ -63,12 +63,19 @@ def entry_candidates(entry: Entry) -> list[Candidate]:
     label = label_of(entry)
     if label is None:
         return []
+    label = _by_unit(label, [entry.unit, label.unit or "", *(value.piece.text for value in entry.values)])
     when = _entry_when(entry, label)
     found: list[Candidate] = []
     for subject in dict.fromkeys(value.subject for value in entry.values):
         values = [value for value in entry.values if value.subject == subject]
         found += _of_subject(entry, label, when, subject, values)
     return [each for each in found if not _lone_temperature(each)]
+
+
+def _by_unit(label: Label, texts: Iterable[str]) -> Label:
+    """The field that the printed unit makes of the label: a "stability" in ppm/°C² is the parabola."""
+    field = next((other for text in texts if (other := amount.field_for(text, label.field)) != label.field), label.field)
+    return label if field == label.field else replace(label, field=field, plus_minus=False)
 
 
 def _lone_temperature(candidate: Candidate) -> bool:

@@ -6,6 +6,7 @@ import re
 from collections.abc import Iterator, Sequence
 from dataclasses import dataclass, field, replace
 
+from extract.candidates import has_unit, read
 from extract.conditions import kinds_of
 from extract.documents.model import Cell
 from extract.entries import Entry, Item, Key, Piece, Text, Value
@@ -13,11 +14,13 @@ from extract.fold import fold
 from extract.heads import BOUNDS, Head, is_unit
 from extract.keys import choices_in, key_label
 from extract.meaning import is_part_token, meaning
+from extract.prose import pair_entries
 
 Row = Sequence[Cell | None]
 _VALUE_ROLES = ("value", "min", "typ", "max")
 _CONDITION_ROLES = ("condition", "remarks")
 _KEY_ROLES = ("mode", "cut", "band", "model")
+_NUMBER = re.compile(r"\d")
 _PLAIN_NUMBER = re.compile(r"[-+±]?\s?\d+(?:[.,]\d+)*|-+")
 _SYMBOL = re.compile(r"[^\W\d]\w{0,2}[ _]?\w{0,8}(?:/[^\W\d]\w{0,3}[ _]?\w{0,6})?(?:\(\w\))?")
 
@@ -172,6 +175,9 @@ def _distinct(row: Row) -> list[Cell]:
 
 
 def _is_section(cell: Cell) -> bool:
+    label = meaning(cell.text).label
+    if label is not None and any(value for value in read(cell.text, label.field)) and has_unit(cell.text, label.field):
+        return False
     return not meaning(cell.text).value or cell.column_span > 1 or cell.header
 
 
@@ -266,25 +272,44 @@ def _nearer(row: _Row, above: _Row | None, below: _Row | None) -> _Row | None:
 
 
 def _unstacked(row: _Row) -> list[_Row]:
-    """A cell with several labels, one a line, beside cells with as many lines: one row for each label."""
-    labels = [line for line in row.label_text.split("\n") if line.strip()]
-    if len(labels) < 2 or row.label is None or not all(_is_label(line) for line in labels):
+    """A row whose cells stack several lines that belong together: labels with values, or bands with values."""
+    if row.label is None or not row.values:
         return [row]
-    columns = [value.piece.text.split("\n") for value in row.values]
-    if not columns or any(len(lines) != len(labels) for lines in columns):
-        return [row]
-    rows = []
-    for index, label in enumerate(labels):
-        values = [
-            replace(value, piece=Piece(lines[index], value.piece.where, value.piece.confidence))
-            for value, lines in zip(row.values, columns, strict=True)
-        ]
-        rows.append(replace(row, label_text=label, values=values, symbol="", unit=_line(row.unit, index, len(labels))))
-    return rows
+    labels = _lines_of(row.label_text)
+    columns = [_lines_of(value.piece.text) for value in row.values]
+    if len(labels) > 1 and all(_is_label(line) for line in labels) and all(len(each) == len(labels) for each in columns):
+        return [_nth(row, index, columns, label) for index, label in enumerate(labels)]
+    bands = [lines for lines in (*map(_lines_of, row.conditions), *columns) if len(lines) > 1 and all(map(_is_band, lines))]
+    count = len(bands[0]) if bands else 0
+    stacked = [lines for lines in columns if len(lines) == count and lines not in bands]
+    if count > 1 and stacked:
+        return [_nth(row, index, columns, row.label_text) for index in range(count)]
+    return [row]
+
+
+def _lines_of(text: str) -> list[str]:
+    return [line.strip() for line in text.split("\n") if line.strip()]
+
+
+def _is_band(line: str) -> bool:
+    return bool(kinds_of(line) & {"frequency_mhz", "temperature_c", "mode", "load_capacitance_pf"})
+
+
+def _nth(row: _Row, index: int, columns: list[list[str]], label: str) -> _Row:
+    """The row with line `index` of each stacked cell; a cell of one line holds for all."""
+    count = max(len(lines) for lines in columns)
+    values = [
+        replace(value, piece=Piece(_line(value.piece.text, index, count), value.piece.where, value.piece.confidence))
+        for value in row.values
+    ]
+    conditions = [_line(text, index, count) for text in row.conditions]
+    symbol = _line(row.symbol, index, count) if label == row.label_text else ""
+    unit = _line(row.unit, index, count)
+    return replace(row, label_text=label, values=values, conditions=conditions, symbol=symbol, unit=unit)
 
 
 def _line(text: str, index: int, count: int) -> str:
-    lines = text.split("\n")
+    lines = _lines_of(text)
     return lines[index] if len(lines) == count else text
 
 
@@ -299,9 +324,12 @@ def _items(row: _Row) -> Iterator[Item]:
     if row.label is None:
         for value in row.values:
             yield Text(value.piece)
+            yield from pair_entries(value.piece)
         return
     if not row.values:
         yield Text(Piece(row.label_text, row.label.where, row.label.confidence), heading=True)
+        if _NUMBER.search(row.label_text):
+            yield from (replace(entry, source="pair") for entry in pair_entries(row.label))
         if row.conditions:
             yield Entry(row.label, (), row.unit, row.symbol, tuple(row.conditions), row.section)
         return

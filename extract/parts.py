@@ -7,7 +7,8 @@ from dataclasses import dataclass, field, replace
 
 from extract.attributes import attributes_of
 from extract.blocks import Blocks
-from extract.candidates import entry_candidates, key_candidates, label_of, read
+from extract.candidates import Candidate, entry_candidates, key_candidates, label_of, read
+from extract.conditions import holds
 from extract.drafts import Draft, cuts_in, modes_in
 from extract.entries import Entry, Key, Listing, Text
 from extract.footnotes import noted_candidates
@@ -87,13 +88,23 @@ def _of_section(section: Section, shared: Draft | None, blocks: Blocks) -> list[
 def _inherit(draft: Draft, general: Draft) -> None:
     """Take over what is stated for all parts, where the part has nothing of its own."""
     own = {candidate.field for candidate in draft.candidates if candidate.source not in ("loose", "prose")}
-    draft.candidates += [each for each in general.candidates if each.field not in own]
+    draft.candidates += [each for each in general.candidates if each.field not in own and _holds_for(draft, each)]
     draft.modes = draft.modes or set(general.modes)
     draft.cuts = draft.cuts or set(general.cuts)
     draft.maker = draft.maker or general.maker
     draft.package = draft.package or general.package
     for name, text in general.attributes.items():
         draft.attributes.setdefault(name, text)
+
+
+def _holds_for(draft: Draft, candidate: Candidate) -> bool:
+    """Whether a banded value speaks of a part whose own frequency, load or temperature range is known."""
+    frequency = [each.typ for each in draft.candidates if each.field == "frequency_mhz"]
+    if len(frequency) == 1 and frequency[0] is not None and not holds(candidate.when, frequency[0]):
+        return False
+    spans = [(each.min, each.max) for each in draft.candidates if each.field == "operating_temperature_c"]
+    span = candidate.when.temperature_c
+    return candidate.field != "frequency_stability_ppm" or span is None or len(spans) != 1 or spans[0] == span
 
 
 def _draft(section: Section, blocks: Blocks) -> Draft:

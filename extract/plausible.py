@@ -65,6 +65,9 @@ def _order(reading: Reading) -> str | None:
 
 def _range(reading: Reading, fork: bool | None) -> str | None:
     known = field_of(reading.field)
+    ranged = reading.field in ("operating_temperature_c", "storage_temperature_c")
+    if ranged and reading.min is not None and reading.min > limits()["warmest_low_end_c"]:
+        return f"a {known.title} that begins at {reading.min:g} °C: a minus sign may be lost"
     for number in numbers_of(reading):
         if number == 0 and reading.field in ("shunt_capacitance_pf", "drive_level_uw", "operating_temperature_c"):
             continue

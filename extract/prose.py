@@ -26,6 +26,7 @@ _SENTENCE = re.compile(
     rf"(?i:{_ABBREVIATED})(?<=[^\W\d])[.;!?]\s+(?=[^\W\d_])(?![a-zà-ÿ])|(?<=[\d%)°])[.;]\s+(?=[^\W\d_])|[。；]\s*|\n"
 )
 _NEW_SENTENCE = re.compile(r"\d[^.]{0,6}\.\s|\)\.?\s(?=\S+\s)")
+_SUBSCRIPT = re.compile(r"(?<=(?<![A-Za-z0-9])[A-Za-z])_(?=[A-Za-z0-9])")
 _LONG_BRACKET = re.compile(r"\([^()]{24,}\)")
 _UNITLESS = ("quality_factor", "capacitance_ratio")
 NEAR = 60
@@ -101,7 +102,7 @@ def prose_entries(piece: Placed) -> list[Entry]:
     found: list[Entry] = []
     for sentence in _SENTENCE.split(fold(piece.text)):
         if sentence and sentence.strip():
-            found += _sentence_entries(fold(_LONG_BRACKET.sub(" ", sentence)), piece)
+            found += _sentence_entries(_SUBSCRIPT.sub("", fold(_LONG_BRACKET.sub(" ", sentence))), piece)
     return found
 
 
