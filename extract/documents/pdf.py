@@ -13,7 +13,7 @@ from typing import Any
 from extract.documents.glyphs import Glyph, with_underlined_signs, words_of
 from extract.documents.layout import arrange
 from extract.documents.model import Document, DocumentError, Line, Segment, Table
-from extract.documents.pdf_page import Frame, pdfium_frame, pdfium_glyphs, plumbed
+from extract.documents.pdf_page import Frame, pdfium_frame, pdfium_glyphs, pdfium_rulings, plumbed
 from extract.documents.pdf_pictures import Pictures, pictures_of
 from extract.documents.symbols import is_broken, translated
 from extract.documents.words import Box, inside, union
@@ -75,7 +75,7 @@ def read(data: bytes, wanted: Callable[[str], bool] | None = None) -> Document:
     quick = _opened(data)
     try:
         slow = _Plumber(data)
-        pages = [_read_page(quick, slow, number, wanted) for number in range(1, len(quick) + 1)]
+        pages = [_page_or_note(quick, slow, number, wanted) for number in range(1, len(quick) + 1)]
         slow.close()
     finally:
         quick.close()
@@ -126,6 +126,17 @@ class _Plumber:
             self._file.close()
 
 
+def _page_or_note(quick: Any, slow: _Plumber, number: int, wanted: Callable[[str], bool] | None) -> _Page:
+    import pypdfium2
+
+    try:
+        return _read_page(quick, slow, number, wanted)
+    except pypdfium2.PdfiumError:
+        page = _Page()
+        page.warn(f"Page {number} is damaged and was not read: fetch the file again.", number)
+        return page
+
+
 def _read_page(quick: Any, slow: _Plumber, number: int, wanted: Callable[[str], bool] | None) -> _Page:
     page = quick[number - 1]
     frame = pdfium_frame(page)
@@ -173,13 +184,10 @@ def _placer(number: int, scale: float = 1.0) -> Callable[[Box], Where]:
 
 def _read_text(page: Any, slow: _Plumber, number: int, frame: Frame, *, printed: int, result: _Page) -> None:
     content = slow.page(number, frame)
-    glyphs, rulings = content if content else ([], [])
+    glyphs, rulings = content if content else ([], pdfium_rulings(page, frame))
     readable = sum(len(glyph.text.strip()) for glyph in glyphs if not glyph.text.startswith("(cid:"))
     if readable < MOST * printed:
         glyphs = pdfium_glyphs(page, frame)
-    if content is None:
-        message = f"Page {number}: its drawn lines cannot be read; tables are told from where words stand alone."
-        result.warn(message, number)
     straight = with_underlined_signs([glyph for glyph in glyphs if glyph.angle in (0, 90, 180, 270)], rulings)
     place = _placer(number)
     result.blocks += arrange(
@@ -268,6 +276,8 @@ def _document(pages: Sequence[_Page]) -> Document:
     read_as_text = [page for page in pages if page.blocks and not page.scanned]
     blocks = tuple(block for page in pages for block in page.blocks)
     notes = tuple(note for page in pages for note in page.notes)
+    if not blocks and not notes:
+        notes = (Note(level="warning", message="The PDF holds no text and no picture of text."),)
     return Document("pdf", blocks, bool(scanned) and not read_as_text, headers, notes)
 
 

@@ -215,3 +215,43 @@ def _font_name(raw: Any, text_page: Any, index: int) -> str:
     buffer = ctypes.create_string_buffer(128)
     raw.FPDFText_GetFontInfo(text_page, index, buffer, 128, ctypes.c_int())
     return buffer.value.decode("utf-8", "replace")
+
+
+def pdfium_rulings(page: Any, frame: Frame) -> list[Ruling]:
+    """Level and upright lines of a pypdfium2 page, for files that pdfplumber cannot open; those in forms are left out."""
+    from pypdfium2 import raw
+
+    rulings = []
+    for item in page.get_objects(filter=[raw.FPDF_PAGEOBJ_PATH], max_depth=1):
+        fill, stroke = ctypes.c_int(), ctypes.c_int()
+        raw.FPDFPath_GetDrawMode(item, fill, stroke)
+        if fill.value or stroke.value:
+            rulings += [_ruling(start, end, frame) for start, end in _segments(raw, item) if start != end]
+    return [ruling for ruling in rulings if ruling is not None]
+
+
+def _segments(raw: Any, item: Any) -> list[tuple[tuple[float, float], tuple[float, float]]]:
+    """Straight pieces of a path, in PDF units."""
+    matrix = item.get_matrix()
+    pieces, start, last = [], (0.0, 0.0), (0.0, 0.0)
+    for index in range(raw.FPDFPath_CountSegments(item)):
+        segment = raw.FPDFPath_GetPathSegment(item, index)
+        x, y = ctypes.c_float(), ctypes.c_float()
+        raw.FPDFPathSegment_GetPoint(segment, x, y)
+        point = matrix.on_point(x.value, y.value)
+        kind = raw.FPDFPathSegment_GetType(segment)
+        if kind == raw.FPDF_SEGMENT_MOVETO:
+            start = point
+        elif kind == raw.FPDF_SEGMENT_LINETO:
+            pieces.append((last, point))
+        last = point
+        if raw.FPDFPathSegment_GetClose(segment):
+            pieces.append((last, start))
+    return pieces
+
+
+def _ruling(start: tuple[float, float], end: tuple[float, float], frame: Frame) -> Ruling | None:
+    (x0, y0), (x1, y1) = frame.shown(*start), frame.shown(*end)
+    if min(abs(x1 - x0), abs(y1 - y0)) > 0.5:
+        return None
+    return Ruling(min(x0, x1), min(y0, y1), max(x0, x1), max(y0, y1))

@@ -465,6 +465,22 @@ def test_stray_bytes_ahead_of_the_file_do_no_harm():
 
 
 def test_an_empty_page_gives_nothing_and_no_note():
+    document = pdf.read(drawn(lambda paper: None, ruled))
+    assert [block.where.page for block in document.blocks] == [2]
+    assert document.notes == ()
+
+
+def test_a_file_of_empty_pages_is_told_of():
     document = pdf.read(drawn(lambda paper: None))
     assert document.blocks == ()
-    assert document.notes == ()
+    assert [note.message for note in document.notes] == ["The PDF holds no text and no picture of text."]
+
+
+def test_a_damaged_page_is_told_of_and_the_others_are_read():
+    def change(writer):
+        writer.root_object["/Pages"]["/Kids"][0] = pypdf.generic.NumberObject(7)
+
+    document = pdf.read(changed(drawn(ruled, ruled), change))
+    # pdfplumber gives the whole file up; the lines of the table are pdfium's.
+    assert [(table.where.page, grid_of(table)) for table in tables_of(document)] == [(2, ROWS)]
+    assert [note.message for note in document.notes] == ["Page 1 is damaged and was not read: fetch the file again."]
