@@ -10,6 +10,8 @@ from dataclasses import dataclass, field
 
 from lxml import etree
 
+from extract.documents.grid import address
+from extract.documents.model import DocumentError
 from extract.documents.numberformat import adds_something
 
 _MAIN = "{http://schemas.openxmlformats.org/spreadsheetml/2006/main}"
@@ -28,6 +30,9 @@ _DATE_SIGNS = re.compile(r"[ymdhs]", re.IGNORECASE)
 _LITERALS = re.compile(r'"[^"]*"|\\.|\[[^\]]*\]|General', re.IGNORECASE)
 _CELL_NAME = re.compile(rb'\br="([A-Z]+)(\d+)"')
 _STYLE = re.compile(rb'\bs="(\d+)"')
+_FAR_CELL = re.compile(rb'\br="(?:[A-Z]{3}\d+|[A-Z]+\d{6,})"')
+_FILLED_CELL = re.compile(rb'<c\s[^>]*?\br="([A-Z]{1,3})(\d+)"[^>/]*>')
+_MOST_CELLS = 20_000_000
 _NO_RESULT = re.compile(rb"<c\s([^>]*)>\s*<f(?:\s[^>]*)?(?:/>|>[^<]*</f>)\s*(?:<v\s*/>|<v></v>)?\s*</c>")
 
 
@@ -48,9 +53,28 @@ def sheet_styles(data: bytes) -> dict[str, SheetStyles]:
         if "xl/workbook.xml" not in names:
             return {}
         codes = _style_codes(archive.read("xl/styles.xml")) if "xl/styles.xml" in names else {}
-        return {
-            name: _styles_of(archive.read(part), codes) for name, part in _sheet_parts(archive).items() if part in names
-        }
+        styles = {}
+        for name, part in _sheet_parts(archive).items():
+            if part in names:
+                content = archive.read(part)
+                _refuse_stray_cells(name, content)
+                styles[name] = _styles_of(content, codes)
+        return styles
+
+
+def _refuse_stray_cells(name: str, sheet: bytes) -> None:
+    """DocumentError where a stray cell far off would make the grid, which the reader holds whole, too large to hold."""
+    if not _FAR_CELL.search(sheet):
+        return
+    filled = [(_column(match.group(1)), int(match.group(2))) for match in _FILLED_CELL.finditer(sheet)]
+    width = max((column for column, _ in filled), default=0) + 1
+    height = max((row for _, row in filled), default=0)
+    if width * height > _MOST_CELLS:
+        furthest = max(filled, key=lambda cell: (cell[0] > 1000, cell[1], cell[0]))
+        raise DocumentError(
+            f"Sheet {name!r} has a cell far off the rest ({address(furthest[1] - 1, furthest[0])}), which makes it too "
+            "large to read. Delete the empty rows and columns up to that cell and save the workbook again."
+        )
 
 
 def _sheet_parts(archive: zipfile.ZipFile) -> dict[str, str]:

@@ -186,6 +186,13 @@ def test_a_locked_open_document_is_refused() -> None:
         read_open(open_document("<manifest><encryption-data/></manifest>"))
 
 
+def test_a_stray_cell_far_off_is_told_rather_than_held() -> None:
+    book = sheet_with([HEADER, ["A1", 16, 8, 60]])
+    book.active["XFD1048576"] = "x"
+    with pytest.raises(DocumentError, match=r"^Sheet 'L' has a cell far off the rest \(XFD1048576\)"):
+        read(saved(book))
+
+
 def test_an_empty_workbook_is_refused() -> None:
     with pytest.raises(DocumentError, match="^No sheet that the workbook shows holds any text"):
         read(saved(openpyxl.Workbook()))
