@@ -117,7 +117,8 @@ def _exact(parts: Parts) -> Label | None:
     return None
 
 
-_SAFE_LOWER = re.compile(r"esr|cl|[crlf]\d")
+# "f_tol" and its like, the underscore lost, are no words of any language.
+_SAFE_LOWER = re.compile(r"esr|cl|[crlf]\d|f(?:nom|tol|tem|age|aging|stab)")
 
 
 def _symbol(text: str, parts: Parts) -> str | None:
