@@ -79,7 +79,7 @@ class Draws:
 
     def interval(self, about: str) -> tuple[Array, Array]:
         """(n,) low and high end of what the share may be, 95 in 100, for only so many boards were drawn."""
-        low, high = share_interval(self.short[about], self.boards)
+        low, high = share_interval(np.maximum(self.short[about], 0), self.boards)
         return tuple(np.where(self.known[about], end, np.nan) for end in (low, high))  # type: ignore[return-value]
 
 
