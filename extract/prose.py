@@ -155,7 +155,7 @@ def _zipped_bands(text: str, field: str) -> list[tuple[str, str]]:
     """Several frequency bands and behind them as many resistances, from a dump that reads columns one by one."""
     if field != "esr_ohm":
         return []
-    bands = list(_FREQUENCIES.finditer(text))
+    bands = list(_BANDS.finditer(text))
     if len(bands) < 2:
         return []
     rest = text[bands[-1].end() :]
@@ -184,6 +184,12 @@ def _last_amount(text: str, field: str) -> str:
 _FREQUENCY = re.compile(r"(?i)(?<![\w.,±-])\d+(?:[.,]\d+)*\s?[mk]hz\b")
 _FREQUENCIES = re.compile(
     r"(?i)(?<![\w.,±-])\d+(?:[.,]\d+)*\s?(?:[mk]hz)?\s?(?:to|-|~|…|bis|à|a|至)\s?\d+(?:[.,]\d+)*\s?[mk]hz\b"
+)
+_BANDS = re.compile(
+    rf"{_FREQUENCIES.pattern}|(?i:\d+(?:[.,]\d+)*\s?(?:[mk]hz)?\s?[≤<]\s?\w{{1,5}}\s?[≤<]\s?\d+(?:[.,]\d+)*\s?[mk]hz\b)".replace(
+        "(?i)", "", 1
+    ),
+    re.IGNORECASE,
 )
 _OHMS = re.compile(r"(?i)\d+(?:[.,]\d+)?\s?[km]?(?:Ω|ohms?)(?:\s?(?:max|typ)\b\.?)?")
 _PPM = re.compile(r"(?i)±\s?\d+(?:[.,]\d+)?(?:\s?-?[\d.,]+)?\s?ppm")
