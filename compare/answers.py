@@ -22,13 +22,14 @@ from compare.figures import (
     frequency_text,
     number,
     ordinal,
+    scale,
     signed,
     spread,
     with_minus,
     with_unit,
 )
 from compare.palette import Palette
-from compare.shown import NAMES
+from compare.shown import NAMES, short_name
 from extract.model import FIELD_NAMES
 
 Row = Mapping[str, Any]
@@ -126,7 +127,7 @@ def _nearest(rows: Sequence[Row]) -> str:
 
 def row_name(row: Row) -> str:
     """The part number, else the file's name."""
-    return str(row["part_number"] or row["file"].rsplit("/", 1)[-1])
+    return str(row["part_number"] or short_name(row["file"]))
 
 
 def tightest_text(row: Row) -> str:
@@ -358,7 +359,7 @@ def numbers(review: Row, bench: Bench) -> list[Number]:
 
 
 def _number(figure: Row, shown: Figure) -> Number:
-    factor, unit = (1e3, "µS") if _is_small_gm(figure, shown) else (1.0, shown.unit)
+    factor, unit = scale(shown.unit, *(figure[end] for end in ENDS))
 
     def end(name: str) -> str:
         if figure[name] is None:
@@ -369,11 +370,6 @@ def _number(figure: Row, shown: Figure) -> Number:
     basis = figure["basis"] or ""
     said = "∴ estimated" if basis == "estimated" else basis
     return Number(shown.name, end("low"), end("mid"), end("high"), unit, said, with_minus(figure["how"] or ""))
-
-
-def _is_small_gm(figure: Row, shown: Figure) -> bool:
-    """Whether a transconductance is said in µS, as watch oscillators' sheets say it."""
-    return shown.unit == "mS" and all((figure[end] or 0) < 0.1 for end in ENDS)
 
 
 def load_pull(review: Row, bench: Bench, rated_pf: float | None, *, series: bool) -> LoadPull | None:

@@ -239,7 +239,8 @@ def _load_words(pull: LoadPull, x: Channel, y: Channel) -> Any:
         words.append((right - pad / 2, (pull.room_high_ppm or 0.0) + 8 * line, said, False))
     if _inside(pull.room_low_ppm, bottom, top):
         low = pull.room_low_ppm or 0.0
-        words.append((left + pad / 2, low - 9 * line, f"{_signed(low)} ppm", True))
+        named = "" if _inside(pull.room_high_ppm, bottom, top) else "room left for load "
+        words.append((left + pad / 2, low - 9 * line, f"{named}{_signed(low)} ppm", True))
     frame = pd.DataFrame(words, columns=["x", "y", "t", "starts"])
     layers = [
         alt.Chart(frame[frame["starts"] == starts])

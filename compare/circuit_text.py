@@ -7,7 +7,16 @@ from dataclasses import dataclass
 from compare.bench import Bench, CircuitKeys, uses
 from compare.desk import field_key, field_of
 from compare.drawing import CircuitFigures, Mark
-from compare.figures import CLOCK_BELOW_MHZ, SECONDS_A_DAY_PER_PPM, exact, frequency_text, number, spread, with_unit
+from compare.figures import (
+    CLOCK_BELOW_MHZ,
+    SECONDS_A_DAY_PER_PPM,
+    exact,
+    frequency_text,
+    number,
+    scale,
+    spread,
+    with_unit,
+)
 
 SET_IT = "Give the frequency, and what you know of the circuit, at the right; or open a bench file."
 READ_IT = "Each capacitance carries the two nodes it lies between. 0 is ground. Press a figure to change it."
@@ -76,9 +85,8 @@ def gm_over_all(bench: Bench) -> tuple[float, float] | None:
 
 def gm_text(least_ms: float, most_ms: float) -> str:
     """`3.6…9 mS`, `10.5…11.5 µS`."""
-    if most_ms < 0.1:
-        return spread(least_ms * 1e3, most_ms * 1e3, "µS")
-    return spread(least_ms, most_ms, "mS")
+    factor, unit = scale("mS", least_ms, most_ms)
+    return spread(least_ms * factor, most_ms * factor, unit)
 
 
 @dataclass(frozen=True)

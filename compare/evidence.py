@@ -49,11 +49,11 @@ def page_picture(data: bytes, sheet: SpecSheet, where: Where) -> Pictured | None
 
 
 def _close_up(page: Image, box: list[float]) -> Image:
-    """Well over half a page wide and more to the left than to the right, so that the row's label stands in it."""
+    """Most of a page wide and more to the left than to the right, so that the row's label stands in it."""
     x0, top, x1, bottom = box
-    width = min(max(0.62 * page.width, 1.2 * (x1 - x0)), page.width)
-    height = min(max(0.3 * width, 1.6 * (bottom - top)), page.height)
-    left = min(max((x0 + x1) / 2 - 0.62 * width, 0), page.width - width)
+    width = min(max(0.75 * page.width, 1.2 * (x1 - x0)), page.width)
+    height = min(max(0.26 * width, 1.6 * (bottom - top)), page.height)
+    left = min(max((x0 + x1) / 2 - 0.7 * width, 0), page.width - width)
     upper = min(max((top + bottom - height) / 2, 0), page.height - height)
     return page.crop((round(left), round(upper), round(left + width), round(upper + height)))
 

@@ -83,6 +83,23 @@ def counted(count: int, one: str, many: str = "") -> str:
     return f"{count} {one if count == 1 else many or one + 's'}"
 
 
+# Unit: below which (or from which) all values go over to another unit, by what factor.
+SMALL = {"mS": (0.1, 1e3, "µS"), "MHz": (1.0, 1e3, "kHz")}
+LARGE = {"Ω": (10_000.0, 1e-3, "kΩ"), "mH": (10_000.0, 1e-3, "H"), "ms": (10_000.0, 1e-3, "s")}
+
+
+def scale(unit: str, *values: float | None) -> tuple[float, str]:
+    """Factor and unit in which the trade says values of this size: 0.0105 mS are 10.5 µS, 0.032768 MHz 32.768 kHz."""
+    sizes = [abs(value) for value in values if value is not None and value != 0 and math.isfinite(value)]
+    if not sizes:
+        return 1.0, unit
+    if unit in SMALL and max(sizes) < SMALL[unit][0]:
+        return SMALL[unit][1:]
+    if unit in LARGE and min(sizes) >= LARGE[unit][0]:
+        return LARGE[unit][1:]
+    return 1.0, unit
+
+
 # A million seconds are 11.57 days: 1 ppm is 0.0864 s a day.
 SECONDS_A_DAY_PER_PPM = 0.0864
 CLOCK_BELOW_MHZ = 1.0
@@ -90,6 +107,5 @@ CLOCK_BELOW_MHZ = 1.0
 
 def frequency_text(frequency_mhz: float) -> str:
     """`26 MHz`, `32.768 kHz`: the unit that the trade says it in."""
-    if frequency_mhz < 1:
-        return f"{exact(frequency_mhz * 1000)} kHz"
-    return f"{exact(frequency_mhz)} MHz"
+    factor, unit = scale("MHz", frequency_mhz)
+    return f"{exact(frequency_mhz * factor)} {unit}"

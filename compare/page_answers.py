@@ -75,12 +75,12 @@ def ranked_rows(result: dict[str, Any]) -> dict[str, Any]:
         key=f"ranked_{order}",
         alt="Candidates in order, with their verdicts",
         column_config={
-            "Place": column.NumberColumn(width=52),
-            "Part": column.TextColumn(width=138),
-            "Verdict": column.TextColumn(width=94),
-            "Look": column.TextColumn(width=50),
-            "Times over: 1 is the line": column.ImageColumn(width=208),
-            "Tightest": column.TextColumn(width=150),
+            "Place": column.NumberColumn(width=48),
+            "Part": column.TextColumn(width=134),
+            "Verdict": column.TextColumn(width=92),
+            "Look": column.TextColumn(width=46),
+            "Times over: 1 is the line": column.ImageColumn(width=204),
+            "Tightest": column.TextColumn(width=168),
         },
     )
     row: dict[str, Any] = rows[session.selected_row(picked, len(rows))]

@@ -42,7 +42,8 @@ def start() -> None:
         with st.spinner("Reading the sheets …"):
             intake = read_sheets(names)
         st.session_state.opened = [Opened(sheet) for sheet in intake.sheets]
-        st.session_state.said = [note.message for note in intake.notes]
+        # What a folder holds beside sheets is no news to the person who named it.
+        st.session_state.said = [note.message for note in intake.notes if note.level != "info"]
 
 
 def desk() -> Desk:

@@ -49,7 +49,7 @@ def take_sheets() -> None:
         st.rerun()
     st.markdown(f":gray[:small[{PRIVACY} PDF, workbook, list, web page, Word document, text or picture; 50 MB each.]]")
     for said in st.session_state.said:
-        st.markdown(pieces.plain(said))
+        st.markdown(f":small[{pieces.plain(said)}]")
 
 
 def example_files() -> list[tuple[str, bytes]]:

@@ -47,12 +47,12 @@ def waiting(sheet: SpecSheet) -> int:
 
 def sheets_frame(sheets: Sequence[SpecSheet]) -> pd.DataFrame:
     """One row a sheet, in the order opened: file and outcome."""
-    return pd.DataFrame([(file_name(sheet), _outcome(sheet)) for sheet in sheets], columns=["Sheet", "Outcome"])
+    return pd.DataFrame([(short_name(sheet.file), _outcome(sheet)) for sheet in sheets], columns=["Sheet", "Outcome"])
 
 
-def file_name(sheet: SpecSheet, longest: int = 22) -> str:
-    """The file's name without its folders; a long one loses its middle, for its end tells the kind."""
-    name = sheet.file.rsplit("/", 1)[-1]
+def short_name(file: str, longest: int = 22) -> str:
+    """A file's name without its folders; a long one loses its middle, for its end tells the kind."""
+    name = file.rsplit("/", 1)[-1]
     return name if len(name) <= longest else f"{name[: longest - 10]}…{name[-9:]}"
 
 
@@ -98,7 +98,7 @@ def part_name(part: Part, number: int = 1) -> str:
     """The part number, else the maker's or the count's name for it."""
     if part.part_number:
         return part.part_number
-    return f"{part.maker}, no part number" if part.maker else f"part {number}, no part number"
+    return f"{part.maker}, no part number" if part.maker else f"Part {number}, no part number"
 
 
 def part_facts(part: Part) -> str:

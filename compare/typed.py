@@ -11,7 +11,7 @@ from functools import cache
 from pathlib import Path
 from typing import Any
 
-from compare.figures import exact, with_unit
+from compare.figures import exact, scale, with_unit
 
 AMOUNT = re.compile(r"(?P<sign>[-+]?)\s*(?P<digits>\d[\d\s.,]*(?:[eE][-+]?\d+)?|[.,]\d+)\s*(?P<unit>\D.*)?")
 THOUSANDS_OR_DECIMALS = re.compile(r"\d{1,3}[.,]\d{3}")
@@ -106,7 +106,11 @@ def understand(text: str, asked: Field, *, kept: bool = False) -> Typed:
 
 def shown(value: float, asked: Field) -> str:
     """The value as the field shows it back: `12.5 pF`."""
-    return "without end" if math.isinf(value) else with_unit(exact(value), asked.unit)
+    if math.isinf(value):
+        return "without end"
+    factor, unit = scale(asked.unit, value)
+    # What is shown back must be one of the units that can be typed there.
+    return with_unit(exact(value * factor), unit) if unit in units(asked.unit) else with_unit(exact(value), asked.unit)
 
 
 def _plain(text: str) -> str:

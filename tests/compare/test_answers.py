@@ -216,3 +216,13 @@ def test_a_small_transconductance_is_said_in_microsiemens():
     review = hand_made.review(critical_transconductance_ms=hand_made.figure(0.001, 0.0012, 0.0023))
     critical = next(one for one in answers.numbers(review, WATCH) if one.name == "Critical transconductance")
     assert (critical.low, critical.mid, critical.high, critical.unit) == ("1", "1.2", "2.3", "µS")
+
+
+def test_a_forks_kilohms_and_henries_are_said_as_such():
+    review = hand_made.review(
+        negative_resistance_ohm=hand_made.figure(-461564.0, -422555.0, -352727.0),
+        motional_inductance_mh=hand_made.figure(4.7e6, 8.58e6, 17.2e6),
+    )
+    rows = {one.name: one for one in answers.numbers(review, WATCH)}
+    assert (rows["Negative resistance"].low, rows["Negative resistance"].unit) == ("−461.6", "kΩ")
+    assert (rows["Motional inductance L1"].mid, rows["Motional inductance L1"].unit) == ("8580", "H")

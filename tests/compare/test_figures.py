@@ -4,7 +4,18 @@ import pytest
 from hypothesis import given
 from hypothesis import strategies as st
 
-from compare.figures import count_word, counted, exact, frequency_text, number, ordinal, signed, spread
+from compare.figures import (
+    count_word,
+    counted,
+    exact,
+    frequency_text,
+    number,
+    ordinal,
+    scale,
+    signed,
+    spread,
+    with_minus,
+)
 
 
 @pytest.mark.parametrize(
@@ -76,3 +87,25 @@ def test_places_end_as_they_are_spoken():
 def test_a_watch_crystal_is_said_in_khz():
     assert frequency_text(0.032768) == "32.768 kHz"
     assert frequency_text(26.0) == "26 MHz"
+
+
+@pytest.mark.parametrize(
+    ("unit", "values", "scaled"),
+    [
+        ("mS", (0.0105, 0.0115), (1e3, "µS")),
+        ("mS", (0.05, 3.0), (1.0, "mS")),
+        ("Ω", (-461564.0, -352727.0), (1e-3, "kΩ")),
+        ("Ω", (900.0, 20000.0), (1.0, "Ω")),
+        ("mH", (4.7e6, None), (1e-3, "H")),
+        ("pF", (1e6,), (1.0, "pF")),
+        ("mS", (None, None), (1.0, "mS")),
+    ],
+)
+def test_all_values_of_a_line_go_over_to_the_unit_of_their_size_together(unit, values, scaled):
+    assert scale(unit, *values) == scaled
+
+
+def test_a_hyphen_before_a_number_becomes_a_minus_and_others_stay():
+    assert with_minus("-27.1 to +45.6 ppm against -50/+50; MRB25-260-08H, 1e-5") == (
+        "−27.1 to +45.6 ppm against −50/+50; MRB25-260-08H, 1e-5"
+    )

@@ -17,7 +17,7 @@ def test_each_sheet_has_one_line_with_its_outcome():
 
 
 def test_a_long_name_keeps_its_start_and_its_end():
-    name = shown.file_name(hand_made.SHEET.model_copy(update={"file": "a/b/orchard_node_purchasing_list.xlsx"}))
+    name = shown.short_name("a/b/orchard_node_purchasing_list.xlsx")
     assert name == "orchard_node…list.xlsx"
     assert len(name) <= 22
 
@@ -102,7 +102,7 @@ def test_the_evidence_says_what_was_read_why_to_look_and_what_is_printed():
 def test_a_part_is_named_and_described_by_what_is_stated():
     assert shown.part_name(hand_made.PART) == "MRB25-260-08H"
     assert shown.part_name(Part(maker="Quenby")) == "Quenby, no part number"
-    assert shown.part_name(Part(), 3) == "part 3, no part number"
+    assert shown.part_name(Part(), 3) == "Part 3, no part number"
     assert shown.part_facts(hand_made.PART) == "Merrowby · 2.5 × 2.0, 4 pads, crystal on 1 and 3 · AT cut · fundamental"
     assert (
         shown.part_facts(Part(cut="tuning fork", resonance="series"))

@@ -58,7 +58,7 @@ def test_a_blank_field_is_no_fault():
             CAPACITOR,
             "12500 pF: plausible is 0.5 to 470 pF. Meant 12.5 pF? Not used until you say.",
         ),
-        ("32,768 kHz", FREQUENCY, "can be 0.032768 MHz or 32.768 MHz; write it without the comma"),
+        ("32,768 kHz", FREQUENCY, "can be 32.768 kHz or 32.768 MHz; write it without the comma"),
     ],
 )
 def test_what_cannot_be_used_says_why_in_one_sentence(text, asked, fault):
@@ -110,3 +110,9 @@ def test_the_options_of_a_choice_are_those_of_the_bench():
             field = models[table].model_fields[name]
             assert set(one.options) == set(get_args(field.annotation)), one.key
             assert next(iter(one.options)) == field.default, one.key
+
+
+def test_a_watch_crystals_values_are_shown_in_the_units_they_are_spoken_in():
+    assert shown(0.032768, FREQUENCY) == "32.768 kHz"
+    assert shown(0.0115, GM) == "11.5 µS"
+    assert shown(20000.0, fields()["circuit.series_resistor_ohm"]) == "20 kΩ"
