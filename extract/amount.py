@@ -111,11 +111,14 @@ def _heading(given: _Given, field_name: str) -> Heading:
 
 def _give_units(amounts: list[Amount], pieces: list[Token], heading: Heading, row: Field) -> None:
     """Each number its unit: its own, that of the next number that has one, a free one, the last, the heading's."""
-    free = next((piece for piece in pieces if piece.kind == "unit" and piece.meaning == "free"), None)
-    for index, amount in enumerate(amounts):
-        later = next((a.printed_unit for a in amounts[index:] if a.printed_unit), None)
-        earlier = next((a.printed_unit for a in reversed(amounts[:index]) if a.printed_unit), None)
-        unit = later or free or earlier
+    free = [(at, piece) for at, piece in enumerate(pieces) if piece.kind == "unit" and piece.meaning == "free"]
+    printed = sorted(
+        [*free, *((a.group.start, a.printed_unit) for a in amounts if a.printed_unit)], key=lambda one: one[0]
+    )
+    for amount in amounts:
+        later = next((unit for at, unit in printed if at >= amount.group.start), None)
+        earlier = next((unit for at, unit in reversed(printed) if at < amount.group.start), None)
+        unit = amount.printed_unit or later or earlier
         name, scale = (unit.text, unit.value) if unit else heading.unit or ("", 1.0)
         if not name and row.name == "frequency_mhz" and _is_khz(amount, row):
             name, scale = "kHz", 1e-3

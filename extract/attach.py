@@ -55,15 +55,16 @@ def own_amounts(items: list[Item], pieces: list[Token], row: Field) -> list[Amou
         if group.before.startswith("symbol") or (group.before == "at" and found and not group.bound):
             continue
         found.append(Amount(group, position, bound=group.bound, doubts=list(group.doubts)))
-    with_unit = [amount.group for amount in found if amount.printed_unit]
-    if not with_unit:
+    places = [(amount.group.start, amount.group.end) for amount in found if amount.printed_unit]
+    if not places:
         return found
-    return [a for a in found if a.printed_unit or any(_joined_by_marks(a.group, unit, pieces) for unit in with_unit)]
+    places += [(at, at + 1) for at, piece in enumerate(pieces) if piece.kind == "unit" and piece.meaning == "free"]
+    return [a for a in found if a.printed_unit or any(_joined_by_marks(a.group, place, pieces) for place in places)]
 
 
-def _joined_by_marks(one: Group, other: Group, pieces: list[Token]) -> bool:
-    first, last = sorted((one, other), key=lambda group: group.start)
-    return all(piece.kind in _LIST_MARKS for piece in pieces[first.end : last.start])
+def _joined_by_marks(group: Group, place: tuple[int, int], pieces: list[Token]) -> bool:
+    (_, end), (start, _) = sorted([(group.start, group.end), place])
+    return all(piece.kind in _LIST_MARKS for piece in pieces[end:start])
 
 
 def attach(items: list[Item], amounts: list[Amount], row: Field) -> None:
@@ -144,9 +145,14 @@ def _of_none(items: list[Item], amounts: list[Amount], position: int, sort: str)
     same_line = [amount for amount in before if items[amount.position].line == items[position].line]
     if same_line or sort in ("request", "standard"):
         return same_line[-1:]
-    if not before or _value_follows_on_line(items, after, items[position].line):
+    if not before or _value_follows_on_line(items, after, items[position].line) or (after and _told(before[-1], sort)):
         return _until_next(items, after, position, sort)
     return before[-1:]
+
+
+def _told(amount: Amount, sort: str) -> bool:
+    """Whether the amount has its mode or years already, so that another of that sort begins what follows."""
+    return (sort == "mode" and amount.when.mode is not None) or (sort == "years" and amount.when.years is not None)
 
 
 def _value_follows_on_line(items: list[Item], after: list[Amount], line: int) -> bool:

@@ -9,7 +9,7 @@ from functools import cache, lru_cache
 from extract.fold import fold, key
 from extract.labels import EDGE, Parts, is_nominal, one_year_words, take_apart, without_unit
 from extract.model import When
-from extract.runs import IDEOGRAPHS, words_of
+from extract.runs import IDEOGRAPHS, Run, words_of
 from extract.units import factor
 from extract.vocabulary import vocabulary
 
@@ -309,11 +309,23 @@ def _find_labels(folded: str) -> tuple[FoundLabel, ...]:
         if run is not None and not _BREAK.search(folded, run.start, run.end):
             found.append(FoundLabel(run.start, run.end, Label(run.meaning, exact=run.key not in known.weak)))
             first = run.last
-        elif symbol is not None and _symbol(folded[symbol.start : symbol.end], nothing):
+        elif (
+            symbol is not None
+            and _stands_for_itself(folded, symbol)
+            and _symbol(folded[symbol.start : symbol.end], nothing)
+        ):
             found.append(FoundLabel(symbol.start, symbol.end, Label(symbol.meaning, symbol=True)))
             first = symbol.last
         first += 1
     return tuple(found)
+
+
+_NAMES_VALUE = re.compile(r"\s?[:=≥>]")
+
+
+def _stands_for_itself(folded: str, symbol: Run[str]) -> bool:
+    """A single letter in running text is a code as often as a symbol; it is one where its value is set equal to it."""
+    return symbol.end - symbol.start > 1 or _NAMES_VALUE.match(folded, symbol.end) is not None
 
 
 # A wording does not go on over these.

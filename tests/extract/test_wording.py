@@ -455,6 +455,11 @@ def test_labels_are_found_in_running_text_in_order():
     assert [one.label.exact for one in found] == [False, True, True, True, True, True]
 
 
+def test_a_single_letter_in_running_text_is_a_symbol_only_where_a_value_is_set_to_it():
+    assert find_labels("8.0pF = M 12.0pF = Q 18.0pF = D") == ()
+    assert [one.label.field for one in find_labels("Q = 80000")] == [Q]
+
+
 def test_an_oscillators_words_are_found_and_a_crystals_sheet_has_none():
     assert oscillator_words("Supply voltage 3.3 V, duty cycle 45 to 55 %, rise time 5 ns") == (
         "Supply voltage",
