@@ -10,13 +10,11 @@ from extract.model import Attributes, Pads
 from extract.vocabulary import vocabulary
 
 _LIST = r"#?\d(?:\s?(?:,|and|und|&|/|、|と|和)\s?#?\d)*"
-_CRYSTAL_PADS = re.compile(
-    rf"(?i)(?:pads?|pins?|terminals?)?\s?({_LIST})\s?(?:are|is|:|=|-)?\s?(?:the\s)?(?:crystal|xtal|quartz|quarz)"
-)
+_VERB = r"\s?(?:are|is|:|=|-)?\s?(?:connected to\s)?(?:the\s)?"
+_CRYSTAL_PADS = re.compile(rf"(?i)(?:pads?|pins?|terminals?)?\s?({_LIST}){_VERB}(?:crystal|xtal|quartz|quarz)")
 _GROUND_PADS = re.compile(
-    rf"(?i)(?:pads?|pins?|terminals?)?\s?({_LIST})\s?(?:are|is|:|=|-)?\s?(?:connected to\s)?(?:the\s)?(?:gnd|ground|metal lid|lid|cover|case|masse)"
+    rf"(?i)(?:pads?|pins?|terminals?)?\s?({_LIST}){_VERB}(?:gnd|ground|metal lid|lid|cover|case|masse)"
 )
-_COUNT = re.compile(r"(?i)\b([2-6])[\s-]?(?:pads?|pins?|P\b|SMD)")
 
 
 def attributes_of(stated: Mapping[str, str], texts: Sequence[str] = ()) -> Attributes:

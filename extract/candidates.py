@@ -13,7 +13,6 @@ from extract.conditions import condition_of, kept, merged
 from extract.entries import Entry, Key, Placed, Source, Value
 from extract.fields import field_of
 from extract.fold import fold, key
-from extract.heads import is_unit
 from extract.meaning import meaning
 from extract.model import FieldName, When, Where
 from extract.units import unit_at
@@ -74,7 +73,9 @@ def entry_candidates(entry: Entry) -> list[Candidate]:
 
 def _by_unit(label: Label, texts: Iterable[str]) -> Label:
     """The field that the printed unit makes of the label: a "stability" in ppm/°C² is the parabola."""
-    field = next((other for text in texts if (other := amount.field_for(text, label.field)) != label.field), label.field)
+    field = next(
+        (other for text in texts if (other := amount.field_for(text, label.field)) != label.field), label.field
+    )
     return label if field == label.field else replace(label, field=field, plus_minus=False)
 
 
@@ -97,7 +98,7 @@ _MEASURED_AT = re.compile(r"(?i)[\d.,±+\-\s]+|°?\bC\b|\b(?:[DA]C)?\s?\d*\s?V(?
 
 
 def settled(label: Label) -> Label:
-    """A partial match whose rest is only a bound word, a mode or where it was measured is as good as the wording itself."""
+    """A partial match whose rest is only a bound word, a mode or where it was measured is as good as the wording."""
     rest = _MEASURED_AT.sub(" ", label.rest).strip()
     bound = vocabulary().bounds.get(key(rest))
     if bound is not None and label.bound in (None, bound):
@@ -182,12 +183,14 @@ def _single(entry: Entry, label: Label, when: When, subject: str, value: Value) 
     plus_minus = label.plus_minus or bool(_PLUS_MINUS.search(fold(entry.unit)))
     found = read(value.piece.text, label.field, _bare_unit(unit), bound, plus_minus=plus_minus)
     return [
-        _candidate(
-            entry, label, merged(when, kept(each.when, label.field)), subject, value.piece, each, nominal=value.nominal
-        )
+        _candidate(entry, label, _joint(when, each, label), value.piece, each, subject=subject, nominal=value.nominal)
         for each in found
         if not each.empty and not each.series
     ]
+
+
+def _joint(when: When, value: amount.Value, label: Label) -> When:
+    return merged(when, kept(value.when, label.field))
 
 
 def _bare_unit(unit: str | None) -> str | None:
@@ -195,7 +198,7 @@ def _bare_unit(unit: str | None) -> str | None:
     if unit is None:
         return None
     bare = fold(unit).strip(" ±()[]|/")
-    return bare if is_unit(bare) or bare else None
+    return bare or None
 
 
 def _last_resort(entry: Entry, label: Label, when: When, subject: str, values: Sequence[Value]) -> list[Candidate]:
@@ -207,7 +210,14 @@ def _last_resort(entry: Entry, label: Label, when: When, subject: str, values: S
 
 
 def _candidate(
-    entry: Entry, label: Label, when: When, subject: str, piece: Placed, value: amount.Value, *, nominal: bool = False
+    entry: Entry,
+    label: Label,
+    when: When,
+    piece: Placed,
+    value: amount.Value,
+    *,
+    subject: str = "",
+    nominal: bool = False,
 ) -> Candidate:
     bare = value.bare and field_of(label.field).bare and not nominal
     return Candidate(
@@ -261,9 +271,7 @@ def _joined(entry: Entry, label: Label, when: When, subject: str, values: Sequen
             parts.append((value, found[0]))
         else:
             others += [
-                _candidate(
-                    entry, label, merged(when, kept(each.when, label.field)), subject, value.piece, each, nominal=True
-                )
+                _candidate(entry, label, _joint(when, each, label), value.piece, each, subject=subject, nominal=True)
                 for each in found
             ]
     if not parts:
@@ -331,12 +339,12 @@ def key_candidates(ordering: Key) -> Iterator[Candidate]:
             elif value.typ is not None:
                 numbers.append(value.typ)
             elif value.min is not None and value.max is not None:
-                found = _candidate(entry, label, When(), "", piece, value)
+                found = _candidate(entry, label, When(), piece, value)
                 yield replace(found, source="key")
     if numbers:
         first = ordering.choices[0][1]
         chosen = amount.Value(None, None, None, tuple(dict.fromkeys(numbers)), When(), False, (), first.text)
-        found = _candidate(entry, label, When(), "", first, chosen)
+        found = _candidate(entry, label, When(), first, chosen)
         yield replace(found, source="key", raw=f"{ordering.label.text} {'; '.join(raws)}")
 
 

@@ -24,8 +24,8 @@ _WORD = re.compile(r"[^\s,;:()\[\]|]+")
 class Draft:
     """What a sheet says of one part.
 
-    `texts` are the words beside its values, for what it is not. `crystal`: its own row calls it one; `other`: rows beside
-    it do and its own does not. `by_subject`: identity entries under the name of a model in a column head.
+    `texts` are the words beside its values, for what it is not. `crystal`: its own row calls it one; `other`: rows
+    beside it do and its own does not. `by_subject`: identity entries under the name of a model in a column head.
     """
 
     part_number: str | None = None

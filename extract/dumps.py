@@ -15,7 +15,7 @@ LEAST_LABELS = 5
 
 
 def column_dump(lines: Sequence[Line], start: int) -> tuple[list[Entry], int]:
-    """Entries of a dump whose labels begin at `start`, and the number of lines that it takes; nothing where it is none."""
+    """Entries of a dump whose labels begin at `start`, and how many lines it takes; nothing where it is none."""
     labels = _labels(lines, start)
     if len(labels) < LEAST_LABELS:
         return [], 0

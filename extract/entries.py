@@ -1,4 +1,4 @@
-"""What the blocks of a sheet say, before anything is chosen: labels with values, listings, lines of text, ordering keys.
+"""What the blocks of a sheet say before anything is chosen: labels with values, listings, texts, ordering keys.
 
 Nothing here knows a field; these are the shapes in which labels and values stand together on a sheet.
 """

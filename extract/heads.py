@@ -109,7 +109,7 @@ def _head(levels: tuple[str, ...], base: Meaning, bound: Bound | None, unit: str
         levels,
         label=label,
         role=base.role,
-        bound=bound or (label.bound if label else None),
+        bound=bound or (BOUNDS.get(label.bound or "") if label else None),
         identity=None if label else base.identity,
         attribute=None if label else base.attribute,
         trap=base.trap,

@@ -23,7 +23,8 @@ _CODE = re.compile(
 )
 _NAME_WORD = r"[A-ZÀ-Þ][^\W\d_]*(?:['&-][^\W\d_]+)*"
 _LATIN_NAME = re.compile(
-    rf"(?<![\w-]){_NAME_WORD}(?![\w-])(?:(?:,?[ ]+(?:&[ ])?|[ ]?&[ ]?){_NAME_WORD}(?![\w-])(?:\.(?=[ ,]|$))?|[ ]+e\.\s?K\.?)*"
+    rf"(?<![\w-]){_NAME_WORD}(?![\w-])"
+    rf"(?:(?:,?[ ]+(?:&[ ])?|[ ]?&[ ]?){_NAME_WORD}(?![\w-])(?:\.(?=[ ,]|$))?|[ ]+e\.\s?K\.?)*"
 )
 _EAST_NAME = re.compile(r"[\u3400-\u9fff\u30a0-\u30ff\uac00-\ud7af]{2,}")
 _BY = re.compile(r"\b(?:by|from|von)\s+$", re.IGNORECASE)
@@ -102,8 +103,8 @@ def maker_of(items: Sequence[Item], headers: Sequence[Text], *, sure: bool = Fal
     places += [(text, 2 if index < FIRST_LINES or index >= len(texts) - 4 else 0) for index, text in enumerate(texts)]
     for text, weight in places:
         for segment in _segments(text):
-            for name, sure in makers_in(segment):
-                scores[name] += (sure + weight) if scores[name] == 0 else 1
+            for name, form in makers_in(segment):
+                scores[name] += (form + weight) if scores[name] == 0 else 1
     if scores:
         return max(scores, key=lambda name: (scores[name], len(name)))
     return None if sure else _repeated_name(texts, headers)
@@ -158,10 +159,10 @@ def part_number_of(items: Sequence[Item], headers: Sequence[Text]) -> str | None
             return name
     scores: Counter[str] = Counter()
     texts = [item for item in items if isinstance(item, Text)]
-    for index, text in enumerate(texts[: FIRST_LINES * 2]):
-        _score_tokens(text, max(0, 6 - index), scores)
-    for text in headers:
-        _score_tokens(text, 2, scores)
+    for index, line in enumerate(texts[: FIRST_LINES * 2]):
+        _score_tokens(line, max(0, 6 - index), scores)
+    for line in headers:
+        _score_tokens(line, 2, scores)
     if not scores:
         return None
     best = max(scores, key=lambda name: scores[name])

@@ -33,7 +33,7 @@ def choices_in(text: str) -> list[tuple[str, str]]:
 
 
 def _reads_as_label(code: str) -> bool:
-    """ "CL: 8 pF" and "C0 = 1 pF" are values, not codes."""
+    """Tell values from codes: "CL: 8 pF" and "C0 = 1 pF" are values."""
     found = meaning(code)
     return found.label is not None and found.label.exact
 

@@ -86,7 +86,8 @@ def _has_pair(text: str) -> bool:
 def _label_and_rest(line: Line) -> Iterator[Entry]:
     """A label and, in the segments behind it, its symbol, values, unit and remarks."""
     label, *rest = line.segments
-    symbol, unit, values = "", "", []
+    symbol, unit = "", ""
+    values: list[Value] = []
     for segment in rest:
         if is_unit(segment.text) and values:
             unit = unit or segment.text
@@ -114,8 +115,8 @@ def _label_over_value(lines: Sequence[Line], index: int, items: list[Item]) -> i
     if end == index + 2:
         items.append(Entry(label, tuple(Value(segment) for segment in lines[index + 1].segments), source="pair"))
     else:
-        for each in lines[index + 1 : end]:
-            items.append(Entry(label, tuple(Value(segment) for segment in each.segments), source="pair"))
+        below = lines[index + 1 : end]
+        items.extend(Entry(label, tuple(Value(segment) for segment in each.segments), source="pair") for each in below)
     return end - index
 
 
@@ -155,8 +156,7 @@ def _key_run(lines: Sequence[Line], index: int, items: list[Item]) -> int:
     if len(choices) < 2:
         return 0
     label = label or _label_above(items)
-    for line in lines[index:end]:
-        items.append(_text(line))
+    items.extend(_text(line) for line in lines[index:end])
     if label is not None:
         items.append(Key(Piece(key_label(label.text), label.where), tuple(choices)))
     return end - index

@@ -7,15 +7,14 @@ frequency band, mode, load or package.
 from __future__ import annotations
 
 import re
-from collections.abc import Iterator, Sequence
+from collections.abc import Callable, Iterator, Sequence
 from dataclasses import dataclass, field, replace
-from functools import lru_cache
 
 from extract import wording
 from extract.candidates import Candidate, label_doubts, read
 from extract.conditions import band_of, condition_of, kept, merged
 from extract.drafts import Draft
-from extract.entries import Entry, Listing, Placed
+from extract.entries import Listing, Placed
 from extract.fields import field_of
 from extract.fold import fold
 from extract.heads import BOUNDS, Head, interpret, is_unit
@@ -89,7 +88,7 @@ _SYMBOL_AND_UNIT = re.compile(
 
 
 def _by_unit(head: Head) -> Label | None:
-    """A symbol that several fields share, or a letter, with a unit that only one of them has: "f (MHz)", "T min (°C)"."""
+    """A symbol that several fields share, with a unit that only one of them has: "f (MHz)", "T min (°C)"."""
     match = _SYMBOL_AND_UNIT.fullmatch(fold(" ".join(head.levels)))
     if head.name is not None or match is None:
         return None
@@ -137,17 +136,12 @@ def _sample(listing: Listing, index: int) -> list[str]:
     return [cell.text for row in listing.rows[::step] if (cell := row[index]) is not None and cell.text.strip()]
 
 
-def _share(texts: Sequence[str], test: object) -> float:
-    return sum(map(test, texts)) / len(texts) if texts else 0.0  # type: ignore[arg-type]
+def _share(texts: Sequence[str], test: Callable[[str], bool]) -> float:
+    return sum(map(test, texts)) / len(texts) if texts else 0.0
 
 
 def _is_token(text: str) -> bool:
     return bool(part_tokens(text))
-
-
-@lru_cache(maxsize=65536)
-def _read_cell(text: str, label: Label) -> tuple[object, ...]:
-    return read(text, label.field, label.unit, label.bound, plus_minus=label.plus_minus)
 
 
 def cell_candidates(cell: Placed, column: _Column, when: When, subject: str = "") -> Iterator[Candidate]:
@@ -167,7 +161,7 @@ def cell_candidates(cell: Placed, column: _Column, when: When, subject: str = ""
             options=tuple(value.options),
             when=merged(merged(when, kept(label.when, label.field)), kept(value.when, label.field)),
             bare=value.bare and known.bare,
-            raw=f"{column.head.levels[-1] if len(column.head.levels) == 1 else ' '.join(column.head.levels)} {cell.text}".strip(),
+            raw=f"{' '.join(column.head.levels)} {cell.text}".strip(),
             where=cell.where,
             doubts=label_doubts(label, [cell], value.doubts),
             inferred=not label.exact,
@@ -328,6 +322,3 @@ def _key_when(cell: Placed, label: Label) -> When:
             if low is not None and high is not None:
                 return When(load_capacitance_pf=(low, high))
     return When()
-
-
-__all__ = ["Entry", "fold", "listing_drafts"]

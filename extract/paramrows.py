@@ -277,9 +277,15 @@ def _unstacked(row: _Row) -> list[_Row]:
         return [row]
     labels = _lines_of(row.label_text)
     columns = [_lines_of(value.piece.text) for value in row.values]
-    if len(labels) > 1 and all(_is_label(line) for line in labels) and all(len(each) == len(labels) for each in columns):
+    if (
+        len(labels) > 1
+        and all(_is_label(line) for line in labels)
+        and all(len(each) == len(labels) for each in columns)
+    ):
         return [_nth(row, index, columns, label) for index, label in enumerate(labels)]
-    bands = [lines for lines in (*map(_lines_of, row.conditions), *columns) if len(lines) > 1 and all(map(_is_band, lines))]
+    bands = [
+        lines for lines in (*map(_lines_of, row.conditions), *columns) if len(lines) > 1 and all(map(_is_band, lines))
+    ]
     count = len(bands[0]) if bands else 0
     stacked = [lines for lines in columns if len(lines) == count and lines not in bands]
     if count > 1 and stacked:

@@ -11,10 +11,10 @@ from extract.candidates import Candidate, entry_candidates, key_candidates, labe
 from extract.conditions import holds
 from extract.drafts import Draft, cuts_in, modes_in
 from extract.entries import Entry, Key, Listing, Text
+from extract.fold import fold
 from extract.footnotes import noted_candidates
 from extract.identity import FIRST_LINES, maker_of, package_in, part_number_of, texts_of
 from extract.lists import listing_drafts
-from extract.fold import fold
 from extract.meaning import part_tokens
 from extract.model import Note, Part
 from extract.prose import loose_in_prose
@@ -24,10 +24,20 @@ from extract.sections import Section, sections
 from extract.subjects import split_by_subject
 from extract.vocabulary import vocabulary
 
-CRYSTAL_FIELDS = frozenset({
-    "frequency_mhz", "load_capacitance_pf", "esr_ohm", "shunt_capacitance_pf", "motional_capacitance_ff", "drive_level_uw",
-    "motional_inductance_mh", "quality_factor", "turnover_temperature_c", "parabolic_coefficient_ppm_per_c2",
-})  # fmt: skip
+CRYSTAL_FIELDS = frozenset(
+    {
+        "frequency_mhz",
+        "load_capacitance_pf",
+        "esr_ohm",
+        "shunt_capacitance_pf",
+        "motional_capacitance_ff",
+        "motional_inductance_mh",
+        "quality_factor",
+        "drive_level_uw",
+        "turnover_temperature_c",
+        "parabolic_coefficient_ppm_per_c2",
+    }
+)
 
 
 @dataclass(slots=True)

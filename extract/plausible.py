@@ -43,7 +43,7 @@ def is_fork(readings: Sequence[Reading], cut: str | None) -> bool | None:
     numbers = [number for reading in readings if reading.field == "frequency_mhz" for number in numbers_of(reading)]
     if not numbers:
         return None
-    return max(numbers) < limits()["fork"]["greatest_mhz"]
+    return max(numbers) < float(limits()["fork"]["greatest_mhz"])
 
 
 def numbers_of(reading: Reading) -> list[float]:

@@ -108,7 +108,12 @@ def prose_entries(piece: Placed) -> list[Entry]:
 
 def _sentence_entries(sentence: str, piece: Placed) -> Iterator[Entry]:
     """Each label with its amount: the one directly before it that no other label took, else the next behind it."""
-    labels = wording.find_labels(sentence)
+    bands = [match.span() for match in _BANDS.finditer(sentence)]
+    labels = [
+        label
+        for label in wording.find_labels(sentence)
+        if not any(start < label.start and label.end < end for start, end in bands)
+    ]
     taken = 0
     for index, label in enumerate(labels):
         until = labels[index + 1].start if index + 1 < len(labels) else len(sentence)
@@ -118,8 +123,8 @@ def _sentence_entries(sentence: str, piece: Placed) -> Iterator[Entry]:
         if amount is not None:
             yield _entry(name, amount, piece, "prose")
             taken = label.end
-        elif bands := _zipped_bands(after, field):
-            for band, value in bands:
+        elif zipped := _zipped_bands(after, field):
+            for band, value in zipped:
                 values = (Value(Piece(value, piece.where, piece.confidence)),)
                 yield Entry(Piece(name, piece.where), values, conditions=(band,), source="prose")
             taken = until

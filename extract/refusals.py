@@ -1,4 +1,4 @@
-"""What a sheet, a section or a row is about where it is no crystal: an oscillator, a resonator, a chip's requirements."""
+"""What a sheet, a section or a row is about where it is no crystal: an oscillator, a filter, a chip's requirements."""
 
 from __future__ import annotations
 

@@ -7,7 +7,7 @@ from collections.abc import Sequence
 from dataclasses import replace
 
 from extract.documents.model import Line
-from extract.entries import Entry, Piece, Source, Value
+from extract.entries import Entry, Piece, Source
 from extract.fold import fold
 from extract.heads import is_unit
 from extract.meaning import meaning
@@ -40,9 +40,7 @@ def _follows(above: Line, line: Line) -> bool:
     """Whether two lines stand one right below the other, as far as their places tell."""
     if above.where.line is not None and line.where.line is not None:
         return line.where.line - above.where.line == 1
-    if above.where.page != line.where.page:
-        return False
-    return True
+    return above.where.page == line.where.page
 
 
 def fragments(lines: Sequence[Line], start: int) -> int:
@@ -85,8 +83,8 @@ def _is_broken(line: Line, below: Line | None) -> bool:
     next_text = fold(below.text)
     if _OPEN_END.search(text) and not is_label(next_text):
         return True
-    halves = not known.known and not known.value and not is_label(next_text) and is_label(f"{text} {next_text}")
-    return halves
+    half = not known.known and not known.value and not is_label(next_text)
+    return half and is_label(f"{text} {next_text}")
 
 
 def stream_entries(lines: Sequence[Line], source: Source) -> list[Entry]:
@@ -115,6 +113,3 @@ def _line_of(text: str, lines: Sequence[Line], start: int) -> tuple[Line, int]:
         if number is None or number[0] in fold(lines[index].text):
             return lines[index], index
     return lines[start if start < len(lines) else 0], start
-
-
-__all__ = ["Value", "fragments", "paragraph", "stream_entries"]

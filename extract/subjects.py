@@ -28,7 +28,7 @@ def split_by_subject(draft: Draft) -> list[Draft]:
 
 def names_in(subject: str) -> list[str]:
     """The model names of a column head ("SQ-320, SQ-321"); empty for a package or a load."""
-    found = []
+    found: list[str] = []
     for piece in _BETWEEN.split(subject):
         if not is_package(piece):
             found += part_tokens(piece)[:1]
@@ -45,10 +45,10 @@ def _for_name(draft: Draft, name: str, names: list[str]) -> Draft:
     mine: list[Candidate] = []
     package = draft.package
     for each in draft.candidates:
-        own = names_in(each.subject)
-        if name in own or not own:
-            mine.append(_conditioned(each) if not own else replace(each, subject=""))
-            package = package_in(each.subject.replace(name, "")) or package if own else package
+        named = names_in(each.subject)
+        if name in named or not named:
+            mine.append(_conditioned(each) if not named else replace(each, subject=""))
+            package = package_in(each.subject.replace(name, "")) or package if named else package
     own = Draft(resonance=set(draft.resonance), candidates=mine, texts=list(draft.texts), where=draft.where)
     entries = [entry for subject, each in draft.by_subject.items() if name in names_in(subject) for entry in each]
     own.take_identity(entries)

@@ -1,6 +1,6 @@
 """Tables of cells -> entries and listings, whichever way round the table stands.
 
-Two families: *parameter tables* (a label at the head of each row) and *listings* (a property at the head of each column).
+Two families: *parameter tables* (a label at the head of each row), *listings* (a property at the head of each column).
 Bands that run across the top are turned into a listing first.
 """
 
@@ -133,7 +133,7 @@ def is_head(row: Row) -> bool:
 
 
 def _column_name(text: str) -> str | None:
-    """What a column under this heading would hold; None for a text that begins like a value or only nearly is a label."""
+    """What a column under this heading would hold; None for a text that begins like a value or is nearly a label."""
     head = interpret((text,))
     if head.label is not None and not head.label.exact and meaning(text).value:
         return None
@@ -191,7 +191,7 @@ def _read_block(block: _Block, table: Table) -> Iterator[Item]:
 
 
 def _typ_beside_bounds(heads: list[Head]) -> list[Head]:
-    """ "Typ" is a type beside Maker and Package, and typical beside Min or Max."""
+    """Tell types from typicals: "Typ" is a type beside Maker and Package, and typical beside Min or Max."""
     if not any(head.bound in ("min", "max") or head.role in ("unit", "condition") for head in heads):
         return heads
     return [
