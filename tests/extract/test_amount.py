@@ -70,6 +70,8 @@ FORMS = [
     ("min -40°C, max 85°C", OPER, [{"min": -40, "max": 85}]),
     ("must not exceed 100 uW", DRIVE, [{"max": 100}]),
     ("——7pF", C0, [{"typ": 7, "bare": True}]),
+    ("500 Min. (DC 100 V)", INS, [{"min": 500}]),
+    ("0.4 min. pF", C0, [{"min": 0.4}]),
     # ± in all its spellings
     ("+/-20 ppm", TOL, [{"min": -20, "max": 20}]),
     ("± 20×10⁻⁶", TOL, [{"min": -20, "max": 20}]),
