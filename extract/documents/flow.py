@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 import re
+from bisect import bisect_left, bisect_right
 from collections.abc import Callable, Sequence
 from dataclasses import dataclass, replace
 
@@ -19,6 +20,10 @@ Placer = Callable[[Box], Where]
 
 # Text sizes: the narrowest gutter between two columns of text.
 TEXT_GUTTER = 1.2
+# Share of the items that may run across the gutter between two columns (headings, wide tables).
+MOST_ACROSS = 0.35
+# Text sizes: baselines that differ by less are level, where the difference varies by less than the second.
+LEVEL, ALIKE = 0.3, 0.15
 # Three dots or one ellipsis stand for "to" in a range; leaders are longer.
 LEAST_DOTS = 4
 SINGLE_DOTS = frozenset({".", "·", "․", "…", ". .", "_"})
@@ -147,14 +152,14 @@ def _gutter(items: Sequence[Item]) -> tuple[float, float] | None:
     size = _usual_size(items)
     left, right = min(item.box[0] for item in items), max(item.box[2] for item in items)
     best: tuple[float, tuple[float, float]] | None = None
-    starts = sorted({item.box[0] for item in items})
-    for start in starts:
+    starts, ends = sorted(item.box[0] for item in items), sorted(item.box[2] for item in items)
+    for start in sorted(set(starts)):
         if not left + 0.12 * (right - left) < start < right - 0.08 * (right - left):
             continue
-        ends = [item.box[2] for item in items if item.box[2] < start - 0.5]
-        if not ends:
-            continue
         stripe = (start - TEXT_GUTTER * size, start)
+        across = bisect_left(starts, start - 0.5) - bisect_right(ends, stripe[0])
+        if across > MOST_ACROSS * len(items):
+            continue
         score = _columns_score(items, stripe)
         if score > 0 and (best is None or score > best[0]):
             best = (score, stripe)
@@ -166,7 +171,7 @@ def _columns_score(items: Sequence[Item], stripe: tuple[float, float]) -> float:
     left = [item for item in items if item.box[2] <= stripe[0]]
     right = [item for item in items if item.box[0] >= stripe[1] - 0.5]
     across = len(items) - len(left) - len(right)
-    if across > 0.35 * len(items) or not left or not right:
+    if across > MOST_ACROSS * len(items) or not left or not right:
         return 0.0
     tables = any(item.blocks for item in left + right)
     poorer = min(len(left), len(right))
@@ -188,16 +193,38 @@ def _are_columns(left: Sequence[Item], right: Sequence[Item]) -> bool:
         return False
     for side, other in ((left, right), (right, left)):
         for item in side:
-            beside = any(overlap((item.box[1], item.box[3]), (one.box[1], one.box[3])) > 0 for one in other)
-            if item.blocks and beside:
+            if item.blocks and any(overlap((item.box[1], item.box[3]), (one.box[1], one.box[3])) > 0 for one in other):
                 return True
-    levels = [sorted({round(item.level, 1) for item in side if item.words}) for side in (left, right)]
-    fewer, more = sorted(levels, key=len)
+    size = _usual_size([*left, *right])
+    fewer, more = sorted((_levels_of(left, size), _levels_of(right, size)), key=len)
     if len(fewer) < 2:
         return False
-    size = _usual_size([*left, *right])
-    level = sum(any(abs(one - other) < 0.3 * size for other in more) for one in fewer)
+    level = _level_lines(fewer, more, size)
     return level < 0.6 * len(fewer)
+
+
+def _levels_of(items: Sequence[Item], size: float) -> list[float]:
+    """Baselines of one side from the top down; those of one row as one."""
+    levels: list[float] = []
+    for level in sorted(item.level for item in items if item.words):
+        if not levels or level - levels[-1] >= LEVEL * size:
+            levels.append(level)
+    return levels
+
+
+def _level_lines(fewer: Sequence[float], more: Sequence[float], size: float) -> int:
+    """Greatest number of lines that are level with a line of the other side, all shifted alike.
+
+    The cells of a row may be set a little higher or lower; lines of two texts drift against one another.
+    """
+    shifts = []
+    for level in fewer:
+        index = bisect_left(more, level)
+        shift = min((other - level for other in more[max(index - 1, 0) : index + 1]), key=abs)
+        if abs(shift) < LEVEL * size:
+            shifts.append(shift)
+    shifts.sort()
+    return max((bisect_right(shifts, shift + ALIKE * size) - index for index, shift in enumerate(shifts)), default=0)
 
 
 def _usual_size(items: Sequence[Item]) -> float:

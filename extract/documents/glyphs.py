@@ -255,7 +255,8 @@ def _marks_attached(runs: Sequence[_Run], fences: _Fences) -> list[_Run]:
     kept = [run for run in runs if id(run) not in taken]
     leading = set()
     for run in kept:
-        led = _led_by(run, kept) if LEADING_MARK.fullmatch(run.text) else None
+        small = run.size < 0.85 * largest and LEADING_MARK.fullmatch(run.text)
+        led = _led_by(run, kept) if small else None
         if led is not None:
             led.take(run, f"{marks.raised(run.text, '').strip()} {led.text}")
             leading.add(id(run))

@@ -218,7 +218,7 @@ def _font_name(raw: Any, text_page: Any, index: int) -> str:
 
 
 def pdfium_rulings(page: Any, frame: Frame) -> list[Ruling]:
-    """Level and upright lines of a pypdfium2 page, for files that pdfplumber cannot open; those in forms are left out."""
+    """Level and upright lines of a pypdfium2 page, for files that pdfplumber cannot open; not those inside forms."""
     from pypdfium2 import raw
 
     rulings = []

@@ -16,6 +16,8 @@ REACH = 2.0
 SHORTEST = 5.0
 # Shorter pieces with gaps of at most this between them are a dashed or dotted line.
 DASH, DASH_GAP = 8.0, 5.0
+# A page with more lines holds a drawing; a grid with more cells is hatching or paper ruled in squares.
+MOST_LINES, MOST_UNITS = 1200, 6000
 
 
 @dataclass(frozen=True, slots=True)
@@ -66,6 +68,10 @@ def grids_of(rulings: Iterable[Ruling]) -> list[Grid]:
     A side that is not drawn is taken as drawn: tables are often open left and right.
     """
     pieces = [piece for piece in _merged(list(rulings)) if _length(piece) >= SHORTEST]
+    # Hatching and drawings: what is left must stay within the square of itself.
+    for least in (15.0, 40.0, 100.0):
+        if len(pieces) > MOST_LINES:
+            pieces = [piece for piece in pieces if _length(piece) >= least]
     grids = []
     for group in _connected(pieces):
         if sum(piece.horizontal for piece in group) >= 2 or any(not piece.horizontal for piece in group):
@@ -197,7 +203,7 @@ def grid_of(pieces: Sequence[Ruling]) -> Grid | None:
     x0, top, x1, bottom = union(pieces)
     rows = _positions([piece.top for piece in pieces if piece.horizontal] + [top, bottom])
     columns = _positions([piece.x0 for piece in pieces if not piece.horizontal] + [x0, x1])
-    if len(rows) < 2 or len(columns) < 2:
+    if len(rows) < 2 or len(columns) < 2 or len(rows) * len(columns) > MOST_UNITS:
         return None
     level, upright = _lines(pieces, rows, True), _lines(pieces, columns, False)
     closed = upright[0].covers(rows[0], rows[-1]) and upright[-1].covers(rows[0], rows[-1])
