@@ -9,6 +9,7 @@ import pytest
 
 from extract.fields import fields
 from extract.units import factor, guessed, kind_of, kinds, other_unit_at, unit_at
+from extract.vocabulary import vocabulary
 
 # What the printed spelling of each size is called in pint's language; sizes without a prefix need none.
 PREFIXES = {
@@ -172,3 +173,8 @@ def test_a_spelling_that_lacks_something_is_marked():
     assert guessed("ppm", "pulling_sensitivity_ppm_per_pf")
     assert guessed("MW", "drive_level_uw")
     assert not guessed("K", "esr_ohm")
+
+
+def test_no_bound_word_is_a_unit():
+    units = {spelling for kind in kinds().values() for spelling in kind.caseless}
+    assert not units & set(vocabulary().bounds)
