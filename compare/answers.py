@@ -5,6 +5,7 @@ Everything here takes the dictionaries of `ranking.rank` and `review.review` (th
 
 from __future__ import annotations
 
+import re
 from collections.abc import Mapping, Sequence
 from dataclasses import dataclass
 from typing import Any
@@ -14,6 +15,7 @@ import pandas as pd
 from compare.bench import Bench
 from compare.charts import LoadPull, Slack
 from compare.circuit_text import ppm_limit_text, ppm_limits
+from compare.desk import field_key, field_of
 from compare.drawing import as_address, slack_strip_svg
 from compare.figures import (
     CLOCK_BELOW_MHZ,
@@ -100,6 +102,19 @@ STRIPS = tuple(name for name in SHORT_NAMES if name in FIGURES)
 MARGINS = ("margin", "gain_ratio", "resistance_headroom")
 
 
+BENCH_KEY = re.compile(r"\b(?:requirement|circuit|crystal|measured)\.[a-z_]+(?:\[\d+\])?(?:\.[a-z_]+)*")
+
+
+def told(message: str) -> str:
+    """A message as the page shows it: bench keys by the names of their fields, and a true minus."""
+    return with_minus(BENCH_KEY.sub(lambda found: _quoted(found[0]), message))
+
+
+def _quoted(key: str) -> str:
+    named = field_key(key)
+    return f"“{field_of(named).label}”" if named else key
+
+
 def verdict(words: str | None) -> str:
     """`▲ meets`: the mark and the word, never one alone."""
     return f"{MARKS.get(words or '', '◇')} {words or 'cannot tell'}"
@@ -155,8 +170,6 @@ def missing_name(key: str) -> str:
     """A field of the sheet, or a key of the bench, by the name a person knows."""
     if key in FIELD_NAMES:
         return NAMES[key]
-    from compare.desk import field_key, field_of
-
     found = field_key(key)
     return field_of(found).label if found else key
 
@@ -303,7 +316,7 @@ def judged(review: Row, bench: Bench) -> list[Judged]:
         said = _said(review, about, bench) if has_slack else ""
         over = times(review["slack"][about]) if has_slack else ""
         rows.append(
-            Judged(FULL_NAMES.get(about, about), said, over, verdict(reason["verdict"]), with_minus(reason["message"]))
+            Judged(FULL_NAMES.get(about, about), said, over, verdict(reason["verdict"]), told(reason["message"]))
         )
     return rows
 
@@ -369,7 +382,7 @@ def _number(figure: Row, shown: Figure) -> Number:
 
     basis = figure["basis"] or ""
     said = "∴ estimated" if basis == "estimated" else basis
-    return Number(shown.name, end("low"), end("mid"), end("high"), unit, said, with_minus(figure["how"] or ""))
+    return Number(shown.name, end("low"), end("mid"), end("high"), unit, said, told(figure["how"] or ""))
 
 
 def load_pull(review: Row, bench: Bench, rated_pf: float | None, *, series: bool) -> LoadPull | None:
@@ -412,7 +425,7 @@ def _room(total: Row, shift: Row, bench: Bench) -> tuple[float | None, float | N
 
 def advice_lines(review: Row) -> list[str]:
     """What would help, best first: E24 pairs with what they do in the worst case, or a series resistor."""
-    return [*map(_advice, review.get("advice", ())), *map(with_minus, review.get("advice_messages", ()))]
+    return [*map(_advice, review.get("advice", ())), *map(told, review.get("advice_messages", ()))]
 
 
 def _advice(advice: Row) -> str:
@@ -428,7 +441,7 @@ def _advice(advice: Row) -> str:
 
 def note_lines(result: Mapping[str, Any]) -> list[str]:
     """What else there is to say: parts that do not offer the frequency, and the like."""
-    return [note["message"] if isinstance(note, Mapping) else str(note) for note in result["notes"]]
+    return [told(note["message"] if isinstance(note, Mapping) else str(note)) for note in result["notes"]]
 
 
 CONTRIBUTORS = {
@@ -467,8 +480,13 @@ def _input_name(key: str) -> str:
 
 
 def _sentence(message: str) -> str:
-    text = with_minus(message).rstrip(".")
+    text = told(message).rstrip(".")
     return f"{text[:1].upper()}{text[1:]}."
+
+
+def question_lines(review: Row) -> list[str]:
+    """What to ask, as ready sentences."""
+    return [told(question) for question in review["questions"]]
 
 
 def open_lines(review: Row) -> list[str]:

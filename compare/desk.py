@@ -27,9 +27,11 @@ CAUTIONS = (
     "maker's word.",
 )
 PRIVACY = "Sheets stay on this machine."
-NOTHING_READ = "No sheets yet. Drop some, paste text, or open the orchard example."
-NOTHING_TO_RANK = "Nothing to rank yet: no sheets have been opened."
-NO_CIRCUIT = "No circuit yet: the parts are read, but not judged."
+NO_SHEETS = "Drop some, paste text, or open the orchard example."
+NOTHING_OPEN = "No sheets are open."
+NO_PARTS = "None of the sheets that are open gave a part: Sheets says why."
+NO_CIRCUIT = "The parts are read, but cannot be judged: what is asked and the circuit are not set."
+NO_EXAMPLE = "The orchard example is not part of this installation: it lies in the project’s folder sample_specs."
 
 
 @dataclass(frozen=True)

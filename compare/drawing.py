@@ -220,7 +220,7 @@ def _node(pen: _Pen, name: str, x: float, beside: Iterable[str], side: int) -> N
         pen.write(x + side * 20, WIRE - 12 + 14 * line, text, anchor=anchor, colour=pen.palette.soft, size=12)
 
 
-STRIP_WIDTH, STRIP_ROW, STRIP_ENDS = 200, 6, (0.33, 30.0)
+STRIP_WIDTH, STRIP_HEIGHT, STRIP_ROW, STRIP_ENDS = 200, 40, 6, (0.33, 30.0)
 
 
 def slack_strip_svg(slack: Mapping[str, float | None], palette: Palette) -> str:
@@ -229,7 +229,9 @@ def slack_strip_svg(slack: Mapping[str, float | None], palette: Palette) -> str:
     Heavy: the tightest, or short (then to the left of the line, in rust). Dotted: not known. Beyond the ends (0.33
     and 30 times) a strip stops at the edge.
     """
-    height = 2 + STRIP_ROW * max(len(slack), 1) + 2
+    # Of one height whatever is asked, since a grid scales its pictures to the row; more than six go closer together.
+    height, row_height = STRIP_HEIGHT, min(STRIP_ROW, STRIP_HEIGHT / max(len(slack), 1))
+    top = (height - row_height * (len(slack) - 1)) / 2
     known = [times for times in slack.values() if times is not None]
     least = min(known, default=None)
     line = _strip_x(1.0)
@@ -239,7 +241,7 @@ def slack_strip_svg(slack: Mapping[str, float | None], palette: Palette) -> str:
         f'<rect x="0" y="0" width="{line:.1f}" height="{height}" fill="url(#h)"/>',
     ]
     for row, times in enumerate(slack.values()):
-        drawn.append(_strip(times, 5 + row * STRIP_ROW, times is not None and times == least, palette))
+        drawn.append(_strip(times, top + row * row_height, times is not None and times == least, palette))
     drawn.append(
         f'<line x1="{line:.1f}" x2="{line:.1f}" y1="0" y2="{height}" stroke="{palette.ink}" stroke-width="1.5"/>'
     )

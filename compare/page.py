@@ -32,8 +32,9 @@ def main() -> None:
         pages[name] = st.Page(view, title=name.capitalize() + looks, url_path=name, default=name == "sheets")
     st.session_state.pages = pages
     current = st.navigation(list(pages.values()), position="top")
+    terms = st.empty()
     if (bench := session.desk().bench) is not None:
-        st.html(pieces.terms_html(circuit_text.terms(bench)))
+        terms.html(pieces.terms_html(circuit_text.terms(bench)))
     session.told_of_reading()
     current.run()
     keys(list(views))

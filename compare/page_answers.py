@@ -10,7 +10,7 @@ import streamlit as st
 from compare import answers, charts, export, pieces
 from compare import page_session as session
 from compare.bench import Bench
-from compare.desk import CAUTIONS, NO_CIRCUIT, NOTHING_TO_RANK, PRIVACY, field_of
+from compare.desk import CAUTIONS, NO_CIRCUIT, NO_PARTS, NOTHING_OPEN, PRIVACY, field_of
 from compare.offer import find_offers
 
 COPY = """export default function({data, parentElement}) {
@@ -23,22 +23,26 @@ PART_PLACE = tuple[str, str | None]
 
 
 def ready() -> Bench | None:
-    """The bench, where there is something to judge; else the sentence that says what to do."""
-    bench = session.desk().bench
+    """The bench, where there is something to judge; else what to do is said and None is returned."""
+    desk = session.desk()
     if not any(sheet.parts for sheet in session.sheets()):
-        st.markdown("## Nothing to rank yet")
-        st.markdown(NOTHING_TO_RANK)
-        st.page_link(st.session_state.pages["sheets"], label="Add sheets")
+        session.title("Nothing to rank yet")
+        st.markdown(NO_PARTS if session.sheets() else NOTHING_OPEN)
+        with st.container(horizontal=True, gap="small"):
+            if st.button("Add sheets", key="to_sheets", type="primary"):
+                session.go("sheets")
+            if st.button("Open the orchard example", key="orchard_here"):
+                session.open_example()
+                st.rerun()
         return None
-    if bench is None:
-        st.markdown("## No circuit yet")
+    for key, fault in desk.faults.items():
+        st.html(pieces.fault_html(f"{field_of(key).label if key else 'Circuit'}: not used. {fault}"))
+    if desk.bench is None:
+        session.title("No circuit yet")
         st.markdown(NO_CIRCUIT)
         if st.button("Set the circuit", key="to_circuit", type="primary"):
             session.go("circuit")
-        return None
-    for key, fault in session.desk().faults.items():
-        st.html(pieces.fault_html(f"{field_of(key).label if key else 'Circuit'}: not used. {fault}"))
-    return bench
+    return desk.bench
 
 
 def choose_view() -> None:
@@ -49,7 +53,7 @@ def choose_view() -> None:
         return
     left, right = st.columns([1.54, 1], gap="medium")
     with left:
-        st.markdown(f"## {pieces.plain(answers.choose_heading(result, bench))}")
+        session.title(f"{pieces.plain(answers.choose_heading(result, bench))}")
         row = ranked_rows(result) if result["rows"] else None
         others(result)
         cautions()
@@ -128,7 +132,7 @@ def review_of(row: dict[str, Any], bench: Bench) -> dict[str, Any] | None:
 
 def why(row: dict[str, Any], bench: Bench) -> None:
     """The chosen row's reasons: the large slack chart, the reasons in words, ppm against load."""
-    st.markdown(f"### {pieces.plain(answers.place_heading(row))}")
+    session.section(f"{pieces.plain(answers.place_heading(row))}")
     review = review_of(row, bench)
     if review is None:
         return
@@ -150,6 +154,8 @@ def reasons_of(review: dict[str, Any], bench: Bench) -> None:
     for one in deciding:
         st.markdown(f"{one.verdict[0]} **{pieces.plain(one.requirement)}**: {pieces.plain(one.why)}")
     met = [one for one in rows if one.meets]
+    if not met:
+        return
     with st.expander(f"Why the other {len(met)} meet" if deciding else f"Why all {len(met)} meet"):
         for one in met:
             st.markdown(f":small[▲ **{pieces.plain(one.requirement)}**: {pieces.plain(one.why)}]")
@@ -171,7 +177,7 @@ def load_chart(review: dict[str, Any], bench: Bench) -> None:
     pull = answers.load_pull(review, bench, rated, series=offer.series)
     if pull is None:
         return
-    st.markdown("### ppm against load")
+    session.section("ppm against load")
     chart = charts.dressed(charts.load_chart(pull, session.palette()), session.palette())
     st.altair_chart(chart, theme=None, width="content", key="load", alt="Frequency shift in ppm against load in pF")
     with st.expander("The same as a table"):
@@ -185,7 +191,7 @@ def review_view() -> None:
     if result is None:
         return
     if not result["rows"]:
-        st.markdown(f"## {pieces.plain(answers.choose_heading(result, bench))}")
+        session.title(f"{pieces.plain(answers.choose_heading(result, bench))}")
         others(result)
         return
     rows = {place_of(row): row for row in result["rows"]}
@@ -216,10 +222,10 @@ def choose() -> None:
 
 
 def judged(review: dict[str, Any], bench: Bench) -> None:
-    st.markdown(f"## {pieces.plain(answers.review_heading(review))}")
+    session.title(f"{pieces.plain(answers.review_heading(review))}")
     st.markdown(pieces.plain(answers.short_of(review)))
     st.html(pieces.judged_html(answers.judged(review, bench)))
-    st.markdown("### Every number")
+    session.section("Every number")
     st.markdown(
         ":gray[:small[Press a number to see how it was reached. Low and high are its ends, not worse and better.]]"
     )
@@ -228,19 +234,19 @@ def judged(review: dict[str, Any], bench: Bench) -> None:
 
 def to_do(review: dict[str, Any]) -> None:
     """What uses it up, what would help, whom to ask, and what to heed."""
-    if questions := review["questions"]:
-        st.markdown("### Ask the maker")
+    if questions := answers.question_lines(review):
+        session.section("Ask the maker")
         for question in questions:
             st.markdown(f"- {pieces.plain(question)}")
     if lines := answers.advice_lines(review):
-        st.markdown("### Load capacitors and what else would help")
+        session.section("Load capacitors and what else would help")
         for line in lines:
             st.markdown(f"- {line}")
     for key, name in answers.CONTRIBUTORS.items():
         if shares := answers.shares(review, key):
-            st.markdown(f"### {name}")
+            session.section(f"{name}")
             st.html(pieces.shares_html(shares))
-    st.markdown("### Before it is signed")
+    session.section("Before it is signed")
     for line in answers.open_lines(review):
         st.markdown(f"- {pieces.plain(line)}")
     for caution in CAUTIONS:

@@ -33,7 +33,7 @@ def circuit_view() -> None:
 def summed_up(desk: Desk) -> bool:
     """The drawing, the sum in words and what was taken by default; False where there is no bench yet."""
     bench = desk.bench
-    st.markdown(f"## {circuit_text.circuit_heading(bench)}")
+    session.title(f"{circuit_text.circuit_heading(bench)}")
     if bench is None:
         st.markdown(pieces.plain(desk.faults.get("", "")) or circuit_text.SET_IT)
         return False
@@ -69,11 +69,11 @@ def bench_files() -> None:
 
 
 def circuit_fields() -> None:
-    st.markdown("### What is asked")
+    session.section("What is asked")
     form("asked")
-    st.markdown("### Capacitance")
+    session.section("Capacitance")
     form("capacitance")
-    st.markdown("### Amplifier")
+    session.section("Amplifier")
     form("amplifier")
     with st.expander("The IC’s sheet gives no gm, but a limit"):
         form("rating")
@@ -85,7 +85,7 @@ def circuit_fields() -> None:
 def form(group: str, number: int | None = None) -> None:
     """The rows of a group of fields; `number` is that of a condition."""
     for row in typed.layout(group):
-        columns = st.columns([width for _, width in row], gap="small", vertical_alignment="bottom")
+        columns = st.columns([width for _, width in row], gap="small")
         for column, (asked, _) in zip(columns, row, strict=True):
             if asked is not None:
                 with column:
@@ -93,7 +93,7 @@ def form(group: str, number: int | None = None) -> None:
 
 
 def corners() -> None:
-    st.markdown("### Corners: supply and temperature")
+    session.section("Corners: supply and temperature")
     st.markdown(":gray[:small[Each is one more corner; what it does not give is as in the circuit.]]")
     for number in range(st.session_state.conditions):
         form("condition", number)

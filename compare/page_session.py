@@ -14,7 +14,7 @@ import streamlit as st
 
 from compare import evidence, pieces
 from compare.bench import Bench, BenchError
-from compare.desk import Desk, desk_from_bench
+from compare.desk import NO_EXAMPLE, Desk, desk_from_bench, orchard_example
 from compare.intake import read_bytes, read_sheets
 from compare.palette import Palette, palette_of
 from compare.serve import read_script_arguments
@@ -74,15 +74,28 @@ def open_sheets(files: Sequence[tuple[str, bytes]]) -> None:
     state.asked_for = state.asked_for + len(files) if len(state.pending) > len(files) else len(files)
 
 
+def open_example() -> None:
+    """Queue the orchard example's sheets, and take its first bench where no circuit is set."""
+    example = orchard_example()
+    if example is None:
+        st.session_state.said = [NO_EXAMPLE]
+        return
+    if desk().bench is None and example.benches:
+        path = next(iter(example.benches.values()))
+        open_bench(path.read_text(encoding="utf-8"), path.name)
+    open_sheets([(path.name, path.read_bytes()) for path in example.sheets])
+
+
 def told_of_reading() -> None:
     """Which sheet is being read, and the button that stops it."""
     state = st.session_state
+    # A place of its own even when empty: else all that follows would shift while sheets are read.
+    place = st.empty()
     if not state.pending:
         return
-    name = state.pending[0][0]
-    with st.container(horizontal=True, vertical_alignment="center", gap="small"):
-        at = state.asked_for - len(state.pending) + 1
-        st.markdown(f"Reading {at} of {state.asked_for}: {pieces.plain(name)} …", width="content")
+    at = state.asked_for - len(state.pending) + 1
+    with place.container(horizontal=True, vertical_alignment="center", gap="small"):
+        st.markdown(f"Reading {at} of {state.asked_for}: {pieces.plain(state.pending[0][0])} …", width="content")
         st.button("Stop", key="stop_reading", on_click=stop_reading)
 
 
@@ -174,6 +187,15 @@ def first_row(row: int) -> Any:
 def selected_row(picked: Any, count: int) -> int:
     rows = picked.selection.rows if picked is not None else []
     return rows[0] if rows and rows[0] < count else 0
+
+
+def title(text: str) -> None:
+    """The heading of a view, without the sign of a link that nobody needs here."""
+    st.markdown(f"## {text}", anchors=False)
+
+
+def section(text: str) -> None:
+    st.markdown(f"### {text}", anchors=False)
 
 
 def go(view: str) -> None:

@@ -8,7 +8,7 @@ import streamlit as st
 
 from compare import page_session as session
 from compare import pieces, shown
-from compare.desk import NOTHING_READ, PRIVACY, orchard_example
+from compare.desk import NO_SHEETS, PRIVACY
 from compare.page_session import Opened
 from extract.model import Reading
 
@@ -20,8 +20,8 @@ def sheets_view() -> None:
         chosen = sheet_list()
     if chosen is None:
         with middle:
-            st.markdown("## No sheets yet")
-            st.markdown(NOTHING_READ)
+            session.title("No sheets yet")
+            st.markdown(NO_SHEETS)
         return
     with middle:
         reading = part_readings(chosen)
@@ -42,7 +42,8 @@ def take_sheets() -> None:
     if pasted and text.strip():
         new.append((f"pasted text {inbox + 1}.txt", text.encode()))
     if example:
-        new += example_files()
+        session.open_example()
+        st.rerun()
     if new:
         session.open_sheets(new)
         st.session_state.inbox += 1
@@ -52,25 +53,12 @@ def take_sheets() -> None:
         st.markdown(f":small[{pieces.plain(said)}]")
 
 
-def example_files() -> list[tuple[str, bytes]]:
-    example = orchard_example()
-    if example is None:
-        st.session_state.said = [
-            "The orchard example is not part of this installation: it lies in the project’s sample_specs."
-        ]
-        return []
-    if session.desk().bench is None and example.benches:
-        path = next(iter(example.benches.values()))
-        session.open_bench(path.read_text(encoding="utf-8"), path.name)
-    return [(path.name, path.read_bytes()) for path in example.sheets]
-
-
 def sheet_list() -> Opened | None:
     """One line a sheet; returns the selected one."""
     every = st.session_state.opened
     if not every:
         return None
-    st.markdown(f"### {shown.heading(session.sheets())}")
+    session.section(f"{shown.heading(session.sheets())}")
     identities = [(one.sheet.file, one.sheet.sha256) for one in every]
     before = st.session_state.get("sheet")
     start = identities.index(before) if before in identities else 0
@@ -107,7 +95,7 @@ def part_readings(one: Opened) -> Reading | None:
     """The readings of a sheet's part, those to look at first; returns the selected one."""
     sheet = one.sheet
     if not sheet.parts:
-        st.markdown(f"## {pieces.plain(sheet.file)}")
+        session.title(f"{pieces.plain(sheet.file)}")
         for said in shown.unread([sheet]):
             st.markdown(pieces.plain(said))
         return None
@@ -121,7 +109,7 @@ def part_readings(one: Opened) -> Reading | None:
             key=f"part_{sheet.sha256}_{sheet.file}",
         )
     part = sheet.parts[number]
-    st.markdown(f"## {pieces.plain(shown.part_name(part, number + 1))}")
+    session.title(f"{pieces.plain(shown.part_name(part, number + 1))}")
     st.markdown(f":gray[{pieces.plain(shown.part_facts(part))}]")
     if not part.readings:
         st.markdown("The sheet gives no values for this part.")
@@ -155,7 +143,7 @@ def part_readings(one: Opened) -> Reading | None:
 def stands(one: Opened, reading: Reading) -> None:
     """Where the selected reading stands: the words printed there, and the page with a box round them."""
     told = shown.evidence(reading)
-    st.markdown(f"### {pieces.plain(told.heading)}")
+    session.section(f"{pieces.plain(told.heading)}")
     st.markdown(pieces.plain(told.read))
     if told.look is not None:
         st.html(pieces.look_html(told.look))

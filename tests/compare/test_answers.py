@@ -226,3 +226,9 @@ def test_a_forks_kilohms_and_henries_are_said_as_such():
     rows = {one.name: one for one in answers.numbers(review, WATCH)}
     assert (rows["Negative resistance"].low, rows["Negative resistance"].unit) == ("−461.6", "kΩ")
     assert (rows["Motional inductance L1"].mid, rows["Motional inductance L1"].unit) == ("8580", "H")
+
+
+def test_bench_keys_in_messages_are_said_by_the_names_of_their_fields():
+    message = "cannot be told: circuit.input_capacitor_pf not known; give circuit.condition[1].swing_v"
+    assert answers.told(message) == "cannot be told: “Fitted, A–0” not known; give “Swing”"
+    assert answers.told("measured.pairs: -5 ppm") == "measured.pairs: −5 ppm"

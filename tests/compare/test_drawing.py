@@ -103,3 +103,11 @@ def test_an_address_holds_the_picture_itself():
     head, _, body = as_address(svg).partition(",")
     assert head == "data:image/svg+xml;base64"
     assert base64.b64decode(body).decode() == svg
+
+
+def test_strips_are_of_one_height_whatever_is_asked():
+    pictures = [slack_strip_svg(dict.fromkeys(names, 2.0), LIGHT) for names in ("a", "abc", "abcdef", "abcdefgh")]
+    assert len({etree.fromstring(picture.encode()).get("height") for picture in pictures}) == 1
+    for names in ("a", "abcdefgh"):
+        lines, _ = bars(dict.fromkeys(names, 2.0))
+        assert all(2 <= float(line.get("y1")) <= 38 for line in lines)

@@ -48,8 +48,16 @@ def to(page, view):
 
 
 def test_nothing_loaded_says_what_to_do(page):
-    assert "No sheets yet. Drop some, paste text, or open the orchard example." in said(page)
-    assert "Nothing to rank yet: no sheets have been opened." in said(to(page, "choose"))
+    assert headings(page) == ["## No sheets yet"]
+    assert "Drop some, paste text, or open the orchard example." in said(page)
+    assert headings(to(page, "choose")) == ["## Nothing to rank yet"]
+    page.button(key="to_sheets").click().run()
+    assert headings(page) == ["## No sheets yet"]
+
+
+def test_sheets_without_a_part_are_not_ranked(page):
+    drop(page, ("notes.txt", "Minutes of the meeting on apples."))
+    assert "None of the sheets that are open gave a part: Sheets says why." in said(to(page, "choose"))
 
 
 def test_a_dropped_sheet_is_read_and_its_readings_are_shown(page):
