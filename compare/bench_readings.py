@@ -136,10 +136,18 @@ def _from_pairs(one: Columns, read: Measured) -> tuple[Ends, Ends, str]:
     shunt = one.shunt_pf[0, :, 0]
     low_shunt = float(one.shunt_floor_pf[0])
     cases = [(float(shunt[MID]), 0.0), *itertools.product((low_shunt, float(shunt[HIGH])), (low_ppm, high_ppm))]
-    solved = np.array([measured.from_pairs(read.pairs, c0, load, ppm) for c0, ppm in cases])
+    solved = np.array([_solved(read, c0, load, ppm) for c0, ppm in cases])
     shown = "; ".join(f"{figure(c)} pF {figure(error * 1e6)} ppm" for c, error in read.pairs)
     how = f"stray and C1 that put both frequencies right: f = fs √(1 + C1/(C0 + C/2 + stray)); {shown}"
     return _spread(solved[:, 0]), _spread(solved[:, 1]), how
+
+
+def _solved(read: Measured, shunt_pf: float, load_pf: float, part_ppm: float) -> tuple[float, float]:
+    """Stray and C1 for one part that may be; NaN where the pairs fit no crystal at all."""
+    try:
+        return measured.from_pairs(read.pairs, shunt_pf, load_pf, part_ppm)
+    except ZeroDivisionError:  # frequencies that lie just at the rated load, whatever C1 is
+        return math.nan, math.nan
 
 
 def _from_resistor(read: Measured, rl_ohm: Ends) -> tuple[Ends, Ends, str]:

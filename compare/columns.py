@@ -231,4 +231,6 @@ def _by_every_route(
             ),
         ]
         found = np.stack(routes)
-        return np.where(np.isfinite(found) & (found > 0), found, np.nan)
+        found = np.where(np.isfinite(found) & (found > 0), found, np.nan)
+    # C0 counts the other way than L1, if a thousand times less: an exact L1 has the ends of C0 turned round.
+    return np.stack([found.min(axis=1), found[:, MID], found.max(axis=1)], axis=1)

@@ -13,8 +13,10 @@ from compare.stated import (
     Case,
     Span,
     Taken,
+    bound,
     holds,
     narrowest,
+    printed,
     rated_drive,
     readings_for,
     span_of,
@@ -46,6 +48,8 @@ class AtSetting:
     motional: Mapping[str, Taken]
     """Whatever is stated of C1, L1, C0/C1, pulling and Q."""
     room_only: bool
+    fundamental_esr: Taken = NOTHING
+    """Of an overtone part: what the sheet states for its fundamental, at f/n."""
 
 
 @dataclass(frozen=True)
@@ -316,12 +320,12 @@ def _modes_offered(part: Part, case: Case) -> set[str]:
 def _load_choice(part: Part, case: Case) -> tuple[tuple[float, ...], Band | None]:
     """The loads that may be ordered: a list, or a range; neither where the sheet fixes one or states none."""
     found = readings_for(part, "load_capacitance_pf", replace(case, load_pf=None))
-    if not found or any(r.typ is not None and not r.options for r in found):
-        fixed = sorted({r.typ for r in found if r.typ is not None})
+    fixed = sorted({typ for r in found if not r.options and (typ := bound(r, "typ")) is not None})
+    if not found or fixed:
         return (tuple(fixed), None) if len(fixed) > 1 else ((), None)
-    options = sorted({value for r in found for value in r.options})
+    options = sorted({value for r in found for value in r.options if value > 0})
     if options:
-        return tuple(options), None
+        return (tuple(options), None) if len(options) > 1 else ((), None)
     ranges = [(r.min, r.max) for r in found if r.min is not None and r.max is not None]
     return (), (min(low for low, _ in ranges), max(high for _, high in ranges)) if ranges else None
 
@@ -334,9 +338,8 @@ def _load(part: Part, case: Case, *, series: bool, load_pf: float | None, open_c
         return Taken(Span.at(load_pf), found)
     if open_choice or not found:
         return Taken(readings=found)
-    reading = found[0]
-    value = next(v for v in (reading.typ, reading.max, reading.min) if v is not None)
-    return Taken(Span.at(value), found)
+    values = [v for name in ("typ", "max", "min") for r in found if (v := bound(r, name)) is not None]
+    return Taken(Span.at(values[0] if values else max(printed(found[0]))), found)
 
 
 def covers(band: Band, product: Band) -> bool:
@@ -432,7 +435,15 @@ def _at_setting(part: Part, case: Case, temperature_c: float | None) -> AtSettin
     motional = {name: taken for name in C1_ROUTES if (taken := at(name)).readings}
     stated_here = any(r.when.temperature_c and holds(r.when, warm) for r in esr.readings)
     room_only = temperature_c is not None and bool(esr.readings) and not stated_here
-    return AtSetting(esr, at("shunt_capacitance_pf"), motional, room_only)
+    return AtSetting(esr, at("shunt_capacitance_pf"), motional, room_only, _fundamental_esr(part, warm))
+
+
+def _fundamental_esr(part: Part, case: Case) -> Taken:
+    order = overtone_of(case.mode)
+    if order is None or order == 1:
+        return NOTHING
+    below = replace(case, mode="fundamental", frequencies_mhz=tuple(f / order for f in case.frequencies_mhz))
+    return take(part, "esr_ohm", below, only=lambda reading: reading.when.mode == "fundamental")
 
 
 def fields_to_check(takens: Iterable[Taken]) -> list[str]:

@@ -6,7 +6,7 @@ import numpy as np
 
 from compare.bench import Bench, Setting
 from compare.circuit import Array
-from compare.columns import Columns, Flags
+from compare.columns import HIGH, LOW, Columns, Flags, spans
 from compare.corners import corner_circuit, crystal_at, shunt_ends
 from compare.motional import series_resonance_mhz
 from compare.oscillation import Crystal, analyse
@@ -58,7 +58,8 @@ def fundamental_against(columns: Columns, bench: Bench) -> tuple[Flags, Flags]:
 def _growths(columns: Columns, bench: Bench, number: int, setting: Setting) -> tuple[Array, Array]:
     """Growth (1/ms, 0 where it does not start) of the overtone and of its fundamental at each corner.
 
-    The fundamental: f/n, L1 the same, C1 n² times, C0 the same, R1 1/n² of the stated one and once the stated one.
+    The fundamental: f/n, L1 the same, C1 n² times, C0 the same, R1 as stated for it, else 1/n² of the overtone's and
+    once the overtone's.
     """
     shunt = shunt_ends(columns, number)
     crystal = crystal_at(columns, bench, number, shunt)
@@ -67,9 +68,10 @@ def _growths(columns: Columns, bench: Bench, number: int, setting: Setting) -> t
     fs = series_resonance_mhz(*np.broadcast_arrays(*_with_known_load(crystal)))
     own = _growth(analyse(circuit, crystal)["startup_ms"])
     _, _, _, motional, esr = crystal
+    stated = spans([offer.at[number].fundamental_esr for offer in columns.offers])[:, :, None, None, None, None, None]
     lower = [
-        Crystal(fs / order, np.inf, shunt, motional * order**2, esr * part)
-        for part in (1 / order**2, GREATEST_FUNDAMENTAL_ESR)
+        Crystal(fs / order, np.inf, shunt, motional * order**2, np.where(np.isnan(own_esr), esr * part, own_esr))
+        for part, own_esr in ((1 / order**2, stated[LOW]), (GREATEST_FUNDAMENTAL_ESR, stated[HIGH]))
     ]
     grown = [_growth(analyse(circuit, one)["startup_ms"]) for one in lower]
     return own, np.maximum(*np.broadcast_arrays(*grown))

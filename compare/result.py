@@ -133,6 +133,7 @@ def _fill_arm(found: dict[str, Number], columns: Columns) -> None:
     no_load = np.isnan(columns.load_pf)
     esr = np.stack([columns.esr_ohm[:, HIGH].max(axis=0), columns.esr_ohm[0, MID], columns.esr_ohm[:, LOW].min(axis=0)])
     inductance, quality = found["motional_inductance_mh"], found["quality_factor"]
+    # C1 and R1 are above zero wherever they are known.
     inductance.ends = np.where(no_load, motional.motional_inductance_mh(frequency, c1), inductance.ends)
     quality.ends = np.where(no_load, motional.quality_factor(frequency, c1, esr), quality.ends)
     guess = motional.estimate_quality_factor()

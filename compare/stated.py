@@ -11,6 +11,14 @@ from extract.model import Part, Reading, When
 ROOM_C = 25.0
 END_SLACK = 1e-6  # a band end printed with few decimals still belongs to the band
 MID_AT_LIMIT = ("esr_ohm", "shunt_capacitance_pf", "drive_level_uw")
+ABOVE_ZERO = (
+    *MID_AT_LIMIT,
+    "load_capacitance_pf",
+    "motional_capacitance_ff",
+    "motional_inductance_mh",
+    "quality_factor",
+    "capacitance_ratio",
+)
 ONE_SIDED_AS_BOTH = ("frequency_tolerance_ppm", "frequency_stability_ppm", "ageing_ppm")
 
 
@@ -114,13 +122,25 @@ def narrowest(readings: Iterable[Reading]) -> list[Reading]:
 
 
 def readings_for(part: Part, field: str, case: Case) -> list[Reading]:
-    """The readings of a field that count in the case; empty where no band holds it."""
-    return narrowest(r for r in part.readings if r.field == field and holds(r.when, case))
+    """The readings of a field that count in the case; empty where no band holds it.
+
+    A capacitance or resistance of zero or below is none (sheets print 0 where they state nothing).
+    """
+    stated = (r for r in part.readings if r.field == field and holds(r.when, case))
+    return narrowest(r for r in stated if printed(r))
+
+
+def bound(reading: Reading, name: str) -> float | None:
+    """One bound as it counts: a resistance or capacitance of zero or below is none at all."""
+    value: float | None = getattr(reading, name)
+    return None if value is not None and value <= 0 and reading.field in ABOVE_ZERO else value
 
 
 def printed(reading: Reading) -> list[float]:
-    """Every number of a reading."""
-    return [v for v in (reading.min, reading.typ, reading.max, *reading.options) if v is not None]
+    """Every number of a reading that counts."""
+    bounds = [bound(reading, name) for name in ("min", "typ", "max")]
+    options = [value for value in reading.options if value > 0 or reading.field not in ABOVE_ZERO]
+    return [value for value in (*bounds, *options) if value is not None]
 
 
 def span_of(reading: Reading) -> Span:
@@ -129,8 +149,9 @@ def span_of(reading: Reading) -> Span:
         return _both_ways(reading)
     values = printed(reading)
     low, high = min(values), max(values)
-    if reading.typ is not None:
-        return Span(low, reading.typ, high)
+    typical = bound(reading, "typ")
+    if typical is not None:
+        return Span(low, typical, high)
     if reading.field in ONE_SIDED_AS_BOTH:
         return Span(low, min(max(0.0, low), high), high)
     return Span(low, high if reading.field in MID_AT_LIMIT else (low + high) / 2, high)
@@ -167,9 +188,9 @@ def take(part: Part, field: str, case: Case, only: Callable[[Reading], bool] | N
 
 
 def _is_limit_alone(reading: Reading) -> bool:
-    if reading.options or reading.min is not None:
+    if reading.options or bound(reading, "min") is not None:
         return False
-    if reading.typ is not None:
+    if bound(reading, "typ") is not None:
         return reading.bare is True and reading.max is None
     return reading.max is not None
 
@@ -190,6 +211,6 @@ def rated_drive(part: Part, case: Case) -> Taken:
 
 
 def _rating(reading: Reading) -> float:
-    if reading.max is not None:
-        return reading.max
-    return reading.typ if reading.typ is not None else max(printed(reading))
+    return next(
+        (value for name in ("max", "typ") if (value := bound(reading, name)) is not None), max(printed(reading))
+    )

@@ -133,6 +133,8 @@ class Trial:
             tried = replace(after, series_resistor_ohm=ohm.reshape(-1, 1, 1, 1, 1, 1))
             for limiter in limiters_of(keys):
                 swing = amplifier_swing_v(before, crystal, *swing_of(keys), limiter)
+                if np.shape(after.input_pf) != np.shape(before.input_pf):  # corners of their own: take the worst
+                    swing = np.fmax.reduce(swing, axis=4, keepdims=True)
                 _widen(worst, analyse(tried, crystal, swing, "amplifier", limiter))
         return ResistorOutcome(worst["drive_level_uw"][1], worst["margin"][0])
 

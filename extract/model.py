@@ -110,8 +110,8 @@ class Reading(_Frozen):
     @model_serializer(mode="wrap")
     def _without_absent_bare(self, handler: Any) -> dict[str, Any]:
         written: dict[str, Any] = handler(self)
-        if written["bare"] is None:
-            del written["bare"]
+        if written.get("bare") is None:
+            written.pop("bare", None)
         return written
 
 

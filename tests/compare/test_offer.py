@@ -221,3 +221,9 @@ def test_a_condition_without_readings_of_its_own_takes_those_for_room():
     offer = the_offer(usual(), cold)
     assert offer.at[1].esr.span.high == 60.0
     assert offer.at[1].room_only
+
+
+def test_a_single_option_is_no_choice():
+    offer = the_offer(usual(reading("load_capacitance_pf", options=(9.0,))))
+    assert offer.load.span.mid == 9.0
+    assert "load_capacitance_pf" not in offer.chosen

@@ -85,3 +85,13 @@ def test_an_overtone_without_esr_cannot_be_told():
 @pytest.mark.parametrize("mode", ["fifth overtone", "third overtone"])
 def test_the_verdict_follows_the_order(mode):
     assert reason(reviewed(third(mode=mode)))["verdict"] == "falls short"
+
+
+def test_a_resistance_stated_for_the_fundamental_is_put_in():
+    """60 kΩ at f/3 is past what this circuit drives there: the fundamental cannot start."""
+    stated = reading("esr_ohm", max=60000.0, mode="fundamental", frequency_mhz=(10.0, 20.0))
+    own = reading("esr_ohm", 60.0, min=60.0, max=60.0, mode="third overtone")
+    one = third()
+    both = usual(*[r for r in one.readings if r.field != "esr_ohm"], own, stated, mode="third overtone")
+    assert reason(reviewed(one))["verdict"] == "falls short"
+    assert reason(reviewed(both))["verdict"] == "meets"

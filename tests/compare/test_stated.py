@@ -111,3 +111,10 @@ def test_a_bare_value_and_a_maximum_are_reckoned_alike():
 )
 def test_the_rated_drive_is_the_maximum_else_a_bare_value_else_typical(readings, rated):
     assert rated_drive(part(*readings), CASE).span.mid == rated
+
+
+def test_zero_or_below_is_no_capacitance_and_no_resistance():
+    """Sheets print 0 where they state nothing: "0 | 5" under Min and Max is a maximum of 5."""
+    shunt = take(part(reading("shunt_capacitance_pf", min=0.0, max=5.0)), "shunt_capacitance_pf", CASE)
+    assert (shunt.span, shunt.limit_alone) == (Span(5.0, 5.0, 5.0), True)
+    assert not esr_at(reading("esr_ohm", max=0.0)).stated
