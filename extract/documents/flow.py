@@ -20,6 +20,8 @@ Placer = Callable[[Box], Where]
 
 # Text sizes: the narrowest gutter between two columns of text.
 TEXT_GUTTER = 1.2
+# Text sizes: the parts of a heading stand no further apart ("QX-20   Crystal unit").
+TITLE_GAP = 1.6
 # Share of the items that may run across the gutter between two columns (headings, wide tables).
 MOST_ACROSS = 0.35
 # Text sizes: baselines that differ by less are level, where the difference varies by less than the second.
@@ -364,7 +366,8 @@ def _each_once(rows: Sequence[Sequence[Item]]) -> list[list[Item]]:
 def _line(row: Sequence[Item], size: float, place: Placer) -> Line:
     segments = tuple(Segment(joined(item.words), place(item.box), confidence_of(item.words)) for item in row)
     words = [word for item in row for word in item.words]
-    heading = len(row) == 1 and (all(word.bold for word in words) or min(word.size for word in words) > 1.15 * size)
+    together = all(after.box[0] - before.box[2] < TITLE_GAP * size for before, after in zip(row, row[1:], strict=False))
+    heading = together and (all(word.bold for word in words) or min(word.size for word in words) > 1.15 * size)
     return Line(segments, place(union(item.box for item in row)), heading)
 
 

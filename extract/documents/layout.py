@@ -222,7 +222,7 @@ def _titled(blocks: Sequence[Table | Line]) -> list[Table | Line]:
 
 def _is_title(line: Line, table: Table) -> bool:
     over, under = line.where.box, table.where.box
-    if over is None or under is None or len(line.segments) > 1:
+    if over is None or under is None or (len(line.segments) > 1 and not line.heading):
         return False
     near = 0 <= under[1] - over[3] + 4 < 3.0 * max(over[3] - over[1], 8.0)
     level = min(over[2], under[2]) - max(over[0], under[0]) > 0

@@ -72,12 +72,11 @@ def read(data: bytes, wanted: Callable[[str], bool] | None = None) -> Document:
     """
     # The parser reports each oddity of a font; a reader of the sheet can do nothing about them.
     logging.getLogger("pdfminer").setLevel(logging.ERROR)
-    quick = _opened(data)
+    quick, slow = _opened(data), _Plumber(data)
     try:
-        slow = _Plumber(data)
         pages = [_page_or_note(quick, slow, number, wanted) for number in range(1, len(quick) + 1)]
-        slow.close()
     finally:
+        slow.close()
         quick.close()
     return _document(pages)
 

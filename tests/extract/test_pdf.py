@@ -101,13 +101,27 @@ def ruled(paper, rows=ROWS):
 # --- where things stand
 
 
-def test_pdfplumber_finds_each_cells_text_under_its_box():
-    data = drawn(ruled)
+def unruled(paper, level_lines=False):
+    """The same table without lines, or with level lines only, and one text on two lines."""
+    for row, texts in enumerate(ROWS):
+        y = TOP - PITCH * (row + 1)
+        if level_lines:
+            paper.line(COLUMNS[0], y, COLUMNS[-1], y)
+        for column, text in enumerate(texts):
+            paper.drawString(COLUMNS[column] + 4, y + 9, text)
+    paper.drawString(COLUMNS[2] + 4, y + 1, "and 10 uW")
+    if level_lines:
+        paper.line(COLUMNS[0], TOP, COLUMNS[-1], TOP)
+
+
+@pytest.mark.parametrize("page", [ruled, unruled, lambda paper: unruled(paper, level_lines=True)])
+def test_pdfplumber_finds_each_cells_text_under_its_box(page):
+    data = drawn(page)
     (table,) = tables_of(pdf.read(data))
+    assert [row[:2] for row in grid_of(table)] == [row[:2] for row in ROWS]
     with pdfplumber.open(io.BytesIO(data)) as file:
-        page = file.pages[0]
         for cell in table.cells:
-            assert page.crop(cell.where.box).extract_text() == cell.text
+            assert file.pages[0].crop(cell.where.box).extract_text() == cell.text
 
 
 @pytest.mark.parametrize("rotation", [0, 90, 180, 270])
