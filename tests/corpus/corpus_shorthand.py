@@ -41,6 +41,9 @@ PAIRS = {"f": "frequency_mhz", "cl": "load_capacitance_pf", "t": "temperature_c"
 MODES = {"fund": "fundamental", "3rd": "third overtone", "5th": "fifth overtone"}
 KINDS = {".txt": "text", ".md": "text", ".eml": "text", ".tsv": "csv", ".ods": "xlsx"}
 
+# The usual four pads: crystal across one diagonal, the lid on the other.
+PADS = {"pads": {"crystal": [1, 3], "ground": [2, 4]}}
+
 Json = dict[str, Any]
 
 
@@ -89,7 +92,7 @@ def reading(line: str) -> Json:
     return read
 
 
-def part(number: str | None, lines: str, **identity: str | None) -> Json:
+def part(number: str | None, lines: str, **identity: Any) -> Json:
     """A part with its readings; `mode`, `cut`, `maker`, `package`, `res` only where the sheet settles them."""
     named = {{"res": "resonance"}.get(key, key): MODES.get(str(value), value) for key, value in identity.items()}
     return {

@@ -9,7 +9,7 @@ from typing import Any
 from xml.sax.saxutils import escape
 
 from corpus_pages import cells
-from corpus_shorthand import keep, part
+from corpus_shorthand import PADS, keep, part
 
 
 def _saved(document: Any) -> bytes:
@@ -73,9 +73,19 @@ def merged_makers() -> None:
     first = {"maker": "Wychbridge Quartz", "package": "3.2 x 2.5", "res": "load"}
     second = {"maker": "Pembrisle", "package": "3.2 x 2.5", "res": "load"}
     parts = [
-        part("WQA32-25M-06", "f 25\ncl 6\nesr <50\nc0 <3\ntol ±10\nstab ±20\nop -40..85", **first),
+        part(
+            "WQA32-25M-06",
+            "f 25\ncl 6\nesr <50\nc0 <3\ntol ±10\nstab ±20\nop -40..85",
+            **first,
+            attributes={"aec_q200": False},
+        ),
         part("WQA32-25M-08", "f 25\ncl 8\nesr <50\nc0 <3\ntol ±10\nstab ±20\nop -40..85", **first),
-        part("WQA32-25M-12", "f 25\ncl 12\nesr <50\nc0 <3\ntol ±20\nstab ±30\nop -40..105", **first),
+        part(
+            "WQA32-25M-12",
+            "f 25\ncl 12\nesr <50\nc0 <3\ntol ±20\nstab ±30\nop -40..105",
+            **first,
+            attributes={"aec_q200": True},
+        ),
         part(
             "WQA20-25M-08",
             "f 25\ncl 8\nesr <80\nc0 <1.8\ntol ±10\nstab ±20\nop -40..85",
@@ -272,6 +282,7 @@ Refusion|260 °C crête, 10 s, 3 passages|Δf ≤ ± 3 ppm""",
             mode="fund",
             cut="AT",
             res="load",
+            attributes={**PADS, "aec_q200": True},
         )
     ]
     layout = "approval file, maker in the page header, test-condition column, ×10⁻⁶, pads, AEC-Q200, reliability tests"

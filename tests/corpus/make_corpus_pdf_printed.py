@@ -5,7 +5,7 @@ from __future__ import annotations
 import io
 
 from corpus_pages import FONTS, printed, rows
-from corpus_shorthand import keep, part
+from corpus_shorthand import PADS, keep, part
 
 
 def transposed_esr() -> None:
@@ -241,6 +241,7 @@ def bilingual_approval() -> None:
             mode="fund",
             cut="AT",
             res="load",
+            attributes={**PADS, "aec_q200": True},
         )
     ]
     layout = "Chinese and English in one label, two-row head, pads, AEC-Q200, reliability and reflow tables"
@@ -336,6 +337,58 @@ dependency|max. ±1 ppm from 1 µW to 100 µW|—
     keep("grade_columns_en.pdf", printed(body), parts, "en", layout)
 
 
+def best_available() -> None:
+    table = rows(
+        """Frequency range|9.840 to 40.000 MHz (AT, fundamental)
+Load capacitance|series, 12 pF, 16 pF, 30 pF
+Tolerance at 25 °C|from ±5 ppm
+{r3}Stability|-10 °C to +60 °C: from ±5 ppm
+-20 °C to +70 °C: ±15 ppm max.
+-40 °C to +85 °C: ±25 ppm max.
+{r3}Series resistance R<sub>S</sub>|80 Ohm max. for 9.840 MHz ≤ f &lt; 12.000 MHz
+50 Ohm max. for 12.000 MHz ≤ f &lt; 20.000 MHz
+35 Ohm max. for 20.000 MHz ≤ f ≤ 40.000 MHz
+Shunt capacitance C<sub>O</sub>|2 pF to 4 pF typical, 5 pF maximum
+Drive level|1 mW max., 100 µW typical
+Aging|&lt; ±3 ppm per year @ 25 °C
+Insulation|500M Ohm minimum @100VDC
+Storage|-45 °C to +90 °C"""
+    )
+    body = f"""<h1 style="letter-spacing:.35em">MARLBECK</h1><h2>MKB-11 &mdash; resistance-weld crystal, HC-52/U</h2>
+<table>{table}</table><p><small>A typical oscillator uses two 22 pF capacitors and 1 MΩ. Chip makers ask for a crystal
+with ESR ≤ 100 Ω; ask us for a circuit evaluation.</small></p>"""
+    parts = [
+        part(
+            "MKB-11",
+            """
+            f 9.84..40
+            cl {12,16,30}
+            tol ±5 flag also=5 also=>5 also=-5/-/- also=<5
+            stab ±5 t=-10:60 flag also=5 also=>5 also=<5
+            stab ±15 t=-20:70
+            stab ±25 t=-40:85
+            op -10..60
+            op -20..70
+            op -40..85
+            esr <80 f=9.84:12
+            esr <50 f=12:20
+            esr <35 f=20:40
+            c0 <5 also=2/-/5 also=2/4/5 also=-/4/5
+            dl -/100/1000
+            age ±3 y=1
+            ir >500
+            sto -45..90""",
+            maker="Marlbeck",
+            package="HC-52/U",
+            mode="fund",
+            cut="AT",
+            res=None,
+        )
+    ]
+    layout = "'from ±5 ppm' beside limits, a range of stability per line of a cell, series among the loads"
+    keep("best_available_en.pdf", printed(body), parts, "en", layout)
+
+
 def french_scan() -> None:
     from PIL import Image, ImageDraw, ImageFont
 
@@ -400,6 +453,7 @@ if __name__ == "__main__":
         bilingual_approval,
         page_break,
         grade_columns,
+        best_available,
         french_scan,
     ):
         make()

@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from corpus_shorthand import keep, part
+from corpus_shorthand import PADS, keep, part
 
 
 def key_value_semicolons() -> None:
@@ -13,7 +13,7 @@ PN=HXW32-40M-8; MFR=Hexworthy Crystal; PACKAGE=3.2x2.5x0.7mm; F0=40.000MHz; MODE
 FTOL=+/-10ppm; FSTAB=+/-15ppm@-30..+85degC; ESR=30ohm max; C0=2.6pF max; C1=6.2fF typ; DL=200uW max; AGE=+/-2ppm/yr; \
 STG=-40..+125degC; PADS=1,3 xtal 2,4 gnd; MOQ=3000; PRICE=0.21USD
 """
-    one = {"maker": "Hexworthy Crystal", "package": "3.2x2.5x0.7mm", "mode": "fund", "res": "load"}
+    one = {"maker": "Hexworthy Crystal", "package": "3.2x2.5x0.7mm", "mode": "fund", "res": "load", "attributes": PADS}
     parts = [
         part(
             "HXW32-24M-12",

@@ -181,18 +181,21 @@ Preis ab 1000|0,29 €|0,24 €|0,19 €"""
             "EBQ70-25M-20",
             shared + "cl 20\ntol ±30\nop -20..70\nesr <40\nc0 <7\nc1 6.5",
             **one,
+            part_number_also=["EBQ-7050"],
             package="7,0 × 5,0 mm",
         ),
         part(
             "EBQ50-25M-20",
             shared + "cl 20\ntol ±30\nop -40..85\nesr <50\nc0 <5\nc1 5.2",
             **one,
+            part_number_also=["EBQ-5032"],
             package="5,0 × 3,2 mm",
         ),
         part(
             "EBQ32-25M-12",
             shared + "cl 12\ntol ±10\nop -40..85\nesr <50\nc0 <3\nc1 3.8",
             **one,
+            part_number_also=["EBQ-3225"],
             package="3,2 × 2,5 mm",
         ),
     ]
