@@ -10,11 +10,13 @@ from typing import Any
 import numpy as np
 
 from compare.bench import Bench, uses
+from compare.budget import seconds_per_day
 from compare.explain import FIELD_WORDS, Subject, figure, joined, reading_text
 from compare.result import Number
 from compare.terms import Total
 from compare.verdict import CANNOT_TELL, GAINS, WORDS, Judged
 
+CLOCKS_BELOW_MHZ = 1.0
 GAIN_WORDS = {
     "margin": "margin",
     "gain_ratio": "gain ratio",
@@ -61,7 +63,7 @@ def message(one: Judged, standing: Standing) -> str:
     at = standing.at
     lacking = [name for name, flags in one.missing.items() if flags[at]]
     if one.verdict[at] == CANNOT_TELL and lacking and one.about not in ("mode", "operating_temperature_c", "esr_ohm"):
-        return f"cannot be told: {joined(lacking_words(lacking))}"
+        return f"cannot be told: {joined(lacking_words(lacking))}{_bench_test(one, standing)}"
     parts = [MESSAGES[one.about](one, standing)]
     if one.verdict[at] == CANNOT_TELL and len(one.typical_only) and one.typical_only[at]:
         parts.append("the ESR is printed as typical with no limit, which promises nothing")
@@ -73,6 +75,18 @@ def message(one: Judged, standing: Standing) -> str:
     if one.about in GAINS:
         parts += gain_remarks(one, standing)
     return "; ".join(parts)
+
+
+def _bench_test(one: Judged, standing: Standing) -> str:
+    """What to try on the board where the margin cannot be reckoned: a resistor in series with the crystal."""
+    rl = standing.subject.ends["load_resonance_resistance_ohm"][2]
+    if one.about != "margin" or math.isnan(rl):
+        return ""
+    least = (standing.bench.requirement.margin - 1) * rl
+    return (
+        f"; on the board, over temperature and supply, it must still start with {figure(least, 3)} Ω put in series "
+        f"with the crystal ((margin - 1) RL, RL {figure(rl, 3)} Ω at the worst)"
+    )
 
 
 def lacking_words(lacking: list[str]) -> list[str]:
@@ -128,8 +142,11 @@ def _upper_end(standing: Standing) -> list[str]:
 
 def _total(one: Judged, standing: Standing) -> str:
     low, _, high = standing.subject.ends["total_ppm"]
+    daily = ""
+    if standing.subject.offer.frequency_mhz < CLOCKS_BELOW_MHZ:
+        daily = f" ({signed(float(seconds_per_day(low)))} to {signed(float(seconds_per_day(high)))} s a day)"
     parts = [
-        f"{signed(low)} to {signed(high)} ppm against {limit_words(standing.bench)}: "
+        f"{signed(low)} to {signed(high)} ppm{daily} against {limit_words(standing.bench)}: "
         f"{times(float(one.worst[standing.at]))}",
     ]
     if not math.isnan(standing.loosest_slack):

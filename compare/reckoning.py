@@ -315,4 +315,5 @@ def _ends(number: Number, at: int) -> tuple[float, float, float]:
 
 def _budget_how(standing: Standing) -> str:
     offer, bench = standing.subject.offer, standing.bench
-    return f"{budget_words(standing)}; {ageing_words(offer, bench)}"
+    subject = standing.subject
+    return f"{budget_words(standing)}; {ageing_words(offer, bench)}; load error from {subject.c1}, {subject.c0}"

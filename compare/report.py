@@ -154,6 +154,8 @@ def _why(row: Mapping[str, Any]) -> list[str]:
     if row["tightest"] in NUMBERS and row["tightest"] in row:
         lines += wrapped(row[row["tightest"]]["how"], "         from: ", "           ")
     lines += _chosen(row, "       ")
+    for remark in row["remarks"]:
+        lines += wrapped(f"taken so: {remark['message']}", "       ", "         ")
     if row["to_check"]:
         lines += wrapped(f"look at first: {', '.join(map(_field, row['to_check']))}", "       ")
     return lines
@@ -252,8 +254,8 @@ def _advice(one: Mapping[str, Any]) -> str:
             f"{figure(one['load_error_ppm'], 3)} ppm and margin {figure(one['margin'], 3)} in the worst case"
         )
     return (
-        f"series resistor {figure(one['series_resistor_ohm'])} Ω: drive level {figure(one['drive_level_uw'], 3)} µW and "
-        f"margin {figure(one['margin'], 3)} in the worst case"
+        f"series resistor {figure(one['series_resistor_ohm'])} Ω: drive level {figure(one['drive_level_uw'], 3)} µW "
+        f"and margin {figure(one['margin'], 3)} in the worst case"
     )
 
 

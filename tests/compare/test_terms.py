@@ -187,3 +187,11 @@ def test_a_use_without_a_limit_needs_total_ppm_and_says_so():
 def test_a_use_without_evidence_is_said_to_have_none():
     found = reviewed(usual(), {"requirement": {"use": "usb3"}})
     assert "no source yet: check the standard" in reason(found)["message"]
+
+
+def test_a_clocks_error_is_told_in_seconds_a_day_as_well():
+    """100 ppm of 86 400 s are 8.64 s."""
+    found = reviewed(fork(), FORK_BENCH)
+    low = found["total_ppm"]["low"] * 0.0864
+    assert f"({low:+.3g} to " in reason(found)["message"]
+    assert "s a day" not in reason(reviewed(usual()))["message"]

@@ -298,3 +298,10 @@ def test_estimated_ends_are_an_interval_and_stated_ends_the_worst():
     assert [float(x[0]) for x in decide(slack, yes, no)] == [0.5, 0.6]
     assert [float(x[0]) for x in decide(slack, yes, yes)] == [0.5, 3.0]
     assert CANNOT_TELL == 1
+
+
+def test_without_a_transconductance_the_bench_test_is_named_with_the_value_to_reach():
+    """(margin - 1) RL: the series resistor with which it must still start."""
+    found = reviewed(usual(), {"circuit": {"transconductance_ms": None}})
+    resistor = 4.0 * found["load_resonance_resistance_ohm"]["high"]
+    assert f"it must still start with {resistor:.3g} Ω put in series" in reason(found, "margin")["message"]
