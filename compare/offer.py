@@ -4,7 +4,7 @@ from __future__ import annotations
 
 import math
 import re
-from collections.abc import Iterable, Mapping, Sequence
+from collections.abc import Collection, Mapping, Sequence
 from dataclasses import dataclass, field, replace
 
 from compare.bench import Bench
@@ -58,6 +58,7 @@ class Offer:
 
     sheet: SpecSheet
     part: Part
+    frequency: Taken
     case: Case
     mode: str | None
     overtone: int | None
@@ -117,6 +118,7 @@ class Match:
 
     printed_mhz: float | None
     said: str = ""
+    reading: Reading | None = None
 
 
 @dataclass
@@ -150,16 +152,17 @@ def match_frequency(part: Part, asked_mhz: float) -> Match:
     if not readings:
         return Match(None, "states no frequency")
     named_ones = [(value, r) for r in readings for value in _named_frequencies(r)]
-    for value, _ in named_ones:
+    for value, reading in named_ones:
         if _ppm(value, asked_mhz) <= SAME_PPM:
-            return Match(value)
+            return Match(value, reading=reading)
     for value, reading in named_ones:
         decimals = decimals_printed(reading.raw, value)
         if _ppm(value, asked_mhz) <= ROUNDED_PPM and math.isclose(round(asked_mhz, decimals), value, rel_tol=1e-9):
             apart = f"{asked_mhz:.10g} MHz rounded to what is printed ({_ppm(value, asked_mhz):.1f} ppm apart)"
-            return Match(value, f"the sheet's {value:.10g} MHz is taken as the bench's {apart}")
-    if any(_in_range(r, asked_mhz) for r in readings):
-        return Match(asked_mhz)
+            return Match(value, f"the sheet's {value:.10g} MHz is taken as the bench's {apart}", reading)
+    for reading in readings:
+        if _in_range(reading, asked_mhz):
+            return Match(asked_mhz, reading=reading)
     return Match(None, _why_not(named_ones, readings, asked_mhz))
 
 
@@ -226,6 +229,7 @@ def make_offer(sheet: SpecSheet, part: Part, match: Match, bench: Bench, load_pf
     return Offer(
         sheet=sheet,
         part=part,
+        frequency=Taken(Span.at(asked.frequency_mhz), (match.reading,) if match.reading else ()),
         case=case,
         mode=mode,
         overtone=overtone_of(mode),
@@ -252,9 +256,7 @@ def make_offer(sheet: SpecSheet, part: Part, match: Match, bench: Bench, load_pf
 
 def with_load(offer: Offer, load_pf: float, bench: Bench) -> Offer:
     """The same part ordered with the load given."""
-    match = Match(
-        offer.case.frequencies_mhz[-1], next((text for about, text in offer.said if about == "frequency_mhz"), "")
-    )
+    match = match_frequency(offer.part, bench.requirement.frequency_mhz)
     made = make_offer(offer.sheet, offer.part, match, bench, load_pf)
     return replace(made, load_options=offer.load_options, load_range=offer.load_range)
 
@@ -446,6 +448,17 @@ def _fundamental_esr(part: Part, case: Case) -> Taken:
     return take(part, "esr_ohm", below, only=lambda reading: reading.when.mode == "fundamental")
 
 
-def fields_to_check(takens: Iterable[Taken]) -> list[str]:
-    """Fields whose reading, as used, asks for a look."""
-    return sorted({r.field for taken in takens for r in taken.readings if r.check})
+def fields_to_check(offer: Offer, asked: Collection[str]) -> list[str]:
+    """Fields whose reading, as used, asks for a look; `asked` are the requirements that the part is held to."""
+    used = [taken for name, taken in offer.taken().items() if _is_used(name, offer, asked)]
+    used += [offer.frequency, *(one for at in offer.at for one in (at.esr, at.shunt_capacitance))]
+    return sorted({r.field for taken in used for r in taken.readings if r.check})
+
+
+def _is_used(name: str, offer: Offer, asked: Collection[str]) -> bool:
+    """Some readings count for one requirement or one kind of part alone."""
+    if name in ("turnover_temperature_c", "parabolic_coefficient_ppm_per_c2"):
+        return offer.fork
+    if name == "operating_temperature_c":
+        return offer.fork or name in asked
+    return name != "drive_level_uw" or name in asked

@@ -256,7 +256,7 @@ def bare_result(reckoning: Reckoning, at: int) -> dict[str, Any]:
         "missing": ["esr_ohm" if name == "least_esr_ohm" else name for name in missing_of(judged, at)],
         "questions": [],
         "chosen": dict(offer.chosen),
-        "to_check": fields_to_check(offer.taken().values()),
+        "to_check": fields_to_check(offer, judged),
         "slack": slack,
         "tightest": min(known, key=lambda key: known[key]) if known else None,
         "remarks": [],

@@ -305,3 +305,21 @@ def test_without_a_transconductance_the_bench_test_is_named_with_the_value_to_re
     found = reviewed(usual(), {"circuit": {"transconductance_ms": None}})
     resistor = 4.0 * found["load_resonance_resistance_ohm"]["high"]
     assert f"it must still start with {resistor:.3g} Ω put in series" in reason(found, "margin")["message"]
+
+
+def test_only_readings_that_are_used_ask_for_a_look():
+    doubtful = [
+        reading("frequency_mhz", 16.0, check="a"),
+        reading("drive_level_uw", max=100.0, check="b"),
+        reading("turnover_temperature_c", 25.0, check="c"),
+        reading("esr_ohm", max=90.0, frequency_mhz=(20.0, 30.0), check="d"),
+        reading("esr_ohm", max=60.0),
+    ]
+    assert reviewed(usual(*doubtful))["to_check"] == ["drive_level_uw", "frequency_mhz"]
+    assert reviewed(usual(*doubtful), {"circuit": {"swing_v": None}})["to_check"] == ["frequency_mhz"]
+
+
+def test_a_reading_that_only_a_condition_takes_asks_for_a_look():
+    cold = {"circuit": {"condition": [{"name": "cold", "temperature_c": -40.0}]}}
+    frost = reading("esr_ohm", max=70.0, temperature_c=(-40.0, -20.0), check="unit guessed")
+    assert reviewed(usual(reading("esr_ohm", max=60.0), frost), cold)["to_check"] == ["esr_ohm"]
