@@ -20,6 +20,7 @@ from extract.vocabulary import vocabulary
 from extract.wording import Label
 
 _PLUS_MINUS = re.compile(r"±")
+_BRACKET = re.compile(r"[(（][^()（）]*[)）]")
 LEAST_CONFIDENCE = 0.8
 
 
@@ -54,6 +55,9 @@ def read(
 ) -> tuple[amount.Value, ...]:
     """`amount.read_values`, each distinct text read once."""
     found = amount.read_values(text, field, unit=unit, bound=bound, plus_minus=plus_minus)
+    if not found and _BRACKET.search(text):
+        # What a bracket withdraws ("series resonance on request") is not the value before it.
+        found = amount.read_values(_BRACKET.sub(" ", text), field, unit=unit, bound=bound, plus_minus=plus_minus)
     return tuple(value for value in found if not value.empty or value.series)
 
 

@@ -14,7 +14,7 @@ from extract.model import When
 
 _MARK = r"\*{1,3}\d{0,2}|※\s?\d{0,2}|[†‡§]|注\s?\d+|(?:note|fn)\.?\s?\d{1,2}"
 _LINE = re.compile(
-    rf"(?i)^\s*(?:(?P<mark>{_MARK})|[(\[](?P<number>\d{{1,2}})[)\]]|(?P<loose>\d{{1,2}})[).](?=\s)|\^\(?(?P<raised>\d)\)?)[\s:.)]*(?P<text>.+)$",
+    rf"(?i)^\s*(?:(?P<mark>{_MARK})|[(\[]\^?(?P<number>\d{{1,2}})[)\]]|(?P<loose>\d{{1,2}})[).](?=\s)|\^\(?(?P<raised>\d)\)?)[\s:.)]*(?P<text>.+)$",
     re.DOTALL,
 )
 _IN_TEXT = re.compile(

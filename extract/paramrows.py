@@ -196,7 +196,7 @@ def _sorted_row(row: Row, heads: Sequence[Head], at: int, *, governed: bool) -> 
         span = [heads[k] for k in range(index, len(row)) if k < len(heads) and row[k] is cell]
         if index == at or index < at and _is_label(cell.text) and found.label is None:
             found.label, found.label_text = cell, cell.text
-        elif index < at:
+        elif index < at and head.role not in (*_VALUE_ROLES, *_CONDITION_ROLES, "unit", "symbol"):
             continue
         else:
             _place(found, cell, head, span, governed=governed)

@@ -10,6 +10,7 @@ from collections.abc import Iterator, Sequence
 from dataclasses import dataclass, replace
 from itertools import pairwise
 
+from extract.candidates import read
 from extract.documents.model import Cell, Table
 from extract.entries import Column, Item, Listing, Piece, Text
 from extract.fold import fold, key
@@ -110,7 +111,7 @@ def _parent_of_roles(row: Row, below: Row) -> bool:
 def is_head(row: Row) -> bool:
     """Whether a row reads as the heading of what stands below it."""
     cells = distinct(row)
-    if len(cells) < 2:
+    if len(cells) < 2 or _is_series_load(cells):
         return False
     known = [meaning(cell.text) for cell in cells]
     roles = {each.role for each in known if each.role}
@@ -130,6 +131,14 @@ def is_head(row: Row) -> bool:
     if known[0].role == "parameter" or known[0].identity == "part_number":
         return tokens >= 2 and tokens + len(roles) >= len(cells) - 2
     return len(heads) == 1 and len(cells) == 2 and is_unit(cells[1].text) and bool(known[0].head)
+
+
+def _is_series_load(cells: Sequence[Cell]) -> bool:
+    """A load of "series resonance" is a value, though the words alone name a resistance."""
+    label = meaning(cells[0].text).label
+    if label is None or label.field != "load_capacitance_pf":
+        return False
+    return any(value.series for cell in cells[1:2] for value in read(cell.text, label.field))
 
 
 def _column_name(text: str) -> str | None:

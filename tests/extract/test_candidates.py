@@ -1,0 +1,99 @@
+import pytest
+
+from extract.candidates import entry_candidates, key_candidates
+from extract.entries import Entry, Key, Piece, Value
+from extract.model import When, Where
+
+HERE = Where(line=1)
+
+
+def entry(label, *values, unit="", symbol="", conditions=(), section=""):
+    """An entry; a value is a text, or a text with its bound."""
+    pairs = [value if isinstance(value, tuple) else (value, None) for value in values]
+    made = tuple(Value(Piece(text, HERE), bound) for text, bound in pairs)
+    return Entry(Piece(label, HERE), made, unit, symbol, conditions, section)
+
+
+def test_min_typ_and_max_cells_are_one_candidate_in_the_fields_unit():
+    (found,) = entry_candidates(entry("Motional resistance", ("40", "typ"), ("70", "max"), unit="kΩ"))
+    assert (found.field, found.bounds) == ("esr_ohm", (None, 40000.0, 70000.0, ()))
+
+
+def test_a_number_without_bound_is_bare_for_esr_only_where_no_column_bounds_it():
+    assert entry_candidates(entry("ESR", "60 Ω"))[0].bare
+    assert not entry_candidates(entry("ESR", ("60", "max"), unit="Ω"))[0].bare
+    assert not entry_candidates(entry("Load capacitance", "9 pF"))[0].bare
+
+
+def test_a_magnitude_under_a_plus_minus_unit_is_plus_minus():
+    (found,) = entry_candidates(entry("Frequency tolerance", "20", unit="± ppm"))
+    assert found.bounds == (-20.0, None, 20.0, ())
+
+
+def test_a_greatest_negative_coefficient_is_its_min():
+    (found,) = entry_candidates(entry("Parabolic coefficient", ("-0.04", "max"), unit="ppm/°C²"))
+    assert found.bounds[0] == -0.04
+    assert found.bounds[2] is None
+
+
+def test_a_stability_in_ppm_per_square_degree_is_the_parabola():
+    (found,) = entry_candidates(entry("Frequency stability", "-0.034 ppm/°C²"))
+    assert found.field == "parabolic_coefficient_ppm_per_c2"
+
+
+@pytest.mark.parametrize("condition", ["25 °C ±3 °C", "DC 100 V", "DL = 100 µW", "@1 MHz", "at 24 MHz"])
+def test_where_it_was_measured_limits_nothing(condition):
+    (found,) = entry_candidates(entry("Shunt capacitance", "3 pF max.", conditions=(condition,)))
+    assert found.when == When()
+
+
+def test_a_temperature_range_beside_stability_says_where_it_holds():
+    (found,) = entry_candidates(entry("Frequency stability", "±20 ppm", conditions=("-20 °C to +70 °C",)))
+    assert found.when == When(temperature_c=(-20.0, 70.0))
+
+
+def test_first_year_beside_ageing_is_one_year():
+    (found,) = entry_candidates(entry("Ageing", "±3 ppm", conditions=("first year, 25 °C",)))
+    assert found.when == When(years=1.0)
+
+
+def test_a_recommended_value_in_the_remarks_is_no_second_value():
+    (found,) = entry_candidates(entry("Drive level", "200 µW max.", conditions=("Recommended: 1 µW to 100 µW",)))
+    assert found.bounds == (None, None, 200.0, ())
+
+
+@pytest.mark.parametrize(
+    "label", ["Drive level dependency", "Spurious responses", "Reflow temperature", "Total frequency stability"]
+)
+def test_rows_that_only_look_like_a_field_are_left_alone(label):
+    assert entry_candidates(entry(label, "±10 ppm")) == []
+
+
+def test_a_label_that_is_only_nearly_one_makes_the_candidate_inferred():
+    (found,) = entry_candidates(entry("Shunt capacitanse", "3 pF max."))
+    assert found.inferred
+    assert found.doubts
+
+
+def test_a_text_that_the_recogniser_was_not_sure_of_is_doubted():
+    piece = Piece("60 Ω max.", HERE, confidence=0.5)
+    (found,) = entry_candidates(Entry(Piece("ESR", HERE), (Value(piece),)))
+    assert any("50%" in doubt for doubt in found.doubts)
+
+
+def test_one_temperature_is_no_operating_range():
+    assert entry_candidates(entry("Operating temperature", "25 °C")) == []
+
+
+def key(label, *choices):
+    return Key(Piece(label, HERE), tuple((code, Piece(text, HERE)) for code, text in choices))
+
+
+def test_codes_for_plus_minus_values_are_options():
+    (found,) = key_candidates(key("Frequency tolerance", ("1", "±10 ppm"), ("2", "±20 ppm")))
+    assert (found.options, found.source) == ((10.0, 20.0), "key")
+
+
+def test_codes_for_ranges_are_a_candidate_each():
+    found = list(key_candidates(key("Operating temperature", ("A", "-20 to +70 °C"), ("B", "-40 to +85 °C"))))
+    assert [(each.min, each.max) for each in found] == [(-20.0, 70.0), (-40.0, 85.0)]

@@ -1,0 +1,78 @@
+from building import line
+
+from extract.candidates import entry_candidates
+from extract.entries import Entry, Key
+from extract.lines import line_items
+
+
+def held(*lines):
+    return [
+        (each.field, each.bounds)
+        for item in line_items(lines)
+        if isinstance(item, Entry)
+        for each in entry_candidates(item)
+    ]
+
+
+def test_a_label_and_its_value_in_two_segments_are_a_pair():
+    assert held(line("Calibration tolerance at 25°C", "±30 ppm")) == [
+        ("frequency_tolerance_ppm", (-30.0, None, 30.0, ()))
+    ]
+
+
+def test_symbol_and_unit_in_segments_of_their_own_are_understood():
+    assert held(line("Motional resistance", "R1", "50 max.", "kΩ")) == [("esr_ohm", (None, None, 50000.0, ()))]
+
+
+def test_a_label_over_its_value_is_a_pair():
+    assert held(line("Load capacitance:", number=1), line("9 pF", number=2)) == [
+        ("load_capacitance_pf", (None, 9.0, None, ()))
+    ]
+
+
+def test_bands_below_a_label_are_all_its_own():
+    found = held(
+        line("ESR", number=1), line("8 to 12 MHz 100 ohms max", number=2), line("12 to 20 MHz 60 ohms max", number=3)
+    )
+    assert [bounds[2] for _, bounds in found] == [100.0, 60.0]
+
+
+def test_codes_below_a_heading_are_an_ordering_key():
+    items = line_items([line("[1] Load capacitance", heading=True), line("06 = 6 pF"), line("08 = 8 pF")])
+    (key,) = [item for item in items if isinstance(item, Key)]
+    assert (key.label.text, [code for code, _ in key.choices]) == ("Load capacitance", ["06", "08"])
+
+
+def test_a_sentence_wrapped_over_two_lines_is_read_as_one():
+    found = held(
+        line("The crystal comes in a ceramic case and has a load", number=4),
+        line("capacitance of 9 pF at both temperatures.", number=5),
+    )
+    assert found == [("load_capacitance_pf", (None, 9.0, None, ()))]
+
+
+def test_a_value_in_a_wrapped_paragraph_keeps_the_place_of_its_line():
+    items = line_items(
+        [
+            line("The crystal comes in a ceramic case and has a load", number=4),
+            line("capacitance of 9 pF at both temperatures.", number=5),
+        ]
+    )
+    assert [item.where.line for item in items if isinstance(item, Entry)] == [5]
+
+
+def test_a_quoted_line_of_mail_states_nothing():
+    assert held(line("> we need a crystal with CL = 12 pF, ESR max 40 ohm")) == []
+
+
+def test_labels_values_and_units_broken_over_lines_are_put_together():
+    texts = ["Nominal", "frequency", "24.000", "MHz", "Load", "capacitance", "18 pF", "Aging ±3 ppm/", "year"]
+    found = dict(held(*(line(text, number=number) for number, text in enumerate(texts, 1))))
+    assert found["frequency_mhz"] == (None, 24.0, None, ())
+    assert found["load_capacitance_pf"] == (None, 18.0, None, ())
+    assert found["ageing_ppm"] == (-3.0, None, 3.0, ())
+
+
+def test_the_numbers_of_a_graph_state_nothing():
+    texts = ["FREQUENCY AGAINST TEMPERATURE", "10", "0", "-40", "-20", "0", "20", "40", "Temperature [°C]"]
+    assert held(*(line(text, number=number) for number, text in enumerate(texts, 1))) == []

@@ -1,0 +1,133 @@
+from building import table
+
+from extract.entries import Listing
+from extract.lists import listing_drafts
+from extract.tables import read_table
+
+
+def drafts(*rows, title="", spans=None):
+    found = read_table(table(*rows, title=title, spans=spans))
+    return [draft for item in found if isinstance(item, Listing) for draft in listing_drafts(item)]
+
+
+HEADS = (
+    "Part number",
+    "Manufacturer",
+    "Frequency (MHz)",
+    "Load capacitance (pF)",
+    "Tolerance (±ppm)",
+    "T min (°C)",
+    "T max (°C)",
+    "ESR max (Ω)",
+    "Size",
+)
+ROW = ("ABQ32-16M-09", "Able Crystals", "16", "9", "10", "-40", "85", "60", "3225")
+
+
+def test_a_row_is_a_part_with_the_units_of_the_heads():
+    (draft,) = drafts(
+        HEADS,
+        ROW,
+    )
+    assert (draft.part_number, draft.maker, draft.package) == ("ABQ32-16M-09", "Able Crystals", "3225")
+    held = {(each.field, each.bounds[:3]) for each in draft.candidates}
+    assert ("frequency_mhz", (None, 16.0, None)) in held
+    assert ("frequency_tolerance_ppm", (-10.0, None, 10.0)) in held
+    assert ("esr_ohm", (None, None, 60.0)) in held
+    assert ("operating_temperature_c", (-40.0, None, None)) in held
+
+
+def test_a_dash_is_not_stated():
+    (draft,) = drafts(("Part number", "Frequency", "ESR"), ("ABQ32-16M-09", "16 MHz", "-"))
+    assert [each.field for each in draft.candidates] == ["frequency_mhz"]
+
+
+def test_series_in_the_load_column_is_series_resonance():
+    (draft,) = drafts(("Part number", "Frequency (MHz)", "CL (pF)"), ("ABQ32-16M-S", "16", "Series"))
+    assert draft.resonance == {"series"}
+    assert [each.field for each in draft.candidates] == ["frequency_mhz"]
+
+
+def test_a_part_number_column_for_each_temperature_range_gives_a_part_each():
+    found = drafts(
+        ("Frequency (MHz)", "CL (pF)", "Part number -20 to +70 °C", "Part number -40 to +85 °C"),
+        ("8.0", "18", "ABP-1001", "ABP-2001"),
+    )
+    ranges = {
+        draft.part_number: (each.min, each.max)
+        for draft in found
+        for each in draft.candidates
+        if each.field == "operating_temperature_c"
+    }
+    assert ranges == {"ABP-1001": (-20.0, 70.0), "ABP-2001": (-40.0, 85.0)}
+
+
+def test_cells_merged_over_rows_belong_to_each_row():
+    rows = (
+        ("Package", "Part number", "f (MHz)", "ESR max."),
+        ("2.0 x 1.6 mm", "ABQ21-26M-6", "26", "70 Ω"),
+        (None, "ABQ21-26M-8", None, None),
+    )
+    found = drafts(*rows, spans={(1, 0): (2, 1), (1, 2): (2, 1), (1, 3): (2, 1)})
+    assert [(draft.part_number, draft.package, [each.bounds[:3] for each in draft.candidates]) for draft in found] == [
+        ("ABQ21-26M-6", "2.0 x 1.6 mm", [(None, 26.0, None), (None, None, 70.0)]),
+        ("ABQ21-26M-8", "2.0 x 1.6 mm", [(None, 26.0, None), (None, None, 70.0)]),
+    ]
+
+
+def test_a_spanning_row_is_the_section_of_the_rows_below():
+    rows = (
+        ("Part number", "Frequency", "ESR"),
+        ("Fundamental", None, None),
+        ("ABQ32-16M-09", "16 MHz", "60 Ω"),
+        ("3rd overtone", None, None),
+        ("ABQ32-48M-09", "48 MHz", "90 Ω"),
+    )
+    found = drafts(*rows, spans={(1, 0): (1, 3), (3, 0): (1, 3)})
+    assert [draft.modes for draft in found] == [{"fundamental"}, {"third overtone"}]
+
+
+def test_rows_without_part_numbers_hold_in_their_frequency_band():
+    (draft,) = drafts(("Frequency range (MHz)", "ESR max. (Ω)"), ("8 - 11.999", "100"), ("12 - 20", "60"))
+    assert [(each.when.frequency_mhz, each.max) for each in draft.candidates] == [
+        ((8.0, 11.999), 100.0),
+        ((12.0, 20.0), 60.0),
+    ]
+
+
+def test_a_column_with_only_a_unit_takes_its_label_from_the_title():
+    (draft,) = drafts(
+        ("Load capacitance CL", "ppm/pF"), ("7 pF", "34.2"), ("9 pF", "22.1"), title="Trim sensitivity (typical)"
+    )
+    assert [(each.field, each.when.load_capacitance_pf) for each in draft.candidates] == [
+        ("pulling_sensitivity_ppm_per_pf", (7.0, 7.0)),
+        ("pulling_sensitivity_ppm_per_pf", (9.0, 9.0)),
+    ]
+
+
+def test_all_attributes_in_one_cell_are_read():
+    cell = "Frequency: 12 MHz; Load capacitance: 8pF; Operating temperature: min -40°C, max 85°C; ESR (max): 100 Ohms"
+    (draft,) = drafts(
+        ("SKU", "Name", "Brand", "Attributes", "Stock"), ("S-1", 'Crystal 12 MHz, "ABQ32-12M-08"', "Able", cell, "90")
+    )
+    held = {each.field: each.bounds[:3] for each in draft.candidates}
+    assert draft.part_number == "ABQ32-12M-08"
+    assert held["operating_temperature_c"] == (-40.0, None, 85.0)
+    assert held["esr_ohm"] == (None, None, 100.0)
+
+
+def test_of_a_mixed_list_only_the_rows_that_say_so_are_crystals():
+    rows = (
+        ("Part Number", "Manufacturer", "Description"),
+        ("CC0603-100N", "Kappe", "CAP CER 100nF 16V"),
+        ("ABQ32-16M-09", "Able", "XTAL 16.000MHZ 9PF 10PPM"),
+        ("MCX5510-Q", "Velch", "MCU 48 MHz 64 KB"),
+    )
+    found = drafts(*rows)
+    assert [draft.part_number for draft in found if not draft.other] == ["ABQ32-16M-09"]
+
+
+def test_a_shops_one_line_description_is_a_guess_and_says_so():
+    (draft,) = drafts(("Part Number", "Maker", "Description"), ("ABQ32-16M-09", "Able", "XTAL 16.000MHZ 9PF 10PPM"))
+    load = next(each for each in draft.candidates if each.field == "load_capacitance_pf")
+    assert (load.typ, load.inferred, load.doubts) == (9.0, True, ("no label stands beside this amount",))

@@ -1,0 +1,128 @@
+from building import bounds, document, line, table
+
+from extract.blocks import read_blocks
+from extract.parts import parts_of
+
+
+def found(*blocks, headers=()):
+    return parts_of(read_blocks(document(*blocks, headers=headers)))
+
+
+VALUES = table(
+    ("Nominal frequency", "16 MHz"),
+    ("Vibration mode", "AT-cut, fundamental"),
+    ("Load capacitance", "9 pF"),
+    ("ESR", "60 Ω max."),
+    ("Drive level", "100 µW max."),
+)
+
+
+def test_a_part_has_its_identity_from_the_lines_around_the_table():
+    (part,) = found(line("ABQ32-16.000-9"), line("Quartz crystal 3.2 x 2.5 mm", "Able Timing Ltd"), VALUES).parts
+    assert (part.part_number, part.maker, part.package) == ("ABQ32-16.000-9", "Able Timing Ltd", "3.2 x 2.5 mm")
+    assert (part.mode, part.cut, part.resonance) == ("fundamental", "AT", "load")
+
+
+def test_a_part_offered_in_two_modes_has_none():
+    rows = table(
+        ("Frequency range", "8 to 75 MHz"),
+        ("Mode", "Fundamental or 3rd overtone"),
+        ("ESR", "60 Ω"),
+        ("Load capacitance", "9 pF"),
+    )
+    (part,) = found(line("ABQ49"), rows).parts
+    assert part.mode is None
+
+
+def test_a_series_resonant_part_has_no_load():
+    rows = table(("Frequency", "16 MHz"), ("Load capacitance", "series resonance"), ("ESR", "60 Ω max."))
+    (part,) = found(line("ABQ49-16"), rows).parts
+    assert part.resonance == "series"
+    assert bounds(part, "load_capacitance_pf") == []
+
+
+def test_load_and_series_both_offered_leave_the_resonance_open():
+    rows = table(("Frequency", "16 MHz"), ("Load capacitance", "10 to 32 pF or series resonance"), ("ESR", "60 Ω max."))
+    (part,) = found(line("ABQ49-16"), rows).parts
+    assert part.resonance is None
+
+
+def test_series_resonance_on_request_is_not_offered():
+    rows = table(
+        ("Frequency", "16 MHz"), ("Load capacitance", "16 pF (series resonance on request)"), ("ESR", "60 Ω max.")
+    )
+    (part,) = found(line("ABQ49-16"), rows).parts
+    assert part.resonance == "load"
+
+
+def test_what_is_stated_for_all_goes_to_every_part_of_a_list():
+    common = table(("Shunt capacitance", "3 pF max."), ("Storage temperature", "-40 to +125 °C"))
+    rows = table(
+        ("Part number", "Frequency", "ESR max."), ("ABQ32-12M", "12 MHz", "80 Ω"), ("ABQ32-16M", "16 MHz", "60 Ω")
+    )
+    parts = found(line("All parts"), common, rows).parts
+    assert [(part.part_number, bounds(part, "shunt_capacitance_pf")) for part in parts] == [
+        ("ABQ32-12M", [(None, None, 3.0)]),
+        ("ABQ32-16M", [(None, None, 3.0)]),
+    ]
+
+
+def test_a_listed_part_takes_only_the_band_of_its_own_frequency():
+    bands = table(("Frequency range (MHz)", "ESR max. (Ω)"), ("8 - 13.999", "100"), ("14 - 40", "60"))
+    rows = table(("Part number", "Frequency", "CL (pF)"), ("ABQ32-12M", "12 MHz", "9"), ("ABQ32-16M", "16 MHz", "9"))
+    parts = found(rows, line("ESR"), bands).parts
+    assert [bounds(part, "esr_ohm") for part in parts] == [[(None, None, 100.0)], [(None, None, 60.0)]]
+
+
+def test_models_in_columns_are_parts_with_shared_values():
+    rows = (
+        ("Item", "ABQ-210", "ABQ-320"),
+        ("Frequency", "16 MHz", "12 MHz"),
+        ("Package", "2.0 x 1.6 mm", "3.2 x 2.5 mm"),
+        ("ESR", "80 Ω max.", "60 Ω max."),
+        ("Ageing", "±1 ppm / year", None),
+    )
+    parts = found(table(*rows, spans={(4, 1): (1, 2)})).parts
+    assert [(part.part_number, part.package, bounds(part, "esr_ohm")) for part in parts] == [
+        ("ABQ-210", "2.0 x 1.6 mm", [(None, None, 80.0)]),
+        ("ABQ-320", "3.2 x 2.5 mm", [(None, None, 60.0)]),
+    ]
+    assert all(bounds(part, "ageing_ppm") == [(-1.0, None, 1.0)] for part in parts)
+
+
+def test_a_clock_oscillator_gives_no_part_and_a_note_says_so():
+    rows = table(
+        ("Output frequency", "25 MHz"),
+        ("Supply voltage", "3.3 V"),
+        ("Duty cycle", "45 to 55 %"),
+        ("Storage temperature", "-40 to +85 °C"),
+    )
+    result = found(line("ABO32 crystal oscillator"), rows)
+    assert result.parts == []
+    assert "an oscillator, no crystal" in result.notes[0].message
+
+
+def test_an_oscillator_among_listed_crystals_is_passed_over():
+    rows = table(
+        ("Part number", "Kind", "Frequency", "Load capacitance", "Supply voltage"),
+        ("ABQ32-12M", "crystal", "12 MHz", "9 pF", "-"),
+        ("ABO32-25M", "clock oscillator", "25 MHz", "15 pF", "3.3 V"),
+    )
+    result = found(rows)
+    assert [part.part_number for part in result.parts] == ["ABQ32-12M"]
+    assert "ABO32-25M" in result.notes[0].message
+
+
+def test_values_under_an_ordering_heading_are_options_only():
+    key = table(("Ordering code", None), ("Tolerance", "1 = ±10 ppm, 2 = ±20 ppm"), ("Load", "A = 8 pF, B = 12 pF"))
+    stated = table(("Frequency", "16 MHz"), ("ESR", "60 Ω max."), ("Frequency tolerance", "±30 ppm"))
+    (part,) = found(line("ABQ32 series"), stated, line("How to order", heading=True), key).parts
+    held = {each.field: (each.min, each.max, each.options) for each in part.readings}
+    assert held["frequency_tolerance_ppm"] == (-30.0, 30.0, ())
+    assert held["load_capacitance_pf"] == (None, None, (8.0, 12.0))
+
+
+def test_reliability_tests_state_nothing():
+    tests = table(("Low temperature", "-40 ±3 °C, 96 h"), ("Operating temperature", "-55 to 125 °C, 1000 cycles"))
+    (part,) = found(line("ABQ32-16M"), VALUES, line("Reliability", heading=True), tests).parts
+    assert bounds(part, "operating_temperature_c") == []

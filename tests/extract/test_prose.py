@@ -1,0 +1,79 @@
+import pytest
+
+from extract.candidates import entry_candidates
+from extract.entries import Piece
+from extract.model import Where
+from extract.prose import loose_in_prose, pair_entries, split_pairs
+
+HERE = Where(line=1)
+
+
+def held(text):
+    """Field and bounds of everything that a text states beside a label."""
+    return [(each.field, each.bounds) for entry in pair_entries(Piece(text, HERE)) for each in entry_candidates(entry)]
+
+
+def test_keys_and_values_on_one_line_come_apart():
+    pairs, _ = split_pairs("P/N=ABQ3-16M FREQ=16.000MHZ CL=8PF")
+    assert pairs == [("P/N", "ABQ3-16M"), ("FREQ", "16.000MHZ"), ("CL", "8PF")]
+
+
+@pytest.mark.parametrize(
+    ("text", "read"),
+    [
+        ("Load capacitance: 7 pF", ("load_capacitance_pf", (None, 7.0, None, ()))),
+        ("It has a load capacitance of 9 pF and a low price.", ("load_capacitance_pf", (None, 9.0, None, ()))),
+        (
+            "±10 ppm tolerance at 25 °C and ±15 ppm over temperature",
+            ("frequency_tolerance_ppm", (-10.0, None, 10.0, ())),
+        ),
+        ("The ESR is 60 ohms at most, and the case is small.", ("esr_ohm", (None, None, 60.0, ()))),
+        (
+            "Die Lastkapazität beträgt wahlweise 12, 16 oder 20 pF.",
+            ("load_capacitance_pf", (None, None, None, (12.0, 16.0, 20.0))),
+        ),
+        ("la resistenza in serie di 70 kohm massima (42 kohm tipica)", ("esr_ohm", (None, 42000.0, 70000.0, ()))),
+        ("谐振电阻：≤50Ω", ("esr_ohm", (None, None, 50.0, ()))),
+    ],
+)
+def test_a_label_finds_its_amount(text, read):
+    assert read in held(text)
+
+
+def test_each_label_takes_its_own_amount():
+    found = held("tolerance ±10 ppm stability ±20 ppm")
+    assert found == [
+        ("frequency_tolerance_ppm", (-10.0, None, 10.0, ())),
+        ("frequency_stability_ppm", (-20.0, None, 20.0, ())),
+    ]
+
+
+def test_bands_and_their_values_in_a_dump_are_paired():
+    text = "Motional resistance R1 8.0 MHz to 11.9 MHz 12.0 MHz to 20.0 MHz 100 Ω max. 60 Ω max. Shunt capacitance 5 pF"
+    found = [
+        each for entry in pair_entries(Piece(text, HERE)) for each in entry_candidates(entry) if each.field == "esr_ohm"
+    ]
+    assert [(each.when.frequency_mhz, each.max) for each in found] == [((8.0, 11.9), 100.0), ((12.0, 20.0), 60.0)]
+
+
+def test_a_formula_is_no_value():
+    assert held("Frequency at temperature T: Δf/f = B (T - T0)². At -20 °C the shift is -71 ppm.") == []
+
+
+def loose(text):
+    return [(each.field, each.min, each.typ, each.max) for each in loose_in_prose(Piece(text, HERE))]
+
+
+def test_ppm_over_a_range_is_the_stability_and_gives_the_range():
+    assert loose("kept within ±50 ppm from -20 °C to +70 °C.") == [
+        ("frequency_stability_ppm", -50.0, None, 50.0),
+        ("operating_temperature_c", -20.0, None, 70.0),
+    ]
+
+
+def test_what_is_only_on_request_is_not_offered():
+    assert loose("Other frequencies from 4 MHz to 24 MHz are available on request.") == []
+
+
+def test_two_frequencies_without_a_label_are_none():
+    assert loose("We stock 12 MHz. We also stock 16 MHz.") == []

@@ -1,0 +1,159 @@
+from building import table
+
+from extract.candidates import entry_candidates
+from extract.entries import Entry, Key, Listing
+from extract.lists import listing_drafts
+from extract.tables import read_table
+
+
+def readings(found):
+    """(field, min, typ, max, options) of every entry of a table."""
+    return [(each.field, *each.bounds) for item in found if isinstance(item, Entry) for each in entry_candidates(item)]
+
+
+def test_min_typ_max_columns_make_one_reading():
+    found = read_table(
+        table(
+            ("Parameter", "Symbol", "Min", "Typ", "Max", "Unit"), ("Shunt capacitance", "C0", "0.6", "0.8", "1.2", "pF")
+        )
+    )
+    assert readings(found) == [("shunt_capacitance_pf", 0.6, 0.8, 1.2, ())]
+
+
+def test_columns_may_stand_in_any_order():
+    found = read_table(table(("Unit", "Max", "Item"), ("Ω", "60", "ESR"), ("pF", "3", "Shunt capacitance")))
+    assert readings(found) == [("esr_ohm", None, None, 60.0, ()), ("shunt_capacitance_pf", None, None, 3.0, ())]
+
+
+def test_a_value_merged_over_min_typ_max_is_typical():
+    rows = (("Parameter", "Min", "Typ", "Max", "Unit"), ("Load capacitance", "10", None, None, "pF"))
+    found = read_table(table(*rows, spans={(1, 1): (1, 3)}))
+    assert readings(found) == [("load_capacitance_pf", None, 10.0, None, ())]
+
+
+def test_a_heading_of_two_rows_is_read_together():
+    rows = (
+        ("Parameter", "Value", None, None, "Unit"),
+        (None, "Min.", "Typ.", "Max.", None),
+        ("Motional resistance", None, "20", "50", "Ω"),
+    )
+    found = read_table(table(*rows, spans={(0, 0): (2, 1), (0, 1): (1, 3), (0, 4): (2, 1)}))
+    assert readings(found) == [("esr_ohm", None, 20.0, 50.0, ())]
+
+
+def test_a_head_that_says_max_governs_all_rows_but_nominal_ones():
+    found = read_table(
+        table(
+            ("PARAMETERS", "MAX (unless otherwise noted)"), ("Shunt capacitance", "6 pF"), ("Load capacitance", "16 pF")
+        )
+    )
+    assert readings(found) == [
+        ("shunt_capacitance_pf", None, None, 6.0, ()),
+        ("load_capacitance_pf", None, 16.0, None, ()),
+    ]
+
+
+def test_pairs_without_a_heading_are_read():
+    found = read_table(
+        table(("Nominal frequency", "12.000 MHz"), ("ESR", "50 Ω max."), ("Storage temperature", "-40 to +85 °C"))
+    )
+    assert readings(found) == [
+        ("frequency_mhz", None, 12.0, None, ()),
+        ("esr_ohm", None, None, 50.0, ()),
+        ("storage_temperature_c", -40.0, None, 85.0, ()),
+    ]
+
+
+def test_a_band_beside_the_value_says_where_it_holds():
+    rows = (
+        ("Load capacitance", "8 pF", None),
+        ("ESR", "8 to 12 MHz", "100 Ω max."),
+        (None, "12 to 20 MHz", "60 Ω max."),
+    )
+    found = read_table(table(*rows, spans={(1, 0): (2, 1)}))
+    held = [
+        (each.when.frequency_mhz, each.max)
+        for item in found
+        if isinstance(item, Entry)
+        for each in entry_candidates(item)
+    ]
+    assert held[1:] == [((8.0, 12.0), 100.0), ((12.0, 20.0), 60.0)]
+
+
+def test_bands_and_values_stacked_in_two_cells_are_paired_line_by_line():
+    found = read_table(
+        table(
+            ("Item", "Condition", "Value"),
+            ("ESR", "8~12MHz\n12~20MHz", "100 Ω max.\n60 Ω max."),
+            ("C0", None, "3 pF max."),
+        )
+    )
+    held = [
+        (each.when.frequency_mhz, each.max)
+        for item in found
+        if isinstance(item, Entry)
+        for each in entry_candidates(item)
+    ]
+    assert held == [((8.0, 12.0), 100.0), ((12.0, 20.0), 60.0), (None, 3.0)]
+
+
+def test_models_side_by_side_keep_their_own_values():
+    rows = (
+        ("Item", "ABQ-210", "ABQ-320", "ABQ-321"),
+        ("Load capacitance", "6 pF to 10 pF", "8 pF to 20 pF", None),
+        ("Level of drive", "100 µW max.", "200 µW max.", "300 µW max."),
+    )
+    found = read_table(table(*rows, spans={(1, 2): (1, 2)}))
+    subjects = {
+        (each.field, each.subject): each.bounds[:3]
+        for item in found
+        if isinstance(item, Entry)
+        for each in entry_candidates(item)
+    }
+    assert subjects[("load_capacitance_pf", "ABQ-321")] == (8.0, None, 20.0)
+    assert subjects[("drive_level_uw", "ABQ-210")] == (None, None, 100.0)
+
+
+def test_bands_across_the_top_are_turned_round():
+    rows = (
+        ("Frequency range", "4.2 to 6.5 MHz", "6.6 to 33 MHz", "33.1 to 80 MHz"),
+        ("Mode", "Fundamental", None, "3rd overtone"),
+        ("R1", "150 Ω max.", "60 Ω max.", "90 Ω max."),
+    )
+    (listing,) = [item for item in read_table(table(*rows, spans={(1, 1): (1, 2)})) if isinstance(item, Listing)]
+    (draft,) = listing_drafts(listing)
+    assert [(each.when.frequency_mhz, each.when.mode, each.max) for each in draft.candidates] == [
+        ((4.2, 6.5), "fundamental", 150.0),
+        ((6.6, 33.0), "fundamental", 60.0),
+        ((33.1, 80.0), "third overtone", 90.0),
+    ]
+
+
+def test_two_pairs_of_columns_side_by_side_are_one_band_table():
+    rows = (
+        ("Frequency (MHz)", "ESR max. (Ω)", "Frequency (MHz)", "ESR max. (Ω)"),
+        ("6.000 - 7.999", "115", "14.000 - 19.999", "45"),
+        ("8.000 - 13.999", "85", "20.000 - 48.000", "35"),
+    )
+    drafts = [draft for item in read_table(table(*rows)) if isinstance(item, Listing) for draft in listing_drafts(item)]
+    held = {each.when.frequency_mhz: each.max for draft in drafts for each in draft.candidates}
+    assert held == {(6.0, 7.999): 115.0, (8.0, 13.999): 85.0, (14.0, 19.999): 45.0, (20.0, 48.0): 35.0}
+
+
+def test_a_table_of_codes_is_an_ordering_key():
+    found = read_table(table(("Tolerance", "Load"), ("A = ±10 ppm", "1 = 8 pF"), ("B = ±20 ppm", "2 = 12 pF")))
+    assert [(item.label.text, [code for code, _ in item.choices]) for item in found if isinstance(item, Key)] == [
+        ("Tolerance", ["A", "B"]),
+        ("Load", ["1", "2"]),
+    ]
+
+
+def test_drive_level_dependency_rows_state_no_drive_level():
+    rows = (
+        ("Drive level", "10 µW (100 µW max.)", None),
+        ("Drive level dependency (DLD):", None, "9 steps, 0.1 µW to 400 µW"),
+        ("frequency, max - min", "±8 ppm", None),
+        ("greatest ESR over DLD", "120 Ω", None),
+        ("Ageing", "±3 ppm first year", None),
+    )
+    assert [each[0] for each in readings(read_table(table(*rows)))] == ["drive_level_uw", "ageing_ppm"]
