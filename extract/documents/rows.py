@@ -23,13 +23,19 @@ def rows_parted(pieces: Sequence[Piece]) -> list[Piece]:
     for row in range(count - 1, -1, -1):
         own = [piece for piece in result if piece.cell.row == row and piece.cell.row_span == 1]
         levels = _levels(own)
-        borders = [] if levels else _row_borders(own, strict=count > FEW_ROWS)
+        borders = [] if levels or _has_one_label(own) else _row_borders(own, strict=count > FEW_ROWS)
         levels = levels if levels or borders else _fresh_levels(own)
         if len(levels) > 1:
             result = _row_parted(result, own, row, levels)
         elif borders:
             result = _cut(result, own, row, borders)
     return result
+
+
+def _has_one_label(own: Sequence[Piece]) -> bool:
+    """Tell whether the first filled cell holds one line while others hold more."""
+    filled = sorted((piece for piece in own if piece.lines), key=lambda piece: piece.cell.column)
+    return bool(filled) and len(filled[0].lines) == 1 and any(len(piece.lines) > 1 for piece in filled)
 
 
 def _levels(own: Sequence[Piece]) -> list[float]:
