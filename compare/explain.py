@@ -187,9 +187,18 @@ def how(key: str, subject: Subject) -> str:
     line = HOW[key](subject)
     if all(math.isnan(end) for end in subject.ends[key]):
         return f"there is none: {NONE.get(key, 'the circuit cannot oscillate with this crystal')}; {line}"
+    if any(math.isnan(end) for end in subject.ends[key]):
+        return f"{line}; one end without bound: {OPEN.get(key, 'some corner cannot oscillate')}"
     return line
 
 
+OPEN = {
+    "startup_ms": "some corner does not start",
+    "greatest_esr_ohm": "some corner drives no R1 at all",
+    "allowed_esr_ohm": "some corner drives no R1 at all",
+    "greatest_transconductance_ms": "nothing bounds it, or some corner cannot oscillate",
+    "parallel_resonance_mhz": "C0 may be as good as none",
+}
 NONE = {
     "startup_ms": "it does not start",
     "greatest_esr_ohm": "no R1 would be low enough",

@@ -170,3 +170,17 @@ def test_no_point_inside_the_tolerances_falls_outside_the_corners(signs, gm):
     for key in KEYS:
         value, slip = float(got[key]), 1e-9 * abs(float(got[key]))
         assert found[key]["low"] - slip <= value <= found[key]["high"] + slip, key
+
+
+def test_an_end_without_bound_says_why():
+    found = reviewed(EXACT, circuit(transconductance_ms=[0.2, 8.0]))
+    assert found["startup_ms"]["how"].endswith("one end without bound: some corner does not start")
+
+
+def test_a_circuit_that_cannot_oscillate_says_so():
+    """T09 and M23 of the reference circuits start at no nominal gain; here R1 is far past 1/(2 ω C0) = 3.3 kΩ."""
+    found = reviewed(usual(exactly("esr_ohm", 20000.0)))
+    assert found["critical_transconductance_ms"]["how"].startswith("there is none: the circuit cannot oscillate")
+    assert found["startup_ms"]["how"].startswith("there is none: it does not start")
+    assert [found["slack"][key] for key in ("gain_ratio", "startup_ms")] == [0.0, 0.0]
+    assert found["verdict"] == "falls short"
