@@ -5,6 +5,7 @@ Everything here takes the dictionaries of `ranking.rank` and `review.review` (th
 
 from __future__ import annotations
 
+import math
 import re
 from collections.abc import Mapping, Sequence
 from dataclasses import dataclass
@@ -32,7 +33,7 @@ from compare.figures import (
 )
 from compare.palette import Palette
 from compare.shown import NAMES, short_name
-from extract.model import FIELD_NAMES
+from extract.model import FIELD_NAMES, SpecSheet
 
 Row = Mapping[str, Any]
 ENDS = ("low", "mid", "high")
@@ -143,6 +144,49 @@ def _nearest(rows: Sequence[Row]) -> str:
 def row_name(row: Row) -> str:
     """The part number, else the file's name."""
     return str(row["part_number"] or short_name(row["file"]))
+
+
+Identity = tuple[str, str | None, int]
+
+
+def identities(rows: Sequence[Row]) -> list[Identity]:
+    """What each row is known by while the ranking changes: file, part number, and a count where both are the same."""
+    counts: dict[tuple[str, str | None], int] = {}
+    known: list[Identity] = []
+    for row in rows:
+        named = (row["file"], row["part_number"])
+        counts[named] = counts.get(named, 0) + 1
+        known.append((*named, counts[named]))
+    return known
+
+
+def review_for(row: Row, reviews: Sequence[Row]) -> Row | None:
+    """The review of a ranked row: of parts without a number, or twice in a file, the one with the row's own figures."""
+    return next((one for one in reviews if _is_same(one, row)), None)
+
+
+def _is_same(one: Row, other: Row) -> bool:
+    if any(one[key] != other[key] for key in ("file", "part_number", "package", "mode", "verdict")):
+        return False
+    # Worked out alone or among others, a figure may differ in its last bit.
+    slacks = [(one["slack"].get(key), other["slack"].get(key)) for key in {*one["slack"], *other["slack"]}]
+    return all(a == b or (a is not None and b is not None and math.isclose(a, b, rel_tol=1e-9)) for a, b in slacks)
+
+
+def sheets_of(row: Row, sheets: Sequence[SpecSheet]) -> list[SpecSheet]:
+    """The row's sheet with the row's part alone, so that one part is worked out and not a whole catalogue."""
+    return [
+        sheet.model_copy(
+            update={"parts": tuple(part for part in sheet.parts if part.part_number == row["part_number"])}
+        )
+        for sheet in sheets
+        if sheet.file == row["file"]
+    ]
+
+
+def shown_of(count: int, shown: int) -> str:
+    """A sentence where not every row is shown; "" where all are."""
+    return f"The first {shown} of {count} are shown; the saved tables hold all of them." if count > shown else ""
 
 
 def tightest_text(row: Row) -> str:

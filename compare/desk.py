@@ -14,7 +14,7 @@ from pathlib import Path
 from typing import Any
 
 from compare.bench import Bench, BenchError, read_bench
-from compare.benchfile import toml_text
+from compare.benchfile import Fault, toml_text
 from compare.figures import frequency_text
 from compare.typed import Field, Typed, fields, shown, understand
 
@@ -90,13 +90,19 @@ class Desk:
         try:
             return read_bench(text, "the circuit"), text, faults
         except BenchError as wrong:
-            return None, text, faults | {field_key(fault.key): fault.message for fault in wrong.faults}
+            return None, text, faults | {field_key(fault.key): _in_short(fault) for fault in wrong.faults}
 
 
 def field_of(key: str) -> Field:
     """The field behind a key; a condition's number is no part of its field's key."""
     parts = key.split(".")
     return fields()[".".join(["condition", *parts[2:]]) if parts[0] == "condition" else key]
+
+
+def _in_short(fault: Fault) -> str:
+    if fault.key in ("requirement", "requirement.frequency_mhz") and fault.message.startswith("must be given"):
+        return "wanted first: nothing can be judged without it"
+    return fault.message
 
 
 def _place(key: str) -> Path_:

@@ -19,7 +19,8 @@ COPY = """export default function({data, parentElement}) {
 COPY_LOOK = """button{font:inherit;font-size:.875rem;color:var(--st-text-color);background:var(--st-background-color);
   cursor:pointer;border:1px solid var(--st-border-color);border-radius:3px;padding:.42rem .75rem}"""
 
-PART_PLACE = tuple[str, str | None]
+# More rows would slow every press down; the saved tables hold all.
+MOST_ROWS = 500
 
 
 def ready() -> Bench | None:
@@ -63,8 +64,8 @@ def choose_view() -> None:
 
 
 def ranked_rows(result: dict[str, Any]) -> dict[str, Any]:
-    rows = result["rows"][:500]
-    places = [place_of(row) for row in rows]
+    rows = result["rows"][:MOST_ROWS]
+    places = answers.identities(rows)
     start_at = places.index(st.session_state.chosen) if st.session_state.chosen in places else 0
     order = hashlib.sha256(repr(places).encode()).hexdigest()[:12]
     column = st.column_config
@@ -87,27 +88,33 @@ def ranked_rows(result: dict[str, Any]) -> dict[str, Any]:
             "Tightest": column.TextColumn(width=168),
         },
     )
-    row: dict[str, Any] = rows[session.selected_row(picked, len(rows))]
-    st.session_state.chosen = place_of(row)
-    st.markdown(f":gray[:small[{answers.strips_legend(rows)}]]")
-    save_ranking(result["rows"])
+    at = session.selected_row(picked, len(rows))
+    st.session_state.chosen = places[at]
+    legend = f"{answers.strips_legend(rows)} {answers.shown_of(len(result['rows']), len(rows))}"
+    st.markdown(f":gray[:small[{legend}]]")
+    save_ranking(result["rows"], rows)
+    row: dict[str, Any] = rows[at]
     return row
 
 
-def place_of(row: dict[str, Any]) -> PART_PLACE:
-    return row["file"], row["part_number"]
+def save_ranking(rows: list[dict[str, Any]], shown: list[dict[str, Any]]) -> None:
+    """The rows shown for the clipboard; all rows as files, made when they are asked for."""
 
+    def workbook() -> bytes:
+        return export.as_xlsx({"ranking": export.rank_table(rows), "sources": export.sources_table(rows)})
 
-def save_ranking(rows: list[dict[str, Any]]) -> None:
-    table, sources = export.rank_table(rows), export.sources_table(rows)
     with st.container(horizontal=True, vertical_alignment="center", gap="small"):
-        copy = st.components.v2.component(
-            "quartzfolio_copy", html="<button>Copy table</button>", js=COPY, css=COPY_LOOK
+        html = "<button>Copy table</button>"
+        copy = st.components.v2.component("quartzfolio_copy", html=html, js=COPY, css=COPY_LOOK)
+        copy(data=export.as_tabs(export.rank_table(shown)), key="copy_ranking", width="content")
+        st.download_button("Save .xlsx", workbook, "ranking.xlsx", key="save_xlsx", on_click="ignore")
+        st.download_button(
+            "Save .csv",
+            lambda: export.as_csv(export.rank_table(rows)),
+            "ranking.csv",
+            key="save_csv",
+            on_click="ignore",
         )
-        copy(data=export.as_tabs(table), key="copy_ranking", width="content")
-        workbook = export.as_xlsx({"ranking": table, "sources": sources})
-        st.download_button("Save .xlsx", workbook, "ranking.xlsx", key="save_xlsx")
-        st.download_button("Save .csv", export.as_csv(table), "ranking.csv", key="save_csv")
 
 
 def others(result: dict[str, Any]) -> None:
@@ -121,13 +128,11 @@ def cautions() -> None:
     st.markdown(f":gray[:small[{' '.join(CAUTIONS)} {PRIVACY}]]")
 
 
-def review_of(row: dict[str, Any], bench: Bench) -> dict[str, Any] | None:
-    """The review of the ranked part, worked out for its sheet alone."""
-    own = [sheet for sheet in session.sheets() if sheet.file == row["file"]]
+def review_of(row: dict[str, Any], bench: Bench) -> answers.Row | None:
+    """The review of the ranked part, worked out for it alone."""
+    own = answers.sheets_of(row, session.sheets())
     result = session.guarded("working the part out", lambda: session.reviewed(session.key_of(bench, own), own, bench))
-    if result is None:
-        return None
-    return next((one for one in result["reviews"] if place_of(one) == place_of(row)), None)
+    return None if result is None else answers.review_for(row, result["reviews"])
 
 
 def why(row: dict[str, Any], bench: Bench) -> None:
@@ -147,7 +152,7 @@ def why(row: dict[str, Any], bench: Bench) -> None:
         session.go("review")
 
 
-def reasons_of(review: dict[str, Any], bench: Bench) -> None:
+def reasons_of(review: answers.Row, bench: Bench) -> None:
     """The reasons that decide in full; those that meet a step away."""
     rows = answers.judged(review, bench)
     deciding = [one for one in rows if not one.meets]
@@ -161,14 +166,14 @@ def reasons_of(review: dict[str, Any], bench: Bench) -> None:
             st.markdown(f":small[▲ **{pieces.plain(one.requirement)}**: {pieces.plain(one.why)}]")
 
 
-def slack_chart(review: dict[str, Any], bench: Bench) -> None:
+def slack_chart(review: answers.Row, bench: Bench) -> None:
     rows = answers.slack_rows(review, bench)
     chart = charts.dressed(charts.slack_chart(rows, session.palette()), session.palette())
     st.altair_chart(chart, theme=None, width="content", key="slack", alt="How many times over each requirement is met")
     st.markdown(":gray[:small[▮ worst case · ○ nominal · hatched: not met · dotted: not known]]")
 
 
-def load_chart(review: dict[str, Any], bench: Bench) -> None:
+def load_chart(review: answers.Row, bench: Bench) -> None:
     own = [sheet for sheet in session.sheets() if sheet.file == review["file"]]
     offer = next((one for one in find_offers(own, bench).offers if one.part.part_number == review["part_number"]), None)
     if offer is None:
@@ -194,7 +199,7 @@ def review_view() -> None:
         session.title(f"{pieces.plain(answers.choose_heading(result, bench))}")
         others(result)
         return
-    rows = {place_of(row): row for row in result["rows"]}
+    rows = dict(zip(answers.identities(result["rows"]), result["rows"], strict=True))
     if st.session_state.chosen not in rows:
         st.session_state.chosen = next(iter(rows))
     review = review_of(rows[st.session_state.chosen], bench)
@@ -209,8 +214,8 @@ def review_view() -> None:
         to_do(review)
 
 
-def choose_part(rows: dict[PART_PLACE, dict[str, Any]]) -> None:
-    def name(place: PART_PLACE) -> str:
+def choose_part(rows: dict[answers.Identity, dict[str, Any]]) -> None:
+    def name(place: answers.Identity) -> str:
         return answers.place_heading(rows[place])
 
     st.session_state.review_part = st.session_state.chosen
@@ -221,7 +226,7 @@ def choose() -> None:
     st.session_state.chosen = st.session_state.review_part
 
 
-def judged(review: dict[str, Any], bench: Bench) -> None:
+def judged(review: answers.Row, bench: Bench) -> None:
     session.title(f"{pieces.plain(answers.review_heading(review))}")
     st.markdown(pieces.plain(answers.short_of(review)))
     st.html(pieces.judged_html(answers.judged(review, bench)))
@@ -232,7 +237,7 @@ def judged(review: dict[str, Any], bench: Bench) -> None:
     st.html(pieces.numbers_html(answers.numbers(review, bench)))
 
 
-def to_do(review: dict[str, Any]) -> None:
+def to_do(review: answers.Row) -> None:
     """What uses it up, what would help, whom to ask, and what to heed."""
     if questions := answers.question_lines(review):
         session.section("Ask the maker")

@@ -232,3 +232,27 @@ def test_bench_keys_in_messages_are_said_by_the_names_of_their_fields():
     message = "cannot be told: circuit.input_capacitor_pf not known; give circuit.condition[1].swing_v"
     assert answers.told(message) == "cannot be told: “Fitted, A–0” not known; give “Swing”"
     assert answers.told("measured.pairs: -5 ppm") == "measured.pairs: −5 ppm"
+
+
+def test_parts_of_the_same_name_are_told_apart():
+    rows = [hand_made.row(1, None), hand_made.row(2, None, slack={"margin": 1.5}), hand_made.row(3, "A")]
+    file = hand_made.SHEET.file
+    assert answers.identities(rows) == [(file, None, 1), (file, None, 2), (file, "A", 1)]
+    reviews = [
+        hand_made.review(part_number=None, verdict="falls short"),
+        hand_made.review(part_number=None, slack={"margin": 1.5}),
+    ]
+    assert answers.review_for(rows[1], reviews) is reviews[1]
+    assert answers.review_for(rows[2], reviews) is None
+
+
+def test_only_the_rows_own_part_is_worked_out():
+    other = hand_made.PART.model_copy(update={"part_number": "B"})
+    catalogue = hand_made.SHEET.model_copy(update={"parts": (hand_made.PART, other)})
+    (sheet,) = answers.sheets_of(MEETS, [catalogue, hand_made.LOCKED])
+    assert [part.part_number for part in sheet.parts] == ["MRB25-260-08H"]
+
+
+def test_rows_that_are_not_shown_are_said():
+    assert answers.shown_of(20_000, 500) == "The first 500 of 20000 are shown; the saved tables hold all of them."
+    assert answers.shown_of(9, 9) == ""

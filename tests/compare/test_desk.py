@@ -101,7 +101,8 @@ def test_a_blank_desk_is_no_bench_and_no_fault():
 
 
 def test_a_circuit_without_a_frequency_asks_for_it_at_its_field():
-    assert set(Desk({"circuit.swing_v": "0.5"}).faults) == {"requirement.frequency_mhz"}
+    faults = Desk({"circuit.swing_v": "0.5"}).faults
+    assert faults == {"requirement.frequency_mhz": "wanted first: nothing can be judged without it"}
 
 
 @pytest.mark.parametrize("text", [hand_made.BENCH_TEXT, FULL], ids=["radio", "everything"])
