@@ -9,7 +9,7 @@ from typing import Any
 from xml.sax.saxutils import escape
 
 from corpus_pages import cells
-from corpus_shorthand import PADS, keep, part
+from corpus_shorthand import PADS, Json, keep, part
 
 
 def _saved(document: Any) -> bytes:
@@ -289,51 +289,8 @@ Refusion|260 °C crête, 10 s, 3 passages|Δf ≤ ± 3 ppm""",
     keep("homologation_fr.docx", _saved(document), parts, "fr", layout)
 
 
-def three_headings() -> None:
-    from docx import Document
-
-    document = Document()
-    document.add_heading("Thornwick Dell: special crystals", 0)
-    document.add_heading("1 Low frequency", 1)
-    document.add_heading("1.1 TDL-77K5 for time-signal receivers", 2)
-    _docx_table(
-        document,
-        """Frequency|77.5 kHz
-Type|Tuning fork, cylinder 2.0 x 6.0 mm
-Frequency tolerance at 25 °C|±30 ppm
-Load capacitance|12.5 pF
-Series resistance|30 kΩ max.
-Shunt capacitance|0.9 pF typ.
-Motional capacitance|1.1 fF typ.
-Turnover temperature|25 ±5 °C
-Temperature coefficient|-0.034 ±0.006 ppm/°C²
-Drive level|1 µW max.
-Operating temperature|-10 to +60 °C""",
-    )
-    document.add_heading("2 Fundamental", 1)
-    document.add_heading("2.1 TDH-4M0 in HC-49/U", 2)
-    document.add_paragraph(
-        "A 4.000 MHz AT-cut fundamental crystal for a load of 30 pF. Its tolerance is ±20 ppm at 25 °C, with a "
-        "stability of ±30 ppm over -20 to +70 °C. ESR is 120 Ω max., C0 7 pF max. and drive level 1 mW max., 100 µW "
-        "typical. Ageing ±5 ppm per year."
-    )
-    document.add_heading("3 Overtone", 1)
-    document.add_heading("3.1 TDV-100M fifth overtone", 2)
-    _docx_table(
-        document,
-        """Frequency|100.000 MHz
-Mode|5th overtone, AT cut
-Package|HC-43/U
-Resonance|series
-Frequency tolerance at 25 °C|±10 ppm
-Frequency stability, -20 to +70 °C|±15 ppm
-ESR|60 Ω max.
-C0|4.0 pF typ.
-C1|0.35 fF typ.
-Drive level|0.5 mW max.
-Ageing|±2 ppm first year""",
-    )
-    parts = [
+def _three_parts() -> list[Json]:
+    return [
         part(
             "TDL-77K5",
             """
@@ -389,7 +346,59 @@ Ageing|±2 ppm first year""",
             res="series",
         ),
     ]
-    keep("three_headings_en.docx", _saved(document), parts, "en", "numbered headings, a part under each, one in prose")
+
+
+def three_headings() -> None:
+    from docx import Document
+
+    document = Document()
+    document.add_heading("Thornwick Dell: special crystals", 0)
+    document.add_heading("1 Low frequency", 1)
+    document.add_heading("1.1 TDL-77K5 for time-signal receivers", 2)
+    _docx_table(
+        document,
+        """Frequency|77.5 kHz
+Type|Tuning fork, cylinder 2.0 x 6.0 mm
+Frequency tolerance at 25 °C|±30 ppm
+Load capacitance|12.5 pF
+Series resistance|30 kΩ max.
+Shunt capacitance|0.9 pF typ.
+Motional capacitance|1.1 fF typ.
+Turnover temperature|25 ±5 °C
+Temperature coefficient|-0.034 ±0.006 ppm/°C²
+Drive level|1 µW max.
+Operating temperature|-10 to +60 °C""",
+    )
+    document.add_heading("2 Fundamental", 1)
+    document.add_heading("2.1 TDH-4M0 in HC-49/U", 2)
+    document.add_paragraph(
+        "A 4.000 MHz AT-cut fundamental crystal for a load of 30 pF. Its tolerance is ±20 ppm at 25 °C, with a "
+        "stability of ±30 ppm over -20 to +70 °C. ESR is 120 Ω max., C0 7 pF max. and drive level 1 mW max., 100 µW "
+        "typical. Ageing ±5 ppm per year."
+    )
+    document.add_heading("3 Overtone", 1)
+    document.add_heading("3.1 TDV-100M fifth overtone", 2)
+    _docx_table(
+        document,
+        """Frequency|100.000 MHz
+Mode|5th overtone, AT cut
+Package|HC-43/U
+Resonance|series
+Frequency tolerance at 25 °C|±10 ppm
+Frequency stability, -20 to +70 °C|±15 ppm
+ESR|60 Ω max.
+C0|4.0 pF typ.
+C1|0.35 fF typ.
+Drive level|0.5 mW max.
+Ageing|±2 ppm first year""",
+    )
+    keep(
+        "three_headings_en.docx",
+        _saved(document),
+        _three_parts(),
+        "en",
+        "numbered headings, a part under each, one in prose",
+    )
 
 
 if __name__ == "__main__":

@@ -5,7 +5,7 @@ from __future__ import annotations
 from datetime import UTC, datetime
 
 from corpus_pages import FONTS, Sheet, cells
-from corpus_shorthand import keep, part
+from corpus_shorthand import Json, keep, part
 
 
 def stacked_labels() -> None:
@@ -311,6 +311,52 @@ G = ±30 ppm|G = ±50 ppm|K = -40 to +125 °C|G = 12 pF|
     keep("order_key_boxes_en.pdf", page.bytes(), parts, "en", layout)
 
 
+def _special_parts() -> list[Json]:
+    return [
+        part(
+            "HPS-10M",
+            """
+            f 10
+            tol ±1
+            to 80/85/90
+            esr 70..110
+            c1 0.22
+            l1 1151
+            q >650000
+            c0 2.4/3/3.6
+            dl -/50/200
+            age ±0.05 y=1
+            op -40..90
+            sto -55..100""",
+            maker="Hexapole Precision Quartz",
+            package="HC-43/U",
+            mode="3rd",
+            cut="SC",
+            res="series",
+        ),
+        part(
+            "HPB-24M",
+            """
+            f 24
+            cl 20
+            tol ±20
+            stab ±50 t=0:50
+            op 0..50
+            esr <40
+            c1 4
+            c0 -/2.8/7
+            pull 3.8
+            dl <500
+            age ±5 y=1""",
+            maker="Hexapole Precision Quartz",
+            package="HC-49/U-S",
+            mode="fund",
+            cut="BT",
+            res="load",
+        ),
+    ]
+
+
 def special_cuts() -> None:
     from fpdf import FPDF
 
@@ -365,51 +411,8 @@ Pulling sensitivity at 20 pF|3.8 ppm/pF typ.
 Drive level|500 µW max.
 Ageing|±5 ppm/year"""
     )
-    parts = [
-        part(
-            "HPS-10M",
-            """
-            f 10
-            tol ±1
-            to 80/85/90
-            esr 70..110
-            c1 0.22
-            l1 1151
-            q >650000
-            c0 2.4/3/3.6
-            dl -/50/200
-            age ±0.05 y=1
-            op -40..90
-            sto -55..100""",
-            maker="Hexapole Precision Quartz",
-            package="HC-43/U",
-            mode="3rd",
-            cut="SC",
-            res="series",
-        ),
-        part(
-            "HPB-24M",
-            """
-            f 24
-            cl 20
-            tol ±20
-            stab ±50 t=0:50
-            op 0..50
-            esr <40
-            c1 4
-            c0 -/2.8/7
-            pull 3.8
-            dl <500
-            age ±5 y=1""",
-            maker="Hexapole Precision Quartz",
-            package="HC-49/U-S",
-            mode="fund",
-            cut="BT",
-            res="load",
-        ),
-    ]
     layout = "two parts, a heading and a table each; SC and BT cuts, L1, Q as a power of ten, a range of R1, pulling"
-    keep("sc_and_bt_cuts_en.pdf", bytes(pdf.output()), parts, "en", layout)
+    keep("sc_and_bt_cuts_en.pdf", bytes(pdf.output()), _special_parts(), "en", layout)
 
 
 def contradiction() -> None:

@@ -363,8 +363,8 @@ with ESR ≤ 100 Ω; ask us for a circuit evaluation.</small></p>"""
             """
             f 9.84..40
             cl {12,16,30}
-            tol ±5 flag also=5 also=>5 also=-5/-/- also=<5
-            stab ±5 t=-10:60 flag also=5 also=>5 also=<5
+            tol ±5 flag also=5 also=>5 also={5} also=<5
+            stab ±5 t=-10:60 flag also=5 also=>5 also={5} also=<5
             stab ±15 t=-20:70
             stab ±25 t=-40:85
             op -10..60

@@ -89,8 +89,7 @@ def one_line_interleaved() -> None:
     keep("one_line_interleaved_en.txt", text, parts, "en", "whole sheet on one line, label pairs then value pairs")
 
 
-def column_dump() -> None:
-    text = """Staufenried Quarztechnik
+COLUMNS_DUMPED = """Staufenried Quarztechnik
 SQT-2016
 Datenblatt Ausgabe 4
 Kennwert
@@ -143,6 +142,9 @@ pF
 ppm
 Gehäuse 2,0 x 1,6 x 0,5 mm
 """
+
+
+def column_dump() -> None:
     parts = [
         part(
             "SQT-2016",
@@ -164,11 +166,10 @@ Gehäuse 2,0 x 1,6 x 0,5 mm
             res="load",
         )
     ]
-    keep("column_dump_de.txt", text, parts, "de", "column by column: labels, conditions, values, units")
+    keep("column_dump_de.txt", COLUMNS_DUMPED, parts, "de", "column by column: labels, conditions, values, units")
 
 
-def fullwidth_mail() -> None:
-    text = """件名：水晶振動子のお見積り
+FULLWIDTH_MAIL = """件名：水晶振動子のお見積り
 差出人：黒羽水晶株式会社　営業二課
 
 いつもお世話になっております。ご照会の二品種につきまして下記の通りご回答申し上げます。
@@ -200,6 +201,9 @@ def fullwidth_mail() -> None:
 
 納期：８週間　単価：４２円（３０００個）
 """
+
+
+def fullwidth_mail() -> None:
     parts = [
         part(
             "KB1610-32K",
@@ -238,7 +242,7 @@ def fullwidth_mail() -> None:
             res="load",
         ),
     ]
-    keep("fullwidth_two_parts_ja.txt", text, parts, "ja", "mail in full-width type, two numbered parts")
+    keep("fullwidth_two_parts_ja.txt", FULLWIDTH_MAIL, parts, "ja", "mail in full-width type, two numbered parts")
 
 
 def markdown_two_bounds() -> None:
