@@ -10,7 +10,7 @@ from extract.documents.flow import Item, blocks_of, in_reading_order, items_of
 from extract.documents.model import Line, Table
 from extract.documents.piece import Piece
 from extract.documents.ruled import Grid, grids_of, stacks_of
-from extract.documents.stacks import stack_grids
+from extract.documents.stacks import stack_grids, with_group_heads
 from extract.documents.words import (
     Box,
     Ruling,
@@ -103,7 +103,9 @@ def _arranged(
             rest = _taken(_pieces(grid, rest, width, height), rest, place, tables)
     boxes = [grid for grid in grids if grid.closed and len(grid.xs) == 2]
     frames = [grid.box for grid in boxes if _area(grid.box) > BOXED * width * height and len(grid.ys) <= FRAME_ROWS]
-    for stack in stacks_of(rulings, [item.box for item in tables], frames, [grid.box for grid in boxes]):
+    stacks = stacks_of(rulings, [item.box for item in tables], frames, [grid.box for grid in boxes])
+    rest = with_group_heads(rest, stacks, rulings)
+    for stack in stacks:
         for grid in stack_grids(stack, rest):
             rest = _taken([Piece(cell, _words_in(cell.box, rest)) for cell in grid.cells], rest, place, tables)
     boxed: list[Item] = []

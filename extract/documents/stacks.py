@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 from collections.abc import Sequence
+from dataclasses import replace
 
 from extract.documents.bands import bands_of, bottom_of, stacked, top_of
 from extract.documents.ruled import Grid, GridCell
@@ -97,3 +98,31 @@ def _is_row(band: Sequence[Sequence[Word]], size: float, width: float) -> bool:
 
 def _reach(line: Sequence[Word], pitch: float) -> float:
     return max(0.9 * max(word.size for word in line), 0.6 * pitch)
+
+
+def with_group_heads(
+    words: Sequence[Word], stacks: Sequence[Sequence[Ruling]], rulings: Sequence[Ruling]
+) -> list[Word]:
+    """Words with the heads of column groups as wide as the short line drawn under each, which shows what they span."""
+    widened = list(words)
+    for stack in stacks:
+        x0, x1 = stack[0].x0, stack[0].x1
+        top, bottom = stack[0].top, stack[-1].top
+        for ruling in rulings:
+            within = x0 - 2 <= ruling.x0 and ruling.x1 <= x1 + 2 and top < ruling.top < bottom
+            if ruling.horizontal and within and 30 < ruling.x1 - ruling.x0 < 0.7 * (x1 - x0):
+                widened = _widened(widened, ruling)
+    return widened
+
+
+def _widened(words: list[Word], ruling: Ruling) -> list[Word]:
+    over = [word for word in words if not word.angle and ruling.x0 - 1 <= word.x0 and word.x1 <= ruling.x1 + 1]
+    above = [word for word in over if -0.3 * word.size < ruling.top - word.bottom < word.size]
+    below = [word for word in over if -0.3 * word.size < word.top - ruling.top < 1.5 * word.size]
+    lines = in_lines(above)
+    if len(lines) != 1 or len(split_at_gaps(lines[0])) != 1 or len(split_at_gaps((in_lines(below) or [[]])[0])) < 2:
+        return words
+    first, last = lines[0][0], lines[0][-1]
+    replaced = {id(first): replace(first, x0=ruling.x0)}
+    replaced[id(last)] = replace(replaced.get(id(last), last), x1=ruling.x1)
+    return [replaced.get(id(word), word) for word in words]

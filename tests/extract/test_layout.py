@@ -182,6 +182,23 @@ def test_a_table_with_lines_only_round_head_and_foot_keeps_its_rows():
     assert texts(table) == [head, *[[cell or None for cell in row] for row in body]]
 
 
+def test_a_head_over_a_short_line_spans_the_columns_under_the_line():
+    body = [["C0", "0.6", "0.8", "1.0", "pF"], ["ESR", "", "30", "60", "Ω"], ["Drive", "1", "10", "100", "µW"]]
+    words = [
+        *text("Specification", 240, 100),
+        *rows([["Item", "", "", "", "Unit"]], [54, 204, 254, 304, 354], y=107),
+        *rows([["", "Min", "Typ", "Max", ""], *body], [54, 204, 254, 304, 354], y=114),
+    ]
+    lines = [*(Ruling(50, y, 400, y) for y in (97, 126, 176)), Ruling(200, 111, 345, 111)]
+    table = only_table(blocks(words, lines))
+    head = next(cell for cell in table.cells if cell.text == "Specification")
+    assert (head.row, head.column, head.column_span) == (0, 1, 3)
+    assert texts(table)[1:] == [
+        ["Item", "Min", "Typ", "Max", "Unit"],
+        *[[cell or None for cell in row] for row in body],
+    ]
+
+
 def test_words_in_columns_are_a_table_without_any_line():
     head = ["Parameter", "Min", "Typ", "Max", "Unit"]
     body = [["Load capacitance", "", "8", "", "pF"], ["ESR", "", "", "60", "Ω"], ["C0", "0.6", "0.8", "1.0", "pF"]]
