@@ -243,7 +243,7 @@ def _candidate(
 
 
 def _raw(entry: Entry, pieces: Iterable[Placed]) -> str:
-    texts = [entry.label.text, *(piece.text for piece in pieces), entry.unit]
+    texts = [entry.label.text, *(piece.text.lstrip(" :：") for piece in pieces), entry.unit]
     return " ".join(" ".join(text.split()) for text in texts if text.strip())
 
 

@@ -58,8 +58,10 @@ class Draft:
                     own = replace(entry, values=(replace(value, subject=""),))
                     self.by_subject.setdefault(value.subject, []).append(own)
                 continue
-            text = " ".join(entry.values[0].piece.text.split())
-            if known.identity == "part_number" and not part_tokens(text) and package_in(text):
+            text = " ".join(entry.values[0].piece.text.split()).strip(" :：")
+            if known.trap is not None and "dimension" in known.trap:
+                self.package = self.package or package_in(text)
+            elif known.identity == "part_number" and not part_tokens(text) and package_in(text):
                 self.package = self.package or text
             elif known.identity in ("part_number", "maker", "package") and not wording.not_stated(text):
                 if getattr(self, known.identity) is None:

@@ -60,7 +60,7 @@ def makers_in(text: str) -> tuple[tuple[str, int], ...]:
     found: list[tuple[str, int]] = []
     plain = unfolded(text)
     for match in _LATIN_NAME.finditer(plain):
-        name = match[0].strip(" ,-")
+        name = _up_to_legal_form(match[0].strip(" ,-"))
         if score := _name_score(name, words):
             found.append((name, score + (1 if _BY.search(plain[: match.start()]) else 0)))
     for match in _EAST_NAME.finditer(plain):
@@ -85,11 +85,24 @@ def _name_score(name: str, words: dict[str, list[str]]) -> int:
     generic = {*words["generic"]}
     if len(parts[0]) < 2 or parts[0].casefold() in generic or all(part.casefold() in generic for part in parts):
         return 0
-    bare = [part.replace(".", "") for part in parts]
-    if any(part in words["legal"] for part in bare[1:]) or name.endswith(("e.K.", "e.K", "e. K.")):
+    if any(_is_legal(part) for part in parts[1:]) or name.endswith(("e.K.", "e.K", "e. K.")):
         return 4
     trade = {word.casefold() for word in words["trade"]}
-    return 3 if bare[-1].casefold() in trade and bare[0].casefold() not in trade else 0
+    return 3 if parts[-1].casefold() in trade and parts[0].casefold() not in trade else 0
+
+
+def _is_legal(part: str) -> bool:
+    """Whether a word is a company's legal form ("GmbH", "Ltd", "CORP.")."""
+    bare = part.strip(".,").replace(".", "")
+    legal = identity_words()["maker"]["legal"]
+    return bare in legal or (bare.isupper() and bare in {word.upper() for word in legal})
+
+
+def _up_to_legal_form(name: str) -> str:
+    """The name without what follows its legal form ("Able Crystals Ltd. SMD")."""
+    words = name.split()
+    last = max((index for index, word in enumerate(words) if index and _is_legal(word)), default=len(words) - 1)
+    return " ".join(words[: last + 1])
 
 
 def maker_of(items: Sequence[Item], headers: Sequence[Text], *, sure: bool = False) -> str | None:

@@ -18,7 +18,7 @@ from extract.entries import Listing, Placed
 from extract.fields import field_of
 from extract.fold import fold
 from extract.heads import BOUNDS, Head, interpret, is_unit
-from extract.identity import package_in, speaks_of_a_crystal
+from extract.identity import is_package, package_in, speaks_of_a_crystal
 from extract.meaning import meaning, part_tokens
 from extract.model import When
 from extract.units import factor
@@ -77,7 +77,7 @@ def _column(index: int, levels: tuple[str, ...], title: str) -> _Column:
         column.use = head.role
     elif head.identity or head.attribute:
         column.use = head.identity or f"attribute {head.attribute}"
-    elif (head.unit or head.role in ("value", "min", "typ", "max")) and (titled := meaning(title).label) is not None:
+    elif (head.unit or head.role in ("value", "min", "typ", "max") or _is_subject(head)) and (titled := meaning(title).label) is not None:
         column.label = replace(titled, bound=head.bound or titled.bound, unit=head.unit or titled.unit)
     return column
 
@@ -100,6 +100,12 @@ def _by_unit(head: Head) -> Label | None:
             bound = head.bound or (BOUNDS[found[0].casefold()] if found else None)
             return Label(name, bound=bound, unit=match["unit"], plus_minus="±" in match["unit"])
     return None
+
+
+def _is_subject(head: Head) -> bool:
+    """A head that names only a model, a package or a load, under a title that names the property."""
+    text = " ".join(head.extra)
+    return bool(text) and (bool(part_tokens(text)) or is_package(text) or condition_of(text) != When())
 
 
 def _settle(columns: list[_Column], listing: Listing) -> None:
@@ -314,7 +320,7 @@ def _row_key(row: Sequence[Placed | None], columns: list[_Column], section: str,
 
 def _key_when(cell: Placed, label: Label) -> When:
     if label.field == "frequency_mhz":
-        band = band_of(cell.text, label.unit)
+        band = band_of(cell.text, label.unit) or band_of(re.sub(r"\([^()]*\)", " ", cell.text), label.unit)
         return merged(condition_of(cell.text), When(frequency_mhz=band)) if band else condition_of(cell.text)
     if label.field == "load_capacitance_pf":
         for value in read(cell.text, label.field, label.unit, None):

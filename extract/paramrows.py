@@ -203,6 +203,26 @@ def _sorted_row(row: Row, heads: Sequence[Head], at: int, *, governed: bool) -> 
     return found
 
 
+def _is_second_label(cell: Cell, head: Head, found: _Row) -> bool:
+    """A label in two columns: "Temperature range | Operating", the first often merged over its rows."""
+    if found.values or found.symbol or meaning(cell.text).value:
+        return False
+    first = found.label
+    if head.role == "parameter":
+        return True
+    known = meaning(cell.text).label
+    spanning = first is not None and first.row_span > 1
+    return head.role is None and known is not None and known.exact and not known.symbol and spanning
+
+
+def _both_labels(first: str, second: str) -> str:
+    for text in (f"{first} {second}", f"{second} {first}", second):
+        known = meaning(text)
+        if known.head is not None or known.trap is not None:
+            return text
+    return f"{first} {second}"
+
+
 def _place(found: _Row, cell: Cell, head: Head, span: list[Head], *, governed: bool) -> None:
     roles = [each.role for each in span]
     if head.role == "unit" and len(set(roles)) == 1:

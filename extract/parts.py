@@ -223,7 +223,8 @@ def _finish(draft: Draft, maker: str | None, found: Found) -> None:
 def _part(draft: Draft, maker: str | None) -> Part:
     mode = next(iter(draft.modes)) if len(draft.modes) == 1 else None
     cut = _one_cut(draft.cuts)
-    readings = readings_of(draft.candidates, cut=cut, mode=mode)
+    candidates = [_without_mode(each, mode) for each in draft.candidates]
+    readings = readings_of(candidates, cut=cut, mode=mode)
     if mode is None and cut == "tuning fork" and not draft.modes:
         mode = "fundamental"
     loads = any(reading.field == "load_capacitance_pf" for reading in readings)
@@ -238,6 +239,13 @@ def _part(draft: Draft, maker: str | None) -> Part:
         attributes=attributes_of(draft.attributes, draft.texts),
         readings=readings,
     )
+
+
+def _without_mode(candidate: Candidate, mode: str | None) -> Candidate:
+    """A part's only mode is no condition."""
+    if mode is None or candidate.when.mode != mode:
+        return candidate
+    return replace(candidate, when=candidate.when.model_copy(update={"mode": None}))
 
 
 def _one_cut(cuts: set[str]) -> str | None:

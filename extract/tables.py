@@ -229,12 +229,20 @@ def _is_listing(block: _Block, heads: list[Head]) -> bool:
     subjects = sum(bool(head.levels) and is_part_token(head.levels[-1]) for head in heads)
     if heads[0].identity == "part_number" and subjects >= 2 and len(named) == 1:
         return False
+    if heads[0].label is not None and heads[0].label.field == "frequency_mhz" and _bands_below(block.body):
+        return len(heads) >= 2
     labelled = sum(_starts_with_label(row) for row in block.body)
     if labelled >= 0.5 * len(block.body):
         return False
     if any(head.role == "parameter" for head in heads) and len(named) < 3:
         return False
     return len(named) >= 2 or (len(named) == 1 and len(heads) >= 2 and bool(heads[0].name))
+
+
+def _bands_below(body: list[Row]) -> bool:
+    """Whether the first column is one of frequency bands."""
+    cells = [row[0] for row in body if row[0] is not None]
+    return bool(cells) and all(meaning(cell.text).head is None and any(c.isdigit() for c in cell.text) for cell in cells)
 
 
 def _starts_with_label(row: Row) -> bool:
