@@ -31,7 +31,7 @@ BY_SHUNT_FLOOR = (
     "trim_ppm_per_pf",
 )
 """Numbers of frequency: where C0 is a loose limit their low end of C0 is an estimate. All others use the limit."""
-AT_MOST = 1 << 21
+AT_MOST = 1 << 19
 """Array elements of one key held at a time."""
 MOST_CORNERS = 3 * 2 * 2 * 16 * 4
 """Ends of C0, C1 and ESR, corners of four capacitances, transconductances with turning points."""

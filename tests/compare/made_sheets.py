@@ -99,5 +99,3 @@ def case_sheet(case: dict[str, Any]) -> SpecSheet:
         "resonance": crystal["resonance"],
     }
     return sheet(part(*readings, number=case["id"], **identity))
-
-

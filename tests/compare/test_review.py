@@ -1,6 +1,5 @@
 """A part in its circuit from sheet to verdict, against reference circuits that were solved outside this project."""
 
-
 import pytest
 from made_sheets import CASES, REFERENCE, bench, case_bench, case_sheet, sheet, usual
 
