@@ -59,6 +59,14 @@ def read_sheets(names: Iterable[str], *, told: Callable[[str], None] | None = No
     return Intake(tuple(sheets), tuple(plan.notes))
 
 
+def single_names(names: Iterable[str]) -> tuple[list[str], list[Note]]:
+    """The single files (`FILE` or `FILE#PART_NUMBER`) that `names` stand for, and what there is to say about them."""
+    plan = _Plan()
+    for name in names:
+        _plan_for(name, plan)
+    return [one.name if one.part is None else f"{one.name}#{one.part}" for one in plan.files], plan.notes
+
+
 def read_bytes(data: bytes, name: str) -> SpecSheet:
     """Read one sheet; a fault of the program itself becomes a note, so that the other sheets are still done."""
     try:
@@ -83,7 +91,8 @@ def _plan_for(name: str, plan: _Plan) -> None:
 
 
 def _plan_for_folder(folder: Path, plan: _Plan) -> None:
-    found, passed = [], []
+    found: list[Path] = []
+    passed: list[Path] = []
     for path in sorted(_visible_files(folder)):
         (found if path.suffix.lower() in SHEET_SUFFIXES else passed).append(path)
     plan.files += [_Named(str(path)) for path in found]

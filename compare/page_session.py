@@ -15,7 +15,7 @@ import streamlit as st
 from compare import evidence, pieces
 from compare.bench import Bench, BenchError
 from compare.desk import NO_EXAMPLE, Desk, desk_from_bench, orchard_example
-from compare.intake import read_bytes, read_sheets
+from compare.intake import read_bytes, read_sheets, single_names
 from compare.palette import Palette, palette_of
 from compare.serve import read_script_arguments
 from extract.model import Reading, SpecSheet
@@ -37,13 +37,14 @@ def start() -> None:
     set_desk(Desk())
     bench, names = read_script_arguments(sys.argv[1:])
     if bench is not None:
-        open_bench(Path(bench).read_text(encoding="utf-8-sig"), bench)
-    if names:
-        with st.spinner("Reading the sheets …"):
-            intake = read_sheets(names)
-        st.session_state.opened = [Opened(sheet) for sheet in intake.sheets]
-        # What a folder holds beside sheets is no news to the person who named it.
-        st.session_state.said = [note.message for note in intake.notes if note.level != "info"]
+        try:
+            open_bench(Path(bench).read_text(encoding="utf-8-sig"), bench)
+        except (OSError, UnicodeDecodeError) as fault:
+            st.session_state.bench_fault = f"{bench}: cannot be read: {fault}"
+    files, notes = single_names(names)
+    open_sheets([(name, None) for name in files])
+    # What a folder holds beside sheets is no news to the person who named it.
+    st.session_state.said = [note.message for note in notes if note.level != "info"]
 
 
 def desk() -> Desk:
@@ -67,8 +68,8 @@ def open_bench(text: str, name: str) -> None:
         st.session_state.bench_fault = ""
 
 
-def open_sheets(files: Sequence[tuple[str, bytes]]) -> None:
-    """Put files in the queue; `read_next` reads them one by one, and each finished one can be used at once."""
+def open_sheets(files: Sequence[tuple[str, bytes | None]]) -> None:
+    """Queue files (by name where there are no bytes); `read_next` reads them one by one, each usable at once."""
     state = st.session_state
     state.pending = [*state.pending, *files]
     state.asked_for = state.asked_for + len(files) if len(state.pending) > len(files) else len(files)
@@ -112,11 +113,16 @@ def read_next() -> None:
     if not state.pending:
         return
     name, data = state.pending[0]
-    sheet = sheet_of(hashlib.sha256(data).hexdigest(), name, data)
-    if all((one.sheet.file, one.sheet.sha256) != (sheet.file, sheet.sha256) for one in state.opened):
+    sheet = named_sheet(name, stamp(name)) if data is None else sheet_of(hashlib.sha256(data).hexdigest(), name, data)
+    if identity(sheet) not in [identity(one.sheet) for one in state.opened]:
         state.opened = [*state.opened, Opened(sheet, data)]
     state.pending = state.pending[1:]
     st.rerun()
+
+
+def identity(sheet: SpecSheet) -> tuple[str, ...]:
+    """What tells sheets apart: name, content, and the parts that were asked for."""
+    return sheet.file, sheet.sha256 or "", *(part.part_number or "" for part in sheet.parts)
 
 
 def sheets() -> list[SpecSheet]:
@@ -130,6 +136,23 @@ def palette() -> Palette:
 @st.cache_resource(max_entries=256, show_spinner=False)
 def sheet_of(sha256: str, name: str, _data: bytes) -> SpecSheet:  # noqa: ARG001
     return read_bytes(_data, name)
+
+
+@st.cache_resource(max_entries=256, show_spinner=False)
+def named_sheet(name: str, stamped: tuple[int, int] | None) -> SpecSheet:  # noqa: ARG001
+    """A sheet by its name; `stamped` makes a changed file be read again."""
+    return read_sheets([name]).sheets[0]
+
+
+def stamp(name: str) -> tuple[int, int] | None:
+    """When the file of a name was changed and how large it is; None where there is none."""
+    for candidate in (name, name.rpartition("#")[0]):
+        try:
+            found = Path(candidate).stat()
+        except OSError:
+            continue
+        return found.st_mtime_ns, found.st_size
+    return None
 
 
 @st.cache_resource(max_entries=16, show_spinner="Ranking …")

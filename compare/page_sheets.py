@@ -59,7 +59,7 @@ def sheet_list() -> Opened | None:
     if not every:
         return None
     session.section(f"{shown.heading(session.sheets())}")
-    identities = [(one.sheet.file, one.sheet.sha256) for one in every]
+    identities = [session.identity(one.sheet) for one in every]
     before = st.session_state.get("sheet")
     start = identities.index(before) if before in identities else 0
     picked = st.dataframe(
@@ -77,7 +77,7 @@ def sheet_list() -> Opened | None:
         },
     )
     chosen: Opened = every[session.selected_row(picked, len(every))]
-    st.session_state.sheet = (chosen.sheet.file, chosen.sheet.sha256)
+    st.session_state.sheet = session.identity(chosen.sheet)
     for said in shown.unread([one.sheet for one in every if one is not chosen]):
         st.markdown(f":small[{pieces.plain(said)}]")
     if st.button("Close this sheet", key="close_sheet"):

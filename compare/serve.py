@@ -21,7 +21,10 @@ def serve(sheets: Sequence[str], *, bench: str | None = None, port: int = 8733) 
     The settings go in as values and not as a file, so that no folder's own configuration can open the page to the
     network or turn statistics on.
     """
-    if (fault := port_fault(port)) is not None:
+    fault = port_fault(port)
+    if "-" in sheets:
+        fault = "-: the page reads no standard input; name files, or paste the text on the page"
+    if fault is not None:
         print(f"quartzfolio: {fault}", file=sys.stderr)  # noqa: T201
         return WRONG_CALL
     from streamlit import config

@@ -226,3 +226,35 @@ def test_what_goes_wrong_in_ranking_is_told_and_the_work_kept(page, monkeypatch)
     to(open_bench(drop(page, ("offer.txt", hand_made.MAIL)), bench), "choose")
     assert [one.value for one in page.error] == ["Something went wrong while ranking. Your work is kept."]
     assert len(page.session_state.opened) == 1
+
+
+def test_bench_and_sheets_of_the_command_line_are_open_at_once(monkeypatch, tmp_path):
+    (tmp_path / "sheets").mkdir()
+    for name in ("a.txt", "b.txt"):
+        (tmp_path / "sheets" / name).write_text(hand_made.MAIL, encoding="utf-8")
+    (tmp_path / "bench.toml").write_text(hand_made.BENCH_TEXT, encoding="utf-8")
+    names = [str(tmp_path / "sheets"), str(tmp_path / "gone.txt"), f"{tmp_path / 'sheets' / 'a.txt'}#ABX-26"]
+    monkeypatch.setattr("sys.argv", ["page.py", "--bench", str(tmp_path / "bench.toml"), "--", *names])
+    page = AppTest.from_file(str(SCRIPT), default_timeout=60).run()
+    assert not page.exception
+    frame = page.dataframe[0].value
+    assert frame["Sheet"].tolist() == ["a.txt", "b.txt", "gone.txt"]
+    assert frame["Outcome"].tolist()[2] == "▼ not read"
+    assert "gone.txt: no such file; check the name" in said(page)
+    assert headings(to(page, "circuit")) == ["## The circuit presents 7.70 pF"]
+
+
+def test_a_bench_file_that_is_gone_is_told_and_the_page_stands(monkeypatch, tmp_path):
+    monkeypatch.setattr("sys.argv", ["page.py", "--bench", str(tmp_path / "gone.toml"), "--"])
+    page = AppTest.from_file(str(SCRIPT), default_timeout=60).run()
+    assert not page.exception
+    assert "gone.toml: cannot be read" in said(to(page, "circuit"))
+
+
+def test_two_parts_of_one_file_are_two_sheets(monkeypatch, tmp_path):
+    rows = ["part number,frequency MHz,CL pF,ESR ohm max"] + [f"ABX-{load},26.0,{load},50" for load in (8, 10, 12)]
+    (tmp_path / "list.csv").write_text("\n".join(rows) + "\n", encoding="utf-8")
+    names = [f"{tmp_path / 'list.csv'}#ABX-{load}" for load in (8, 12)]
+    monkeypatch.setattr("sys.argv", ["page.py", "--", *names])
+    page = AppTest.from_file(str(SCRIPT), default_timeout=60).run()
+    assert page.dataframe[0].value["Outcome"].tolist() == ["1 part", "1 part"]

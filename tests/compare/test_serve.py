@@ -6,7 +6,7 @@ from pathlib import Path
 
 from streamlit import config
 
-from compare.serve import HOST, SETTINGS, port_fault, read_script_arguments, script_arguments, settings
+from compare.serve import HOST, SETTINGS, port_fault, read_script_arguments, script_arguments, serve, settings
 
 ROOT = Path(__file__).parent.parent.parent
 
@@ -51,3 +51,10 @@ def test_a_port_that_is_taken_is_told_with_what_to_do():
 
 def test_a_port_out_of_range_is_told():
     assert port_fault(70000) == "--port 70000: a port is a number from 1 to 65535"
+
+
+def test_standard_input_is_turned_away_with_what_to_do(capsys):
+    assert serve(["-"]) == 2
+    assert capsys.readouterr().err == (
+        "quartzfolio: -: the page reads no standard input; name files, or paste the text on the page\n"
+    )
