@@ -10,6 +10,7 @@ import pytest
 from pypdf.generic import RectangleObject
 from reportlab.pdfgen import canvas
 
+import extract.documents
 from extract.documents import pdf
 from extract.documents.model import DocumentError, Line, Table
 from extract.documents.symbols import translated
@@ -403,8 +404,9 @@ def test_a_picture_without_the_extra_is_told_of_with_what_to_install(monkeypatch
 
 
 def without_extra(monkeypatch):
-    monkeypatch.setitem(sys.modules, "rapidocr", None)
-    monkeypatch.delitem(sys.modules, "extract.documents.recognise", raising=False)
+    # As when the extra's own packages are missing: the module that needs them cannot be imported.
+    monkeypatch.setitem(sys.modules, "extract.documents.recognise", None)
+    monkeypatch.delattr(extract.documents, "recognise", raising=False)
 
 
 def test_a_large_picture_beside_a_little_text_is_told_of(monkeypatch):
