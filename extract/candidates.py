@@ -12,11 +12,10 @@ from extract import amount, wording
 from extract.conditions import condition_of, kept, merged
 from extract.entries import Entry, Key, Placed, Source, Value
 from extract.fields import field_of
-from extract.fold import fold, key
+from extract.fold import fold
 from extract.meaning import meaning
 from extract.model import FieldName, When, Where
 from extract.units import unit_at
-from extract.vocabulary import vocabulary
 from extract.wording import Label
 
 _PLUS_MINUS = re.compile(r"±")
@@ -94,23 +93,7 @@ def _label(text: str) -> Label | None:
     folded = fold(text)
     if wording.trap_of(folded):
         return None
-    label = meaning(text).label
-    return label if label is None or label.exact else settled(label)
-
-
-_MEASURED_AT = re.compile(r"(?i)[\d.,±+\-\s]+|°?\bC\b|\b(?:[DA]C)?\s?\d*\s?V(?:\s?[DA]C)?\b|\b[km]?Hz\b|\b(?:DC|AC)\b")
-
-
-def settled(label: Label) -> Label:
-    """A partial match whose rest is only a bound word, a mode or where it was measured is as good as the wording."""
-    rest = _MEASURED_AT.sub(" ", label.rest).strip()
-    bound = vocabulary().bounds.get(key(rest))
-    if bound is not None and label.bound in (None, bound):
-        return replace(label, bound=bound, exact=True)
-    modes = vocabulary().modes
-    if not key(rest) or all(key(word) in modes or key(word) in ("overtone", "mode", "at") for word in rest.split()):
-        return replace(label, exact=bool(label.rest))
-    return label
+    return meaning(text).label
 
 
 def label_of(entry: Entry) -> Label | None:
@@ -137,7 +120,11 @@ def _entry_when(entry: Entry, label: Label) -> When:
     for text in entry.conditions:
         when = merged(when, kept(condition_of(text), label.field))
     if entry.section and entry.section != entry.label.text:
-        when = merged(kept(condition_of(entry.section), label.field), when)
+        section = condition_of(entry.section)
+        band = section.frequency_mhz
+        if band is not None and band[0] == band[1]:
+            section = section.model_copy(update={"frequency_mhz": None})
+        when = merged(kept(section, label.field), when)
     return merged(kept(label.when, label.field), when)
 
 

@@ -47,6 +47,12 @@ class Draft:
         self.modes.update(modes_in(text, codes=codes))
         self.cuts.update(cuts_in(text, whole=codes))
 
+    def name(self, what: str, text: str) -> None:
+        """Set part number, maker or package where it is open; a size goes before words such as "2-SMD, No Lead"."""
+        known = getattr(self, what)
+        if known is None or (what == "package" and package_in(known) is None and package_in(text) is not None):
+            setattr(self, what, text)
+
     def take_identity(self, entries: Iterable[Entry]) -> None:
         """Take part number, maker, package, mode and grade from labelled values."""
         for entry in entries:
@@ -64,8 +70,9 @@ class Draft:
             elif known.identity == "part_number" and not part_tokens(text) and package_in(text):
                 self.package = self.package or text
             elif known.identity in ("part_number", "maker", "package") and not wording.not_stated(text):
-                if getattr(self, known.identity) is None:
-                    setattr(self, known.identity, text)
+                self.name(known.identity, text)
+                if known.identity != "maker":
+                    self.take_mode_and_cut(text)
             elif known.role in ("mode", "cut"):
                 self.take_mode_and_cut(text, codes=True)
             elif known.attribute:

@@ -77,7 +77,9 @@ def _column(index: int, levels: tuple[str, ...], title: str) -> _Column:
         column.use = head.role
     elif head.identity or head.attribute:
         column.use = head.identity or f"attribute {head.attribute}"
-    elif (head.unit or head.role in ("value", "min", "typ", "max") or _is_subject(head)) and (titled := meaning(title).label) is not None:
+    elif (head.unit or head.role in ("value", "min", "typ", "max") or _is_subject(head)) and (
+        titled := meaning(title).label
+    ) is not None:
         column.label = replace(titled, bound=head.bound or titled.bound, unit=head.unit or titled.unit)
     return column
 
@@ -250,7 +252,7 @@ def _take_use(draft: Draft, cell: Placed, column: _Column) -> None:
     if wording.oscillator_words(column.head.levels[-1] if column.head.levels else ""):
         draft.texts.append(" ".join(column.head.levels))
     if column.use in ("maker", "package"):
-        setattr(draft, column.use, getattr(draft, column.use) or text)
+        draft.name(column.use, text)
         draft.take_mode_and_cut(text)
     elif column.use in ("mode", "cut") or not column.use or column.use == "description":
         draft.take_mode_and_cut(text, codes=column.use == "mode")

@@ -5,13 +5,14 @@ from __future__ import annotations
 import re
 import tomllib
 from collections.abc import Callable, Sequence
-from dataclasses import dataclass
+from dataclasses import dataclass, replace
 from functools import lru_cache
 from importlib import resources
 from typing import Any
 
 from extract import wording
-from extract.fold import fold
+from extract.fold import fold, key
+from extract.vocabulary import vocabulary
 from extract.wording import Label
 
 _DIGIT = re.compile(r"\d")
@@ -67,9 +68,27 @@ def meaning(text: str) -> Meaning:
     identity = _first(wording.identity_label, names)
     attribute = _first(wording.attribute_label, names)
     label = None if (role and role != "band") or identity else wording.read_label(folded)
+    label = settled(label) if label is not None and not label.exact else label
     trap = _first(wording.trap_of, names)
     known = role or identity or attribute or (label is not None and label.exact)
     return Meaning(label, role, identity, attribute, trap, number and not known)
+
+
+_MEASURED_AT = re.compile(
+    r"(?i)[\d.,±+\-\s]+|°?(?<![A-Za-z])C\b|\b(?:[DA]C)?\s?\d*\s?V(?:\s?[DA]C)?\b|\b[km]?Hz\b|\b(?:DC|AC)\b"
+)
+
+
+def settled(label: Label) -> Label:
+    """A partial match whose rest is only a bound word, a mode or where it was measured is as good as the wording."""
+    rest = _MEASURED_AT.sub(" ", label.rest).strip()
+    bound = vocabulary().bounds.get(key(rest))
+    if bound is not None and label.bound in (None, bound):
+        return replace(label, bound=bound, exact=True)
+    modes = vocabulary().modes
+    if not key(rest) or all(key(word) in modes or key(word) in ("overtone", "mode", "at") for word in rest.split()):
+        return replace(label, exact=bool(label.rest))
+    return label
 
 
 def _names(folded: str) -> list[str]:

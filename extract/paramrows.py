@@ -5,6 +5,7 @@ from __future__ import annotations
 import re
 from collections.abc import Iterator, Sequence
 from dataclasses import dataclass, field, replace
+from itertools import pairwise
 
 from extract.candidates import has_unit, read
 from extract.conditions import kinds_of
@@ -196,6 +197,8 @@ def _sorted_row(row: Row, heads: Sequence[Head], at: int, *, governed: bool) -> 
         span = [heads[k] for k in range(index, len(row)) if k < len(heads) and row[k] is cell]
         if index == at or index < at and _is_label(cell.text) and found.label is None:
             found.label, found.label_text = cell, cell.text
+        elif found.label is not None and _is_second_label(cell, head, found):
+            found.label_text = _both_labels(found.label_text, cell.text)
         elif index < at and head.role not in (*_VALUE_ROLES, *_CONDITION_ROLES, "unit", "symbol"):
             continue
         else:
@@ -267,6 +270,10 @@ def _values(cell: Cell, span: list[Head], *, governed: bool) -> list[Value]:
 
 def _hand_down_labels(rows: list[_Row]) -> None:
     """Give rows without a label that of the row above or below, whichever states the same kind of condition."""
+    for above, row in pairwise(rows):
+        if row.label is not None and above.label is not None and row.values and _is_bare_band(row.label_text):
+            row.conditions.append(row.label_text)
+            row.label, row.label_text = above.label, _BAND_BEHIND.split(above.label_text)[0]
     labelled = [row.label is not None for row in rows]
     for index, row in enumerate(rows):
         if labelled[index] or not row.values:
@@ -278,6 +285,15 @@ def _hand_down_labels(rows: list[_Row]) -> None:
             continue
         row.label, row.label_text = source.label, source.label_text
         row.unit, row.symbol = row.unit or source.unit, row.symbol or source.symbol
+
+
+_BAND_BEHIND = re.compile(r"\s+(?=[-+]?\d|[<≤≥>])")
+
+
+def _is_bare_band(text: str) -> bool:
+    """A band in the label column, with no label of its own."""
+    known = meaning(text)
+    return known.head is None and known.label is None and known.trap is None and _is_band(text)
 
 
 def _nearer(row: _Row, above: _Row | None, below: _Row | None) -> _Row | None:

@@ -44,9 +44,10 @@ def replace_candidates(draft: Draft, candidates: list[Candidate]) -> Draft:
 def _for_name(draft: Draft, name: str, names: list[str]) -> Draft:
     mine: list[Candidate] = []
     package = draft.package
+    own_fields = {each.field for each in draft.candidates if name in names_in(each.subject)}
     for each in draft.candidates:
         named = names_in(each.subject)
-        if name in named or not named:
+        if name in named or (not named and each.field not in own_fields):
             mine.append(_conditioned(each) if not named else replace(each, subject=""))
             package = package_in(each.subject.replace(name, "")) or package if named else package
     own = Draft(resonance=set(draft.resonance), candidates=mine, texts=list(draft.texts), where=draft.where)

@@ -15,8 +15,9 @@ from extract.documents.model import Cell, Table
 from extract.entries import Column, Item, Listing, Piece, Text
 from extract.fold import fold, key
 from extract.heads import Head, interpret, is_unit
+from extract.identity import is_package
 from extract.keys import read_key_table, take_code_rows
-from extract.meaning import is_part_token, meaning
+from extract.meaning import Meaning, is_part_token, meaning
 from extract.paramrows import parameter_entries
 from extract.vocabulary import vocabulary
 
@@ -127,10 +128,22 @@ def is_head(row: Row) -> bool:
         return len(heads) + len(roles) >= 0.4 * len(cells)
     if len(heads) >= 3 and values <= 0.34 * len(cells):
         return True
+    return _heads_models(cells, known, names, len(roles))
+
+
+def _heads_models(cells: Sequence[Cell], known: Sequence[Meaning], names: Sequence[str | None], roles: int) -> bool:
+    """Whether one named head stands before models, packages or a bare unit: one column for each of them."""
     tokens = len({cell.text for cell in cells[1:] if is_part_token(cell.text)})
     if known[0].role == "parameter" or known[0].identity == "part_number":
-        return tokens >= 2 and tokens + len(roles) >= len(cells) - 2
-    return len(heads) == 1 and len(cells) == 2 and is_unit(cells[1].text) and bool(known[0].head)
+        return tokens >= 2 and tokens + roles >= len(cells) - 2
+    if names[0] in ("frequency_mhz", "load_capacitance_pf") and not known[0].value:
+        return all(is_part_token(cell.text) or is_package(cell.text) for cell in cells[1:])
+    return (
+        len({name for name in names if name}) == 1
+        and len(cells) == 2
+        and is_unit(cells[1].text)
+        and bool(known[0].head)
+    )
 
 
 def _is_series_load(cells: Sequence[Cell]) -> bool:
@@ -242,7 +255,9 @@ def _is_listing(block: _Block, heads: list[Head]) -> bool:
 def _bands_below(body: list[Row]) -> bool:
     """Whether the first column is one of frequency bands."""
     cells = [row[0] for row in body if row[0] is not None]
-    return bool(cells) and all(meaning(cell.text).head is None and any(c.isdigit() for c in cell.text) for cell in cells)
+    return bool(cells) and all(
+        meaning(cell.text).head is None and any(c.isdigit() for c in cell.text) for cell in cells
+    )
 
 
 def _starts_with_label(row: Row) -> bool:
