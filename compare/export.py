@@ -4,7 +4,7 @@ from __future__ import annotations
 
 import csv
 import io
-from collections.abc import Mapping, Sequence
+from collections.abc import Iterable, Mapping, Sequence
 from typing import Any
 
 from compare.answers import ENDS, FIGURES, SHORT_NAMES, asked_strips, row_name
@@ -14,10 +14,10 @@ Row = Mapping[str, Any]
 Table = tuple[list[str], list[list[Any]]]
 
 
-def rank_table(rows: Sequence[Row]) -> Table:
-    """Headings and one row a part: identity, verdict, times over each requirement, every number's three values."""
+def rank_table(rows: Sequence[Row], numbers: Iterable[str] = FIGURES) -> Table:
+    """Headings and one row a part: identity, verdict, times over each requirement, three values of each number."""
     strips = asked_strips(rows)
-    keys = [key for key in FIGURES if any(key in row for row in rows)]
+    keys = [key for key in numbers if any(key in row for row in rows)]
     headings = ["Place", "Part number", "Maker", "Package", "Mode", "Verdict", "Tightest"]
     headings += [f"{SHORT_NAMES[name]}, times over" for name in strips]
     headings += [_heading(key, end) for key in keys for end in ENDS]

@@ -98,7 +98,7 @@ def ranked_rows(result: dict[str, Any]) -> dict[str, Any]:
 
 
 def save_ranking(rows: list[dict[str, Any]], shown: list[dict[str, Any]]) -> None:
-    """The rows shown for the clipboard; all rows as files, made when they are asked for."""
+    """The rows shown, with what was asked, for the clipboard; all there is as files, made when they are asked for."""
 
     def workbook() -> bytes:
         return export.as_xlsx({"ranking": export.rank_table(rows), "sources": export.sources_table(rows)})
@@ -106,7 +106,7 @@ def save_ranking(rows: list[dict[str, Any]], shown: list[dict[str, Any]]) -> Non
     with st.container(horizontal=True, vertical_alignment="center", gap="small"):
         html = "<button>Copy table</button>"
         copy = st.components.v2.component("quartzfolio_copy", html=html, js=COPY, css=COPY_LOOK)
-        copy(data=export.as_tabs(export.rank_table(shown)), key="copy_ranking", width="content")
+        copy(data=export.as_tabs(export.rank_table(shown, answers.STRIPS)), key="copy_ranking", width="content")
         st.download_button("Save .xlsx", workbook, "ranking.xlsx", key="save_xlsx", on_click="ignore")
         st.download_button(
             "Save .csv",
@@ -167,15 +167,16 @@ def reasons_of(review: answers.Row, bench: Bench) -> None:
 
 
 def slack_chart(review: answers.Row, bench: Bench) -> None:
-    rows = answers.slack_rows(review, bench)
-    chart = charts.dressed(charts.slack_chart(rows, session.palette()), session.palette())
-    st.altair_chart(chart, theme=None, width="content", key="slack", alt="How many times over each requirement is met")
+    rows = tuple(answers.slack_rows(review, bench))
+    chart = charts.specification(charts.slack_chart, rows, session.palette())
+    alt = "How many times over each requirement is met"
+    st.vega_lite_chart(spec=chart, theme=None, width="content", key="slack", alt=alt)
     st.markdown(":gray[:small[▮ worst case · ○ nominal · hatched: not met · dotted: not known]]")
 
 
 def load_chart(review: answers.Row, bench: Bench) -> None:
-    own = [sheet for sheet in session.sheets() if sheet.file == review["file"]]
-    offer = next((one for one in find_offers(own, bench).offers if one.part.part_number == review["part_number"]), None)
+    offers = find_offers(answers.sheets_of(review, session.sheets()), bench).offers
+    offer = next((one for one in offers if one.part.package == review["package"]), None)
     if offer is None:
         return
     rated = review["chosen"].get("load_capacitance_pf", offer.load.span.mid if offer.load.stated else None)
@@ -183,8 +184,9 @@ def load_chart(review: answers.Row, bench: Bench) -> None:
     if pull is None:
         return
     session.section("ppm against load")
-    chart = charts.dressed(charts.load_chart(pull, session.palette()), session.palette())
-    st.altair_chart(chart, theme=None, width="content", key="load", alt="Frequency shift in ppm against load in pF")
+    chart = charts.specification(charts.load_chart, pull, session.palette())
+    alt = "Frequency shift in ppm against load in pF"
+    st.vega_lite_chart(spec=chart, theme=None, width="content", key="load", alt=alt)
     with st.expander("The same as a table"):
         st.dataframe(charts.load_table(pull), hide_index=True, key="load_table", alt="Shift at nine loads")
 

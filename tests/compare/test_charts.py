@@ -2,6 +2,7 @@
 
 import pytest
 
+from compare import charts
 from compare.charts import AXIS, LoadPull, Slack, dressed, load_chart, load_table, slack_chart
 from compare.palette import DARK, LIGHT
 
@@ -112,3 +113,12 @@ def test_the_table_is_the_curve_at_nine_loads():
 def test_both_themes_put_their_own_colours_in():
     for palette in (LIGHT, DARK):
         assert specification(slack_chart(ROWS, palette), palette)["config"]["background"] == palette.page
+
+
+def test_a_kept_chart_is_the_chart_and_cannot_be_spoilt():
+    made = charts.specification(slack_chart, tuple(ROWS), LIGHT)
+    assert made["height"] == slack_chart(ROWS, LIGHT).to_dict()["height"]
+    assert made["config"]["background"] == LIGHT.page
+    made["config"].clear()
+    assert charts.specification(slack_chart, tuple(ROWS), LIGHT)["config"]["background"] == LIGHT.page
+    assert charts.specification(slack_chart, tuple(ROWS), DARK)["config"]["background"] == DARK.page

@@ -62,3 +62,9 @@ def test_the_sources_say_how_each_number_was_reached():
     headings, rows = sources_table(ROWS[:1])
     assert headings == ["Part number", "Number", "Unit", "How we have it", "How it was reached"]
     assert ["MRB25-260-08H", "Motional capacitance C1", "fF", "stated", "stated"] in rows
+
+
+def test_a_copy_may_hold_fewer_numbers():
+    headings, rows = rank_table(ROWS, ["margin"])
+    assert [name for name in headings if name.endswith(", mid")] == ["Margin, mid"]
+    assert len(rows[0]) == len(headings)
