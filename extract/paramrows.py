@@ -270,10 +270,10 @@ def _values(cell: Cell, span: list[Head], *, governed: bool) -> list[Value]:
 
 def _hand_down_labels(rows: list[_Row]) -> None:
     """Give rows without a label that of the row above or below, whichever states the same kind of condition."""
-    for above, row in pairwise(rows):
-        if row.label is not None and above.label is not None and row.values and _is_bare_band(row.label_text):
+    for previous, row in pairwise(rows):
+        if row.label is not None and previous.label is not None and row.values and _is_bare_band(row.label_text):
             row.conditions.append(row.label_text)
-            row.label, row.label_text = above.label, _BAND_BEHIND.split(above.label_text)[0]
+            row.label, row.label_text = previous.label, _BAND_BEHIND.split(previous.label_text)[0]
     labelled = [row.label is not None for row in rows]
     for index, row in enumerate(rows):
         if labelled[index] or not row.values:

@@ -22,6 +22,8 @@ from extract.paramrows import parameter_entries
 from extract.vocabulary import vocabulary
 
 Row = Sequence[Cell | None]
+# Above this many rows a table is a list: looking every row up in the vocabularies would cost more than reading it.
+LONG = 40
 
 
 def read_table(table: Table) -> list[Item]:
@@ -29,13 +31,15 @@ def read_table(table: Table) -> list[Item]:
     rows: list[Row] = [row for row in table.grid() if any(row)]
     if not rows:
         return []
-    if keys := read_key_table(rows, table.title):
+    short = len(rows) <= LONG
+    if short and (keys := read_key_table(rows, table.title)):
         return list(keys)
     if _bands_across(rows):
         rows = [list(row) for row in zip(*rows, strict=True)]
     items: list[Item] = [Text(Piece(table.title, table.where), heading=True)] if table.title else []
-    keys, rows = take_code_rows(rows)
-    items += keys
+    if short:
+        keys, rows = take_code_rows(rows)
+        items += keys
     for block in _blocks(rows, table.title):
         items.extend(_read_block(block, table))
     return items
@@ -64,7 +68,10 @@ def _blocks(rows: list[Row], title: str) -> Iterator[_Block]:
     block = _Block([], [], title)
     index = 0
     while index < len(rows):
-        if count := _head_rows(rows, index):
+        if len(rows) > LONG and block.heads and not _repeats(block.heads, rows[index]):
+            block.body.append(rows[index])
+            index += 1
+        elif count := _head_rows(rows, index):
             if block.body:
                 yield block
             above = _title_before(block.body) if block.heads or block.body else ""
@@ -75,6 +82,12 @@ def _blocks(rows: list[Row], title: str) -> Iterator[_Block]:
             index += 1
     if block.body:
         yield block
+
+
+def _repeats(heads: list[Row], row: Row) -> bool:
+    """Whether a row of a long list has a heading's text in it: its heading comes again, or another begins."""
+    texts = {cell.text for head in heads for cell in head if cell is not None}
+    return len(distinct(row)) == 1 or any(cell is not None and cell.text in texts for cell in row)
 
 
 def _title_before(body: list[Row]) -> str:
@@ -238,14 +251,15 @@ def _levels(block: _Block) -> list[tuple[str, ...]]:
 
 
 def _is_listing(block: _Block, heads: list[Head]) -> bool:
+    body = block.body[:LONG]
     named = {head.name for head in heads if head.name}
     subjects = sum(bool(head.levels) and is_part_token(head.levels[-1]) for head in heads)
     if heads[0].identity == "part_number" and subjects >= 2 and len(named) == 1:
         return False
-    if heads[0].label is not None and heads[0].label.field == "frequency_mhz" and _bands_below(block.body):
+    if heads[0].label is not None and heads[0].label.field == "frequency_mhz" and _bands_below(body):
         return len(heads) >= 2
-    labelled = sum(_starts_with_label(row) for row in block.body)
-    if labelled >= 0.5 * len(block.body):
+    labelled = sum(_starts_with_label(row) for row in body)
+    if labelled >= 0.5 * len(body):
         return False
     if any(head.role == "parameter" for head in heads) and len(named) < 3:
         return False
