@@ -272,6 +272,26 @@ def _strip_x(times: float) -> float:
     return 2 + math.log(inside / low) / math.log(high / low) * (STRIP_WIDTH - 6)
 
 
+def name_svg(palette: Palette) -> str:
+    """The program's name with the symbol of a crystal, for the top of the page."""
+    pen = _Pen(palette)
+    _symbol(pen)
+    pen.write(34, 17, "quartzfolio", anchor="start", size=15, bold=True)
+    return _svg(126, 24, "".join(pen.drawn), "quartzfolio")
+
+
+def icon_svg(palette: Palette) -> str:
+    """The symbol alone, for the browser's tab."""
+    pen = _Pen(palette)
+    _symbol(pen)
+    return _svg(26, 24, "".join(pen.drawn), "quartzfolio")
+
+
+def _symbol(pen: _Pen) -> None:
+    pen.line("M1,12H6M20,12H25M6,4V20M20,4V20", colour=pen.palette.accent, width=2)
+    pen.drawn.append(f'<rect x="9.5" y="4" width="7" height="16" fill="{pen.palette.accent}"/>')
+
+
 def as_address(svg: str) -> str:
     """An SVG as a `data:` address that an image or a grid cell can show."""
     return "data:image/svg+xml;base64," + base64.b64encode(svg.encode()).decode()

@@ -4,7 +4,7 @@ from __future__ import annotations
 
 import streamlit as st
 
-from compare import circuit_text, pieces, shown
+from compare import circuit_text, drawing, pieces, shown
 from compare import page_session as session
 from compare.page_answers import choose_view, review_view
 from compare.page_circuit import circuit_view
@@ -21,8 +21,10 @@ def keys(views: list[str]) -> None:
 
 def main() -> None:
     """Lay out the views and draw the one that is asked for."""
-    st.set_page_config(page_title="quartzfolio", layout="wide")
-    st.html(pieces.style(session.palette()))
+    colours = session.palette()
+    st.set_page_config(page_title="quartzfolio", page_icon=drawing.icon_svg(colours), layout="wide")
+    st.logo(drawing.name_svg(colours), size="medium")
+    st.html(pieces.style(colours))
     session.start()
     waiting = sum(map(shown.waiting, session.sheets()))
     pages = {}
