@@ -21,6 +21,7 @@ Frequency stability: +/-15 ppm
 Ageing: +/-1 ppm per year
 Operating temperature: -40 to +85 C
 Drive level: 100 uW max.
+Mode of vibration: fundamental, AT cut
 """
 BENCH = """[requirement]
 frequency_mhz = 26.0
