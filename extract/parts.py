@@ -65,7 +65,18 @@ def parts_of(blocks: Blocks) -> Found:
         drafts += _of_section(section, shared if named else None, blocks)
     for draft in _merged(drafts):
         _finish(draft, maker, found)
+    _note_missing_frequencies(found)
     return found
+
+
+def _note_missing_frequencies(found: Found) -> None:
+    """One warning for all parts that state no frequency: nothing can be reckoned for them."""
+    lacking = [part for part in found.parts if not any(each.field == "frequency_mhz" for each in part.readings)]
+    if not lacking:
+        return
+    names = [part.part_number or "the part" for part in lacking[:3]]
+    more = f" and {len(lacking) - 3} more" if len(lacking) > 3 else ""
+    found.notes.append(Note(level="warning", message=f"no frequency is stated for {', '.join(names)}{more}"))
 
 
 def _pass_over(found: Found, name: str | None, reason: str) -> None:

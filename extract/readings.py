@@ -251,14 +251,14 @@ def _with_operating_range(chosen: list[Candidate], candidates: Sequence[Candidat
 
 
 def _written(chosen: Sequence[Candidate], cut: str | None, mode: str | None) -> tuple[Reading, ...]:
-    order = list(fields())
-    drafts = [_reading(each, None) for each in sorted(chosen, key=lambda each: order.index(each.field))]
-    sorted_chosen = sorted(chosen, key=lambda each: order.index(each.field))
-    found = plausible.doubts(drafts, cut, mode)
+    order = {name: index for index, name in enumerate(fields())}
+    ordered = sorted(chosen, key=lambda each: order[each.field])
+    plain = [_reading(each, None) for each in ordered]
+    found = plausible.doubts(plain, cut, mode)
     written = []
-    for index, each in enumerate(sorted_chosen):
+    for index, each in enumerate(ordered):
         reasons = [*each.doubts, *([found[index]] if index in found else [])]
-        written.append(_reading(each, "; ".join(dict.fromkeys(reasons)) or None))
+        written.append(_reading(each, "; ".join(dict.fromkeys(reasons))) if reasons else plain[index])
     return tuple(written)
 
 

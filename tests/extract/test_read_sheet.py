@@ -66,12 +66,34 @@ def test_a_file_without_a_crystal_gives_a_warning(text):
 @pytest.mark.parametrize(
     "text",
     [
-        "ESR: ESR: ESR: 60 Ω", "Frequency: MHz", "CL = = 8 pF", "P/N: \nP/N: ", "Frequency 1e999 MHz", "ESR: ∞ Ω",
-        "Load: ∞", "Ageing: ±±± ppm", "Part number | Frequency\n | \n | ", "* * *\n(1)\n*2", "Frequency\tESR\n\t\n\t\t\t",
+        "ESR: ESR: ESR: 60 Ω", "Frequency: MHz", "CL = = 8 pF", "P/N: \nP/N: ", "Frequency 1e999 MHz",
+        "ESR: ∞ Ω", "Load: ∞", "Ageing: ±±± ppm", "Part number | Frequency\n | \n | ", "* * *\n(1)\n*2",
+        "Frequency\tESR\n\t\n\t\t\t",
     ],
 )  # fmt: skip
 def test_odd_content_raises_nothing(text):
     read_sheet(text.encode(), "odd.txt")
+
+
+def test_a_fault_of_the_readers_own_is_told_and_logged(monkeypatch, caplog):
+    def fail(document):
+        raise KeyError("a bug")
+
+    monkeypatch.setattr("extract.blocks.read_blocks", fail)
+    sheet = read_sheet(b"ESR: 60 ohm", "x.txt")
+    assert [note.level for note in sheet.notes] == ["error"]
+    assert "KeyError: 'a bug'" in sheet.notes[0].message
+    assert caplog.records[0].exc_info is not None
+
+
+def test_a_file_that_cannot_be_read_keeps_the_kind_that_its_name_says():
+    assert read_sheet(b"", "sheet.pdf").kind == "pdf"
+
+
+def test_a_part_without_a_frequency_is_warned_of():
+    text = "ABQ32-16M-9\nLoad capacitance: 9 pF\nESR: 60 Ω max.\nDrive level: 100 µW max.\n"
+    notes = read_sheet(text.encode(), "x.txt").notes
+    assert [note.message for note in notes] == ["no frequency is stated for ABQ32-16M-9"]
 
 
 def test_a_contradiction_between_two_places_is_flagged():
