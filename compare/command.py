@@ -134,11 +134,11 @@ def _review(options: argparse.Namespace) -> int:
 
 def _rank(options: argparse.Namespace) -> int:
     from compare.ranking import rank
-    from compare.report import rank_text
+    from compare.report import MOST_ROWS, rank_text
 
     bench = _read_bench(options.bench)
     intake = _read(options.sheets)
-    result = rank(intake.sheets, bench)
+    result = rank(intake.sheets, bench, shown=None if options.json else MOST_ROWS)
     _add_notes(result, intake)
     _print_json(result) if options.json else _print(rank_text(result))
     readable = not any(_faults(sheet.notes) for sheet in intake.sheets) and not _faults(intake.notes)

@@ -7,7 +7,8 @@ from collections.abc import Iterable, Iterator, Mapping, Sequence
 from typing import Any
 
 from compare.explain import FIELD_WORDS, SYMBOLS, figure
-from extract.model import Part, Reading, SpecSheet, When
+from extract.fields import field_of
+from extract.model import FIELD_NAMES, Part, Reading, SpecSheet, When
 
 WIDTH = 100
 MOST_ROWS = 60
@@ -151,14 +152,23 @@ def _why(row: Mapping[str, Any]) -> list[str]:
         decisive = [r for r in row["reasons"] if r["about"] == row["tightest"]]
     for reason in _grouped(decisive):
         lines += _reason(reason, "       ")
-    if row["tightest"] in NUMBERS and row["tightest"] in row:
-        lines += wrapped(row[row["tightest"]]["how"], "         from: ", "           ")
+    lines += _tightest_how(row, decisive)
     lines += _chosen(row, "       ")
     for remark in row["remarks"]:
         lines += wrapped(f"taken so: {remark['message']}", "       ", "         ")
     if row["to_check"]:
         lines += wrapped(f"look at first: {', '.join(map(_field, row['to_check']))}", "       ")
     return lines
+
+
+def _tightest_how(row: Mapping[str, Any], told: Sequence[Mapping[str, Any]]) -> list[str]:
+    """How the tightest number was reached, where it is told of; what its sentence holds already is not said twice."""
+    about = row["tightest"]
+    message = next((reason["message"] for reason in told if reason["about"] == about), None)
+    if message is None or about not in NUMBERS or about not in row:
+        return []
+    how = [part for part in row[about]["how"].split("; ") if part not in message]
+    return wrapped("; ".join(how), "         from: ", "           ") if how else []
 
 
 def _grouped(reasons: Sequence[Mapping[str, Any]]) -> list[dict[str, Any]]:
@@ -192,7 +202,10 @@ def _value(value: Any) -> str:
 
 
 def _field(name: str) -> str:
-    return FIELD_WORDS.get(name, name)
+    """The trade's words for a field, a requirement, or a bench key (which stays as it is written in the file)."""
+    if name in FIELD_WORDS:
+        return FIELD_WORDS[name]
+    return field_of(name).title if name in FIELD_NAMES else name.removeprefix("circuit.")
 
 
 def review_text(result: Mapping[str, Any]) -> str:
@@ -237,7 +250,8 @@ def _open_points(review: Mapping[str, Any]) -> Iterator[tuple[str, list[str]]]:
         "Ask": list(review["questions"]),
         "Measured": [review["measured_message"]] if "measured_message" in review else [],
         "What the worst case hangs on": [
-            f"{NAMES.get(key, key)}: " + "; ".join(one["message"] for one in listed[:4])
+            f"{NAMES.get(key, key)}: "
+            + "; ".join(one["message"].replace(one["input"], _field(one["input"]), 1) for one in listed[:4])
             for key, listed in review.get("contributors", {}).items()
             if listed
         ],
@@ -298,11 +312,10 @@ def _part_lines(part: Part) -> Iterator[str]:
 
 
 def _reading_lines(reading: Reading, widths: Sequence[int]) -> Iterator[str]:
-    unit = SYMBOLS.get(reading.field, ("", ""))[1] or UNITS.get(reading.field, "")
+    unit = SYMBOLS.get(reading.field, ("", ""))[1] or field_of(reading.field).unit
     bounds = [figure(value, 8) if value is not None else "" for value in (reading.min, reading.typ, reading.max)]
     how = "" if reading.status == "stated" else f"{reading.status}, "
-    name = FIELD_WORDS.get(reading.field, reading.field)
-    yield "  " + _row((name, *bounds, unit, f"{how}{reading.where}"), widths)
+    yield "  " + _row((_field(reading.field), *bounds, unit, f"{how}{reading.where}"), widths)
     extra = []
     if reading.options:
         extra.append(f"options {', '.join(figure(value) for value in reading.options)}")
@@ -314,9 +327,6 @@ def _reading_lines(reading: Reading, widths: Sequence[int]) -> Iterator[str]:
         yield from wrapped("; ".join(extra), "      ")
     if reading.check:
         yield from wrapped(f"look: {reading.check}", "      ")
-
-
-UNITS = {"frequency_mhz": "MHz", "storage_temperature_c": "°C", "insulation_resistance_megohm": "MΩ"}
 
 
 def _band_text(band: tuple[float, float], unit: str) -> str:
