@@ -264,7 +264,7 @@ class Example:
 
 def orchard_example() -> Example | None:
     """The sample sheets of the project, where they lie beside the package; None in an install without them."""
-    from extract.documents.kinds import SHEET_SUFFIXES  # noqa: PLC0415
+    from extract.documents.kinds import SHEET_SUFFIXES
 
     folder = Path(__file__).resolve().parent.parent / "sample_specs"
     if not folder.is_dir():

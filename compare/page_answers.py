@@ -145,6 +145,8 @@ def why(row: dict[str, Any], bench: Bench) -> None:
         st.markdown(f":gray[{pieces.plain(said)}]")
     slack_chart(review, bench)
     reasons_of(review, bench)
+    for question in answers.question_lines(review):
+        st.markdown(f"Ask: “{pieces.plain(question)}”")
     load_chart(review, bench)
     for line in answers.advice_lines(review)[:1]:
         st.markdown(line)

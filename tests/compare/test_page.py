@@ -258,3 +258,10 @@ def test_two_parts_of_one_file_are_two_sheets(monkeypatch, tmp_path):
     monkeypatch.setattr("sys.argv", ["page.py", "--", *names])
     page = AppTest.from_file(str(SCRIPT), default_timeout=60).run()
     assert page.dataframe[0].value["Outcome"].tolist() == ["1 part", "1 part"]
+
+
+def test_a_part_that_cannot_be_told_comes_with_its_question(page):
+    silent = hand_made.MAIL.replace("ESR 50 Ω max\n", "")
+    to(open_bench(drop(page, ("offer.txt", silent))), "choose")
+    assert page.dataframe[0].value["Tightest"].tolist() == ["ESR not stated"]
+    assert "Ask: “" in said(page)
