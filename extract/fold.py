@@ -41,6 +41,7 @@ _ONE_FOR_ONE = {
         "\u00a0\u2000\u2001\u2002\u2003\u2004\u2005\u2006\u2007\u2008\u2009\u200a\u202f\u205f\u3000\t", " "
     ),
     **dict.fromkeys("\u00ad\u200b\u200c\u200d\u2060\ufeff", ""),
+    **{circled: f"({count})" for count, circled in enumerate("①②③④⑤⑥⑦⑧⑨⑩⑪⑫⑬⑭⑮⑯⑰⑱⑲⑳", 1)},
     "µ": "μ",
     "Ω": "Ω",
     "ϕ": "φ",

@@ -8,6 +8,7 @@ from dataclasses import dataclass
 from functools import cache
 from itertools import pairwise
 
+from extract.notemarks import without_marks
 from extract.number import NUMBER, Number, numbers
 from extract.units import kind_of, other_unit_at, unit_at
 from extract.vocabulary import vocabulary
@@ -40,7 +41,8 @@ _MARKS = {
     "±": "pm", "~": "to", "…": "to", "<": "compare", "≤": "compare", ">": "compare", "≥": "compare",
     ",": "sep", ";": "sep", "、": "sep", "。": "sep", "|": "sep", "\n": "line", "/": "slash",
     "(": "open", "[": "open", "{": "open", ")": "close", "]": "close", "}": "close",
-    "@": "at", ":": "colon", "=": "equals", "×": "times", "*": "star", "&": "or", "∞": "series",
+    "@": "at", ":": "colon", "=": "equals", "×": "times", "*": "star", "※": "star", "^": "raised", "&": "or",
+    "∞": "series",
 }  # fmt: skip
 _COMPARE = {"<": "<", "≤": "<", ">": ">", "≥": ">"}
 _WORD = re.compile(r"[^\W\d_](?:[\w.^]*\w)?", re.UNICODE)
@@ -105,7 +107,8 @@ def tokens(text: str, field: str) -> list[Token]:
         for token in _next(text, lower, at, field, found):
             found.append(token)
             at = token.end
-    return _spoken_signs(_without_torn_exponent([token for token in found if token.kind != "blank"]))
+    found = without_marks([token for token in found if token.kind != "blank"], field)
+    return _spoken_signs(_without_torn_exponent(found))
 
 
 def _without_torn_exponent(found: list[Token]) -> list[Token]:

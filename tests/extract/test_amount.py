@@ -56,6 +56,9 @@ CONTRACT = [
 
 # Forms met on real sheets (a survey of 47 documents); the readings are by hand.
 FORMS = [
+    # a comma that follows no digit parts two amounts
+    ("10 μW 典型，200 μW 最大", DRIVE, [{"typ": 10, "max": 200}]),
+    ("10 µW typ,200 µW max", DRIVE, [{"typ": 10, "max": 200}]),
     # bounds: words before and after, glued, in two cells' worth of text
     ("max. 60Ω", ESR, [{"max": 60}]),
     ("<60 kΩ", ESR, [{"max": 60_000}]),
