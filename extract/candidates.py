@@ -20,6 +20,9 @@ from extract.wording import Label
 
 _PLUS_MINUS = re.compile(r"±")
 _BRACKET = re.compile(r"[(（][^()（）]*[)）]")
+# "，200" is a comma and 200, not 0.200.
+_EAST_COMMA = re.compile("[，、]")
+_FOOTNOTE_MARK = re.compile(r"(?<=[^\s(])\s*(?:\(\d\)|⁽[¹²³⁴-⁹]⁾|[※*]\d)(?=\s*$)")
 LEAST_CONFIDENCE = 0.8
 
 
@@ -53,6 +56,7 @@ def read(
     text: str, field: str, unit: str | None = None, bound: str | None = None, *, plus_minus: bool = False
 ) -> tuple[amount.Value, ...]:
     """`amount.read_values`, each distinct text read once."""
+    text = _EAST_COMMA.sub(r"\g<0> ", _FOOTNOTE_MARK.sub("", text))
     found = amount.read_values(text, field, unit=unit, bound=bound, plus_minus=plus_minus)
     if not found and _BRACKET.search(text):
         # What a bracket withdraws ("series resonance on request") is not the value before it.

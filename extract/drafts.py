@@ -49,6 +49,8 @@ class Draft:
 
     def name(self, what: str, text: str) -> None:
         """Set part number, maker or package where it is open; a size goes before words such as "2-SMD, No Lead"."""
+        if what == "maker":
+            text = re.split(r"\s+[·|•]\s+", text)[0]
         known = getattr(self, what)
         if known is None or (what == "package" and package_in(known) is None and package_in(text) is not None):
             setattr(self, what, text)

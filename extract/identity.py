@@ -176,10 +176,11 @@ def part_number_of(items: Sequence[Item], headers: Sequence[Text]) -> str | None
         _score_tokens(line, max(0, 6 - index), scores)
     for line in headers:
         _score_tokens(line, 2, scores)
-    if not scores:
-        return None
-    best = max(scores, key=lambda name: scores[name])
-    return best if scores[best] > 0 else None
+    best = max(scores, key=lambda name: scores[name], default=None)
+    if best is not None and scores[best] > 0:
+        return best
+    stock = [text for item in items if isinstance(item, Entry) and (text := _labelled(item, "stock_number"))]
+    return next((text for text in stock if part_tokens(text) == (text,)), None)
 
 
 def _as_part_number(text: str) -> str | None:

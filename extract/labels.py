@@ -17,7 +17,7 @@ from extract.vocabulary import vocabulary
 EDGE = " \t\n:：.,;-=_/|~、。…"
 _NUMBERING = re.compile(r"^\s*(?:\(\d{1,2}\)|\d{1,2}(?:\.\d{1,2})?[.)、](?!\d)|[•■◆●▪○□・·*#>]+|-\s)\s*")
 _FOOTNOTE = re.compile(
-    r"(?:\s*(?:\*+\d{0,2}\)?|[†‡§]|\^\d{1,2}\)?|(?<=\s)\d{1,2}\)|\((?:note|\*|注|nb\.?)?\s?\*?\d\s?\)|※\d?|注\d?))+\s*$",
+    r"(?:\s*(?:\*+\d{0,2}\)?|[†‡§]|(?<![CKT])\^\d{1,2}\)?|(?<=\s)\d{1,2}\)|\((?:note|\*|注|nb\.?)?\s?\*?\d\s?\)|※\d?|注\d?))+\s*$",
     re.IGNORECASE,
 )
 _INNER_FOOTNOTE = re.compile(r"(?<=[a-z)])\^\d\)?|※\d?|\*\d\)?|\*+(?=\s|$)")

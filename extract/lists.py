@@ -24,6 +24,8 @@ from extract.model import When
 from extract.units import factor
 from extract.wording import Label
 
+# Columns in which the part numbers stand where no column is headed so; an own stock number often is the maker's.
+_MAY_NUMBER = ("stock_number", "description", "")
 KEYS = ("frequency_mhz", "load_capacitance_pf")
 
 
@@ -124,13 +126,13 @@ def _settle(columns: list[_Column], listing: Listing) -> None:
     for column in numbered:
         if good and column not in good:
             column.use = "description"
-    if not numbered and any(column.use == "description" or not column.use for column in columns):
+    if not numbered and any(column.use in _MAY_NUMBER for column in columns):
         _part_column_by_content(columns, texts)
 
 
 def _part_column_by_content(columns: list[_Column], texts: dict[int, list[str]]) -> None:
     for column in columns:
-        if column.label is None and column.use in ("", "description") and texts[column.index]:
+        if column.label is None and column.use in _MAY_NUMBER and texts[column.index]:
             names = [part_tokens(text) for text in texts[column.index]]
             if sum(bool(each) for each in names) > 0.6 * len(names) and len(
                 {each[0] for each in names if each}

@@ -28,7 +28,7 @@ _SYMBOL = re.compile(r"[^\W\d]\w{0,2}[ _]?\w{0,8}(?:/[^\W\d]\w{0,3}[ _]?\w{0,6})
 
 @dataclass(slots=True)
 class _Row:
-    """One row, its cells put to their uses. `follows` marks a row without a label of its own."""
+    """One row, its cells put to their uses. `maybe_symbol` is a short word in a column without a heading."""
 
     label: Cell | None = None
     label_text: str = ""
@@ -37,6 +37,7 @@ class _Row:
     symbol: str = ""
     conditions: list[str] = field(default_factory=list)
     section: str = ""
+    maybe_symbol: Cell | None = None
 
     def kinds(self) -> frozenset[str]:
         texts = [*self.conditions, *(value.piece.text for value in self.values)]
@@ -203,6 +204,8 @@ def _sorted_row(row: Row, heads: Sequence[Head], at: int, *, governed: bool) -> 
             continue
         else:
             _place(found, cell, head, span, governed=governed)
+    if found.maybe_symbol is not None and not found.values:
+        found.values, found.symbol = [Value(found.maybe_symbol)], ""
     return found
 
 
@@ -241,7 +244,7 @@ def _place(found: _Row, cell: Cell, head: Head, span: list[Head], *, governed: b
     elif is_unit(cell.text) and not found.unit:
         found.unit = cell.text
     elif not found.values and not found.symbol and _looks_like_symbol(cell.text) and not meaning(cell.text).value:
-        found.symbol = cell.text
+        found.symbol, found.maybe_symbol = cell.text, cell
     else:
         found.values.append(Value(cell))
 

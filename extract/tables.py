@@ -190,6 +190,8 @@ def _goes_on(rows: list[Row], start: int, index: int) -> bool:
         return all(not meaning(cell.text).value or is_part_token(cell.text) or _short(cell) for cell in own)
     if all(meaning(cell.text).role or is_unit(cell.text) for cell in own):
         return True
+    if any(cell.column_span > 1 for cell in distinct(above)) and is_head(row):
+        return True
     first_empty = row[0] is None or not row[0].text.strip()
     return first_empty and all(is_part_token(cell.text) or meaning(cell.text).role for cell in own)
 
