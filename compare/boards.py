@@ -77,7 +77,8 @@ class Boards:
 
 
 def quadratic(zero: ArrayLike, one: ArrayLike, two: ArrayLike) -> Quadratic:
-    return array(zero), array(one), array(two)
+    first, second, third = np.broadcast_arrays(array(zero), array(one), array(two))
+    return first, second, third
 
 
 def squared(x: Complex) -> Array:
@@ -93,7 +94,10 @@ def squared_line(x: Complex, slope: Complex) -> Quadratic:
 def at(x: Array, coefficients: Quadratic) -> Array:
     """k0 + k1 x + k2 x²."""
     zero, one, two = coefficients
-    value: Array = (two * x + one) * x + zero
+    value: Array = two * x
+    value += one
+    value *= x
+    value += zero
     return value
 
 
@@ -130,9 +134,17 @@ def every_board(boards: Boards, crystal: Crystal, swing_peak_v: float, swing_at:
     with np.errstate(all="ignore"):
         y = boards.omega * PICO * np.asarray(crystal.shunt_capacitance_pf)
         steady = Steady.of(boards, y, np.asarray(crystal.esr_ohm))
-        return gains(boards, crystal, y, steady) | frequency_and_drive(
-            boards, crystal, y, steady, (swing_peak_v, swing_at)
-        )
+        return gains(boards, crystal, y, steady) | {
+            "load_error_ppm": load_error_ppm(boards, crystal, y, steady),
+            "drive_level_uw": drive_level_uw(boards, crystal, y, steady, (swing_peak_v, swing_at)),
+        }
+
+
+def load_errors_ppm(boards: Boards, crystal: Crystal) -> Array:
+    """The load error alone, (parts, boards)."""
+    with np.errstate(all="ignore"):
+        y = boards.omega * PICO * np.asarray(crystal.shunt_capacitance_pf)
+        return load_error_ppm(boards, crystal, y, Steady.of(boards, y, np.asarray(crystal.esr_ohm)))
 
 
 def gains(boards: Boards, crystal: Crystal, y: Array, steady: Steady) -> dict[str, Array]:
@@ -155,19 +167,22 @@ def gains(boards: Boards, crystal: Crystal, y: Array, steady: Steady) -> dict[st
     }
 
 
-def frequency_and_drive(
-    boards: Boards, crystal: Crystal, y: Array, steady: Steady, swing: tuple[float, End]
-) -> dict[str, Array]:
+def load_error_ppm(boards: Boards, crystal: Crystal, y: Array, steady: Steady) -> Array:
     frequency, rated_load, c0, c1, r1 = crystal
-    swing_peak_v, swing_at = swing
-    seen = steady.conductance**2 + (steady.susceptance + y) ** 2
-    half_slope = boards.omega / np.sqrt(1 + c1 * (FEMTO / PICO) / (c0 + rated_load)) * (FEMTO / 2) * c1
+    half_slope = (boards.omega * FEMTO / 2) * c1 / np.sqrt(1 + c1 * (FEMTO / PICO) / (c0 + rated_load))
     at_rated, _ = motional.load_reactance_ohm(frequency, c0, rated_load, r1)
     # Where R1 is so great that the phase never passes zero the rated load is met with R1 = 0.
     at_rated = np.where(np.isnan(at_rated), 1 / (y + boards.omega * PICO * rated_load), at_rated)
-    half, half_rated = half_slope * (steady.susceptance + y) / seen, half_slope * at_rated
+    b = steady.susceptance + y
+    half, half_rated = half_slope * (b / (steady.conductance**2 + b * b)), half_slope * at_rated
     pull, rated = half * (1 + half / 2), half_rated * (1 + half_rated / 2)
-    power = at(steady.critical, boards.across) * seen * r1 * (swing_peak_v**2 / 2 / MICRO)
-    if swing_at == "output":
-        power = power / at(steady.critical, boards.output)
-    return {"load_error_ppm": (pull - rated) / (1 + rated) / PPM, "drive_level_uw": power}
+    error: Array = (pull - rated) / ((1 + rated) * PPM)
+    return error
+
+
+def drive_level_uw(boards: Boards, crystal: Crystal, y: Array, steady: Steady, swing: tuple[float, End]) -> Array:
+    swing_peak_v, swing_at = swing
+    squared_admittance = steady.conductance**2 + (steady.susceptance + y) ** 2
+    half_power = np.asarray(crystal.esr_ohm) * (swing_peak_v**2 / 2 / MICRO)
+    power: Array = at(steady.critical, boards.across) * squared_admittance * half_power
+    return power / at(steady.critical, boards.output) if swing_at == "output" else power

@@ -16,7 +16,7 @@ import numpy as np
 
 from compare import budget
 from compare.bench import Bench, CircuitKeys, Setting
-from compare.boards import Boards, every_board
+from compare.boards import Boards, every_board, load_errors_ppm
 from compare.circuit import Array
 from compare.columns import HIGH, LOW, MID, Columns, Flags, Whole, spans
 from compare.corners import BY_SHUNT_FLOOR, analyse_nominal, as_reckoned, limiters_of, rated_gm, swing_of
@@ -213,7 +213,7 @@ def _evaluated(
         boards = one.boards if GAIN in one.circuit else replace(one.boards, gm=_rated_siemens(one, bench, crystal))
         found = every_board(boards, crystal, *swing_of(keys))
         if of_frequency is not crystal:
-            found["load_error_ppm"] = every_board(boards, of_frequency, *swing_of(keys))["load_error_ppm"]
+            found["load_error_ppm"] = load_errors_ppm(boards, of_frequency)
         yield found
         return
     circuit = circuit_at(one.circuit, keys, bench, np.asarray(crystal.shunt_capacitance_pf))
