@@ -19,13 +19,6 @@ from compare.figures import frequency_text
 from compare.typed import Field, Typed, fields, shown, understand
 
 Path_ = tuple[str | int, ...]
-CAUTIONS = (
-    "An estimate is no measurement, and a computed margin is no proof: prove it on the real board, over temperature "
-    "and supply, with the series resistor at which oscillation stops.",
-    "Overdrive ages a crystal and can break it: measure the drive, do not only compute it.",
-    "Safety-related, medical, automotive or aviation use needs qualified people, the standards that apply and the "
-    "maker's word.",
-)
 PRIVACY = "Sheets stay on this machine."
 NO_SHEETS = "Drop some, paste text, or open the orchard example."
 NOTHING_OPEN = "No sheets are open."

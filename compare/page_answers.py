@@ -10,7 +10,8 @@ import streamlit as st
 from compare import answers, charts, export, pieces
 from compare import page_session as session
 from compare.bench import Bench
-from compare.desk import CAUTIONS, NO_CIRCUIT, NO_PARTS, NOTHING_OPEN, PRIVACY, field_of
+from compare.cautions import CAUTIONS
+from compare.desk import NO_CIRCUIT, NO_PARTS, NOTHING_OPEN, PRIVACY, field_of
 from compare.offer import find_offers
 
 COPY = """export default function({data, parentElement}) {

@@ -6,6 +6,7 @@ import unicodedata
 from collections.abc import Iterable, Iterator, Mapping, Sequence
 from typing import Any
 
+from compare.cautions import CAUTIONS
 from compare.explain import FIELD_WORDS, SYMBOLS, figure
 from extract.fields import field_of
 from extract.model import FIELD_NAMES, Part, Reading, SpecSheet, When
@@ -54,12 +55,6 @@ NUMBERS = {
     "measured_margin": "measured margin",
     "measured_startup_ms": "measured start-up, ms",
 }
-CAUTIONS = (
-    "An estimate is no measurement: where a number is marked estimated, get the value from the maker.",
-    "Prove the margin on the real board, over temperature and supply; samples that start are no proof.",
-    "Typical transconductance is not the least; ESR here is R1 unless the bench says otherwise.",
-    "Drive-level dependence, spurious modes, layout, leakage and supply noise are not in this reckoning.",
-)
 
 
 def display_width(text: str) -> int:
