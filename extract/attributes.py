@@ -22,7 +22,7 @@ def attributes_of(stated: Mapping[str, str], texts: Sequence[str] = ()) -> Attri
     reflow = re.search(r"\d{3}", stated.get("reflow_peak_c", ""))
     return Attributes(
         pads=_pads([stated.get("pads", ""), *texts]),
-        aec_q200=_yes_or_no(stated.get("aec_q200")),
+        aec_q200=_yes_or_no(stated.get("aec_q200")) if "aec_q200" in stated else _qualified(texts),
         moisture_level=stated.get("moisture_level"),
         reflow_peak_c=float(reflow[0]) if reflow else None,
         status=stated.get("status"),
@@ -40,6 +40,17 @@ def _yes_or_no(text: str | None) -> bool | None:
     if key(text) in {key(word) for word in phrases.get("yes", ())} or "q200" in key(text):
         return True
     return None
+
+
+_QUALIFIED = re.compile(r"(?i)\bAEC[\s-]?Q[\s-]?200\b")
+
+
+def _qualified(texts: Sequence[str]) -> bool | None:
+    """True where a line names AEC-Q200 and withdraws nothing; None where none does."""
+    lines = [fold(text) for text in texts if _QUALIFIED.search(fold(text))]
+    if not lines or any(re.search(r"(?i)\b(?:not|no|non|nicht|on request|optional)\b", line) for line in lines):
+        return None
+    return True
 
 
 def _pads(texts: Sequence[str]) -> Pads | None:

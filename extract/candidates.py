@@ -287,7 +287,7 @@ def _one_row(
     for value, read_value in parts:
         number = next(each for each in (read_value.min, read_value.typ, read_value.max) if each is not None)
         stated = next(name for name in ("min", "typ", "max") if getattr(read_value, name) is not None)
-        bounds[value.bound or stated] = number
+        bounds[stated] = number
         bare = bare and read_value.bare and value.bound is None
         doubts += read_value.doubts
         when = merged(when, kept(read_value.when, label.field))

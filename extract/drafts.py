@@ -24,8 +24,9 @@ _WORD = re.compile(r"[^\s,;:()\[\]|]+")
 class Draft:
     """What a sheet says of one part.
 
-    `texts` are the words beside its values, for what it is not. `crystal`: its own row calls it one; `other`: rows
-    beside it do and its own does not. `by_subject`: identity entries under the name of a model in a column head.
+    `texts` are the words beside its values, for what it is not; `lines` all that its section prints, for its pads.
+    `crystal`: its own row calls it one; `other`: rows beside it do and its own does not. `by_subject`: identity entries
+    under the name of a model in a column head.
     """
 
     part_number: str | None = None
@@ -37,6 +38,7 @@ class Draft:
     attributes: dict[str, str] = field(default_factory=dict)
     candidates: list[Candidate] = field(default_factory=list)
     texts: list[str] = field(default_factory=list)
+    lines: list[str] = field(default_factory=list)
     where: Where | None = None
     crystal: bool = False
     other: bool = False
@@ -49,6 +51,8 @@ class Draft:
 
     def name(self, what: str, text: str) -> None:
         """Set part number, maker or package where it is open; a size goes before words such as "2-SMD, No Lead"."""
+        if what == "part_number" and ":" in fold(text) and part_tokens(text):
+            text = part_tokens(text)[0]
         if what == "maker":
             text = re.split(r"\s+[·|•]\s+", text)[0]
         known = getattr(self, what)

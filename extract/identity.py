@@ -11,6 +11,7 @@ from extract import wording
 from extract.entries import Entry, Item, Text
 from extract.fold import fold
 from extract.meaning import identity_words, meaning, part_tokens
+from extract.vocabulary import vocabulary
 
 _HOLDER = re.compile(
     r"(?i)\bHC[\s-]?/?\s?\d{2,3}(?:\s?[/-]\s?(?:US?|SMD|SM|S)|US?|SMD|S)?(?:[\s/-]?SMD)?\b|\bUM-?[1-5]\b|\bTO-?\d{1,2}\b"
@@ -178,9 +179,30 @@ def part_number_of(items: Sequence[Item], headers: Sequence[Text]) -> str | None
         _score_tokens(line, 2, scores)
     best = max(scores, key=lambda name: scores[name], default=None)
     if best is not None and scores[best] > 0:
-        return best
+        return _whole_number(best, texts[:FIRST_LINES])
     stock = [text for item in items if isinstance(item, Entry) and (text := _labelled(item, "stock_number"))]
     return next((text for text in stock if part_tokens(text) == (text,)), None)
+
+
+def _whole_number(name: str, texts: Sequence[Text]) -> str:
+    """The longer number that begins with `name`, where the sheet's first lines print it and call `name` no series."""
+    words = identity_words()["not_parts"]["series"]
+    longer = name
+    for text in texts:
+        line = unfolded(text.piece.text)
+        at = line.find(name)
+        behind = line[at + len(name) :].casefold().lstrip(" )-")
+        if at >= 0 and any(behind.startswith(word) for word in words):
+            return name
+        for token in part_tokens(line):
+            if token.startswith(f"{longer}-") and not says_ordering(line):
+                longer = token
+    return longer
+
+
+def says_ordering(line: str) -> bool:
+    """Whether a line explains how part numbers are made up."""
+    return any(word in fold(line).casefold() for word in vocabulary().phrases.get("ordering", ()))
 
 
 def _as_part_number(text: str) -> str | None:

@@ -96,8 +96,7 @@ def _of_section(section: Section, shared: Draft | None, blocks: Blocks) -> list[
         own.maker = own.maker or maker_of(section.items, (), sure=True)
         _inherit(own, shared)
     if rows:
-        stated = [each for each in own.candidates if each.source not in ("loose", "prose")]
-        own.candidates = stated
+        own.candidates = [each for each in own.candidates if each.source != "loose"]
         for row in rows:
             _inherit(row, own)
         return rows
@@ -112,6 +111,7 @@ def _inherit(draft: Draft, general: Draft) -> None:
     draft.candidates += [each for each in general.candidates if each.field not in own and _holds_for(draft, each)]
     draft.modes = draft.modes or set(general.modes)
     draft.cuts = draft.cuts or set(general.cuts)
+    draft.lines = draft.lines or general.lines
     draft.maker = draft.maker or general.maker
     draft.package = draft.package or general.package
     for name, text in general.attributes.items():
@@ -146,6 +146,7 @@ def _draft(section: Section, blocks: Blocks) -> Draft:
         if isinstance(item, Key):
             draft.candidates += key_candidates(item)
     _take_texts(draft, texts)
+    draft.lines = texts_of(section.items)
     return draft
 
 
@@ -247,7 +248,7 @@ def _part(draft: Draft, maker: str | None) -> Part:
         mode=mode,
         cut=cut,
         resonance=None if loads == series else ("load" if loads else "series"),
-        attributes=attributes_of(draft.attributes, draft.texts),
+        attributes=attributes_of(draft.attributes, draft.lines),
         readings=readings,
     )
 

@@ -55,7 +55,7 @@ def _for_name(draft: Draft, name: str, names: list[str]) -> Draft:
     own.take_identity(entries)
     for entry in entries:
         own.take_mode_and_cut(entry.values[0].piece.text)
-    own.part_number = name
+    own.part_number, own.lines = name, draft.lines
     own.maker, own.package = own.maker or draft.maker, own.package or package
     own.modes, own.cuts = own.modes or set(draft.modes), own.cuts or set(draft.cuts)
     own.attributes = draft.attributes | own.attributes
