@@ -10,11 +10,11 @@ from extract.groups import Group, Item
 from extract.model import When
 from extract.tokens import Token
 
-_SPEAKING = frozenset({"bound", "request", "standard", "from", "years", "mode"})
+_SPEAKING = frozenset({"bound", "request", "standard", "recommended", "from", "years", "mode"})
 # Between a number without a unit and the number whose unit it shares stands nothing but these.
 _LIST_MARKS = frozenset(
     {"sep", "or", "open", "close", "bound", "standard", "compare", "to", "unit", "slash", "number", "pm", "line"}
-    | {"years", "equals", "colon", "mode", "from", "series"}
+    | {"years", "equals", "colon", "mode", "from", "series", "recommended"}
 )  # fmt: skip
 
 
@@ -29,6 +29,7 @@ class Amount:
     request: bool = False
     standard: bool = False
     best: bool = False
+    recommended: bool = False
     doubts: list[str] = field(default_factory=list)
     low: float = 0.0
     high: float | None = None
@@ -98,6 +99,8 @@ def _say(amount: Amount, word: Token) -> None:
         amount.request = True
     elif word.kind == "standard":
         amount.standard = True
+    elif word.kind == "recommended":
+        amount.recommended = True
     elif word.kind == "from":
         amount.best = amount.group.shape in ("pm", "single")
     elif word.kind == "years":
@@ -161,7 +164,7 @@ def _value_follows_on_line(items: list[Item], after: list[Amount], line: int) ->
 
 def _until_next(items: list[Item], after: list[Amount], position: int, sort: str) -> list[Amount]:
     """A mode, band or year count at the head speaks of all up to the next of its sort; a bound of the next number."""
-    if sort == "bound":
+    if sort in ("bound", "recommended"):
         return after[:1]
     end = next((i for i in range(position + 1, len(items)) if _sort_of(items[i]) == sort), len(items))
     return [amount for amount in after if amount.position < end]

@@ -59,12 +59,22 @@ def give_bounds(amounts: list[Amount], heading: Heading) -> Heading:
 def values_of(amounts: list[Amount], row: Field, heading: Heading) -> list[Value]:
     """One value for each condition and each choice of ranges, in the order printed."""
     clusters: dict[When, list[Amount]] = {}
-    for amount in amounts:
+    for amount in _without_recommended(amounts):
         if not amount.request:
             clusters.setdefault(amount.when, []).append(amount)
     return [
         replace(value, when=when) for when, members in clusters.items() for value in _together(members, row, heading)
     ]
+
+
+def _without_recommended(amounts: list[Amount]) -> list[Amount]:
+    """What is recommended beside a limit bounds nothing ("200 µW max., 10 µW recommended"); alone it is the usual."""
+    if any(amount.bound in ("min", "max") and not amount.recommended for amount in amounts):
+        return [amount for amount in amounts if not amount.recommended]
+    for amount in amounts:
+        if amount.recommended:
+            amount.bound = amount.bound or "typ"
+    return amounts
 
 
 def _together(amounts: list[Amount], row: Field, heading: Heading) -> list[Value]:

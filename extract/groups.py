@@ -10,6 +10,8 @@ from extract.vocabulary import vocabulary
 
 _ENDS_SEGMENT = frozenset({"sep", "line", "slash", "open", "close", "or", "colon"})
 _UNITS = frozenset({"unit", "other"})
+# Quantities that a value may be restricted to; a voltage or a time is only how it was measured.
+_RESTRICTING = frozenset({"frequency", "temperature", "capacitance"})
 
 
 @dataclass(slots=True)
@@ -113,7 +115,10 @@ class _Reader:
     def _limits_foreign(self) -> bool:
         """In "60 Ω below 16 MHz" the word bounds the condition, not the value."""
         units = ("other",) if self.field_name else _UNITS
-        return self.kind(1) == "number" and self.kind(2) in units and self.kind(3) not in ("to", "pm")
+        if self.kind(1) != "number" or self.kind(2) not in units or self.kind(3) in ("to", "pm"):
+            return False
+        unit = self.tokens[self.at + 2]
+        return unit.kind == "unit" or unit.meaning in _RESTRICTING
 
     def _opens_range(self) -> bool:
         """Whether "to" has no lower end before it ("fundamental to 40 MHz"); "a" and "à" are "at" as well."""
@@ -189,7 +194,7 @@ class _Reader:
             self.take()
             made.shape, made.high, made.high_unit = "centre", self.take(), self.take_unit()
             made.doubts.append("a range sign stands before ±; read as centre and tolerance")
-        elif self._range_follows():
+        elif self._range_follows() and not self._other_kind_follows(made.low_unit):
             self.take()
             while self.kind() in ("compare", "to"):
                 self.take()
@@ -227,6 +232,13 @@ class _Reader:
         return self.kind() == "to" and (
             self.kind(1) == "number" or (self.kind(1) in ("compare", "to") and self.kind(2) == "number")
         )
+
+    def _other_kind_follows(self, unit: Token | None) -> bool:
+        """Whether the number after "to" is another quantity: "500 MΩ à 100 V", where "à" says "at"."""
+        if unit is None or self.kind(1) != "number" or self.kind(2) not in _UNITS:
+            return False
+        end = self.tokens[self.at + 2]
+        return (end.kind, end.meaning) != (unit.kind, unit.meaning)
 
     def _letter_between(self) -> bool:
         """Whether a letter stands between two ends ("3.5 MHz ≤ f < 4.0 MHz")."""

@@ -124,7 +124,9 @@ _SAFE_LOWER = re.compile(r"esr|cl|[crlf]\d|f(?:nom|tol|tem|age|aging|stab)")
 def _symbol(text: str, parts: Parts) -> str | None:
     """As `symbol_of`, for cells that may hold anything: no single letter but Q, no lower-case word, no weak one."""
     wanted, printed = key(text), text.strip(EDGE)
-    if not wanted or len(wanted) > 12 or (len(wanted) == 1 and printed != "Q") or wanted in vocabulary().weak_symbols:
+    if not wanted or len(wanted) > 12 or (len(wanted) == 1 and printed != "Q"):
+        return None
+    if wanted in vocabulary().weak_symbols and not parts.snake:
         return None
     if printed.isascii() and printed == printed.lower() and not parts.snake and not _SAFE_LOWER.fullmatch(wanted):
         return None
@@ -169,8 +171,10 @@ def _bounded_symbol(parts: Parts) -> str | None:
 
 
 def _letter_with_unit(parts: Parts) -> str | None:
-    """The field of a single letter whose unit stands beside it: "f (MHz)"."""
+    """The field of a single letter whose unit stands beside it: "f (MHz)"; of temperatures also "T min"."""
     wanted = key(parts.core)
+    if parts.core == "T" and parts.bound in ("min", "max") and not parts.unit and not parts.brackets:
+        return vocabulary().symbols.get(wanted)
     if len(wanted) != 1 or not parts.unit:
         return None
     fields = vocabulary().shared.get(wanted) or (vocabulary().symbols.get(wanted, ""),)

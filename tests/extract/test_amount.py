@@ -410,3 +410,41 @@ def test_no_text_breaks_the_reader_and_no_bounds_come_out_of_order_unsaid(text, 
     for value in read_values(text, field):
         stated = [bound for bound in (value.min, value.typ, value.max) if bound is not None]
         assert stated == sorted(stated) or value.doubts
+
+
+RECOMMENDED = [
+    "200 µW max., 10 µW recommended",
+    "10 µW empfohlen, 200 µW max.",
+    "200 µW max., 10 µW consigliati",
+    "recommended: 10 µW, max. 200 µW",
+    "最大200μW（推奨10μW）",
+    "200 µW max. (recommended: 10 to 100 µW)",
+]
+
+
+@pytest.mark.parametrize("text", RECOMMENDED)
+def test_what_is_recommended_beside_a_limit_is_no_reading(text: str) -> None:
+    assert [said(value) for value in read_values(text, DRIVE)] == [{"max": 200}]
+
+
+def test_what_is_recommended_alone_is_the_usual_value() -> None:
+    assert [said(value) for value in read_values("10 µW recommended", DRIVE)] == [{"typ": 10}]
+
+
+MEASURED_AT_VOLTS = [
+    "500 MΩ min (100 Vcc)",
+    "min. 500 MΩ (100 V c.c.)",
+    "500 MΩ min 100Vdc",
+    "DC 100 V 500 MΩ min",
+    "min. 500 MΩ à 100 Vcc ±15 V",
+]
+
+
+@pytest.mark.parametrize("text", MEASURED_AT_VOLTS)
+def test_the_measuring_voltage_is_no_value_and_takes_no_bound(text: str) -> None:
+    assert [said(value) for value in read_values(text, INS)] == [{"min": 500}]
+
+
+@pytest.mark.parametrize("text", ["40 Ω máx.", "máx. 40 Ω", "40 Ω máximo"])
+def test_spanish_bounds_may_be_abbreviated(text: str) -> None:
+    assert [said(value) for value in read_values(text, ESR)] == [{"max": 40}]

@@ -493,3 +493,54 @@ def test_no_text_breaks_the_label_reader(text):
     role_of(text)
     trap_of(text)
     ambiguous_label(text)
+
+
+# Heads of lists and keys of pasted lines; the meaning of each is by hand.
+SHORT_HEADS = [
+    ("Parabolic coeff. (ppm/°C²)", PARA),
+    ("PARABOLIC_COEFF", PARA),
+    ("PARABOLIC", PARA),
+    ("Parabel (ppm/°C²)", PARA),
+    ("Parábola", PARA),
+    ("AGE", AGE),
+    ("STG", STORE),
+    ("STOR", STORE),
+    ("di magazzino", STORE),
+    ("T_OP", OPER),
+    ("T_STG", STORE),
+    ("di esercizio", OPER),
+    ("SHUNT", C0),
+]
+
+
+@pytest.mark.parametrize(("text", "field"), SHORT_HEADS)
+def test_short_heads_and_keys_name_their_field(text: str, field: str) -> None:
+    label = read_label(text)
+    assert label is not None
+    assert label.exact
+    assert label.field == field
+
+
+@pytest.mark.parametrize(("text", "bound"), [("T min", "min"), ("T max", "max"), ("T min (°C)", "min")])
+def test_a_single_t_with_a_bound_is_an_end_of_the_operating_range(text: str, bound: str) -> None:
+    label = read_label(text)
+    assert label is not None
+    assert (label.field, label.bound) == (OPER, bound)
+
+
+@pytest.mark.parametrize(
+    ("text", "field", "bound", "unit"),
+    [
+        ("並列容量 MAX(pF)", C0, "max", "pF"),
+        ("励振レベル TYP(μW)", DRIVE, "typ", "μW"),
+        ("ESR máx. (Ω)", ESR, "max", "Ω"),
+    ],
+)
+def test_a_bound_before_the_bracketed_unit_belongs_to_the_head(text: str, field: str, bound: str, unit: str) -> None:
+    label = read_label(text)
+    assert label is not None
+    assert (label.field, label.bound, label.unit) == (field, bound, unit)
+
+
+def test_an_italian_article_code_is_the_part_number() -> None:
+    assert identity_label("Codice articolo") == "part_number"
