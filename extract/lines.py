@@ -64,9 +64,10 @@ def _text(line: Line) -> Text:
 
 
 def _one(line: Line, items: list[Item]) -> int:
-    items.append(_text(line))
+    # A part number in the line begins a part, and the line's text belongs to that part: entries first.
     if footnote_of(line.text) is None or split_pairs(fold(line.text))[0]:
         items.extend(_entries(line))
+    items.append(_text(line))
     return 1
 
 

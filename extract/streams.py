@@ -75,6 +75,8 @@ def _first_words(run: Sequence[Line]) -> str:
 def _is_broken(line: Line, below: Line | None) -> bool:
     """A line that says nothing without its neighbour: a unit, a bound word, a value with its unit on the next line."""
     text = fold(line.text)
+    if split_pairs(text)[0]:
+        return False
     known = meaning(text)
     if is_unit(text) or known.role in ("min", "typ", "max"):
         return True
