@@ -52,6 +52,22 @@ def usual(*changed: Reading, without: tuple[str, ...] = (), number: str = "P1", 
     return part(*kept, *changed, number=number, **identity)
 
 
+def fork(*changed: Reading, without: tuple[str, ...] = (), **identity: Any) -> Part:
+    """A 32.768 kHz tuning fork with a span of everything; `changed` readings take the place of their fields'."""
+    stated = (
+        reading("frequency_mhz", 0.032768),
+        reading("esr_ohm", 45e3, min=30e3, max=60e3),
+        exactly("load_capacitance_pf", 7.0),
+        reading("shunt_capacitance_pf", 1.1, min=0.9, max=1.4),
+        reading("motional_capacitance_ff", 3.0, min=2.4, max=3.6),
+        reading("parabolic_coefficient_ppm_per_c2", -0.034, min=-0.040, max=-0.028),
+        reading("turnover_temperature_c", 25.0, min=20.0, max=30.0),
+    )
+    fields = {r.field for r in changed}
+    kept = [r for r in stated if r.field not in fields]
+    return usual(*kept, *changed, without=("frequency_stability_ppm", *without), **({"cut": "tuning fork"} | identity))
+
+
 USUAL_BENCH: dict[str, dict[str, Any]] = {
     "requirement": {"frequency_mhz": 16.0, "total_ppm": 100.0, "temperature_c": [-40.0, 85.0], "startup_ms": 10.0},
     "circuit": {

@@ -1,6 +1,6 @@
 import numpy as np
 import pytest
-from made_sheets import bench, exactly, reading, sheet, usual
+from made_sheets import bench, exactly, fork, reading, sheet, usual
 
 from compare.curves import (
     SHAPE_NOT_STATED,
@@ -13,17 +13,7 @@ from compare.curves import (
 )
 from compare.reckoning import part_result, reckon_sheets
 
-FORK = usual(
-    reading("frequency_mhz", 0.032768),
-    reading("esr_ohm", 40e3, max=70e3),
-    exactly("load_capacitance_pf", 7.0),
-    reading("shunt_capacitance_pf", 1.1, min=0.9, max=1.4),
-    reading("motional_capacitance_ff", 3.0, min=2.4, max=3.6),
-    reading("parabolic_coefficient_ppm_per_c2", -0.034, min=-0.040, max=-0.028),
-    reading("turnover_temperature_c", 25.0, min=20.0, max=30.0),
-    without=("frequency_stability_ppm",),
-    cut="tuning fork",
-)
+FORK = fork(reading("esr_ohm", 40e3, max=70e3))
 FORK_BENCH = {
     "requirement": {"frequency_mhz": 0.032768, "total_ppm": 300.0},
     "circuit": {

@@ -1,6 +1,6 @@
 import numpy as np
 import pytest
-from made_sheets import CASES, bench, case_bench, case_sheet, exactly, reading, sheet, usual
+from made_sheets import CASES, bench, case_bench, case_sheet, exactly, fork, reading, sheet, usual
 from scipy import stats
 
 from compare.columns import make_columns
@@ -137,20 +137,10 @@ def test_what_is_not_known_has_no_share():
 
 def test_a_fork_is_held_to_its_parabola_over_the_range():
     """-0.034 (25 - (-40))² = -143.65 ppm and more at the cold end: all boards short of ±100 ppm, none of ±300 ppm."""
-    fork = usual(
-        reading("frequency_mhz", 0.032768),
-        reading("esr_ohm", max=50e3),
-        exactly("load_capacitance_pf", 7.0),
-        exactly("shunt_capacitance_pf", 1.1),
-        exactly("motional_capacitance_ff", 3.0),
-        exactly("parabolic_coefficient_ppm_per_c2", -0.034),
-        exactly("turnover_temperature_c", 25.0),
-        without=("frequency_stability_ppm",),
-        cut="tuning fork",
-    )
+    part = fork(exactly("parabolic_coefficient_ppm_per_c2", -0.034), exactly("turnover_temperature_c", 25.0))
     keys = {"transconductance_ms": 0.02, "feedback_resistor_kohm": 10_000.0, "swing_v": 0.2}
     short = [
-        drawn(fork, bench({"circuit": keys, "requirement": {"frequency_mhz": 0.032768, "total_ppm": ppm}})).share(
+        drawn(part, bench({"circuit": keys, "requirement": {"frequency_mhz": 0.032768, "total_ppm": ppm}})).share(
             "total_ppm"
         )[0]
         for ppm in (100.0, 300.0)

@@ -2,20 +2,13 @@ import math
 import re
 
 import pytest
-from made_sheets import bench, exactly, reading, sheet, usual
+from made_sheets import bench, fork, reading, sheet, usual
 from test_simulator import ngspice, run  # noqa: F401 - the fixture
 
 from compare.reckoning import reckon_sheets
 from compare.spice import subcircuit
 
-FORK = usual(
-    reading("frequency_mhz", 0.032768),
-    reading("esr_ohm", 40e3, max=70e3),
-    exactly("load_capacitance_pf", 7.0),
-    reading("shunt_capacitance_pf", 1.1, min=0.9, max=1.4),
-    reading("motional_capacitance_ff", 3.0, min=2.4, max=3.6),
-    cut="tuning fork",
-)
+FORK = fork()
 FORK_BENCH = {"requirement": {"frequency_mhz": 0.032768}, "circuit": {"transconductance_ms": 0.02}}
 CHOSEN = {
     "16 MHz": (usual(reading("esr_ohm", 40.0, min=30.0, max=60.0)), {}),
