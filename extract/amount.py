@@ -132,6 +132,8 @@ def _give_units(amounts: list[Amount], pieces: list[Token], heading: Heading, ro
         low = group.low_unit.value if group.low_unit else high
         amount.low = _scaled(amount, group.low, (name, low), row, heading.decimal)
         if group.high is not None:
+            if group.below is not None:
+                amount.below = _scaled(amount, group.below, (name, high), row, heading.decimal)
             amount.high = _scaled(amount, group.high, (name, 1.0 if group.percent else high), row, heading.decimal)
 
 
@@ -156,9 +158,12 @@ def _scaled(amount: Amount, token: Token, unit: tuple[str, float], row: Field, d
     return float(f"{(-value if token.meaning == '-' else value) * scale:.12g}")
 
 
+_S_CODE = re.compile(r"(?:^|[,;/、(]|\bor\b|\bo\b|\bou\b|\boder\b)\s*S\s*(?:$|[,;/、)]|or\b|o\b|ou\b|oder\b)")
+
+
 def _offers_series(items: list[Item], text: str) -> bool:
-    """Whether series resonance is offered: the word or ∞, not "on request"; "S" alone is its code."""
-    if key(text) == "s":
+    """Whether series resonance is offered: the word or ∞, not "on request"; "S" alone between marks is its code."""
+    if key(text) == "s" or _S_CODE.search(text):
         return True
     words = [item for item in items if item.word is not None]
     asked = {item.segment for item in words if item.word and item.word.kind == "request"}

@@ -33,6 +33,7 @@ class Amount:
     doubts: list[str] = field(default_factory=list)
     low: float = 0.0
     high: float | None = None
+    below: float | None = None
 
     @property
     def printed_unit(self) -> Token | None:
@@ -85,11 +86,12 @@ def attach(items: list[Item], amounts: list[Amount], row: Field) -> None:
 
 
 def _of_others(items: list[Item], position: int) -> bool:
-    """Whether "on request" speaks of other values than those printed: "8 pF (others on request)"."""
+    """Whether "on request" speaks of no value printed: "8 pF (others on request)", "18 pF, series on request"."""
     item = items[position]
     if item.word is None or item.word.kind != "request":
         return False
-    return any(each.segment == item.segment and each.word is not None and each.word.kind == "others" for each in items)
+    words = [each.word.kind for each in items if each.segment == item.segment and each.word is not None]
+    return "others" in words or "series" in words
 
 
 def _say(amount: Amount, word: Token) -> None:

@@ -169,15 +169,16 @@ def _plus_minus(amount: Amount, row: Field, doubts: tuple[str, ...]) -> Value:
 
 def _centre(amount: Amount, row: Field, doubts: tuple[str, ...]) -> Value:
     middle, half = amount.low, abs(amount.high or 0.0)
+    below = half if amount.below is None else abs(amount.below)
     if amount.group.percent:
         unit = amount.group.high_unit
-        half = abs(middle) * half * (unit.value if unit else 0.01)
+        half = below = abs(middle) * half * (unit.value if unit else 0.01)
     if row.sign == "negative" and middle > 0:
         middle, doubts = -middle, (*doubts, _LOST_MINUS)
     if row.sign == "symmetric" and middle:
         doubts = (*doubts, "a centre with a tolerance is unusual here")
     return Value(
-        min=round(middle - half, row.decimals), typ=middle, max=round(middle + half, row.decimals), doubts=doubts
+        min=round(middle - below, row.decimals), typ=middle, max=round(middle + half, row.decimals), doubts=doubts
     )
 
 

@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from dataclasses import dataclass, field
+from dataclasses import dataclass, field, replace
 
 from extract.fold import key
 from extract.tokens import Token
@@ -19,12 +19,14 @@ class Group:
     """One amount as printed.
 
     `shape`: "single", "pm" (± low), "range" (low to high), "centre" (low ± high), "grades" (±low to ±high).
+    `below` is the lower tolerance of a centre that has two ("25 +5/-10"), else None.
     `foreign` names the kind of quantity where its unit is none of the field's. `low_unit`, `high_unit`: (text, factor).
     """
 
     shape: str
     low: Token
     high: Token | None = None
+    below: Token | None = None
     low_unit: Token | None = None
     high_unit: Token | None = None
     bound: str | None = None
@@ -189,6 +191,9 @@ class _Reader:
         if self.kind() == "pm" and self.kind(1) == "number" and not self._other_quantity(made.low_unit):
             self.take()
             made.shape, made.high, made.high_unit = "centre", self.take(), self.take_unit()
+        elif tolerances := self._two_tolerances(made.low):
+            made.shape, (made.high, made.below) = "centre", tolerances
+            made.high_unit = self.take_unit()
         elif self.kind() == "to" and self.kind(1) == "pm" and self.kind(2) == "number":
             self.take()
             self.take()
@@ -211,6 +216,28 @@ class _Reader:
                 self.take()
             made.shape, made.high, made.high_unit = "range", self.take(), self.take_unit()
         return made
+
+    def _two_tolerances(self, middle: Token) -> tuple[Token, Token] | None:
+        """Upper and lower tolerance behind a number: "25 +5/-5", "25 (-10/+5)"; without the slash only two alike."""
+        at = self.at + (self.kind() == "open")
+        signed: list[Token] = []
+        slash = False
+        for _ in range(2):
+            slash = slash or self._kind_at(at) == "slash"
+            at += self._kind_at(at) == "slash"
+            minus = self._kind_at(at) == "to" and self.tokens[at].meaning == "-"
+            at += minus
+            if self._kind_at(at) != "number":
+                return None
+            signed.append(replace(self.tokens[at], meaning="-") if minus else self.tokens[at])
+            at += 1
+        if not _are_tolerances(signed, middle, slash=slash):
+            return None
+        self.at = at
+        return (signed[0], signed[1]) if signed[0].meaning == "+" else (signed[1], signed[0])
+
+    def _kind_at(self, at: int) -> str:
+        return self.tokens[at].kind if at < len(self.tokens) else ""
 
     def _other_quantity(self, unit: Token | None) -> bool:
         """Whether ± begins another quantity ("32.768 kHz ±20 ppm"); in percent or the same unit it is a half width."""
@@ -257,7 +284,18 @@ class _Reader:
         high = self.tokens[self.at + ahead]
         if {low.meaning, high.meaning} == {"-", "+"}:
             return True
+        if self.plain_pair and not low.meaning and high.meaning == "+":
+            return low.number is not None and low.number.plain == 0
         return self.plain_pair and low.meaning == "-" and not high.meaning
+
+
+def _are_tolerances(signed: list[Token], middle: Token, *, slash: bool) -> bool:
+    """Whether two signed numbers are tolerances of the middle: opposite signs, a slash between or alike, small."""
+    sizes = [token.number.plain for token in signed if token.number]
+    centre = middle.number.plain if middle.number else 0.0
+    if len(sizes) < 2 or {token.meaning for token in signed} != {"+", "-"}:
+        return False
+    return (slash or sizes[0] == sizes[1]) and (middle.meaning != "-" or max(sizes) < centre)
 
 
 _PPM = frozenset({"frequency_tolerance_ppm", "frequency_stability_ppm", "ageing_ppm", "frequency_mhz"})

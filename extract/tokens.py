@@ -186,7 +186,7 @@ def _signed_number(text: str, at: int, field: str, before: list[Token]) -> list[
         if (
             text[at] == "-"
             and after_number
-            and not (start == at + 1 and text[at - 1] == " " and _after_plus_minus(before))
+            and not (start == at + 1 and text[at - 1] == " " and (_after_plus_minus(before) or _after_pair(before)))
         ):
             return [Token("to", "-", at, at + 1, meaning="-")]
         found = NUMBER.match(text, start)
@@ -217,6 +217,12 @@ def _after_plus_minus(before: list[Token]) -> bool:
     """Whether the number before is a ±, which begins no range: "±15 ppm -20 ~ +70 °C"."""
     numbers_before = [at for at, token in enumerate(before) if token.kind == "number"]
     return bool(numbers_before) and numbers_before[-1] > 0 and before[numbers_before[-1] - 1].kind == "pm"
+
+
+def _after_pair(before: list[Token]) -> bool:
+    """Whether two signs make a range complete already: "-20 +70 -40 +85"."""
+    signs = [token.meaning for token in before if token.kind == "number"]
+    return len(signs) % 2 == 0 and signs[-2:] == ["-", "+"]
 
 
 def _numbers(text: str, start: int, found: re.Match[str], sign: str, field: str, *, glued: bool) -> list[Token]:

@@ -339,6 +339,10 @@ _BREAK = re.compile(r"[,;()]|\n\n")
 # --- heads, names and words that are no field
 
 
+# What stands behind a colon is a head's value, not another name of it ("Resonance: series").
+_AFTER_COLON = re.compile(r"(?<=\w)\s?:\s?\w[^()]*$")
+
+
 def _names(text: str) -> tuple[list[str], list[str]]:
     """A head as printed and without brackets or number; then each of its languages and alternatives alone."""
     folded = fold(text)
@@ -346,7 +350,8 @@ def _names(text: str) -> tuple[list[str], list[str]]:
         return [], []
     plain = re.sub(r"[(\[][^()\[\]]*[)\]]", " ", folded).strip(EDGE)
     numbered = re.sub(r"^\s*\d{1,2}\s*[.)、]\s*", "", plain)
-    pieces = [piece for piece in re.split(r"[/|\n()\[\]:,]", folded) if piece.strip()]
+    head = _AFTER_COLON.sub("", folded)
+    pieces = [piece for piece in re.split(r"[/|\n()\[\]:,]", head) if piece.strip()]
     latin = IDEOGRAPHS.sub(" ", folded).strip(EDGE)
     return [folded, plain, numbered], [*pieces, *IDEOGRAPHS.findall(folded), latin]
 

@@ -412,6 +412,43 @@ def test_no_text_breaks_the_reader_and_no_bounds_come_out_of_order_unsaid(text, 
         assert stated == sorted(stated) or value.doubts
 
 
+TWO_TOLERANCES = [
+    ("+25 +5/-5 °C", TURN, {"min": 20, "typ": 25, "max": 30}),
+    ("25 °C +5 -5", TURN, {"min": 20, "typ": 25, "max": 30}),
+    ("25 (-10/+5) °C", TURN, {"min": 15, "typ": 25, "max": 30}),
+    ("12 pF +0.5/-0.2", LOAD, {"min": 11.8, "typ": 12, "max": 12.5}),
+    ("-5/+15 ppm", TOL, {"min": -5, "max": 15}),
+    ("0 +70 °C", OPER, {"min": 0, "max": 70}),
+]
+
+
+@pytest.mark.parametrize(("text", "field", "expected"), TWO_TOLERANCES)
+def test_two_signed_numbers_behind_a_centre_are_its_tolerances(text: str, field: str, expected: dict[str, Any]) -> None:
+    assert [said(value) for value in read_values(text, field)] == [expected]
+
+
+def test_two_ranges_without_range_signs_stay_two() -> None:
+    found = [said(value) for value in read_values("-20 +70 -40 +85 °C", OPER)]
+    assert found == [{"min": -20, "max": 70}, {"min": -40, "max": 85}]
+
+
+@pytest.mark.parametrize(
+    ("text", "load"),
+    [
+        ("S or 10 to 30 pF", {"min": 10, "max": 30}),
+        ("series, 10, 12 pF", {"options": (10, 12)}),
+        ("8~32pF, S", {"min": 8, "max": 32}),
+        ("S / 12 pF / 18 pF", {"options": (12, 18)}),
+    ],
+)
+def test_series_beside_loads_is_offered_and_is_no_load(text: str, load: dict[str, Any]) -> None:
+    assert [said(value) for value in read_values(text, LOAD)] == [load, {"series": True}]
+
+
+def test_series_on_request_leaves_the_load_standing() -> None:
+    assert [said(value) for value in read_values("18 pF standard, series on request", LOAD)] == [{"typ": 18}]
+
+
 RECOMMENDED = [
     "200 µW max., 10 µW recommended",
     "10 µW empfohlen, 200 µW max.",

@@ -542,5 +542,13 @@ def test_a_bound_before_the_bracketed_unit_belongs_to_the_head(text: str, field:
     assert (label.field, label.bound, label.unit) == (field, bound, unit)
 
 
+def test_a_row_called_resonance_speaks_of_the_load() -> None:
+    assert [label.field for text in ("Resonance", "Risonanza", "谐振方式") if (label := read_label(text))] == [LOAD] * 3
+
+
+def test_what_follows_a_colon_is_no_name_of_a_head() -> None:
+    assert role_of("Resonance: series") is None
+
+
 def test_an_italian_article_code_is_the_part_number() -> None:
     assert identity_label("Codice articolo") == "part_number"
