@@ -1,4 +1,4 @@
-"""The command line: `quartzfolio extract | review | rank | page`. Exit statuses are the data contract's.
+"""The command line: `quartzfolio extract | review | rank | substitute | changes | page`, exit statuses by the contract.
 
 Heavy imports stand inside the commands that need them, so that `--help` answers at once.
 """
@@ -62,6 +62,16 @@ def _parser() -> argparse.ArgumentParser:
     rank = _command(commands, "rank", "the candidates for your circuit, best first, and why", _rank)
     _sheets(rank)
     _bench(rank)
+    swap = _command(commands, "substitute", "may these parts stand in for that one, on the board as built", _substitute)
+    swap.add_argument("incumbent", metavar="INCUMBENT", help="the part on the board: its sheet, or FILE#PART_NUMBER")
+    _sheets(swap, "candidates", "CANDIDATE")
+    _bench(swap, required=False)
+    changed = _command(
+        commands, "changes", "what differs between two revisions of a sheet, and if it matters", _changes
+    )
+    changed.add_argument("old", metavar="OLD", help="the earlier revision")
+    changed.add_argument("new", metavar="NEW", help="the later one")
+    _bench(changed, required=False)
     page = commands.add_parser("page", help="the same in the browser, on this machine only")
     page.add_argument("sheets", nargs="*", metavar="SHEET", help="sheets or folders to open at once")
     page.add_argument("--bench", metavar="BENCH.toml", help="circuit and requirement to open at once")
@@ -78,18 +88,18 @@ def _command(commands: Any, name: str, about: str, run: Any) -> argparse.Argumen
     return parser
 
 
-def _sheets(parser: argparse.ArgumentParser) -> None:
+def _sheets(parser: argparse.ArgumentParser, name: str = "sheets", shown: str = "SHEET") -> None:
     parser.add_argument(
-        "sheets",
+        name,
         nargs="+",
-        metavar="SHEET",
+        metavar=shown,
         help="a file (PDF, XLSX, XLS, ODS, CSV, TSV, HTML, DOCX, text, picture), a folder of them, "
         "FILE#PART_NUMBER for one part of a file, or - for standard input",
     )
 
 
-def _bench(parser: argparse.ArgumentParser) -> None:
-    parser.add_argument("--bench", required=True, metavar="BENCH.toml", help="your circuit and what is asked of it")
+def _bench(parser: argparse.ArgumentParser, *, required: bool = True) -> None:
+    parser.add_argument("--bench", required=required, metavar="BENCH.toml", help="your circuit and what is asked of it")
 
 
 class _Version(argparse.Action):
@@ -143,6 +153,41 @@ def _rank(options: argparse.Namespace) -> int:
     _print_json(result) if options.json else _print(rank_text(result))
     readable = not any(_faults(sheet.notes) for sheet in intake.sheets) and not _faults(intake.notes)
     return DONE if result["rows"] and readable else LOOK
+
+
+def _substitute(options: argparse.Namespace) -> int:
+    from compare.substitute_text import substitute_text
+    from compare.substitution import SubstituteError, substitute
+
+    bench = None if options.bench is None else _read_bench(options.bench)
+    incumbent, candidates = _read([options.incumbent]), _read(options.candidates)
+    try:
+        result = substitute(incumbent.sheets, candidates.sheets, bench)
+    except SubstituteError as fault:
+        raise CallError(str(fault)) from None
+    _add_notes(result, incumbent)
+    _add_notes(result, candidates)
+    _print_json(result) if options.json else _print(substitute_text(result))
+    fits = all(one["verdict"] == "drop-in" for one in result["candidates"])
+    every_file = bool(candidates.sheets) and all(sheet.parts for sheet in candidates.sheets)
+    return DONE if result["candidates"] and fits and every_file and not _faults(candidates.notes) else LOOK
+
+
+def _changes(options: argparse.Namespace) -> int:
+    from compare.changes import changes
+    from compare.substitute_text import changes_text
+
+    bench = None if options.bench is None else _read_bench(options.bench)
+    old, new = _read([options.old]), _read([options.new])
+    for name, intake in ((options.old, old), (options.new, new)):
+        if not any(sheet.parts for sheet in intake.sheets):
+            said = [note.message for sheet in intake.sheets for note in sheet.notes] + [n.message for n in intake.notes]
+            raise CallError(f"{name}: no crystal to compare ({said[0] if said else 'nothing was read'})")
+    result = changes(old.sheets, new.sheets, bench)
+    _add_notes(result, old)
+    _add_notes(result, new)
+    _print_json(result) if options.json else _print(changes_text(result))
+    return LOOK if any(line["matters"] for line in result["lines"]) else DONE
 
 
 def _page(options: argparse.Namespace) -> int:
