@@ -17,10 +17,11 @@ import numpy as np
 from numpy.typing import NDArray
 
 from compare.bench import Bench, CircuitKeys, Setting
-from compare.circuit import Array, Circuit, turning_transconductance_ms
+from compare.circuit import Array, Circuit, Complex, terminal_impedance_ohm, turning_transconductance_ms
 from compare.columns import HIGH, LOW, MID, Columns, Flags
 from compare.oscillation import Crystal, End, Limiter, analyse
 from compare.rating import from_critical_ms, from_esr_ms, from_negative_resistance_ms, list_row
+from compare.turning import hardest_capacitances
 
 BY_SHUNT_FLOOR = (
     "motional_inductance_mh",
@@ -265,7 +266,7 @@ def _corner_sets(
     keys = setting.circuit
     shunt, shunt_index = _shunt_ends(columns, number, with_floor=True)
     crystal = crystal_at(columns, bench, number, shunt)
-    circuit, greatest_gm = corner_circuit(bench, keys, shunt)
+    circuit, greatest_gm = corner_circuit(bench, keys, shunt, _with_hardest(bench, keys, crystal))
     for limiter in limiters_of(keys):
         yield analyse(circuit, crystal, *swing_of(keys), limiter, keys.probe_pf), greatest_gm, shunt_index
 
@@ -313,6 +314,15 @@ def _shunt_ends(columns: Columns, number: int, *, with_floor: bool) -> tuple[Arr
     return np.stack(distinct, axis=-1)[:, :, None, None, None, None], index
 
 
+def nominal_r1_and_gm(columns: Columns, bench: Bench, at: int) -> tuple[float, float]:
+    """One part's R1 in ohm and the transconductance in mS at their mid values, as `analyse_nominal` has them."""
+    one = columns.take([at])
+    shunt = one.shunt_pf[0, MID]
+    esr = motional_resistance_ohm(one, bench, one.esr_ohm[0, MID], shunt) + _added_resistance(bench, 0)
+    gm = nominal_transconductance_ms(as_reckoned(bench.settings[0].circuit, bench), bench, shunt)
+    return float(esr[0]), float(gm[0])
+
+
 def _added_resistance(bench: Bench, number: int) -> float:
     if bench.crystal.series_resistor_rule != "add to ESR":
         return 0.0
@@ -330,6 +340,45 @@ def _capacitance_corners(nodes: Nodes) -> list[Array]:
     ends = [sorted({span[LOW], span[HIGH]}) if span[LOW] == span[LOW] else [np.nan] for span in vars(nodes).values()]
     combinations = np.array(list(itertools.product(*ends)))
     return [combinations[:, column].reshape(1, 1, 1, 1, -1, 1) for column in range(combinations.shape[1])]
+
+
+def _with_hardest(bench: Bench, stated: CircuitKeys, crystal: Crystal) -> list[Array]:
+    """The corners of the capacitances, and what lies between them where the circuit drives hardest.
+
+    At the IC's gains and at the least critical one, for the least and the greatest C0 and R1 of all parts.
+    """
+    keys = as_reckoned(stated, bench)
+    nodes, frequency = Nodes.of(keys), bench.requirement.frequency_mhz
+    corners = _capacitance_corners(nodes)
+    if np.isnan([span[MID] for span in vars(nodes).values()]).any():
+        return corners
+    c0, r1 = (_extremes(np.asarray(of)) for of in (crystal.shunt_capacitance_pf, crystal.esr_ohm))
+    c0, r1 = np.repeat(c0, len(r1)), np.tile(r1, len(c0))
+    ends = Crystal(frequency, np.inf, c0[:, None], 0.0, r1[:, None])
+    at_corners = make_circuit(keys, bench, [one.reshape(1, -1) for one in corners], np.full((1, 1), np.nan))
+    critical = np.fmin.reduce(analyse(at_corners, ends)["critical_transconductance_ms"], axis=1)
+    range_ms = keys.transconductance_range_ms
+    gains = (
+        [rated_gm(keys, bench, c0)]
+        if range_ms is None
+        else [np.full_like(c0, g) for g in {range_ms[LOW], range_ms[HIGH]}]
+    )
+    targets = {(float(g), float(c)) for gain in (*gains, critical) for g, c in zip(gain, c0, strict=True)}
+    targets |= {(float(g), 0.0) for gain in gains for g in gain}
+    gm, shunt = np.array(sorted(pair for pair in targets if not np.isnan(pair).any())).reshape(-1, 2).T[:, :, None]
+
+    def impedance(at: Array) -> Complex:
+        return terminal_impedance_ohm(make_circuit(keys, bench, list(np.moveaxis(at, -1, 0)), gm), frequency, shunt)
+
+    inside = hardest_capacitances(list(vars(nodes).values()), impedance)
+    return [
+        np.concatenate([one.ravel(), more]).reshape(1, 1, 1, 1, -1, 1)
+        for one, more in zip(corners, inside.T, strict=True)
+    ]
+
+
+def _extremes(values: Array) -> Array:
+    return np.unique([np.fmin.reduce(values, axis=None), np.fmax.reduce(values, axis=None)])
 
 
 def _transconductances(bench: Bench, keys: CircuitKeys, of: tuple[Sequence[Array], Array]) -> tuple[Array, Array]:

@@ -8,6 +8,7 @@ from dataclasses import dataclass
 from functools import cached_property
 
 from compare.bench import Bench, CircuitKeys
+from compare.corners import as_reckoned
 from compare.motional import estimate_quality_factor
 from compare.offer import Offer
 from compare.stated import Taken
@@ -101,16 +102,20 @@ class BenchWords:
 def bench_words(bench: Bench) -> BenchWords:
     """The circuit's capacitances and resistors, and its transconductance with where it comes from."""
     keys = bench.settings[0].circuit
-    return BenchWords(keys, _capacitors(keys, bench.requirement.frequency_mhz), _transconductance(keys))
+    words = _capacitors(as_reckoned(keys, bench), bench.requirement.frequency_mhz)
+    return BenchWords(keys, words, _transconductance(keys))
 
 
 def _capacitors(keys: CircuitKeys, frequency_mhz: float) -> str:
-    parts = []
+    parts = [f"f {frequency_mhz:.10g} MHz"]
     for end, symbol in (("input", "Cin"), ("output", "Cout")):
         inside = keys.internal_at_each_pin_pf if end == "input" or keys.series_resistor_ohm == 0 else 0.0
         terms = (getattr(keys, f"{end}_capacitor_pf"), getattr(keys, f"{end}_stray_pf"), inside or None)
         parts.append(f"{symbol} {' + '.join(figure(term) for term in terms if term is not None)} pF")
     parts += [f"across {figure(keys.across_stray_pf)} pF", f"Rf {figure(keys.feedback_kohm(frequency_mhz))} kΩ"]
+    ahead = [keys.amplifier_output_pf, keys.internal_at_each_pin_pf if keys.series_resistor_ohm else 0.0]
+    if any(ahead):
+        parts.append(f"Cp {' + '.join(figure(value) for value in ahead if value)} pF")
     if not math.isinf(keys.output_resistance_kohm):
         parts.append(f"Ro {figure(keys.output_resistance_kohm)} kΩ")
     if keys.series_resistor_ohm:
@@ -132,8 +137,12 @@ def _transconductance(keys: CircuitKeys) -> str:
         "negative_resistance_ohm": "F |R| ω² (2 CL)²",
         "esr_max_ohm": "F 4 R ω² (CL + C0)²" if keys.rating.esr_means == "motional" else "F 4 R ω² CL²",
     }
+    stated_value = getattr(keys.rating, keys.rating.kind)
+    value = "" if isinstance(stated_value, tuple) else f" {figure(stated_value)}"
+    load = "" if keys.rating.load_pf is None else f" at CL {figure(keys.rating.load_pf)} pF"
     factor = figure(keys.rating.factor_inside)
-    return f"gm from the IC's rating, {forms[keys.rating.kind]} with F {factor} (circuit.rating.{keys.rating.kind})"
+    rated = f"circuit.rating.{keys.rating.kind}{value}{load}"
+    return f"from the IC's rating, {forms[keys.rating.kind]} with F {factor} ({rated})"
 
 
 @dataclass(frozen=True)
@@ -147,6 +156,9 @@ class Subject:
     lacking: Mapping[str, tuple[str, ...]]
     c1: str
     c0: str
+    r1_and_gm: Callable[[], tuple[float, float]] = lambda: (math.nan, math.nan)
+    """R1 (ohm) that the ESR comes to by the bench's rules, and the transconductance (mS) that the IC's rating stands
+    for at this part's C0; worked out only where a sentence needs them."""
     budget: str = ""
 
     @property
@@ -158,8 +170,13 @@ class Subject:
         return self.words.capacitors
 
     @property
+    def frequency(self) -> str:
+        return f"f {self.offer.frequency_mhz:.10g} MHz"
+
+    @property
     def gm(self) -> str:
-        return self.words.transconductance
+        words = self.words.transconductance
+        return f"gm {figure(self.r1_and_gm()[1])} mS {words}" if words.startswith("from") else words
 
     @cached_property
     def esr(self) -> str:
@@ -169,7 +186,8 @@ class Subject:
         if self.bench.crystal.series_resistor_rule == "add to ESR":
             added = figure(self.circuit.series_resistor_ohm)
             text += f", plus the series resistor {added} Ω as ESR (crystal.series_resistor_rule)"
-        return text
+        altered = self.bench.crystal.esr_means == "at load" or self.bench.crystal.series_resistor_rule == "add to ESR"
+        return f"{text}: R1 {figure(self.r1_and_gm()[0])} Ω" if altered else text
 
     @cached_property
     def load(self) -> str:
@@ -213,7 +231,7 @@ def _inductance(s: Subject) -> str:
         return f"as stated: {reading_text('motional_inductance_mh', stated)}"
     if not s.offer.load.stated:
         return f"L1 = 1/(ω² C1), fs taken as the nominal frequency, for no rated load is stated; {s.c1}"
-    return f"L1 = (1 + C1/(C0 + CL))/(ω² C1); {s.c1}, {s.c0}, {s.load}"
+    return f"L1 = (1 + C1/(C0 + CL))/(ω² C1); {s.frequency}, {s.c1}, {s.c0}, {s.load}"
 
 
 def _quality(s: Subject) -> str:
@@ -222,17 +240,19 @@ def _quality(s: Subject) -> str:
         return f"as stated: {reading_text('quality_factor', stated)}"
     if not s.offer.at[0].esr.stated:
         return f"Q estimated, for no ESR is stated: {estimate_quality_factor().basis}"
-    return f"Q = 1/(ωs C1 R1); {s.c1}, {s.esr}"
+    return f"Q = 1/(ωs C1 R1); fs {s.ends['series_resonance_mhz'][1]:.9g} MHz, {s.c1}, {s.esr}"
 
 
 def _series(s: Subject) -> str:
     if s.offer.series:
-        return f"fs = f: a series-resonant part, f {s.offer.case.frequencies_mhz[0]:.10g} MHz"
-    return f"fs = f/√(1 + C1/(C0 + CL)); f {s.offer.frequency_mhz:.10g} MHz, {s.c1}, {s.c0}, {s.load}"
+        return f"fs = f: a series-resonant part, {s.frequency}"
+    return f"fs = f/√(1 + C1/(C0 + CL)); {s.frequency}, {s.c1}, {s.c0}, {s.load}"
 
 
 def _circuit_load(s: Subject) -> str:
-    return f"CL = -1/(ω Im Z) of the circuit at its critical transconductance, C0 not in; {s.capacitors}"
+    return (
+        f"CL = -1/(ω Im Z) of the circuit at its critical transconductance, C0 not in; {s.esr}, {s.c0}; {s.capacitors}"
+    )
 
 
 def _load_error(s: Subject) -> str:
@@ -262,7 +282,7 @@ def _gain_ratio(s: Subject) -> str:
 
 
 HOW: dict[str, Callable[[Subject], str]] = {
-    "motional_capacitance_ff": lambda s: s.c1,
+    "motional_capacitance_ff": lambda s: f"{s.c1}; {s.frequency}, {s.c0}, {s.load}, {s.esr}" if " = " in s.c1 else s.c1,
     "motional_inductance_mh": _inductance,
     "quality_factor": _quality,
     "series_resonance_mhz": _series,
@@ -273,9 +293,7 @@ HOW: dict[str, Callable[[Subject], str]] = {
     "load_resonance_resistance_ohm": lambda s: (
         f"RL = R1 (1 + C0/CL)²; {s.esr}, {s.c0}, CL {s.mid('circuit_load_pf')} pF"
     ),
-    "negative_resistance_ohm": lambda s: (
-        f"Re Z of the active circuit at {s.offer.frequency_mhz:.10g} MHz, C0 not in; {s.gm}; {s.capacitors}"
-    ),
+    "negative_resistance_ohm": lambda s: f"Re Z of the active circuit, C0 not in; {s.gm}; {s.capacitors}",
     "margin": _margin,
     "gain_ratio": _gain_ratio,
     "resistance_headroom": lambda s: f"-Re Z/R1, C0 taken into the circuit; {s.gm}, {s.esr}, {s.c0}; {s.capacitors}",
@@ -294,10 +312,13 @@ HOW: dict[str, Callable[[Subject], str]] = {
     ),
     "load_error_ppm": _load_error,
     "trim_ppm_per_pf": lambda s: (
-        f"df/(f dCL) = -C1/(2 (C0 + CL)²); {s.c1}, {s.c0}, circuit's CL {s.mid('circuit_load_pf')} pF"
+        f"df/(f dCL) = -C1/(2 (C0 + CL)²), R1 counted besides; {s.c1}, {s.c0}, "
+        f"circuit's CL {s.mid('circuit_load_pf')} pF"
     ),
     "drive_level_uw": _drive,
-    "startup_ms": lambda s: f"ln(10⁵)/σ, σ ≈ (-Re Z - R1)/(2 L1), C0 in; {s.gm}, {s.esr}, {s.c0}, {s.c1}",
+    "startup_ms": lambda s: (
+        f"ln(10⁵)/σ, σ ≈ (-Re Z - R1)/(2 L1), C0 in; {s.gm}, {s.esr}, {s.c0}, {s.c1}; {s.capacitors}"
+    ),
     "total_ppm": lambda s: s.budget,
 }
 

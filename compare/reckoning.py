@@ -5,6 +5,7 @@ from __future__ import annotations
 import math
 from collections.abc import Mapping, Sequence
 from dataclasses import dataclass, replace
+from functools import partial
 from typing import Any
 
 import numpy as np
@@ -12,7 +13,7 @@ import numpy as np
 from compare.bench import Bench
 from compare.circuit import Array
 from compare.columns import MID, Columns, Whole, make_columns
-from compare.corners import Reckoned, lossless_load_pf, reckon
+from compare.corners import Reckoned, lossless_load_pf, nominal_r1_and_gm, reckon
 from compare.explain import BenchWords, Subject, bench_words, how
 from compare.offer import Offer, Offers, fields_to_check, find_offers, with_load
 from compare.overtone import judge_mode
@@ -295,7 +296,10 @@ def _standing(reckoning: Reckoning, at: int) -> Standing:
         key: tuple(name for name, flags in number.lacking.items() if flags[at])
         for key, number in reckoning.numbers.items()
     }
-    subject = Subject(offer, bench, reckoning.words, ends, lacking, c1_words(columns, at), c0_words(columns, at))
+    words = (c1_words(columns, at), c0_words(columns, at))
+    subject = Subject(
+        offer, bench, reckoning.words, ends, lacking, *words, partial(nominal_r1_and_gm, columns, bench, at)
+    )
     stop = float(reckoning.greatest_gm[at])
     standing = Standing(
         at=at,

@@ -84,7 +84,7 @@ def with_rating(**rating):
 def test_a_critical_transconductance_is_a_transconductance_with_its_factor():
     found = reviewed(usual(), with_rating(critical_transconductance_max_ms=1.6, factor_inside=5.0))
     assert found["gain_ratio"]["mid"] == pytest.approx(reviewed(usual())["gain_ratio"]["mid"])
-    assert "gm from the IC's rating, F gm_crit with F 5" in found["margin"]["how"]
+    assert "from the IC's rating, F gm_crit with F 5" in found["margin"]["how"]
 
 
 def test_an_esr_limit_is_turned_by_the_lossless_form():
