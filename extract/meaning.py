@@ -63,7 +63,7 @@ def meaning(text: str) -> Meaning:
     number = bool(_NUMBER.search(folded))
     if not folded or len(folded) > 120:
         return Meaning(None, None, None, None, None, number)
-    names = _names(folded)
+    names = [folded] if _is_label(folded) else _names(folded)
     role = None if number else _first(wording.role_of, names)
     identity = _first(wording.identity_label, names)
     attribute = _first(wording.attribute_label, names)
@@ -72,6 +72,12 @@ def meaning(text: str) -> Meaning:
     trap = _first(wording.trap_of, names)
     known = role or identity or attribute or (label is not None and label.exact)
     return Meaning(label, role, identity, attribute, trap, number and not known)
+
+
+def _is_label(folded: str) -> bool:
+    """Whether the whole text is a field's label: then the Latin word in it ("並列容量 TYP") is a bound, no heading."""
+    label = wording.read_label(folded)
+    return label is not None and label.exact
 
 
 _MEASURED_AT = re.compile(
