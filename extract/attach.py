@@ -42,19 +42,27 @@ class Amount:
         return self.group.low_unit or own
 
 
+# Quantities that change with drive or temperature: "±1 ppm from 1 to 100 µW" states no drive level.
+_SHIFTS = frozenset({"relative", "resistance"})
+
+
 def own_amounts(items: list[Item], pieces: list[Token], row: Field) -> list[Amount]:
     """The groups that are values of the field: their unit is its own or missing, and no condition names them."""
     found: list[Amount] = []
+    of_others = False
     for position, item in enumerate(items):
         group = item.group
-        if (
-            group is None
-            or group.foreign is not None
-            or group.low.glued
-            or (group.high is not None and group.high.glued)
-        ):
+        if group is None:
             continue
-        if group.before.startswith("symbol") or (group.before == "at" and found and not group.bound):
+        if group.foreign in _SHIFTS and not found:
+            of_others = True
+            if row.name == "drive_level_uw":
+                return []
+        if group.foreign is not None or group.low.glued or (group.high is not None and group.high.glued):
+            continue
+        if group.before.startswith("symbol") or (group.before == "at" and (found or of_others) and not group.bound):
+            continue
+        if group.before == "except" and found:
             continue
         found.append(Amount(group, position, bound=group.bound, doubts=list(group.doubts)))
     places = [(amount.group.start, amount.group.end) for amount in found if amount.printed_unit]
@@ -78,7 +86,7 @@ def attach(items: list[Item], amounts: list[Amount], row: Field) -> None:
         if item.word is not None and item.word.kind in _SPEAKING and not _of_others(items, position):
             for amount in _targets(items, amounts, position):
                 _say(amount, item.word)
-        elif item.group is not None and position not in own:
+        elif item.group is not None and position not in own and item.group.before != "except":
             when = condition(item.group, row.name)
             if when != When():
                 for amount in _targets(items, amounts, position):

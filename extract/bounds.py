@@ -202,7 +202,7 @@ def _range(amount: Amount, row: Field, heading: Heading, doubts: tuple[str, ...]
             ),
         )
     low, high = min(low, high), max(low, high)
-    if amount.bound == "typ":
+    if amount.bound == "typ" or (heading.bound == "typ" and row.limit == "max"):
         return Value(doubts=(*doubts, f"typical is printed as a range, {low:g} to {high:g} {row.unit}"))
     return Value(min=low or (0.0 if row.sign == "either" else None), max=high, doubts=doubts)
 

@@ -160,6 +160,9 @@ class _Reader:
         index = self.at - 1
         while index >= 0 and self.tokens[index].kind in ("equals", "compare", "pm"):
             index -= 1
+        if index > 0 and self.tokens[index].kind == "colon" and len(self.tokens[index - 1].text) > 1:
+            # A single letter before a colon is a code ("K: ±10 ppm").
+            index -= 1
         if index < 0:
             return ""
         token = self.tokens[index]
@@ -168,7 +171,7 @@ class _Reader:
             if owner is not None and owner != self.field_name:
                 return "symbol " + owner
             return "at" if index and self.tokens[index - 1].kind == "at" else ""
-        return token.kind if token.kind in ("at", "for", "from") else ""
+        return token.kind if token.kind in ("at", "for", "from", "except") else ""
 
     def _plus_minus(self) -> Group:
         self.take()

@@ -35,7 +35,7 @@ class Token:
 # Which meaning a word has that stands in several lists of the wording files: the first of these.
 _WORD_KINDS = (
     "first_year", "per_year", "others", "request", "standard", "recommended", "min", "typ", "max", "series",
-    "plus_minus", "see", "between", "to", "or", "from", "for", "at", "minus", "plus", "above", "below",
+    "plus_minus", "see", "except", "between", "to", "or", "from", "for", "at", "minus", "plus", "above", "below",
 )  # fmt: skip
 _MARKS = {
     "±": "pm", "~": "to", "…": "to", "<": "compare", "≤": "compare", ">": "compare", "≥": "compare",

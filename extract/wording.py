@@ -3,9 +3,10 @@
 from __future__ import annotations
 
 import re
-from dataclasses import dataclass
+from dataclasses import dataclass, replace
 from functools import cache, lru_cache
 
+from extract.fields import field_of
 from extract.fold import fold, key
 from extract.labels import EDGE, Parts, is_nominal, one_year_words, take_apart, without_unit
 from extract.model import When
@@ -60,7 +61,17 @@ def read_label(text: str) -> Label | None:
     parts = take_apart(folded)
     if key(parts.core) in vocabulary().shared and not parts.brackets:
         return None
-    return _exact(parts) or _beside_symbol(parts) or _inside(parts) or _run_together(parts) or _misspelt(parts)
+    found = _exact(parts) or _beside_symbol(parts) or _inside(parts) or _run_together(parts) or _misspelt(parts)
+    if found and found.bound is None and field_of(found.field).limit == "max" and _recommends(folded):
+        return replace(found, bound="typ")
+    return found
+
+
+def _recommends(folded: str) -> bool:
+    """Whether the label names what is recommended: the usual value, no limit ("Recommended drive level")."""
+    words = set(re.findall(r"\w+", folded.casefold()))
+    phrases = vocabulary().phrases.get("recommended", ())
+    return any(each in words or (IDEOGRAPHS.match(each) and each in folded) for each in phrases)
 
 
 def ambiguous_label(text: str) -> tuple[str, ...]:
@@ -98,7 +109,8 @@ def _named(core: str) -> str | None:
 
 def _exact(parts: Parts) -> Label | None:
     head, comma, tail = parts.core.partition(",")
-    turned = [f"{tail} {head}"] if comma else []
+    words = parts.core.split()
+    turned = [f"{tail} {head}"] if comma else [" ".join(reversed(words))] if len(words) == 2 else []
     for name in (parts.core, " ".join([parts.core, *parts.brackets]), *turned):
         if field := _named(name):
             return _label(parts, field)
@@ -270,14 +282,21 @@ def _run_together(parts: Parts) -> Label | None:
 
 
 @cache
-def _deletions() -> dict[str, set[str]]:
-    """Every long wording with each one character left out: a wording one slip away is found without comparing all."""
-    index: dict[str, set[str]] = {}
+def _by_either_end() -> dict[str, list[str]]:
+    """Every long wording under its first and last letters: one slip spoils one end, never both."""
+    index: dict[str, list[str]] = {}
     for wording in vocabulary().labels:
-        if len(wording) >= 9 and wording.isalpha():
-            for shorter in _with_one_out(wording):
-                index.setdefault(shorter, set()).add(wording)
+        if len(wording) >= _LONG and wording.isalpha():
+            for end in _ends(wording):
+                index.setdefault(end, []).append(wording)
     return index
+
+
+_LONG = 9
+
+
+def _ends(word: str) -> tuple[str, str]:
+    return word[:4] + "-", "-" + word[-4:]
 
 
 def _with_one_out(word: str) -> set[str]:
@@ -287,9 +306,13 @@ def _with_one_out(word: str) -> set[str]:
 def _misspelt(parts: Parts) -> Label | None:
     """One letter wrong, missing, too many or two of them swapped, in a wording of nine letters or more."""
     wanted = key(parts.core)
-    if not 9 <= len(wanted) <= 60 or not wanted.isalpha() or _trap_in(parts.core) is not None:
+    if not _LONG <= len(wanted) <= 60 or not wanted.isalpha():
         return None
-    near = {wording for shorter in _with_one_out(wanted) for wording in _deletions().get(shorter, ())}
+    alike = {wording for end in _ends(wanted) for wording in _by_either_end().get(end, ())}
+    close = [wording for wording in alike if abs(len(wording) - len(wanted)) < 2]
+    near = {wording for wording in close if not _with_one_out(wanted).isdisjoint(_with_one_out(wording))}
+    if not near or _trap_in(parts.core) is not None:
+        return None
     fields = {vocabulary().labels[wording] for wording in near}
     return _label(parts, fields.pop(), exact=False) if len(fields) == 1 else None
 
@@ -424,10 +447,8 @@ def trap_of(text: str) -> str | None:
     folded = fold(text)
     if len(folded) > LONGEST_LABEL or role_of(text) is not None:
         return None
-    parts = take_apart(folded)
-    if _exact(parts) is not None:
-        return None
-    return _trap_in(folded)
+    trap = _trap_in(folded)
+    return None if trap is None or _exact(take_apart(folded)) is not None else trap
 
 
 def _trap_in(text: str) -> str | None:

@@ -449,6 +449,23 @@ def test_series_on_request_leaves_the_load_standing() -> None:
     assert [said(value) for value in read_values("18 pF standard, series on request", LOAD)] == [{"typ": 18}]
 
 
+def test_a_condition_that_is_excluded_is_none() -> None:
+    assert [said(value) for value in read_values("±10 ppm not with 18 pF", TOL)] == [{"min": -10, "max": 10}]
+
+
+@pytest.mark.parametrize("text", ["±1 ppm from 1 µW to 100 µW", "max. ±1 ppm, 1 to 100 µW"])
+def test_what_changes_over_a_span_of_drive_states_no_drive_level(text: str) -> None:
+    assert read_values(text, DRIVE) == []
+
+
+def test_the_reference_of_a_stability_is_no_operating_temperature() -> None:
+    assert read_values("±30 ppm max ref. to 25 °C", OPER) == []
+
+
+def test_another_symbol_before_a_colon_begins_another_value() -> None:
+    assert [said(value) for value in read_values("7 pF max. - C1: 3 fF", C0)] == [{"max": 7}]
+
+
 RECOMMENDED = [
     "200 µW max., 10 µW recommended",
     "10 µW empfohlen, 200 µW max.",

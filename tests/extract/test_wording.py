@@ -542,6 +542,27 @@ def test_a_bound_before_the_bracketed_unit_belongs_to_the_head(text: str, field:
     assert (label.field, label.bound, label.unit) == (field, bound, unit)
 
 
+@pytest.mark.parametrize(
+    ("text", "bound"),
+    [("Drive level recommended", "typ"), ("推奨ドライブレベル", "typ"), ("Recommended operating temperature", None)],
+)
+def test_a_label_of_what_is_recommended_bounds_a_limit_no_more_than_typical(text: str, bound: str | None) -> None:
+    label = read_label(text)
+    assert label is not None
+    assert label.bound == bound
+
+
+@pytest.mark.parametrize(
+    ("text", "field"),
+    [("Resistance series", ESR), ("Resistance insulation", INS), ("Frequency tolerance at turnover", TOL)],
+)
+def test_a_group_head_before_its_row_reads_as_the_wording_turned(text: str, field: str) -> None:
+    label = read_label(text)
+    assert label is not None
+    assert label.exact
+    assert label.field == field
+
+
 def test_a_row_called_resonance_speaks_of_the_load() -> None:
     assert [label.field for text in ("Resonance", "Risonanza", "谐振方式") if (label := read_label(text))] == [LOAD] * 3
 
