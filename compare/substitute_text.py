@@ -5,9 +5,9 @@ from __future__ import annotations
 from collections.abc import Iterable, Iterator, Mapping, Sequence
 from typing import Any
 
+from compare.cautions import CAUTIONS
 from compare.explain import FIELD_WORDS, figure
 from compare.relations import rules
-from compare.cautions import CAUTIONS
 from compare.report import fitted, when_text, wrapped
 from extract.model import When
 
