@@ -3,7 +3,6 @@
 from __future__ import annotations
 
 import gc
-import logging
 from collections.abc import Iterator
 from contextlib import contextmanager
 from hashlib import sha256
@@ -51,6 +50,8 @@ def read_sheet(data: bytes, name: str) -> SpecSheet:
     except DocumentError as fault:
         return SpecSheet(file=name, sha256=digest, kind=kind_by_name(name), notes=(_error(str(fault)),))
     except Exception as fault:
+        import logging
+
         # One odd sheet must not stop a heap of others; the log gets the whole fault, the user one sentence.
         logging.getLogger(__name__).exception("reading %s", name)
         message = (

@@ -123,6 +123,8 @@ def key(text: str) -> str:
 
 @lru_cache(maxsize=65536)
 def _key(text: str) -> str:
+    if text.isascii() and (bare := text.replace(" ", "")).isalnum():
+        return bare.lower()
     folded = fold(text).casefold()
     if not folded.isascii():
         folded = "".join(c for c in unicodedata.normalize("NFD", folded) if c not in _ACCENTS)

@@ -116,21 +116,26 @@ def _utf16(text: str) -> bytes:
 
 
 def _read_text(data: bytes, suffix: str) -> Document:
-    from extract.documents import delimited, mail, text, webpage
-
     if _is_binary(data):
         raise DocumentError(f"The file is of an unknown binary kind. {_HOW_TO_SAVE}")
     if data.lstrip()[:5] == b"{\\rtf":
         raise DocumentError("The file is in Rich Text Format. Save it as DOCX or PDF.")
     if suffix in _DELIMITED_NAMES:
+        from extract.documents import delimited
+
         return delimited.read(data)
+    from extract.documents import mail, text
+
     if mail.is_mail(data):
         return mail.read(data)
     if suffix in _MARKDOWN_NAMES:
         return text.read(data)
     if suffix in _WEB_NAMES or _is_web_page(data):
+        # Another module for pages only: its library takes as long to load as a text sheet to read.
+        from extract.documents import webpage
+
         return webpage.read(data)
-    return delimited.read(data) if _is_list(data) else text.read(data)
+    return _read_list_or_text(data)
 
 
 def _is_web_page(data: bytes) -> bool:
@@ -138,12 +143,13 @@ def _is_web_page(data: bytes) -> bool:
     return bool(_HTML_START.match(head)) or len(_HTML_TAGS.findall(head)) > 2
 
 
-def _is_list(data: bytes) -> bool:
+def _read_list_or_text(data: bytes) -> Document:
     from extract.documents import delimited, text
     from extract.documents.decoding import decode
 
     content, _ = decode(data)
-    return not text.is_markdown(content) and delimited.looks_delimited(content)
+    is_list = not text.is_markdown(content) and delimited.looks_delimited(content)
+    return delimited.read(data) if is_list else text.read(data)
 
 
 def _is_binary(data: bytes) -> bool:

@@ -2,15 +2,16 @@
 
 from __future__ import annotations
 
-import email
-import email.policy
 import re
 from collections.abc import Iterator
-from email.message import EmailMessage, MIMEPart
+from typing import TYPE_CHECKING
 
 from extract.documents.decoding import decode
 from extract.documents.model import Document, DocumentError, Line, Segment, Table
 from extract.model import Note, Where
+
+if TYPE_CHECKING:
+    from email.message import EmailMessage, MIMEPart
 
 _HEADERS = ("From", "Date", "Subject")
 _IS_MAIL = re.compile(rb"\A(?:[A-Za-z][\w-]*:[^\n]*\n(?:[ \t][^\n]*\n)*)*?MIME-Version:", re.IGNORECASE)
@@ -23,6 +24,10 @@ def is_mail(data: bytes) -> bool:
 
 def read(data: bytes) -> Document:
     """Header lines and the body; lines count in the file where the body stands there as it reads, else in the body."""
+    # Every text is asked whether it is a mail; few are.
+    import email.policy
+    from email.message import EmailMessage
+
     message = email.message_from_bytes(data, policy=email.policy.default)
     if not isinstance(message, EmailMessage):
         raise DocumentError("The mail cannot be read. Copy its text into a file.")
