@@ -7,115 +7,43 @@ from typing import Any
 
 import numpy as np
 
-from compare.bench import Bench, CircuitKeys
-from compare.circuit import Array
-from compare.columns import HIGH, LOW, MID, Columns
-from compare.corners import (
-    as_reckoned,
-    limiters_of,
-    make_circuit,
-    motional_resistance_ohm,
-    nominal_transconductance_ms,
-    swing_of,
-)
+from compare.bench import Bench
+from compare.columns import HIGH, LOW, Columns
+from compare.corners import limiters_of
 from compare.explain import figure
-from compare.oscillation import Crystal, analyse
+from compare.roots import SHUNT, SHUNT_FLOOR, MovedAlone, moved_alone
 from compare.terms import Total
 
 MARGIN, TOTAL, DRIVE = "margin", "total_ppm", "drive_level_uw"
 UNITS = {MARGIN: "", TOTAL: " ppm", DRIVE: " µW"}
 NEGLIGIBLE = 1e-6
-Roots = dict[str, float]
 
 
 def contributors_of(columns: Columns, bench: Bench, total: Total, at: int) -> dict[str, list[dict[str, Any]]]:
     """For margin, total_ppm and drive_level_uw the inputs that add to the worst case, the greatest first."""
     one = columns.take([at])
-    nominal = _roots(one, bench, bench.settings[0].circuit, 0)
-    base = _outcome(one, bench, nominal, bench.settings[0].circuit)
+    limiter, *others = limiters_of(bench.settings[0].circuit)
+    moved = moved_alone(one, bench, 0, limiter)
+    base = _at(moved, 0)
     added: dict[str, dict[str, float]] = {MARGIN: {}, TOTAL: {}, DRIVE: {}}
     low_side = _tighter_side(bench, total, at) == LOW
-    for name, ends in _ends(one, bench):
-        moved = [_outcome(one, bench, nominal | {name: end}, bench.settings[0].circuit) for end in ends]
-        _add(added, name, [_worse(base, one_moved, low_side) for one_moved in moved])
+    for name, ends in moved.ends_of:
+        worse = [_worse(base, _at(moved, column), low_side) for column in ends]
+        if name == SHUNT_FLOOR:
+            added[TOTAL][SHUNT] = max(one_end[TOTAL] for one_end in worse)
+        else:
+            _add(added, name, worse)
     for number, setting in list(enumerate(bench.settings))[1:]:
-        moved_to = _outcome(one, bench, _roots(one, bench, setting.circuit, number), setting.circuit)
-        _add(added, f"condition {setting.name}", [_worse(base, moved_to, low_side)])
-    for limiter in limiters_of(bench.settings[0].circuit)[1:]:
-        clipped = bench.settings[0].circuit.model_copy(update={"limiter": limiter})
-        _add(added, "circuit.limiter", [_worse(base, _outcome(one, bench, nominal, clipped), low_side)])
+        there = _at(moved_alone(one, bench, number, limiters_of(setting.circuit)[0]), 0)
+        _add(added, f"condition {setting.name}", [_worse(base, there, low_side)])
+    for other in others:
+        _add(added, "circuit.limiter", [_worse(base, _at(moved_alone(one, bench, 0, other), 0), low_side)])
     _add_terms(added[TOTAL], bench, (total, at), low_side=low_side, fork=one.offers[0].fork)
     return {key: _listed(key, by_input) for key, by_input in added.items()}
 
 
-def _roots(one: Columns, bench: Bench, stated: CircuitKeys, number: int) -> Roots:
-    """Every root input at its nominal value."""
-    keys = as_reckoned(stated, bench)
-    unknown = {end: getattr(keys, f"{end}_capacitor_pf") for end in ("input", "output")}
-    gm = nominal_transconductance_ms(keys, bench, one.shunt_pf[number, MID])
-    return {
-        "circuit.input_capacitor_pf": np.nan if unknown["input"] is None else unknown["input"],
-        "circuit.output_capacitor_pf": np.nan if unknown["output"] is None else unknown["output"],
-        "circuit.input_stray_pf": keys.input_stray_pf,
-        "circuit.output_stray_pf": keys.output_stray_pf,
-        "circuit.across_stray_pf": keys.across_stray_pf,
-        "circuit.internal_pf, input": keys.internal_at_each_pin_pf,
-        "circuit.internal_pf, output": keys.internal_at_each_pin_pf,
-        "circuit.amplifier_output_pf": keys.amplifier_output_pf,
-        "circuit.transconductance_ms": float(gm[0]),
-        "esr_ohm": float(one.esr_ohm[number, MID, 0]),
-        "shunt_capacitance_pf": float(one.shunt_pf[number, MID, 0]),
-        "motional_capacitance_ff": float(one.motional_ff[number, MID, 0]),
-    }
-
-
-def _ends(one: Columns, bench: Bench) -> list[tuple[str, tuple[float, float]]]:
-    """Low and high end of each root input that has any."""
-    keys = as_reckoned(bench.settings[0].circuit, bench)
-    nominal = _roots(one, bench, bench.settings[0].circuit, 0)
-    percents = {
-        "circuit.input_capacitor_pf": keys.capacitor_tolerance_percent,
-        "circuit.output_capacitor_pf": keys.capacitor_tolerance_percent,
-        "circuit.internal_pf, input": keys.internal_tolerance_percent,
-        "circuit.internal_pf, output": keys.internal_tolerance_percent,
-        "circuit.amplifier_output_pf": keys.stray_tolerance_percent,
-    }
-    percents |= {
-        f"circuit.{name}_stray_pf": keys.stray_tolerance(f"{name}_stray_pf") for name in ("input", "output", "across")
-    }
-    ends = {name: (nominal[name] * (1 - p / 100), nominal[name] * (1 + p / 100)) for name, p in percents.items()}
-    gm = keys.transconductance_range_ms
-    if gm is not None:
-        ends["circuit.transconductance_ms"] = (gm[LOW], gm[HIGH])
-    spans = {
-        "esr_ohm": one.esr_ohm[0, :, 0],
-        "shunt_capacitance_pf": one.shunt_pf[0, :, 0],
-        "motional_capacitance_ff": one.motional_ff[0, :, 0],
-    }
-    ends |= {name: (float(span[LOW]), float(span[HIGH])) for name, span in spans.items()}
-    if one.shunt_loose[0]:
-        ends["shunt_capacitance_pf"] = (float(one.shunt_floor_pf[0]), ends["shunt_capacitance_pf"][1])
-    return [(name, pair) for name, pair in ends.items() if pair[0] != pair[1]]
-
-
-def _outcome(one: Columns, bench: Bench, roots: Roots, stated: CircuitKeys) -> Mapping[str, float]:
-    keys = as_reckoned(stated, bench)
-    inside_output = roots["circuit.internal_pf, output"]
-    ahead = keys.series_resistor_ohm > 0
-    capacitances: list[Array | float] = [
-        roots["circuit.input_capacitor_pf"] + roots["circuit.input_stray_pf"] + roots["circuit.internal_pf, input"],
-        roots["circuit.output_capacitor_pf"] + roots["circuit.output_stray_pf"] + (0.0 if ahead else inside_output),
-        roots["circuit.across_stray_pf"],
-        roots["circuit.amplifier_output_pf"] + (inside_output if ahead else 0.0),
-    ]
-    shunt = np.array([roots["shunt_capacitance_pf"]])
-    esr = motional_resistance_ohm(one, bench, np.array([roots["esr_ohm"]]), shunt)
-    if bench.crystal.series_resistor_rule == "add to ESR":
-        esr = esr + stated.series_resistor_ohm
-    circuit = make_circuit(keys, bench, capacitances, np.array([roots["circuit.transconductance_ms"]]))
-    crystal = Crystal(one.frequency_mhz, one.load_pf, shunt, roots["motional_capacitance_ff"], esr)
-    found = analyse(circuit, crystal, *swing_of(keys), limiters_of(keys)[0], keys.probe_pf)
-    return {key: float(found[key][0]) for key in (MARGIN, "load_error_ppm", DRIVE)}
+def _at(moved: MovedAlone, column: int) -> Mapping[str, float]:
+    return {key: float(moved.found[key][0, column]) for key in (MARGIN, "load_error_ppm", DRIVE)}
 
 
 def _worse(base: Mapping[str, float], moved: Mapping[str, float], low_side: bool) -> dict[str, float]:

@@ -166,7 +166,7 @@ def analyse_nominal(columns: Columns, bench: Bench, limiter: Limiter) -> dict[st
     setting = as_reckoned(bench.settings[0].circuit, bench)
     nodes = Nodes.of(setting)
     esr = motional_resistance_ohm(columns, bench, columns.esr_ohm[0, MID], columns.shunt_pf[0, MID])
-    esr = esr + _added_resistance(bench, 0)
+    esr = esr + added_resistance_ohm(bench, 0)
     crystal = _crystal(columns, columns.shunt_pf[0, MID], columns.motional_ff[0, MID], esr)
     capacitances = [getattr(nodes, name)[MID] for name in ("input_pf", "output_pf", "across_pf", "amplifier_output_pf")]
     gm = nominal_transconductance_ms(setting, bench, columns.shunt_pf[0, MID])
@@ -279,7 +279,7 @@ def crystal_at(columns: Columns, bench: Bench, number: int, shunt: Array) -> Cry
     """The crystals at the ends of their spans in one setting: C1 on axis 2, R1 on axis 3."""
     motional = _two_ends(columns.motional_ff[number])[:, None, :, None, None, None]
     esr = _two_ends(columns.esr_ohm[number])[:, None, None, :, None, None]
-    esr = motional_resistance_ohm(columns, bench, esr, shunt) + _added_resistance(bench, number)
+    esr = motional_resistance_ohm(columns, bench, esr, shunt) + added_resistance_ohm(bench, number)
     return _crystal(columns, shunt, motional, esr)
 
 
@@ -318,12 +318,13 @@ def nominal_r1_and_gm(columns: Columns, bench: Bench, at: int) -> tuple[float, f
     """One part's R1 in ohm and the transconductance in mS at their mid values, as `analyse_nominal` has them."""
     one = columns.take([at])
     shunt = one.shunt_pf[0, MID]
-    esr = motional_resistance_ohm(one, bench, one.esr_ohm[0, MID], shunt) + _added_resistance(bench, 0)
+    esr = motional_resistance_ohm(one, bench, one.esr_ohm[0, MID], shunt) + added_resistance_ohm(bench, 0)
     gm = nominal_transconductance_ms(as_reckoned(bench.settings[0].circuit, bench), bench, shunt)
     return float(esr[0]), float(gm[0])
 
 
-def _added_resistance(bench: Bench, number: int) -> float:
+def added_resistance_ohm(bench: Bench, number: int) -> float:
+    """The series resistor, where the bench counts it as so much more ESR."""
     if bench.crystal.series_resistor_rule != "add to ESR":
         return 0.0
     return bench.settings[number].circuit.series_resistor_ohm

@@ -27,8 +27,8 @@ from compare.corners import (
 from compare.oscillation import Arm, Crystal, analyse
 from compare.prefix import PPM
 from compare.reckoning import Reckoning
-from compare.roots import CRYSTAL, SHUNT, crystal_at_values, crystal_roots, fork_spans
-from compare.terms import reckoned_range_c
+from compare.roots import CRYSTAL, SHUNT, crystal_at_values, crystal_roots
+from compare.terms import fork_spans, reckoned_range_c
 
 POINTS = 201
 SHAPE_NOT_STATED = "how far it drifts over the range is stated, not on what curve: the shape is not stated"

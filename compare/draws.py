@@ -33,9 +33,8 @@ from compare.roots import (
     circuit_roots,
     crystal_at_values,
     crystal_roots,
-    fork_spans,
 )
-from compare.terms import ageing_term, make_term, reckoned_range_c, temperature_term
+from compare.terms import ageing_term, fork_spans, make_term, reckoned_range_c, temperature_term
 from compare.verdict import GAINS, silence, transconductance_missing
 
 Shape = Literal["uniform", "triangular", "normal"]

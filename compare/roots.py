@@ -7,16 +7,15 @@ boards drawn at random) needs them apart.
 from __future__ import annotations
 
 from collections.abc import Mapping, Sequence
+from dataclasses import dataclass
 
 import numpy as np
 
-from compare import motional
 from compare.bench import Bench, CircuitKeys
 from compare.circuit import Array, Circuit
-from compare.columns import HIGH, LOW, MID, Columns, spans
-from compare.corners import as_reckoned, make_circuit, motional_resistance_ohm, rated_gm
-from compare.offer import Offer
-from compare.oscillation import Crystal
+from compare.columns import HIGH, LOW, MID, Columns
+from compare.corners import added_resistance_ohm, as_reckoned, make_circuit, motional_resistance_ohm, rated_gm, swing_of
+from compare.oscillation import Crystal, Limiter, analyse
 
 INPUT, OUTPUT = "circuit.input_capacitor_pf", "circuit.output_capacitor_pf"
 INPUT_STRAY, OUTPUT_STRAY = "circuit.input_stray_pf", "circuit.output_stray_pf"
@@ -84,14 +83,8 @@ def circuit_at(values: Mapping[str, Array], stated: CircuitKeys, bench: Bench, s
 def crystal_at_values(values: Mapping[str, Array], columns: Columns, bench: Bench, setting: int) -> Crystal:
     """The crystals with each root at the value given, (n, k) each: ESR turned into R1 by the bench's rules."""
     shunt = values[SHUNT]
-    esr = motional_resistance_ohm(columns, bench, values[ESR], shunt) + added_esr_ohm(bench, setting)
+    esr = motional_resistance_ohm(columns, bench, values[ESR], shunt) + added_resistance_ohm(bench, setting)
     return Crystal(columns.frequency_mhz[:, None], columns.load_pf[:, None], shunt, values[MOTIONAL], esr)
-
-
-def added_esr_ohm(bench: Bench, setting: int) -> float:
-    """The series resistor, where the bench counts it as so much more ESR."""
-    counted = bench.crystal.series_resistor_rule == "add to ESR"
-    return bench.settings[setting].circuit.series_resistor_ohm if counted else 0.0
 
 
 def moves(ends: Ends | Array) -> bool:
@@ -99,13 +92,33 @@ def moves(ends: Ends | Array) -> bool:
     return bool(np.any(np.asarray(ends[LOW]) != np.asarray(ends[HIGH]))) and not bool(np.all(np.isnan(ends[MID])))
 
 
-def fork_spans(offers: Sequence[Offer]) -> tuple[Array, Array]:
-    """(3, n) parabolic coefficient, negative, and turnover temperature; estimated where the sheet is silent."""
-    stated = -np.abs(spans([o.parabolic for o in offers]))
-    coefficient = _or_estimate(stated, motional.estimate_parabolic_coefficient_ppm_per_c2())
-    turnover = _or_estimate(spans([o.turnover for o in offers]), motional.estimate_turnover_temperature_c())
-    return np.sort(coefficient, axis=0), turnover
+@dataclass(frozen=True)
+class MovedAlone:
+    """Every key with each root moved by itself: `found` (n, k), column 0 nominal; `ends_of`: the columns of each root.
+
+    SHUNT_FLOOR is the estimated low end of a C0 that is only a limit; it counts for numbers of frequency alone.
+    """
+
+    found: Mapping[str, Array]
+    ends_of: Sequence[tuple[str, tuple[int, int]]]
 
 
-def _or_estimate(stated: Array, guess: motional.Estimate) -> Array:
-    return np.where(np.isnan(stated[MID]), np.array([[guess.low], [guess.mid], [guess.high]], dtype=float), stated)
+SHUNT_FLOOR = "shunt_capacitance_pf, estimated low end"
+
+
+def moved_alone(columns: Columns, bench: Bench, number: int, limiter: Limiter) -> MovedAlone:
+    """One setting of the bench at its nominal, and each root at its low and its high end with the others nominal."""
+    keys = bench.settings[number].circuit
+    roots: dict[str, Array] = {name: np.array(ends)[:, None] for name, ends in circuit_roots(keys, bench).items()}
+    roots |= crystal_roots(columns, number)
+    moving = [(name, name, ends) for name, ends in roots.items() if moves(ends)]
+    if columns.shunt_loose.any():
+        floor = np.where(columns.shunt_loose, columns.shunt_floor_pf, roots[SHUNT][MID])
+        moving.append((SHUNT_FLOOR, SHUNT, np.stack([floor, roots[SHUNT][MID], floor])))
+    ends_of = [(name, (1 + 2 * at, 2 + 2 * at)) for at, (name, _, _) in enumerate(moving)]
+    values = {name: np.repeat(ends[MID][:, None], 1 + 2 * len(moving), axis=1) for name, ends in roots.items()}
+    for (_, root, ends), (_, (low, high)) in zip(moving, ends_of, strict=True):
+        values[root][:, low], values[root][:, high] = ends[LOW], ends[HIGH]
+    crystal = crystal_at_values(values, columns, bench, number)
+    circuit = circuit_at(values, keys, bench, np.asarray(crystal.shunt_capacitance_pf))
+    return MovedAlone(analyse(circuit, crystal, *swing_of(keys), limiter, keys.probe_pf), ends_of)

@@ -10,11 +10,10 @@ import numpy as np
 from compare import motional
 from compare.circuit import array
 from compare.columns import HIGH, LOW, MID
-from compare.corners import motional_resistance_ohm
+from compare.corners import added_resistance_ohm, motional_resistance_ohm
 from compare.explain import ends_text, figure, reading_text
 from compare.prefix import FEMTO, MILLI, PICO
 from compare.reckoning import Reckoning
-from compare.roots import added_esr_ohm
 from compare.sources import c0_words, c1_words
 
 Which = Literal["nominal", "limit"]
@@ -90,7 +89,7 @@ def _esr_words(reckoning: Reckoning, at: int) -> str:
     said = reading_text("esr_ohm", offer.at[0].esr)
     if bench.crystal.esr_means == "at load":
         said += ', read as RL: R1 = ESR/(1 + C0/CL rated)^2 (crystal.esr_means "at load")'
-    if added_esr_ohm(bench, 0):
+    if added_resistance_ohm(bench, 0):
         said += "; the series resistor is not in it: put it into the circuit"
     return said
 

@@ -5,7 +5,7 @@ Both are options that a person names; verdicts rest on the corners alone. Each s
 
 from __future__ import annotations
 
-from collections.abc import Iterator, Mapping, Sequence
+from collections.abc import Mapping, Sequence
 from dataclasses import dataclass
 from typing import Any, Literal
 
@@ -15,27 +15,17 @@ from compare import budget
 from compare.bench import Bench
 from compare.circuit import Array
 from compare.columns import HIGH, LOW, MID, Columns, Flags
-from compare.corners import BY_SHUNT_FLOOR, analyse_nominal, limiters_of, swing_of
+from compare.corners import BY_SHUNT_FLOOR, analyse_nominal, limiters_of
 from compare.draws import HELD, SHAPES, Draws, Shape, draw, drawn_numbers
 from compare.offer import Offers
-from compare.oscillation import Limiter, analyse
 from compare.reckoning import Reckoning, reckon_sheets
 from compare.result import NEEDS, OPEN_END
-from compare.roots import (
-    SHUNT,
-    circuit_at,
-    circuit_roots,
-    crystal_at_values,
-    crystal_roots,
-    fork_spans,
-    moves,
-)
-from compare.terms import Term, ageing_term, make_term, reckoned_range_c, temperature_term
+from compare.roots import SHUNT_FLOOR, moved_alone
+from compare.terms import Term, ageing_term, fork_spans, make_term, reckoned_range_c, temperature_term
 from extract.model import SpecSheet
 
 Method = Literal["rss", "draws"]
 METHODS: dict[Method, str] = {"rss": "root-sum-square", "draws": "boards drawn at random"}
-SHUNT_FLOOR = "shunt_capacitance_pf, estimated low end"
 REVIEW_BOARDS = 10_000
 
 
@@ -57,7 +47,7 @@ class _Squares:
     some_without: Flags
 
     @classmethod
-    def of(cls, key: str, values: Array, ends_of: Sequence[tuple[str, tuple[int, ...]]]) -> _Squares:
+    def of(cls, key: str, values: Array, ends_of: Sequence[tuple[str, tuple[int, int]]]) -> _Squares:
         """From (n, k) values: column 0 the nominal, the others as `ends_of` lists them for each root."""
         mid = values[:, 0]
         below, above = np.zeros_like(mid), np.zeros_like(mid)
@@ -93,7 +83,9 @@ def root_sum_square(columns: Columns, bench: Bench) -> Spread:
     budget_terms = _budget_squares(columns, bench)
     for number in range(len(bench.settings)):
         for limiter in limiters_of(bench.settings[number].circuit):
-            for key, squares in _moved_alone(columns, bench, number, limiter):
+            moved = moved_alone(columns, bench, number, limiter)
+            for key, values in moved.found.items():
+                squares = _Squares.of(key, values, moved.ends_of)
                 _widen(numbers, key, *squares.ends, squares)
                 if key == "load_error_ppm":
                     _widen(numbers, "total_ppm", *budget_terms.around(squares), squares)
@@ -124,28 +116,6 @@ def _widen(numbers: dict[str, Array], key: str, low: Array, high: Array, squares
     known = numbers[key]
     pick_low, pick_high = (np.minimum, np.maximum) if key in OPEN_END else (np.fmin, np.fmax)
     known[LOW], known[HIGH] = pick_low(known[LOW], ends[LOW]), pick_high(known[HIGH], ends[HIGH])
-
-
-def _moved_alone(columns: Columns, bench: Bench, number: int, limiter: Limiter) -> Iterator[tuple[str, _Squares]]:
-    """Every key in one setting: nominal in the first column, then each root at its ends."""
-    keys = bench.settings[number].circuit
-    circuit = {name: np.array(ends)[:, None] for name, ends in circuit_roots(keys, bench).items()}
-    crystal: dict[str, Array] = dict(crystal_roots(columns, number))
-    moving: list[tuple[str, Array]] = [(name, ends) for name, ends in (circuit | crystal).items() if moves(ends)]
-    if columns.shunt_loose.any():
-        floor = np.where(columns.shunt_loose, columns.shunt_floor_pf, crystal[SHUNT][MID])
-        moving.append((SHUNT_FLOOR, np.stack([floor, crystal[SHUNT][MID], floor])))
-    ends_of = [(name, (1 + 2 * at, 2 + 2 * at)) for at, (name, _) in enumerate(moving)]
-    values = {}
-    for name, ends in (circuit | crystal).items():
-        values[name] = np.repeat(ends[MID][:, None], 1 + 2 * len(moving), axis=1)
-    for (name, ends), (_, (low, high)) in zip(moving, ends_of, strict=True):
-        column = values[SHUNT if name == SHUNT_FLOOR else name]
-        column[:, low], column[:, high] = ends[LOW], ends[HIGH]
-    crystals = crystal_at_values(values, columns, bench, number)
-    boards = circuit_at(values, keys, bench, np.asarray(crystals.shunt_capacitance_pf))
-    for key, found in analyse(boards, crystals, *swing_of(keys), limiter, keys.probe_pf).items():
-        yield key, _Squares.of(key, found, ends_of)
 
 
 @dataclass(frozen=True)

@@ -88,15 +88,20 @@ def temperature_term(columns: Columns, bench: Bench, *, loosest: bool = False) -
     )
 
 
-def _parabola_term(offers: Sequence[Offer], bench: Bench) -> Term:
-    low_c, high_c = np.array([reckoned_range_c(o, bench) for o in offers], dtype=float).reshape(-1, 2).T
-    turnover, no_turnover = _stated_or_estimated(
-        spans([o.turnover for o in offers]), motional.estimate_turnover_temperature_c()
-    )
-    curve, no_curve = _stated_or_estimated(
+def fork_spans(offers: Sequence[Offer]) -> tuple[Array, Array]:
+    """(3, n) parabolic coefficient, negative, and turnover temperature; estimated where the sheet is silent."""
+    turnover, _ = _stated_or_estimated(spans([o.turnover for o in offers]), motional.estimate_turnover_temperature_c())
+    curve, _ = _stated_or_estimated(
         -np.abs(spans([o.parabolic for o in offers])), motional.estimate_parabolic_coefficient_ppm_per_c2()
     )
-    curve = np.sort(curve, axis=0)
+    return np.sort(curve, axis=0), turnover
+
+
+def _parabola_term(offers: Sequence[Offer], bench: Bench) -> Term:
+    low_c, high_c = np.array([reckoned_range_c(o, bench) for o in offers], dtype=float).reshape(-1, 2).T
+    curve, turnover = fork_spans(offers)
+    no_curve = np.isnan(spans([o.parabolic for o in offers])[MID])
+    no_turnover = np.isnan(spans([o.turnover for o in offers])[MID])
     over = (low_c, high_c)
     low, high = budget.parabola_ppm_range(over, (curve[LOW], curve[HIGH]), (turnover[LOW], turnover[HIGH]))
     _, mid = budget.parabola_ppm_range(over, (curve[MID], curve[MID]), (turnover[MID], turnover[MID]))
