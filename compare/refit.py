@@ -2,7 +2,8 @@
 
 from __future__ import annotations
 
-from collections.abc import Callable, Iterator, Mapping, Sequence
+from collections.abc import Mapping, Sequence
+from dataclasses import dataclass, field
 from typing import Any
 
 import numpy as np
@@ -17,25 +18,40 @@ BY_PARTS = (*GAINS, "total_ppm", "drive_level_uw", "startup_ms", "rating")
 """Requirements that other capacitors or a series resistor can move."""
 NOT_ASKED = 1e-12
 Change = dict[str, Any]
-Accepts = Callable[[Reckoning, Sequence[str]], bool]
 
 
-def changes_for(reckoning: Reckoning, at: int, open_ones: Sequence[str], excuses: Sequence[str]) -> list[Change]:
-    """The least changes with which every requirement in `open_ones` is met; empty where none are found.
+@dataclass(frozen=True)
+class Refit:
+    """Changes with which the candidate meets the bench, none where there are none, and what is to be said of them."""
 
-    Whatever is found has been reckoned whole, with all corners and conditions: the short list only proposes.
+    changes: list[Change] = field(default_factory=list)
+    said: str = ""
+
+
+NO_REFIT = Refit()
+SWING = "the swing is taken as unchanged: measure the drive again with them fitted"
+
+
+def changes_for(reckoning: Reckoning, at: int, open_ones: Sequence[str], excuses: Sequence[str]) -> Refit:
+    """The changes with which every requirement in `open_ones` is met.
+
+    Whatever is found has been reckoned whole, with all corners and conditions: the short list only proposes. Where the
+    drive alone is too great a series resistor is tried first, else load capacitors.
     """
     bench, judged = reckoning.bench, reckoning.judged
     keys = bench.settings[0].circuit
     if not open_ones or any(name not in BY_PARTS for name in open_ones) or _wants_a_reading(judged, at, open_ones):
-        return []
+        return Refit()
     if keys.input_capacitor_pf is None or keys.output_capacitor_pf is None:
-        return []
-    for changes, tried, settled in _proposals(reckoning, at, excuses):
+        return Refit()
+    pairs, sentence = _pairs(reckoning, at, bench, excuses)
+    resistors = _resistors(reckoning, at)
+    first = [*resistors, *pairs] if list(open_ones) == ["drive_level_uw"] else [*pairs, *resistors]
+    for change, tried, settled in first:
         found = reckon_offers([reckoning.columns.offers[at]], tried)
         if _meets(found.judged, judged, at, [*excuses, *settled]):
-            return changes
-    return []
+            return Refit([change], SWING if "drive_level_uw" in open_ones else "")
+    return Refit(said=sentence)
 
 
 def _wants_a_reading(judged: Mapping[str, Judged], at: int, open_ones: Sequence[str]) -> bool:
@@ -62,35 +78,36 @@ def _meets(found: Mapping[str, Judged], before: Mapping[str, Judged], at: int, e
     return True
 
 
-def _proposals(
-    reckoning: Reckoning, at: int, excuses: Sequence[str]
-) -> Iterator[tuple[list[Change], Bench, tuple[str, ...]]]:
-    """Changes to try, the bench with them made, and what the proposal itself settles: capacitors, resistor, both."""
+Proposal = tuple[Change, Bench, tuple[str, ...]]
+"""A change, the bench with it made, and the requirements that the proposal itself settles."""
+
+
+def _resistors(reckoning: Reckoning, at: int) -> list[Proposal]:
     bench = reckoning.bench
-    trial_bench = relaxed(bench, excuses)
-    yield from (([change], tried, ()) for change, tried in _pairs(reckoning, at, bench, trial_bench))
     drive = reckoning.judged.get("drive_level_uw")
     if drive is None or drive.verdict[at] != FALLS_SHORT or bench.crystal.series_resistor_rule != "circuit":
-        return
-    trial = Trial(reckoning.columns.take([at]), bench, reckoning.total, at)
-    resistor, _ = trial.series_resistor()
+        return []
+    resistor, _ = Trial(reckoning.columns.take([at]), bench, reckoning.total, at).series_resistor()
     if resistor is None:
-        return
-    before = bench.settings[0].circuit.series_resistor_ohm
-    change = {"what": "series resistor", "from": before, "to": resistor.series_resistor_ohm}
-    fitted = with_circuit(bench, series_resistor_ohm=resistor.series_resistor_ohm)
+        return []
+    before, after = bench.settings[0].circuit.series_resistor_ohm, resistor.series_resistor_ohm
+    change = {"what": "series resistor", "from": before, "to": after}
     # The bench's swing was read without the resistor: held at the amplifier's output it is what brings the drive down.
-    yield [change], fitted, ("drive_level_uw",)
+    return [(change, with_circuit(bench, series_resistor_ohm=after), ("drive_level_uw",))]
 
 
-def _pairs(reckoning: Reckoning, at: int, bench: Bench, trial_bench: Bench) -> Iterator[tuple[Change, Bench]]:
-    trial = Trial(reckoning.columns.take([at]), trial_bench, reckoning.total, at)
-    pairs, _ = e24_pairs(trial.nominal_pairs, trial.worst_pairs)
+def _pairs(reckoning: Reckoning, at: int, bench: Bench, excuses: Sequence[str]) -> tuple[list[Proposal], str]:
+    """Pairs of load capacitors, best first, and a sentence where there are none."""
+    trial = Trial(reckoning.columns.take([at]), relaxed(bench, excuses), reckoning.total, at)
+    pairs, sentence = e24_pairs(trial.nominal_pairs, trial.worst_pairs)
     keys = bench.settings[0].circuit
     before = [keys.input_capacitor_pf, keys.output_capacitor_pf]
+    proposals: list[Proposal] = []
     for pair in pairs:
         change = {"what": "load capacitors", "from": before, "to": [pair.input_pf, pair.output_pf]}
-        yield change, with_circuit(bench, input_capacitor_pf=pair.input_pf, output_capacitor_pf=pair.output_pf)
+        fitted = with_circuit(bench, input_capacitor_pf=pair.input_pf, output_capacitor_pf=pair.output_pf)
+        proposals.append((change, fitted, ()))
+    return proposals, sentence
 
 
 def with_circuit(bench: Bench, **keys: float) -> Bench:

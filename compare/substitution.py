@@ -11,7 +11,7 @@ from compare.bench import Bench
 from compare.letters import english, in_english, in_language, known, language_of
 from compare.offer import fields_to_check
 from compare.reckoning import bare_result, missing_of, part_result
-from compare.refit import changes_for
+from compare.refit import NO_REFIT, Refit, changes_for
 from compare.report import NAMES
 from compare.swap import Candidate, SubstituteError, Swap, make_swap
 from compare.swap_lines import Line, lines_of
@@ -51,6 +51,8 @@ class Judgement:
     changes: list[dict[str, Any]]
     excuses: list[str]
     missing: list[str]
+    said: str = ""
+    """What is to be said of changes to the board, or of why none do."""
     least_slack: float = math.nan
 
 
@@ -117,11 +119,11 @@ def _judge(swap: Swap, candidate: Candidate) -> Judgement:
         one["about"]: f"{called(one['about'])}: {one['message']}" for one in part_result(reckoning, at)["reasons"]
     }
     required = requirement_blocks(judged, at, messages, excuses)
-    changes = []
+    refit = Refit()
     if required and verdict_of(blocks) != DOES_NOT_FIT:
-        changes = changes_for(reckoning, at, [block.about for block in required], excuses)
+        refit = changes_for(reckoning, at, [block.about for block in required], excuses)
     lines = _mechanical_marked(marked_on_bench(lines, judged, at, excuses, swap.bench), blocks)
-    return _settled(swap, candidate, lines, blocks + required, changes=changes, excuses=excuses)
+    return _settled(swap, candidate, lines, blocks + required, refit=refit, excuses=excuses)
 
 
 def called(about: str) -> str:
@@ -160,17 +162,27 @@ def _settled(
     lines: list[Line],
     blocks: list[Block],
     *,
-    changes: list[dict[str, Any]] | None = None,
+    refit: Refit = NO_REFIT,
     excuses: Sequence[str] = (),
 ) -> Judgement:
+    changes = refit.changes
     at = candidate.column or 0
     code = verdict_of([block for block in blocks if not (changes and block.requirement)])
     if changes:
         code = min(code, FITS_WITH_CHANGES)
-    decides = _decides(swap, at, code, blocks, changes or [])
+    decides = _decides(swap, at, code, blocks, changes)
     missing = _missing(swap, at, lines, blocks, excuses)
     return Judgement(
-        candidate, code, decides, lines, blocks, changes or [], list(excuses), missing, _least_slack(swap, at, excuses)
+        candidate,
+        code,
+        decides,
+        lines,
+        blocks,
+        changes,
+        list(excuses),
+        missing,
+        refit.said,
+        _least_slack(swap, at, excuses),
     )
 
 
@@ -325,7 +337,8 @@ def _findings(one: Judgement) -> list[dict[str, str]]:
     rest = [line for line in one.lines if line.field in GRADE and line.relation not in ("same", "tighter")]
     open_fit = [line for line in one.lines if line.field in ("package", "pads") and line.relation == "unknown"]
     told = {id(line): line for line in (*first, *rest, *open_fit)}
-    return [{"about": line.field, "message": line.message} for line in told.values()]
+    found = [{"about": line.field, "message": line.message} for line in told.values()]
+    return [*found, {"about": "changes", "message": one.said}] if one.said else found
 
 
 def _shift_json(swap: Swap, at: int | None) -> dict[str, Any]:
