@@ -563,6 +563,32 @@ def test_a_group_head_before_its_row_reads_as_the_wording_turned(text: str, fiel
     assert label.field == field
 
 
+# Heads of narrow columns; the full words are common trade usage in each language, the shortenings are by hand.
+SHORTENED = [
+    ("Cap. carga (pF)", LOAD),
+    ("Temp. almac.", STORE),
+    ("Envejec.", AGE),
+    ("Toll. 25 °C", TOL),
+    ("R serie max", ESR),
+    ("Vieill.", AGE),
+    ("Cap. charge", LOAD),
+    ("Temp. fonct.", OPER),
+    ("Abgl.-Tol.", TOL),
+    ("Temp.-Gang", STAB),
+    ("Arb.-Temp.", OPER),
+    ("温特", STAB),
+    ("负载", LOAD),
+    ("Trim sens. (ppm/pF)", PULL),
+]
+
+
+@pytest.mark.parametrize(("text", "field"), SHORTENED)
+def test_shortened_heads_name_their_field(text: str, field: str) -> None:
+    label = read_label(text)
+    assert label is not None
+    assert label.field == field
+
+
 def test_a_row_called_resonance_speaks_of_the_load() -> None:
     assert [label.field for text in ("Resonance", "Risonanza", "谐振方式") if (label := read_label(text))] == [LOAD] * 3
 
