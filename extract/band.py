@@ -87,6 +87,8 @@ def _limits(group: Group, kind: str, field: str) -> bool:
 
 def _ends(group: Group, field: str, kind: str) -> tuple[float, float] | None:
     low = _size(group.low, group.low_unit or group.high_unit, field)
+    if kind == "frequency" and low < 0:
+        return None
     if group.shape == "range" and group.high is not None:
         high = _size(group.high, group.high_unit or group.low_unit, field)
         return (low, high) if low <= high else (high, low)

@@ -8,7 +8,7 @@ from dataclasses import dataclass, replace
 from functools import lru_cache
 from typing import Literal
 
-from extract import amount, wording
+from extract import amount, trace, wording
 from extract.conditions import condition_of, kept, merged
 from extract.entries import Entry, Key, Placed, Source, Value
 from extract.fields import field_of
@@ -23,6 +23,9 @@ _BRACKET = re.compile(r"[(（][^()（）]*[)）]")
 # "，200" is a comma and 200, not 0.200.
 _EAST_COMMA = re.compile("[，、]")
 _FOOTNOTE_MARK = re.compile(r"(?<=[^\s(])\s*(?:\(\d\)|⁽[¹²³⁴-⁹]⁾|[※*]\d)(?=\s*$)")
+_OPEN_ABOVE = re.compile(r"<\s?\d[\d.,]*\s?(?:[MkK]Hz)?\s*$")
+# "AQ5-20M-18" in a heading holds no band.
+_PART_NUMBER = re.compile(r"(?<!\S)(?=\S*\d)(?=\S*[A-Z])[A-Z0-9]+(?:[-/.][A-Za-z0-9.]+)+(?!\S)")
 LEAST_CONFIDENCE = 0.8
 
 
@@ -44,6 +47,8 @@ class Candidate:
     source: Source | Literal["key", "note"] = "table"
     subject: str = ""
     section: str = ""
+    label_where: Where | None = None
+    open_above: bool = False
 
     @property
     def bounds(self) -> tuple[float | None, float | None, float | None, tuple[float, ...]]:
@@ -68,6 +73,8 @@ def entry_candidates(entry: Entry) -> list[Candidate]:
     """What one label with its values may mean; empty where the label is none of a field, or a trap."""
     label = label_of(entry)
     if label is None:
+        if trace.asked():
+            _pass_over(entry)
         return []
     label = _by_unit(label, [entry.unit, label.unit or "", *(value.piece.text for value in entry.values)])
     when = _entry_when(entry, label)
@@ -75,7 +82,43 @@ def entry_candidates(entry: Entry) -> list[Candidate]:
     for subject in dict.fromkeys(value.subject for value in entry.values):
         values = [value for value in entry.values if value.subject == subject]
         found += _of_subject(entry, label, when, subject, values)
+    if trace.asked():
+        for each in found:
+            trace.saw(each, label, entry.label.text, _around(entry))
+    if not found and trace.asked():
+        trace.passed(
+            _raw(entry, [value.piece for value in entry.values]),
+            entry.where,
+            f"no value of {field_of(label.field).title} can be read here",
+            label.field,
+        )
     return [each for each in found if not _lone_temperature(each)]
+
+
+def _around(entry: Entry) -> list[tuple[str, Iterable[str]]]:
+    """The texts that may have given a value its unit or its band, for the report of why it was read so."""
+    return [
+        ("the value's cell", [value.piece.text for value in entry.values]),
+        ("the unit column", [entry.unit]),
+        ("a condition", entry.conditions),
+        ("the label", [entry.label.text]),
+        ("the heading above", [entry.section]),
+    ]
+
+
+def _pass_over(entry: Entry) -> None:
+    """Report a row whose label is none of a field's, where a number stands beside it."""
+    raw = _raw(entry, [value.piece for value in entry.values])
+    if not any(character.isdigit() for value in entry.values for character in value.piece.text):
+        return
+    known = meaning(entry.label.text)
+    why = known.trap or wording.trap_of(fold(entry.label.text))
+    other = known.identity or known.role or known.attribute
+    if why:
+        rule = f"the label is no property of the crystal: {why}"
+    else:
+        rule = f"the label names {other.replace('_', ' ')}, no property" if other else "the label is in no wording file"
+    trace.passed(raw, entry.where, rule)
 
 
 def _by_unit(label: Label, texts: Iterable[str]) -> Label:
@@ -89,7 +132,10 @@ def _by_unit(label: Label, texts: Iterable[str]) -> Label:
 def _lone_temperature(candidate: Candidate) -> bool:
     """One temperature with no bound is no range: it is where something was measured."""
     ranged = candidate.field in ("operating_temperature_c", "storage_temperature_c")
-    return ranged and candidate.min is None and candidate.max is None
+    lone = ranged and candidate.min is None and candidate.max is None
+    if lone:
+        trace.dropped(candidate, "one temperature is no range: it is where something was measured")
+    return lone
 
 
 @lru_cache(maxsize=8192)
@@ -124,7 +170,7 @@ def _entry_when(entry: Entry, label: Label) -> When:
     for text in entry.conditions:
         when = merged(when, kept(condition_of(text), label.field))
     if entry.section and entry.section != entry.label.text:
-        section = condition_of(entry.section)
+        section = condition_of(_PART_NUMBER.sub(" ", entry.section))
         band = section.frequency_mhz
         if band is not None and band[0] == band[1]:
             section = section.model_copy(update={"frequency_mhz": None})
@@ -230,6 +276,8 @@ def _candidate(
         source=entry.source,
         subject=subject,
         section=entry.section,
+        label_where=entry.label.where,
+        open_above=any(_OPEN_ABOVE.search(fold(text)) for text in entry.conditions),
     )
 
 
@@ -261,7 +309,7 @@ def _joined(entry: Entry, label: Label, when: When, subject: str, values: Sequen
         pm = (label.plus_minus or bool(_PLUS_MINUS.search(fold(entry.unit)))) and len(values) == 1
         bound = value.bound or label.bound
         found = read(value.piece.text, label.field, unit, None if pm and bound == "typ" else bound, plus_minus=pm)
-        found = tuple(each for each in found if not each.series)
+        found = tuple(_typical_size(each, value) for each in found if not each.series)
         if len(found) == 1 and not found[0].options and _plain(found[0]):
             parts.append((value, found[0]))
         else:
@@ -272,6 +320,13 @@ def _joined(entry: Entry, label: Label, when: When, subject: str, values: Sequen
     if not parts:
         return others
     return [_one_row(entry, label, when, subject, parts), *others]
+
+
+def _typical_size(found: amount.Value, printed: Value) -> amount.Value:
+    """A "±2" under Typ beside cells for Min and Max is the typical size."""
+    if printed.bound == "typ" and found.max is not None and found.min == -found.max and not found.options:
+        return replace(found, min=None, typ=found.max, max=None)
+    return found
 
 
 def _plain(value: amount.Value) -> bool:
@@ -314,6 +369,8 @@ def _one_row(
         source=entry.source,
         subject=subject,
         section=entry.section,
+        label_where=entry.label.where,
+        open_above=any(_OPEN_ABOVE.search(fold(text)) for text in entry.conditions),
     )
 
 

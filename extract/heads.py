@@ -57,17 +57,17 @@ def is_unit(text: str) -> bool:
     return any((unit := kind.unit(bare)) is not None and unit.sort == "sizes" for kind in units.kinds().values())
 
 
-_CONDITION = re.compile(r"^(?P<name>[^\d±]*[^\d±\s(,@-])[\s(,@]+(?P<condition>[-+±]?\d.*)$", re.DOTALL)
+_CONDITION = re.compile(r"^(?P<name>[^\d±]*[^\d±\s(\[,@-])[\s(\[,@]+(?P<condition>[-+±]?\d.*)$", re.DOTALL)
 
 
 def _parted(levels: tuple[str, ...]) -> tuple[str, ...]:
     """A level such as "Part number -20 to +70 °C" as two: the name, and where its column holds."""
-    if len(levels) != 1 or meaning(levels[0]).head is not None:
+    if len(levels) != 1 or (meaning(levels[0]).head is not None and meaning(levels[0]).label is not None):
         return levels
     match = _CONDITION.match(fold(levels[0]))
     if match is None or meaning(match["name"]).head is None or condition_of(match["condition"]) == When():
         return levels
-    return match["name"], match["condition"].rstrip(")")
+    return match["name"], match["condition"].rstrip(")]")
 
 
 @lru_cache(maxsize=4096)

@@ -10,7 +10,7 @@ import re
 from collections.abc import Callable, Iterator, Sequence
 from dataclasses import dataclass, field, replace
 
-from extract import wording
+from extract import trace, wording
 from extract.candidates import Candidate, label_doubts, read
 from extract.conditions import band_of, condition_of, kept, merged
 from extract.drafts import Draft
@@ -163,7 +163,7 @@ def cell_candidates(cell: Placed, column: _Column, when: When, subject: str = ""
     for value in read(cell.text, label.field, label.unit, label.bound, plus_minus=label.plus_minus):
         if value.series:
             continue
-        yield Candidate(
+        found = Candidate(
             field=label.field,  # type: ignore[arg-type]
             min=value.min,
             typ=value.typ,
@@ -178,6 +178,10 @@ def cell_candidates(cell: Placed, column: _Column, when: When, subject: str = ""
             source="table",
             subject=subject,
         )
+        if trace.asked():
+            heads = column.head.levels
+            trace.saw(found, label, " ".join(heads), [("the value's cell", [cell.text]), ("the column's head", heads)])
+        yield found
 
 
 def _part_drafts(listing: Listing, columns: list[_Column]) -> Iterator[Draft]:
@@ -212,7 +216,17 @@ def _named(base: Draft, cell: Placed, column: _Column) -> Iterator[Draft]:
                 cell.where,
             )
         )
+        draft.candidates.extend(_headed_stability(cell, column, span))
     yield draft
+
+
+def _headed_stability(cell: Placed, column: _Column, span: tuple[float, float]) -> Iterator[Candidate]:
+    """The one ± of a head such as "Part number -20 to +70 °C, ±15 ppm": the stability over that range."""
+    found = [each for text in column.head.extra for each in read(text, "frequency_stability_ppm")]
+    if len(found) != 1 or found[0].min is None or found[0].max is None:
+        return
+    when, raw = When(temperature_c=span), " ".join(column.head.levels)
+    yield Candidate("frequency_stability_ppm", found[0].min, None, found[0].max, (), when, False, raw, cell.where)
 
 
 def _row_draft(row: Sequence[Placed | None], columns: list[_Column], section: str) -> Draft:

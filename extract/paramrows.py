@@ -288,6 +288,20 @@ def _hand_down_labels(rows: list[_Row]) -> None:
             continue
         row.label, row.label_text = source.label, source.label_text
         row.unit, row.symbol = row.unit or source.unit, row.symbol or source.symbol
+    _share_units(rows)
+
+
+def _share_units(rows: list[_Row]) -> None:
+    """Rows under one label have one unit, though it is printed beside one of them only."""
+    groups: dict[int, list[_Row]] = {}
+    for row in rows:
+        if row.label is not None and row.values:
+            groups.setdefault(id(row.label), []).append(row)
+    for group in groups.values():
+        printed = {row.unit for row in group if row.unit}
+        if len(printed) == 1:
+            for row in group:
+                row.unit = next(iter(printed))
 
 
 _BAND_BEHIND = re.compile(r"\s+(?=[-+]?\d|[<≤≥>])")

@@ -5,6 +5,7 @@ from __future__ import annotations
 from collections.abc import Sequence
 from dataclasses import dataclass, field, replace
 
+from extract import trace
 from extract.attributes import attributes_of
 from extract.blocks import Blocks
 from extract.candidates import Candidate, entry_candidates, key_candidates, label_of, read
@@ -96,6 +97,9 @@ def _of_section(section: Section, shared: Draft | None, blocks: Blocks) -> list[
         own.maker = own.maker or maker_of(section.items, (), sure=True)
         _inherit(own, shared)
     if rows:
+        for each in own.candidates:
+            if each.source == "loose":
+                trace.dropped(each, "a value without a label beside a list of parts")
         own.candidates = [each for each in own.candidates if each.source != "loose"]
         for row in rows:
             _inherit(row, own)
@@ -121,11 +125,20 @@ def _inherit(draft: Draft, general: Draft) -> None:
 def _holds_for(draft: Draft, candidate: Candidate) -> bool:
     """Whether a banded value speaks of a part whose own frequency, load or temperature range is known."""
     frequency = [each.typ for each in draft.candidates if each.field == "frequency_mhz"]
-    if len(frequency) == 1 and frequency[0] is not None and not holds(candidate.when, frequency[0]):
+    if len(frequency) == 1 and frequency[0] is not None and not _holds_at(candidate, frequency[0]):
+        return False
+    if len(draft.modes) == 1 and candidate.when.mode is not None and candidate.when.mode not in draft.modes:
         return False
     spans = [(each.min, each.max) for each in draft.candidates if each.field == "operating_temperature_c"]
     span = candidate.when.temperature_c
     return candidate.field != "frequency_stability_ppm" or span is None or len(spans) != 1 or spans[0] == span
+
+
+def _holds_at(candidate: Candidate, frequency_mhz: float) -> bool:
+    """Whether a banded value holds at a frequency; an upper end printed as "<" is the next band's."""
+    band = candidate.when.frequency_mhz
+    ends_before = candidate.open_above and band is not None and band[0] < band[1] == frequency_mhz
+    return holds(candidate.when, frequency_mhz) and not ends_before
 
 
 def _draft(section: Section, blocks: Blocks) -> Draft:
@@ -153,6 +166,7 @@ def _draft(section: Section, blocks: Blocks) -> Draft:
 def _take_entry(draft: Draft, entry: Entry, blocks: Blocks, heading: str) -> None:
     about = [heading, entry.section]
     if says(about, "reliability"):
+        trace.passed(f"{entry.label.text}", entry.where, "stands under a heading of reliability tests")
         return
     found = entry_candidates(entry)
     if says(about, "ordering"):

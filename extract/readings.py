@@ -6,14 +6,24 @@ import math
 from collections.abc import Iterable, Sequence
 from dataclasses import replace
 
-from extract import plausible
+from extract import plausible, trace
 from extract.band import HIGHEST_MHZ, LOWEST_MHZ
 from extract.candidates import Candidate
 from extract.fields import field_of, fields
 from extract.model import Pair, Reading, When
 
 _RANK = {"table": 0, "note": 0, "pair": 0, "prose": 1, "key": 2, "loose": 3}
+_SOURCES = {
+    "table": "a table's value",
+    "note": "a footnote's value",
+    "pair": "a labelled value",
+    "prose": "a value in running text",
+    "key": "an ordering key",
+    "loose": "a value without a label",
+}
 ONE_HERTZ = 1e-6
+# Several ranges under one label are a choice.
+RANGES = ("operating_temperature_c", "storage_temperature_c")
 
 
 def readings_of(
@@ -57,6 +67,9 @@ def _closed(candidate: Candidate, offered: Pair | None) -> Candidate:
 def _of_field(candidates: list[Candidate], offered: Pair | None) -> list[Candidate]:
     best = min(_rank(each) for each in candidates)
     kept = [each for each in candidates if _rank(each) == best]
+    for each in candidates:
+        if _rank(each) > best:
+            trace.dropped(each, f"{_SOURCES[each.source]} gives way to {_SOURCES[kept[0].source]} that states it")
     kept = _without_repeats(kept)
     kept = _joined_halves(kept)
     kept = _contradictions_marked(kept)
@@ -85,9 +98,14 @@ def _without_repeats(candidates: Iterable[Candidate]) -> list[Candidate]:
     """The same statement in two places is one reading, at the first place; a bare number gives way to a bounded one."""
     kept: list[Candidate] = []
     for each in candidates:
-        if any(_same(each, other) or _says_less(each, other) for other in kept):
+        fuller = next((other for other in kept if _same(each, other) or _says_less(each, other)), None)
+        if fuller is not None:
+            trace.dropped(each, f"says no more than {fuller.where} does: {fuller.raw}")
             continue
-        kept = [other for other in kept if not _says_less(other, each)]
+        lesser = [other for other in kept if _says_less(other, each)]
+        for other in lesser:
+            trace.dropped(other, f"says less than {each.where} does: {each.raw}")
+        kept = [other for other in kept if other not in lesser]
         kept.append(each)
     return kept
 
@@ -150,6 +168,7 @@ def _contradictions_marked(candidates: list[Candidate]) -> list[Candidate]:
             kept.append(each)
             continue
         first = kept[rival]
+        trace.dropped(each, f"contradicts {first.where}, which comes first and carries a check: {first.raw}")
         doubt = f"{each.where} says otherwise: {' '.join(each.raw.split())[:120]}"
         kept[rival] = replace(first, doubts=(*first.doubts, doubt))
     return kept
@@ -157,6 +176,8 @@ def _contradictions_marked(candidates: list[Candidate]) -> list[Candidate]:
 
 def _contradicts(first: Candidate, second: Candidate) -> bool:
     if first.source == "key" and second.source == "key":
+        return False
+    if first.field in RANGES and first.label_where is not None and first.label_where == second.label_where:
         return False
     if first.when != second.when:
         return _overlap(first.when, second.when) and not _same_row(first, second)
@@ -202,6 +223,8 @@ def _narrowed(candidates: list[Candidate], offered: Pair | None) -> list[Candida
         rest = _rest(offered, [band for band in rivals if band is not None])
         if rest is None:
             kept.append(each)
+        elif not rest:
+            trace.dropped(each, "the banded values cover every frequency that is offered")
         kept += [replace(each, when=each.when.model_copy(update={"frequency_mhz": part})) for part in rest or ()]
     return kept
 
@@ -259,6 +282,7 @@ def _written(chosen: Sequence[Candidate], cut: str | None, mode: str | None) -> 
     for index, each in enumerate(ordered):
         reasons = [*each.doubts, *([found[index]] if index in found else [])]
         written.append(_reading(each, "; ".join(dict.fromkeys(reasons))) if reasons else plain[index])
+    trace.took(written, ordered)
     return tuple(written)
 
 

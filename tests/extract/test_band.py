@@ -66,3 +66,7 @@ def test_a_condition_says_where_the_value_holds_and_a_measurement_says_nothing(p
 
 def test_the_later_of_two_conditions_of_one_kind_counts():
     assert joined(When(years=1, mode="fundamental"), When(years=10)) == When(years=10, mode="fundamental")
+
+
+def test_a_frequency_below_zero_is_no_band():
+    assert read_when("-20 to 18 MHz").frequency_mhz is None

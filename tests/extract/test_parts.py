@@ -126,3 +126,43 @@ def test_reliability_tests_state_nothing():
     tests = table(("Low temperature", "-40 ±3 °C, 96 h"), ("Operating temperature", "-55 to 125 °C, 1000 cycles"))
     (part,) = found(line("ABQ32-16M"), VALUES, line("Reliability", heading=True), tests).parts
     assert bounds(part, "operating_temperature_c") == []
+
+
+def test_each_of_two_part_number_columns_gives_its_temperature_range_and_stability():
+    rows = table(
+        ("Frequency (MHz)", "Part number [-20°C/+70°C]", "Part number -40 to +85 °C, ±25 ppm"),
+        ("16.000", "ABQ16-A", "ABQ16-B"),
+        ("24.000", "ABQ24-A", "ABQ24-B"),
+    )
+    parts = found(line("Load capacitance: 8 pF"), rows).parts
+    assert [bounds(part, "operating_temperature_c") for part in parts[:2]] == [[(-20, None, 70)], [(-40, None, 85)]]
+    assert [bounds(part, "frequency_stability_ppm") for part in parts[:2]] == [[], [(-25, None, 25)]]
+
+
+def test_a_listed_part_takes_only_the_resistance_of_its_mode_and_of_the_band_that_includes_it():
+    bands = table(
+        ("Parameter", "Conditions", "Max", "Unit"),
+        ("Series resistance", "Fundamental, 5.0MHz - <8.0MHz", "95", "Ω"),
+        (None, "Fundamental, 8.0MHz - 40.0MHz", "65", None),
+        (None, "3rd Overtone, 8.0MHz - 72.0MHz", "78", None),
+    )
+    rows = table(
+        ("Part number", "Frequency", "Mode"), ("ABQ8-F", "8 MHz", "Fundamental"), ("ABQ30-T", "30 MHz", "3rd Overtone")
+    )
+    parts = found(rows, bands).parts
+    assert [bounds(part, "esr_ohm") for part in parts] == [[(None, None, 65)], [(None, None, 78)]]
+    assert all(each.check is None for part in parts for each in part.readings)
+
+
+def test_two_temperature_ranges_under_one_label_are_a_choice():
+    rows = table(
+        ("Parameter", "Min", "Typ", "Max", "Unit"),
+        ("Frequency", None, "16", None, "MHz"),
+        ("Operating temperature", "-20", "25", "70", "°C"),
+        (None, "-40", "25", "85", None),
+        ("Ageing", "-5", "±2", "5", "ppm/year"),
+    )
+    (part,) = found(line("ABQ49-16"), rows).parts
+    assert bounds(part, "operating_temperature_c") == [(-20, 25, 70), (-40, 25, 85)]
+    assert bounds(part, "ageing_ppm") == [(-5, 2, 5)]
+    assert all(each.check is None for each in part.readings)
