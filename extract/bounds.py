@@ -59,12 +59,20 @@ def give_bounds(amounts: list[Amount], heading: Heading) -> Heading:
 def values_of(amounts: list[Amount], row: Field, heading: Heading) -> list[Value]:
     """One value for each condition and each choice of ranges, in the order printed."""
     clusters: dict[When, list[Amount]] = {}
-    for amount in _without_recommended(amounts):
+    for amount in _on_stock(_without_recommended(amounts)):
         if not amount.request:
             clusters.setdefault(amount.when, []).append(amount)
     return [
         replace(value, when=when) for when, members in clusters.items() for value in _together(members, row, heading)
     ]
+
+
+def _on_stock(amounts: list[Amount]) -> list[Amount]:
+    """What stands between the standard and "on request" is on request: "10 pF standard, 8 pF, 12 pF on request"."""
+    standard = [at for at, amount in enumerate(amounts) if amount.standard]
+    if not standard or not any(amount.request for amount in amounts):
+        return amounts
+    return [amount for at, amount in enumerate(amounts) if amount.standard or at < standard[0]]
 
 
 def _without_recommended(amounts: list[Amount]) -> list[Amount]:
@@ -79,7 +87,7 @@ def _without_recommended(amounts: list[Amount]) -> list[Amount]:
 
 def _together(amounts: list[Amount], row: Field, heading: Heading) -> list[Value]:
     """The amounts under one condition: numbers to choose from are options, unlike bounds fill one value."""
-    amounts = _without_zero(amounts, row)
+    amounts = _once(_without_zero(amounts, row))
     loose = [a for a in amounts if _is_loose(a)]
     if row.choice and loose:
         # A bound word behind a list speaks of all of it: "8, 10, 12 pF max".
@@ -98,6 +106,12 @@ def _together(amounts: list[Amount], row: Field, heading: Heading) -> list[Value
     kept = [value for value in out if not value.empty] or out
     kept[0] = replace(kept[0], doubts=tuple(dict.fromkeys((*kept[0].doubts, *refused))))
     return [_in_order(value) for value in kept]
+
+
+def _once(amounts: list[Amount]) -> list[Amount]:
+    """One limit in two units ("max. 100 µW / 0.1 mW") is one limit."""
+    limits = {amount.low for amount in amounts if amount.group.shape == "single" and amount.bound in ("min", "max")}
+    return [a for a in amounts if a.bound or a.group.shape != "single" or a.low not in limits]
 
 
 def _without_zero(amounts: list[Amount], row: Field) -> list[Amount]:
@@ -187,7 +201,8 @@ _LOST_MINUS = "printed without a minus sign, taken as negative"
 
 def _range(amount: Amount, row: Field, heading: Heading, doubts: tuple[str, ...]) -> Value:
     low, high = amount.low, amount.high if amount.high is not None else amount.low
-    if row.sign == "symmetric" and low >= 0 and high > 0 and amount.group.low.meaning != "+":
+    signed = amount.group.low.meaning or (amount.group.high is not None and low == 0 and amount.group.high.meaning)
+    if row.sign == "symmetric" and low >= 0 and high > 0 and not signed:
         return Value(options=(low, high), doubts=(*doubts, "a span of grades to order from"))
     if row.sign == "negative" and low > 0 and high > 0:
         low, high, doubts = -low, -high, (*doubts, _LOST_MINUS)
@@ -204,7 +219,7 @@ def _range(amount: Amount, row: Field, heading: Heading, doubts: tuple[str, ...]
     low, high = min(low, high), max(low, high)
     if amount.bound == "typ" or (heading.bound == "typ" and row.limit == "max"):
         return Value(doubts=(*doubts, f"typical is printed as a range, {low:g} to {high:g} {row.unit}"))
-    return Value(min=low or (0.0 if row.sign == "either" else None), max=high, doubts=doubts)
+    return Value(min=low or (0.0 if row.sign in ("either", "symmetric") else None), max=high, doubts=doubts)
 
 
 def _unless_magnitude(row: Field) -> tuple[str, ...]:

@@ -197,6 +197,9 @@ class _Reader:
         elif tolerances := self._two_tolerances(made.low):
             made.shape, (made.high, made.below) = "centre", tolerances
             made.high_unit = self.take_unit()
+        elif self.kind() == "to" and self.kind(1) == "series":
+            self.take()
+            made.bound = "min"
         elif self.kind() == "to" and self.kind(1) == "pm" and self.kind(2) == "number":
             self.take()
             self.take()
@@ -287,8 +290,11 @@ class _Reader:
         high = self.tokens[self.at + ahead]
         if {low.meaning, high.meaning} == {"-", "+"}:
             return True
-        if self.plain_pair and not low.meaning and high.meaning == "+":
-            return low.number is not None and low.number.plain == 0
+        from_zero = not low.meaning and low.number is not None and low.number.plain == 0
+        if from_zero and ((self.plain_pair and high.meaning == "+") or (ahead and self.field_name in _PPM)):
+            return bool(high.meaning)
+        if ahead and low.meaning == "-" and high.number is not None and high.number.plain == 0:
+            return True
         return self.plain_pair and low.meaning == "-" and not high.meaning
 
 

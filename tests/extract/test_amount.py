@@ -466,6 +466,38 @@ def test_another_symbol_before_a_colon_begins_another_value() -> None:
     assert [said(value) for value in read_values("7 pF max. - C1: 3 fF", C0)] == [{"max": 7}]
 
 
+ONE_SIDED = [
+    ("0/-20 ppm", {"min": -20, "max": 0}),
+    ("+10/-0 ppm", {"min": 0, "max": 10}),
+    ("0/+20 ppm", {"min": 0, "max": 20}),
+]
+
+
+@pytest.mark.parametrize(("text", "expected"), ONE_SIDED)
+def test_a_one_sided_tolerance_has_zero_as_its_other_end(text: str, expected: dict[str, Any]) -> None:
+    assert [said(value) for value in read_values(text, TOL)] == [expected]
+
+
+@pytest.mark.parametrize("text", ["max. 100 µW/0.1 mW", "0.1 mW (100 µW) max"])
+def test_one_limit_in_two_units_is_one_limit(text: str) -> None:
+    assert [said(value) for value in read_values(text, DRIVE)] == [{"max": 100}]
+
+
+@pytest.mark.parametrize(
+    ("text", "load"),
+    [
+        ("12.5 pF (standard), 6 pF / 7 pF / 9 pF optional", {"typ": 12.5}),
+        ("8, 10 pF standard, 12 pF on request", {"options": (8, 10)}),
+    ],
+)
+def test_what_follows_the_standard_up_to_on_request_is_on_request(text: str, load: dict[str, Any]) -> None:
+    assert [said(value) for value in read_values(text, LOAD)] == [load]
+
+
+def test_loads_up_to_series_begin_at_the_number() -> None:
+    assert [said(value) for value in read_values("10 pF to series", LOAD)] == [{"min": 10}, {"series": True}]
+
+
 RECOMMENDED = [
     "200 µW max., 10 µW recommended",
     "10 µW empfohlen, 200 µW max.",
