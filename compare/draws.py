@@ -63,7 +63,7 @@ class Draws:
     boards, seed, shape
         What was drawn; the same three give the same boards.
     short : requirement -> (n,)
-        Boards that fall short, of `boards`; `known` is false where a part or bench lacks what it takes.
+        Boards that fall short, of `boards`; to be read only where `known` says that nothing it takes is missing.
     """
 
     boards: int
@@ -78,7 +78,7 @@ class Draws:
 
     def interval(self, about: str) -> tuple[Array, Array]:
         """(n,) low and high end of what the share may be, 95 in 100, for only so many boards were drawn."""
-        low, high = share_interval(np.maximum(self.short[about], 0), self.boards)
+        low, high = share_interval(self.short[about], self.boards)
         return tuple(np.where(self.known[about], end, np.nan) for end in (low, high))  # type: ignore[return-value]
 
 
@@ -136,14 +136,15 @@ def draw(columns: Columns, bench: Bench, boards: int = 1000, seed: int = 1, shap
     step = max(1, AT_ONCE // boards)
     pieces = [range(start, min(start + step, len(columns))) for start in range(0, len(columns), step)]
 
+    causes, known = _Budget.of(columns, bench), known_requirements(columns, bench)
+
     def of_piece(piece: range) -> dict[str, Whole]:
-        return _short_of(columns.take(piece), bench, settings, units)
+        ends = causes.ends(slice(piece.start, piece.stop), units)
+        return _short_of(columns.take(piece), bench, settings, units, ends)
 
     with ThreadPoolExecutor(2) as threads:
         found = list(threads.map(of_piece, pieces)) if len(pieces) > 2 else [of_piece(piece) for piece in pieces]
-    names = list(found[0]) if found else []
-    short = {name: np.concatenate([piece[name] for piece in found]) for name in names}
-    known = {name: counts >= 0 for name, counts in short.items()}
+    short = {name: np.concatenate([piece[name] for piece in found]) for name in known} if found else {}
     return Draws(boards, seed, shape, short, known)
 
 
@@ -229,22 +230,22 @@ def _rated_siemens(one: _SettingDraws, bench: Bench, crystal: Crystal) -> Array:
 
 
 def _short_of(
-    columns: Columns, bench: Bench, settings: list[_SettingDraws], units: Mapping[str, Array]
+    columns: Columns,
+    bench: Bench,
+    settings: list[_SettingDraws],
+    units: Mapping[str, Array],
+    budget_ends: tuple[Array, Array],
 ) -> dict[str, Whole]:
-    """How many boards of each part fall short of each requirement; -1 where it is not known."""
+    """How many boards of each part fall short of each requirement that the bench asks."""
     short: dict[str, Flags] = {}
-    budget_ends = _budget_ends(columns, bench, units)
     rated = spans([o.drive for o in columns.offers])[MID][:, None]
     for one in settings:
         for found in _evaluated(columns, bench, one, units):
             for name, flags in _falling_short(found, bench, one, budget_ends, rated):
                 short[name] = short[name] | flags if name in short else flags
-    known = known_requirements(columns, bench)
-    asked = [name for name in known if name not in (STARTS, ANY)]
-    short[ANY] = np.logical_or.reduce(np.broadcast_arrays(*(short[name] for name in asked)))
-    boards = len(units[GAIN])
-    counts = {name: np.broadcast_to(flags, (len(columns), boards)).sum(axis=1) for name, flags in short.items()}
-    return {name: np.where(known[name], counts[name], -1) for name in known}
+    short[ANY] = np.logical_or.reduce(np.broadcast_arrays(*(flags for name, flags in short.items() if name != STARTS)))
+    size = (len(columns), len(units[GAIN]))
+    return {name: np.broadcast_to(flags, size).sum(axis=1) for name, flags in short.items()}
 
 
 def _falling_short(
@@ -274,35 +275,59 @@ def judges_drive(bench: Bench) -> bool:
     return swings or "drive_headroom" in bench.requirement.given
 
 
-def _budget_ends(columns: Columns, bench: Bench, units: Mapping[str, Array]) -> tuple[Array, Array]:
-    """(n, boards) what make, temperature and ageing put under and over the load error, at the worst temperature.
+@dataclass(frozen=True)
+class _Budget:
+    """What make, temperature and ageing may come to, low and high of each: (n,); a fork's own values (3, n)."""
 
-    A unit's make error and ageing are values; what it does over temperature is a stretch. A stability as stated is met
-    with a stretch between nothing and all of it, to both sides; a fork's parabola with its own coefficients.
-    """
-    make, ageing = make_term(columns, bench), ageing_term(columns, bench)
-    fixed = between(make.low, make.high, units[MAKE])
-    fixed = fixed + between(ageing.low, ageing.high, units[AGEING])
-    if bench.requirement.trim_step_ppm is not None:
-        fixed = fixed - _nominal_load_error(columns, bench)[:, None]
-    stability = temperature_term(columns, bench)
-    size = units[TEMPERATURE]
-    low, high = stability.low[:, None] * size, stability.high[:, None] * size
-    fork = np.flatnonzero([o.fork for o in columns.offers])
-    if fork.size:
-        offers = [columns.offers[at] for at in fork]
-        coefficient, turnover = fork_spans(offers)
-        range_c = np.array([reckoned_range_c(o, bench) for o in offers], dtype=float).T[:, :, None]
-        k, centre = (
-            between(coefficient[LOW], coefficient[HIGH], units[CURVE]),
-            between(turnover[LOW], turnover[HIGH], units[TURNOVER]),
+    make: tuple[Array, Array]
+    ageing: tuple[Array, Array]
+    stability: tuple[Array, Array]
+    fork: Flags
+    coefficient: Array
+    turnover: Array
+    range_c: Array
+    offset: Array
+    """The nominal load error, where a trim takes it up."""
+
+    @classmethod
+    def of(cls, columns: Columns, bench: Bench) -> _Budget:
+        make, ageing = make_term(columns, bench), ageing_term(columns, bench)
+        stability = temperature_term(columns, bench)
+        offset = np.zeros(len(columns))
+        if bench.requirement.trim_step_ppm is not None:
+            limiter = limiters_of(bench.settings[0].circuit)[0]
+            offset = analyse_nominal(columns, bench, limiter)["load_error_ppm"]
+        return cls(
+            (make.low, make.high),
+            (ageing.low, ageing.high),
+            (stability.low, stability.high),
+            np.array([o.fork for o in columns.offers], dtype=bool),
+            *fork_spans(columns.offers),
+            np.array([reckoned_range_c(o, bench) for o in columns.offers], dtype=float).reshape(-1, 2).T,
+            offset,
         )
-        low[fork], high[fork] = budget.parabola_ppm_range((range_c[0], range_c[1]), (k, k), (centre, centre))
-    return fixed + low, fixed + high
 
+    def ends(self, piece: slice, units: Mapping[str, Array]) -> tuple[Array, Array]:
+        """(parts, boards) under and over the load error, at the worst temperature.
 
-def _nominal_load_error(columns: Columns, bench: Bench) -> Array:
-    return analyse_nominal(columns, bench, limiters_of(bench.settings[0].circuit)[0])["load_error_ppm"]
+        A unit's make error and ageing are values; what it does over temperature is a stretch. A stability as stated is
+        met with a stretch between nothing and all of it, to both sides; a fork's parabola with its own coefficients.
+        """
+        fixed = between(self.make[0][piece], self.make[1][piece], units[MAKE])
+        fixed += between(self.ageing[0][piece], self.ageing[1][piece], units[AGEING])
+        fixed -= self.offset[piece, None]
+        low, high = (end[piece, None] * units[TEMPERATURE] for end in self.stability)
+        fork = np.flatnonzero(self.fork[piece])
+        if fork.size:
+            k, centre = (
+                between(of[LOW, piece][fork], of[HIGH, piece][fork], units[name])
+                for of, name in ((self.coefficient, CURVE), (self.turnover, TURNOVER))
+            )
+            coldest, hottest = self.range_c[:, piece][:, fork, None]
+            low[fork], high[fork] = budget.parabola_ppm_range((coldest, hottest), (k, k), (centre, centre))
+        low += fixed
+        high += fixed
+        return low, high
 
 
 def known_requirements(columns: Columns, bench: Bench) -> dict[str, Flags]:
@@ -337,7 +362,7 @@ def drawn_numbers(columns: Columns, bench: Bench, boards: int, seed: int, shape:
     for number, setting in enumerate(bench.settings):
         for found in _every_key(columns, bench, (number, setting), units):
             found["allowed_esr_ohm"] = found["greatest_esr_ohm"] / bench.requirement.margin
-            under, over = _budget_ends(columns, bench, units)
+            under, over = _Budget.of(columns, bench).ends(slice(None), units)
             for low, high, key in _with_total(found, under, over):
                 mids.setdefault(key, (low + high) / 2)
                 lows[key] = _wider(np.fmin, lows.get(key), low, key, LOW)
