@@ -17,7 +17,7 @@ if TYPE_CHECKING:
     from compare.intake import Intake
     from extract.model import Note, SpecSheet
 
-DONE, LOOK, WRONG_CALL = 0, 1, 2
+DONE, LOOK, WRONG_CALL, STOPPED = 0, 1, 2, 130
 
 
 class CallError(Exception):
@@ -31,6 +31,8 @@ def main(arguments: Sequence[str] | None = None) -> int:
             stream.reconfigure(encoding="utf-8")
     options = _parser().parse_args(arguments)
     try:
+        if getattr(options, "wordings", None) is not None:
+            _add_wordings(options.wordings)
         status: int = options.run(options)
         sys.stdout.flush()
     except CallError as fault:
@@ -41,8 +43,8 @@ def main(arguments: Sequence[str] | None = None) -> int:
         os.dup2(os.open(os.devnull, os.O_WRONLY), sys.stdout.fileno())
         return DONE
     except KeyboardInterrupt:
-        print("quartzfolio: stopped", file=sys.stderr)  # noqa: T201
-        return 130
+        print("quartzfolio: stopped; nothing was finished", file=sys.stderr)  # noqa: T201
+        return STOPPED
     return status
 
 
@@ -56,6 +58,9 @@ def _parser() -> argparse.ArgumentParser:
     commands = parser.add_subparsers(title="commands", metavar="COMMAND", required=True)
     extract = _command(commands, "extract", "what the sheets say, each value with its place", _extract)
     _sheets(extract)
+    extract.add_argument(
+        "--explain", action="store_true", help="for each reading, and for each value left out, why (not with --json)"
+    )
     review = _command(commands, "review", "each part in your circuit: every number, verdict and reason", _review)
     _sheets(review)
     _bench(review)
@@ -84,6 +89,9 @@ def _command(commands: Any, name: str, about: str, run: Any) -> argparse.Argumen
     described = about[0].upper() + about[1:] + "."
     parser: argparse.ArgumentParser = commands.add_parser(name, help=about, description=described)
     parser.add_argument("--json", action="store_true", help="one JSON document instead of the readable table")
+    parser.add_argument(
+        "--wordings", metavar="FOLDER", help="wording files (*.toml) to read besides those that come with the program"
+    )
     parser.set_defaults(run=run)
     return parser
 
@@ -113,7 +121,9 @@ class _Version(argparse.Action):
 
 
 def _extract(options: argparse.Namespace) -> int:
-    intake = _read(options.sheets)
+    if options.explain:
+        return _explain(options)
+    intake = _read(options, options.sheets)
     if options.json:
         from extract.model import SCHEMA
 
@@ -124,8 +134,32 @@ def _extract(options: argparse.Namespace) -> int:
         from compare.report import extract_text
 
         _print(extract_text(intake.sheets), intake.notes)
+    return _extract_status(intake)
+
+
+def _extract_status(intake: Intake) -> int:
+    if intake.stopped:
+        return _say_stopped(intake)
     complete = bool(intake.sheets) and all(sheet.parts for sheet in intake.sheets)
     return DONE if complete and not _faults(intake.notes) else LOOK
+
+
+def _explain(options: argparse.Namespace) -> int:
+    from compare.explain_text import explain_text
+    from extract.trace import tracing
+
+    if options.json:
+        raise CallError("extract: --explain is text for a person; leave out --json or --explain")
+    with tracing() as trace:
+        intake = _read(options, options.sheets)
+    _print("\n\n".join(explain_text(sheet, trace) for sheet in intake.sheets), intake.notes)
+    return _extract_status(intake)
+
+
+def _say_stopped(intake: Intake) -> int:
+    """One line on the error stream; what is finished was printed."""
+    print(f"quartzfolio: {intake.notes[-1].message}", file=sys.stderr)  # noqa: T201
+    return STOPPED
 
 
 def _review(options: argparse.Namespace) -> int:
@@ -133,10 +167,12 @@ def _review(options: argparse.Namespace) -> int:
     from compare.review import review
 
     bench = _read_bench(options.bench)
-    intake = _read(options.sheets)
+    intake = _read(options, options.sheets)
     result = review(intake.sheets, bench)
     _add_notes(result, intake)
     _print_json(result) if options.json else _print(review_text(result))
+    if intake.stopped:
+        return _say_stopped(intake)
     sound = all(one["verdict"] == "meets" and not one["to_check"] for one in result["reviews"])
     every_file = bool(intake.sheets) and all(sheet.parts for sheet in intake.sheets)
     return DONE if result["reviews"] and sound and every_file and not _faults(intake.notes) else LOOK
@@ -147,21 +183,27 @@ def _rank(options: argparse.Namespace) -> int:
     from compare.report import MOST_ROWS, rank_text
 
     bench = _read_bench(options.bench)
-    intake = _read(options.sheets)
+    intake = _read(options, options.sheets)
     result = rank(intake.sheets, bench, shown=None if options.json else MOST_ROWS)
     _add_notes(result, intake)
     _print_json(result) if options.json else _print(rank_text(result))
+    if intake.stopped:
+        return _say_stopped(intake)
     readable = not any(_faults(sheet.notes) for sheet in intake.sheets) and not _faults(intake.notes)
     return DONE if result["rows"] and readable else LOOK
 
 
 def _substitute(options: argparse.Namespace) -> int:
+    from compare.sieve import read_candidates
     from compare.substitute_text import substitute_text
     from compare.substitution import SubstituteError, substitute
 
     bench = None if options.bench is None else _read_bench(options.bench)
-    incumbent, candidates = _read([options.incumbent]), _read(options.candidates)
+    incumbent = _read(options, [options.incumbent], whole=True)
     try:
+        candidates = read_candidates(
+            options.candidates, incumbent.sheets, bench, lambda names: _read(options, names, whole=True)
+        )
         result = substitute(incumbent.sheets, candidates.sheets, bench)
     except SubstituteError as fault:
         raise CallError(str(fault)) from None
@@ -178,7 +220,7 @@ def _changes(options: argparse.Namespace) -> int:
     from compare.substitute_text import changes_text
 
     bench = None if options.bench is None else _read_bench(options.bench)
-    old, new = _read([options.old]), _read([options.new])
+    old, new = (_read(options, [name], whole=True) for name in (options.old, options.new))
     for name, intake in ((options.old, old), (options.new, new)):
         if not any(sheet.parts for sheet in intake.sheets):
             said = [note.message for sheet in intake.sheets for note in sheet.notes] + [n.message for n in intake.notes]
@@ -198,10 +240,30 @@ def _page(options: argparse.Namespace) -> int:
     return serve(options.sheets, bench=options.bench, port=options.port)
 
 
-def _read(names: Sequence[str]) -> Intake:
+def _read(options: argparse.Namespace, names: Sequence[str], *, whole: bool = False) -> Intake:
+    """Read the sheets, with a progress line; `whole`: a read that is stopped half-way is of no use."""
     from compare.intake import read_sheets
+    from compare.waiting import ProgressLine
 
-    return read_sheets(names)
+    progress = ProgressLine(sys.stderr, quiet=options.json)
+    try:
+        intake = read_sheets(names, progress=progress)
+    finally:
+        progress.done()
+    if whole and intake.stopped:
+        raise KeyboardInterrupt
+    return intake
+
+
+def _add_wordings(folder: str) -> None:
+    from pathlib import Path
+
+    from extract.vocabulary import WordingError, add_wordings
+
+    try:
+        add_wordings(Path(folder))
+    except WordingError as fault:
+        raise CallError(str(fault)) from None
 
 
 def _read_bench(name: str) -> Bench:

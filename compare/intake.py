@@ -4,23 +4,28 @@ from __future__ import annotations
 
 import hashlib
 import sys
-from collections.abc import Callable, Iterable, Iterator
+from collections.abc import Iterable, Iterator
 from dataclasses import dataclass, field
 from pathlib import Path
 
 from extract import read_sheet
 from extract.documents.kinds import SHEET_SUFFIXES, kind_by_name
 from extract.model import Note, Part, SpecSheet
+from extract.progress import Progress
 
 STANDARD_INPUT = "-"
 
 
 @dataclass(frozen=True, slots=True)
 class Intake:
-    """The sheets in the order given, and what is to be said about the names themselves."""
+    """The sheets in the order given, and what is to be said about the names themselves.
+
+    `stopped`: Ctrl-C ended the read; the sheets are those finished by then, and the last note says how far it came.
+    """
 
     sheets: tuple[SpecSheet, ...] = ()
     notes: tuple[Note, ...] = ()
+    stopped: bool = False
 
 
 @dataclass(slots=True)
@@ -37,26 +42,37 @@ class _Plan:
     notes: list[Note] = field(default_factory=list)
 
 
-def read_sheets(names: Iterable[str], *, told: Callable[[str], None] | None = None) -> Intake:
+def read_sheets(names: Iterable[str], *, progress: Progress | None = None) -> Intake:
     """Read every sheet that `names` stand for.
 
     Parameters
     ----------
     names
         Files, folders (their sheets and those of their sub-folders, in order of name), `FILE#PART_NUMBER`, or `-`.
-    told
-        Called with each file's name before it is read, for a progress line.
+    progress
+        Told each file and page before it is read. With it, Ctrl-C ends the read and what is finished is kept.
     """
     plan = _Plan()
     for name in names:
         _plan_for(name, plan)
-    sheets = []
-    for named in plan.files:
-        if told is not None:
-            told(named.name)
-        sheet = _read_one(named.name)
-        sheets.append(sheet if named.part is None else _only(sheet, named.part))
-    return Intake(tuple(sheets), tuple(plan.notes))
+    sheets: list[SpecSheet] = []
+    try:
+        for number, named in enumerate(plan.files, start=1):
+            if progress is not None:
+                progress.file(number, len(plan.files), named.name)
+            sheet = _read_one(named.name, progress)
+            sheets.append(sheet if named.part is None else _only(sheet, named.part))
+            if progress is not None and progress.stopped:
+                break
+    except KeyboardInterrupt:
+        if progress is None:
+            raise
+        progress.stopped = True
+    stopped = progress is not None and progress.stopped
+    if stopped:
+        message = f"stopped: {len(sheets)} of {len(plan.files)} files were read, the last of them perhaps in part"
+        plan.notes.append(Note(level="warning", message=message))
+    return Intake(tuple(sheets), tuple(plan.notes), stopped)
 
 
 def single_names(names: Iterable[str]) -> tuple[list[str], list[Note]]:
@@ -67,10 +83,10 @@ def single_names(names: Iterable[str]) -> tuple[list[str], list[Note]]:
     return [one.name if one.part is None else f"{one.name}#{one.part}" for one in plan.files], plan.notes
 
 
-def read_bytes(data: bytes, name: str) -> SpecSheet:
+def read_bytes(data: bytes, name: str, progress: Progress | None = None) -> SpecSheet:
     """Read one sheet; a fault of the program itself becomes a note, so that the other sheets are still done."""
     try:
-        return read_sheet(data, name)
+        return read_sheet(data, name, progress=progress)
     except Exception as fault:
         message = (
             f"could not be read because of a fault in quartzfolio ({type(fault).__name__}: {fault}); "
@@ -114,16 +130,16 @@ def _visible_files(folder: Path) -> Iterator[Path]:
             yield path
 
 
-def _read_one(name: str) -> SpecSheet:
+def _read_one(name: str, progress: Progress | None) -> SpecSheet:
     if name == STANDARD_INPUT:
-        return read_bytes(sys.stdin.buffer.read(), name)
+        return read_bytes(sys.stdin.buffer.read(), name, progress)
     try:
         data = Path(name).read_bytes()
     except FileNotFoundError:
         return _failed(name, "no such file; check the name")
     except OSError as fault:
         return _failed(name, f"cannot be opened: {(fault.strerror or str(fault)).lower()}")
-    return read_bytes(data, name)
+    return read_bytes(data, name, progress)
 
 
 def _failed(name: str, message: str, sha256: str | None = None) -> SpecSheet:

@@ -7,7 +7,9 @@ from collections.abc import Iterator
 from contextlib import contextmanager
 from hashlib import sha256
 
+from extract import trace
 from extract.model import Note, SpecSheet
+from extract.progress import Progress
 
 __all__ = ["read_sheet"]
 
@@ -31,8 +33,8 @@ def _error(message: str) -> Note:
     return Note(level="error", message=message)
 
 
-def read_sheet(data: bytes, name: str) -> SpecSheet:
-    """Read one sheet; `name` helps to tell its format and is repeated in the result.
+def read_sheet(data: bytes, name: str, *, progress: Progress | None = None) -> SpecSheet:
+    """Read one sheet; `name` helps to tell its format and is repeated in the result, `progress` is told each page.
 
     A file that cannot be read gives a sheet without parts and a note of level "error"; a file without a crystal one
     with a warning. Nothing is raised for odd content.
@@ -40,12 +42,14 @@ def read_sheet(data: bytes, name: str) -> SpecSheet:
     from extract.blocks import read_blocks
     from extract.documents.kinds import kind_by_name, read_document
     from extract.documents.model import DocumentError
+    from extract.pages import CrystalPages
     from extract.parts import parts_of
 
+    trace.begin(name)
     digest = sha256(data).hexdigest()
     try:
         with _uncollected():
-            document = read_document(data, name)
+            document = read_document(data, name, wanted=CrystalPages(), progress=progress)
             found = parts_of(read_blocks(document))
     except DocumentError as fault:
         return SpecSheet(file=name, sha256=digest, kind=kind_by_name(name), notes=(_error(str(fault)),))

@@ -14,5 +14,8 @@ class Progress:
 
     stopped: bool = False
 
+    def file(self, number: int, count: int, name: str) -> None:
+        """Told before file `number` of `count` is read; both count from 1."""
+
     def page(self, number: int, count: int) -> None:
         """Told before page `number` of `count` is read; both count from 1."""

@@ -11,6 +11,8 @@ from collections.abc import Iterable
 from dataclasses import dataclass, field
 from functools import cache
 from importlib import resources
+from importlib.resources.abc import Traversable
+from pathlib import Path
 from typing import Any
 
 from extract.fields import fields
@@ -65,12 +67,49 @@ class WordingError(ValueError):
     """A wording file that contradicts itself or another one; says which wording and which two meanings."""
 
 
+_added: list[Path] = []
+
+
+def add_wordings(folder: Path) -> None:
+    """Read the wording files of one more folder, too: a language or a maker's wordings that are not in `wording/`.
+
+    Call it before the first sheet is read; what is known of a label is kept from then on.
+
+    Raises
+    ------
+    WordingError
+        The folder holds no wording file, one of its files is no TOML, contradicts itself or another one; or sheets
+        were read already.
+    """
+    if vocabulary.cache_info().currsize:
+        raise WordingError(f"{folder}: wordings must be added before the first sheet is read")
+    if not folder.is_dir() or not any(folder.glob("*.toml")):
+        raise WordingError(f"{folder}: no folder with wording files (*.toml)")
+    _added.append(folder)
+    try:
+        vocabulary()
+    except WordingError:
+        _added.remove(folder)
+        raise
+
+
 @cache
 def vocabulary() -> Vocabulary:
-    """The whole of `wording/`, in order of file name."""
-    folder = resources.files("extract").joinpath("wording")
-    files = sorted((f for f in folder.iterdir() if f.name.endswith(".toml")), key=lambda f: f.name)
-    return gather((f.name, tomllib.loads(f.read_text(encoding="utf-8"))) for f in files)
+    """The whole of `wording/` and of the folders added, each in order of file name."""
+    folders: list[Traversable] = [resources.files("extract").joinpath("wording"), *_added]
+    files = [f for folder in folders for f in sorted(folder.iterdir(), key=_name) if f.name.endswith(".toml")]
+    return gather((f.name, _parsed(f)) for f in files)
+
+
+def _name(file: Traversable) -> str:
+    return file.name
+
+
+def _parsed(file: Traversable) -> dict[str, Any]:
+    try:
+        return tomllib.loads(file.read_text(encoding="utf-8"))
+    except (tomllib.TOMLDecodeError, UnicodeDecodeError) as fault:
+        raise WordingError(f"{file.name}: no TOML in UTF-8: {fault}") from None
 
 
 def gather(tables: Iterable[tuple[str, dict[str, Any]]]) -> Vocabulary:
@@ -118,9 +157,9 @@ def gather(tables: Iterable[tuple[str, dict[str, Any]]]) -> Vocabulary:
         meaning: tuple(sorted(set(words), key=lambda word: (-len(word), word)))
         for meaning, words in found["phrases"].items()
     }
+    found |= {name: frozenset(words) for name, words in sets.items()}
     return Vocabulary(
         languages=tuple(languages),
-        **{name: frozenset(words) for name, words in sets.items()},
         at_words=frozenset(found["phrases"].get("at", ())),
         shared=shared,
         **found,

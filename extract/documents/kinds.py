@@ -5,10 +5,12 @@ from __future__ import annotations
 import io
 import re
 import zipfile
+from collections.abc import Callable
 from pathlib import PurePath
 
 from extract.documents.model import Document, DocumentError
 from extract.model import Kind
+from extract.progress import Progress
 
 _PICTURES = (b"\x89PNG\r\n\x1a\n", b"\xff\xd8\xff", b"II*\0", b"MM\0*", b"BM", b"GIF8")
 _OLD_OFFICE = b"\xd0\xcf\x11\xe0\xa1\xb1\x1a\xe1"
@@ -37,7 +39,9 @@ def kind_by_name(name: str) -> Kind:
     return SHEET_SUFFIXES.get(PurePath(name).suffix.lower(), "text")
 
 
-def read_document(data: bytes, name: str) -> Document:
+def read_document(
+    data: bytes, name: str, *, wanted: Callable[[str], bool] | None = None, progress: Progress | None = None
+) -> Document:
     """Read a file of any kind.
 
     Parameters
@@ -46,6 +50,11 @@ def read_document(data: bytes, name: str) -> Document:
         The file's bytes.
     name
         The file's name; it decides only where the bytes do not.
+    wanted
+        Tells from a page's bare text whether the page is worth a close look; pages of a long PDF that are not are left
+        out, and one note says which.
+    progress
+        Told each page of a PDF before it is read.
 
     Raises
     ------
@@ -59,7 +68,7 @@ def read_document(data: bytes, name: str) -> Document:
     if b"%PDF-" in data[:1024]:
         from extract.documents import pdf
 
-        return pdf.read(data)
+        return pdf.read(data, wanted, progress)
     if data.startswith(b"PK\x03\x04") or data.startswith(b"PK\x05\x06"):
         return _read_zip(data, suffix)
     if data.startswith(_OLD_OFFICE):

@@ -18,9 +18,12 @@ from extract.documents.pdf_pictures import Pictures, pictures_of
 from extract.documents.symbols import is_broken, translated
 from extract.documents.words import Box, inside, union
 from extract.model import Note, Where
+from extract.progress import Progress
 
+# In a file of more pages those without a digit are not measured.
+LONG_PAGES = 4
 # A file of more pages is a catalogue: its pages are looked through before they are read.
-CATALOGUE_PAGES = 4
+CATALOGUE_PAGES = 12
 # Where less of a page's text than this share comes out of pdfplumber, it cannot read one of the fonts.
 MOST = 0.97
 # A page with fewer characters may be a picture.
@@ -49,12 +52,13 @@ class _Page:
     notes: list[Note] = field(default_factory=list)
     scanned: bool = False
     height: float = 0.0
+    left_out: bool = False
 
     def warn(self, message: str, number: int) -> None:
         self.notes.append(Note(level="warning", message=message, where=Where(page=number)))
 
 
-def read(data: bytes, wanted: Callable[[str], bool] | None = None) -> Document:
+def read(data: bytes, wanted: Callable[[str], bool] | None = None, progress: Progress | None = None) -> Document:
     """Tables and lines of a PDF, page by page.
 
     Parameters
@@ -62,8 +66,12 @@ def read(data: bytes, wanted: Callable[[str], bool] | None = None) -> Document:
     data
         The file's bytes.
     wanted
-        Tells from a page's bare text whether the page is worth a close look. In a catalogue the pages that are not come
-        as plain lines without boxes, at a fiftieth of the time; without this, those are the pages without any digit.
+        Tells from a page's bare text whether the page is worth a close look. In a catalogue the pages that are not are
+        left out, at a fiftieth of the time, and one note names them. Without this every page is read, but for pages
+        without any digit, which come as plain lines without boxes. A page of almost no text may be a picture
+        and stays.
+    progress
+        Told each page before it is read. With it, Ctrl-C ends the read after the pages finished, and a note says so.
 
     Raises
     ------
@@ -73,8 +81,19 @@ def read(data: bytes, wanted: Callable[[str], bool] | None = None) -> Document:
     # The parser reports each oddity of a font; a reader of the sheet can do nothing about them.
     logging.getLogger("pdfminer").setLevel(logging.ERROR)
     quick, slow = _opened(data), _Plumber(data)
+    pages: list[_Page] = []
     try:
-        pages = [_page_or_note(quick, slow, number, wanted) for number in range(1, len(quick) + 1)]
+        for number in range(1, len(quick) + 1):
+            if progress is not None:
+                progress.page(number, len(quick))
+            pages.append(_page_or_note(quick, slow, number, wanted))
+    except KeyboardInterrupt:
+        if progress is None:
+            raise
+        progress.stopped = True
+        stopped = _Page()
+        stopped.warn(f"Stopped: only pages 1 to {len(pages)} of {len(quick)} were read.", max(1, len(pages)))
+        pages.append(stopped)
     finally:
         slow.close()
         quick.close()
@@ -144,8 +163,10 @@ def _read_page(quick: Any, slow: _Plumber, number: int, wanted: Callable[[str], 
     text_page.close()
     printed = len(re.sub(r"\s", "", text))
     result = _Page(height=frame.size[1])
-    unwanted = len(quick) > CATALOGUE_PAGES and printed > ALMOST_NO_TEXT and not (wanted or _has_digit)(text)
-    if unwanted:
+    looked_through = number > 1 and len(quick) > CATALOGUE_PAGES and wanted is not None
+    if looked_through and printed > ALMOST_NO_TEXT and wanted is not None and not wanted(text):
+        result.left_out = True
+    elif len(quick) > LONG_PAGES and printed > ALMOST_NO_TEXT and not _has_digit(text):
         result.blocks += [_plain_line(line, number) for line in text.splitlines() if line.strip()]
     else:
         pictures = pictures_of(page, frame)
@@ -274,10 +295,26 @@ def _document(pages: Sequence[_Page]) -> Document:
     scanned = [page for page in pages if page.scanned]
     read_as_text = [page for page in pages if page.blocks and not page.scanned]
     blocks = tuple(block for page in pages for block in page.blocks)
-    notes = tuple(note for page in pages for note in page.notes)
+    notes = (*_left_out_note(pages), *(note for page in pages for note in page.notes))
     if not blocks and not notes:
         notes = (Note(level="warning", message="The PDF holds no text and no picture of text."),)
     return Document("pdf", blocks, bool(scanned) and not read_as_text, headers, notes)
+
+
+def _left_out_note(pages: Sequence[_Page]) -> list[Note]:
+    """One note for all pages that were not looked at closely, as runs of page numbers."""
+    numbers = [number for number, page in enumerate(pages, start=1) if page.left_out]
+    runs: list[list[int]] = []
+    for number in numbers:
+        if runs and runs[-1][-1] == number - 1:
+            runs[-1].append(number)
+        else:
+            runs.append([number])
+    if not runs:
+        return []
+    named = ", ".join(str(run[0]) if len(run) == 1 else f"{run[0]} to {run[-1]}" for run in runs)
+    message = f"{len(numbers)} of {len(pages)} pages speak of no crystal and were not looked at closely: {named}."
+    return [Note(level="info", message=message)]
 
 
 def _page_headers(pages: Sequence[_Page]) -> tuple[Line, ...]:

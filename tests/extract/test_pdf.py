@@ -367,11 +367,13 @@ def test_a_catalogue_page_without_numbers_keeps_its_text_but_no_boxes():
 
 def test_a_caller_can_say_which_pages_of_a_catalogue_it_wants():
     data = drawn(
-        *(lambda paper, n=n: paper.drawString(60, 200, f"This page is about part number {n}") for n in range(6))
+        *(lambda paper, n=n: paper.drawString(60, 200, f"This page is about part number {n}") for n in range(13))
     )
     document = pdf.read(data, wanted=lambda text: "number 3" in text)
-    assert [block.where.page for block in document.blocks] == [1, 2, 3, 4, 5, 6]
-    assert [block.where.page for block in document.blocks if block.where.box] == [4]
+    assert [block.where.page for block in document.blocks if block.where.box] == [1, 4]
+    assert [note.message for note in document.notes] == [
+        "11 of 13 pages speak of no crystal and were not looked at closely: 2 to 3, 5 to 13."
+    ]
 
 
 # --- pictures
