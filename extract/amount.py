@@ -20,6 +20,7 @@ from extract.model import When
 from extract.number import Number, decide
 from extract.tokens import Token, tokens
 from extract.units import guessed, unit_at
+from extract.vocabulary import vocabulary
 
 __all__ = ["Value", "as_plus_minus", "decimal_mark", "field_for", "read_values"]
 
@@ -77,7 +78,11 @@ class _Given:
 def _read(text: str, field_name: str, given: _Given) -> tuple[Value, ...]:
     row = field_of(field_name)
     heading = _heading(given, field_name)
-    pieces = tokens(fold(text)[:LONGEST_AMOUNT], field_name)
+    folded = fold(text)[:LONGEST_AMOUNT]
+    if heading.bound is None and (told := _bounds_behind(folded)):
+        folded, bounds = told
+        heading = replace(heading, bound=bounds)
+    pieces = tokens(folded, field_name)
     if len(pieces) > 1 and pieces[0].kind == "pm" and pieces[1].kind == "unit":
         heading = replace(heading, plus_minus=True, unit=(pieces[1].text, pieces[1].value))
         pieces = pieces[2:]
@@ -95,6 +100,18 @@ def _read(text: str, field_name: str, given: _Given) -> tuple[Value, ...]:
         values = _refused(items, pieces, row)
     raw = text.strip()
     return tuple(replace(value, raw=raw, when=joined(heading.when, value.when)) for value in values)
+
+
+_SEVERAL_BOUNDS = re.compile(r"[\s(\[]+(?P<bounds>[^\W\d_]+\.?(?:\s?/\s?[^\W\d_]+\.?){1,2})[\s)\]]*$")
+
+
+def _bounds_behind(folded: str) -> tuple[str, str] | None:
+    """The text without the bounds that stand together behind its numbers ("45 / 70 Ω (typ/max)"), and "typ/max"."""
+    found = _SEVERAL_BOUNDS.search(folded)
+    bounds = [vocabulary().bounds.get(key(word)) for word in found["bounds"].split("/")] if found else []
+    if found is None or None in bounds or len(set(bounds)) < len(bounds):
+        return None
+    return folded[: found.start()], "/".join(bound for bound in bounds if bound)
 
 
 def _heading(given: _Given, field_name: str) -> Heading:

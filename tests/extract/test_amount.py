@@ -498,7 +498,20 @@ def test_loads_up_to_series_begin_at_the_number() -> None:
     assert [said(value) for value in read_values("10 pF to series", LOAD)] == [{"min": 10}, {"series": True}]
 
 
+@pytest.mark.parametrize(
+    ("text", "expected"),
+    [
+        ("45 / 70 Ω (typ/max)", {"typ": 45, "max": 70}),
+        ("45/70 typ./max.", {"typ": 45, "max": 70}),
+        ("70, 45 Ω (max/typ)", {"typ": 45, "max": 70}),
+    ],
+)
+def test_bounds_named_together_behind_the_numbers_go_to_them_in_turn(text: str, expected: dict[str, Any]) -> None:
+    assert [said(value) for value in read_values(text, ESR)] == [expected]
+
+
 RECOMMENDED = [
+    "200 µW max. / 100 µW test",
     "200 µW max., 10 µW recommended",
     "10 µW empfohlen, 200 µW max.",
     "200 µW max., 10 µW consigliati",
