@@ -7,7 +7,7 @@ from dataclasses import dataclass
 
 from extract.documents.model import Document, Line, Table
 from extract.entries import Item, Piece, Placed, Text
-from extract.footnotes import footnote_of
+from extract.footnotes import footnotes_in
 from extract.lines import line_items
 from extract.tables import read_table
 
@@ -40,6 +40,6 @@ def read_blocks(document: Document) -> Blocks:
 def _footnotes(items: Sequence[Item]) -> dict[str, tuple[str, Placed]]:
     notes: dict[str, tuple[str, Placed]] = {}
     for item in items:
-        if isinstance(item, Text) and (found := footnote_of(item.piece.text)) is not None:
-            notes.setdefault(found[0], (found[1], item.piece))
+        for mark, text in footnotes_in(item.piece.text) if isinstance(item, Text) else ():
+            notes.setdefault(mark, (text, item.piece))
     return notes

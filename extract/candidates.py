@@ -309,7 +309,7 @@ def _joined(entry: Entry, label: Label, when: When, subject: str, values: Sequen
         pm = (label.plus_minus or bool(_PLUS_MINUS.search(fold(entry.unit)))) and len(values) == 1
         bound = value.bound or label.bound
         found = read(value.piece.text, label.field, unit, None if pm and bound == "typ" else bound, plus_minus=pm)
-        found = tuple(_typical_size(each, value) for each in found if not each.series)
+        found = tuple(_typical_size(each, value) if len(values) > 1 else each for each in found if not each.series)
         if len(found) == 1 and not found[0].options and _plain(found[0]):
             parts.append((value, found[0]))
         else:

@@ -9,6 +9,13 @@ from extract.band import read_band, read_when
 from extract.fold import fold
 from extract.model import Pair, When
 
+OF_ONE_FREQUENCY = (
+    "esr_ohm",
+    "motional_capacitance_ff",
+    "motional_inductance_mh",
+    "quality_factor",
+    "capacitance_ratio",
+)
 TEMPERATURES = ("operating_temperature_c", "storage_temperature_c", "turnover_temperature_c")
 
 
@@ -41,11 +48,12 @@ def merged(general: When, narrower: When) -> When:
 def kept(when: When, field: str) -> When:
     """What of a printed condition limits a reading of `field`.
 
-    A single frequency, load or drive beside a value is where it was measured; years belong to ageing only.
+    A single frequency, load or drive beside a value is where it was measured; years belong to ageing only. The motional
+    values are of the crystal that the frequency names.
     """
     changes: dict[str, object] = {}
     band, load = when.frequency_mhz, when.load_capacitance_pf
-    if band is not None and (field == "frequency_mhz" or (band[0] == band[1] and field != "esr_ohm")):
+    if band is not None and (field == "frequency_mhz" or (band[0] == band[1] and field not in OF_ONE_FREQUENCY)):
         changes["frequency_mhz"] = None
     if load is not None and field != "pulling_sensitivity_ppm_per_pf":
         changes["load_capacitance_pf"] = None

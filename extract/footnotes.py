@@ -37,6 +37,26 @@ def footnote_of(text: str) -> tuple[str, str] | None:
     return _name(mark), match["text"]
 
 
+_NEXT = re.compile(r"(?i)(?<=[.;:)\w])\s+(?=(?:\*\d{1,2}|※\s?\d|[(\[]\d{1,2}[)\]]|(?:note|注)\s?\d{1,2}\b)[\s:.)]*\S)")
+
+
+def footnotes_in(text: str) -> list[tuple[str, str]]:
+    """Every footnote of a line that begins with one: "(1) ... (2) ..." are two where their marks count up."""
+    first = footnote_of(text)
+    if first is None:
+        return []
+    head, *others = _NEXT.split(fold(text))
+    found = [footnote_of(head) or first]
+    for piece in others:
+        mark, before = found[-1]
+        following = footnote_of(piece)
+        if following is not None and mark.isdigit() and following[0] == str(int(mark) + 1):
+            found.append(following)
+        else:
+            found[-1] = mark, f"{before} {piece}"
+    return found
+
+
 def marks_in(texts: Iterable[str]) -> set[str]:
     """Footnote marks that texts of one row carry."""
     return {_name(match[0]) for text in texts for match in _IN_TEXT.finditer(fold(text))}
@@ -55,7 +75,19 @@ def noted_candidates(entry: Entry, notes: dict[str, tuple[str, Placed]]) -> list
             continue
         for part in re.split(r"[;；]", text):
             found += _narrower(entry, part, place, label.field)
-    return found
+    choice = _choice(entry, label.field)
+    return [each for each in found if not _restricts(each, choice)]
+
+
+def _choice(entry: Entry, field: str) -> set[float]:
+    """What the entry's values offer to choose from."""
+    return {number for value in entry.values for each in read(value.piece.text, field) for number in each.options}
+
+
+def _restricts(noted: Candidate, choice: set[float]) -> bool:
+    """Whether a footnote only says where one of several options is to be had."""
+    numbers = {abs(number) for number in (noted.min, noted.typ, noted.max, *noted.options) if number is not None}
+    return bool(choice) and numbers <= choice
 
 
 def _narrower(entry: Entry, text: str, place: Placed, field: str) -> list[Candidate]:

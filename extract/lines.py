@@ -4,6 +4,7 @@ from __future__ import annotations
 
 from collections.abc import Iterator, Sequence
 
+from extract.candidates import has_unit, read
 from extract.documents.model import Line
 from extract.dumps import column_dump
 from extract.entries import Entry, Item, Key, Piece, Text, Value
@@ -98,7 +99,22 @@ def _label_and_rest(line: Line) -> Iterator[Entry]:
             values.append(Value(segment))
     if values:
         piece = Piece(label.text.rstrip(" :："), label.where, label.confidence)
-        yield Entry(piece, tuple(values), unit, symbol, source="pair")
+        yield Entry(piece, _as_choice(label.text, values), unit, symbol, source="pair")
+
+
+def _as_choice(label: str, values: list[Value]) -> tuple[Value, ...]:
+    """Several values side by side, each with its own unit ("8 pF", "12.5 pF"), are read as one text."""
+    known = meaning(label.rstrip(" :：")).label
+    if known is None or len(values) < 2 or not all(_plain_amount(value, known.field) for value in values):
+        return tuple(values)
+    worst = min(value.piece.confidence for value in values)
+    joined = Piece(", ".join(value.piece.text for value in values), values[0].piece.where, worst)
+    return (Value(joined),)
+
+
+def _plain_amount(value: Value, field: str) -> bool:
+    text = value.piece.text
+    return len(text) <= 24 and has_unit(text, field) and len(read(text, field)) == 1
 
 
 def _label_over_value(lines: Sequence[Line], index: int, items: list[Item]) -> int:

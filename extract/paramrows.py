@@ -14,7 +14,7 @@ from extract.entries import Entry, Item, Key, Piece, Text, Value
 from extract.fold import fold
 from extract.heads import BOUNDS, Head, is_unit
 from extract.keys import choices_in, key_label
-from extract.meaning import is_part_token, meaning
+from extract.meaning import Meaning, is_part_token, meaning
 from extract.prose import pair_entries
 
 Row = Sequence[Cell | None]
@@ -199,7 +199,8 @@ def _sorted_row(row: Row, heads: Sequence[Head], at: int, *, governed: bool) -> 
         if index == at or index < at and _is_label(cell.text) and found.label is None:
             found.label, found.label_text = cell, cell.text
         elif found.label is not None and _is_second_label(cell, head, found):
-            found.label_text = _both_labels(found.label_text, cell.text)
+            found.label_text, beside = _both_labels(found.label_text, cell.text)
+            found.conditions += beside
         elif index < at and head.role not in (*_VALUE_ROLES, *_CONDITION_ROLES, "unit", "symbol"):
             continue
         else:
@@ -211,22 +212,36 @@ def _sorted_row(row: Row, heads: Sequence[Head], at: int, *, governed: bool) -> 
 
 def _is_second_label(cell: Cell, head: Head, found: _Row) -> bool:
     """A label in two columns: "Temperature range | Operating", the first often merged over its rows."""
-    if found.values or found.symbol or meaning(cell.text).value:
+    if found.values or found.symbol or found.label is None or _is_subject(head):
         return False
-    first = found.label
     if head.role == "parameter":
         return True
+    if head.role is not None or found.label.row_span == 1:
+        return False
+    if meaning(cell.text).value:
+        return kinds_of(cell.text) == {"years"} and not has_unit(cell.text, "ageing_ppm")
     known = meaning(cell.text).label
-    spanning = first is not None and first.row_span > 1
-    return head.role is None and known is not None and known.exact and not known.symbol and spanning
+    own = known is not None and known.exact and not known.symbol
+    return own or _decides(meaning(f"{found.label_text} {cell.text}"))
 
 
-def _both_labels(first: str, second: str) -> str:
+def _decides(known: Meaning) -> bool:
+    return known.trap is not None or (known.label is not None and known.label.exact)
+
+
+_BAND_IN_LABEL = re.compile(r"(?P<name>[^\d±]+?)[\s,;:(]+(?P<band>[-+]?\d.*|[<≤≥>].*)", re.DOTALL)
+
+
+def _both_labels(first: str, second: str) -> tuple[str, list[str]]:
+    """The label that two cells make together, and what of the second is a condition: a band, or a word beside it."""
     for text in (f"{first} {second}", f"{second} {first}", second):
-        known = meaning(text)
-        if known.head is not None or known.trap is not None:
-            return text
-    return f"{first} {second}"
+        if _decides(meaning(text)) or meaning(text).head is not None:
+            return text, []
+    match = _BAND_IN_LABEL.fullmatch(second.strip())
+    if match is not None and _is_band(match["band"]):
+        label, beside = _both_labels(first, match["name"])
+        return label, [*beside, match["band"].rstrip(")")]
+    return (first, [second]) if meaning(first).head is not None else (f"{first} {second}", [])
 
 
 def _place(found: _Row, cell: Cell, head: Head, span: list[Head], *, governed: bool) -> None:

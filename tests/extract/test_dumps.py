@@ -39,3 +39,39 @@ def test_values_that_are_fewer_than_the_labels_are_left_alone():
 
 def test_lines_without_a_run_of_labels_are_no_dump():
     assert column_dump(dump(["Nominal Frequency", "12 MHz", "ESR", "60 Ω"]), 0) == ([], 0)
+
+
+GERMAN = [
+    ["Nennfrequenz", "Lastkapazität", "Abgleichtoleranz", "Arbeitstemperaturbereich", "Resonanzwiderstand"],
+    ["Bedingung", "-", "-", "bei 25 °C", "-", "-"],
+    ["Wert", "37,400", "9", "±10", "-30 bis +85", "max. 60"],
+    ["Einheit", "MHz", "pF", "ppm", "°C", "Ω"],
+]
+READ = {
+    "frequency_mhz": (None, 37.4, None),
+    "load_capacitance_pf": (None, 9.0, None),
+    "frequency_tolerance_ppm": (-10.0, None, 10.0),
+    "operating_temperature_c": (-30.0, None, 85.0),
+    "esr_ohm": (None, None, 60.0),
+}
+
+
+def test_columns_under_their_own_headings_are_put_together():
+    entries, taken = column_dump(dump(*GERMAN), 0)
+    assert taken == 23
+    assert {each.field: each.bounds[:3] for entry in entries for each in entry_candidates(entry)} == READ
+
+
+def test_columns_parted_by_blank_lines_are_put_together():
+    lines = [
+        line(text, number=10 * at + number)
+        for at, run in enumerate([GERMAN[0], GERMAN[2][1:], GERMAN[3][1:]])
+        for number, text in enumerate(run)
+    ]
+    entries, taken = column_dump(lines, 0)
+    assert taken == 15
+    assert {each.field: each.bounds[:3] for entry in entries for each in entry_candidates(entry)} == READ
+
+
+def test_a_column_of_values_that_is_too_short_is_not_paired():
+    assert column_dump(dump(*GERMAN[:2], GERMAN[2][:-1], GERMAN[3]), 0) == ([], 0)

@@ -2,7 +2,7 @@ import pytest
 from building import line
 
 from extract.entries import Entry, Piece, Value
-from extract.footnotes import footnote_of, marks_in, noted_candidates
+from extract.footnotes import footnote_of, footnotes_in, marks_in, noted_candidates
 from extract.model import When, Where
 
 HERE = Where(line=1)
@@ -53,3 +53,16 @@ def test_a_footnote_that_nothing_points_to_changes_nothing():
 def test_a_footnote_about_something_else_changes_nothing():
     note = line("*2 Guaranteed at the time of delivery; ±3 ppm after reflow").segments[0]
     assert noted_candidates(entry("50 Ω max. *2"), {"2": (note.text, note)}) == []
+
+
+def test_several_footnotes_on_one_line_are_parted_where_their_marks_count_up():
+    assert footnotes_in("(1) not with 18 pF. (2) see (7) for ±15 ppm.") == [
+        ("1", "not with 18 pF."),
+        ("2", "see (7) for ±15 ppm."),
+    ]
+
+
+def test_a_footnote_that_restricts_one_option_is_no_reading():
+    place = Piece("line", Where(line=9))
+    entry = Entry(Piece("Frequency stability", Where(line=1)), (Value(Piece("±15, ±30, ±50 ppm (2)", Where(line=1))),))
+    assert noted_candidates(entry, {"2": ("±15 ppm for -20 to +70 °C only", place)}) == []

@@ -76,3 +76,8 @@ def test_labels_values_and_units_broken_over_lines_are_put_together():
 def test_the_numbers_of_a_graph_state_nothing():
     texts = ["FREQUENCY AGAINST TEMPERATURE", "10", "0", "-40", "-20", "0", "20", "40", "Temperature [°C]"]
     assert held(*(line(text, number=number) for number, text in enumerate(texts, 1))) == []
+
+
+def test_values_side_by_side_with_a_unit_each_are_a_choice():
+    (entry,) = [item for item in line_items([line("Load capacitance", "8 pF", "12.5 pF")]) if isinstance(item, Entry)]
+    assert [each.options for each in entry_candidates(entry)] == [(8.0, 12.5)]

@@ -157,3 +157,32 @@ def test_drive_level_dependency_rows_state_no_drive_level():
         ("Ageing", "±3 ppm first year", None),
     )
     assert [each[0] for each in readings(read_table(table(*rows)))] == ["drive_level_uw", "ageing_ppm"]
+
+
+def test_a_second_label_cell_completes_the_first_and_a_band_in_it_is_a_condition():
+    rows = table(
+        ("Frequency", "tolerance at 25 °C", "±20 ppm"),
+        (None, "versus temperature", "±50 ppm"),
+        ("Resistance", "series, 3.5 - 5.999 MHz", "150 Ω max."),
+        (None, "series, 6.0 - 60.0 MHz", "60 Ω max."),
+        ("Drive level", "absolute", "500 µW max."),
+        (None, "dependency", "±1 ppm from 1 µW to 100 µW"),
+        ("Ageing", "1st year", "±1 ppm"),
+        (None, "10 years", "±4 ppm"),
+        spans={(0, 0): (2, 1), (2, 0): (2, 1), (4, 0): (2, 1), (6, 0): (2, 1)},
+    )
+    found = [
+        (each.field, each.max, each.when.frequency_mhz or each.when.years)
+        for item in read_table(rows)
+        if isinstance(item, Entry)
+        for each in entry_candidates(item)
+    ]
+    assert found == [
+        ("frequency_tolerance_ppm", 20, None),
+        ("frequency_stability_ppm", 50, None),
+        ("esr_ohm", 150, (3.5, 5.999)),
+        ("esr_ohm", 60, (6.0, 60.0)),
+        ("drive_level_uw", 500, None),
+        ("ageing_ppm", 1, 1),
+        ("ageing_ppm", 4, 10),
+    ]
