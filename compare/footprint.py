@@ -4,6 +4,7 @@ from __future__ import annotations
 
 import re
 from dataclasses import dataclass
+from functools import lru_cache
 from typing import Any
 
 from compare.relations import Relation
@@ -37,6 +38,7 @@ def size_mm(package: str) -> tuple[float, float] | None:
     return max(sides), min(sides)
 
 
+@lru_cache(maxsize=4096)
 def same_package(one: str, other: str) -> bool:
     """By size where both give one, else by name without its punctuation (`HC-49/US` is `HC49US`)."""
     size, other_size = size_mm(one), size_mm(other)
@@ -58,6 +60,12 @@ def package_fit(incumbent: Part, candidate: Part) -> Fit:
     if same_package(old, new):
         return Fit("same", old, new, f"{new} as before")
     return Fit("different", old, new, f"{new} in place of {old}: it does not sit on the board's pads")
+
+
+def sits_elsewhere(incumbent: Part, candidate: Part) -> bool:
+    """True where both packages are known and are not the same."""
+    old, new = incumbent.package, candidate.package
+    return old is not None and new is not None and not same_package(old, new)
 
 
 def pads_fit(incumbent: Part, candidate: Part) -> Fit:

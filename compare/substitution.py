@@ -3,57 +3,22 @@
 from __future__ import annotations
 
 import math
-from collections.abc import Mapping, Sequence
-from dataclasses import dataclass, replace
+from collections.abc import Sequence
 from typing import Any
 
 from compare.bench import Bench
+from compare.judgement import Judgement, called, judge_all, rank_key
 from compare.letters import english, in_english, in_language, known, language_of
 from compare.offer import fields_to_check
-from compare.reckoning import bare_result, missing_of, part_result
-from compare.refit import NO_REFIT, Refit, changes_for
-from compare.report import NAMES
+from compare.reckoning import part_result
 from compare.swap import Candidate, SubstituteError, Swap, make_swap
-from compare.swap_lines import Line, lines_of
-from compare.swap_verdict import (
-    DOES_NOT_FIT,
-    DROP_IN,
-    FITS_WITH_CHANGES,
-    NOT_TOLD,
-    VERDICTS,
-    Block,
-    decisive,
-    excused,
-    marked_on_bench,
-    mechanical_blocks,
-    plain_blocks,
-    requirement_blocks,
-    shift_message,
-    verdict_of,
-)
+from compare.swap_verdict import VERDICTS
 from extract.model import SpecSheet
 
 __all__ = ["SCHEMA", "SubstituteError", "substitute"]
 
 SCHEMA = "quartzfolio/substitute/1"
 PRESENTED = "no bench given: the circuit is taken to present the incumbent's rated load"
-
-
-@dataclass
-class Judgement:
-    """Everything that is said of one candidate."""
-
-    candidate: Candidate
-    code: int
-    decides: str
-    lines: list[Line]
-    blocks: list[Block]
-    changes: list[dict[str, Any]]
-    excuses: list[str]
-    missing: list[str]
-    said: str = ""
-    """What is to be said of changes to the board, or of why none do."""
-    least_slack: float = math.nan
 
 
 def substitute(
@@ -67,8 +32,8 @@ def substitute(
         The incumbent is not exactly one part, does not offer the bench's frequency, or names none and no bench does.
     """
     swap = make_swap(incumbent_sheets, candidate_sheets, bench)
-    judged = [_judge(swap, one) for one in swap.candidates]
-    places = {id(one): place for place, one in enumerate(sorted(judged, key=_order), start=1)}
+    judged = judge_all(swap)
+    places = {id(one): place for place, one in enumerate(sorted(judged, key=rank_key), start=1)}
     listed = [_as_json(swap, one, places[id(one)]) for one in _in_order(judged)]
     notes = [*swap.notes, *_incumbent_notes(swap, judged)]
     if bench is None:
@@ -89,167 +54,12 @@ def _presented(swap: Swap) -> str:
     return f"{PRESENTED} ({words}), and what is asked is no worse than the incumbent"
 
 
-def _order(one: Judgement) -> tuple[int, bool, float]:
-    known_slack = not math.isnan(one.least_slack)
-    return -one.code, not known_slack, -one.least_slack if known_slack else 0.0
-
-
 def _in_order(judged: Sequence[Judgement]) -> list[Judgement]:
     """As given; the parts of a list ranked among themselves."""
     listed: list[Judgement] = []
     for sheet in dict.fromkeys(id(one.candidate.sheet) for one in judged):
-        listed += sorted((one for one in judged if id(one.candidate.sheet) == sheet), key=_order)
+        listed += sorted((one for one in judged if id(one.candidate.sheet) == sheet), key=rank_key)
     return listed
-
-
-def _judge(swap: Swap, candidate: Candidate) -> Judgement:
-    at = candidate.column
-    if at is None:
-        return _not_offered(swap, candidate)
-    lines = [_with_shift(line, swap, at) for line in lines_of(swap.columns, at)]
-    by_field = {line.field: line for line in lines}
-    blocks = mechanical_blocks(by_field)
-    if swap.reckoning is None:
-        lines, more = plain_blocks(swap, at, lines)
-        return _settled(swap, candidate, _mechanical_marked(lines, blocks), blocks + more)
-    reckoning, offers = swap.reckoning, (swap.incumbent, swap.columns.offers[at])
-    judged = reckoning.judged
-    excuses = [one.about for one in judged.values() if excused(one, at, by_field, offers, swap.bench)]
-    messages = {
-        one["about"]: f"{called(one['about'])}: {one['message']}" for one in part_result(reckoning, at)["reasons"]
-    }
-    required = requirement_blocks(judged, at, messages, excuses)
-    refit = Refit()
-    if required and verdict_of(blocks) != DOES_NOT_FIT:
-        refit = changes_for(reckoning, at, [block.about for block in required], excuses)
-    lines = _mechanical_marked(marked_on_bench(lines, judged, at, excuses, swap.bench), blocks)
-    return _settled(swap, candidate, lines, blocks + required, refit=refit, excuses=excuses)
-
-
-def called(about: str) -> str:
-    """What a person calls a requirement."""
-    return NAMES.get(about, about)
-
-
-def _mechanical_marked(lines: Sequence[Line], blocks: Sequence[Block]) -> list[Line]:
-    stopped = {block.about for block in blocks if not block.requirement}
-    return [replace(line, matters=line.matters or line.field in stopped) for line in lines]
-
-
-def _with_shift(line: Line, swap: Swap, at: int) -> Line:
-    """Where load or kind of resonance differ, by how much and to which side that moves the frequency."""
-    if line.field not in ("load_capacitance_pf", "resonance") or line.relation != "different":
-        return line
-    low, _, high = swap.shift(at)
-    if math.isnan(low):
-        return replace(line, message=f"{line.message}; by how many ppm cannot be told")
-    return replace(line, message=f"{line.message}; the frequency moves by {low:+.3g} to {high:+.3g} ppm")
-
-
-def _not_offered(swap: Swap, candidate: Candidate) -> Judgement:
-    states_none = not any(r.field == "frequency_mhz" for r in candidate.part.readings)
-    code, relation = (NOT_TOLD, "unknown") if states_none else (DOES_NOT_FIT, "different")
-    message = f"frequency: {candidate.said}"
-    asked = f"{swap.incumbent.frequency_mhz:.10g} MHz"
-    line = Line("frequency_mhz", {"text": asked}, None, relation, message, matters=True)  # type: ignore[arg-type]
-    missing = ["frequency_mhz"] if states_none else []
-    return Judgement(candidate, code, message, [line], [Block("frequency_mhz", code, message)], [], [], missing)
-
-
-def _settled(
-    swap: Swap,
-    candidate: Candidate,
-    lines: list[Line],
-    blocks: list[Block],
-    *,
-    refit: Refit = NO_REFIT,
-    excuses: Sequence[str] = (),
-) -> Judgement:
-    changes = refit.changes
-    at = candidate.column or 0
-    code = verdict_of([block for block in blocks if not (changes and block.requirement)])
-    if changes:
-        code = min(code, FITS_WITH_CHANGES)
-    decides = _decides(swap, at, code, blocks, changes)
-    missing = _missing(swap, at, lines, blocks, excuses)
-    return Judgement(
-        candidate,
-        code,
-        decides,
-        lines,
-        blocks,
-        changes,
-        list(excuses),
-        missing,
-        refit.said,
-        _least_slack(swap, at, excuses),
-    )
-
-
-def _decides(swap: Swap, at: int, code: int, blocks: Sequence[Block], changes: Sequence[Mapping[str, Any]]) -> str:
-    if code == FITS_WITH_CHANGES:
-        mended = decisive([block for block in blocks if block.requirement])
-        return f"{changed_words(changes)}; as built: {mended.message}"
-    if code != DROP_IN:
-        return decisive([block for block in blocks if block.code == code]).message
-    if swap.reckoning is None:
-        return f"no worse than the incumbent in every line that matters; {shift_message(swap, at)}"
-    result = bare_result(swap.reckoning, at)
-    tightest = result["tightest"]
-    if tightest is None:
-        return "every requirement that can be told is met on the unchanged board"
-    return (
-        f"meets on the unchanged board; the tightest is {called(tightest)}, {result['slack'][tightest]:.3g} times over"
-    )
-
-
-def changed_words(changes: Sequence[Mapping[str, Any]]) -> str:
-    """`load capacitors 12 and 12 pF become 15 and 15 pF`."""
-    said = []
-    for change in changes:
-        if change["what"] == "load capacitors":
-            (a, b), (c, d) = change["from"], change["to"]
-            said.append(f"load capacitors {a:g} and {b:g} pF (input, output) become {c:g} and {d:g} pF")
-        else:
-            said.append(f"series resistor {change['from']:g} Ω becomes {change['to']:g} Ω")
-    return "; ".join(said)
-
-
-def _least_slack(swap: Swap, at: int, excuses: Sequence[str]) -> float:
-    if swap.reckoning is None:
-        return math.nan
-    known_ones = [
-        float(one.slack[at])
-        for one in swap.reckoning.judged.values()
-        if one.asked[at] and one.about not in excuses and not math.isnan(one.slack[at])
-    ]
-    return min(known_ones, default=math.nan)
-
-
-def _missing(swap: Swap, at: int, lines: Sequence[Line], blocks: Sequence[Block], excuses: Sequence[str]) -> list[str]:
-    """Readings and bench keys that a verdict wanted: of requirements not excused, and of lines that matter."""
-    wanted: list[str] = []
-    if swap.reckoning is not None:
-        judged = {key: one for key, one in swap.reckoning.judged.items() if one.asked[at] and key not in excuses}
-        wanted += missing_of(judged, at)
-    else:
-        wanted += [line.field for line in lines if line.matters and _candidate_is_silent(line)]
-        wanted += _estimates_behind_shift(swap, at, blocks)
-    wanted += [block.about for block in blocks if block.code == NOT_TOLD and block.about in ("package", "pads")]
-    return list(dict.fromkeys(wanted))
-
-
-def _candidate_is_silent(line: Line) -> bool:
-    typical = line.field == "esr_ohm" and isinstance(line.candidate, Mapping) and line.candidate.get("max") is None
-    return line.relation == "unknown" and (line.candidate is None or typical)
-
-
-def _estimates_behind_shift(swap: Swap, at: int, blocks: Sequence[Block]) -> list[str]:
-    if not any(block.about in ("shift_ppm", "load_capacitance_pf", "resonance") for block in blocks):
-        return []
-    columns = swap.columns
-    found = ["motional_capacitance_ff"] if columns.motional_estimated[at] else []
-    return found + (["shunt_capacitance_pf"] if columns.shunt_missing[at] or columns.shunt_loose[at] else [])
 
 
 def _incumbent_notes(swap: Swap, judged: Sequence[Judgement]) -> list[str]:
@@ -308,8 +118,7 @@ def _as_json(swap: Swap, one: Judgement, place: int) -> dict[str, Any]:
     at = one.candidate.column
     result = _identity(one.candidate)
     if at is not None and swap.reckoning is not None:
-        circuit = part_result(swap.reckoning, at)
-        result |= {**circuit, "circuit_verdict": circuit["verdict"]}
+        result |= {**one.result, "circuit_verdict": one.result["verdict"]}
     elif at is not None:
         result |= {"mode": swap.columns.offers[at].mode, **_taken_so(swap, at)}
     return {

@@ -101,9 +101,9 @@ def the_incumbent(sheets: Sequence[SpecSheet]) -> tuple[SpecSheet, Part]:
 
 def implied_bench(sheet: SpecSheet, part: Part, candidates: Sequence[SpecSheet]) -> tuple[Bench, list[str]]:
     """A bench that names the incumbent's frequency, or the one that all candidates state, and nothing else."""
-    own = _named_frequencies(part)
+    own = named_frequencies(part)
     if len(own) != 1:
-        theirs = {f for one in candidates for p in one.parts for f in _named_frequencies(p)}
+        theirs = {f for one in candidates for p in one.parts for f in named_frequencies(p)}
         own = {f for f in theirs if match_frequency(part, f).printed_mhz is not None}
     if len(own) != 1:
         raise SubstituteError(
@@ -113,7 +113,7 @@ def implied_bench(sheet: SpecSheet, part: Part, candidates: Sequence[SpecSheet])
     return bench, []
 
 
-def _named_frequencies(part: Part) -> set[float]:
+def named_frequencies(part: Part) -> set[float]:
     readings = [r for r in part.readings if r.field == "frequency_mhz"]
     return {value for r in readings for value in (r.typ, *r.options) if value is not None}
 

@@ -58,12 +58,16 @@ def lines_of(columns: Columns, at: int) -> list[Line]:
         taken = _taken(columns, 0, field), _taken(columns, at, field)
         if any(one.stated for one in taken) or (rules()[field].asked == "always" and not _fork_stability(field, new)):
             lines.append(_field_line(field, *taken, itself))
-    lines += [_fit_line(name, fit, itself) for name, fit in fits(old.part, new.part).items()]
+    lines += mechanical_lines(columns, at)
     return lines + _grade_lines(old.part.attributes, new.part.attributes)
 
 
-def fits(old: Part, new: Part) -> dict[str, Fit]:
-    return {"package": package_fit(old, new), "pads": pads_fit(old, new)}
+def mechanical_lines(columns: Columns, at: int) -> list[Line]:
+    """Package and pads of the part at `at` against the first one's."""
+    old, new = columns.offers[0].part, columns.offers[at].part
+    fits = {"package": package_fit(old, new), "pads": pads_fit(old, new)}
+    itself = same_number(old, new)
+    return [_fit_line(name, fit, itself) for name, fit in fits.items()]
 
 
 def _fork_stability(field: str, offer: Offer) -> bool:
