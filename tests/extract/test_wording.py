@@ -579,6 +579,8 @@ SHORTENED = [
     ("温特", STAB),
     ("负载", LOAD),
     ("Trim sens. (ppm/pF)", PULL),
+    ("Motional C (fF)", C1),
+    ("R_ESR", ESR),
 ]
 
 
@@ -597,5 +599,6 @@ def test_what_follows_a_colon_is_no_name_of_a_head() -> None:
     assert role_of("Resonance: series") is None
 
 
-def test_an_italian_article_code_is_the_part_number() -> None:
-    assert identity_label("Codice articolo") == "part_number"
+@pytest.mark.parametrize("text", ["Codice articolo", "Manufacturer PN", "Mfr. Part #"])
+def test_codes_that_a_maker_gives_are_the_part_number(text: str) -> None:
+    assert identity_label(text) == "part_number"
