@@ -11,6 +11,7 @@ from extract.candidates import Candidate, has_unit, read
 from extract.conditions import condition_of
 from extract.entries import Entry, Piece, Placed, Source, Value
 from extract.fold import fold
+from extract.interleaved import interleaved
 from extract.meaning import meaning
 from extract.model import When
 from extract.units import unit_at
@@ -30,6 +31,8 @@ _SUBSCRIPT = re.compile(r"(?<=(?<![A-Za-z0-9])[A-Za-z])_(?=[A-Za-z0-9])")
 _LONG_BRACKET = re.compile(r"\([^()]{24,}\)")
 _UNITLESS = ("quality_factor", "capacitance_ratio")
 NEAR = 60
+# A line below this length is read as sentences, whatever its labels.
+LONG = 200
 
 
 def pair_entries(cell: Placed) -> list[Entry]:
@@ -37,6 +40,9 @@ def pair_entries(cell: Placed) -> list[Entry]:
     found: list[Entry] = []
     for chunk in _CHUNK.split(fold(cell.text)):
         if not chunk.strip():
+            continue
+        if len(chunk) > LONG and (told_apart := interleaved(chunk)) is not None:
+            found += [entry for label, value in told_apart for entry in _banded(label, value, cell)]
             continue
         pairs, rest = split_pairs(chunk)
         for label, value in pairs:
@@ -46,6 +52,14 @@ def pair_entries(cell: Placed) -> list[Entry]:
         if rest.strip():
             found += prose_entries(Piece(rest, cell.where, cell.confidence))
     return found
+
+
+def _banded(label: str, value: str, cell: Placed) -> Iterator[Entry]:
+    """A label's entry, or one for each band where bands and values stand one after the other."""
+    known = meaning(label).label
+    for band, number in _zipped_bands(value, known.field if known else "") or [("", value)]:
+        piece = Piece(number, cell.where, cell.confidence)
+        yield Entry(Piece(label, cell.where), (Value(piece),), conditions=(band,) if band else (), source="prose")
 
 
 def split_pairs(text: str) -> tuple[list[tuple[str, str]], str]:
@@ -163,11 +177,24 @@ def _zipped_bands(text: str, field: str) -> list[tuple[str, str]]:
     bands = list(_BANDS.finditer(text))
     if len(bands) < 2:
         return []
+    if told := _beside_bands(text, bands):
+        return told
     rest = text[bands[-1].end() :]
     values = _OHMS.findall(rest)
     between = text[bands[0].start() : bands[-1].end()]
     if len(values) != len(bands) or _OHMS.search(between):
         return []
+    return [(band[0], value) for band, value in zip(bands, values, strict=True)]
+
+
+def _beside_bands(text: str, bands: list[re.Match[str]]) -> list[tuple[str, str]]:
+    """Bands with one resistance behind each, or one before each."""
+    starts, ends = [band.start() for band in bands], [band.end() for band in bands]
+    before, after = _OHMS.findall(text[: starts[0]]), _OHMS.findall(text[ends[-1] :])
+    between = [_OHMS.findall(text[end:start]) for end, start in zip(ends, starts[1:], strict=False)]
+    if any(len(found) != 1 for found in between) or bool(before) == bool(after):
+        return []
+    values = [*(found[0] for found in between), after[0]] if after else [before[-1], *(found[0] for found in between)]
     return [(band[0], value) for band, value in zip(bands, values, strict=True)]
 
 

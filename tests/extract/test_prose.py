@@ -3,7 +3,7 @@ import pytest
 from extract.candidates import entry_candidates
 from extract.entries import Piece
 from extract.model import Where
-from extract.prose import loose_in_prose, pair_entries, split_pairs
+from extract.prose import loose_in_prose, pair_entries, prose_entries, split_pairs
 
 HERE = Where(line=1)
 
@@ -77,3 +77,9 @@ def test_what_is_only_on_request_is_not_offered():
 
 def test_two_frequencies_without_a_label_are_none():
     assert loose("We stock 12 MHz. We also stock 16 MHz.") == []
+
+
+def test_bands_with_one_resistance_each_behind_or_before_them_are_paired():
+    for text in ("8 - 9.999 MHz: 100 Ω max 10 - 20 MHz: 70 Ω max", "100 Ω max 8 - 9.999 MHz 70 Ω max 10 - 20 MHz"):
+        found = [each for entry in prose_entries(Piece(f"ESR {text}", HERE)) for each in entry_candidates(entry)]
+        assert [(each.when.frequency_mhz, each.max) for each in found] == [((8, 9.999), 100), ((10, 20), 70)]
