@@ -116,7 +116,8 @@ class _Version(argparse.Action):
 
         from extract.model import SCHEMA
 
-        print(f"quartzfolio {version('quartzfolio')}, {SCHEMA}, quartzfolio/review/1, quartzfolio/rank/1")  # noqa: T201
+        schemas = ", ".join(f"quartzfolio/{name}/1" for name in ("review", "rank", "substitute", "changes"))
+        print(f"quartzfolio {version('quartzfolio')}, {SCHEMA}, {schemas}")  # noqa: T201
         parser.exit()
 
 

@@ -68,8 +68,14 @@ def sits_elsewhere(incumbent: Part, candidate: Part) -> bool:
     return old is not None and new is not None and not same_package(old, new)
 
 
+def sound_pads(part: Part) -> Pads | None:
+    """The pads that the sheet gives; a crystal has two ends, so that any other number of crystal pads was misread."""
+    pads = part.attributes.pads
+    return None if pads is None or (pads.crystal is not None and len(set(pads.crystal)) != 2) else pads
+
+
 def pads_fit(incumbent: Part, candidate: Part) -> Fit:
-    old, new = incumbent.attributes.pads, candidate.attributes.pads
+    old, new = sound_pads(incumbent), sound_pads(candidate)
     words = _words(old), _words(new)
     if old is not None and new is not None:
         for name in ("crystal", "count"):

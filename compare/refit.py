@@ -8,7 +8,7 @@ from typing import Any
 
 import numpy as np
 
-from compare.advice import e24_pairs
+from compare.advice import Pair, e24_pairs
 from compare.bench import Bench
 from compare.reckoning import Reckoning, reckon_offers
 from compare.trial import Trial
@@ -17,6 +17,7 @@ from compare.verdict import FALLS_SHORT, GAINS, MEETS, Judged
 BY_PARTS = (*GAINS, "total_ppm", "drive_level_uw", "startup_ms", "rating")
 """Requirements that other capacitors or a series resistor can move."""
 NOT_ASKED = 1e-12
+MOST_PAIRS = 48
 Change = dict[str, Any]
 
 
@@ -99,15 +100,22 @@ def _resistors(reckoning: Reckoning, at: int) -> list[Proposal]:
 def _pairs(reckoning: Reckoning, at: int, bench: Bench, excuses: Sequence[str]) -> tuple[list[Proposal], str]:
     """Pairs of load capacitors, best first, and a sentence where there are none."""
     trial = Trial(reckoning.columns.take([at]), relaxed(bench, excuses), reckoning.total, at)
-    pairs, sentence = e24_pairs(trial.nominal_pairs, trial.worst_pairs)
+    pairs, sentence = e24_pairs(trial.nominal_pairs, trial.worst_pairs, most=MOST_PAIRS)
     keys = bench.settings[0].circuit
-    before = [keys.input_capacitor_pf, keys.output_capacitor_pf]
+    before = (keys.input_capacitor_pf or np.nan, keys.output_capacitor_pf or np.nan)
+    pairs.sort(key=lambda pair: (_turned(pair, before), abs(pair.load_error_ppm)))
     proposals: list[Proposal] = []
     for pair in pairs:
-        change = {"what": "load capacitors", "from": before, "to": [pair.input_pf, pair.output_pf]}
+        change = {"what": "load capacitors", "from": list(before), "to": [pair.input_pf, pair.output_pf]}
         fitted = with_circuit(bench, input_capacitor_pf=pair.input_pf, output_capacitor_pf=pair.output_pf)
         proposals.append((change, fitted, ()))
     return proposals, sentence
+
+
+def _turned(pair: Pair, before: tuple[float, float]) -> float:
+    """By how many pairs of steps of the series the ratio of the two differs from what is fitted."""
+    ratio, present = pair.input_pf / pair.output_pf, before[0] / before[1]
+    return float(np.round(abs(np.log(ratio / present)) * 24 / np.log(10) / 2)) if present > 0 else 0.0
 
 
 def with_circuit(bench: Bench, **keys: float) -> Bench:

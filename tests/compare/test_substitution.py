@@ -363,6 +363,11 @@ def test_pads_that_neither_sheet_gives_are_said_and_not_held_against():
     assert [finding["about"] for finding in result["findings"]] == ["pads"]
 
 
+def test_pads_that_cannot_be_a_crystals_are_not_believed():
+    result = one(placed((1, 3)), placed((5,), number="P2"), bench(BOARD))
+    assert (result["verdict"], result["lacks"]) == ("cannot tell", ["pads"])
+
+
 def test_grade_that_is_not_stated_is_not_a_no_and_is_said():
     result = one(placed((1, 3), aec_q200=True), placed((1, 3), number="P2"), bench(BOARD))
     line = lines(result)["aec_q200"]
