@@ -64,6 +64,16 @@ def _parser() -> argparse.ArgumentParser:
     review = _command(commands, "review", "each part in your circuit: every number, verdict and reason", _review)
     _sheets(review)
     _bench(review)
+    review.add_argument(
+        "--what-if", action="store_true", help="also every single change that would turn what falls short"
+    )
+    review.add_argument(
+        "--spread",
+        choices=("rss", "draws"),
+        help="beside the worst case: root-sum-square, or boards drawn at random within the tolerances",
+    )
+    review.add_argument("--boards", type=_count, default=10_000, help="boards to draw (default %(default)s)")
+    review.add_argument("--seed", type=int, default=1, help="seed of the draws (default %(default)s)")
     rank = _command(commands, "rank", "the candidates for your circuit, best first, and why", _rank)
     _sheets(rank)
     _bench(rank)
@@ -96,6 +106,13 @@ def _command(commands: Any, name: str, about: str, run: Any) -> argparse.Argumen
     return parser
 
 
+def _count(text: str) -> int:
+    number = int(text)
+    if not 1 <= number <= 1_000_000:
+        raise argparse.ArgumentTypeError(f"must be from 1 to 1000000, got {text}")
+    return number
+
+
 def _sheets(parser: argparse.ArgumentParser, name: str = "sheets", shown: str = "SHEET") -> None:
     parser.add_argument(
         name,
@@ -126,11 +143,9 @@ def _extract(options: argparse.Namespace) -> int:
         return _explain(options)
     intake = _read(options, options.sheets)
     if options.json:
-        from extract.model import SCHEMA
+        from compare.sheets_json import write_sheets
 
-        sheets = [sheet.model_dump(mode="json") for sheet in intake.sheets]
-        notes = [note.model_dump(mode="json") for note in intake.notes]
-        _print_json({"schema": SCHEMA, "sheets": sheets, "notes": notes})
+        write_sheets(intake.sheets, intake.notes, sys.stdout)
     else:
         from compare.report import extract_text
 
@@ -169,7 +184,11 @@ def _review(options: argparse.Namespace) -> int:
 
     bench = _read_bench(options.bench)
     intake = _read(options, options.sheets)
-    result = review(intake.sheets, bench)
+    result = review(intake.sheets, bench, what_if=options.what_if)
+    if options.spread is not None:
+        from compare.spread import add_spread
+
+        result = add_spread(result, intake.sheets, bench, options.spread, boards=options.boards, seed=options.seed)
     _add_notes(result, intake)
     _print_json(result) if options.json else _print(review_text(result))
     if intake.stopped:

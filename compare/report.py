@@ -250,9 +250,28 @@ def _open_points(review: Mapping[str, Any]) -> Iterator[tuple[str, list[str]]]:
             for key, listed in review.get("contributors", {}).items()
             if listed
         ],
-        "What would help": [*map(_advice, review.get("advice", ())), *review.get("advice_messages", ())],
+        "What would help": [
+            *map(_advice, review.get("advice", ())),
+            *review.get("advice_messages", ()),
+            *(one["message"] for one in review.get("cures", ())),
+            *([review["gain_window"]] if "gain_window" in review else []),
+        ],
+        "Likely spread beside the worst case": list(_spread(review["spread"])) if "spread" in review else [],
     }
     yield from ((title, sentences) for title, sentences in points.items() if sentences)
+
+
+def _spread(spread: Mapping[str, Any]) -> Iterator[str]:
+    """The spread's ends, the share of boards that fall short where boards were drawn, and what it takes for granted."""
+    for key, number in spread["numbers"].items():
+        if key in NUMBERS and number["mid"] is not None:
+            digits = 9 if NUMBERS[key].endswith("MHz") else 4
+            low, mid, high = (figure(number[end], digits) for end in ("low", "mid", "high"))
+            yield f"{NUMBERS[key]}: {low} to {high}, about {mid}"
+    for key, share in spread.get("falls_short", {}).items():
+        ends = f"{figure(100 * share['low'], 2)} to {figure(100 * share['high'], 2)} % of all boards"
+        yield f"{NAMES.get(key, key)}: {share['boards']} of {spread['boards']} boards fall short; 95 % sure: {ends}"
+    yield from spread["assumptions"]
 
 
 def _advice(one: Mapping[str, Any]) -> str:

@@ -8,6 +8,7 @@ from typing import Any
 from compare.bench import Bench
 from compare.bench_readings import measured_numbers
 from compare.contributors import contributors_of
+from compare.cures import cures, gain_window_words
 from compare.offer import Offers
 from compare.reckoning import Reckoning, part_result, reckon_sheets
 from compare.trial import advice_for
@@ -16,12 +17,16 @@ from extract.model import SpecSheet
 SCHEMA = "quartzfolio/review/1"
 
 
-def review(sheets: Sequence[SpecSheet], bench: Bench) -> dict[str, Any]:
-    """Review every part that offers the bench's frequency, in the order read; JSON-ready."""
+def review(sheets: Sequence[SpecSheet], bench: Bench, *, what_if: bool = False) -> dict[str, Any]:
+    """Review every part that offers the bench's frequency, in the order read; JSON-ready.
+
+    `what_if`: with every single change that would turn what falls short, and the transconductance that would do; it
+    takes some hundred reckonings a part.
+    """
     reckoning = reckon_sheets(sheets, bench)
     if isinstance(reckoning, Offers):
         return {"schema": SCHEMA, "reviews": [], "notes": list(reckoning.notes)}
-    reviews = [_reviewed(reckoning, at) for at in range(len(reckoning))]
+    reviews = [_reviewed(reckoning, at) | (_what_if(reckoning, at) if what_if else {}) for at in range(len(reckoning))]
     return {"schema": SCHEMA, "reviews": reviews, "notes": list(reckoning.notes)}
 
 
@@ -36,3 +41,8 @@ def _reviewed(reckoning: Reckoning, at: int) -> dict[str, Any]:
         "advice": advice,
         "advice_messages": sentences,
     }
+
+
+def _what_if(reckoning: Reckoning, at: int) -> dict[str, Any]:
+    changes = [cure.as_dict() for cure in cures(reckoning, at)]
+    return {"cures": changes, "gain_window": gain_window_words(reckoning, at)}

@@ -196,6 +196,18 @@ def test_review_exits_with_zero_only_when_every_part_meets(capsys, folder):
     assert run(capsys, "review", weak, "--bench", folder / "bench.toml", "--json")[0] == 1
 
 
+def test_spread_and_what_if_stand_beside_the_worst_case(capsys, folder):
+    weak = folder / "weak.txt"
+    weak.write_text(SHEET.replace("50 Ohm", "450 Ohm"), encoding="utf-8")
+    options = ("--bench", folder / "bench.toml", "--what-if", "--spread", "draws", "--boards", "200", "--json")
+    (one,) = json.loads(run(capsys, "review", weak, *options)[1])["reviews"]
+    assert one["spread"]["boards"] == 200
+    assert one["spread"]["falls_short"]["gain_ratio"]["boards"] == 200
+    assert {"ESR"} <= {cure["what"] for cure in one["cures"]}
+    text = run(capsys, "review", weak, *options[:-1])[1]
+    assert "gain ratio: 200 of 200 boards fall short" in " ".join(text.split())
+
+
 def test_help_imports_nothing_heavy():
     probe = (
         "import sys; from compare.command import main\n"
