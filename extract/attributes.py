@@ -4,17 +4,24 @@ from __future__ import annotations
 
 import re
 from collections.abc import Mapping, Sequence
+from functools import cache
 
 from extract.fold import fold, key
+from extract.meaning import identity_words
 from extract.model import Attributes, Pads
 from extract.vocabulary import vocabulary
 
-_LIST = r"#?\d(?:\s?(?:,|and|und|&|/|、|と|和)\s?#?\d)*"
-_VERB = r"\s?(?:are|is|:|=|-)?\s?(?:connected to\s)?(?:the\s)?"
-_CRYSTAL_PADS = re.compile(rf"(?i)(?:pads?|pins?|terminals?)?\s?({_LIST}){_VERB}(?:crystal|xtal|quartz|quarz)")
-_GROUND_PADS = re.compile(
-    rf"(?i)(?:pads?|pins?|terminals?)?\s?({_LIST}){_VERB}(?:gnd|ground|metal lid|lid|cover|case|masse)"
-)
+# Between the numbers and what they are for: "are connected to the", "reliés au".
+_VERB = r"(?:\s?[:=-]|[^\d;,.:()]{0,24}?(?<![^\W\d_]))\s?"
+
+
+@cache
+def _pads_for(use: str) -> re.Pattern[str]:
+    """Numbers of pads with what they are for, "crystal" or "ground", behind them."""
+    words = identity_words()["pads"]
+    joins, uses, names = ("|".join(map(re.escape, words[key])) for key in ("joins", use, "names"))
+    numbers = rf"#?\d(?:\s?(?:{joins})\s?#?\d)*"
+    return re.compile(rf"(?i)(?:(?:{names})\s?|(?<![\w.,/#+-]))({numbers})(?![\d.,]*\d){_VERB}(?:{uses})")
 
 
 def attributes_of(stated: Mapping[str, str], texts: Sequence[str] = ()) -> Attributes:
@@ -34,12 +41,11 @@ def attributes_of(stated: Mapping[str, str], texts: Sequence[str] = ()) -> Attri
 def _yes_or_no(text: str | None) -> bool | None:
     if text is None:
         return None
-    phrases = vocabulary().phrases
-    if key(text) in {key(word) for word in phrases.get("no", ())}:
+    yes, no = ({key(word) for word in vocabulary().phrases.get(name, ())} for name in ("yes", "no"))
+    said = {key(text), *map(key, text.split())}
+    if said & no:
         return False
-    if key(text) in {key(word) for word in phrases.get("yes", ())} or "q200" in key(text):
-        return True
-    return None
+    return True if said & yes or "q200" in key(text) else None
 
 
 _QUALIFIED = re.compile(r"(?i)\bAEC[\s-]?Q[\s-]?200\b")
@@ -58,9 +64,9 @@ def _pads(texts: Sequence[str]) -> Pads | None:
     ground: tuple[int, ...] | None = None
     for text in texts:
         folded = fold(text)
-        if crystal is None and (found := _CRYSTAL_PADS.search(folded)):
+        if crystal is None and (found := _pads_for("crystal").search(folded)):
             crystal = _numbers(found[1])
-        if ground is None and (found := _GROUND_PADS.search(folded)):
+        if ground is None and (found := _pads_for("ground").search(folded)):
             ground = _numbers(found[1])
     if crystal is None and ground is None:
         return None

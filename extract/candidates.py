@@ -31,7 +31,11 @@ LEAST_CONFIDENCE = 0.8
 
 @dataclass(frozen=True, slots=True)
 class Candidate:
-    """A reading that might be meant. `doubts` are reasons to look; `source` and `exact` rank it against others."""
+    """A reading that might be meant. `doubts` are reasons to look; `source` and `exact` rank it against others.
+
+    `subject` is the model in the column's head, `about` the one part that the heading above names. `open_above`: the
+    upper end of its band is printed as "<".
+    """
 
     field: FieldName
     min: float | None
@@ -49,6 +53,7 @@ class Candidate:
     section: str = ""
     label_where: Where | None = None
     open_above: bool = False
+    about: str = ""
 
     @property
     def bounds(self) -> tuple[float | None, float | None, float | None, tuple[float, ...]]:
@@ -288,7 +293,9 @@ def _raw(entry: Entry, pieces: Iterable[Placed]) -> str:
 
 def label_doubts(label: Label, pieces: Iterable[Placed], doubts: Iterable[str]) -> tuple[str, ...]:
     """Reasons to look at a reading: those of the amount, a label that is only nearly one, an unsure recogniser."""
-    found = list(doubts)
+    pieces, found = list(pieces), list(doubts)
+    if label.exact and not found and all(piece.confidence >= LEAST_CONFIDENCE for piece in pieces):
+        return ()
     if not label.exact:
         found.append(f"the label is only like that of {field_of(label.field).title}")
     found += confidence_doubts(min((piece.confidence for piece in pieces), default=1.0))

@@ -81,8 +81,9 @@ def _blocks(text: str, words: Sequence[_Word]) -> list[_Block]:
             last.names.append(word)
         else:
             blocks.append(_Block([word]))
-    for block, following in zip(blocks, [*blocks[1:], None], strict=True):
-        block.end = following.names[0].start if following is not None else len(text)
+    ends = [*(block.names[0].start for block in blocks), len(text)][1:]
+    for block, end in zip(blocks, ends, strict=True):
+        block.end = end
     return blocks
 
 

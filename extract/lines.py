@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import re
 from collections.abc import Iterator, Sequence
 
 from extract.candidates import has_unit, read
@@ -120,7 +121,7 @@ def _plain_amount(value: Value, field: str) -> bool:
 def _label_over_value(lines: Sequence[Line], index: int, items: list[Item]) -> int:
     """A line that is a label and nothing else, and the lines with its values below it."""
     line = lines[index]
-    if len(line.segments) != 1 or not is_label(line.text) or meaning(line.text).value:
+    if len(line.segments) != 1 or not is_label(line.text) or meaning(line.text).value or _holds_its_value(line.text):
         return 0
     end = index + 1
     while end < len(lines) and _is_value_line(lines[end]) and end - index <= 8:
@@ -137,8 +138,19 @@ def _label_over_value(lines: Sequence[Line], index: int, items: list[Item]) -> i
     return end - index
 
 
+def _holds_its_value(text: str) -> bool:
+    """Whether a label has its amount behind it on the same line ("Tolerance ±30 ppm at 25 °C")."""
+    label = meaning(text).label
+    return label is not None and has_unit(text, label.field) and bool(re.search(r"\d", text))
+
+
+_BULLET = re.compile(r"^\s*[-•▪■◆●*·]\s+[^\W\d_]")
+
+
 def _is_value_line(line: Line) -> bool:
     text = fold(line.text)
+    if _BULLET.match(line.text):
+        return False
     starts_like_value = bool(text) and (text[0].isdigit() or text[0] in "±+-<>≤≥~(")
     return (
         (starts_like_value or meaning(text).role in ("min", "typ", "max"))

@@ -345,6 +345,8 @@ def _unstacked(row: _Row) -> list[_Row]:
         return [row]
     labels = _lines_of(row.label_text)
     columns = [_lines_of(value.piece.text) for value in row.values]
+    if len(labels) > 2 and all(len(each) == len(labels) - 1 > 1 for each in columns):
+        labels = [_both_labels(labels[0], label)[0] for label in labels[1:]]
     if (
         len(labels) > 1
         and all(_is_label(line) for line in labels)

@@ -16,7 +16,7 @@ from extract.fold import fold
 from extract.footnotes import noted_candidates
 from extract.identity import FIRST_LINES, maker_of, package_in, part_number_of, texts_of
 from extract.lists import listing_drafts
-from extract.meaning import part_tokens
+from extract.meaning import meaning, part_tokens
 from extract.model import Note, Part
 from extract.prose import loose_in_prose
 from extract.readings import readings_of
@@ -64,8 +64,11 @@ def parts_of(blocks: Blocks) -> Found:
             _pass_over(found, section.name or part_number_of(blocks.items, blocks.headers), reason)
             continue
         drafts += _of_section(section, shared if named else None, blocks)
-    for draft in _merged(drafts):
-        _finish(draft, maker, found)
+    merged = _merged(drafts)[::-1]
+    drafts.clear()
+    while merged:
+        # Each draft goes when its part is made: of a long list both would not fit into a small machine.
+        _finish(merged.pop(), maker, found)
     _note_missing_frequencies(found)
     return found
 
@@ -97,9 +100,9 @@ def _of_section(section: Section, shared: Draft | None, blocks: Blocks) -> list[
         own.maker = own.maker or maker_of(section.items, (), sure=True)
         _inherit(own, shared)
     if rows:
-        for each in own.candidates:
-            if each.source == "loose":
-                trace.dropped(each, "a value without a label beside a list of parts")
+        for loose in own.candidates:
+            if loose.source == "loose":
+                trace.dropped(loose, "a value without a label beside a list of parts")
         own.candidates = [each for each in own.candidates if each.source != "loose"]
         for row in rows:
             _inherit(row, own)
@@ -172,6 +175,9 @@ def _take_entry(draft: Draft, entry: Entry, blocks: Blocks, heading: str) -> Non
     if says(about, "ordering"):
         draft.candidates += [replace(each, source="key") for each in found]
         return
+    named = part_tokens(heading)
+    if len(named) == 1:
+        found = [each if each.subject else replace(each, about=named[0]) for each in found]
     draft.candidates += found
     draft.candidates += noted_candidates(entry, blocks.notes)
     if _offers_series(entry):
@@ -209,10 +215,16 @@ def _take_texts(draft: Draft, texts: Sequence[Text]) -> None:
                 draft.modes.update(modes_in(segment))
             if not had_cut:
                 draft.cuts.update(cuts_in(segment))
-            if draft.package is None and (index < FIRST_LINES or text.heading):
+            if draft.package is None and (index < FIRST_LINES or text.heading or _begins_with_package(segment)):
                 draft.package = package_in(segment)
         if index < FIRST_LINES or len(text.piece.text) > 100:
             draft.candidates += loose_in_prose(text.piece)
+
+
+def _begins_with_package(text: str) -> bool:
+    """Whether a line begins with a word for the package ("Case 2.0 x 1.6 mm")."""
+    first = text.split(maxsplit=1)[:1]
+    return bool(first) and len(text) < 80 and meaning(first[0].strip(" :：")).identity == "package"
 
 
 def _merged(drafts: Sequence[Draft]) -> list[Draft]:

@@ -32,11 +32,13 @@ def readings_of(
     """The readings of one part, in the contract's order of fields, each with its `check` where one is due."""
     chosen: list[Candidate] = []
     offered = _offered(candidates)
+    by_field: dict[str, list[Candidate]] = {}
+    for each in candidates:
+        by_field.setdefault(each.field, []).append(each)
     for name in fields():
-        mine = [each for each in candidates if each.field == name]
-        if mine:
+        if mine := by_field.get(name):
             chosen += _of_field([_closed(each, offered) for each in mine], offered)
-    chosen = _with_operating_range(chosen, candidates)
+    chosen = _with_operating_range(_without_short_parabola(chosen), candidates)
     return _written(chosen, cut, mode)
 
 
@@ -65,11 +67,16 @@ def _closed(candidate: Candidate, offered: Pair | None) -> Candidate:
 
 
 def _of_field(candidates: list[Candidate], offered: Pair | None) -> list[Candidate]:
+    if len(candidates) == 1:
+        return candidates
     best = min(_rank(each) for each in candidates)
     kept = [each for each in candidates if _rank(each) == best]
     for each in candidates:
         if _rank(each) > best:
             trace.dropped(each, f"{_SOURCES[each.source]} gives way to {_SOURCES[kept[0].source]} that states it")
+    if kept[0].field in RANGES:
+        # Before a range elsewhere makes one of two rows for its ends look like a repeat.
+        kept = _joined_halves(kept)
     kept = _without_repeats(kept)
     kept = _joined_halves(kept)
     kept = _contradictions_marked(kept)
@@ -246,6 +253,23 @@ def _rest(offered: Pair, bands: Sequence[Pair]) -> list[Pair] | None:
         rest.append((at, offered[1]))
     narrow = 1e-3
     return [part for part in rest if part[1] - part[0] > narrow]
+
+
+def _without_short_parabola(chosen: list[Candidate]) -> list[Candidate]:
+    """Without a "stability" of 0.04 ppm beside a parabola of -0.04 ppm/°C²: shops drop the sign and the unit's end."""
+    curvatures = {
+        abs(number)
+        for each in chosen
+        if each.field == "parabolic_coefficient_ppm_per_c2"
+        for number in each.bounds[:3]
+        if number is not None
+    }
+
+    def short(each: Candidate) -> bool:
+        stated = {abs(number) for number in each.bounds[:3] if number is not None}
+        return each.field == "frequency_stability_ppm" and bool(stated) and stated <= curvatures
+
+    return [each for each in chosen if not short(each)]
 
 
 def _with_operating_range(chosen: list[Candidate], candidates: Sequence[Candidate]) -> list[Candidate]:

@@ -47,7 +47,9 @@ def _for_name(draft: Draft, name: str, names: list[str]) -> Draft:
     own_fields = {each.field for each in draft.candidates if name in names_in(each.subject)}
     for each in draft.candidates:
         named = names_in(each.subject)
-        if name in named or (not named and each.field not in own_fields):
+        if each.about in names and not named:
+            mine += [_conditioned(each)] if each.about == name else []
+        elif name in named or (not named and each.field not in own_fields):
             mine.append(_conditioned(each) if not named else replace(each, subject=""))
             package = package_in(each.subject.replace(name, "")) or package if named else package
     own = Draft(resonance=set(draft.resonance), candidates=mine, texts=list(draft.texts), where=draft.where)

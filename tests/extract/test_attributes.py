@@ -19,3 +19,25 @@ def test_pads_are_read_from_the_line_that_names_them(text):
     pads = attributes_of({}, [text]).pads
     assert pads is not None
     assert (pads.count, pads.crystal, pads.ground) == (4, (1, 3), (2, 4))
+
+
+@pytest.mark.parametrize(
+    "text",
+    [
+        "plots 1 et 3 quartz, plots 2 et 4 reliés au capot (masse)",
+        "Anschlüsse 1 und 3 Quarz, Anschlüsse 2 und 4 mit Deckel verbunden",
+        "端子1、3 水晶、端子2、4 接地",
+    ],
+)
+def test_pads_are_read_in_other_languages(text):
+    pads = attributes_of({}, [text]).pads
+    assert pads is not None
+    assert (pads.count, pads.crystal, pads.ground) == (4, (1, 3), (2, 4))
+
+
+def test_the_end_of_a_part_number_before_a_crystal_is_no_pad():
+    assert attributes_of({}, ["ABQ38-32K768-6 - crystal 32.768 kHz"]).pads is None
+
+
+def test_a_yes_in_two_languages_is_a_yes():
+    assert attributes_of({"aec_q200": "符合 Yes"}).aec_q200 is True

@@ -29,6 +29,10 @@ def test_a_pair_with_a_value_too_many_is_left_out():
     assert "Shunt capacitance" not in held
 
 
+def test_a_text_without_a_label_is_no_such_dump():
+    assert interleaved("The parts are delivered on tape. " * 10) is None
+
+
 def test_a_sentence_with_labels_one_by_one_is_no_such_dump():
     assert (
         interleaved("Frequency 16 MHz, tolerance ±10 ppm, load capacitance 9 pF, ESR 60 Ω, drive level 100 µW") is None

@@ -81,3 +81,22 @@ def test_the_numbers_of_a_graph_state_nothing():
 def test_values_side_by_side_with_a_unit_each_are_a_choice():
     (entry,) = [item for item in line_items([line("Load capacitance", "8 pF", "12.5 pF")]) if isinstance(item, Entry)]
     assert [each.options for each in entry_candidates(entry)] == [(8.0, 12.5)]
+
+
+def test_bullets_without_full_stops_are_one_row_each():
+    lines = [
+        line(text, number=number)
+        for number, text in enumerate(
+            [
+                "- Abgleichtoleranz ±30 ppm bei 25 °C",
+                "- Temperaturgang ±50 ppm",
+                "- Lastkapazität 20 pF (16 pF auf Anfrage)",
+            ]
+        )
+    ]
+    found = [each for item in line_items(lines) if isinstance(item, Entry) for each in entry_candidates(item)]
+    assert [(each.field, each.typ or each.max) for each in found] == [
+        ("frequency_tolerance_ppm", 30),
+        ("frequency_stability_ppm", 50),
+        ("load_capacitance_pf", 20),
+    ]

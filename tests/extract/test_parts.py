@@ -166,3 +166,38 @@ def test_two_temperature_ranges_under_one_label_are_a_choice():
     assert bounds(part, "operating_temperature_c") == [(-20, 25, 70), (-40, 25, 85)]
     assert bounds(part, "ageing_ppm") == [(-5, 2, 5)]
     assert all(each.check is None for each in part.readings)
+
+
+SIDE_BY_SIDE = table(
+    ("Attribute", "Product 1", "Product 2"),
+    ("Mfr. part no.", "ABQ38-32K768", "ABQ53-27M"),
+    ("Frequency", "32.768 kHz", "27 MHz"),
+    ("Frequency Stability + / -", "0.04ppm", "30ppm"),
+    ("Operating Temperature Max", "125 °C", "85 °C"),
+    ("Operating Temperature Min", "-40 °C", "-40 °C"),
+)
+MAKERS = table(
+    ("Parabolic coefficient", "-0.04 ppm/°C²"),
+    ("Temperature range\nTurnover\nOperating\nStorage", "\n+20 to +30 °C\n-40 to +85 °C\n-50 to +105 °C"),
+    ("Drive level", "1.0 µW max."),
+)
+
+
+def test_a_table_under_the_heading_of_one_part_belongs_to_that_part_alone():
+    fork, other = found(SIDE_BY_SIDE, line("ABQ38-32K768: the maker's sheet", heading=True), MAKERS).parts
+    assert bounds(fork, "drive_level_uw") == [(None, None, 1.0)]
+    assert bounds(fork, "turnover_temperature_c") == [(20, None, 30)]
+    assert bounds(fork, "storage_temperature_c") == [(-50, None, 105)]
+    assert {each.field for each in other.readings} == {
+        "frequency_mhz",
+        "frequency_stability_ppm",
+        "operating_temperature_c",
+    }
+
+
+def test_a_shop_that_contradicts_the_makers_table_is_flagged_and_its_short_parabola_is_no_stability():
+    fork, _ = found(SIDE_BY_SIDE, line("ABQ38-32K768: the maker's sheet", heading=True), MAKERS).parts
+    (working,) = [each for each in fork.readings if each.field == "operating_temperature_c"]
+    assert (working.min, working.max) == (-40, 125)
+    assert "says otherwise" in (working.check or "")
+    assert bounds(fork, "frequency_stability_ppm") == []
