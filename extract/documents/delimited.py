@@ -117,10 +117,12 @@ def _table(records: _Records, skipped: int) -> Table:
 
 def _placer(records: _Records, skipped: int) -> Placer:
     first_lines, raw = records.first_lines, records.texts
+    broken = {row for row, texts in enumerate(raw) if any("\n" in text for text in texts)}
 
     def place(row: int, column: int) -> Where:
         line = first_lines[row] + skipped
-        line += sum(text.count("\n") for text in islice(raw[row], column))
+        if row in broken:
+            line += sum(text.count("\n") for text in islice(raw[row], column))
         return Where(line=line, cell=address(row, column))
 
     return place
