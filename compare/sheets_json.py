@@ -1,4 +1,4 @@
-"""Sheets as the JSON document of `extract`, written part by part, so that a list of 20 000 fits into a small machine."""
+"""Sheets as the JSON document of `extract`, written part by part, so that a long list fits into a small machine."""
 
 from __future__ import annotations
 

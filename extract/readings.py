@@ -10,7 +10,7 @@ from extract import plausible, trace
 from extract.band import HIGHEST_MHZ, LOWEST_MHZ
 from extract.candidates import Candidate
 from extract.fields import field_of, fields
-from extract.model import Pair, Reading, When
+from extract.model import Pair, Reading, When, lean
 
 _RANK = {"table": 0, "note": 0, "pair": 0, "prose": 1, "key": 2, "loose": 3}
 _SOURCES = {
@@ -312,7 +312,7 @@ def _written(chosen: Sequence[Candidate], cut: str | None, mode: str | None) -> 
 
 def _reading(candidate: Candidate, check: str | None) -> Reading:
     out_of_order = _out_of_order(candidate)
-    return Reading(
+    reading = Reading(
         field=candidate.field,
         min=candidate.min,
         typ=candidate.typ,
@@ -325,6 +325,7 @@ def _reading(candidate: Candidate, check: str | None) -> Reading:
         status="inferred" if candidate.inferred else "stated",
         check=check or ("bounds out of order" if out_of_order else None),
     )
+    return lean(reading)
 
 
 def _out_of_order(candidate: Candidate) -> bool:

@@ -11,7 +11,7 @@ from typing import Literal
 from extract.documents.decoding import decode
 from extract.documents.grid import Placer, address, placed_cells
 from extract.documents.model import Document, DocumentError, Table
-from extract.model import Note, Where
+from extract.model import Note, Where, lean
 
 # Where two part the lines equally well, the one further left: a comma may be a decimal one.
 _DELIMITERS = "\t;|,"
@@ -123,7 +123,7 @@ def _placer(records: _Records, skipped: int) -> Placer:
         line = first_lines[row] + skipped
         if row in broken:
             line += sum(text.count("\n") for text in islice(raw[row], column))
-        return Where(line=line, cell=address(row, column))
+        return lean(Where(line=line, cell=address(row, column)))
 
     return place
 
