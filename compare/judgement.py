@@ -169,7 +169,7 @@ def _settled(
     code = verdict_of([block for block in blocks if not (changes and block.requirement)])
     if changes:
         code = min(code, FITS_WITH_CHANGES)
-    decides = _decides(swap, at, (code, blocks, changes), result)
+    decides = _decides(swap, at, (code, blocks, changes), result, excuses)
     missing = _missing(swap, at, lines, blocks, excuses)
     return Judgement(
         candidate=candidate,
@@ -191,6 +191,7 @@ def _decides(
     at: int,
     settled: tuple[int, Sequence[Block], Sequence[Mapping[str, Any]]],
     result: Mapping[str, Any],
+    excuses: Sequence[str],
 ) -> str:
     code, blocks, changes = settled
     if code == FITS_WITH_CHANGES:
@@ -200,12 +201,21 @@ def _decides(
         return decisive([block for block in blocks if block.code == code]).message
     if swap.reckoning is None:
         return f"no worse than the incumbent in every line that matters; {shift_message(swap, at)}"
-    tightest = result["tightest"]
-    if tightest is None:
-        return "every requirement that can be told is met on the unchanged board"
-    return (
-        f"meets on the unchanged board; the tightest is {called(tightest)}, {result['slack'][tightest]:.3g} times over"
-    )
+    return _drop_in_words(result["slack"], excuses)
+
+
+def _drop_in_words(slack: Mapping[str, float | None], excuses: Sequence[str]) -> str:
+    """What is met and by how much; what is not, because the incumbent does not meet it either, is said first."""
+    known_ones = {about: value for about, value in slack.items() if value is not None and about not in excuses}
+    parts = []
+    if excuses:
+        names = ", ".join(map(called, excuses))
+        parts.append(f"no worse than the incumbent, which falls short itself or cannot be told in {names}")
+    parts.append("all else is met on the unchanged board" if excuses else "meets on the unchanged board")
+    if known_ones:
+        tightest = min(known_ones, key=lambda about: known_ones[about])
+        parts.append(f"the tightest is {called(tightest)}, {known_ones[tightest]:.3g} times over")
+    return "; ".join(parts)
 
 
 def changed_words(changes: Sequence[Mapping[str, Any]]) -> str:

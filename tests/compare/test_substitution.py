@@ -71,6 +71,9 @@ def test_that_the_incumbent_falls_short_itself_is_said():
         "resistance_headroom",
         "startup_ms",
     ]
+    assert result["candidates"][0]["decides"].startswith(
+        "no worse than the incumbent, which falls short itself or cannot be told in margin, gain ratio"
+    )
     said = [note["message"] for note in result["notes"] if "falls short itself in margin" in note["message"]]
     assert len(said) == 1
     assert said[0].endswith("not held against P1, no worse in what it rests on")
