@@ -7,9 +7,13 @@ from dataclasses import dataclass
 
 from extract.documents.model import Document, Line, Table
 from extract.entries import Item, Piece, Placed, Text
+from extract.fold import fold
 from extract.footnotes import footnotes_in
 from extract.lines import line_items
 from extract.tables import read_table
+
+# Characters by which a footnote is known again among the lines of its paragraph.
+LEAST_TO_KNOW = 20
 
 
 @dataclass(frozen=True, slots=True)
@@ -40,6 +44,13 @@ def read_blocks(document: Document) -> Blocks:
 def _footnotes(items: Sequence[Item]) -> dict[str, tuple[str, Placed]]:
     notes: dict[str, tuple[str, Placed]] = {}
     for item in items:
-        for mark, text in footnotes_in(item.piece.text) if isinstance(item, Text) else ():
-            notes.setdefault(mark, (text, item.piece))
+        if isinstance(item, Text):
+            for mark, text in footnotes_in(item.piece.text):
+                notes.setdefault(mark, (text, _place(text, item)))
     return notes
+
+
+def _place(note: str, paragraph: Text) -> Placed:
+    """The line of a paragraph on which a footnote begins."""
+    begin = note[:LEAST_TO_KNOW]
+    return next((line for line in paragraph.segments if begin in fold(line.text)), paragraph.piece)

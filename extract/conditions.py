@@ -39,7 +39,7 @@ def band_of(text: str, unit: str | None = None) -> Pair | None:
 
 def merged(general: When, narrower: When) -> When:
     """Both conditions together; where both say something of one kind, `narrower` counts."""
-    if narrower == When():
+    if narrower is general or not any(vars(narrower).values()):
         return general
     said = {key: value for key, value in narrower if value is not None}
     return general.model_copy(update=said)

@@ -162,7 +162,9 @@ _GIVEN: dict[type, set[str]] = {}
 
 def lean(model: Lean) -> Lean:
     """The same model at half its size: all of a class share one record of which keys were given, which nothing asks."""
-    shared = _GIVEN.setdefault(type(model), set(type(model).model_fields))
+    shared = _GIVEN.get(type(model))
+    if shared is None:
+        shared = _GIVEN[type(model)] = set(type(model).model_fields)
     object.__setattr__(model, "__pydantic_fields_set__", shared)
     return model
 

@@ -456,6 +456,7 @@ def _trap_in(text: str) -> str | None:
     return known[0].meaning if known else None
 
 
+@lru_cache(maxsize=8192)
 def oscillator_words(text: str) -> tuple[str, ...]:
     """The words in `text` that only an oscillator's, resonator's or filter's sheet prints, each once, as printed."""
     folded = fold(text)
@@ -465,6 +466,7 @@ def oscillator_words(text: str) -> tuple[str, ...]:
     return tuple(found.values())
 
 
+@lru_cache(maxsize=8192)
 def not_stated(text: str) -> bool:
     """Whether the cell says nothing: empty, "-", "—", "n/a". A lone "0" is for `read_values` to judge by the field."""
     folded = fold(text).casefold()
