@@ -211,14 +211,15 @@ def _foreign(value: Value, label: Label) -> bool:
     )
 
 
-_BEHIND_NUMBER = re.compile(r"(?<=\d)(?!\d)")
+_BEHIND_NUMBER = re.compile(r"(?<=\d)(?!\d)(?:\s?(?:max|min|typ)(?:imum|ical)?\b[.,]?\s?)?", re.IGNORECASE)
 
 
 @lru_cache(maxsize=16384)
 def has_unit(text: str, field: str) -> bool:
     """Whether a number with a unit of `field` stands in the text."""
     folded = fold(text)
-    return any(unit_at(folded, field, match.start()) for match in _BEHIND_NUMBER.finditer(folded))
+    places = {place for match in _BEHIND_NUMBER.finditer(folded) for place in match.span()}
+    return any(unit_at(folded, field, place) for place in places)
 
 
 def _single(entry: Entry, label: Label, when: When, subject: str, value: Value) -> list[Candidate]:
@@ -365,7 +366,7 @@ def _one_row(
         bounds["min"], bounds["max"] = -abs(bounds["max"]), None
     return Candidate(
         field=label.field,  # type: ignore[arg-type]
-        **bounds,
+        **bounds,  # type: ignore[arg-type]
         options=(),
         when=when,
         bare=bare and field_of(label.field).bare,

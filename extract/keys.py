@@ -5,6 +5,7 @@ from __future__ import annotations
 import re
 from collections.abc import Iterator, Sequence
 
+from extract.amount import read_values
 from extract.documents.model import Cell
 from extract.entries import Key, Piece, Placed
 from extract.fold import fold
@@ -26,16 +27,16 @@ def choices_in(text: str) -> list[tuple[str, str]]:
         if not piece.strip():
             continue
         match = _CHOICE.match(piece) or _REVERSED.match(piece) or _LOOSE.match(piece)
-        if match is None or _reads_as_label(match["code"]):
+        if match is None or _reads_as_label(match["code"], match["meaning"]):
             return []
         found.append((match["code"], match["meaning"]))
     return found
 
 
-def _reads_as_label(code: str) -> bool:
-    """Tell values from codes: "CL: 8 pF" and "C0 = 1 pF" are values."""
-    found = meaning(code)
-    return found.label is not None and found.label.exact
+def _reads_as_label(code: str, value: str) -> bool:
+    """Tell values from codes: "CL: 8 pF" and "C0 = 1 pF" are values, "Q = 8 pF" is a code."""
+    label = meaning(code).label
+    return label is not None and label.exact and any(not each.empty for each in read_values(value, label.field))
 
 
 def key_label(text: str) -> str:

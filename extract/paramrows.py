@@ -234,6 +234,8 @@ _BAND_IN_LABEL = re.compile(r"(?P<name>[^\dÂ±]+?)[\s,;:(]+(?P<band>[-+]?\d.*|[<â
 
 def _both_labels(first: str, second: str) -> tuple[str, list[str]]:
     """The label that two cells make together, and what of the second is a condition: a band, or a word beside it."""
+    if _is_bare_band(second):
+        return first, [second]
     for text in (f"{first} {second}", f"{second} {first}", second):
         if _decides(meaning(text)) or meaning(text).head is not None:
             return text, []

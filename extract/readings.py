@@ -155,6 +155,8 @@ def _both(one: Candidate, other: Candidate) -> Candidate | None:
     pairs = list(zip(one.bounds[:3], other.bounds[:3], strict=True))
     if any(a is not None and b is not None for a, b in pairs):
         return None
+    if one.field in RANGES and any(each.min is None and each.max is None for each in (one, other)):
+        return None
     low, typ, high = (a if a is not None else b for a, b in pairs)
     temperature = one.field in ("operating_temperature_c", "storage_temperature_c")
     stated = [number for number in (low, typ, high) if number is not None]

@@ -16,6 +16,7 @@ from extract.prose import is_label, pair_entries, split_pairs
 WIDE = 45
 LEAST_FRAGMENTS = 6
 _BULLET = re.compile(r"^\s*(?:[•▪■◆●*·-]\s|\d{1,2}[.)]\s|\[|※)")
+_TORN = re.compile(r"(?<=[a-zà-ÿ])-\s(?=[a-zà-ÿ])")
 _OPEN_END = re.compile(r"(?:[\d±]|\b(?:to|over|of|at|and|bis|von|bei|und)|[~…(,/])\s*$")
 
 
@@ -91,7 +92,7 @@ def _is_broken(line: Line, below: Line | None) -> bool:
 
 def stream_entries(lines: Sequence[Line], source: Source) -> list[Entry]:
     """What the lines say when they are read as one text; each value in the place of its own line."""
-    text = fold(" ".join(line.text for line in lines))
+    text = fold(_TORN.sub("", " ".join(line.text for line in lines)))
     found = pair_entries(Piece(text, lines[0].where))
     placed: list[Entry] = []
     at = 0

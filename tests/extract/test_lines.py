@@ -100,3 +100,20 @@ def test_bullets_without_full_stops_are_one_row_each():
         ("frequency_stability_ppm", 50),
         ("load_capacitance_pf", 20),
     ]
+
+
+def test_torn_words_and_units_behind_their_bound_are_read_from_broken_lines():
+    texts = ["Shunt Capac-", "itance", "C0 3.0 max. pF", "Drive Level DL 10 typ., 300", "max.", "µW", "Ageing ±3 ppm"]
+    items = line_items(
+        [line(text, number=number) for number, text in enumerate(["Nominal Frequency", "F0 20 MHz", *texts])]
+    )
+    found = [each for item in items if isinstance(item, Entry) for each in entry_candidates(item)]
+    held = {each.field: each.bounds[:3] for each in found}
+    assert held["shunt_capacitance_pf"] == (None, None, 3.0)
+    assert held["drive_level_uw"] == (None, 10.0, 300.0)
+
+
+def test_a_code_that_is_also_a_symbol_of_another_unit_is_a_code():
+    items = line_items([line(text) for text in ("LOAD CAPACITANCE", "B = 10 pF", "Q = 8 pF", "U = 12 pF")])
+    (ordering,) = [item for item in items if isinstance(item, Key)]
+    assert [code for code, _ in ordering.choices] == ["B", "Q", "U"]

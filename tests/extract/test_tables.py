@@ -186,3 +186,17 @@ def test_a_second_label_cell_completes_the_first_and_a_band_in_it_is_a_condition
         ("ageing_ppm", 1, 1),
         ("ageing_ppm", 4, 10),
     ]
+
+
+def test_a_band_in_the_second_column_of_a_spanning_head_is_a_condition():
+    rows = table(
+        ("Item", None, "Value"),
+        ("Frequency", None, "12 to 54 MHz"),
+        ("Equivalent series resistance", "12 MHz ≤ f < 16\nMHz", "100 Ω max."),
+        (None, "16 MHz ≤ f ≤ 54\nMHz", "60 Ω max."),
+        ("Drive level", None, "100 µW max."),
+        spans={(0, 0): (1, 2), (1, 0): (1, 2), (2, 0): (2, 1), (4, 0): (1, 2)},
+    )
+    found = [each for item in read_table(rows) if isinstance(item, Entry) for each in entry_candidates(item)]
+    held = [(each.when.frequency_mhz, each.max) for each in found if each.field == "esr_ohm"]
+    assert held == [((12.0, 16.0), 100.0), ((16.0, 54.0), 60.0)]
