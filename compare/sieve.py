@@ -27,7 +27,7 @@ from extract.wording import read_label
 LONG_LIST_BYTES = 150_000
 """Some two thousand rows: below that everything is read."""
 SUFFIXES = (".csv", ".tsv")
-MOST_ELSEWHERE = 50
+MOST_ELSEWHERE = 20
 """Rows in another package that are read all the same, so that the list shows what else there is."""
 HEAD_WITHIN = 12
 

@@ -187,8 +187,8 @@ def rated_shift_ppm(columns: Columns, like: Alike) -> Array:
 def overtone_shift_ppm(own: Array, overtone: Array, first: Array, falls: Flags, open_ones: Flags) -> Array:
     """(3, n) the shift, where an overtone part may run on its fundamental instead: at about 1/n of the nominal.
 
-    `own`: shift on the overtone itself. `falls`: the fundamental takes over. `open_ones`: it may, so that the low end goes
-    down to there. Only parts whose order is not the first one's are touched.
+    `own`: shift on the overtone itself. `falls`: the fundamental takes over. `open_ones`: it may, so that the low end
+    goes down to there. Only parts whose order is not the first one's are touched.
     """
     order = np.nan_to_num(overtone, nan=1.0)
     other = (order > 1) & (order != np.nan_to_num(first, nan=1.0))
