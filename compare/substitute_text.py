@@ -144,7 +144,8 @@ def _value(value: Any) -> str:
     if value is None:
         return "not stated"
     if isinstance(value, Mapping):
-        return str(value.get("text", "")).partition(" (")[0] or "-"
+        text = str(value.get("text", ""))
+        return text.rpartition(" (")[0] or text or "-"
     return {True: "yes", False: "no"}.get(value, str(value)) if isinstance(value, bool) else str(value)
 
 
