@@ -211,7 +211,7 @@ def _foreign(value: Value, label: Label) -> bool:
     )
 
 
-_BEHIND_NUMBER = re.compile(r"(?<=\d)(?!\d)(?:\s?(?:max|min|typ)(?:imum|ical)?\b[.,]?\s?)?", re.IGNORECASE)
+_BEHIND_NUMBER = re.compile(r"(?<=\d)(?!\d)(?:\s?(?:max|min|typ)(?:imum|ical)?\b[.,)]*\s?)?", re.IGNORECASE)
 
 
 @lru_cache(maxsize=16384)

@@ -17,7 +17,7 @@ _HOLDER = re.compile(
     r"(?i)\bHC[\s-]?/?\s?\d{2,3}(?:\s?[/-]\s?(?:US?|SMD|SM|S)|US?|SMD|S)?(?:[\s/-]?SMD)?\b|\bUM-?[1-5]\b|\bTO-?\d{1,2}\b"
 )
 _MILLIMETRES = re.compile(
-    r"(?<![\d.,])(\d{1,2}(?:[.,]\d{1,2})?)\s?(?:mm)?\s?[x×*]\s?[φ⌀∅]?\s?(\d{1,2}(?:[.,]\d{1,2})?)(?:\s?(?:mm)?\s?[x×*]\s?\d{1,2}(?:[.,]\d{1,3})?)?(?![\d.,]*\d)(?:\s?mm\b)?"
+    r"(?<![\d.,±])(\d{1,2}(?:[.,]\d{1,2})?)\s?(?:mm)?\s?(?:±\s?0?[.,]\d+\s?)?[x×*]\s?[φ⌀∅]?\s?(\d{1,2}(?:[.,]\d{1,2})?)(?:\s?±\s?0?[.,]\d+)?(?:\s?(?:mm)?\s?[x×*]\s?\d{1,2}(?:[.,]\d{1,3})?)?(?![\d.,]*\d)(?:\s?mm\b)?"
 )
 _CODE = re.compile(
     r"(?i)\b(?:SMD|贴片|封装|package|size|case)\s?-?(\d{4})(?:-\dP)?\b|\b(\d{4})(?=\s?(?:SMD|package|size))"
@@ -42,7 +42,7 @@ def package_in(text: str) -> str | None:
     for match in _MILLIMETRES.finditer(folded):
         sizes = [float(match[k].replace(",", ".")) for k in (1, 2)]
         if all(limits["least_mm"] <= size <= limits["greatest_mm"] for size in sizes) and match[2] != "10":
-            return match[0].strip()
+            return re.sub(r"\s?±\s?[\d.,]*\d", "", match[0]).strip()
     if found := _CODE.search(folded):
         return found[1] or found[2]
     return None

@@ -27,6 +27,7 @@ from extract.wording import Label
 # Columns in which the part numbers stand where no column is headed so; an own stock number often is the maker's.
 _MAY_NUMBER = ("stock_number", "description", "")
 KEYS = ("frequency_mhz", "load_capacitance_pf")
+RANGE, STABILITY = "operating_temperature_c", "frequency_stability_ppm"
 
 
 @dataclass(slots=True)
@@ -305,7 +306,10 @@ def _series_drafts(listing: Listing, columns: list[_Column]) -> list[Draft]:
     """Rows without part numbers: each row's key cells say where its other cells hold."""
     draft = Draft()
     fields = [column for column in columns if column.label is not None]
-    others = [column for column in fields if column.label is not None and column.label.field not in KEYS]
+    names = {column.label.field for column in fields if column.label is not None}
+    # A range beside its stability says where that holds; what the part may be used in stands elsewhere.
+    keys = (*KEYS, RANGE) if STABILITY in names else KEYS
+    others = [column for column in fields if column.label is not None and column.label.field not in keys]
     for row, section in zip(listing.rows, listing.sections, strict=True):
         when, subject = _row_key(row, columns, section, alone=not others)
         for column in others if others else fields:
@@ -314,8 +318,14 @@ def _series_drafts(listing: Listing, columns: list[_Column]) -> list[Draft]:
                 continue
             own = merged(when, column.when)
             own = own if column.label.field != "frequency_mhz" else own.model_copy(update={"frequency_mhz": None})
+            own = own if column.label.field == STABILITY or RANGE not in names else _without_range(own)
             draft.candidates.extend(cell_candidates(cell, column, own, column.subject or subject))
     return [draft] if draft.candidates else []
+
+
+def _without_range(when: When) -> When:
+    """The condition without the temperature range, which is the stability's."""
+    return when.model_copy(update={"temperature_c": None})
 
 
 def _row_key(row: Sequence[Placed | None], columns: list[_Column], section: str, *, alone: bool) -> tuple[When, str]:
@@ -337,6 +347,8 @@ def _row_key(row: Sequence[Placed | None], columns: list[_Column], section: str,
 
 
 def _key_when(cell: Placed, label: Label) -> When:
+    if label.field == RANGE:
+        return When(temperature_c=condition_of(cell.text).temperature_c)
     if label.field == "frequency_mhz":
         band = band_of(cell.text, label.unit) or band_of(re.sub(r"\([^()]*\)", " ", cell.text), label.unit)
         return merged(condition_of(cell.text), When(frequency_mhz=band)) if band else condition_of(cell.text)

@@ -8,7 +8,7 @@ from dataclasses import replace
 
 from extract import wording
 from extract.candidates import Candidate, has_unit, read
-from extract.conditions import condition_of
+from extract.conditions import TEMPERATURES, condition_of
 from extract.entries import Entry, Piece, Placed, Source, Value
 from extract.fold import fold
 from extract.interleaved import interleaved
@@ -208,7 +208,9 @@ def _last_amount(text: str, field: str) -> str:
     """The end of a text from the last number on that still reads as the field: the amount next to the label."""
     for match in reversed(list(re.finditer(r"(?<![\d.,])[-+±≤<]?\s?\d", text))):
         tail = text[match.start() :]
-        if read(tail, field):
+        found = read(tail, field)
+        whole = field not in TEMPERATURES or any(None not in (each.min, each.max) for each in found)
+        if found and whole:
             return tail
     return text
 

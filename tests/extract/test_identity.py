@@ -92,3 +92,7 @@ def test_a_related_part_is_not_the_part():
 
 def test_a_maker_may_stand_only_in_the_page_header():
     assert maker_of(texts(line("ABQ25-27.000-10")), texts(line("Able Crystals Ltd"))) == "Able Crystals Ltd"
+
+
+def test_a_size_with_tolerances_is_the_package():
+    assert package_in("Dimensions: 5.0 ±0.15 × 3.2 ±0.15 × 0.9 max. Pads 1.2 × 1.0 mm") == "5.0 × 3.2 × 0.9"

@@ -131,3 +131,13 @@ def test_a_shops_one_line_description_is_a_guess_and_says_so():
     (draft,) = drafts(("Part Number", "Maker", "Description"), ("ABQ32-16M-09", "Able", "XTAL 16.000MHZ 9PF 10PPM"))
     load = next(each for each in draft.candidates if each.field == "load_capacitance_pf")
     assert (load.typ, load.inferred, load.doubts) == (9.0, True, ("no label stands beside this amount",))
+
+
+def test_a_range_beside_its_stability_says_where_that_holds():
+    rows = table(("Temperature range", "Stability"), ("-20 to +70 °C", "±15 ppm"), ("-40 to +85 °C", "±30 ppm"))
+    drafts = [draft for item in read_table(rows) if isinstance(item, Listing) for draft in listing_drafts(item)]
+    held = [(each.field, each.max, each.when.temperature_c) for draft in drafts for each in draft.candidates]
+    assert held == [
+        ("frequency_stability_ppm", 15, (-20, 70)),
+        ("frequency_stability_ppm", 30, (-40, 85)),
+    ]

@@ -83,3 +83,9 @@ def test_bands_with_one_resistance_each_behind_or_before_them_are_paired():
     for text in ("8 - 9.999 MHz: 100 Ω max 10 - 20 MHz: 70 Ω max", "100 Ω max 8 - 9.999 MHz 70 Ω max 10 - 20 MHz"):
         found = [each for entry in prose_entries(Piece(f"ESR {text}", HERE)) for each in entry_candidates(entry)]
         assert [(each.when.frequency_mhz, each.max) for each in found] == [((8, 9.999), 100), ((10, 20), 70)]
+
+
+def test_a_range_before_its_label_is_taken_whole():
+    assert held("l'écart reste de ± 50 ppm entre -20 °C et +70 °C, plage de fonctionnement") == [
+        ("operating_temperature_c", (-20, None, 70, ()))
+    ]
