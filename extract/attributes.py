@@ -4,7 +4,7 @@ from __future__ import annotations
 
 import re
 from collections.abc import Mapping, Sequence
-from functools import cache
+from functools import cache, lru_cache
 
 from extract.fold import fold, key
 from extract.meaning import identity_words
@@ -63,15 +63,19 @@ def _pads(texts: Sequence[str]) -> Pads | None:
     crystal: tuple[int, ...] | None = None
     ground: tuple[int, ...] | None = None
     for text in texts:
-        folded = fold(text)
-        if crystal is None and (found := _pads_for("crystal").search(folded)):
-            crystal = _numbers(found[1])
-        if ground is None and (found := _pads_for("ground").search(folded)):
-            ground = _numbers(found[1])
+        crystal = crystal or _pads_named(text, "crystal")
+        ground = ground or _pads_named(text, "ground")
     if crystal is None and ground is None:
         return None
     count = max((*(crystal or ()), *(ground or ())))
     return Pads(count=count, crystal=crystal, ground=ground)
+
+
+@lru_cache(maxsize=8192)
+def _pads_named(text: str, what: str) -> tuple[int, ...] | None:
+    """The pads that a line gives to the crystal or to ground; every part of a list asks the same lines."""
+    found = _pads_for(what).search(fold(text))
+    return _numbers(found[1]) if found else None
 
 
 def _numbers(text: str) -> tuple[int, ...]:

@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+from bisect import bisect_left
 from collections.abc import Callable, Sequence
 from dataclasses import replace
 
@@ -183,10 +184,11 @@ def _pieces(grid: Grid, words: Sequence[Word], width: float, height: float) -> l
     """Cells with their words; None where the lines are a frame, a drawing or a graph and no table."""
     x0, top, x1, bottom = grid.box
     within = [word for word in words if x0 <= word.centre[0] <= x1 and top <= word.centre[1] <= bottom]
+    finder = _Finder(within)
     pieces = []
     for cell in grid.cells:
         frame = cell.box[2] - cell.box[0] > FRAME_WIDTH * width and cell.box[3] - cell.box[1] > FRAME_HEIGHT * height
-        own = () if frame else tuple(word for word in within if _in_cell(word, cell.box))
+        own = () if frame else finder.in_cell(cell.box)
         if not frame:
             pieces.append(Piece(cell, own))
     filled = [piece for piece in pieces if piece.words]
@@ -208,6 +210,19 @@ def _without_frames(pieces: Sequence[Piece]) -> list[Piece]:
 def _in_cell(word: Word, box: Box) -> bool:
     x, y = word.centre
     return box[0] <= x < box[2] and box[1] <= y < box[3]
+
+
+class _Finder:
+    """Words by the height of their centres, so that a cell looks only at those of its own rows."""
+
+    def __init__(self, words: Sequence[Word]) -> None:
+        placed = sorted((word.centre[1], index, word.centre[0], word) for index, word in enumerate(words))
+        self._placed, self._heights = placed, [each[0] for each in placed]
+
+    def in_cell(self, box: Box) -> tuple[Word, ...]:
+        """The words whose centre is in the box, in their own order."""
+        rows = self._placed[bisect_left(self._heights, box[1]) : bisect_left(self._heights, box[3])]
+        return tuple(word for _, word in sorted((index, word) for _, index, x, word in rows if box[0] <= x < box[2]))
 
 
 def _titled(blocks: Sequence[Table | Line]) -> list[Table | Line]:

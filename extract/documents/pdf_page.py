@@ -10,9 +10,9 @@ from __future__ import annotations
 import ctypes
 import math
 from collections import Counter, defaultdict
-from collections.abc import Iterable
+from collections.abc import Iterable, Iterator
 from dataclasses import dataclass
-from typing import Any
+from typing import Any, NamedTuple
 
 from extract.documents.glyphs import Glyph
 from extract.documents.words import Box, Ruling, union
@@ -65,24 +65,65 @@ def plumbed(page: Any, frame: Frame) -> tuple[list[Glyph], list[Ruling]]:
     left, top = page.bbox[0] + dx, page.bbox[1] + dy
     width, height = frame.size
     glyphs = []
-    descents = _descents(page.chars, page)
-    for char in page.chars:
-        box = (char["x0"] - left, char["top"] - top, char["x1"] - left, char["bottom"] - top)
+    chars, shapes = _contents(page)
+    descents = _descents(chars, page)
+    for char in chars:
+        box = (char.x0 - left, char.top - top, char.x1 - left, char.bottom - top)
         if box[2] < 0 or box[3] < 0 or box[0] > width or box[1] > height:
             continue
-        a, b, _, _, e, f = char["matrix"]
+        a, b, _, _, e, f = char.matrix
         angle = round(math.degrees(math.atan2(b, a))) % 360
         base_x, base_y = page.bbox[0] + e - left, page.bbox[1] + page.height - f - top
         if angle == 0:
-            base_y = box[3] - descents[char["fontname"]] * char["size"]
-        size = char["size"] if angle in (0, 180) else box[2] - box[0]
-        glyphs.append(
-            Glyph(char["text"], box, size, char["fontname"], angle, _base(angle, base_x, base_y, width, height))
-        )
-    return glyphs, [_moved(edge, left, top) for edge in _visible_edges(page, width, height)]
+            base_y = box[3] - descents[char.font] * char.size
+        size = char.size if angle in (0, 180) else box[2] - box[0]
+        glyphs.append(Glyph(char.text, box, size, char.font, angle, _base(angle, base_x, base_y, width, height)))
+    return glyphs, [_moved(edge, left, top) for edge in _visible_edges(shapes, width, height)]
 
 
-def _descents(chars: Iterable[dict[str, Any]], page: Any) -> dict[str, float]:
+class _Char(NamedTuple):
+    """A character as pdfminer places it, the vertical from the top of the media box."""
+
+    text: str
+    x0: float
+    top: float
+    x1: float
+    bottom: float
+    size: float
+    font: str
+    upright: bool
+    matrix: tuple[float, float, float, float, float, float]
+
+
+def _contents(page: Any) -> tuple[list[_Char], dict[str, list[dict[str, Any]]]]:
+    """Characters and, by kind, drawn shapes. pdfplumber's dictionary of each character costs more than reading it."""
+    from pdfminer.layout import LTChar
+
+    x, top = page.mediabox[0], page.height + page.mediabox[1]
+    chars: list[_Char] = []
+    shapes: dict[str, list[dict[str, Any]]] = {}
+    for item in _leaves(page.layout):
+        if isinstance(item, LTChar):
+            name = item.fontname if isinstance(item.fontname, str) else item.fontname.decode("latin-1")
+            place = (item.x0 + x, top - item.y1, item.x1 + x, top - item.y0)
+            chars.append(_Char(item.get_text(), *place, item.size, name, item.upright, item.matrix))
+        else:
+            shape = page.process_object(item)
+            shapes.setdefault(shape["object_type"], []).append(shape)
+    return chars, shapes
+
+
+def _leaves(container: Any) -> Iterator[Any]:
+    from pdfminer.layout import LTContainer
+
+    for item in container:
+        if isinstance(item, LTContainer):
+            yield from _leaves(item)
+        else:
+            yield item
+
+
+def _descents(chars: Iterable[_Char], page: Any) -> dict[str, float]:
     """For each font how far its boxes reach below the baseline, as a share of the size.
 
     The character's matrix leaves out the text rise by which many programs set sub- and superscripts; its box has it. So
@@ -90,9 +131,9 @@ def _descents(chars: Iterable[dict[str, Any]], page: Any) -> dict[str, float]:
     """
     seen: dict[str, Counter[float]] = {}
     for char in chars:
-        if char["upright"] and char["size"]:
-            base = page.bbox[1] + page.height - char["matrix"][5]
-            seen.setdefault(char["fontname"], Counter())[round((char["bottom"] - base) / char["size"], 2)] += 1
+        if char.upright and char.size:
+            base = page.bbox[1] + page.height - char.matrix[5]
+            seen.setdefault(char.font, Counter())[round((char.bottom - base) / char.size, 2)] += 1
     return defaultdict(lambda: 0.22, {font: counts.most_common(1)[0][0] for font, counts in seen.items()})
 
 
@@ -104,12 +145,12 @@ def _moved(edge: dict[str, Any], left: float, top: float) -> Ruling:
     return Ruling(edge["x0"] - left, edge["top"] - top, edge["x1"] - left, edge["bottom"] - top)
 
 
-def _visible_edges(page: Any, width: float, height: float) -> list[dict[str, Any]]:
+def _visible_edges(shapes: dict[str, list[dict[str, Any]]], width: float, height: float) -> list[dict[str, Any]]:
     from pdfplumber.utils.geometry import curve_to_edges, line_to_edge, rect_to_edges
 
-    edges = [line_to_edge(line) for line in page.lines]
+    edges = [line_to_edge(line) for line in shapes.get("line", ())]
     fills = []
-    for rect in page.rects:
+    for rect in shapes.get("rect", ()):
         if rect["width"] > 0.97 * width and rect["height"] > 0.9 * height:
             continue
         if rect.get("stroke"):
@@ -118,7 +159,7 @@ def _visible_edges(page: Any, width: float, height: float) -> list[dict[str, Any
             fills.append(rect)
     for fill in _abutting_joined(fills):
         edges += rect_to_edges(fill)
-    for curve in page.curves:
+    for curve in shapes.get("curve", ()):
         if curve.get("stroke") or _is_coloured(curve):
             edges += [edge for edge in curve_to_edges(curve) if edge.get("orientation") in ("h", "v")]
     return [edge for edge in edges if edge.get("orientation") in ("h", "v")]
