@@ -189,6 +189,9 @@ def _of_subject(entry: Entry, label: Label, when: When, subject: str, values: Se
         return _joined(entry, label, when, subject, values)
     found: list[Candidate] = []
     for value in values:
+        if found and _another_case(value, label):
+            found += _single(entry, label, when, subject, value)
+            continue
         extra = kept(condition_of(value.piece.text), label.field) if found or _foreign(value, label) else When()
         if found or (_foreign(value, label) and len(values) > 1):
             when = merged(when, extra)
@@ -198,6 +201,14 @@ def _of_subject(entry: Entry, label: Label, when: When, subject: str, values: Se
             continue
         found = _single(entry, label, when, subject, value)
     return found or _last_resort(entry, label, when, subject, values)
+
+
+def _another_case(value: Value, label: Label) -> bool:
+    """Whether a further cell holds a value of its own for a band or mode: "60 Ω for 16 to 54 MHz"."""
+    text = value.piece.text
+    said = condition_of(text)
+    banded = said.mode is not None or (said.frequency_mhz is not None and label.field != "frequency_mhz")
+    return banded and has_unit(text, label.field) and bool(read(text, label.field))
 
 
 def _foreign(value: Value, label: Label) -> bool:

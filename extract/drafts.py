@@ -8,7 +8,7 @@ from dataclasses import dataclass, field, replace
 from functools import lru_cache
 
 from extract import wording
-from extract.candidates import Candidate
+from extract.candidates import Candidate, label_of
 from extract.entries import Entry
 from extract.fold import fold, key
 from extract.identity import package_in
@@ -53,6 +53,9 @@ class Draft:
         """Set part number, maker or package where it is open; a size goes before words such as "2-SMD, No Lead"."""
         if what == "part_number" and ":" in fold(text) and part_tokens(text):
             text = part_tokens(text)[0]
+        words = text.split()
+        if what == "part_number" and len(words) > 1 and part_tokens(text) == (words[0],):
+            text = words[0]
         if what == "maker":
             text = re.split(r"\s+[·|•]\s+", text)[0]
         known = getattr(self, what)
@@ -63,7 +66,7 @@ class Draft:
         """Take part number, maker, package, mode and grade from labelled values."""
         for entry in entries:
             known = meaning(entry.label.text)
-            if not entry.values:
+            if not entry.values or (known.identity and label_of(entry) is not None):
                 continue
             if any(value.subject for value in entry.values):
                 for value in entry.values:

@@ -8,6 +8,7 @@ from collections.abc import Iterable, Sequence
 from functools import lru_cache
 
 from extract import wording
+from extract.candidates import label_of
 from extract.entries import Entry, Item, Text
 from extract.fold import fold
 from extract.meaning import identity_words, meaning, part_tokens
@@ -51,6 +52,8 @@ def package_in(text: str) -> str | None:
 def is_package(text: str) -> bool:
     """Whether a short text names a package and little else."""
     found = package_in(text)
+    if found is not None and part_tokens(fold(text).replace(found, " ")):
+        return False
     return found is not None and len(found) >= 0.5 * len(fold(text)) or bool(re.fullmatch(r"\d{4}", fold(text)))
 
 
@@ -160,7 +163,7 @@ def _is_proper(name: str) -> bool:
 
 
 def _labelled(entry: Entry, what: str) -> str | None:
-    if meaning(entry.label.text).identity != what or not entry.values:
+    if meaning(entry.label.text).identity != what or not entry.values or label_of(entry) is not None:
         return None
     text = " ".join(entry.values[0].piece.text.split())
     return None if wording.not_stated(text) or len(text) > 80 else text

@@ -6,6 +6,7 @@ import re
 from collections.abc import Iterator, Sequence
 
 from extract.candidates import has_unit, read
+from extract.conditions import kinds_of
 from extract.documents.model import Line
 from extract.dumps import column_dump
 from extract.entries import Entry, Item, Key, Piece, Text, Value
@@ -67,10 +68,19 @@ def _text(line: Line) -> Text:
 
 def _one(line: Line, items: list[Item]) -> int:
     # A part number in the line begins a part, and the line's text belongs to that part: entries first.
-    if footnote_of(line.text) is None or split_pairs(fold(line.text))[0]:
+    if not _is_footnote(line.text):
         items.extend(_entries(line))
     items.append(_text(line))
     return 1
+
+
+def _is_footnote(text: str) -> bool:
+    """Whether a line is a footnote and no numbered row; "*1 for CL = 6 pF ..." states nothing of its own."""
+    found = footnote_of(text)
+    if found is None:
+        return False
+    pairs = split_pairs(found[1])[0]
+    return not pairs or not found[1].lstrip(" -*").startswith(pairs[0][0])
 
 
 def _entries(line: Line) -> Iterator[Entry]:
@@ -100,22 +110,24 @@ def _label_and_rest(line: Line) -> Iterator[Entry]:
             values.append(Value(segment))
     if values:
         piece = Piece(label.text.rstrip(" :："), label.where, label.confidence)
-        yield Entry(piece, _as_choice(label.text, values), unit, symbol, source="pair")
+        for each in _as_choices(label.text, values):
+            yield Entry(piece, each, unit, symbol, source="pair")
 
 
-def _as_choice(label: str, values: list[Value]) -> tuple[Value, ...]:
-    """Several values side by side, each with its own unit ("8 pF", "12.5 pF"), are read as one text."""
+def _as_choices(label: str, values: list[Value]) -> list[tuple[Value, ...]]:
+    """Several values side by side, each with its own unit: one text ("8 pF", "12.5 pF"), or a row for each band."""
     known = meaning(label.rstrip(" :：")).label
-    if known is None or len(values) < 2 or not all(_plain_amount(value, known.field) for value in values):
-        return tuple(values)
+    if known is None or len(values) < 2 or not all(has_unit(value.piece.text, known.field) for value in values):
+        return [tuple(values)]
+    if all(_CASE & kinds_of(value.piece.text) for value in values):
+        return [(value,) for value in values]
+    if any(len(value.piece.text) > 24 or len(read(value.piece.text, known.field)) != 1 for value in values):
+        return [tuple(values)]
     worst = min(value.piece.confidence for value in values)
-    joined = Piece(", ".join(value.piece.text for value in values), values[0].piece.where, worst)
-    return (Value(joined),)
+    return [(Value(Piece(", ".join(value.piece.text for value in values), values[0].piece.where, worst)),)]
 
 
-def _plain_amount(value: Value, field: str) -> bool:
-    text = value.piece.text
-    return len(text) <= 24 and has_unit(text, field) and len(read(text, field)) == 1
+_CASE = {"frequency_mhz", "mode", "temperature_c", "load_capacitance_pf"}
 
 
 def _label_over_value(lines: Sequence[Line], index: int, items: list[Item]) -> int:

@@ -142,7 +142,7 @@ def part_tokens(text: str) -> tuple[str, ...]:
 def _could_name_a_part(token: str) -> bool:
     if len(token) < 3 or not _DIGIT.search(token) or not any(c.isalpha() for c in token):
         return False
-    if _AMOUNT.fullmatch(token) or _SIZE.fullmatch(token):
+    if all(_AMOUNT.fullmatch(piece) for piece in token.split("/")) or _SIZE.fullmatch(token):
         return False
     if sum(c.islower() for c in token) > sum(c.isupper() for c in token):
         return False

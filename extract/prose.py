@@ -38,7 +38,7 @@ LONG = 200
 def pair_entries(cell: Placed) -> list[Entry]:
     """Every `label: value` and `KEY=VALUE` of a text, and what its sentences say where it holds no pairs."""
     found: list[Entry] = []
-    for chunk in _CHUNK.split(fold(cell.text)):
+    for chunk in _label_with_values(_CHUNK.split(fold(cell.text))):
         if not chunk.strip():
             continue
         if len(chunk) > LONG and (told_apart := interleaved(chunk)) is not None:
@@ -52,6 +52,24 @@ def pair_entries(cell: Placed) -> list[Entry]:
         if rest.strip():
             found += prose_entries(Piece(rest, cell.where, cell.confidence))
     return found
+
+
+def _label_with_values(chunks: list[str]) -> Iterator[str]:
+    """Chunks as they are, save that "label; value; value" is one pair: a bare label takes the amounts behind it."""
+    label = ""
+    for chunk in chunks:
+        if label and re.match(r"\s*[-+±≤≥<>~]?\s?\d", chunk):
+            label += f"{': ' if label.find(': ') < 0 else '; '}{chunk.strip()}"
+            continue
+        if label:
+            yield label
+        known = meaning(chunk.strip()).label
+        bare = known is not None and known.exact and not known.symbol and not has_unit(chunk, known.field)
+        label = chunk.strip() if bare and len(chunks) > 1 and not _SEPARATOR.search(chunk) else ""
+        if not label:
+            yield chunk
+    if label:
+        yield label
 
 
 def _banded(label: str, value: str, cell: Placed) -> Iterator[Entry]:
@@ -145,8 +163,8 @@ def _sentence_entries(sentence: str, piece: Placed) -> Iterator[Entry]:
         elif _states(after[:NEAR], field, exact=label.label.exact):
             yield _entry(name, after, piece, "prose")
             taken = label.end + _amount_end(after, field)
-        elif field not in _UNITLESS and _states(before[-NEAR:], field, exact=True):
-            yield _entry(name, _last_amount(before[-NEAR:], field), piece, "prose")
+        elif field not in _UNITLESS and (last := _last_amount(before[-NEAR:], field)) is not None:
+            yield _entry(name, last, piece, "prose")
             taken = label.end
 
 
@@ -204,15 +222,16 @@ def _states(text: str, field: str, *, exact: bool) -> bool:
     return has_unit(text, field) and bool(re.search(r"\d", text)) and bool(read(text, field))
 
 
-def _last_amount(text: str, field: str) -> str:
+def _last_amount(text: str, field: str) -> str | None:
     """The end of a text from the last number on that still reads as the field: the amount next to the label."""
+    if not _states(text, field, exact=True):
+        return None
     for match in reversed(list(re.finditer(r"(?<![\d.,])[-+±≤<]?\s?\d", text))):
         tail = text[match.start() :]
         found = read(tail, field)
-        whole = field not in TEMPERATURES or any(None not in (each.min, each.max) for each in found)
-        if found and whole:
+        if found and (field not in TEMPERATURES or any(None not in (each.min, each.max) for each in found)):
             return tail
-    return text
+    return None if field in TEMPERATURES else text
 
 
 _FREQUENCY = re.compile(r"(?i)(?<![\w.,±-])\d+(?:[.,]\d+)*\s?[mk]hz\b")

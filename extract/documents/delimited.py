@@ -56,7 +56,7 @@ def read(data: bytes) -> Document:
 def sniff(text: str) -> str | None:
     """The delimiter that parts most lines into the same number of cells, or None where none does.
 
-    Two columns are enough only where every line has them: a comma in prose parts a line as well.
+    Two columns parted by commas are enough only where every line has them: a comma in prose parts a line as well.
     """
     lines = _lines(text, limit=4 * _SAMPLE_RECORDS)
     best: tuple[float, int, int] | None = None
@@ -66,7 +66,7 @@ def sniff(text: str) -> str | None:
             continue
         width, count = max(Counter(counted).items(), key=lambda item: (item[1] * (item[0] > 1), item[0]))
         share = count / len(counted)
-        needed = 0.6 if width > 3 else 0.8 if width == 3 else 1.0
+        needed = 0.6 if width > 3 else 0.8 if width == 3 or delimiter != "," else 1.0
         if width < 2 or count < 2 or share < needed:
             continue
         found = (round(share, 1), -rank, width)

@@ -97,3 +97,10 @@ def test_codes_for_plus_minus_values_are_options():
 def test_codes_for_ranges_are_a_candidate_each():
     found = list(key_candidates(key("Operating temperature", ("A", "-20 to +70 °C"), ("B", "-40 to +85 °C"))))
     assert [(each.min, each.max) for each in found] == [(-20.0, 70.0), (-40.0, 85.0)]
+
+
+def test_a_further_cell_with_a_band_and_a_value_is_a_value_of_its_own():
+    cells = ("100 Ω max for 12 to 15.999 MHz", "60 Ω max for 16 to 54 MHz")
+    values = tuple(Value(Piece(text, Where(line=1))) for text in cells)
+    found = entry_candidates(Entry(Piece("ESR", Where(line=1)), values))
+    assert [(each.when.frequency_mhz, each.max) for each in found] == [((12, 15.999), 100), ((16, 54), 60)]

@@ -1,9 +1,10 @@
 import pytest
 from building import line
 
-from extract.entries import Piece, Text
-from extract.identity import maker_of, makers_in, package_in, part_number_of
+from extract.entries import Entry, Piece, Text, Value
+from extract.identity import is_package, maker_of, makers_in, package_in, part_number_of
 from extract.meaning import part_tokens
+from extract.model import Where
 
 
 @pytest.mark.parametrize(
@@ -96,3 +97,15 @@ def test_a_maker_may_stand_only_in_the_page_header():
 
 def test_a_size_with_tolerances_is_the_package():
     assert package_in("Dimensions: 5.0 ±0.15 × 3.2 ±0.15 × 0.9 max. Pads 1.2 × 1.0 mm") == "5.0 × 3.2 × 0.9"
+
+
+def test_a_model_with_its_size_is_no_package():
+    assert not is_package("LE-32 (3.2×2.5 mm)")
+    assert is_package("3.2×2.5 mm")
+
+
+def test_a_row_called_series_under_resistance_names_no_part():
+    value = Value(Piece("100", Where(line=2)))
+    entry = Entry(Piece("series", Where(line=2)), (value,), section="Resistance")
+    title = Text(Piece("SX-21 crystal", Where(line=1)), heading=True)
+    assert part_number_of([title, entry], ()) == "SX-21"

@@ -117,3 +117,14 @@ def test_a_code_that_is_also_a_symbol_of_another_unit_is_a_code():
     items = line_items([line(text) for text in ("LOAD CAPACITANCE", "B = 10 pF", "Q = 8 pF", "U = 12 pF")])
     (ordering,) = [item for item in items if isinstance(item, Key)]
     assert [code for code, _ in ordering.choices] == ["B", "Q", "U"]
+
+
+def test_values_side_by_side_with_a_band_each_are_a_row_each():
+    items = line_items([line("Series resistance", "150 Ω max (3.2 to 4.9 MHz)", "80 Ω max (5 to 9.9 MHz)")])
+    found = [each for item in items if isinstance(item, Entry) for each in entry_candidates(item)]
+    assert [(each.when.frequency_mhz, each.max) for each in found] == [((3.2, 4.9), 150), ((5, 9.9), 80)]
+
+
+def test_a_footnote_states_nothing_of_its_own():
+    items = line_items([line("*1 For CL = 6 pF the motional resistance is 90 kΩ max.")])
+    assert not any(isinstance(item, Entry) for item in items)

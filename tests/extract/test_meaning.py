@@ -4,7 +4,7 @@ from __future__ import annotations
 
 import pytest
 
-from extract.meaning import meaning
+from extract.meaning import meaning, part_tokens
 
 
 @pytest.mark.parametrize(
@@ -26,3 +26,7 @@ def test_a_latin_bound_in_a_japanese_head_makes_no_bound_column_of_it(head: str,
 @pytest.mark.parametrize(("head", "role"), [("最大 MAX", "max"), ("記号 Symbol", "symbol"), ("Max. 最大", "max")])
 def test_a_head_in_two_languages_keeps_its_role(head: str, role: str) -> None:
     assert meaning(head).role == role
+
+
+def test_amounts_with_slashes_name_no_part():
+    assert part_tokens("8pF/10pF/12pF") == ()

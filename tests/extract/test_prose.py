@@ -89,3 +89,15 @@ def test_a_range_before_its_label_is_taken_whole():
     assert held("l'écart reste de ± 50 ppm entre -20 °C et +70 °C, plage de fonctionnement") == [
         ("operating_temperature_c", (-20, None, 70, ()))
     ]
+
+
+def test_a_label_parted_from_its_values_by_semicolons_is_a_pair():
+    assert held("谐振电阻;12.000~15.999MHz:100Ω max;16.000~54.000MHz:60Ω max") == [
+        ("esr_ohm", (None, None, 100, ())),
+        ("esr_ohm", (None, None, 60, ())),
+    ]
+    assert held("负载电容;8pF/10pF/12pF") == [("load_capacitance_pf", (None, None, None, (8, 10, 12)))]
+
+
+def test_the_end_of_a_measuring_condition_before_a_label_of_a_range_is_no_range():
+    assert held("±30 ppm Ref. to 25 °C Operating Temperature Range") == []
