@@ -264,7 +264,7 @@ def _corner_sets(
     Beside it the IC's greatest transconductance, and which index on the C0 axis stands for low, high and estimated low.
     """
     keys = setting.circuit
-    shunt, shunt_index = _shunt_ends(columns, number, with_floor=True)
+    shunt, shunt_index = shunt_ends_and_floor(columns, number)
     crystal = crystal_at(columns, bench, number, shunt)
     circuit, greatest_gm = corner_circuit(bench, keys, shunt, _with_hardest(bench, keys, crystal))
     for limiter in limiters_of(keys):
@@ -298,13 +298,16 @@ def corner_circuit(
 
 def shunt_ends(columns: Columns, number: int) -> Array:
     """C0 at its stated ends, on axis 1."""
-    return _shunt_ends(columns, number, with_floor=False)[0]
+    return _distinct_ends(columns, number, columns.shunt_pf[number, LOW])[0]
 
 
-def _shunt_ends(columns: Columns, number: int, *, with_floor: bool) -> tuple[Array, list[int]]:
+def shunt_ends_and_floor(columns: Columns, number: int) -> tuple[Array, list[int]]:
     """C0 low, high and estimated low on axis 1, each that differs once, and the index of each of the three."""
+    return _distinct_ends(columns, number, np.minimum(columns.shunt_floor_pf, columns.shunt_pf[number, LOW]))
+
+
+def _distinct_ends(columns: Columns, number: int, floor: Array) -> tuple[Array, list[int]]:
     low, high = columns.shunt_pf[number, LOW], columns.shunt_pf[number, HIGH]
-    floor = np.minimum(columns.shunt_floor_pf, low) if with_floor else low
     distinct, index = [low], [0]
     for values in (high, floor):
         same = next((at for at, known in enumerate(distinct) if np.array_equal(known, values)), None)

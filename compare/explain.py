@@ -274,7 +274,8 @@ def _drive(s: Subject) -> str:
 
 def _margin(s: Subject) -> str:
     rn, rl = s.mid("negative_resistance_ohm"), s.mid("load_resonance_resistance_ohm")
-    return f"-Rn/RL = {rn.removeprefix('-')}/{rl}; {s.gm}, {s.esr}, {s.c0}; {s.capacitors}"
+    against = rn.removeprefix("-") if rn.startswith("-") else f"-{rn}"
+    return f"-Rn/RL = {against}/{rl}; {s.gm}, {s.esr}, {s.c0}; {s.capacitors}"
 
 
 def _gain_ratio(s: Subject) -> str:

@@ -145,6 +145,8 @@ def _total(one: Judged, standing: Standing) -> str:
     daily = ""
     if standing.subject.offer.frequency_mhz < CLOCKS_BELOW_MHZ:
         daily = f" ({signed(float(seconds_per_day(low)))} to {signed(float(seconds_per_day(high)))} s a day)"
+    if math.isnan(low) and math.isnan(high):
+        return f"no frequency to judge against {limit_words(standing.bench)}, as it cannot oscillate"
     parts = [
         f"{signed(low)} to {signed(high)} ppm{daily} against {limit_words(standing.bench)}: "
         f"{times(float(one.worst[standing.at]))}",
@@ -201,7 +203,8 @@ def budget_words(standing: Standing) -> str:
 def _drive(one: Judged, standing: Standing) -> str:
     high = standing.subject.ends["drive_level_uw"][2]
     offer, asked = standing.subject.offer, standing.bench.requirement
-    said = f"{figure(high, 3)} µW at the worst; {reading_text('drive_level_uw', offer.drive)}"
+    worst = "no amplitude, as it cannot oscillate" if math.isnan(high) else f"{figure(high, 3)} µW at the worst"
+    said = f"{worst}; {reading_text('drive_level_uw', offer.drive)}"
     if asked.drive_headroom != 1:
         said += f", headroom {figure(asked.drive_headroom)} asked"
     at_output = "; a peak-to-peak reading at the output end misstates the power by -10 to +5 %"

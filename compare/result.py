@@ -69,7 +69,10 @@ def numbers(columns: Columns, bench: Bench, reckoned: Reckoned, total: Total, kn
     lacking = _lacking(columns, bench, known)
     found = {}
     for key, needs in NEEDS.items():
-        short_of = {name: flags for need in needs for name, flags in lacking[need].items() if flags.any()}
+        wanted = {name: flags for need in needs for name, flags in lacking[need].items()}
+        if key == "total_ppm":
+            wanted |= {name: flags for term in total.terms.values() for name, flags in term.missing.items()}
+        short_of = {name: flags for name, flags in wanted.items() if flags.any()}
         ends = _ends(key, columns, bench, reckoned, total)
         gone = np.logical_or.reduce(list(short_of.values())) if short_of else np.zeros(len(columns), dtype=bool)
         ends = np.where(gone, np.nan, ends)

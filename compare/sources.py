@@ -19,9 +19,13 @@ def ageing_words(offer: Offer, bench: Bench) -> str:
     if not offer.ageing.stated:
         source = f"ageing not stated, estimated {estimate_first_year_ageing_ppm().basis}"
     return (
-        f"{source} after {stated:g} year{'' if stated == 1 else 's'}, times {factors[asked.ageing_rule]:.3g} for "
-        f"{asked.years:g} years by the {asked.ageing_rule} rule (by the {other} rule {factors[other]:.3g})"
+        f"{source} after {_years(stated)}, times {factors[asked.ageing_rule]:.3g} for {_years(asked.years)} by the "
+        f"{asked.ageing_rule} rule (by the {other} rule {factors[other]:.3g})"
     )
+
+
+def _years(count: float) -> str:
+    return f"{count:g} year" if count == 1 else f"{count:g} years"
 
 
 def c1_words(columns: Columns, at: int) -> str:

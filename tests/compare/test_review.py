@@ -68,3 +68,10 @@ def test_a_part_with_all_readings_in_a_sound_circuit_meets():
     assert found["missing"] == []
     assert found["questions"] == []
     assert found["to_check"] == []
+
+
+@pytest.mark.parametrize("field", ["frequency_tolerance_ppm", "frequency_stability_ppm"])
+def test_a_total_that_lacks_a_term_says_which_reading_is_missing(field):
+    (found,) = review([sheet(usual(without=(field,)))], bench())["reviews"]
+    assert found["total_ppm"]["mid"] is None
+    assert found["total_ppm"]["how"] == f"cannot be had: {field} not known"
