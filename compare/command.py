@@ -78,7 +78,9 @@ def _parser() -> argparse.ArgumentParser:
     _sheets(rank)
     _bench(rank)
     swap = _command(commands, "substitute", "may these parts stand in for that one, on the board as built", _substitute)
-    swap.add_argument("incumbent", metavar="INCUMBENT", help="the part on the board: its sheet, or FILE#PART_NUMBER")
+    swap.add_argument(
+        "incumbent", type=_name, metavar="INCUMBENT", help="the part on the board: its sheet, or FILE#PART_NUMBER"
+    )
     _sheets(swap, "candidates", "CANDIDATE")
     _bench(swap, required=False)
     changed = _command(
@@ -88,7 +90,7 @@ def _parser() -> argparse.ArgumentParser:
     changed.add_argument("new", metavar="NEW", help="the later one")
     _bench(changed, required=False)
     page = commands.add_parser("page", help="the same in the browser, on this machine only")
-    page.add_argument("sheets", nargs="*", metavar="SHEET", help="sheets or folders to open at once")
+    page.add_argument("sheets", nargs="*", type=_name, metavar="SHEET", help="sheets or folders to open at once")
     page.add_argument("--bench", metavar="BENCH.toml", help="circuit and requirement to open at once")
     page.add_argument("--port", type=int, default=8733, help="port on 127.0.0.1 (default %(default)s)")
     page.set_defaults(run=_page)
@@ -106,6 +108,13 @@ def _command(commands: Any, name: str, about: str, run: Any) -> argparse.Argumen
     return parser
 
 
+def _name(text: str) -> str:
+
+    if text.partition("#")[0].strip() or (text and os.path.exists(text)):  # noqa: PTH110
+        return text
+    raise argparse.ArgumentTypeError(f"{text!r} names no file; write FILE, a folder, FILE#PART_NUMBER or -")
+
+
 def _count(text: str) -> int:
     number = int(text)
     if not 1 <= number <= 1_000_000:
@@ -117,6 +126,7 @@ def _sheets(parser: argparse.ArgumentParser, name: str = "sheets", shown: str = 
     parser.add_argument(
         name,
         nargs="+",
+        type=_name,
         metavar=shown,
         help="a file (PDF, XLSX, XLS, ODS, CSV, TSV, HTML, DOCX, text, picture), a folder of them, "
         "FILE#PART_NUMBER for one part of a file, or - for standard input",

@@ -146,6 +146,14 @@ def test_a_call_without_a_file_is_wrong():
     assert stop.value.code == 2
 
 
+@pytest.mark.parametrize("name", ["", " ", "#QF-26"])
+def test_a_name_without_a_file_is_a_wrong_call(capsys, name):
+    with pytest.raises(SystemExit) as stop:
+        main(["extract", name])
+    assert stop.value.code == 2
+    assert "names no file" in capsys.readouterr().err
+
+
 @pytest.mark.parametrize(
     ("text", "told"),
     [
