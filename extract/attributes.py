@@ -17,11 +17,17 @@ _VERB = r"(?:\s?[:=-]|[^\d;,.:()]{0,24}?(?<![^\W\d_]))\s?"
 
 @cache
 def _pads_for(use: str) -> re.Pattern[str]:
-    """Numbers of pads with what they are for, "crystal" or "ground", behind them."""
+    """Numbers of pads with what they are for, "crystal" or "ground", behind them or, joined by "on", before them."""
     words = identity_words()["pads"]
-    joins, uses, names = ("|".join(map(re.escape, words[key])) for key in ("joins", use, "names"))
-    numbers = rf"#?\d(?:\s?(?:{joins})\s?#?\d)*"
-    return re.compile(rf"(?i)(?:(?:{names})\s?|(?<![\w.,/#+-]))({numbers})(?![\d.,]*\d){_VERB}(?:{uses})")
+    joins, uses, names, on, verbs = (
+        "|".join(map(re.escape, words[key])) for key in ("joins", use, "names", "on", "verbs")
+    )
+    # Without a name before it a list begins only where no number of the same list stands before it.
+    start = rf"(?:(?:{names})\s?:?\s?|(?<!\d,)(?<!\d, )(?<![\w./#+、・&-]))"
+    numbers = rf"{start}(#?\d(?:\s?(?:{joins})\s?#?\d)*)(?![\d.,]*\d)"
+    behind = rf"{numbers}(?:\s?(?:{verbs})\s?|{_VERB})(?:{uses})"
+    before = rf"(?:{uses})\s?(?:{on})\s?{numbers}"
+    return re.compile(rf"(?i){behind}|{before}")
 
 
 def attributes_of(stated: Mapping[str, str], texts: Sequence[str] = ()) -> Attributes:
@@ -67,7 +73,8 @@ def _pads(texts: Sequence[str]) -> Pads | None:
         ground = ground or _pads_named(text, "ground")
     if crystal is None and ground is None:
         return None
-    count = max((*(crystal or ()), *(ground or ())))
+    # The highest number is the count only where all pads are told of.
+    count = max(*crystal, *ground) if crystal and ground else None
     return Pads(count=count, crystal=crystal, ground=ground)
 
 
@@ -75,7 +82,9 @@ def _pads(texts: Sequence[str]) -> Pads | None:
 def _pads_named(text: str, what: str) -> tuple[int, ...] | None:
     """The pads that a line gives to the crystal or to ground; every part of a list asks the same lines."""
     found = _pads_for(what).search(fold(text))
-    return _numbers(found[1]) if found else None
+    pads = _numbers(found[1] or found[2]) if found else ()
+    # A crystal has two ends: one pad alone is a list that was not read whole.
+    return pads if pads and (what == "ground" or len(pads) > 1) else None
 
 
 def _numbers(text: str) -> tuple[int, ...]:

@@ -27,6 +27,7 @@ def test_pads_are_read_from_the_line_that_names_them(text):
         "plots 1 et 3 quartz, plots 2 et 4 reliés au capot (masse)",
         "Anschlüsse 1 und 3 Quarz, Anschlüsse 2 und 4 mit Deckel verbunden",
         "端子1、3 水晶、端子2、4 接地",
+        "焊盘：1、3 为晶体端，2、4 接地。",
     ],
 )
 def test_pads_are_read_in_other_languages(text):
@@ -41,3 +42,12 @@ def test_the_end_of_a_part_number_before_a_crystal_is_no_pad():
 
 def test_a_yes_in_two_languages_is_a_yes():
     assert attributes_of({"aec_q200": "符合 Yes"}).aec_q200 is True
+
+
+def test_pads_named_behind_the_word_crystal_are_read_and_nothing_is_said_of_the_others():
+    pads = attributes_of({}, ["2.0 x 1.6 mm, 4 pads (crystal on 1 and 3)"]).pads
+    assert (pads.count, pads.crystal, pads.ground) == (None, (1, 3), None)
+
+
+def test_a_lone_pad_is_no_crystal():
+    assert attributes_of({}, ["Pad 1: crystal"]).pads is None
