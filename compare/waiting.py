@@ -5,7 +5,6 @@ from __future__ import annotations
 import time
 from typing import TextIO
 
-from compare.report import WIDTH, fitted
 from extract.progress import Progress
 
 # A shorter wait needs no line.
@@ -24,6 +23,7 @@ class ProgressLine(Progress):
         self._last = 0.0
         self._file = self._name = ""
         self._shown = False
+        self._width = 0
 
     def file(self, number: int, count: int, name: str) -> None:
         self._file, self._name = f"file {number} of {count}", name
@@ -36,13 +36,16 @@ class ProgressLine(Progress):
         now = time.monotonic()
         if not self._on or now - self._began < SHOWN_AFTER_S or now - self._last < EVERY_S:
             return
-        self._last, self._shown = now, True
-        self._stream.write("\r" + fitted(f"{where}: {self._name}", WIDTH - 1))
+        # Most reads end before this; the report's own libraries would take longer to load than a sheet to read.
+        from compare.report import WIDTH, fitted
+
+        self._last, self._shown, self._width = now, True, WIDTH - 1
+        self._stream.write("\r" + fitted(f"{where}: {self._name}", self._width))
         self._stream.flush()
 
     def done(self) -> None:
         """Take the line away."""
         if self._shown:
-            self._stream.write("\r" + " " * (WIDTH - 1) + "\r")
+            self._stream.write("\r" + " " * self._width + "\r")
             self._stream.flush()
             self._shown = False

@@ -91,6 +91,16 @@ _SPELT = [
 _SIMPLE = re.compile(r"(?:[A-Za-z0-9]++[ /(),:;%-]?+)*+")
 
 
+def _unbroken(text: str) -> str:
+    """`text` without UTF-8 read as Windows-1252, also where that was done twice."""
+    while "Â" in text or "Î" in text or "â" in text or "Ã" in text:
+        mended = _MOJIBAKE_RUN.sub(lambda found: _MOJIBAKE[found[0]], text)
+        if mended == text:
+            break
+        text = mended
+    return text
+
+
 @lru_cache(maxsize=65536)
 def fold(text: str) -> str:
     """`text` with one glyph for each sign: "－４０℃～＋８５℃" and "−40 °C – +85 °C" come out in the same characters.
@@ -99,13 +109,12 @@ def fold(text: str) -> str:
     characters their plain ones, "㏀" "kΩ", "℃" "°C", a raised exponent "^-6", Symbol-font codes what the page shows.
     Runs of spaces become one, line breaks stay.
     """
-    if "Â" in text or "Î" in text or "â" in text or "Ã" in text:
-        text = _MOJIBAKE_RUN.sub(lambda found: _MOJIBAKE[found[0]], text)
+    text = _unbroken(text)
     if _SIMPLE.fullmatch(text):
         return text.strip()
     if not text.isascii():
         text = _SUPERSCRIPT_RUN.sub(lambda found: "^" + found[0].translate(_SUPERSCRIPTS), text)
-        text = unicodedata.normalize("NFKC", text.translate(_TRANSLATE)).translate(_TRANSLATE)
+        text = _unbroken(unicodedata.normalize("NFKC", text.translate(_TRANSLATE)).translate(_TRANSLATE))
     else:
         text = text.translate(_TRANSLATE)
     for pattern, instead in _SPELT:

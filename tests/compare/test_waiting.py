@@ -4,6 +4,7 @@ import json
 from compare import intake, waiting
 from compare.command import main
 from compare.intake import read_sheets
+from compare.report import WIDTH
 from compare.waiting import ProgressLine
 from extract.progress import Progress
 
@@ -102,7 +103,7 @@ def test_a_terminal_shows_file_and_page_and_the_line_is_gone_at_the_end(monkeypa
     line.page(17, 300)
     assert stream.getvalue().split("\r")[-1].rstrip() == "file 2 of 5, page 17 of 300: catalogue.pdf"
     line.done()
-    assert stream.getvalue().split("\r")[-2:] == [" " * (waiting.WIDTH - 1), ""]
+    assert stream.getvalue().split("\r")[-2:] == [" " * (WIDTH - 1), ""]
 
 
 def test_a_short_read_shows_nothing():
