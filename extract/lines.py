@@ -16,18 +16,19 @@ from extract.heads import is_unit
 from extract.keys import choices_in, key_label
 from extract.meaning import meaning
 from extract.prose import is_label, pair_entries, split_pairs
-from extract.streams import fragments, paragraph, stream_entries
+from extract.streams import Fragments, paragraph, stream_entries
 
 
 def line_items(lines: Sequence[Line]) -> list[Item]:
     """A run of lines between two tables, read in order."""
     items: list[Item] = []
     index = 0
+    fragments = Fragments(lines)
     while index < len(lines):
         taken = (
             _dump(lines, index, items)
             or _key_run(lines, index, items)
-            or _stream(lines, index, items)
+            or _stream(lines, index, items, fragments)
             or _label_over_value(lines, index, items)
             or _one(lines[index], items)
         )
@@ -42,11 +43,11 @@ def _dump(lines: Sequence[Line], index: int, items: list[Item]) -> int:
     return taken
 
 
-def _stream(lines: Sequence[Line], index: int, items: list[Item]) -> int:
+def _stream(lines: Sequence[Line], index: int, items: list[Item], fragments: Fragments) -> int:
     """A wrapped paragraph, or a run of broken lines, read as one text; a quoted line of mail is somebody else's."""
     if lines[index].text.lstrip().startswith(">"):
         return 1
-    if (count := fragments(lines, index)) > 1:
+    if (count := fragments.count(index)) > 1:
         items.extend(_text(line) for line in lines[index : index + count])
         items.extend(stream_entries(lines[index : index + count], "pair"))
         return count

@@ -51,7 +51,7 @@ class Found:
 
 def parts_of(blocks: Blocks) -> Found:
     """Every part of a sheet."""
-    found = Found()
+    found = Found(notes=list(blocks.warnings))
     split = sections(blocks.items)
     common = next((section for section in split if section.name is None), Section(None))
     shared = _draft(common, blocks)

@@ -44,21 +44,45 @@ def _follows(above: Line, line: Line) -> bool:
     return above.where.page == line.where.page
 
 
-def fragments(lines: Sequence[Line], start: int) -> int:
-    """How many lines from `start` on are pieces of labels, values and units; 0 where most lines stand by themselves."""
-    end = start
-    while (
-        end < len(lines)
-        and not lines[end].heading
-        and len(lines[end].text) <= 70
-        and not _BULLET.match(lines[end].text)
-    ):
-        end += 1
-    run = lines[start:end]
-    if len(run) < LEAST_FRAGMENTS or not is_label(_first_words(run)):
-        return 0
-    broken = sum(_is_broken(line, run[index + 1] if index + 1 < len(run) else None) for index, line in enumerate(run))
-    return len(run) if broken >= 3 and broken >= 0.15 * len(run) else 0
+class Fragments:
+    """Runs of lines that are pieces of labels, values and units; each run is looked at once."""
+
+    def __init__(self, lines: Sequence[Line]) -> None:
+        self._lines = lines
+        self._end = 0
+        self._broken: list[int] | None = None
+
+    def count(self, start: int) -> int:
+        """How many lines from `start` on are such pieces; 0 where most lines stand by themselves."""
+        if start >= self._end:
+            self._end, self._broken = self._run_end(start), None
+        size = self._end - start
+        if size < LEAST_FRAGMENTS:
+            return 0
+        broken = self._broken_from(start)
+        if broken < 3 or broken < 0.15 * size:
+            return 0
+        return size if is_label(_first_words(self._lines[start : start + 2])) else 0
+
+    def _run_end(self, start: int) -> int:
+        end = start
+        while end < len(self._lines) and _may_be_fragment(self._lines[end]):
+            end += 1
+        return end
+
+    def _broken_from(self, start: int) -> int:
+        """How many lines from `start` to the end of its run say nothing by themselves."""
+        if self._broken is None:
+            self._broken = [0]
+            for index in range(self._end - 1, start - 1, -1):
+                below = self._lines[index + 1] if index + 1 < self._end else None
+                self._broken.append(self._broken[-1] + _is_broken(self._lines[index], below))
+        return self._broken[self._end - start]
+
+
+def _may_be_fragment(line: Line) -> bool:
+    text = line.text
+    return not line.heading and len(text) <= 70 and not _BULLET.match(text)
 
 
 def _first_words(run: Sequence[Line]) -> str:
