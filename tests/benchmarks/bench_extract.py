@@ -28,7 +28,9 @@ import resource, sys
 from compare.command import main
 status = main(["extract", sys.argv[1], "--json"])
 used = resource.getrusage(resource.RUSAGE_SELF)
-print(used.ru_utime + used.ru_stime, used.ru_maxrss / 1024, file=sys.stderr)
+# The peak of this program alone: ru_maxrss would count what the process that started it held.
+peak = next(line for line in open("/proc/self/status") if line.startswith("VmHWM"))
+print(used.ru_utime + used.ru_stime, int(peak.split()[1]) / 1024, file=sys.stderr)
 raise SystemExit(status)
 """
 
