@@ -58,7 +58,9 @@ def kept(when: When, field: str) -> When:
     if load is not None and field != "pulling_sensitivity_ppm_per_pf":
         changes["load_capacitance_pf"] = None
     temperature = when.temperature_c
-    if temperature is not None and (field in TEMPERATURES or temperature[1] - temperature[0] <= 15):
+    if temperature is not None and (
+        field in (*TEMPERATURES, "load_capacitance_pf") or temperature[1] - temperature[0] <= 15
+    ):
         changes["temperature_c"] = None
     if when.years is not None and field != "ageing_ppm":
         changes["years"] = None

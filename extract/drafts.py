@@ -59,7 +59,12 @@ class Draft:
         if what == "maker":
             text = re.split(r"\s+[·|•]\s+", text)[0]
         known = getattr(self, what)
-        if known is None or (what == "package" and package_in(known) is None and package_in(text) is not None):
+        longer = what == "part_number" and known is not None and text.startswith(f"{known}-")
+        if (
+            known is None
+            or longer
+            or (what == "package" and package_in(known) is None and package_in(text) is not None)
+        ):
             setattr(self, what, text)
 
     def take_identity(self, entries: Iterable[Entry]) -> None:
@@ -75,7 +80,7 @@ class Draft:
                 continue
             text = " ".join(entry.values[0].piece.text.split()).strip(" :：")
             if known.trap is not None and "dimension" in known.trap:
-                self.package = self.package or package_in(text)
+                self.package = package_in(text) if package_in(self.package or "") is None else self.package
             elif known.identity == "part_number" and not part_tokens(text) and package_in(text):
                 self.package = self.package or text
             elif known.identity in ("part_number", "maker", "package") and not wording.not_stated(text):

@@ -14,7 +14,7 @@ from extract.fold import fold
 from extract.footnotes import footnote_of
 from extract.heads import is_unit
 from extract.keys import choices_in, key_label
-from extract.meaning import meaning
+from extract.meaning import meaning, part_tokens
 from extract.prose import is_label, pair_entries, split_pairs
 from extract.streams import Fragments, paragraph, stream_entries
 
@@ -68,17 +68,27 @@ def _text(line: Line) -> Text:
 
 
 def _one(line: Line, items: list[Item]) -> int:
-    # A part number in the line begins a part, and the line's text belongs to that part: entries first.
-    if not _is_footnote(line.text):
-        items.extend(_entries(line))
-    items.append(_text(line))
+    # A part number in the line begins a part, and the line's text belongs to that part: a line that begins with it goes
+    # before what it states.
+    own = [] if _is_footnote(line.text) else list(_entries(line))
+    items.extend([_text(line), *own] if begins_with_part(line.text) else [*own, _text(line)])
     return 1
+
+
+def begins_with_part(text: str) -> bool:
+    """Whether a line lists one part: its number first, perhaps numbered, and behind it what it is."""
+    plain = ROW_NUMBER.sub("", fold(text))
+    tokens = part_tokens(plain)
+    return bool(tokens) and bool(re.match(re.escape(tokens[0]) + r"\s?[:,;–-]", plain))
+
+
+ROW_NUMBER = re.compile(r"^\s*(?:\(?\d{1,2}[.)]|[-•*·])\s+")
 
 
 def _is_footnote(text: str) -> bool:
     """Whether a line is a footnote and no numbered row; "*1 for CL = 6 pF ..." states nothing of its own."""
     found = footnote_of(text)
-    if found is None:
+    if found is None or begins_with_part(text):
         return False
     pairs = split_pairs(found[1])[0]
     return not pairs or not found[1].lstrip(" -*").startswith(pairs[0][0])

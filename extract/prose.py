@@ -10,7 +10,7 @@ from extract import wording
 from extract.candidates import Candidate, has_unit, read
 from extract.conditions import TEMPERATURES, condition_of
 from extract.entries import Entry, Piece, Placed, Source, Value
-from extract.fold import fold
+from extract.fold import fold, key
 from extract.interleaved import interleaved
 from extract.meaning import meaning
 from extract.model import When
@@ -24,7 +24,7 @@ _ABBREVIATED = "".join(
     f"(?<!{word})" for word in ("max", "min", "typ", "nom", "std", "ref", "req", "emp", "cap", "res", "mfr", "mfg")
 )
 _SENTENCE = re.compile(
-    rf"(?i:{_ABBREVIATED})(?<=[^\W\d])[.;!?]\s+(?=[^\W\d_])(?![a-zà-ÿ])|(?<=[\d%)°])[.;]\s+(?=[^\W\d_])|[。；]\s*|\n"
+    rf"(?i:{_ABBREVIATED})(?<=[^\W\d])[.;!?]\s+(?=[^\W\d_])(?![a-zà-ÿ])|(?<=[\d%)°])(?<![\s(]\d)[.;]\s+(?=[^\W\d_])|[。；]\s*|\n"
 )
 _NEW_SENTENCE = re.compile(r"\d[^.]{0,6}\.\s|\)\.?\s(?=\S+\s)")
 _SUBSCRIPT = re.compile(r"(?<=(?<![A-Za-z0-9])[A-Za-z])_(?=[A-Za-z0-9])")
@@ -47,7 +47,9 @@ def pair_entries(cell: Placed) -> list[Entry]:
         pairs, rest = split_pairs(chunk)
         for label, value in pairs:
             stated, *more = _SENTENCE.split(value, maxsplit=1)
-            found.append(_entry(label, stated, cell, "pair"))
+            stated, others = _own_part(label, stated)
+            found += _pair(label, stated, cell)
+            found += prose_entries(Piece(others, cell.where, cell.confidence)) if others else []
             found += prose_entries(Piece(more[0], cell.where, cell.confidence)) if more and more[0] else []
         if rest.strip():
             found += prose_entries(Piece(rest, cell.where, cell.confidence))
@@ -55,21 +57,53 @@ def pair_entries(cell: Placed) -> list[Entry]:
 
 
 def _label_with_values(chunks: list[str]) -> Iterator[str]:
-    """Chunks as they are, save that "label; value; value" is one pair: a bare label takes the amounts behind it."""
-    label = ""
+    """Chunks as they are, save that amounts behind "label; value" or "label: value; value" belong to that label."""
+    held = ""
+    field: str | None = None
     for chunk in chunks:
-        if label and re.match(r"\s*[-+±≤≥<>~]?\s?\d", chunk):
-            label += f"{': ' if label.find(': ') < 0 else '; '}{chunk.strip()}"
+        if field is not None and _AMOUNT_FIRST.match(chunk) and has_unit(chunk, field) and not split_pairs(chunk)[0]:
+            held += f"{'; ' if _SEPARATOR.search(held) else ': '}{chunk.strip()}"
             continue
-        if label:
-            yield label
-        known = meaning(chunk.strip()).label
-        bare = known is not None and known.exact and not known.symbol and not has_unit(chunk, known.field)
-        label = chunk.strip() if bare and len(chunks) > 1 and not _SEPARATOR.search(chunk) else ""
-        if not label:
-            yield chunk
-    if label:
-        yield label
+        if held:
+            yield held
+        held, field = chunk, _last_field(chunk) if len(chunks) > 1 else None
+    if held:
+        yield held
+
+
+_AMOUNT_FIRST = re.compile(r"\s*[-+±≤≥<>~]?\s?\d")
+
+
+def _last_field(chunk: str) -> str | None:
+    """The field whose label, or whose pair of label and value, ends a chunk."""
+    pairs, _ = split_pairs(chunk)
+    label = meaning(pairs[-1][0] if pairs else chunk.strip()).label
+    bare = label is not None and (bool(pairs) or (not label.symbol and not has_unit(chunk, label.field)))
+    return label.field if label is not None and label.exact and bare else None
+
+
+def _pair(label: str, value: str, cell: Placed) -> list[Entry]:
+    known = meaning(label).label
+    if known is None or not _zipped_bands(value, known.field):
+        return [_entry(label, value, cell, "pair")]
+    return [replace(entry, source="pair") for entry in _banded(label, value, cell)]
+
+
+_VALUE_NEXT = re.compile(r"\s?[≤≥<>=~:]?\s?(?:[^\W\d_]{3,7}\.?\s)?[-+±≤≥<>~]?\s?\d")
+
+
+def _own_part(label: str, value: str) -> tuple[str, str]:
+    """A value, and from the next property on what follows it ("8 pF, ESR ≤ 60 Ω, C0 2 pF max" behind "CL =")."""
+    own = meaning(label).label
+    if own is None:
+        return value, ""
+    for each in wording.find_labels(value):
+        before, after, field = value[: each.start].rstrip(" ,，、"), value[each.end :], each.label.field
+        if field == own.field or not _VALUE_NEXT.match(after) or not has_unit(after[:NEAR], field):
+            continue
+        if _adjacent(before, own.field) is not None:
+            return before, value[each.start :]
+    return value, ""
 
 
 def _banded(label: str, value: str, cell: Placed) -> Iterator[Entry]:
@@ -85,7 +119,8 @@ def split_pairs(text: str) -> tuple[list[tuple[str, str]], str]:
     marks: list[tuple[int, int, int]] = []
     begin = 0
     for match in _SEPARATOR.finditer(text):
-        start = _label_start(text, begin, match.start())
+        bound_first = bool(marks) and _bound_at(text, marks[-1][0]) is not None
+        start = _label_start(text, begin, match.start(), bound_first=bound_first)
         if start is not None:
             marks.append((start, match.start(), match.end()))
             begin = match.end()
@@ -96,15 +131,37 @@ def split_pairs(text: str) -> tuple[list[tuple[str, str]], str]:
     return pairs, text[: marks[0][0]] if marks else text
 
 
-def _label_start(text: str, begin: int, end: int) -> int | None:
+def _label_start(text: str, begin: int, end: int, *, bound_first: bool = False) -> int | None:
     """Where the longest known label that ends at `end` begins; None where none does."""
     starts = [begin + match.start() for match in _WORD_START.finditer(text[begin:end])]
     for start in starts[-10:]:
-        if _NEW_SENTENCE.search(text[start:end]):
+        if _NEW_SENTENCE.search(text[start:end]) or _ends_value(text, begin, start, bound_first=bound_first):
             continue
         if is_label(text[start:end]) and _may_follow(text[start:end], text[end + 1 :]):
             return start
     return None
+
+
+_FIRST_WORD = re.compile(r"([^\W\d_]+)\.?\s?([,，、]?)")
+
+
+def _bound_at(text: str, start: int) -> re.Match[str] | None:
+    """The bound word that begins at `start`, with the comma behind it."""
+    word = _FIRST_WORD.match(text, start)
+    return word if word is not None and vocabulary().bounds.get(key(word[1])) in ("min", "typ", "max") else None
+
+
+def _ends_value(text: str, begin: int, start: int, *, bound_first: bool) -> bool:
+    """Whether the word at `start` is the bound of the value before it, and no part of the next label.
+
+    So it is before a comma ("30 Ω typ, C0 = 2 pF") and, in small letters right behind a number and its unit, where the
+    label before has no bound in front ("30 Ω typ C0 = 2 pF").
+    """
+    bound = _bound_at(text, start)
+    if bound is None:
+        return False
+    behind_amount = bool(re.search(r"\d\s?[^\W\d]{0,4}\s$", text[begin:start]))
+    return bool(bound[2]) or (behind_amount and bound[1].islower() and not bound_first)
 
 
 def _may_follow(label: str, rest: str) -> bool:
@@ -206,14 +263,20 @@ def _zipped_bands(text: str, field: str) -> list[tuple[str, str]]:
 
 
 def _beside_bands(text: str, bands: list[re.Match[str]]) -> list[tuple[str, str]]:
-    """Bands with one resistance behind each, or one before each."""
+    """Bands with one resistance behind each, or one before each; what stands between them is the band's."""
     starts, ends = [band.start() for band in bands], [band.end() for band in bands]
-    before, after = _OHMS.findall(text[: starts[0]]), _OHMS.findall(text[ends[-1] :])
-    between = [_OHMS.findall(text[end:start]) for end, start in zip(ends, starts[1:], strict=False)]
-    if any(len(found) != 1 for found in between) or bool(before) == bool(after):
+    first = bool(_OHMS.search(text[: starts[0]]))
+    if first:
+        pieces = [text[begin:end] for begin, end in zip([0, *ends[:-1]], ends, strict=True)]
+    else:
+        pieces = [text[begin:end] for begin, end in zip(starts, [*starts[1:], len(text)], strict=True)]
+    found = [list(_OHMS.finditer(piece)) for piece in pieces]
+    if any(len(each) != 1 for each in found[:-1]) or not found[-1] or (first and _OHMS.search(text[ends[-1] :])):
         return []
-    values = [*(found[0] for found in between), after[0]] if after else [before[-1], *(found[0] for found in between)]
-    return [(band[0], value) for band, value in zip(bands, values, strict=True)]
+    cut = [
+        piece[each[0].end() :] if first else piece[: each[0].start()] for piece, each in zip(pieces, found, strict=True)
+    ]
+    return [(band, each[0][0]) for band, each in zip(cut, found, strict=True)]
 
 
 def _states(text: str, field: str, *, exact: bool) -> bool:
@@ -304,8 +367,10 @@ def _loose_in_clause(piece: Piece) -> list[Candidate]:
         found += _guesses(piece, "frequency_mhz", ranges[0])
     elif not ranges and len({amount.casefold() for amount in amounts}) == 1:
         found += _guesses(piece, "frequency_mhz", amounts[0])
-    for match in _PPM.finditer(text):
-        tail = text[match.end() : match.end() + 45]
+    amounts_ppm = list(_PPM.finditer(text))
+    until = [*(match.start() for match in amounts_ppm[1:]), len(text)][: len(amounts_ppm)]
+    for match, end in zip(amounts_ppm, until, strict=True):
+        tail = text[match.end() : end][:45]
         span = condition_of(tail).temperature_c
         if span is not None and span[1] - span[0] > 40:
             plain = _guesses(piece, "frequency_stability_ppm", match[0])

@@ -186,7 +186,7 @@ def _contradictions_marked(candidates: list[Candidate]) -> list[Candidate]:
 def _contradicts(first: Candidate, second: Candidate) -> bool:
     if first.source == "key" and second.source == "key":
         return False
-    if first.field in RANGES and first.label_where is not None and first.label_where == second.label_where:
+    if first.field in RANGES and (first.label_where or first.where) == (second.label_where or second.where):
         return False
     if first.when != second.when:
         return _overlap(first.when, second.when) and not _same_row(first, second)

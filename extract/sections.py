@@ -7,7 +7,9 @@ from dataclasses import dataclass, field
 
 from extract.entries import Entry, Item, Listing, Text
 from extract.identity import package_in, unfolded
+from extract.lines import ROW_NUMBER, begins_with_part
 from extract.meaning import identity_words, meaning, part_tokens
+from extract.prose import loose_in_prose
 
 LEAST_ENTRIES = 3
 
@@ -22,7 +24,13 @@ class Section:
     @property
     def weight(self) -> int:
         """How many labelled values it holds."""
-        return sum(isinstance(item, Entry) and meaning(item.label.text).head is not None for item in self.items)
+        return sum(_weight(item) for item in self.items)
+
+
+def _weight(item: Item) -> int:
+    if isinstance(item, Text):
+        return len(loose_in_prose(item.piece)) if begins_with_part(item.piece.text) else 0
+    return int(isinstance(item, Entry) and meaning(item.label.text).head is not None)
 
 
 def sections(items: Sequence[Item]) -> list[Section]:
@@ -50,12 +58,12 @@ def _names(item: Item) -> str | None:
 
 def _named_in_heading(item: Text) -> str | None:
     segments = [segment.text for segment in item.segments] or [item.piece.text]
-    text = unfolded(segments[0])
+    text = ROW_NUMBER.sub("", unfolded(segments[0]))
     tokens = part_tokens(text)
     lowered = text.casefold()
     if (
         len(tokens) != 1
-        or len(text) > 80
+        or (len(text) > 80 and not begins_with_part(text))
         or any(word in lowered for word in identity_words()["not_parts"]["elsewhere"])
     ):
         return None

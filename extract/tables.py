@@ -141,7 +141,11 @@ def is_head(row: Row) -> bool:
         return len(heads) + len(roles) >= 0.4 * len(cells)
     if len(heads) >= 3 and values <= 0.34 * len(cells):
         return True
-    return _heads_models(cells, known, names, len(roles))
+    blank = row[0] is None or not row[0].text.strip()
+    models = len({cell.text for cell in cells if is_part_token(cell.text)})
+    return (blank and models >= 2 and models + len(roles) == len(cells)) or _heads_models(
+        cells, known, names, len(roles)
+    )
 
 
 def _heads_models(cells: Sequence[Cell], known: Sequence[Meaning], names: Sequence[str | None], roles: int) -> bool:

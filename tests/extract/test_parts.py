@@ -201,3 +201,25 @@ def test_a_shop_that_contradicts_the_makers_table_is_flagged_and_its_short_parab
     assert (working.min, working.max) == (-40, 125)
     assert "says otherwise" in (working.check or "")
     assert bounds(fork, "frequency_stability_ppm") == []
+
+
+def test_numbered_lines_that_begin_with_a_part_number_are_a_part_each():
+    lines = [
+        "Offer 2231, Brackwell Frequency Ltd",
+        "1. ABQ32-12M-10: 12.000 MHz, 3.2 x 2.5 mm, CL 10 pF, ±10 ppm at 25 °C, ESR 80 Ω max",
+        "2. ABQ15-25M-7: 25.000 MHz, 1.6 x 1.2 mm, CL 7 pF, ±20 ppm at 25 °C, ESR 90 Ω max",
+    ]
+    parts = found(*[line(text, number=number) for number, text in enumerate(lines, 1)]).parts
+    assert [(part.part_number, bounds(part, "frequency_mhz"), bounds(part, "esr_ohm")) for part in parts] == [
+        ("ABQ32-12M-10", [(None, 12, None)], [(None, None, 80)]),
+        ("ABQ15-25M-7", [(None, 25, None)], [(None, None, 90)]),
+    ]
+
+
+def test_models_under_an_empty_corner_are_parts():
+    rows = (("", "ABQ-7A", "ABQ-7B", "Unit"), ("Frequency", "32.768", "32.768", "kHz"), ("R1 max", "50", "65", "kΩ"))
+    parts = found(table(*rows)).parts
+    assert [(part.part_number, bounds(part, "esr_ohm")) for part in parts] == [
+        ("ABQ-7A", [(None, None, 50000)]),
+        ("ABQ-7B", [(None, None, 65000)]),
+    ]

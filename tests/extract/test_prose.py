@@ -101,3 +101,21 @@ def test_a_label_parted_from_its_values_by_semicolons_is_a_pair():
 
 def test_the_end_of_a_measuring_condition_before_a_label_of_a_range_is_no_range():
     assert held("±30 ppm Ref. to 25 °C Operating Temperature Range") == []
+
+
+def test_bands_parted_by_semicolons_keep_their_own_values_and_modes():
+    text = "Resonanzwiderstand: 8-9,999 MHz 80 Ω; 10-19,999 MHz 50 Ω; 40-125 MHz (3. OT) 100 Ω"
+    found = [each for entry in pair_entries(Piece(text, HERE)) for each in entry_candidates(entry)]
+    assert [(each.when.frequency_mhz, each.when.mode, each.typ) for each in found] == [
+        ((8, 9.999), None, 80),
+        ((10, 19.999), None, 50),
+        ((40, 125), "third overtone", 100),
+    ]
+
+
+def test_each_ppm_is_judged_by_what_stands_behind_it_up_to_the_next():
+    found = loose_in_prose(Piece("12 MHz, ±10 ppm at 25 °C, ±20 ppm over -40 to +85 °C", HERE))
+    assert [(each.field, each.max) for each in found if each.field.endswith("_ppm")] == [
+        ("frequency_tolerance_ppm", 10),
+        ("frequency_stability_ppm", 20),
+    ]
