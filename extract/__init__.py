@@ -56,8 +56,11 @@ def read_sheet(data: bytes, name: str, *, progress: Progress | None = None) -> S
     except Exception as fault:
         import logging
 
-        # One odd sheet must not stop a heap of others; the log gets the whole fault, the user one sentence.
-        logging.getLogger(__name__).exception("reading %s", name)
+        # One odd sheet must not stop a heap of others; a log that somebody set up gets the whole fault, the user one
+        # sentence.
+        logger = logging.getLogger(__name__)
+        logger.addHandler(logging.NullHandler())
+        logger.exception("reading %s", name)
         message = (
             f"the reader failed on this file ({type(fault).__name__}: {fault}); report it, and read the file by eye"
         )

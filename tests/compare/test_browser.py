@@ -136,7 +136,9 @@ def test_the_drawing_and_the_table_stay_inside_a_narrow_window(view):
 def test_the_keys_of_the_views_work(view):
     view.get_by_role("heading", name="No sheets yet").wait_for()
     view.keyboard.press("2")
-    view.get_by_role("heading", name=re.compile("The circuit presents")).wait_for()
+    circuit = view.get_by_role("heading", name=re.compile("The circuit presents"))
+    circuit.wait_for()
+    assert circuit.is_visible()
 
 
 def test_nobody_but_this_machine_is_answered(address):

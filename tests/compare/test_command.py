@@ -91,6 +91,20 @@ def test_a_bad_file_gets_one_note_and_the_others_are_still_read(capsys, folder, 
     assert len(good["parts"]) == 1
 
 
+def test_a_fault_of_the_reader_shows_one_sentence_and_no_traceback(folder):
+    probe = (
+        "import extract.blocks as blocks\n"
+        "def fail(document): raise KeyError('a bug')\n"
+        "blocks.read_blocks = fail\n"
+        "from compare.command import main\nraise SystemExit(main())"
+    )
+    command = [sys.executable, "-c", probe, "extract", str(folder / "good.txt")]
+    done = subprocess.run(command, capture_output=True, text=True, check=False)
+    assert done.returncode == 1
+    assert "the reader failed on this file (KeyError: 'a bug')" in " ".join(done.stdout.split())
+    assert done.stderr == ""
+
+
 def test_a_zip_named_xlsx_is_told_apart_from_a_workbook(capsys, folder):
     with zipfile.ZipFile(folder / "list.xlsx", "w") as archive:
         archive.writestr("readme.txt", "no workbook")

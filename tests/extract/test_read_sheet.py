@@ -71,8 +71,11 @@ def test_a_file_without_a_crystal_gives_a_warning(text):
         "Frequency\tESR\n\t\n\t\t\t",
     ],
 )  # fmt: skip
-def test_odd_content_raises_nothing(text):
-    read_sheet(text.encode(), "odd.txt")
+def test_odd_content_meets_no_fault_of_the_reader(text, caplog):
+    """A fault of the reader's own would be logged, and told in a note."""
+    sheet = read_sheet(text.encode(), "odd.txt")
+    assert caplog.records == []
+    assert [note.message for note in sheet.notes if note.level == "error"] == []
 
 
 def test_a_fault_of_the_readers_own_is_told_and_logged(monkeypatch, caplog):
