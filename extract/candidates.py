@@ -10,11 +10,11 @@ from typing import Literal
 
 from extract import amount, trace, wording
 from extract.conditions import condition_of, kept, merged
-from extract.entries import Entry, Key, Placed, Source, Value
+from extract.entries import Entry, Key, Piece, Placed, Source, Value
 from extract.fields import field_of
 from extract.fold import fold
 from extract.meaning import meaning
-from extract.model import FieldName, When, Where
+from extract.model import FieldName, Pair, When, Where
 from extract.units import unit_at
 from extract.wording import Label
 
@@ -34,7 +34,8 @@ class Candidate:
     """A reading that might be meant. `doubts` are reasons to look; `source` and `exact` rank it against others.
 
     `subject` is the model in the column's head, `about` the one part that the heading above names. `open_above`: the
-    upper end of its band is printed as "<".
+    upper end of its band is printed as "<". `measured_c`: the one temperature at which an ESR was measured; it limits
+    the value only where another is stated at another temperature.
     """
 
     field: FieldName
@@ -54,6 +55,7 @@ class Candidate:
     label_where: Where | None = None
     open_above: bool = False
     about: str = ""
+    measured_c: Pair | None = None
 
     @property
     def bounds(self) -> tuple[float | None, float | None, float | None, tuple[float, ...]]:
@@ -237,6 +239,9 @@ def _single(entry: Entry, label: Label, when: When, subject: str, value: Value) 
     bound = value.bound or label.bound
     if value.governed and value.bound and label.field in ("frequency_mhz", "load_capacitance_pf"):
         bound = None
+    if label.field == "esr_ohm" and "°" in value.piece.text and (apart := _temperatures_apart(value.piece.text)):
+        own = [replace(value, piece=Piece(text, value.piece.where, value.piece.confidence)) for text in apart]
+        return [each for one in own for each in _single(entry, label, when, subject, one)]
     unit = entry.unit or label.unit or None
     plus_minus = label.plus_minus or bool(_PLUS_MINUS.search(fold(entry.unit)))
     found = read(value.piece.text, label.field, _bare_unit(unit), bound, plus_minus=plus_minus)
@@ -295,7 +300,31 @@ def _candidate(
         section=entry.section,
         label_where=entry.label.where,
         open_above=any(_OPEN_ABOVE.search(fold(text)) for text in entry.conditions),
+        measured_c=_measured_at(entry, label, [piece]),
     )
+
+
+# A temperature, with its tolerance ("25 ±3 °C") or without.
+_DEGREES = re.compile(r"(?<![\d.,±])([+-]?\d+(?:[.,]\d+)?)\s?(?:°\s?C?\s?)?(?:±\s?\d+(?:[.,]\d+)?\s?)?°", re.IGNORECASE)
+
+
+def _measured_at(entry: Entry, label: Label, pieces: Iterable[Placed]) -> Pair | None:
+    """The one temperature that stands beside an ESR: at the value, in a condition or in the label."""
+    if label.field != "esr_ohm":
+        return None
+    texts = [fold(text) for text in (*(piece.text for piece in pieces), *entry.conditions, entry.label.text)]
+    found = [number for text in texts for number in _DEGREES.findall(text)]
+    if len(found) != 1 or any(condition_of(text).temperature_c is not None for text in texts):
+        return None
+    degrees = float(found[0].replace(",", "."))
+    return degrees, degrees
+
+
+def _temperatures_apart(text: str) -> list[str]:
+    """The pieces of "50 Ω at 25 °C, 80 Ω at -40 °C", where each has a resistance and a temperature of its own."""
+    pieces = re.split(r"[,;/]\s|\n", fold(text))
+    each_own = all(len(_DEGREES.findall(piece)) == 1 and has_unit(piece, "esr_ohm") for piece in pieces)
+    return pieces if len(pieces) > 1 and each_own else []
 
 
 def _raw(entry: Entry, pieces: Iterable[Placed]) -> str:
@@ -390,6 +419,7 @@ def _one_row(
         section=entry.section,
         label_where=entry.label.where,
         open_above=any(_OPEN_ABOVE.search(fold(text)) for text in entry.conditions),
+        measured_c=_measured_at(entry, label, pieces),
     )
 
 

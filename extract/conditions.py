@@ -59,7 +59,7 @@ def kept(when: When, field: str) -> When:
         changes["load_capacitance_pf"] = None
     temperature = when.temperature_c
     if temperature is not None and (
-        field in (*TEMPERATURES, "load_capacitance_pf") or temperature[1] - temperature[0] <= 15
+        field in (*TEMPERATURES, "load_capacitance_pf", "drive_level_uw") or temperature[1] - temperature[0] <= 15
     ):
         changes["temperature_c"] = None
     if when.years is not None and field != "ageing_ppm":

@@ -25,14 +25,15 @@ class Draft:
     """What a sheet says of one part.
 
     `texts` are the words beside its values, for what it is not; `lines` all that its section prints, for its pads.
-    `crystal`: its own row calls it one; `other`: rows beside it do and its own does not. `by_subject`: identity entries
-    under the name of a model in a column head.
+    `offered_modes`: those that one label offers to choose from. `crystal`: its own row calls it one; `other`: rows
+    beside it do and its own does not. `by_subject`: identity entries under the name of a model in a column head.
     """
 
     part_number: str | None = None
     maker: str | None = None
     package: str | None = None
     modes: set[str] = field(default_factory=set)
+    offered_modes: frozenset[str] = frozenset()
     cuts: set[str] = field(default_factory=set)
     resonance: set[str] = field(default_factory=set)
     attributes: dict[str, str] = field(default_factory=dict)
@@ -89,6 +90,8 @@ class Draft:
                     self.take_mode_and_cut(text)
             elif known.role in ("mode", "cut"):
                 self.take_mode_and_cut(text, codes=True)
+                if len(named := modes_in(text, codes=True)) > 1:
+                    self.offered_modes = self.offered_modes or named
             elif known.attribute:
                 self.attributes.setdefault(known.attribute, text)
 

@@ -17,7 +17,7 @@ from extract.footnotes import noted_candidates
 from extract.identity import FIRST_LINES, maker_of, package_in, part_number_of, texts_of
 from extract.lists import listing_drafts
 from extract.meaning import meaning, part_tokens
-from extract.model import Note, Part
+from extract.model import Note, Part, Reading, lean
 from extract.prose import loose_in_prose
 from extract.readings import readings_of
 from extract.refusals import refusal
@@ -117,7 +117,10 @@ def _inherit(draft: Draft, general: Draft) -> None:
     own = {candidate.field for candidate in draft.candidates if candidate.source not in ("loose", "prose")}
     draft.candidates += [each for each in general.candidates if each.field not in own and _holds_for(draft, each)]
     draft.modes = draft.modes or set(general.modes)
+    draft.offered_modes = draft.offered_modes or general.offered_modes
     draft.cuts = draft.cuts or set(general.cuts)
+    if "load_capacitance_pf" not in own:
+        draft.resonance |= general.resonance
     draft.lines = draft.lines or general.lines
     draft.maker = draft.maker or general.maker
     draft.package = draft.package or general.package
@@ -215,6 +218,8 @@ def _take_texts(draft: Draft, texts: Sequence[Text]) -> None:
                 draft.modes.update(modes_in(segment))
             if not had_cut:
                 draft.cuts.update(cuts_in(segment))
+            if says((segment,), "series_part"):
+                draft.resonance.add("called series")
             if draft.package is None and (index < FIRST_LINES or text.heading or _begins_with_package(segment)):
                 draft.package = package_in(segment)
         if index < FIRST_LINES or len(text.piece.text) > 100:
@@ -238,6 +243,7 @@ def _merged(drafts: Sequence[Draft]) -> list[Draft]:
             first.maker, first.package = first.maker or draft.maker, first.package or draft.package
             first.modes |= draft.modes
             first.cuts |= draft.cuts
+            first.resonance |= draft.resonance
         else:
             merged[key] = draft
     return list(merged.values())
@@ -262,11 +268,11 @@ def _part(draft: Draft, maker: str | None) -> Part:
     mode = next(iter(draft.modes)) if len(draft.modes) == 1 else None
     cut = _one_cut(draft.cuts)
     candidates = [_without_mode(each, mode) for each in draft.candidates]
-    readings = readings_of(candidates, cut=cut, mode=mode)
+    readings = _in_each_mode(readings_of(candidates, cut=cut, mode=mode), draft)
     if mode is None and cut == "tuning fork" and not draft.modes:
         mode = "fundamental"
     loads = any(reading.field == "load_capacitance_pf" for reading in readings)
-    series = "series" in draft.resonance
+    series = "series" in draft.resonance or ("called series" in draft.resonance and not loads)
     return Part(
         part_number=draft.part_number,
         maker=draft.maker or maker,
@@ -277,6 +283,21 @@ def _part(draft: Draft, maker: str | None) -> Part:
         attributes=attributes_of(draft.attributes, draft.lines),
         readings=readings,
     )
+
+
+def _in_each_mode(readings: tuple[Reading, ...], draft: Draft) -> tuple[Reading, ...]:
+    """A frequency offered in several modes under one label is one reading for each, unless values tell them already."""
+    if len(draft.offered_modes) < 2 or draft.modes != draft.offered_modes or any(each.when.mode for each in readings):
+        return readings
+    told: list[Reading] = []
+    for each in readings:
+        if each.field == "frequency_mhz":
+            for mode in sorted(draft.offered_modes):
+                when = each.when.model_copy(update={"mode": mode})
+                told.append(lean(each.model_copy(update={"when": when})))
+        else:
+            told.append(each)
+    return tuple(told)
 
 
 def _without_mode(candidate: Candidate, mode: str | None) -> Candidate:

@@ -169,10 +169,22 @@ def _may_follow(label: str, rest: str) -> bool:
     known = meaning(label.strip(" -–*·、,.:")).label
     if known is None:
         return True
+    if known.field == "load_capacitance_pf" and _is_series(rest):
+        return True
     number = re.search(r"\d", rest)
     if number is None or "=" in rest[: number.start()]:
         return False
     return number.start() <= (4 if known.symbol else 30)
+
+
+def _is_series(rest: str) -> bool:
+    """Whether what stands behind a load's label begins with the word for series resonance and no number."""
+    first = re.split(r"[\n,;.|]", rest, maxsplit=1)[0].strip()
+    return (
+        0 < len(first) <= NEAR
+        and not re.search(r"\d", first)
+        and any(v.series for v in read(first, "load_capacitance_pf"))
+    )
 
 
 def is_label(text: str) -> bool:
@@ -369,7 +381,10 @@ def _loose_in_clause(piece: Piece) -> list[Candidate]:
         found += _guesses(piece, "frequency_mhz", amounts[0])
     amounts_ppm = list(_PPM.finditer(text))
     until = [*(match.start() for match in amounts_ppm[1:]), len(text)][: len(amounts_ppm)]
-    for match, end in zip(amounts_ppm, until, strict=True):
+    labels = wording.find_labels(text)
+    for match, following in zip(amounts_ppm, until, strict=True):
+        # Behind the next label stands what belongs to that.
+        end = min([following, *(label.start for label in labels if label.start >= match.end())])
         tail = text[match.end() : end][:45]
         span = condition_of(tail).temperature_c
         if span is not None and span[1] - span[0] > 40:
@@ -378,6 +393,10 @@ def _loose_in_clause(piece: Piece) -> list[Candidate]:
         elif re.match(r"\W{0,3}\w{0,3}\s?\+?2[0-9]\s?°", tail):
             plain = _guesses(piece, "frequency_tolerance_ppm", match[0])
             found += [replace(each, doubts=(), inferred=False) for each in plain]
+        elif len(amounts) == len(amounts_ppm) == 1 and _FREQUENCY.match(
+            text[: match.start()].rstrip(" ,")[-len(amounts[0]) :]
+        ):
+            found += _guesses(piece, "frequency_tolerance_ppm", match[0])
     span = condition_of(text).temperature_c
     stored = any(label.label.field == "storage_temperature_c" for label in wording.find_labels(text))
     if span is not None and span[0] < 5 and span[1] - span[0] > 40 and not stored:

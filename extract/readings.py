@@ -37,9 +37,21 @@ def readings_of(
         by_field.setdefault(each.field, []).append(each)
     for name in fields():
         if mine := by_field.get(name):
-            chosen += _of_field([_closed(each, offered) for each in mine], offered)
+            chosen += _of_field([_closed(each, offered) for each in _by_temperature(mine)], offered)
     chosen = _with_operating_range(_without_short_parabola(chosen), candidates)
     return _written(chosen, cut, mode)
+
+
+def _by_temperature(candidates: list[Candidate]) -> list[Candidate]:
+    """Values measured at different temperatures hold at those; one temperature alone is a test condition."""
+    if len({each.measured_c or each.when.temperature_c for each in candidates} - {None}) < 2:
+        return candidates
+    return [
+        replace(each, when=each.when.model_copy(update={"temperature_c": each.measured_c}))
+        if each.measured_c is not None and each.when.temperature_c is None
+        else each
+        for each in candidates
+    ]
 
 
 def _offered(candidates: Sequence[Candidate]) -> Pair | None:

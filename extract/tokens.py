@@ -163,6 +163,15 @@ def _phrase(text: str, lower: str, at: int, before: list[Token]) -> list[Token]:
     return [Token("pm" if kind == "plus_minus" else kind, printed, at, end)]
 
 
+_TEMPERATURE = re.compile(r"-\d+(?:[.,]\d+)?\s?(?:(?:~|…|to|bis|/|-)\s?\+?\d+(?:[.,]\d+)?\s?)?°")
+
+
+def _begins_temperature(text: str, at: int, before: list[Token]) -> bool:
+    """Whether the minus begins a temperature behind an amount in another unit: "100 µW -40~85 °C"."""
+    last = before[-1]
+    return last.kind in ("unit", "other") and "°" not in last.text and bool(_TEMPERATURE.match(text, at))
+
+
 def _inside_word(text: str, at: int) -> bool:
     return at > 0 and text[at - 1].isascii() and text[at - 1].isalpha()
 
@@ -186,7 +195,11 @@ def _signed_number(text: str, at: int, field: str, before: list[Token]) -> list[
         if (
             text[at] == "-"
             and after_number
-            and not (start == at + 1 and text[at - 1] == " " and (_after_plus_minus(before) or _after_pair(before)))
+            and not (
+                start == at + 1
+                and text[at - 1] == " "
+                and (_after_plus_minus(before) or _after_pair(before) or _begins_temperature(text, at, before))
+            )
         ):
             return [Token("to", "-", at, at + 1, meaning="-")]
         found = NUMBER.match(text, start)
@@ -225,11 +238,17 @@ def _after_pair(before: list[Token]) -> bool:
     return len(signs) % 2 == 0 and signs[-2:] == ["-", "+"]
 
 
+# A power of ten beyond every quantity ("1e400") is a slip, and its digits are no second value.
+_ABSURD_POWER = re.compile(r"[eE][+-]?\d{3,}(?!\w)")
+
+
 def _numbers(text: str, start: int, found: re.Match[str], sign: str, field: str, *, glued: bool) -> list[Token]:
     printed, end = found[0], found.end()
     if " " in printed and unit_at(text, field, end) is None and kind_of(field).name != "number":
         printed = printed.split(" ")[0]
         end = start + len(printed)
+    if power := _ABSURD_POWER.match(text, end):
+        return [Token("broken", printed + power[0], start, power.end())]
     made: list[Token] = []
     unit = unit_at(text, field, end)
     if unit is None and (torn := _torn_exponent(printed, text, end, field)):

@@ -7,6 +7,7 @@ from made_sheets import bench, part, reading, sheet, usual
 
 from compare.offer import decimals_printed, find_offers, match_frequency, overtone_of
 from compare.reckoning import choose_loads
+from extract import read_sheet
 from extract.model import Part, Reading, Where
 
 
@@ -227,3 +228,11 @@ def test_a_single_option_is_no_choice():
     offer = the_offer(usual(reading("load_capacitance_pf", options=(9.0,))))
     assert offer.load.span.mid == 9.0
     assert "load_capacitance_pf" not in offer.chosen
+
+
+@pytest.mark.parametrize(("trap", "mode"), [(False, "fundamental"), (True, "third overtone")])
+def test_of_two_modes_that_one_line_of_a_sheet_names_the_trap_decides(trap, mode):
+    text = "Crystal ABQ49-48\nFrequency: 48 MHz\nMode: fundamental or 3rd overtone\nCL: 8 pF\nESR: 50 Ω max"
+    (one,) = read_sheet(text.encode(), "offer.txt").parts
+    offer = the_offer(one, {"requirement": {"frequency_mhz": 48.0}, "circuit": {"overtone_trap": trap}})
+    assert (one.mode, offer.mode) == (None, mode)

@@ -547,3 +547,16 @@ def test_the_measuring_voltage_is_no_value_and_takes_no_bound(text: str) -> None
 @pytest.mark.parametrize("text", ["40 Ω máx.", "máx. 40 Ω", "40 Ω máximo"])
 def test_spanish_bounds_may_be_abbreviated(text: str) -> None:
     assert [said(value) for value in read_values(text, ESR)] == [{"max": 40}]
+
+
+@pytest.mark.parametrize("text", ["100 µW -40~85 °C", "100uW -40~85°C", "100 µW -40 °C", "100 µW, -40 to +85 °C"])
+def test_a_temperature_behind_an_amount_is_no_end_of_its_range(text):
+    (value,) = read_values(text, "drive_level_uw")
+    assert (value.min, value.typ, value.max) == (None, 100.0, None)
+
+
+@pytest.mark.parametrize("text", ["1e400", "1e-400", "1E999"])
+def test_an_absurd_power_of_ten_is_refused_and_its_digits_are_no_choice(text):
+    (value,) = read_values(text, "frequency_mhz")
+    assert value.empty
+    assert text in value.doubts[0]

@@ -1,3 +1,4 @@
+import pytest
 from building import bounds, document, line, table
 
 from extract.blocks import read_blocks
@@ -223,3 +224,61 @@ def test_models_under_an_empty_corner_are_parts():
         ("ABQ-7A", [(None, None, 50000)]),
         ("ABQ-7B", [(None, None, 65000)]),
     ]
+
+
+SERIES = [
+    ("Load capacitance: series",),
+    ("CL: series",),
+    ("Resonance: series",),
+    ("Lastkapazität: Serienresonanz",),
+    ("Capacité de charge : résonance série",),
+    ("Capacità di carico: risonanza serie",),
+    ("Capacidad de carga: resonancia serie",),
+    ("負荷容量：直列共振",),
+    ("负载电容：串联谐振",),
+    ("Series resonant crystal",),
+    ("Serienresonanzquarz",),
+]
+
+
+@pytest.mark.parametrize("segments", SERIES)
+def test_series_resonance_in_text_is_the_resonance_of_the_part(segments):
+    (part,) = found(line("ABQ49-16"), line(*segments), line("Frequency: 16 MHz"), line("ESR: 60 Ω max")).parts
+    assert part.resonance == "series"
+    assert bounds(part, "load_capacitance_pf") == []
+
+
+def test_series_on_request_in_text_is_not_offered():
+    rows = (line("CL: series on request"), line("Frequency: 16 MHz"), line("ESR: 60 Ω max"))
+    assert found(line("ABQ49-16"), *rows).parts[0].resonance is None
+
+
+def test_a_load_goes_before_a_heading_that_calls_the_crystal_series_resonant():
+    rows = (line("Series resonant crystal"), line("CL: 9 pF"), line("Frequency: 16 MHz"))
+    assert found(line("ABQ49-16"), *rows).parts[0].resonance == "load"
+
+
+def test_two_modes_under_one_label_give_a_frequency_for_each():
+    rows = (line("Frequency: 48 MHz"), line("Mode: fundamental or 3rd overtone"), line("ESR: 50 Ω max"))
+    (part,) = found(line("ABQ49-48"), *rows).parts
+    told = [(each.typ, each.when.mode) for each in part.readings if each.field == "frequency_mhz"]
+    assert (part.mode, told) == (None, [(48.0, "fundamental"), (48.0, "third overtone")])
+
+
+@pytest.mark.parametrize(
+    "rows",
+    [
+        (line("ESR: 50 Ω max at +25 °C", number=3), line("ESR: 80 Ω max at -40 °C", number=4)),
+        (line("ESR: 50 Ω max at +25 °C, 80 Ω max at -40 °C", number=3),),
+        (line("ESR: 50 Ω max at 25 ±3 °C", number=3), line("ESR: 80 Ω max at -40 °C ±2 °C", number=4)),
+    ],
+)
+def test_an_esr_at_two_temperatures_is_two_readings(rows):
+    (part,) = found(line("ABQ49-16"), line("Frequency: 16 MHz", number=2), *rows).parts
+    told = [(each.max, each.when.temperature_c, each.check) for each in part.readings if each.field == "esr_ohm"]
+    assert told == [(50.0, (25.0, 25.0), None), (80.0, (-40.0, -40.0), None)]
+
+
+def test_a_lone_temperature_beside_an_esr_limits_nothing():
+    (part,) = found(line("ABQ49-16"), line("Frequency: 16 MHz"), line("ESR: 50 Ω max at +25 °C")).parts
+    assert [each.when.temperature_c for each in part.readings if each.field == "esr_ohm"] == [None]

@@ -119,3 +119,55 @@ def test_each_ppm_is_judged_by_what_stands_behind_it_up_to_the_next():
         ("frequency_tolerance_ppm", 10),
         ("frequency_stability_ppm", 20),
     ]
+
+
+@pytest.mark.parametrize("mark", [", ", "; ", " "])
+def test_a_bound_word_belongs_to_the_value_it_follows_and_not_to_the_next_property(mark):
+    pieces = ("CL = 8 pF", "ESR = 30 Ω typ", "C0 = 2 pF max", "C1 = 4 fF typ", "DL = 100 µW max")
+    assert held(mark.join(pieces)) == [
+        ("load_capacitance_pf", (None, 8.0, None, ())),
+        ("esr_ohm", (None, 30.0, None, ())),
+        ("shunt_capacitance_pf", (None, None, 2.0, ())),
+        ("motional_capacitance_ff", (None, 4.0, None, ())),
+        ("drive_level_uw", (None, None, 100.0, ())),
+    ]
+
+
+def test_a_decimal_comma_parts_no_properties():
+    assert held("CL = 8,5 pF, ESR = 30,5 Ω typ, C0 = 2,1 pF max") == [
+        ("load_capacitance_pf", (None, 8.5, None, ())),
+        ("esr_ohm", (None, 30.5, None, ())),
+        ("shunt_capacitance_pf", (None, None, 2.1, ())),
+    ]
+
+
+def test_a_bound_word_before_each_label_stays_with_its_label():
+    assert held("max ESR = 60 Ω max DL = 100 µW") == [
+        ("esr_ohm", (None, None, 60.0, ())),
+        ("drive_level_uw", (None, None, 100.0, ())),
+    ]
+
+
+@pytest.mark.parametrize(
+    "text",
+    [
+        "CL=8pF ESR≤60Ω C0<2pF DL≤100uW",
+        "CL = 8 pF, ESR ≤ 60 Ω, C0 = 2 pF max, DL 100 µW max",
+        "CL = 8 pF, ESR 60 Ω max, C0 2 pF max, DL 100 µW max, -40~85 °C",
+        "CL = 8 pF, ESR < 60 Ω, C0 < 2 pF, DL < 100 µW, -40~85 °C",
+    ],
+)
+def test_properties_behind_a_pair_are_read_with_any_sign_between_label_and_value(text):
+    assert held(text) == [
+        ("load_capacitance_pf", (None, 8.0, None, ())),
+        ("esr_ohm", (None, None, 60.0, ())),
+        ("shunt_capacitance_pf", (None, None, 2.0, ())),
+        ("drive_level_uw", (None, None, 100.0, ())),
+    ]
+
+
+def test_a_tolerance_behind_the_frequency_is_a_guess_that_asks_to_be_checked():
+    found = loose_in_prose(Piece("Crystal ZZ-8 26 MHz ±10ppm CL=8pF -40~85°C", HERE))
+    (tolerance,) = [each for each in found if each.field == "frequency_tolerance_ppm"]
+    assert (tolerance.min, tolerance.max, bool(tolerance.doubts)) == (-10.0, 10.0, True)
+    assert not [each for each in found if each.field == "frequency_stability_ppm"]
