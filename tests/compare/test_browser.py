@@ -119,8 +119,11 @@ def test_a_pressed_figure_of_the_drawing_puts_the_cursor_into_its_field(view):
     view.get_by_role("link", name="Circuit").click()
     figure = view.locator('[data-field="circuit.across_stray_pf"]')
     figure.wait_for()
+    view.get_by_label("Stray, A–B", exact=True).wait_for()
     figure.click()
-    assert view.evaluate("document.activeElement.getAttribute('aria-label')") == "Stray, A–B"
+    focused = "document.activeElement.getAttribute('aria-label')"
+    view.wait_for_function(f"{focused} === 'Stray, A–B'")
+    assert view.evaluate(focused) == "Stray, A–B"
 
 
 def test_the_drawing_and_the_table_stay_inside_a_narrow_window(view):
