@@ -155,6 +155,9 @@ def _weighed(values: list[float], asked: Field, *, kept: bool) -> Typed:
     if not values:
         return Typed(fault="several decimal marks in one number; write it with one")
     value = values[0]
+    if value < 0 <= low:
+        # No bench takes it, so there is nothing to keep.
+        return Typed(fault=f"must not be below 0, got {shown(value, asked)}")
     if kept:
         return Typed(value=value)
     slips = (float(f"{value * slip:.12g}") for slip in (1e-3, 1e3, 1e-6, 1e6))

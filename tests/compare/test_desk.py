@@ -88,8 +88,8 @@ def test_an_unlikely_value_counts_only_once_it_is_kept():
 
 def test_what_the_bench_refuses_is_told_at_its_field():
     desk = Desk(
-        TYPED | {"circuit.capacitor_tolerance_percent": "-5"},
-        frozenset({("circuit.capacitor_tolerance_percent", "-5")}),
+        TYPED | {"circuit.capacitor_tolerance_percent": "150"},
+        frozenset({("circuit.capacitor_tolerance_percent", "150")}),
     )
     assert desk.bench is None
     assert set(desk.faults) == {"circuit.capacitor_tolerance_percent"}

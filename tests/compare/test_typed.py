@@ -116,3 +116,11 @@ def test_a_watch_crystals_values_are_shown_in_the_units_they_are_spoken_in():
     assert shown(0.032768, FREQUENCY) == "32.768 kHz"
     assert shown(0.0115, GM) == "11.5 µS"
     assert shown(20000.0, fields()["circuit.series_resistor_ohm"]) == "20 kΩ"
+
+
+@pytest.mark.parametrize("kept", [False, True])
+def test_a_negative_capacitor_is_a_fault_that_cannot_be_kept(kept):
+    said = understand("-12 pF", CAPACITOR, kept=kept)
+    assert said.value is None
+    assert not said.doubtful
+    assert said.fault == "must not be below 0, got −12 pF"
