@@ -1,4 +1,4 @@
-"""What Choose and Review show: headings, the ranked rows, a part's reasons and numbers, from the results' JSON shape.
+"""What Choose, Substitute and Review share: names of figures and requirements, a row's words, the slack chart's rows.
 
 Everything here takes the dictionaries of `ranking.rank` and `review.review` (the data contract's sections 4 and 5).
 """
@@ -11,27 +11,17 @@ from collections.abc import Mapping, Sequence
 from dataclasses import dataclass
 from typing import Any
 
-import pandas as pd
-
 from compare.bench import Bench
-from compare.charts import LoadPull, Slack
+from compare.charts import Slack
 from compare.circuit_text import ppm_limit_text, ppm_limits
 from compare.desk import field_key, field_of
-from compare.drawing import as_address, slack_strip_svg
 from compare.figures import (
-    CLOCK_BELOW_MHZ,
-    SECONDS_A_DAY_PER_PPM,
-    count_word,
-    frequency_text,
     number,
-    ordinal,
-    scale,
     signed,
     spread,
     with_minus,
     with_unit,
 )
-from compare.palette import Palette
 from compare.shown import NAMES, short_name
 from extract.model import FIELD_NAMES, SpecSheet
 
@@ -101,8 +91,6 @@ FULL_NAMES = SHORT_NAMES | {
 }
 STRIPS = tuple(name for name in SHORT_NAMES if name in FIGURES)
 MARGINS = ("margin", "gain_ratio", "resistance_headroom")
-
-
 BENCH_KEY = re.compile(r"\b(?:requirement|circuit|crystal|measured)\.[a-z_]+(?:\[\d+\])?(?:\.[a-z_]+)*")
 
 
@@ -119,26 +107,6 @@ def _quoted(key: str) -> str:
 def verdict(words: str | None) -> str:
     """`▲ meets`: the mark and the word, never one alone."""
     return f"{MARKS.get(words or '', '◇')} {words or 'cannot tell'}"
-
-
-def choose_heading(result: Mapping[str, Any], bench: Bench) -> str:
-    """The answer in a sentence."""
-    rows = result["rows"]
-    if not rows:
-        return f"None of the parts read offers {frequency_text(bench.requirement.frequency_mhz)}"
-    good, count = sum(row["verdict"] == "meets" for row in rows), len(rows)
-    if count == 1:
-        return f"The one part that offers it: {verdict(rows[0]['verdict'])}"
-    if good == count:
-        return f"All {count_word(count)} meet what is asked"
-    said = f"{count_word(good, begins=True)} of {count_word(count)} meet{'s' if good <= 1 else ''} what is asked"
-    return said if good else f"{said}. {_nearest(rows)}"
-
-
-def _nearest(rows: Sequence[Row]) -> str:
-    nearest = rows[0]
-    least = tightest_text(nearest)
-    return f"Nearest: {row_name(nearest)}" + (f", {least}" if least else "")
 
 
 def row_name(row: Row) -> str:
@@ -184,11 +152,6 @@ def sheets_of(row: Row, sheets: Sequence[SpecSheet]) -> list[SpecSheet]:
     ]
 
 
-def shown_of(count: int, shown: int) -> str:
-    """A sentence where not every row is shown; "" where all are."""
-    return f"The first {shown} of {count} are shown; the saved tables hold all of them." if count > shown else ""
-
-
 def tightest_text(row: Row) -> str:
     """What decides the place: `ppm in all 1.10 times`, `Range` where a yes or no decides, `ESR not stated`; else ""."""
     name = row["tightest"]
@@ -223,38 +186,6 @@ def asked_strips(rows: Sequence[Row]) -> list[str]:
     return [name for name in STRIPS if any(name in row["slack"] for row in rows)]
 
 
-def strips_legend(rows: Sequence[Row]) -> str:
-    """What the thin strips are, from the top."""
-    names = ", ".join(SHORT_NAMES[name] for name in asked_strips(rows))
-    return f"Strips from the top: {names}. Heavy: the tightest. Hatched side: not met. Dotted: not known."
-
-
-def rank_frame(rows: Sequence[Row], palette: Palette) -> pd.DataFrame:
-    """The ranked rows as shown; the strips are pictures, and the words beside them say the same."""
-    strips = asked_strips(rows)
-    table = [
-        (
-            row["place"],
-            row_name(row),
-            verdict(row["verdict"]),
-            f"☞ {len(row['to_check'])}" if row["to_check"] else "",
-            as_address(slack_strip_svg({SHORT_NAMES[name]: row["slack"].get(name) for name in strips}, palette)),
-            tightest_text(row),
-            row["maker"] or "",
-            row["package"] or "",
-        )
-        for row in rows
-    ]
-    columns = ["Place", "Part", "Verdict", "Look", "Times over: 1 is the line", "Tightest", "Maker", "Package"]
-    return pd.DataFrame(table, columns=columns)
-
-
-def place_heading(row: Row) -> str:
-    """`1st: MRB25-260-08H, Merrowby`."""
-    maker = f", {row['maker']}" if row["maker"] else ""
-    return f"{ordinal(row['place'])}: {row_name(row)}{maker}"
-
-
 def chosen_text(row: Row) -> str:
     """How the part must be ordered for the verdict to hold; "" where there is no choice."""
     said = [f"{_small(NAMES.get(key, key))} {_option(key, value)}" for key, value in row["chosen"].items()]
@@ -279,7 +210,7 @@ def _option(key: str, value: Any) -> str:
 def slack_rows(review: Row, bench: Bench) -> list[Slack]:
     """The large slack chart's rows, in the order of the strips."""
     return [
-        Slack(SHORT_NAMES[name], review["slack"][name], _nominal(review, name, bench), _said(review, name, bench))
+        Slack(SHORT_NAMES[name], review["slack"][name], _nominal(review, name, bench), worst_said(review, name, bench))
         for name in STRIPS
         if name in review["slack"]
     ]
@@ -301,7 +232,7 @@ def _nominal(review: Row, name: str, bench: Bench) -> float | None:
     return worst if not bad or not mid else worst * bad / mid
 
 
-def _said(review: Row, name: str, bench: Bench) -> str:
+def worst_said(review: Row, name: str, bench: Bench) -> str:
     figure, shown = review[name], FIGURES[name]
     if name in MARGINS:
         return (
@@ -337,136 +268,6 @@ def _worse_end(figure: Row, bench: Bench) -> float | None:
     return max(ends, key=lambda end: end / high if end > 0 else end / low if end < 0 else 0.0)
 
 
-@dataclass(frozen=True)
-class Judged:
-    """One requirement of a review, as shown: worst case against what was asked, times over, verdict, and why."""
-
-    requirement: str
-    worst: str
-    times_over: str
-    verdict: str
-    why: str
-
-    @property
-    def meets(self) -> bool:
-        return self.verdict == verdict("meets")
-
-
-def judged(review: Row, bench: Bench) -> list[Judged]:
-    """Verdict by requirement, one row for each reason."""
-    rows = []
-    for reason in review["reasons"]:
-        about, has_slack = reason["about"], reason["about"] in review["slack"] and reason["about"] in FIGURES
-        said = _said(review, about, bench) if has_slack else ""
-        over = times(review["slack"][about]) if has_slack else ""
-        rows.append(
-            Judged(FULL_NAMES.get(about, about), said, over, verdict(reason["verdict"]), told(reason["message"]))
-        )
-    return rows
-
-
-def review_heading(review: Row) -> str:
-    """`▲ MRB25-260-08H meets what is asked`, `, as read so far` while a reading of it waits for a look."""
-    name = row_name(review)
-    words = {
-        "meets": f"{name} meets what is asked",
-        "falls short": f"{name} falls short",
-        "cannot tell": f"{name}: cannot tell",
-    }[review["verdict"]]
-    return f"{MARKS[review['verdict']]} {words}" + (", as read so far" if review["to_check"] else "")
-
-
-def short_of(review: Row) -> str:
-    """What it falls short in or cannot be told of, in one sentence; "" where it meets."""
-    about = [
-        FULL_NAMES.get(reason["about"], reason["about"])
-        for reason in review["reasons"]
-        if reason["verdict"] == review["verdict"]
-    ]
-    if review["verdict"] == "meets":
-        least = tightest_text(review)
-        return f"Tightest: {least}." if least else ""
-    return f"{'Short' if review['verdict'] == 'falls short' else 'Open'}: {'; '.join(dict.fromkeys(about))}."
-
-
-@dataclass(frozen=True)
-class Number:
-    """One number of a review, ready to be shown: its three values, how we have it and how it was reached."""
-
-    name: str
-    low: str
-    mid: str
-    high: str
-    unit: str
-    basis: str
-    how: str
-
-
-def numbers(review: Row, bench: Bench) -> list[Number]:
-    """Every number that the review has, in the order of FIGURES; of a clock the error in seconds a day as well."""
-    shown = [_number(review[key], figure) for key, figure in FIGURES.items() if key in review]
-    if bench.requirement.frequency_mhz < CLOCK_BELOW_MHZ and "total_ppm" in review:
-        total = review["total_ppm"]
-        daily = {end: None if total[end] is None else total[end] * SECONDS_A_DAY_PER_PPM for end in ENDS}
-        how = f"frequency error in ppm times {SECONDS_A_DAY_PER_PPM} s a day"
-        day = {**daily, "how": how, "basis": total["basis"]}
-        named = Figure("The same for a clock", "s a day", sign=True)
-        shown.insert(1 + [one.name for one in shown].index(FIGURES["total_ppm"].name), _number(day, named))
-    return shown
-
-
-def _number(figure: Row, shown: Figure) -> Number:
-    factor, unit = scale(shown.unit, *(figure[end] for end in ENDS))
-
-    def end(name: str) -> str:
-        if figure[name] is None:
-            return "—"
-        value = figure[name] * factor
-        return signed(value, shown.digits) if shown.sign else number(value, shown.digits)
-
-    basis = figure["basis"] or ""
-    said = "∴ estimated" if basis == "estimated" else basis
-    return Number(shown.name, end("low"), end("mid"), end("high"), unit, said, told(figure["how"] or ""))
-
-
-def load_pull(review: Row, bench: Bench, rated_pf: float | None, *, series: bool) -> LoadPull | None:
-    """What the chart of ppm against load needs, where C1, C0 and the loads are known; None otherwise.
-
-    C0 comes back from fs and fp, whose distance it sets in the equivalent circuit without losses: C1/C0 = (fp/fs)² - 1.
-    """
-    c1, load, shift, total = (
-        review[key] for key in ("motional_capacitance_ff", "circuit_load_pf", "load_error_ppm", "total_ppm")
-    )
-    fs, fp = review["series_resonance_mhz"]["mid"], review["parallel_resonance_mhz"]["mid"]
-    needed = (c1["mid"], load["low"], load["mid"], load["high"], fs, fp)
-    if any(value is None for value in needed) or not fp > fs or (rated_pf is None and not series):
-        return None
-    c0_pf = c1["mid"] * 1e-3 / ((fp / fs) ** 2 - 1)
-    room_low, room_high = _room(total, shift, bench)
-    return LoadPull(
-        motional_capacitance_ff=c1["mid"],
-        shunt_capacitance_pf=c0_pf,
-        rated_pf=None if series else rated_pf,
-        low_pf=load["low"],
-        mid_pf=load["mid"],
-        high_pf=load["high"],
-        room_low_ppm=room_low,
-        room_high_ppm=room_high,
-    )
-
-
-def _room(total: Row, shift: Row, bench: Bench) -> tuple[float | None, float | None]:
-    """What the other causes leave of the limits for the load, low and high."""
-    limits = ppm_limits(bench)
-    if limits is None or bench.requirement.trim_step_ppm is not None:
-        return None, None
-    rooms = [
-        limit - (total[end] - shift[end]) if total[end] is not None and shift[end] is not None else None
-        for limit, end in zip(limits, ("low", "high"), strict=True)
-    ]
-    return rooms[0], rooms[1]
-
-
 def advice_lines(review: Row) -> list[str]:
     """What would help, best first: E24 pairs with what they do in the worst case, or a series resistor."""
     return [*map(_advice, review.get("advice", ())), *map(told, review.get("advice_messages", ()))]
@@ -488,55 +289,6 @@ def note_lines(result: Mapping[str, Any]) -> list[str]:
     return [told(note["message"] if isinstance(note, Mapping) else str(note)) for note in result["notes"]]
 
 
-CONTRIBUTORS = {
-    "total_ppm": "What uses the ppm up",
-    "margin": "What the margin hangs on",
-    "drive_level_uw": "What the drive hangs on",
-}
-
-
-@dataclass(frozen=True)
-class Share:
-    """What one input adds to a worst case, and how large that is beside the greatest (0 to 1)."""
-
-    name: str
-    adds: str
-    share: float
-
-
-def shares(review: Row, key: str, most: int = 6) -> list[Share]:
-    """What adds to the worst case of one number, greatest first, without those below a fiftieth of the greatest."""
-    rows = review.get("contributors", {}).get(key) or ()
-    greatest = max((abs(row["adds"]) for row in rows), default=0.0)
-    unit = FIGURES[key].unit
-    return [
-        Share(_input_name(row["input"]), with_unit(number(abs(row["adds"])), unit), abs(row["adds"]) / greatest)
-        for row in rows[:most]
-        if greatest and abs(row["adds"]) >= greatest / 50
-    ]
-
-
-def _input_name(key: str) -> str:
-    if key in FIELD_NAMES or "." in key:
-        return missing_name(key)
-    named = key.replace("condition ", "corner: ")
-    return named[:1].upper() + named[1:]
-
-
-def _sentence(message: str) -> str:
-    text = told(message).rstrip(".")
-    return f"{text[:1].upper()}{text[1:]}."
-
-
 def question_lines(review: Row) -> list[str]:
     """What to ask, as ready sentences."""
     return [told(question) for question in review["questions"]]
-
-
-def open_lines(review: Row) -> list[str]:
-    """What is not settled: readings that wait for a look, and what is missing."""
-    remarks = [_sentence(remark["message"]) for remark in review.get("remarks", ())]
-    if "measured_message" in review:
-        remarks.append(_sentence(review["measured_message"]))
-    looks = [f"☞ {NAMES.get(name, name)}: the reading waits for a look on Sheets." for name in review["to_check"]]
-    return remarks + looks + [f"◇ {missing_name(key)}: not known." for key in review["missing"]]

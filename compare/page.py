@@ -6,8 +6,9 @@ import streamlit as st
 
 from compare import circuit_text, drawing, pieces, shown
 from compare import page_session as session
-from compare.page_answers import choose_view, review_view
+from compare.page_choose import choose_view
 from compare.page_circuit import circuit_view
+from compare.page_review import review_view
 from compare.page_sheets import sheets_view
 
 

@@ -8,8 +8,8 @@ from dataclasses import fields
 from html import escape
 from pathlib import Path
 
-from compare.answers import Judged, Number, Share
 from compare.palette import Palette
+from compare.review_shown import Judged, Number, Share
 
 MARKDOWN = re.compile(r"([\\`*_{}\[\]()#+!|<>$~:^-])")
 

@@ -2,9 +2,9 @@
 
 from lxml import html
 
-from compare.answers import Judged, Number, Share
 from compare.palette import DARK, LIGHT
 from compare.pieces import judged_html, look_html, numbers_html, plain, printed_html, shares_html, style, terms_html
+from compare.review_shown import Judged, Number, Share
 
 EVIL = '<img src=x onerror="alert(1)">&'
 

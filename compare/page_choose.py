@@ -1,4 +1,4 @@
-"""The views Choose and Review: what the candidates come to in the circuit, and one of them in full."""
+"""The Choose view: the candidates in order, and why the chosen one stands where it does."""
 
 from __future__ import annotations
 
@@ -7,12 +7,11 @@ from typing import Any
 
 import streamlit as st
 
-from compare import answers, charts, export, pieces
+from compare import answers, charts, choose_shown, export, pieces, review_shown
 from compare import page_session as session
 from compare.bench import Bench
-from compare.cautions import CAUTIONS
-from compare.desk import NO_CIRCUIT, NO_PARTS, NOTHING_OPEN, PRIVACY, field_of
 from compare.offer import find_offers
+from compare.page_shared import cautions, others, ready, review_of
 
 COPY = """export default function({data, parentElement}) {
   const button = parentElement.querySelector("button");
@@ -24,29 +23,6 @@ COPY_LOOK = """button{font:inherit;font-size:.875rem;color:var(--st-text-color);
 MOST_ROWS = 500
 
 
-def ready() -> Bench | None:
-    """The bench, where there is something to judge; else what to do is said and None is returned."""
-    desk = session.desk()
-    if not any(sheet.parts for sheet in session.sheets()):
-        session.title("Nothing to rank yet")
-        st.markdown(NO_PARTS if session.sheets() else NOTHING_OPEN)
-        with st.container(horizontal=True, gap="small"):
-            if st.button("Add sheets", key="to_sheets", type="primary"):
-                session.go("sheets")
-            if st.button("Open the orchard example", key="orchard_here"):
-                session.open_example()
-                st.rerun()
-        return None
-    for key, fault in desk.faults.items():
-        st.html(pieces.fault_html(f"{field_of(key).label if key else 'Circuit'}: not used. {fault}"))
-    if desk.bench is None:
-        session.title("No circuit yet")
-        st.markdown(NO_CIRCUIT)
-        if st.button("Set the circuit", key="to_circuit", type="primary"):
-            session.go("circuit")
-    return desk.bench
-
-
 def choose_view() -> None:
     if (bench := ready()) is None:
         return
@@ -55,7 +31,7 @@ def choose_view() -> None:
         return
     left, right = st.columns([1.54, 1], gap="medium")
     with left:
-        session.title(f"{pieces.plain(answers.choose_heading(result, bench))}")
+        session.title(f"{pieces.plain(choose_shown.choose_heading(result, bench))}")
         row = ranked_rows(result) if result["rows"] else None
         others(result)
         cautions()
@@ -71,7 +47,7 @@ def ranked_rows(result: dict[str, Any]) -> dict[str, Any]:
     order = hashlib.sha256(repr(places).encode()).hexdigest()[:12]
     column = st.column_config
     picked = st.dataframe(
-        answers.rank_frame(rows, session.palette()),
+        choose_shown.rank_frame(rows, session.palette()),
         hide_index=True,
         row_height=44,
         height=min(38 + 44 * len(rows), 610),
@@ -91,7 +67,7 @@ def ranked_rows(result: dict[str, Any]) -> dict[str, Any]:
     )
     at = session.selected_row(picked, len(rows))
     st.session_state.chosen = places[at]
-    legend = f"{answers.strips_legend(rows)} {answers.shown_of(len(result['rows']), len(rows))}"
+    legend = f"{choose_shown.strips_legend(rows)} {choose_shown.shown_of(len(result['rows']), len(rows))}"
     st.markdown(f":gray[:small[{legend}]]")
     save_ranking(result["rows"], rows)
     row: dict[str, Any] = rows[at]
@@ -118,27 +94,9 @@ def save_ranking(rows: list[dict[str, Any]], shown: list[dict[str, Any]]) -> Non
         )
 
 
-def others(result: dict[str, Any]) -> None:
-    if lines := answers.note_lines(result):
-        with st.expander(f"What else there is to say ({len(lines)})", expanded=not result["rows"]):
-            for line in lines:
-                st.markdown(f"- {pieces.plain(line)}")
-
-
-def cautions() -> None:
-    st.markdown(f":gray[:small[{' '.join(CAUTIONS)} {PRIVACY}]]")
-
-
-def review_of(row: dict[str, Any], bench: Bench) -> answers.Row | None:
-    """The review of the ranked part, worked out for it alone."""
-    own = answers.sheets_of(row, session.sheets())
-    result = session.guarded("working the part out", lambda: session.reviewed(session.key_of(bench, own), own, bench))
-    return None if result is None else answers.review_for(row, result["reviews"])
-
-
 def why(row: dict[str, Any], bench: Bench) -> None:
     """The chosen row's reasons: the large slack chart, the reasons in words, ppm against load."""
-    session.section(f"{pieces.plain(answers.place_heading(row))}")
+    session.section(f"{pieces.plain(choose_shown.place_heading(row))}")
     review = review_of(row, bench)
     if review is None:
         return
@@ -157,7 +115,7 @@ def why(row: dict[str, Any], bench: Bench) -> None:
 
 def reasons_of(review: answers.Row, bench: Bench) -> None:
     """The reasons that decide in full; those that meet a step away."""
-    rows = answers.judged(review, bench)
+    rows = review_shown.judged(review, bench)
     deciding = [one for one in rows if not one.meets]
     for one in deciding:
         st.markdown(f"{one.verdict[0]} **{pieces.plain(one.requirement)}**: {pieces.plain(one.why)}")
@@ -183,7 +141,7 @@ def load_chart(review: answers.Row, bench: Bench) -> None:
     if offer is None:
         return
     rated = review["chosen"].get("load_capacitance_pf", offer.load.span.mid if offer.load.stated else None)
-    pull = answers.load_pull(review, bench, rated, series=offer.series)
+    pull = review_shown.load_pull(review, bench, rated, series=offer.series)
     if pull is None:
         return
     session.section("ppm against load")
@@ -192,73 +150,3 @@ def load_chart(review: answers.Row, bench: Bench) -> None:
     st.vega_lite_chart(spec=chart, theme=None, width="content", key="load", alt=alt)
     with st.expander("The same as a table"):
         st.dataframe(charts.load_table(pull), hide_index=True, key="load_table", alt="Shift at nine loads")
-
-
-def review_view() -> None:
-    if (bench := ready()) is None:
-        return
-    result = session.ranking(bench)
-    if result is None:
-        return
-    if not result["rows"]:
-        session.title(f"{pieces.plain(answers.choose_heading(result, bench))}")
-        others(result)
-        return
-    rows = dict(zip(answers.identities(result["rows"]), result["rows"], strict=True))
-    if st.session_state.chosen not in rows:
-        st.session_state.chosen = next(iter(rows))
-    review = review_of(rows[st.session_state.chosen], bench)
-    left, right = st.columns([1.7, 1], gap="large")
-    with right:
-        choose_part(rows)
-    if review is None:
-        return
-    with left:
-        judged(review, bench)
-    with right:
-        to_do(review)
-
-
-def choose_part(rows: dict[answers.Identity, dict[str, Any]]) -> None:
-    def name(place: answers.Identity) -> str:
-        return answers.place_heading(rows[place])
-
-    st.session_state.review_part = st.session_state.chosen
-    st.selectbox("Part under review", list(rows), format_func=name, key="review_part", on_change=choose)
-
-
-def choose() -> None:
-    st.session_state.chosen = st.session_state.review_part
-
-
-def judged(review: answers.Row, bench: Bench) -> None:
-    session.title(f"{pieces.plain(answers.review_heading(review))}")
-    st.markdown(pieces.plain(answers.short_of(review)))
-    st.html(pieces.judged_html(answers.judged(review, bench)))
-    session.section("Every number")
-    st.markdown(
-        ":gray[:small[Press a number to see how it was reached. Low and high are its ends, not worse and better.]]"
-    )
-    st.html(pieces.numbers_html(answers.numbers(review, bench)))
-
-
-def to_do(review: answers.Row) -> None:
-    """What uses it up, what would help, whom to ask, and what to heed."""
-    if questions := answers.question_lines(review):
-        session.section("Ask the maker")
-        for question in questions:
-            st.markdown(f"- {pieces.plain(question)}")
-    if lines := answers.advice_lines(review):
-        session.section("Load capacitors and what else would help")
-        for line in lines:
-            st.markdown(f"- {line}")
-    for key, name in answers.CONTRIBUTORS.items():
-        if shares := answers.shares(review, key):
-            session.section(f"{name}")
-            st.html(pieces.shares_html(shares))
-    session.section("Before it is signed")
-    for line in answers.open_lines(review):
-        st.markdown(f"- {pieces.plain(line)}")
-    for caution in CAUTIONS:
-        st.markdown(f"- {caution}")
-    st.markdown(f":gray[:small[{PRIVACY}]]")

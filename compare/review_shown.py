@@ -1,0 +1,206 @@
+"""What Review shows: the heading, verdict by requirement, every number with how it was reached, and what is open."""
+
+from __future__ import annotations
+
+from dataclasses import dataclass
+
+from compare.answers import (
+    ENDS,
+    FIGURES,
+    FULL_NAMES,
+    MARKS,
+    Figure,
+    Row,
+    missing_name,
+    row_name,
+    tightest_text,
+    times,
+    told,
+    verdict,
+    worst_said,
+)
+from compare.bench import Bench
+from compare.charts import LoadPull
+from compare.circuit_text import ppm_limits
+from compare.figures import CLOCK_BELOW_MHZ, SECONDS_A_DAY_PER_PPM, number, scale, signed, with_unit
+from compare.shown import NAMES
+from extract.model import FIELD_NAMES
+
+
+@dataclass(frozen=True)
+class Judged:
+    """One requirement of a review, as shown: worst case against what was asked, times over, verdict, and why."""
+
+    requirement: str
+    worst: str
+    times_over: str
+    verdict: str
+    why: str
+
+    @property
+    def meets(self) -> bool:
+        return self.verdict == verdict("meets")
+
+
+def judged(review: Row, bench: Bench) -> list[Judged]:
+    """Verdict by requirement, one row for each reason."""
+    rows = []
+    for reason in review["reasons"]:
+        about, has_slack = reason["about"], reason["about"] in review["slack"] and reason["about"] in FIGURES
+        said = worst_said(review, about, bench) if has_slack else ""
+        over = times(review["slack"][about]) if has_slack else ""
+        rows.append(
+            Judged(FULL_NAMES.get(about, about), said, over, verdict(reason["verdict"]), told(reason["message"]))
+        )
+    return rows
+
+
+def review_heading(review: Row) -> str:
+    """`▲ MRB25-260-08H meets what is asked`, `, as read so far` while a reading of it waits for a look."""
+    name = row_name(review)
+    words = {
+        "meets": f"{name} meets what is asked",
+        "falls short": f"{name} falls short",
+        "cannot tell": f"{name}: cannot tell",
+    }[review["verdict"]]
+    return f"{MARKS[review['verdict']]} {words}" + (", as read so far" if review["to_check"] else "")
+
+
+def short_of(review: Row) -> str:
+    """What it falls short in or cannot be told of, in one sentence; "" where it meets."""
+    about = [
+        FULL_NAMES.get(reason["about"], reason["about"])
+        for reason in review["reasons"]
+        if reason["verdict"] == review["verdict"]
+    ]
+    if review["verdict"] == "meets":
+        least = tightest_text(review)
+        return f"Tightest: {least}." if least else ""
+    return f"{'Short' if review['verdict'] == 'falls short' else 'Open'}: {'; '.join(dict.fromkeys(about))}."
+
+
+@dataclass(frozen=True)
+class Number:
+    """One number of a review, ready to be shown: its three values, how we have it and how it was reached."""
+
+    name: str
+    low: str
+    mid: str
+    high: str
+    unit: str
+    basis: str
+    how: str
+
+
+def numbers(review: Row, bench: Bench) -> list[Number]:
+    """Every number that the review has, in the order of FIGURES; of a clock the error in seconds a day as well."""
+    shown = [_number(review[key], figure) for key, figure in FIGURES.items() if key in review]
+    if bench.requirement.frequency_mhz < CLOCK_BELOW_MHZ and "total_ppm" in review:
+        total = review["total_ppm"]
+        daily = {end: None if total[end] is None else total[end] * SECONDS_A_DAY_PER_PPM for end in ENDS}
+        how = f"frequency error in ppm times {SECONDS_A_DAY_PER_PPM} s a day"
+        day = {**daily, "how": how, "basis": total["basis"]}
+        named = Figure("The same for a clock", "s a day", sign=True)
+        shown.insert(1 + [one.name for one in shown].index(FIGURES["total_ppm"].name), _number(day, named))
+    return shown
+
+
+def _number(figure: Row, shown: Figure) -> Number:
+    factor, unit = scale(shown.unit, *(figure[end] for end in ENDS))
+
+    def end(name: str) -> str:
+        if figure[name] is None:
+            return "—"
+        value = figure[name] * factor
+        return signed(value, shown.digits) if shown.sign else number(value, shown.digits)
+
+    basis = figure["basis"] or ""
+    said = "∴ estimated" if basis == "estimated" else basis
+    return Number(shown.name, end("low"), end("mid"), end("high"), unit, said, told(figure["how"] or ""))
+
+
+def load_pull(review: Row, bench: Bench, rated_pf: float | None, *, series: bool) -> LoadPull | None:
+    """What the chart of ppm against load needs, where C1, C0 and the loads are known; None otherwise.
+
+    C0 comes back from fs and fp, whose distance it sets in the equivalent circuit without losses: C1/C0 = (fp/fs)² - 1.
+    """
+    c1, load, shift, total = (
+        review[key] for key in ("motional_capacitance_ff", "circuit_load_pf", "load_error_ppm", "total_ppm")
+    )
+    fs, fp = review["series_resonance_mhz"]["mid"], review["parallel_resonance_mhz"]["mid"]
+    needed = (c1["mid"], load["low"], load["mid"], load["high"], fs, fp)
+    if any(value is None for value in needed) or not fp > fs or (rated_pf is None and not series):
+        return None
+    c0_pf = c1["mid"] * 1e-3 / ((fp / fs) ** 2 - 1)
+    room_low, room_high = _room(total, shift, bench)
+    return LoadPull(
+        motional_capacitance_ff=c1["mid"],
+        shunt_capacitance_pf=c0_pf,
+        rated_pf=None if series else rated_pf,
+        low_pf=load["low"],
+        mid_pf=load["mid"],
+        high_pf=load["high"],
+        room_low_ppm=room_low,
+        room_high_ppm=room_high,
+    )
+
+
+def _room(total: Row, shift: Row, bench: Bench) -> tuple[float | None, float | None]:
+    """What the other causes leave of the limits for the load, low and high."""
+    limits = ppm_limits(bench)
+    if limits is None or bench.requirement.trim_step_ppm is not None:
+        return None, None
+    rooms = [
+        limit - (total[end] - shift[end]) if total[end] is not None and shift[end] is not None else None
+        for limit, end in zip(limits, ("low", "high"), strict=True)
+    ]
+    return rooms[0], rooms[1]
+
+
+CONTRIBUTORS = {
+    "total_ppm": "What uses the ppm up",
+    "margin": "What the margin hangs on",
+    "drive_level_uw": "What the drive hangs on",
+}
+
+
+@dataclass(frozen=True)
+class Share:
+    """What one input adds to a worst case, and how large that is beside the greatest (0 to 1)."""
+
+    name: str
+    adds: str
+    share: float
+
+
+def shares(review: Row, key: str, most: int = 6) -> list[Share]:
+    """What adds to the worst case of one number, greatest first, without those below a fiftieth of the greatest."""
+    rows = review.get("contributors", {}).get(key) or ()
+    greatest = max((abs(row["adds"]) for row in rows), default=0.0)
+    unit = FIGURES[key].unit
+    return [
+        Share(_input_name(row["input"]), with_unit(number(abs(row["adds"])), unit), abs(row["adds"]) / greatest)
+        for row in rows[:most]
+        if greatest and abs(row["adds"]) >= greatest / 50
+    ]
+
+
+def _input_name(key: str) -> str:
+    if key in FIELD_NAMES or "." in key:
+        return missing_name(key)
+    named = key.replace("condition ", "corner: ")
+    return named[:1].upper() + named[1:]
+
+
+def _sentence(message: str) -> str:
+    text = told(message).rstrip(".")
+    return f"{text[:1].upper()}{text[1:]}."
+
+
+def open_lines(review: Row) -> list[str]:
+    """What is not settled: readings that wait for a look, and what is missing."""
+    remarks = [_sentence(remark["message"]) for remark in review.get("remarks", ())]
+    if "measured_message" in review:
+        remarks.append(_sentence(review["measured_message"]))
+    looks = [f"☞ {NAMES.get(name, name)}: the reading waits for a look on Sheets." for name in review["to_check"]]
+    return remarks + looks + [f"◇ {missing_name(key)}: not known." for key in review["missing"]]
