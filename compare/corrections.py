@@ -1,7 +1,7 @@
 """What a person changed in the readings of a sheet: the sheet itself is never touched, each correction lies beside it.
 
 A correction names its reading by the sheet's key and by places that count from 0: of the part on the sheet as read, and
-of the reading in that part. Added readings follow on behind those of the sheet. The last correction of a reading counts.
+of the reading in that part. Added readings follow on behind those of the sheet. The last correction of one counts.
 """
 
 from __future__ import annotations

@@ -4,7 +4,7 @@ from __future__ import annotations
 
 import hashlib
 import sys
-from collections.abc import Iterable, Iterator
+from collections.abc import Callable, Iterable, Iterator
 from dataclasses import dataclass, field
 from pathlib import Path
 
@@ -83,6 +83,16 @@ def single_names(names: Iterable[str]) -> tuple[list[str], list[Note]]:
     return [one.name if one.part is None else f"{one.name}#{one.part}" for one in plan.files], plan.notes
 
 
+def read_single(name: str, read: Callable[[bytes, str], SpecSheet | None]) -> SpecSheet | None:
+    """The sheet that one of `single_names` stands for, by `read`; None where that gives none."""
+    plan = _Plan()
+    _plan_for(name, plan)
+    named = plan.files[0]
+    data = _bytes_of(named.name)
+    sheet = data if isinstance(data, SpecSheet) else read(data, named.name)
+    return sheet if sheet is None or named.part is None else _only(sheet, named.part)
+
+
 def read_bytes(data: bytes, name: str, progress: Progress | None = None) -> SpecSheet:
     """Read one sheet; a fault of the program itself becomes a note, so that the other sheets are still done."""
     try:
@@ -131,15 +141,18 @@ def _visible_files(folder: Path) -> Iterator[Path]:
 
 
 def _read_one(name: str, progress: Progress | None) -> SpecSheet:
-    if name == STANDARD_INPUT:
-        return read_bytes(sys.stdin.buffer.read(), name, progress)
+    data = sys.stdin.buffer.read() if name == STANDARD_INPUT else _bytes_of(name)
+    return data if isinstance(data, SpecSheet) else read_bytes(data, name, progress)
+
+
+def _bytes_of(name: str) -> bytes | SpecSheet:
+    """The file's bytes, or a sheet without parts that says why there are none."""
     try:
-        data = Path(name).read_bytes()
+        return Path(name).read_bytes()
     except FileNotFoundError:
         return _failed(name, "no such file; check the name")
     except OSError as fault:
         return _failed(name, f"cannot be opened: {(fault.strerror or str(fault)).lower()}")
-    return read_bytes(data, name, progress)
 
 
 def _failed(name: str, message: str, sha256: str | None = None) -> SpecSheet:

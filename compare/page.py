@@ -8,6 +8,7 @@ from compare import circuit_text, drawing, pieces, shown
 from compare import page_session as session
 from compare.page_choose import choose_view
 from compare.page_circuit import circuit_view
+from compare.page_reading import told_of_reading
 from compare.page_review import review_view
 from compare.page_sheets import sheets_view
 
@@ -38,10 +39,14 @@ def main() -> None:
     terms = st.empty()
     if (bench := session.desk().bench) is not None:
         terms.html(pieces.terms_html(circuit_text.terms(bench)))
-    session.told_of_reading()
-    current.run()
-    keys(list(views))
-    session.read_next()
+    # Places of their own, filled in this order: else all that follows would shift while sheets are read.
+    reading, body, foot = st.container(), st.container(), st.container()
+    with reading:
+        told_of_reading()
+    with foot:
+        keys(list(views))
+    with body:
+        current.run()
 
 
 main()

@@ -2,6 +2,8 @@
 
 from __future__ import annotations
 
+from dataclasses import replace
+
 import streamlit as st
 
 from compare import circuit_text, drawing, pieces, typed
@@ -63,7 +65,9 @@ def bench_files() -> None:
             st.rerun()
         text = session.desk().bench_text
         st.download_button("Save bench file", text, "bench.toml", key="save_bench", disabled=not text)
-        st.button("Clear", key="clear_bench", on_click=session.set_desk, args=(Desk(),), disabled=not text)
+        st.button(
+            "Clear", key="clear_bench", on_click=session.set_desk, args=(Desk(), "Circuit cleared"), disabled=not text
+        )
     if fault := st.session_state.get("bench_fault"):
         st.html(pieces.fault_html(f"The bench file is not used. {fault}"))
 
@@ -95,21 +99,22 @@ def form(group: str, number: int | None = None) -> None:
 def corners() -> None:
     session.section("Corners: supply and temperature")
     st.markdown(":gray[:small[Each is one more corner; what it does not give is as in the circuit.]]")
-    for number in range(st.session_state.conditions):
+    for number in range(session.desk().conditions):
         form("condition", number)
     with st.container(horizontal=True, gap="small"):
         if st.button("Add a corner", key="add_corner"):
-            st.session_state.conditions += 1
+            before = session.desk()
+            session.set_desk(replace(before, conditions=before.conditions + 1), "Corner added")
             st.rerun()
-        if st.session_state.conditions and st.button("Remove the last", key="drop_corner"):
-            session.set_desk(session.desk().without_last_condition())
+        if session.desk().conditions and st.button("Remove the last", key="drop_corner"):
+            session.set_desk(session.desk().without_last_condition(), "Corner removed")
             st.rerun()
 
 
 def field(key: str) -> None:
     """One field of the bench, with what is wrong with it under it."""
     asked, widget = field_of(key), f"field_{key.replace('.', '_')}"
-    text = st.session_state.typed.get(key, "")
+    text = session.desk().typed.get(key, "")
     if asked.kind in ("choice", "use"):
         options = (
             dict(asked.options)
@@ -142,17 +147,14 @@ def field(key: str) -> None:
 def put(key: str, widget: str) -> None:
     """Take over what a person typed, and show it back as it was understood."""
     value = st.session_state[widget]
-    st.session_state.typed[key] = {True: "true", False: ""}[value] if isinstance(value, bool) else value
-    understood = session.desk().understood.get(key)
-    if understood is not None and understood.value is not None:
-        settle(key, typed.shown(understood.value, field_of(key)))
+    if isinstance(value, bool):
+        session.put_field(key, "true" if value else "")
+    else:
+        settle(key, value)
 
 
 def settle(key: str, text: str, *, keep: bool = False) -> None:
-    st.session_state.typed[key] = text
-    st.session_state[f"field_{key.replace('.', '_')}"] = text
-    if keep:
-        st.session_state.kept |= {(key, text)}
+    st.session_state[f"field_{key.replace('.', '_')}"] = session.put_field(key, text, kept=keep)
 
 
 def answer(key: str) -> None:
@@ -165,5 +167,5 @@ def answer(key: str) -> None:
             meant = typed.shown(said.instead, field_of(key))
             st.button(f"Use {meant}", key=f"use_{key}", on_click=settle, args=(key, meant))
         if said.doubtful:
-            text = st.session_state.typed[key]
+            text = session.desk().typed[key]
             st.button("Keep", key=f"keep_{key}", on_click=settle, args=(key, text), kwargs={"keep": True})

@@ -1,82 +1,234 @@
-"""What the page keeps for one person's session, and what it keeps for everybody by content."""
+"""What the page keeps for one person's session: the work, its way back, where it is saved, and what is being read."""
 
 from __future__ import annotations
 
-import hashlib
+import getpass
 import sys
-import traceback
-from collections.abc import Callable, Sequence
-from dataclasses import dataclass
+from collections.abc import Sequence
+from dataclasses import replace
 from pathlib import Path
 from typing import Any
 
 import streamlit as st
 
-from compare import evidence, pieces
-from compare.bench import Bench, BenchError
-from compare.desk import NO_EXAMPLE, Desk, desk_from_bench, orchard_example
-from compare.intake import read_bytes, read_sheets, single_names
+from compare import background, keeping, typed
+from compare.background import File, Reader
+from compare.bench import BenchError
+from compare.desk import NO_EXAMPLE, Desk, desk_from_bench, field_of, orchard_example
+from compare.folio import SUFFIX, FolioError, read_folio
+from compare.intake import single_names
+from compare.page_results import guarded, key_of, ranked, ranking, reviewed, sheets
 from compare.palette import Palette, palette_of
 from compare.serve import read_script_arguments
-from extract.model import Reading, SpecSheet
+from compare.work import History, Work, with_sheets
 
+__all__ = ["guarded", "key_of", "ranked", "ranking", "reviewed", "sheets"]
 
-@dataclass(frozen=True)
-class Opened:
-    """A sheet that is open, with its bytes where it did not come by name."""
-
-    sheet: SpecSheet
-    data: bytes | None = None
+KEPT_WHERE = "Your work is not saved: {fault}. Save it as a work file before you close the page."
 
 
 def start() -> None:
-    """Fill the state once, from what the command line gave."""
-    if "opened" in st.session_state:
-        return
-    st.session_state.update(opened=[], pending=[], asked_for=0, inbox=0, chosen=None, said=[])
-    set_desk(Desk())
-    bench, names = read_script_arguments(sys.argv[1:])
+    """Fill the state once: from the work that the address names, else from what the command line gave."""
+    state = st.session_state
+    if "work" not in state:
+        state.update(work=Work(), history=History(), saved="", inbox=0, chosen=None, said=[], reader=Reader())
+        state.ident = str(st.query_params.get("work", ""))
+        if not recall(state.ident):
+            state.ident = keeping.new_ident()
+            open_named(sys.argv[1:])
+    # Going to another view empties the address.
+    if st.query_params.get("work") != state.ident:
+        st.query_params["work"] = state.ident
+    take_read()
+
+
+def open_named(arguments: Sequence[str]) -> None:
+    """Open what the command line named: a bench, sheets, and at most one work file."""
+    bench, names = read_script_arguments(arguments)
+    files, notes = single_names([name for name in names if not name.endswith(SUFFIX)])
+    # What a folder holds beside sheets is no news to the person who named it.
+    st.session_state.said = [note.message for note in notes if note.level != "info"]
+    for name in (name for name in names if name.endswith(SUFFIX)):
+        try:
+            open_folio(Path(name).read_bytes(), name)
+        except OSError as fault:
+            say(f"{name}: cannot be opened: {(fault.strerror or str(fault)).lower()}")
     if bench is not None:
         try:
             open_bench(Path(bench).read_text(encoding="utf-8-sig"), bench)
         except (OSError, UnicodeDecodeError) as fault:
             st.session_state.bench_fault = f"{bench}: cannot be read: {fault}"
-    files, notes = single_names(names)
     open_sheets([(name, None) for name in files])
-    # What a folder holds beside sheets is no news to the person who named it.
-    st.session_state.said = [note.message for note in notes if note.level != "info"]
+
+
+def say(sentence: str) -> None:
+    """Something to be told once, at the head of Sheets."""
+    st.session_state.said = [*st.session_state.said, sentence]
+
+
+def work() -> Work:
+    held: Work = st.session_state.work
+    return held
+
+
+def history() -> History:
+    held: History = st.session_state.history
+    return held
+
+
+def change(new: Work, said: str) -> None:
+    """Make `new` the work. `said` is what was done, as `Undo` will name it: `Shunt C0 of ABX-26 corrected`."""
+    old = work()
+    st.session_state.history = history().after(said, old, new)
+    remember(new)
+
+
+def remember(new: Work) -> None:
+    """Make `new` the work, with no step to undo: what is open or selected."""
+    if new == work() and st.session_state.saved:
+        return
+    st.session_state.work = new
+    save()
+
+
+def undo() -> None:
+    """Take the last step back."""
+    back, earlier = history().undone(work())
+    st.session_state.history = earlier
+    forget_fields()
+    remember(back)
+
+
+def save() -> None:
+    """Write the work to this machine; where that cannot be, it is said and the page goes on."""
+    state = st.session_state
+    try:
+        state.saved, state.save_fault = keeping.keep(state.ident, work(), history()), ""
+    except OSError as fault:
+        state.save_fault = KEPT_WHERE.format(fault=f"{keeping.state_folder()}: {fault.strerror or fault}")
+
+
+def recall(ident: str) -> bool:
+    """Take up the work that this machine keeps under `ident`; False where there is none that can be read."""
+    try:
+        found = keeping.recall(ident)
+    except FolioError as fault:
+        say(str(fault))
+        return False
+    if found is None:
+        return False
+    st.session_state.update(work=found.work, history=found.history, ident=ident, saved=keeping.saved_at(ident))
+    forget_fields()
+    return True
+
+
+def open_folio(data: bytes, name: str) -> bool:
+    """Take up the work of a file, kept apart from the one that was open; False where the file cannot be used."""
+    try:
+        found = read_folio(data, name)
+    except FolioError as fault:
+        say(str(fault))
+        return False
+    state = st.session_state
+    state.update(work=found.work, history=found.history, ident=keeping.new_ident(), chosen=None, said=[*found.said])
+    forget_fields()
+    save()
+    return True
+
+
+def forget() -> None:
+    """Remove the work from this machine, and begin with an empty one."""
+    state = st.session_state
+    state.reader.stop()
+    state.reader.wait(5)
+    try:
+        keeping.forget(state.ident)
+    except OSError as fault:
+        say(f"Not everything could be removed: {fault}")
+    state.update(work=Work(), history=History(), ident=keeping.new_ident(), saved="", chosen=None, reader=Reader())
+    state.inbox += 1
+    forget_fields()
+
+
+def slot(name: str) -> Any:
+    return work().slot(name)
+
+
+def put_slot(name: str, value: Any, said: str = "") -> None:
+    """Keep `value` under `name`; a step to undo where `said` names it."""
+    new = work().with_slot(name, value)
+    change(new, said) if said else remember(new)
+
+
+def person() -> str:
+    """The name that goes with corrections and decisions: as set on the page, else the one this machine knows."""
+    try:
+        login = getpass.getuser()
+    except (OSError, KeyError):
+        login = ""
+    return str(st.session_state.get("person") or login or "not named")
+
+
+def today() -> str:
+    """The time now, as it goes with corrections and decisions."""
+    return keeping.now()
 
 
 def desk() -> Desk:
-    state = st.session_state
-    return Desk(dict(state.typed), state.kept, state.carried, state.conditions)
+    return work().desk
 
 
-def set_desk(new: Desk) -> None:
-    """Put a desk into the state; the fields are drawn afresh from it."""
+def set_desk(new: Desk, said: str = "Circuit set") -> None:
+    """Put a desk into the work; the fields are drawn afresh from it."""
+    forget_fields()
+    change(work().with_desk(new), said)
+
+
+def forget_fields() -> None:
+    """Let the fields be drawn afresh from the work."""
     for key in [key for key in st.session_state if str(key).startswith("field_")]:
         del st.session_state[key]
-    st.session_state.update(typed=dict(new.typed), kept=new.kept, carried=new.carried, conditions=new.conditions)
+
+
+def put_field(key: str, text: str, *, kept: bool = False) -> str:
+    """Take over what a person typed into a field of the bench; returns it as the field shows it back.
+
+    `kept`: the value is unlikely, and a person has said that it is so.
+    """
+    before = desk()
+    new = _with_field(before, key, text, kept=kept)
+    said = new.understood.get(key)
+    if said is not None and said.value is not None:
+        text = typed.shown(said.value, field_of(key))
+        new = _with_field(new, key, text, kept=kept)
+    if new != before:
+        change(work().with_desk(new), f"{field_of(key).label}: {text.strip() or 'blank'}")
+    return text
+
+
+def _with_field(before: Desk, key: str, text: str, *, kept: bool) -> Desk:
+    return replace(before, typed={**before.typed, key: text}, kept=before.kept | ({(key, text)} if kept else set()))
 
 
 def open_bench(text: str, name: str) -> None:
     try:
-        set_desk(desk_from_bench(text, name))
+        set_desk(desk_from_bench(text, name), f"{name} opened")
     except BenchError as wrong:
         st.session_state.bench_fault = str(wrong)
     else:
         st.session_state.bench_fault = ""
 
 
-def open_sheets(files: Sequence[tuple[str, bytes | None]]) -> None:
-    """Queue files (by name where there are no bytes); `read_next` reads them one by one, each usable at once."""
-    state = st.session_state
-    state.pending = [*state.pending, *files]
-    state.asked_for = state.asked_for + len(files) if len(state.pending) > len(files) else len(files)
+def open_sheets(files: Sequence[File]) -> None:
+    """Have files read (by name where there are no bytes); each can be used as soon as it is."""
+    reader().add(files)
+    if files:
+        reader().wait(background.PATIENCE_S)
+        take_read()
 
 
 def open_example() -> None:
-    """Queue the orchard example's sheets, and take its first bench where no circuit is set."""
+    """Have the orchard example's sheets read, and take its first bench where no circuit is set."""
     example = orchard_example()
     if example is None:
         st.session_state.said = [NO_EXAMPLE]
@@ -87,120 +239,19 @@ def open_example() -> None:
     open_sheets([(path.name, path.read_bytes()) for path in example.sheets])
 
 
-def told_of_reading() -> None:
-    """Which sheet is being read, and the button that stops it."""
-    state = st.session_state
-    # A place of its own even when empty: else all that follows would shift while sheets are read.
-    place = st.empty()
-    if not state.pending:
-        return
-    at = state.asked_for - len(state.pending) + 1
-    with place.container(horizontal=True, vertical_alignment="center", gap="small"):
-        st.markdown(f"Reading {at} of {state.asked_for}: {pieces.plain(state.pending[0][0])} …", width="content")
-        st.button("Stop", key="stop_reading", on_click=stop_reading)
+def reader() -> Reader:
+    held: Reader = st.session_state.reader
+    return held
 
 
-def stop_reading() -> None:
-    state = st.session_state
-    read = state.asked_for - len(state.pending)
-    state.said = [f"Stopped. {read} of {state.asked_for} were read; open the rest again when you want them."]
-    state.pending = []
-
-
-def read_next() -> None:
-    """Read one sheet of the queue and draw again. It comes last in a run, so that the page stands meanwhile."""
-    state = st.session_state
-    if not state.pending:
-        return
-    name, data = state.pending[0]
-    sheet = named_sheet(name, stamp(name)) if data is None else sheet_of(hashlib.sha256(data).hexdigest(), name, data)
-    if identity(sheet) not in [identity(one.sheet) for one in state.opened]:
-        state.opened = [*state.opened, Opened(sheet, data)]
-    state.pending = state.pending[1:]
-    st.rerun()
-
-
-def identity(sheet: SpecSheet) -> tuple[str, ...]:
-    """What tells sheets apart: name, content, and the parts that were asked for."""
-    return sheet.file, sheet.sha256 or "", *(part.part_number or "" for part in sheet.parts)
-
-
-def sheets() -> list[SpecSheet]:
-    return [one.sheet for one in st.session_state.opened]
+def take_read() -> None:
+    """Put the sheets that were read meanwhile into the work."""
+    if new := reader().take():
+        remember(replace(work(), sheets=with_sheets(work().sheets, new)))
 
 
 def palette() -> Palette:
     return palette_of(st.context.theme.type)
-
-
-@st.cache_resource(max_entries=256, show_spinner=False)
-def sheet_of(sha256: str, name: str, _data: bytes) -> SpecSheet:  # noqa: ARG001
-    return read_bytes(_data, name)
-
-
-@st.cache_resource(max_entries=256, show_spinner=False)
-def named_sheet(name: str, stamped: tuple[int, int] | None) -> SpecSheet:  # noqa: ARG001
-    """A sheet by its name; `stamped` makes a changed file be read again."""
-    return read_sheets([name]).sheets[0]
-
-
-def stamp(name: str) -> tuple[int, int] | None:
-    """When the file of a name was changed and how large it is; None where there is none."""
-    for candidate in (name, name.rpartition("#")[0]):
-        try:
-            found = Path(candidate).stat()
-        except OSError:
-            continue
-        return found.st_mtime_ns, found.st_size
-    return None
-
-
-@st.cache_resource(max_entries=16, show_spinner="Ranking …")
-def ranked(key: str, _sheets: Sequence[SpecSheet], _bench: Bench) -> dict[str, Any]:  # noqa: ARG001
-    from compare.ranking import rank
-
-    result: dict[str, Any] = rank(_sheets, _bench)
-    return result
-
-
-@st.cache_resource(max_entries=64, show_spinner="Working the part out …")
-def reviewed(key: str, _sheets: Sequence[SpecSheet], _bench: Bench) -> dict[str, Any]:  # noqa: ARG001
-    from compare.review import review
-
-    result: dict[str, Any] = review(_sheets, _bench)
-    return result
-
-
-@st.cache_resource(max_entries=64, show_spinner=False)
-def picture(sha256: str, where: str, _one: Opened, _reading: Reading) -> Any:  # noqa: ARG001
-    data = _one.data if _one.data is not None else evidence.sheet_bytes(_one.sheet)
-    return None if data is None else evidence.page_picture(data, _one.sheet, _reading.where)
-
-
-def ranking(bench: Bench) -> dict[str, Any] | None:
-    """All that is open, ranked; None where that went wrong, which has been told then."""
-    every = sheets()
-    return guarded("ranking", lambda: ranked(key_of(bench, every), every, bench))
-
-
-def key_of(bench: Bench, of: Sequence[SpecSheet]) -> str:
-    """A key that changes with the bench or with any sheet."""
-    told = [bench.to_toml()]
-    for sheet in of:
-        told += [sheet.file, str(sheet.sha256), *(part.part_number or "" for part in sheet.parts)]
-    return hashlib.sha256("\n".join(told).encode()).hexdigest()
-
-
-def guarded(what: str, work: Callable[[], dict[str, Any]]) -> dict[str, Any] | None:
-    """Do `work`; a fault of ours is told with what happened to save, and the person's work is kept."""
-    try:
-        return work()
-    except Exception:
-        traceback.print_exc()
-        st.error(f"Something went wrong while {what}. Your work is kept.")
-        st.button("Try again", key="again")
-        st.download_button("Save what happened", traceback.format_exc(), "what_happened.txt", key="happened")
-        return None
 
 
 def first_row(row: int) -> Any:

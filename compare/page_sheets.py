@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+from dataclasses import replace
 from typing import Any
 
 import streamlit as st
@@ -9,7 +10,8 @@ import streamlit as st
 from compare import page_session as session
 from compare import pieces, shown
 from compare.desk import NO_SHEETS, PRIVACY
-from compare.page_session import Opened
+from compare.page_results import picture
+from compare.work import OpenSheet
 from extract.model import Reading
 
 
@@ -53,13 +55,13 @@ def take_sheets() -> None:
         st.markdown(f":small[{pieces.plain(said)}]")
 
 
-def sheet_list() -> Opened | None:
+def sheet_list() -> OpenSheet | None:
     """One line a sheet; returns the selected one."""
-    every = st.session_state.opened
+    every = session.work().sheets
     if not every:
         return None
     session.section(f"{shown.heading(session.sheets())}")
-    identities = [session.identity(one.sheet) for one in every]
+    identities = [one.key for one in every]
     before = st.session_state.get("sheet")
     start = identities.index(before) if before in identities else 0
     picked = st.dataframe(
@@ -76,12 +78,13 @@ def sheet_list() -> Opened | None:
             "Outcome": st.column_config.TextColumn(width=90),
         },
     )
-    chosen: Opened = every[session.selected_row(picked, len(every))]
-    st.session_state.sheet = session.identity(chosen.sheet)
+    chosen: OpenSheet = every[session.selected_row(picked, len(every))]
+    st.session_state.sheet = chosen.key
     for said in shown.unread([one.sheet for one in every if one is not chosen]):
         st.markdown(f":small[{pieces.plain(said)}]")
     if st.button("Close this sheet", key="close_sheet"):
-        st.session_state.opened = [one for one in every if one is not chosen]
+        left = tuple(one for one in every if one is not chosen)
+        session.change(replace(session.work(), sheets=left), f"{shown.short_name(chosen.sheet.file)} closed")
         st.rerun()
     return chosen
 
@@ -91,7 +94,7 @@ def fitting(rows: int, most: int) -> Any:
     return "content" if rows <= most else 36 * most
 
 
-def part_readings(one: Opened) -> Reading | None:
+def part_readings(one: OpenSheet) -> Reading | None:
     """The readings of a sheet's part, those to look at first; returns the selected one."""
     sheet = one.sheet
     if not sheet.parts:
@@ -140,7 +143,7 @@ def part_readings(one: Opened) -> Reading | None:
     return shown.in_order(part)[session.selected_row(picked, len(part.readings))]
 
 
-def stands(one: Opened, reading: Reading) -> None:
+def stands(one: OpenSheet, reading: Reading) -> None:
     """Where the selected reading stands: the words printed there, and the page with a box round them."""
     told = shown.evidence(reading)
     session.section(f"{pieces.plain(told.heading)}")
@@ -149,7 +152,7 @@ def stands(one: Opened, reading: Reading) -> None:
         st.html(pieces.look_html(told.look))
     st.markdown(f":gray[:small[Printed, {pieces.plain(told.stands)}:]]")
     st.html(pieces.printed_html(told.printed))
-    pictured = session.picture(one.sheet.sha256 or one.sheet.file, reading.where.model_dump_json(), one, reading)
+    pictured = picture(one.sheet.sha256 or one.sheet.file, reading.where.model_dump_json(), one, reading)
     if pictured is None:
         return
     if pictured.close_up is not None:

@@ -225,7 +225,7 @@ def test_what_goes_wrong_in_ranking_is_told_and_the_work_kept(page, monkeypatch)
     bench = hand_made.BENCH_TEXT.replace("margin = 5.0", "margin = 5.125")
     to(open_bench(drop(page, ("offer.txt", hand_made.MAIL)), bench), "choose")
     assert [one.value for one in page.error] == ["Something went wrong while ranking. Your work is kept."]
-    assert len(page.session_state.opened) == 1
+    assert len(page.session_state.work.sheets) == 1
 
 
 def test_bench_and_sheets_of_the_command_line_are_open_at_once(monkeypatch, tmp_path):

@@ -1,0 +1,157 @@
+"""Where work is kept between two looks at the page, so that a reload loses nothing, and how it is forgotten.
+
+A kept work is a folder of its own with the members of a folio file (folio.py), written one by one: what has not changed
+is not written again. It lies in the person's own folder for programs' state, readable by nobody else.
+"""
+
+from __future__ import annotations
+
+import json
+import os
+import re
+import secrets
+import shutil
+import sys
+import tempfile
+from collections.abc import Mapping
+from dataclasses import dataclass
+from datetime import datetime
+from pathlib import Path
+
+from compare.folio import FolioError, Reopened, head, history_json, json_bytes, reopen, sheet_bytes, sheet_member
+from compare.folio import work_json as as_json
+from compare.work import History, OpenSheet, Work
+
+IDENT = re.compile(r"[0-9a-f]{16}")
+MOST_LISTED = 6
+
+
+def state_folder(environment: Mapping[str, str] = os.environ, platform: str = sys.platform) -> Path:
+    """The folder for all kept work: where the system has programs keep their state."""
+    home = Path.home()
+    if platform == "win32":
+        base = Path(environment.get("LOCALAPPDATA") or home / "AppData" / "Local")
+    elif platform == "darwin":
+        base = home / "Library" / "Application Support"
+    else:
+        given = environment.get("XDG_STATE_HOME", "")
+        base = Path(given) if Path(given).is_absolute() else home / ".local" / "state"
+    return base / "quartzfolio"
+
+
+def new_ident() -> str:
+    """A name for a work that nobody can guess."""
+    return secrets.token_hex(8)
+
+
+def now() -> str:
+    """The time here, to the minute, with its offset: `2031-04-02T14:32+02:00`."""
+    return datetime.now().astimezone().isoformat(timespec="minutes")
+
+
+@dataclass(frozen=True)
+class Kept:
+    """A work that lies on this machine: its name in the address, what it is called, when it was saved, its sheets."""
+
+    ident: str
+    name: str
+    saved: str
+    sheets: int
+
+
+def folder_of(ident: str) -> Path:
+    """The folder of one work; ValueError where `ident` is none that `new_ident` gives."""
+    if not IDENT.fullmatch(ident):
+        raise ValueError(f"{ident!r} names no work")
+    return state_folder() / ident
+
+
+def keep(ident: str, work: Work, history: History) -> str:
+    """Write what changed; returns when. OSError where the folder cannot be written."""
+    folder = folder_of(ident)
+    (folder / "sheets").mkdir(mode=0o700, parents=True, exist_ok=True)
+    (folder / "files").mkdir(mode=0o700, exist_ok=True)
+    for one in _every_sheet(work, history):
+        keep_sheet(folder, one)
+    saved = now()
+    _write(folder / "history.json", json_bytes(history_json(history)))
+    _write(folder / "work.json", json_bytes(as_json(work)))
+    _write(folder / "folio.json", json_bytes(head(saved)))
+    return saved
+
+
+def keep_sheet(folder: Path, one: OpenSheet) -> None:
+    """Write a sheet's readings and bytes, unless they are there."""
+    readings, file = folder / sheet_member(one), folder / "files" / (one.sheet.sha256 or "none")
+    if not readings.exists():
+        _write(readings, sheet_bytes(one.sheet))
+    if one.data is not None and not file.exists():
+        _write(file, one.data)
+
+
+def _every_sheet(work: Work, history: History) -> list[OpenSheet]:
+    """The sheets of the work and those that an undo would bring back."""
+    closed = [one for step in history.steps for one in step.before.get("sheets", ())]
+    return list({one.key: one for one in (*closed, *work.sheets)}.values())
+
+
+def _write(path: Path, data: bytes) -> None:
+    """All of it or nothing: a reload in between finds the file as it was."""
+    part, name = tempfile.mkstemp(dir=path.parent, prefix=".part")
+    try:
+        with os.fdopen(part, "wb") as stream:
+            stream.write(data)
+        Path(name).replace(path)
+    except OSError:
+        Path(name).unlink(missing_ok=True)
+        raise
+
+
+def recall(ident: str) -> Reopened | None:
+    """The work of that name; None where there is none. FolioError where it is damaged."""
+    try:
+        folder = folder_of(ident)
+    except ValueError:
+        return None
+    if not (folder / "folio.json").is_file():
+        return None
+    found = [path for path in folder.rglob("*") if path.is_file() and not path.name.startswith(".")]
+    try:
+        members = {path.relative_to(folder).as_posix(): path.read_bytes() for path in found}
+    except OSError as fault:
+        raise FolioError(f"{folder}: cannot be read: {(fault.strerror or str(fault)).lower()}") from None
+    return reopen(members, "the work kept on this machine")
+
+
+def kept_works() -> list[Kept]:
+    """Every work that lies on this machine, newest first."""
+    found = []
+    for folder in state_folder().glob("*"):
+        if not IDENT.fullmatch(folder.name):
+            continue
+        try:
+            saved = json.loads((folder / "folio.json").read_bytes())["saved"]
+            told = json.loads((folder / "work.json").read_bytes())
+            found.append(Kept(folder.name, told["name"], saved, len(told["sheets"])))
+        except (OSError, ValueError, KeyError, TypeError):
+            found.append(Kept(folder.name, "a damaged one", "", 0))
+    return sorted(found, key=lambda one: one.saved, reverse=True)
+
+
+def saved_at(ident: str) -> str:
+    """When the work of that name was last written; "" where it lies not here."""
+    try:
+        saved: str = json.loads((folder_of(ident) / "folio.json").read_bytes())["saved"]
+    except (OSError, ValueError, KeyError, TypeError):
+        return ""
+    return saved
+
+
+def forget(ident: str) -> None:
+    """Remove everything of one work from this machine; OSError where something cannot be removed."""
+    folder = folder_of(ident)
+    if folder.exists():
+        shutil.rmtree(folder)
+    parent = state_folder()
+    if parent.is_dir() and not any(parent.iterdir()):
+        parent.rmdir()

@@ -1,0 +1,70 @@
+"""What the page worked out, kept by content for everybody: rankings, reviews and pictures of pages."""
+
+from __future__ import annotations
+
+import hashlib
+import traceback
+from collections.abc import Callable, Sequence
+from typing import Any
+
+import streamlit as st
+
+from compare import evidence
+from compare.bench import Bench
+from compare.work import OpenSheet, Work
+from extract.model import Reading, SpecSheet
+
+
+def sheets() -> list[SpecSheet]:
+    """The sheets that are open, with every correction put in."""
+    work: Work = st.session_state.work
+    return list(work.corrected)
+
+
+@st.cache_resource(max_entries=16, show_spinner="Ranking …")
+def ranked(key: str, _sheets: Sequence[SpecSheet], _bench: Bench) -> dict[str, Any]:  # noqa: ARG001
+    from compare.ranking import rank
+
+    result: dict[str, Any] = rank(_sheets, _bench)
+    return result
+
+
+@st.cache_resource(max_entries=64, show_spinner="Working the part out …")
+def reviewed(key: str, _sheets: Sequence[SpecSheet], _bench: Bench) -> dict[str, Any]:  # noqa: ARG001
+    from compare.review import review
+
+    result: dict[str, Any] = review(_sheets, _bench)
+    return result
+
+
+@st.cache_resource(max_entries=64, show_spinner=False)
+def picture(sha256: str, where: str, _one: OpenSheet, _reading: Reading) -> Any:  # noqa: ARG001
+    data = _one.data if _one.data is not None else evidence.sheet_bytes(_one.sheet)
+    return None if data is None else evidence.page_picture(data, _one.sheet, _reading.where)
+
+
+def ranking(bench: Bench) -> dict[str, Any] | None:
+    """All that is open, ranked; None where that went wrong, which has been told then."""
+    every = sheets()
+    return guarded("ranking", lambda: ranked(key_of(bench, every), every, bench))
+
+
+def key_of(bench: Bench, of: Sequence[SpecSheet]) -> str:
+    """A key that changes with the bench, with any sheet and with any correction."""
+    work: Work = st.session_state.work
+    told = [bench.to_toml(), *(one.model_dump_json(exclude_defaults=True) for one in work.corrections)]
+    for sheet in of:
+        told += [sheet.file, str(sheet.sha256), *(part.part_number or "" for part in sheet.parts)]
+    return hashlib.sha256("\n".join(told).encode()).hexdigest()
+
+
+def guarded(what: str, work: Callable[[], dict[str, Any]]) -> dict[str, Any] | None:
+    """Do `work`; a fault of ours is told with what happened to save, and the person's work is kept."""
+    try:
+        return work()
+    except Exception:
+        traceback.print_exc()
+        st.error(f"Something went wrong while {what}. Your work is kept.")
+        st.button("Try again", key="again")
+        st.download_button("Save what happened", traceback.format_exc(), "what_happened.txt", key="happened")
+        return None
