@@ -11,6 +11,7 @@ from compare.bench import Bench
 from compare.stated import (
     NOTHING,
     Case,
+    Facts,
     Span,
     Taken,
     bound,
@@ -36,6 +37,7 @@ C1_ROUTES = (
     "pulling_sensitivity_ppm_per_pf",
     "quality_factor",
 )
+FORK_FIELDS = ("turnover_temperature_c", "parabolic_coefficient_ppm_per_c2")
 Band = tuple[float, float]
 
 
@@ -143,12 +145,20 @@ def find_offers(sheets: Sequence[SpecSheet], bench: Bench) -> Offers:
 
 
 def named(sheet: SpecSheet, part: Part) -> str:
-    return f"{sheet.file}, {part.part_number}" if part.part_number else sheet.file
+    return called(sheet, part.part_number)
+
+
+def called(sheet: SpecSheet, part_number: str | None) -> str:
+    return f"{sheet.file}, {part_number}" if part_number else sheet.file
 
 
 def match_frequency(part: Part, asked_mhz: float) -> Match:
     """Whether the part offers the frequency, and how."""
-    readings = [r for r in part.readings if r.field == "frequency_mhz"]
+    return match_readings([r for r in part.readings if r.field == "frequency_mhz"], asked_mhz)
+
+
+def match_readings(readings: Sequence[Reading], asked_mhz: float) -> Match:
+    """The same of a part's frequency readings."""
     if not readings:
         return Match(None, "states no frequency")
     named_ones = [(value, r) for r in readings for value in _named_frequencies(r)]
@@ -204,41 +214,63 @@ def _why_not(named_ones: Sequence[tuple[float, Reading]], readings: Sequence[Rea
     return f"does not offer {asked:.10g} MHz" + (f" (states {listed})" if listed else "")
 
 
-def make_offer(sheet: SpecSheet, part: Part, match: Match, bench: Bench, load_pf: float | None = None) -> Offer:
-    """The part as it would be ordered. `load_pf` settles the load where the sheet leaves a choice."""
-    asked = bench.requirement
+@dataclass(frozen=True)
+class Settled:
+    """What decides which readings hold: the case, how the part vibrates, and the load."""
+
+    case: Case
+    mode: str | None
+    fork: bool
+    series: bool
+    load: Taken
+    load_options: tuple[float, ...]
+    load_range: Band | None
+    chosen: Mapping[str, object]
+    said: tuple[tuple[str, str], ...]
+
+
+def settle(facts: Facts, match: Match, bench: Bench, load_pf: float | None = None) -> Settled:
+    """The case that a part's readings are taken in, from its identity, its frequency and its load."""
     said: list[tuple[str, str]] = [("frequency_mhz", match.said)] if match.said else []
     chosen: dict[str, object] = {}
-    frequencies = tuple(dict.fromkeys((asked.frequency_mhz, match.printed_mhz or asked.frequency_mhz)))
-    case = Case(frequencies, package=part.package)
-    fork = is_fork(part, case)
-    mode = _settle_mode(part, case, fork=fork, trap=bench.circuit.overtone_trap, chosen=chosen, said=said)
+    asked_mhz = bench.requirement.frequency_mhz
+    case = Case(tuple(dict.fromkeys((asked_mhz, match.printed_mhz or asked_mhz))), package=facts.package)
+    fork = is_fork(facts, case)
+    mode = _settle_mode(facts, case, fork=fork, trap=bench.circuit.overtone_trap, chosen=chosen, said=said)
     case = replace(case, mode=mode)
-    series = part.resonance == "series"
-    options, load_range = ((), None) if series else _load_choice(part, case)
-    load = _load(part, case, series=series, load_pf=load_pf, open_choice=bool(options or load_range))
+    series = facts.resonance == "series"
+    options, load_range = ((), None) if series else _load_choice(facts, case)
+    load = _load(facts, case, series=series, load_pf=load_pf, open_choice=bool(options or load_range))
     case = replace(case, load_pf=load.span.mid if load.stated else None)
     if load_pf is not None:
         chosen["load_capacitance_pf"] = load_pf
-    operating = _settle_range(part, case, asked.temperature_c, chosen, said)
-    stability, band = _stability(part, case, asked.temperature_c, operating, fork)
-    tolerance, loose_tolerance = _tightest(take(part, "frequency_tolerance_ppm", case), chosen)
-    stability, loose_stability = _tightest(stability, chosen)
+    return Settled(case, mode, fork, series, load, options, load_range, chosen, tuple(said))
+
+
+def make_offer(sheet: SpecSheet, part: Part, match: Match, bench: Bench, load_pf: float | None = None) -> Offer:
+    """The part as it would be ordered. `load_pf` settles the load where the sheet leaves a choice."""
+    facts, asked = Facts.of(part), bench.requirement
+    settled = settle(facts, match, bench, load_pf)
+    case, chosen, said = settled.case, dict(settled.chosen), list(settled.said)
+    operating = settle_range(facts, case, asked.temperature_c, chosen, said)
+    stability, band = stability_over_range(facts, case, asked.temperature_c, operating, settled.fork)
+    tolerance, loose_tolerance = tightest(take(facts, "frequency_tolerance_ppm", case), chosen)
+    stability, loose_stability = tightest(stability, chosen)
     loosest = {"frequency_tolerance_ppm": loose_tolerance, "frequency_stability_ppm": loose_stability}
-    ageing, years = _ageing(part, case, asked.years)
+    ageing, years = ageing_for(facts, case, asked.years)
     return Offer(
         sheet=sheet,
         part=part,
         frequency=Taken(Span.at(asked.frequency_mhz), (match.reading,) if match.reading else ()),
         case=case,
-        mode=mode,
-        overtone=overtone_of(mode),
-        fork=fork,
-        series=series,
-        load=load,
-        load_options=options,
-        load_range=load_range,
-        at=tuple(_at_setting(part, case, setting.temperature_c) for setting in bench.settings),
+        mode=settled.mode,
+        overtone=overtone_of(settled.mode),
+        fork=settled.fork,
+        series=settled.series,
+        load=settled.load,
+        load_options=settled.load_options,
+        load_range=settled.load_range,
+        at=tuple(at_setting(facts, case, setting.temperature_c) for setting in bench.settings),
         tolerance=tolerance,
         stability=stability,
         loosest={name: taken for name, taken in loosest.items() if taken is not None},
@@ -246,29 +278,29 @@ def make_offer(sheet: SpecSheet, part: Part, match: Match, bench: Bench, load_pf
         ageing_years=years,
         operating_range=operating,
         stability_band=band,
-        turnover=take(part, "turnover_temperature_c", case),
-        parabolic=take(part, "parabolic_coefficient_ppm_per_c2", case),
-        drive=rated_drive(part, case),
+        turnover=take(facts, "turnover_temperature_c", case),
+        parabolic=take(facts, "parabolic_coefficient_ppm_per_c2", case),
+        drive=rated_drive(facts, case),
         chosen=chosen,
         said=tuple(said),
     )
 
 
-def with_load(offer: Offer, load_pf: float, bench: Bench) -> Offer:
-    """The same part ordered with the load given."""
+def with_load(offer: Offer, load_pf: float, bench: Bench, why: str = "") -> Offer:
+    """The same part ordered with the load given, and why."""
     match = match_frequency(offer.part, bench.requirement.frequency_mhz)
     made = make_offer(offer.sheet, offer.part, match, bench, load_pf)
-    return replace(made, load_options=offer.load_options, load_range=offer.load_range)
+    said = (*made.said, ("load_capacitance_pf", why)) if why else made.said
+    return replace(made, load_options=offer.load_options, load_range=offer.load_range, said=said)
 
 
-def is_fork(part: Part, case: Case) -> bool:
+def is_fork(facts: Facts, case: Case) -> bool:
     """A tuning fork by its cut, by its coefficients, or by a frequency at which nothing else is sold."""
-    if part.cut is not None:
-        return part.cut == "tuning fork"
-    fields = {r.field for r in part.readings}
-    if fields & {"turnover_temperature_c", "parabolic_coefficient_ppm_per_c2"}:
+    if facts.cut is not None:
+        return facts.cut == "tuning fork"
+    if any(field in facts for field in FORK_FIELDS):
         return True
-    return case.frequencies_mhz[0] < FORK_BELOW_MHZ and "frequency_stability_ppm" not in fields
+    return case.frequencies_mhz[0] < FORK_BELOW_MHZ and "frequency_stability_ppm" not in facts
 
 
 def overtone_of(mode: str | None) -> int | None:
@@ -284,11 +316,11 @@ def overtone_of(mode: str | None) -> int | None:
 
 
 def _settle_mode(
-    part: Part, case: Case, *, fork: bool, trap: bool, chosen: dict[str, object], said: list[tuple[str, str]]
+    facts: Facts, case: Case, *, fork: bool, trap: bool, chosen: dict[str, object], said: list[tuple[str, str]]
 ) -> str | None:
-    if part.mode is not None:
-        return part.mode
-    modes = _modes_offered(part, case)
+    if facts.mode is not None:
+        return facts.mode
+    modes = _modes_offered(facts, case)
     if len(modes) > 1:
         overtones = [mode for mode in modes if overtone_of(mode) != 1]
         mode = min(overtones if trap and overtones else modes, key=lambda mode: overtone_of(mode) or 99)
@@ -306,22 +338,22 @@ def _settle_mode(
     return None
 
 
-def _modes_offered(part: Part, case: Case) -> set[str]:
+def _modes_offered(facts: Facts, case: Case) -> set[str]:
     """Modes that frequency readings name for this frequency, else those that any reading names for it."""
     frequency = case.frequencies_mhz[0]
     offering = [
         r
-        for r in part.readings
-        if r.field == "frequency_mhz"
-        and (_in_range(r, frequency) or any(v in case.frequencies_mhz for v in _named_frequencies(r)))
+        for r in facts["frequency_mhz"]
+        if _in_range(r, frequency) or any(v in case.frequencies_mhz for v in _named_frequencies(r))
     ]
     modes = {r.when.mode for r in offering if r.when.mode and holds(r.when, case)}
-    return modes or {r.when.mode for r in part.readings if r.when.mode and holds(r.when, case)}
+    every = (r for readings in facts.by_field.values() for r in readings)
+    return modes or {r.when.mode for r in every if r.when.mode and holds(r.when, case)}
 
 
-def _load_choice(part: Part, case: Case) -> tuple[tuple[float, ...], Band | None]:
+def _load_choice(facts: Facts, case: Case) -> tuple[tuple[float, ...], Band | None]:
     """The loads that may be ordered: a list, or a range; neither where the sheet fixes one or states none."""
-    found = readings_for(part, "load_capacitance_pf", replace(case, load_pf=None))
+    found = readings_for(facts, "load_capacitance_pf", replace(case, load_pf=None))
     fixed = sorted({typ for r in found if not r.options and (typ := bound(r, "typ")) is not None})
     if not found or fixed:
         return (tuple(fixed), None) if len(fixed) > 1 else ((), None)
@@ -332,8 +364,8 @@ def _load_choice(part: Part, case: Case) -> tuple[tuple[float, ...], Band | None
     return (), (min(low for low, _ in ranges), max(high for _, high in ranges)) if ranges else None
 
 
-def _load(part: Part, case: Case, *, series: bool, load_pf: float | None, open_choice: bool) -> Taken:
-    found = tuple(readings_for(part, "load_capacitance_pf", case))
+def _load(facts: Facts, case: Case, *, series: bool, load_pf: float | None, open_choice: bool) -> Taken:
+    found = tuple(readings_for(facts, "load_capacitance_pf", case))
     if series:
         return Taken(Span.at(math.inf))
     if load_pf is not None:
@@ -352,11 +384,11 @@ def band_of(reading: Reading) -> Band | None:
     return (reading.min, reading.max) if reading.min is not None and reading.max is not None else None
 
 
-def _settle_range(
-    part: Part, case: Case, product: Band | None, chosen: dict[str, object], said: list[tuple[str, str]]
+def settle_range(
+    facts: Facts, case: Case, product: Band | None, chosen: dict[str, object], said: list[tuple[str, str]]
 ) -> Taken:
     """Of several ranges the narrowest that covers the product's, else the widest."""
-    readings = readings_for(part, "operating_temperature_c", replace(case, temperature_c=None))
+    readings = readings_for(facts, "operating_temperature_c", replace(case, temperature_c=None))
     ranges = [(band, r) for r in readings if (band := band_of(r)) is not None]
     if not ranges:
         return Taken(readings=tuple(readings))
@@ -373,12 +405,14 @@ def _settle_range(
     return Taken(Span(low, (low + high) / 2, high), (reading,))
 
 
-def _stability(part: Part, case: Case, product: Band | None, operating: Taken, fork: bool) -> tuple[Taken, Band | None]:
+def stability_over_range(
+    facts: Facts, case: Case, product: Band | None, operating: Taken, fork: bool
+) -> tuple[Taken, Band | None]:
     """Stability for the range that is asked, and the band of temperature it is stated for (None: the part's range)."""
     if fork:
         return NOTHING, None
     anywhere = replace(case, temperature_c=None)
-    found = [r for r in part.readings if r.field == "frequency_stability_ppm" and holds(r.when, anywhere)]
+    found = [r for r in facts["frequency_stability_ppm"] if holds(r.when, anywhere)]
     own = (operating.span.low, operating.span.high) if operating.stated else None
     for need in (product, own):
         covering = [r for r in found if need and r.when.temperature_c and covers(r.when.temperature_c, need)]
@@ -403,7 +437,7 @@ def _stability_of(readings: Sequence[Reading]) -> tuple[Taken, Band | None]:
     return taken, readings[0].when.temperature_c
 
 
-def _tightest(taken: Taken, chosen: dict[str, object]) -> tuple[Taken, Taken | None]:
+def tightest(taken: Taken, chosen: dict[str, object]) -> tuple[Taken, Taken | None]:
     """The tightest option, and the same at the loosest one; a single value is no choice."""
     if not taken.readings or not all(r.options for r in taken.readings):
         return taken, None
@@ -414,9 +448,9 @@ def _tightest(taken: Taken, chosen: dict[str, object]) -> tuple[Taken, Taken | N
     return tight, loose if len(options) > 1 else None
 
 
-def _ageing(part: Part, case: Case, years: float) -> tuple[Taken, float]:
+def ageing_for(facts: Facts, case: Case, years: float) -> tuple[Taken, float]:
     """The reading that answers for the years asked: one stated for as long or longer, else the longest stated."""
-    found = [r for r in part.readings if r.field == "ageing_ppm" and holds(r.when, case)]
+    found = [r for r in facts["ageing_ppm"] if holds(r.when, case)]
     if not found:
         return NOTHING, 1.0
     spans = sorted({r.when.years or 1.0 for r in found})
@@ -425,27 +459,30 @@ def _ageing(part: Part, case: Case, years: float) -> tuple[Taken, float]:
     return Taken(union([span_of(r) for r in counting]), tuple(counting)), stated_years
 
 
-def _at_setting(part: Part, case: Case, temperature_c: float | None) -> AtSetting:
+def at_setting(facts: Facts, case: Case, temperature_c: float | None) -> AtSetting:
     warm = case if temperature_c is None else replace(case, temperature_c=temperature_c)
-
-    def at(name: str) -> Taken:
-        taken = take(part, name, warm)
-        # Nothing is stated for this temperature: what holds at room is used, and the message says so.
-        return taken if taken.readings else take(part, name, case)
-
-    esr = at("esr_ohm")
-    motional = {name: taken for name in C1_ROUTES if (taken := at(name)).readings}
+    esr = take_at(facts, "esr_ohm", case, temperature_c)
+    routes = {name: take_at(facts, name, case, temperature_c) for name in C1_ROUTES if name in facts}
+    motional = {name: taken for name, taken in routes.items() if taken.readings}
     stated_here = any(r.when.temperature_c and holds(r.when, warm) for r in esr.readings)
     room_only = temperature_c is not None and bool(esr.readings) and not stated_here
-    return AtSetting(esr, at("shunt_capacitance_pf"), motional, room_only, _fundamental_esr(part, warm))
+    shunt = take_at(facts, "shunt_capacitance_pf", case, temperature_c)
+    return AtSetting(esr, shunt, motional, room_only, fundamental_esr(facts, warm))
 
 
-def _fundamental_esr(part: Part, case: Case) -> Taken:
+def take_at(facts: Facts, name: str, case: Case, temperature_c: float | None) -> Taken:
+    """A field at one temperature; where none is stated for it what holds at room is used, and the message says so."""
+    warm = case if temperature_c is None else replace(case, temperature_c=temperature_c)
+    taken = take(facts, name, warm)
+    return taken if taken.readings else take(facts, name, case)
+
+
+def fundamental_esr(facts: Facts, case: Case) -> Taken:
     order = overtone_of(case.mode)
     if order is None or order == 1:
         return NOTHING
     below = replace(case, mode="fundamental", frequencies_mhz=tuple(f / order for f in case.frequencies_mhz))
-    return take(part, "esr_ohm", below, only=lambda reading: reading.when.mode == "fundamental")
+    return take(facts, "esr_ohm", below, only=lambda reading: reading.when.mode == "fundamental")
 
 
 def fields_to_check(offer: Offer, asked: Collection[str]) -> list[str]:

@@ -3,7 +3,7 @@
 from __future__ import annotations
 
 import math
-from collections.abc import Callable, Iterable, Sequence
+from collections.abc import Callable, Iterable, Mapping, Sequence
 from dataclasses import dataclass
 
 from extract.model import Part, Reading, When
@@ -51,6 +51,30 @@ class Case:
     load_pf: float | None = None
     package: str | None = None
     temperature_c: float | None = ROOM_C
+
+
+@dataclass(frozen=True, slots=True)
+class Facts:
+    """What a sheet says of one part, its readings by field: sorted once, asked for many times."""
+
+    package: str | None
+    mode: str | None
+    cut: str | None
+    resonance: str | None
+    by_field: Mapping[str, Sequence[Reading]]
+
+    @classmethod
+    def of(cls, part: Part) -> Facts:
+        by_field: dict[str, list[Reading]] = {}
+        for reading in part.readings:
+            by_field.setdefault(reading.field, []).append(reading)
+        return cls(part.package, part.mode, part.cut, part.resonance, by_field)
+
+    def __getitem__(self, field: str) -> Sequence[Reading]:
+        return self.by_field.get(field, ())
+
+    def __contains__(self, field: str) -> bool:
+        return bool(self.by_field.get(field))
 
 
 @dataclass(frozen=True)
@@ -121,12 +145,12 @@ def narrowest(readings: Iterable[Reading]) -> list[Reading]:
     return [one for one in listed if not any(narrower(other.when, one.when) for other in listed)]
 
 
-def readings_for(part: Part, field: str, case: Case) -> list[Reading]:
+def readings_for(facts: Facts, field: str, case: Case) -> list[Reading]:
     """The readings of a field that count in the case; empty where no band holds it.
 
     A capacitance or resistance of zero or below is none (sheets print 0 where they state nothing).
     """
-    stated = (r for r in part.readings if r.field == field and holds(r.when, case))
+    stated = (r for r in facts[field] if holds(r.when, case))
     return narrowest(r for r in stated if printed(r))
 
 
@@ -171,9 +195,9 @@ def union(spans: Sequence[Span]) -> Span:
     return Span(min(s.low for s in spans), greatest.mid, greatest.high)
 
 
-def take(part: Part, field: str, case: Case, only: Callable[[Reading], bool] | None = None) -> Taken:
+def take(facts: Facts, field: str, case: Case, only: Callable[[Reading], bool] | None = None) -> Taken:
     """A field as the case takes it."""
-    found = [r for r in readings_for(part, field, case) if only is None or only(r)]
+    found = [r for r in readings_for(facts, field, case) if only is None or only(r)]
     if not found:
         return NOTHING
     said = (f"{len(found)} readings of {field} hold; the worse counts for each requirement",) if len(found) > 1 else ()
@@ -200,9 +224,9 @@ def _is_typical_only(reading: Reading) -> bool:
     return reading.max is None and not reading.options and reading.bare is not True
 
 
-def rated_drive(part: Part, case: Case) -> Taken:
+def rated_drive(facts: Facts, case: Case) -> Taken:
     """The rated drive: max, else a bare value, else typ; of several readings the least."""
-    found = readings_for(part, "drive_level_uw", case)
+    found = readings_for(facts, "drive_level_uw", case)
     if not found:
         return NOTHING
     limits = [r for r in found if r.max is not None] or [r for r in found if r.bare and r.typ is not None] or found

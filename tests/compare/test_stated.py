@@ -3,13 +3,13 @@
 import pytest
 from made_sheets import part, reading
 
-from compare.stated import Case, Span, rated_drive, span_of, take
+from compare.stated import Case, Facts, Span, rated_drive, span_of, take
 
 CASE = Case((16.0,), mode="fundamental", load_pf=9.0, package="3225")
 
 
 def esr_at(*readings, case=CASE):
-    return take(part(*readings), "esr_ohm", case)
+    return take(Facts.of(part(*readings)), "esr_ohm", case)
 
 
 def test_a_reading_without_a_band_holds_everywhere():
@@ -110,11 +110,11 @@ def test_a_bare_value_and_a_maximum_are_reckoned_alike():
     ],
 )
 def test_the_rated_drive_is_the_maximum_else_a_bare_value_else_typical(readings, rated):
-    assert rated_drive(part(*readings), CASE).span.mid == rated
+    assert rated_drive(Facts.of(part(*readings)), CASE).span.mid == rated
 
 
 def test_zero_or_below_is_no_capacitance_and_no_resistance():
     """Sheets print 0 where they state nothing: "0 | 5" under Min and Max is a maximum of 5."""
-    shunt = take(part(reading("shunt_capacitance_pf", min=0.0, max=5.0)), "shunt_capacitance_pf", CASE)
+    shunt = take(Facts.of(part(reading("shunt_capacitance_pf", min=0.0, max=5.0))), "shunt_capacitance_pf", CASE)
     assert (shunt.span, shunt.limit_alone) == (Span(5.0, 5.0, 5.0), True)
     assert not esr_at(reading("esr_ohm", max=0.0)).stated
