@@ -84,6 +84,8 @@ def attach(items: list[Item], amounts: list[Amount], row: Field) -> None:
     own = {amount.position for amount in amounts}
     for position, item in enumerate(items):
         if item.word is not None and item.word.kind in _SPEAKING and not _of_others(items, position):
+            if item.word.kind == "bound" and _behind_other_property(items, position, own):
+                continue
             for amount in _targets(items, amounts, position):
                 _say(amount, item.word)
         elif item.group is not None and position not in own and item.group.before != "except":
@@ -91,6 +93,21 @@ def attach(items: list[Item], amounts: list[Amount], row: Field) -> None:
             if when != When():
                 for amount in _targets(items, amounts, position):
                     amount.when = joined(amount.when, when)
+
+
+def _behind_other_property(items: list[Item], position: int, own: set[int]) -> bool:
+    """Whether a bound stands right behind another property's amount: "CL 8 pF ±10 ppm 60 Ω max" limits no load."""
+    before = items[position - 1] if position else None
+    if before is not None and before.word is not None and before.word.kind == "word":
+        return any(character.isdigit() for character in before.word.text) and any(at < position - 1 for at in own)
+    group = before.group if before is not None else None
+    if group is None or position - 1 in own or group.before == "at":
+        return False
+    labelled = group.low.glued or group.before.startswith("symbol")
+    return (labelled or group.foreign in _PROPERTIES) and any(at < position - 1 for at in own)
+
+
+_PROPERTIES = frozenset({"relative", "resistance", "capacitance"})
 
 
 def _of_others(items: list[Item], position: int) -> bool:

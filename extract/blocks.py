@@ -14,6 +14,7 @@ from extract.footnotes import footnotes_in
 from extract.lines import line_items
 from extract.model import Note
 from extract.prose import is_label, split_pairs
+from extract.quoted import quoted_lines
 from extract.tables import read_table
 
 # Characters by which a footnote is known again among the lines of its paragraph.
@@ -32,13 +33,14 @@ _PAIR_MARK = re.compile("[:=：＝]")
 class Blocks:
     """All items of a document. `headers` are lines of page headers and footers; `notes` go from a mark to its line.
 
-    `warnings` say what of the document was not read.
+    `warnings` say what of the document was not read; `quoted` are the lines that a mail quotes.
     """
 
     items: Sequence[Item]
     headers: Sequence[Text]
     notes: dict[str, tuple[str, Placed]]
     warnings: Sequence[Note] = ()
+    quoted: frozenset[int] = frozenset()
 
 
 def read_blocks(document: Document) -> Blocks:
@@ -55,7 +57,7 @@ def read_blocks(document: Document) -> Blocks:
             run.append(block)
     items += line_items(_worth_reading(run, warnings))
     headers = [Text(Piece(line.text, line.where), segments=line.segments) for line in document.page_headers]
-    return Blocks(items, headers, _footnotes(items), warnings)
+    return Blocks(items, headers, _footnotes(items), warnings, quoted_lines(document))
 
 
 def _worth_reading(lines: Sequence[Line], warnings: list[Note]) -> Sequence[Line]:

@@ -105,7 +105,16 @@ def _together(amounts: list[Amount], row: Field, heading: Heading) -> list[Value
     refused = [doubt for value in out if value.empty for doubt in value.doubts]
     kept = [value for value in out if not value.empty] or out
     kept[0] = replace(kept[0], doubts=tuple(dict.fromkeys((*kept[0].doubts, *refused))))
-    return [_in_order(value) for value in kept]
+    return [_in_order(value) for value in _two_limits_marked(kept, row)]
+
+
+def _two_limits_marked(values: list[Value], row: Field) -> list[Value]:
+    """Two limits of one quantity in one text ("100 µW max., 500 µW absolute maximum"): either may be meant."""
+    limits = [each for each in values if row.limit and not each.options and getattr(each, row.limit) is not None]
+    if len(limits) < 2 or row.sign == "symmetric":
+        return values
+    doubt = "two limits stand side by side; only one of them is the part's"
+    return [replace(each, doubts=(*each.doubts, doubt)) if each in limits else each for each in values]
 
 
 def _once(amounts: list[Amount]) -> list[Amount]:

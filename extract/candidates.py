@@ -16,6 +16,7 @@ from extract.fold import fold
 from extract.meaning import meaning
 from extract.model import FieldName, Pair, When, Where
 from extract.units import unit_at
+from extract.vocabulary import vocabulary
 from extract.wording import Label
 
 _PLUS_MINUS = re.compile(r"±")
@@ -136,8 +137,16 @@ def _by_unit(label: Label, texts: Iterable[str]) -> Label:
     return label if field == label.field else replace(label, field=field, plus_minus=False)
 
 
+# No quartz turns there: the peak of a soldering profile, called "peak temperature" as well.
+SOLDERING_C = 150.0
+
+
 def _lone_temperature(candidate: Candidate) -> bool:
     """One temperature with no bound is no range: it is where something was measured."""
+    numbers = [each for each in (candidate.min, candidate.typ, candidate.max) if each is not None]
+    if candidate.field == "turnover_temperature_c" and candidate.source != "table" and min(numbers, default=0) >= SOLDERING_C:
+        trace.dropped(candidate, "a peak as hot as this is that of soldering")
+        return True
     ranged = candidate.field in ("operating_temperature_c", "storage_temperature_c")
     lone = ranged and candidate.min is None and candidate.max is None
     if lone:
@@ -395,8 +404,7 @@ def _one_row(
         doubts += read_value.doubts
         when = merged(when, kept(read_value.when, label.field))
     pieces = [value.piece for value, _ in parts]
-    if any(value.guessed for value, _ in parts):
-        doubts.append("the heading over this column could not be read; its place among the others says min, typ or max")
+    doubts += [value.guessed for value, _ in parts if value.guessed]
     if (
         field_of(label.field).sign == "negative"
         and bounds["max"] is not None
@@ -421,6 +429,16 @@ def _one_row(
         open_above=any(_OPEN_ABOVE.search(fold(text)) for text in entry.conditions),
         measured_c=_measured_at(entry, label, pieces),
     )
+
+
+def offers_series(entry: Entry) -> bool:
+    """Whether a load's row offers series resonance outright, not on request."""
+    label = label_of(entry)
+    if label is None or label.field != "load_capacitance_pf":
+        return False
+    text = " ".join([*(value.piece.text for value in entry.values), *entry.conditions])
+    asked = any(word in fold(text).casefold() for word in vocabulary().phrases.get("request", ()))
+    return not asked and any(each.series for value in entry.values for each in read(value.piece.text, label.field))
 
 
 def key_candidates(ordering: Key) -> Iterator[Candidate]:

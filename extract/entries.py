@@ -35,12 +35,16 @@ class Piece:
     confidence: float = 1.0
 
 
+HEADING_UNREAD = "the heading over this column could not be read; its place among the others says min, typ or max"
+EMPTY_CELLS_LOST = "empty cells of the table are lost; the number may have stood under another of its headings"
+
+
 @dataclass(frozen=True, slots=True)
 class Value:
     """A printed value and what its column says of it.
 
     `nominal`: one value merged over Min, Typ and Max. `governed`: the sheet's only value column, with one bound word
-    over all rows. `guessed`: the heading could not be read, and the column's place says the bound. `subject`: the
+    over all rows. `guessed` says why the bound is one that its place among others makes likely. `subject`: the
     model, package or load in the column's head.
     """
 
@@ -48,7 +52,7 @@ class Value:
     bound: Bound | None = None
     nominal: bool = False
     governed: bool = False
-    guessed: bool = False
+    guessed: str = ""
     subject: str = ""
 
 

@@ -125,7 +125,7 @@ def fold(text: str) -> str:
 def key(text: str) -> str:
     """What is left of a folded text when case, spaces and punctuation are gone: two labels with one key are one label.
 
-    Accents go too ("Capacité" and "Capacite" are both printed), kana and ideographs stay.
+    Accents go too ("Capacité" and "Capacite" are both printed), kana stay, traditional characters become simplified.
     """
     return _key(text)
 
@@ -137,9 +137,14 @@ def _key(text: str) -> str:
     folded = fold(text).casefold()
     if not folded.isascii():
         folded = "".join(c for c in unicodedata.normalize("NFD", folded) if c not in _ACCENTS)
-        folded = unicodedata.normalize("NFC", folded)
+        folded = unicodedata.normalize("NFC", folded).translate(_TRADITIONAL)
     return _NOT_IN_KEY.sub("", folded)
 
 
+# Traditional Chinese characters of this trade and the simplified ones: one wording serves both.
+_TRADITIONAL = str.maketrans(
+    "頻負載電儲穩溫範圍動靜級標稱準諧勵驅絕緣聯並線號類產廠製頂點係數額總調變週規測試條項單備註訂價庫貨優維體圓質應與為環過內對濕選購達無實驗擊衝機壓輸佔緩隨誤許師貯補償軟籤觸區間請參見詳帶轉換迴極細彎狀況專業審認檢記錄術證書處編碼閱長寬鍍錫層連導綫屬",
+    "频负载电储稳温范围动静级标称准谐励驱绝缘联并线号类产厂制顶点系数额总调变周规测试条项单备注订价库货优维体圆质应与为环过内对湿选购达无实验击冲机压输占缓随误许师贮补偿软签触区间请参见详带转换回极细弯状况专业审认检记录术证书处编码阅长宽镀锡层连导线属",
+)
 _NOT_IN_KEY = re.compile(r"[^\w/]|_")
 _ACCENTS = frozenset("\u0300\u0301\u0302\u0303\u0304\u0306\u0308\u030a\u030c\u0327\u0328")

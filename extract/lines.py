@@ -17,6 +17,7 @@ from extract.keys import choices_in, key_label
 from extract.meaning import meaning, part_tokens
 from extract.prose import is_label, pair_entries, split_pairs
 from extract.streams import Fragments, paragraph, stream_entries
+from extract.torn import torn_rows
 
 
 def line_items(lines: Sequence[Line]) -> list[Item]:
@@ -27,6 +28,7 @@ def line_items(lines: Sequence[Line]) -> list[Item]:
     while index < len(lines):
         taken = (
             _dump(lines, index, items)
+            or _torn(lines, index, items)
             or _key_run(lines, index, items)
             or _stream(lines, index, items, fragments)
             or _label_over_value(lines, index, items)
@@ -38,6 +40,13 @@ def line_items(lines: Sequence[Line]) -> list[Item]:
 
 def _dump(lines: Sequence[Line], index: int, items: list[Item]) -> int:
     entries, taken = column_dump(lines, index)
+    items.extend(_text(line) for line in lines[index : index + taken])
+    items.extend(entries)
+    return taken
+
+
+def _torn(lines: Sequence[Line], index: int, items: list[Item]) -> int:
+    entries, taken = torn_rows(lines, index)
     items.extend(_text(line) for line in lines[index : index + taken])
     items.extend(entries)
     return taken

@@ -11,6 +11,7 @@ from collections.abc import Callable, Iterator, Sequence
 from dataclasses import dataclass, field, replace
 
 from extract import trace, wording
+from extract.amount import field_for
 from extract.candidates import Candidate, label_doubts, read
 from extract.conditions import band_of, condition_of, kept, merged
 from extract.drafts import Draft
@@ -26,6 +27,9 @@ from extract.wording import Label
 
 # Columns in which the part numbers stand where no column is headed so; an own stock number often is the maker's.
 _MAY_NUMBER = ("stock_number", "description", "")
+# Properties that a sheet states by frequency.
+OF_A_BAND = frozenset({"esr_ohm", "shunt_capacitance_pf", "drive_level_uw", "motional_capacitance_ff"})
+LONGEST_BANDS = 200
 KEYS = ("frequency_mhz", "load_capacitance_pf")
 RANGE, STABILITY = "operating_temperature_c", "frequency_stability_ppm"
 
@@ -46,9 +50,31 @@ def listing_drafts(listing: Listing) -> list[Draft]:
     """What a listing says of each part, or of the series, that it lists."""
     columns = [_column(index, column.levels, listing.title) for index, column in enumerate(listing.columns)]
     _settle(columns, listing)
-    if any(column.use == "part_number" for column in columns):
+    if any(column.use == "part_number" for column in columns) and not _bands_of_models(listing, columns):
         return _crystals_among(list(_part_drafts(listing, columns)))
     return _series_drafts(listing, columns)
+
+
+def _bands_of_models(listing: Listing, columns: Sequence[_Column]) -> bool:
+    """Whether the rows are bands of models named again and again, or over merged rows, rather than parts.
+
+    Then each row has a range of frequencies, and nothing beside it but what a band limits.
+    """
+    if len(listing.rows) > LONGEST_BANDS:
+        return False
+    numbers = [column for column in columns if column.use == "part_number"]
+    bands = [column for column in columns if column.label is not None and column.label.field == "frequency_mhz"]
+    others = {column.label.field for column in columns if column.label is not None} - {"frequency_mhz"}
+    if len(numbers) != 1 or len(bands) != 1 or not others or not others <= OF_A_BAND:
+        return False
+    named: list[str] = []
+    for row in listing.rows:
+        number, band = row[numbers[0].index], row[bands[0].index]
+        span = band_of(band.text, bands[0].label.unit if bands[0].label else None) if band is not None else None
+        if number is None or span is None or span[0] == span[1]:
+            return False
+        named.append(number.text)
+    return len(set(named)) < len(named)
 
 
 def _crystals_among(drafts: list[Draft]) -> list[Draft]:
@@ -161,6 +187,9 @@ def cell_candidates(cell: Placed, column: _Column, when: When, subject: str = ""
     if label is None or wording.not_stated(cell.text):
         return
     known = field_of(label.field)
+    if (other := field_for(cell.text, label.field)) != label.field:
+        label = replace(label, field=other, unit=None, plus_minus=False)
+        known = field_of(other)
     for value in read(cell.text, label.field, label.unit, label.bound, plus_minus=label.plus_minus):
         if value.series:
             continue
@@ -264,7 +293,7 @@ def _take_use(draft: Draft, cell: Placed, column: _Column) -> None:
     text = " ".join(cell.text.split())
     if column.use != "maker":
         draft.texts.append(text)
-    if wording.not_stated(text):
+    if wording.not_stated(text) and not (column.use == "attribute aec_q200" and text):
         return
     if wording.oscillator_words(column.head.levels[-1] if column.head.levels else ""):
         draft.texts.append(" ".join(column.head.levels))
@@ -286,7 +315,7 @@ def _take_section(draft: Draft, section: str) -> None:
 
 def _take_sentences(draft: Draft, cells: list[Placed]) -> None:
     """Properties inside one cell, as pairs or as a shop's one-line description, where no column states them."""
-    from extract.candidates import entry_candidates
+    from extract.candidates import entry_candidates, offers_series
     from extract.prose import loose_candidates, pair_entries
 
     known = {candidate.field for candidate in draft.candidates}
@@ -296,8 +325,11 @@ def _take_sentences(draft: Draft, cells: list[Placed]) -> None:
         entries = pair_entries(cell)
         found = [candidate for entry in entries for candidate in entry_candidates(entry)]
         draft.take_identity(entries)
-        if not found:
-            found = loose_candidates(cell)
+        if any(offers_series(entry) for entry in entries):
+            draft.resonance.add("series")
+        if len(found) < len(loose := loose_candidates(cell)):
+            labelled = {each.field for each in found}
+            found += [each for each in loose if each.field not in labelled]
         draft.candidates.extend(each for each in found if each.field not in known)
         known |= {each.field for each in found}
 
@@ -342,7 +374,9 @@ def _row_key(row: Sequence[Placed | None], columns: list[_Column], section: str,
         elif column.use in ("package", "model", "part_number"):
             subject = subject or " ".join(cell.text.split())
         elif not column.use and not is_unit(cell.text):
-            when = merged(when, condition_of(cell.text))
+            said = condition_of(cell.text)
+            # A lone "3" in a column that nobody headed counts rows; it is no overtone.
+            when = merged(when, said.model_copy(update={"mode": None}) if len(cell.text.strip()) < 2 else said)
     return when, subject
 
 

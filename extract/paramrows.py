@@ -10,7 +10,7 @@ from itertools import pairwise
 from extract.candidates import has_unit, read
 from extract.conditions import kinds_of
 from extract.documents.model import Cell
-from extract.entries import Entry, Item, Key, Piece, Text, Value
+from extract.entries import HEADING_UNREAD, Entry, Item, Key, Piece, Text, Value
 from extract.fold import fold
 from extract.heads import BOUNDS, Head, is_unit
 from extract.keys import choices_in, key_label
@@ -248,6 +248,8 @@ def _both_labels(first: str, second: str) -> tuple[str, list[str]]:
 
 def _place(found: _Row, cell: Cell, head: Head, span: list[Head], *, governed: bool) -> None:
     roles = [each.role for each in span]
+    if head.role == "measured":
+        return
     if head.role == "unit" and len(set(roles)) == 1:
         found.unit = cell.text
     elif head.role == "symbol":
@@ -281,7 +283,7 @@ def _values(cell: Cell, span: list[Head], *, governed: bool) -> list[Value]:
                 bound=next(iter(bounds)) if len(bounds) == 1 else None,
                 nominal=len(bounds) > 1,
                 governed=governed,
-                guessed=any(head.guessed for head in group),
+                guessed=HEADING_UNREAD if any(head.guessed for head in group) else "",
                 subject=subject,
             )
         )
@@ -289,7 +291,16 @@ def _values(cell: Cell, span: list[Head], *, governed: bool) -> list[Value]:
 
 
 def _hand_down_labels(rows: list[_Row]) -> None:
-    """Give rows without a label that of the row above or below, whichever states the same kind of condition."""
+    """Give rows without a label that of the row above or below, whichever states the same kind of condition.
+
+    A band in the label column of a table whose title names the property has the title for its label.
+    """
+    for row in rows:
+        if row.label is not None and row.values and row.section and _is_bare_band(row.label_text):
+            titled = meaning(row.section).label
+            if titled is not None and titled.exact:
+                row.conditions.append(row.label_text)
+                row.label_text = row.section
     for previous, row in pairwise(rows):
         if row.label is not None and previous.label is not None and row.values and _is_bare_band(row.label_text):
             row.conditions.append(row.label_text)

@@ -8,7 +8,7 @@ from dataclasses import dataclass, field, replace
 from extract import trace
 from extract.attributes import attributes_of
 from extract.blocks import Blocks
-from extract.candidates import Candidate, entry_candidates, key_candidates, label_of, read
+from extract.candidates import Candidate, entry_candidates, key_candidates, offers_series
 from extract.conditions import holds
 from extract.drafts import Draft, cuts_in, modes_in
 from extract.entries import Entry, Key, Listing, Text
@@ -19,6 +19,7 @@ from extract.lists import listing_drafts
 from extract.meaning import meaning, part_tokens
 from extract.model import Note, Part, Reading, lean
 from extract.prose import loose_in_prose
+from extract.quoted import without_quoted
 from extract.readings import readings_of
 from extract.refusals import refusal
 from extract.sections import Section, sections
@@ -66,6 +67,8 @@ def parts_of(blocks: Blocks) -> Found:
         drafts += _of_section(section, shared if named else None, blocks)
     merged = _merged(drafts)[::-1]
     drafts.clear()
+    for draft in merged if blocks.quoted else ():
+        draft.candidates = without_quoted(draft.candidates, blocks.quoted)
     while merged:
         # Each draft goes when its part is made: of a long list both would not fit into a small machine.
         _finish(merged.pop(), maker, found)
@@ -104,12 +107,33 @@ def _of_section(section: Section, shared: Draft | None, blocks: Blocks) -> list[
             if loose.source == "loose":
                 trace.dropped(loose, "a value without a label beside a list of parts")
         own.candidates = [each for each in own.candidates if each.source != "loose"]
+        own.part_number = own.part_number or part_number_of(section.items, blocks.headers)
+        if _stands_by_itself(own, rows):
+            return [own, *rows]
         for row in rows:
             _inherit(row, own)
         return rows
     if own.part_number is None:
         own.part_number = part_number_of(section.items, blocks.headers)
     return split_by_subject(own)
+
+
+LEAST_OF_ITS_OWN = 4
+
+
+def _stands_by_itself(own: Draft, rows: Sequence[Draft]) -> bool:
+    """Whether a page describes one part and lists others ("related products"), rather than what all of a list share.
+
+    It has its own number and one frequency, and says more of it; the others have frequencies of their own.
+    """
+    stated = [each for each in own.candidates if each.field == "frequency_mhz" and each.source in ("table", "pair")]
+    values = {each.typ for each in stated}
+    if own.part_number is None or len(values) != 1 or None in values:
+        return False
+    labelled = {each.field for each in own.candidates if each.source in ("table", "pair")} & CRYSTAL_FIELDS
+    others = [row for row in rows if row.part_number != own.part_number]
+    told = [row for row in others if any(each.field == "frequency_mhz" for each in row.candidates)]
+    return len(labelled) >= LEAST_OF_ITS_OWN and bool(others) and 2 * len(told) > len(others)
 
 
 def _inherit(draft: Draft, general: Draft) -> None:
@@ -183,7 +207,7 @@ def _take_entry(draft: Draft, entry: Entry, blocks: Blocks, heading: str) -> Non
         found = [each if each.subject else replace(each, about=named[0]) for each in found]
     draft.candidates += found
     draft.candidates += noted_candidates(entry, blocks.notes)
-    if _offers_series(entry):
+    if offers_series(entry):
         draft.resonance.add("series")
     if found:
         for text in entry.conditions:
@@ -197,16 +221,6 @@ def says(texts: Sequence[str], kind: str) -> bool:
     """Whether a heading is one of ordering keys ("ordering") or of tests ("reliability")."""
     words = vocabulary().phrases.get(kind, ())
     return any(word in fold(text).casefold() for text in texts if text and len(text) < 80 for word in words)
-
-
-def _offers_series(entry: Entry) -> bool:
-    """Whether a load's row offers series resonance outright, not on request."""
-    label = label_of(entry)
-    if label is None or label.field != "load_capacitance_pf":
-        return False
-    text = " ".join([*(value.piece.text for value in entry.values), *entry.conditions])
-    asked = any(word in fold(text).casefold() for word in vocabulary().phrases.get("request", ()))
-    return not asked and any(each.series for value in entry.values for each in read(value.piece.text, label.field))
 
 
 def _take_texts(draft: Draft, texts: Sequence[Text]) -> None:

@@ -328,7 +328,7 @@ def loose_candidates(cell: Placed) -> list[Candidate]:
     text = fold(cell.text)
     found: list[Candidate] = []
     plain = [("frequency_mhz", r"(?i)[\d.,]+\s?[mk]hz\b"), ("load_capacitance_pf", r"(?i)[\d.,]+\s?pf\b")]
-    plain += [("esr_ohm", r"(?i)[\d.,]+\s?k?(?:Ω|ohms?\b)")]
+    plain += [("esr_ohm", r"(?i)(?:\bmax\.?\s?|[≤<]\s?)?[\d.,]+\s?k?(?:Ω|ohms?\b)(?:\s?(?:max|typ)\b\.?)?")]
     for field, pattern in plain:
         amounts = re.findall(pattern, text)
         if len(amounts) == 1:

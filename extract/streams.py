@@ -82,7 +82,7 @@ class Fragments:
 
 def _may_be_fragment(line: Line) -> bool:
     text = line.text
-    return not line.heading and len(text) <= 70 and not _BULLET.match(text)
+    return not line.heading and len(text) <= 70 and not _BULLET.match(text) and not text.lstrip().startswith(">")
 
 
 def _first_words(run: Sequence[Line]) -> str:

@@ -10,6 +10,7 @@ from collections.abc import Iterator, Sequence
 from dataclasses import dataclass, replace
 from itertools import pairwise
 
+from extract import trace
 from extract.candidates import read
 from extract.documents.model import Cell, Table
 from extract.entries import Column, Item, Listing, Piece, Text
@@ -19,6 +20,7 @@ from extract.identity import is_package
 from extract.keys import read_key_table, take_code_rows
 from extract.meaning import Meaning, is_part_token, meaning
 from extract.paramrows import parameter_entries
+from extract.samples import of_samples, with_measured
 from extract.vocabulary import vocabulary
 
 Row = Sequence[Cell | None]
@@ -72,6 +74,10 @@ def _blocks(rows: list[Row], title: str) -> Iterator[_Block]:
             block.body.append(rows[index])
             index += 1
         elif count := _head_rows(rows, index):
+            if _belongs_below(block, rows[index]):
+                block = _Block([*block.heads, *rows[index : index + count]], block.body, title, block.above)
+                index += count
+                continue
             if block.body:
                 yield block
             above = _title_before(block.body) if block.heads or block.body else ""
@@ -82,6 +88,20 @@ def _blocks(rows: list[Row], title: str) -> Iterator[_Block]:
             index += 1
     if block.body:
         yield block
+
+
+def _belongs_below(block: _Block, head: Row) -> bool:
+    """Whether rows above a row of models name their makers and sizes: "Maker | A | B" over "Type | A-12 | B-20"."""
+    cells = distinct(head)
+    if len(cells) < 3 or meaning(cells[0].text).identity != "part_number" or not 0 < len(block.body) <= MOST_ABOVE:
+        return False
+    models = sum(is_part_token(cell.text) for cell in cells[1:])
+    labelled = all(meaning(row[0].text).identity in ("maker", "package") if row[0] else False for row in block.body)
+    return models >= 2 and models == len(cells) - 1 and labelled
+
+
+# Rows that may name makers and sizes above the models.
+MOST_ABOVE = 3
 
 
 def _repeats(heads: list[Row], row: Row) -> bool:
@@ -225,6 +245,10 @@ def _bands_across(rows: list[Row]) -> bool:
 
 def _read_block(block: _Block, table: Table) -> Iterator[Item]:
     heads = _typ_beside_bounds([interpret(levels) for levels in _levels(block)]) if block.heads else []
+    heads = with_measured(heads)
+    if of_samples(heads, block.body, block.above or block.title):
+        trace.passed(block.title or "a table", table.where, "measured on samples, no limit")
+        return
     if heads and _is_listing(block, heads):
         yield from _listings(block, heads, table)
         return

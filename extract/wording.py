@@ -59,12 +59,33 @@ def read_label(text: str) -> Label | None:
     if not folded or len(folded) > LONGEST_LABEL or key(folded).isdigit():
         return None
     parts = take_apart(folded)
+    if shared := _shared_by_condition(parts, folded):
+        return _label(parts, shared)
     if key(parts.core) in vocabulary().shared and not parts.brackets:
         return None
     found = _exact(parts) or _beside_symbol(parts) or _inside(parts) or _run_together(parts) or _misspelt(parts)
     if found and found.bound is None and field_of(found.field).limit == "max" and _recommends(folded):
         return replace(found, bound="typ")
     return found
+
+
+_ROOM = re.compile(r"(?<![\d.,±-])\+?2[0-9]\s?(?:±\s?\d\s?)?(?:°|C\b)")
+
+
+def _shared_by_condition(parts: Parts, folded: str) -> str | None:
+    """The field of a symbol that several share, by what stands behind it: "df/f @ 25 °C", "df/f over T"."""
+    known = vocabulary()
+    words = parts.core.split()
+    at = next((index for index, word in enumerate(words) if word.casefold() in known.at_words), len(words))
+    fields, behind = known.shared.get(key(" ".join(words[:at])), ()), " ".join(words[at + 1 :])
+    if _TOLERANCE not in fields or _STABILITY not in fields:
+        return None
+    if parts.when.years is not None:
+        return _AGEING if _AGEING in fields else None
+    if behind:
+        named = known.symbols.get(key(behind)) or _named(behind)
+        return _STABILITY if named == "operating_temperature_c" else None
+    return _TOLERANCE if _ROOM.search(folded) and not parts.brackets else None
 
 
 def _recommends(folded: str) -> bool:
@@ -205,13 +226,14 @@ def _may_be(symbol: str, field: str) -> bool:
 class _Inside:
     """Fields named by wordings inside a text, with the length of the wording, and what was left over.
 
-    `condition` is what was left over behind "at", "over", "in" and their like.
+    `condition` is what was left over behind "at", "over", "in" and their like; `names` counts the weak wordings.
     """
 
     strong: dict[str, int]
     weak: dict[str, int]
     rest: list[str]
     condition: list[str]
+    names: int = 0
 
 
 @lru_cache(maxsize=8192)
@@ -235,6 +257,7 @@ def _fields_inside(text: str) -> _Inside:
             _add_condition(inside, run.meaning, text[run.start : run.end])
             continue
         target = inside.weak if run.key in known.weak else inside.strong
+        inside.names += run.key in known.weak
         target[run.meaning] = max(target.get(run.meaning, 0), len(run.key))
     return inside
 
@@ -246,7 +269,7 @@ def _add_condition(inside: _Inside, field: str, printed: str) -> None:
         inside.condition.append(printed)
 
 
-_TOLERANCE, _STABILITY = "frequency_tolerance_ppm", "frequency_stability_ppm"
+_TOLERANCE, _STABILITY, _AGEING = "frequency_tolerance_ppm", "frequency_stability_ppm", "ageing_ppm"
 
 
 def _inside(parts: Parts) -> Label | None:
@@ -259,7 +282,8 @@ def _inside(parts: Parts) -> Label | None:
     rest, left = " ".join([*inside.rest, *inside.condition]), len(key("".join(inside.rest)))
     if left > (1.5 * length if inside.strong else 0.5 * length) or len(inside.condition) > LONGEST_CONDITION:
         return None
-    return _label(parts, field, exact=bool(inside.strong) and not rest, rest=rest)
+    # Two weak wordings of one field ("Frequenzbereich / frequency range") say it in two languages.
+    return _label(parts, field, exact=(bool(inside.strong) or inside.names > 1) and not rest, rest=rest)
 
 
 def _run_together(parts: Parts) -> Label | None:
