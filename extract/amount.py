@@ -79,6 +79,8 @@ def _read(text: str, field_name: str, given: _Given) -> tuple[Value, ...]:
     row = field_of(field_name)
     heading = _heading(given, field_name)
     folded = fold(text)[:LONGEST_AMOUNT]
+    if field_name == "parabolic_coefficient_ppm_per_c2":
+        folded = _out_of_formula(folded)
     if heading.bound is None and (told := _bounds_behind(folded)):
         folded, bounds = told
         heading = replace(heading, bound=bounds)
@@ -221,9 +223,20 @@ _PER_SQUARE = re.compile(
 )
 
 
+# "-0.035 x (T - T0)² ppm": the coefficient as the formula in which it stands.
+_FORMULA = re.compile(
+    r"\s?(?:ppm(?:\s?/\s?°C\^?2)?\s?)?[x×*·]?\s?\(\s?Δ?[Ttθ][a-z]?\s?-\s?(?:[Ttθ]\s?\w{0,3}|25(?:\s?°C)?)\s?\)\s?\^?2(?:\s?ppm\b)?"
+)
+
+
+def _out_of_formula(folded: str) -> str:
+    return _FORMULA.sub(" ppm/°C^2", folded) if ")" in folded else folded
+
+
 def field_for(text: str, field: str) -> str:
     """The field that the unit of a value makes of its label: stability or a coefficient in ppm/°C² is the parabola."""
-    if field in ("frequency_stability_ppm", "frequency_tolerance_ppm") and _PER_SQUARE.search(fold(text)):
+    squared = field in ("frequency_stability_ppm", "frequency_tolerance_ppm")
+    if squared and _PER_SQUARE.search(_out_of_formula(fold(text))):
         return "parabolic_coefficient_ppm_per_c2"
     return field
 

@@ -81,8 +81,11 @@ def _pads(texts: Sequence[str]) -> Pads | None:
 @lru_cache(maxsize=8192)
 def _pads_named(text: str, what: str) -> tuple[int, ...] | None:
     """The pads that a line gives to the crystal or to ground; every part of a list asks the same lines."""
-    found = _pads_for(what).search(fold(text))
-    pads = _numbers(found[1] or found[2]) if found else ()
+    lists = [_numbers(found[1] or found[2]) for found in _pads_for(what).finditer(fold(text))]
+    pads = lists[0] if lists else ()
+    if len(lists) > 1 and all(len(each) == 1 for each in lists):
+        # "#1 crystal, #2 GND, #3 crystal, #4 GND": a use named for each pad by itself.
+        pads = tuple(dict.fromkeys(each[0] for each in lists))
     # A crystal has two ends: one pad alone is a list that was not read whole.
     return pads if pads and (what == "ground" or len(pads) > 1) else None
 

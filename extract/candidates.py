@@ -5,7 +5,7 @@ from __future__ import annotations
 import re
 from collections.abc import Iterable, Iterator, Sequence
 from dataclasses import dataclass, replace
-from functools import lru_cache
+from functools import cache, lru_cache
 from typing import Literal
 
 from extract import amount, trace, wording
@@ -64,11 +64,21 @@ class Candidate:
         return self.min, self.typ, self.max, self.options
 
 
+@cache
+def _runs_on() -> re.Pattern[str]:
+    """A line break inside a range ("12 MHz", "to 54 MHz" below it)."""
+    words = "|".join(sorted(map(re.escape, vocabulary().phrases.get("to", ())), key=len, reverse=True))
+    return re.compile(
+        rf"(?i)\s*\n\s*(?=(?:(?:{words})\b|[~～…])\s*[-+−]?\d)|(?:(?<=[~～…])|(?<=\d to)|(?<=C to))\s*\n\s*"
+    )
+
+
 @lru_cache(maxsize=16384)
 def read(
     text: str, field: str, unit: str | None = None, bound: str | None = None, *, plus_minus: bool = False
 ) -> tuple[amount.Value, ...]:
     """`amount.read_values`, each distinct text read once."""
+    text = _runs_on().sub(" ", text) if "\n" in text else text
     text = _EAST_COMMA.sub(r"\g<0> ", _FOOTNOTE_MARK.sub("", text))
     found = amount.read_values(text, field, unit=unit, bound=bound, plus_minus=plus_minus)
     if not found and _BRACKET.search(text):
@@ -144,7 +154,11 @@ SOLDERING_C = 150.0
 def _lone_temperature(candidate: Candidate) -> bool:
     """One temperature with no bound is no range: it is where something was measured."""
     numbers = [each for each in (candidate.min, candidate.typ, candidate.max) if each is not None]
-    if candidate.field == "turnover_temperature_c" and candidate.source != "table" and min(numbers, default=0) >= SOLDERING_C:
+    if (
+        candidate.field == "turnover_temperature_c"
+        and candidate.source != "table"
+        and min(numbers, default=0) >= SOLDERING_C
+    ):
         trace.dropped(candidate, "a peak as hot as this is that of soldering")
         return True
     ranged = candidate.field in ("operating_temperature_c", "storage_temperature_c")

@@ -11,7 +11,7 @@ from extract import wording
 from extract.candidates import Candidate, label_of
 from extract.entries import Entry
 from extract.fold import fold, key
-from extract.identity import package_in
+from extract.identity import is_package, package_in
 from extract.meaning import meaning, part_tokens
 from extract.model import Where
 from extract.vocabulary import vocabulary
@@ -61,9 +61,15 @@ class Draft:
             text = re.split(r"\s+[·|•]\s+", text)[0]
         known = getattr(self, what)
         longer = what == "part_number" and known is not None and text.startswith(f"{known}-")
+        sized = what == "part_number" and known is not None and is_package(known) and not is_package(text)
+        if sized:
+            self.package = self.package or known
+        # "Product: Quartz crystal unit" names no part.
+        sized = sized or (what == "part_number" and not part_tokens(known or "") and bool(part_tokens(text)))
         if (
             known is None
             or longer
+            or sized
             or (what == "package" and package_in(known) is None and package_in(text) is not None)
         ):
             setattr(self, what, text)
@@ -90,6 +96,8 @@ class Draft:
                     self.take_mode_and_cut(text)
             elif known.role in ("mode", "cut"):
                 self.take_mode_and_cut(text, codes=True)
+                for beside in entry.conditions:
+                    self.cuts.update(cuts_in(beside))
                 if len(named := modes_in(text, codes=True)) > 1:
                     self.offered_modes = self.offered_modes or named
             elif known.attribute:
@@ -126,8 +134,8 @@ def cuts_in(text: str, *, whole: bool = False) -> frozenset[str]:
     """Every cut that a text names; two bare letters count only in capitals and in a cut's own cell (`whole`)."""
     known = vocabulary().cuts
     found = set()
-    for run in _runs(text):
-        wanted = key(run)
+    for run in _runs(text.replace("/", " / ")):
+        wanted = key(run.replace("/", " "))
         if wanted not in known:
             continue
         if (

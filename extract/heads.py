@@ -10,7 +10,7 @@ from extract import units
 from extract.conditions import condition_of
 from extract.entries import Bound
 from extract.fold import fold
-from extract.meaning import Meaning, meaning
+from extract.meaning import Meaning, meaning, part_tokens
 from extract.model import When
 from extract.wording import Label
 
@@ -61,7 +61,15 @@ _CONDITION = re.compile(r"^(?P<name>[^\d±]*[^\d±\s(\[,@-])[\s(\[,@]+(?P<condit
 
 
 def _parted(levels: tuple[str, ...]) -> tuple[str, ...]:
-    """A level such as "Part number -20 to +70 °C" as two: the name, and where its column holds."""
+    """A level such as "Part number -20 to +70 °C" as two: the name, and where its column holds.
+
+    So is "AB-2016 frequency range": the label, and the model that its column is of.
+    """
+    if len(levels) == 1 and len(tokens := part_tokens(levels[0])) == 1 and meaning(levels[0]).head is None:
+        folded = fold(levels[0])
+        rest = (folded[: folded.find(tokens[0])] + folded[folded.find(tokens[0]) + len(tokens[0]) :]).strip(" :-/()")
+        if meaning(rest).label is not None and meaning(rest).head is not None:
+            return rest, tokens[0]
     if len(levels) != 1 or (meaning(levels[0]).head is not None and meaning(levels[0]).label is not None):
         return levels
     match = _CONDITION.match(fold(levels[0]))
@@ -70,10 +78,22 @@ def _parted(levels: tuple[str, ...]) -> tuple[str, ...]:
     return match["name"], match["condition"].rstrip(")]")
 
 
+@lru_cache(maxsize=8192)
+def bound_and_unit(text: str) -> tuple[str, ...]:
+    """A level such as "max ppm" or "min. °C" as bound and unit; empty for any other."""
+    words = fold(text).strip("()[] ").split()
+    for bound, unit in ((words[0], " ".join(words[1:])), (words[-1], " ".join(words[:-1]))) if len(words) > 1 else ():
+        if meaning(bound).role in BOUNDS and is_unit(unit):
+            return bound, unit
+    return ()
+
+
 @lru_cache(maxsize=4096)
 def interpret(levels: tuple[str, ...]) -> Head:
     """Put the levels of one heading together: the label from one of them or from all, the bound and unit from any."""
     levels = _parted(levels)
+    if len(levels) > 1:
+        levels = tuple(part for level in levels for part in bound_and_unit(level) or (level,))
     known = [meaning(level) for level in levels]
     bound = next((BOUNDS[each.role] for each in reversed(known) if each.role in BOUNDS), None)
     unit = next((level for level in reversed(levels) if is_unit(level)), "")

@@ -21,12 +21,13 @@ _MILLIMETRES = re.compile(
     r"(?<![\d.,±])(\d{1,2}(?:[.,]\d{1,2})?)\s?(?:mm)?\s?(?:±\s?0?[.,]\d+\s?)?[x×*]\s?[φ⌀∅]?\s?(\d{1,2}(?:[.,]\d{1,2})?)(?:\s?±\s?0?[.,]\d+)?(?:\s?(?:mm)?\s?[x×*]\s?\d{1,2}(?:[.,]\d{1,3})?)?(?![\d.,]*\d)(?:\s?mm\b)?"
 )
 _CODE = re.compile(
-    r"(?i)\b(?:SMD|贴片|封装|package|size|case)\s?-?(\d{4})(?:-\dP)?\b|\b(\d{4})(?=\s?(?:SMD|package|size))"
+    r"(?i)\b(?:SMD|贴片|封装|package|size|case)\s?-?(\d{4})(?:-\dP)?\b|(?<![\w-])(\d{4})(?=\s?(?:SMD|package|size))"
 )
 _NAME_WORD = r"[A-ZÀ-Þ][^\W\d_]*(?:['&-][^\W\d_]+)*"
 _LATIN_NAME = re.compile(
     rf"(?<![\w-]){_NAME_WORD}(?![\w-])"
-    rf"(?:(?:,?[ ]+(?:&[ ])?|[ ]?&[ ]?){_NAME_WORD}(?![\w-])(?:\.(?=[ ,]|$))?|[ ]+e\.\s?K\.?)*"
+    rf"(?:,?[ ]+[A-Z]\.\s?[A-Za-z]\.(?:\s?[A-Za-z]\.?)?(?!\w)"
+    rf"|(?:,?[ ]+(?:&[ ])?|[ ]?&[ ]?){_NAME_WORD}(?![\w-])(?:\.(?=[ ,]|$))?|[ ]+e\.\s?K\.?)*"
 )
 _EAST_NAME = re.compile(r"[\u3400-\u9fff\u30a0-\u30ff\uac00-\ud7af]{2,}")
 _BY = re.compile(r"\b(?:by|from|von)\s+$", re.IGNORECASE)
@@ -54,7 +55,9 @@ def is_package(text: str) -> bool:
     found = package_in(text)
     if found is not None and part_tokens(fold(text).replace(found, " ")):
         return False
-    return found is not None and len(found) >= 0.5 * len(fold(text)) or bool(re.fullmatch(r"\d{4}", fold(text)))
+    if found is not None and len(found) >= 0.5 * len(fold(text)):
+        return True
+    return bool(re.fullmatch(r"\d{4}", fold(text)) or _CODE.fullmatch(fold(text)))
 
 
 @lru_cache(maxsize=8192)
@@ -71,6 +74,7 @@ def makers_in(text: str) -> tuple[tuple[str, int], ...]:
         if (
             any(match[0].endswith(ending) or match[0].startswith(ending) for ending in words["east"])
             and len(match[0]) > 3
+            and match[0] not in words["east_generic"]
         ):
             sure = any(mark in match[0] for mark in words["east"][:5])
             found.append((match[0], 4 if sure else 2))
@@ -87,10 +91,13 @@ def _name_score(name: str, words: dict[str, list[str]]) -> int:
     if not 2 <= len(parts) <= 6 or any(any(c.isdigit() for c in part) for part in parts):
         return 0
     generic = {*words["generic"]}
-    if len(parts[0]) < 2 or parts[0].casefold() in generic or all(part.casefold() in generic for part in parts):
+    if len(parts[0]) < 2 or all(part.casefold() in generic for part in parts):
         return 0
     if any(_is_legal(part) for part in parts[1:]) or name.endswith(("e.K.", "e.K", "e. K.")):
-        return 4
+        own = [part for part in parts if part.casefold() not in generic and not _is_legal(part)]
+        return 4 if own else 0
+    if parts[0].casefold() in generic:
+        return 0
     trade = {word.casefold() for word in words["trade"]}
     return 3 if parts[-1].casefold() in trade and parts[0].casefold() not in trade else 0
 

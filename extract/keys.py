@@ -46,7 +46,7 @@ def key_label(text: str) -> str:
 
 def read_key_table(rows: Sequence[Row], title: str) -> list[Key]:
     """A table that holds ordering keys and nothing else; empty for any other table."""
-    return _columns_of_keys(rows) or _rows_of_keys(rows) or _code_columns(rows, title)
+    return _columns_of_keys(rows) or _rows_of_keys(rows) or _code_columns(rows, title) or _titled_codes(rows)
 
 
 def take_code_rows(rows: Sequence[Row]) -> tuple[list[Key], list[Row]]:
@@ -112,6 +112,23 @@ def _code_columns(rows: Sequence[Row], title: str) -> list[Key]:
     if not any(meaning(head).role == "code" for head in heads):
         return []
     return list(_beside_codes(rows, heads, title))
+
+
+_BARE_CODE = re.compile(r"(?i)blank|none|-|[A-Z]{1,2}\d?|\d{1,2}")
+_LETTERS = re.compile(r"(?i)blank|none|[A-Z]{1,2}\d?")
+
+
+def _titled_codes(rows: Sequence[Row]) -> list[Key]:
+    """A label over two columns, the first of codes ("Blank", "B", "7"), most of them letters or one the standard."""
+    title, *choices = [_distinct(row) for row in rows]
+    if len(title) != 1 or len(choices) < 2 or any(len(cells) != 2 for cells in choices):
+        return []
+    codes = [fold(cells[0].text) for cells in choices]
+    label = meaning(key_label(title[0].text)).label
+    coded = all(_BARE_CODE.fullmatch(code) for code in codes) and any(_LETTERS.fullmatch(code) for code in codes)
+    if label is None or not label.exact or not coded or len(set(codes)) < len(codes):
+        return []
+    return [Key(Piece(key_label(title[0].text), title[0].where), tuple((cells[0].text, cells[1]) for cells in choices))]
 
 
 def _beside_codes(rows: Sequence[Row], heads: Sequence[str], title: str) -> Iterator[Key]:

@@ -2,8 +2,10 @@
 
 from __future__ import annotations
 
+import math
 import re
 from collections.abc import Iterator, Sequence
+from itertools import pairwise
 
 from extract.candidates import has_unit, read
 from extract.conditions import kinds_of
@@ -160,6 +162,8 @@ def _label_over_value(lines: Sequence[Line], index: int, items: list[Item]) -> i
         end += 1
     if end == index + 1 or (end < len(lines) and end - index > 2 and not is_label(lines[end].text) and end - index > 8):
         return 0
+    if _is_axis(lines[index + 1 : end]):
+        return 0
     items.append(_text(line))
     label = Piece(line.text.rstrip(" :："), line.where)
     if end == index + 2:
@@ -168,6 +172,16 @@ def _label_over_value(lines: Sequence[Line], index: int, items: list[Item]) -> i
         below = lines[index + 1 : end]
         items.extend(Entry(label, tuple(Value(segment) for segment in each.segments), source="pair") for each in below)
     return end - index
+
+
+def _is_axis(lines: Sequence[Line]) -> bool:
+    """Whether lines are the numbers beside a graph: three or more bare ones at equal steps."""
+    texts = [fold(line.text) for line in lines]
+    bare = [float(text) for text in texts if re.fullmatch(r"[-+]?\d+(?:\.\d+)?", text)]
+    if len(bare) < 3 or len(bare) < len(texts):
+        return False
+    step = bare[1] - bare[0]
+    return all(math.isclose(after - before, step) for before, after in pairwise(bare))
 
 
 def _holds_its_value(text: str) -> bool:

@@ -30,12 +30,14 @@ _MAY_NUMBER = ("stock_number", "description", "")
 # Properties that a sheet states by frequency.
 OF_A_BAND = frozenset({"esr_ohm", "shunt_capacitance_pf", "drive_level_uw", "motional_capacitance_ff"})
 LONGEST_BANDS = 200
+# Uses of columns whose cells may hold whole sentences, in the order in which they are asked.
+SENTENCES = ("", "description")
 KEYS = ("frequency_mhz", "load_capacitance_pf")
 RANGE, STABILITY = "operating_temperature_c", "frequency_stability_ppm"
 
 
 @dataclass(slots=True)
-class _Column:
+class ListColumn:
     """One column, ready to read cells: a field's label, or the use that the cells are put to."""
 
     index: int
@@ -48,14 +50,25 @@ class _Column:
 
 def listing_drafts(listing: Listing) -> list[Draft]:
     """What a listing says of each part, or of the series, that it lists."""
-    columns = [_column(index, column.levels, listing.title) for index, column in enumerate(listing.columns)]
-    _settle(columns, listing)
-    if any(column.use == "part_number" for column in columns) and not _bands_of_models(listing, columns):
+    columns = columns_of(listing)
+    if lists_parts(listing, columns):
         return _crystals_among(list(_part_drafts(listing, columns)))
     return _series_drafts(listing, columns)
 
 
-def _bands_of_models(listing: Listing, columns: Sequence[_Column]) -> bool:
+def columns_of(listing: Listing) -> list[ListColumn]:
+    """What each column of a listing holds."""
+    columns = [_column(index, column.levels, listing.title) for index, column in enumerate(listing.columns)]
+    _settle(columns, listing)
+    return columns
+
+
+def lists_parts(listing: Listing, columns: Sequence[ListColumn]) -> bool:
+    """Whether each row is a part with a number of its own."""
+    return any(column.use == "part_number" for column in columns) and not _bands_of_models(listing, columns)
+
+
+def _bands_of_models(listing: Listing, columns: Sequence[ListColumn]) -> bool:
     """Whether the rows are bands of models named again and again, or over merged rows, rather than parts.
 
     Then each row has a range of frequencies, and nothing beside it but what a band limits.
@@ -88,9 +101,9 @@ def _crystals_among(drafts: list[Draft]) -> list[Draft]:
     return drafts
 
 
-def _column(index: int, levels: tuple[str, ...], title: str) -> _Column:
+def _column(index: int, levels: tuple[str, ...], title: str) -> ListColumn:
     head = interpret(levels)
-    column = _Column(index, head)
+    column = ListColumn(index, head)
     for extra in head.extra:
         column.when = merged(column.when, condition_of(extra))
     column.subject = " ".join(extra for extra in head.extra if condition_of(extra) == When())
@@ -139,7 +152,7 @@ def _is_subject(head: Head) -> bool:
     return bool(text) and (bool(part_tokens(text)) or is_package(text) or condition_of(text) != When())
 
 
-def _settle(columns: list[_Column], listing: Listing) -> None:
+def _settle(columns: list[ListColumn], listing: Listing) -> None:
     """Choose among several part-number columns, and look for one among the columns without a known heading."""
     texts = {column.index: _sample(listing, column.index) for column in columns}
     for column in columns:
@@ -157,7 +170,7 @@ def _settle(columns: list[_Column], listing: Listing) -> None:
         _part_column_by_content(columns, texts)
 
 
-def _part_column_by_content(columns: list[_Column], texts: dict[int, list[str]]) -> None:
+def _part_column_by_content(columns: list[ListColumn], texts: dict[int, list[str]]) -> None:
     for column in columns:
         if column.label is None and column.use in _MAY_NUMBER and texts[column.index]:
             names = [part_tokens(text) for text in texts[column.index]]
@@ -181,7 +194,7 @@ def _is_token(text: str) -> bool:
     return bool(part_tokens(text))
 
 
-def cell_candidates(cell: Placed, column: _Column, when: When, subject: str = "") -> Iterator[Candidate]:
+def cell_candidates(cell: Placed, column: ListColumn, when: When, subject: str = "") -> Iterator[Candidate]:
     """What one cell of a field's column may mean."""
     label = column.label
     if label is None or wording.not_stated(cell.text):
@@ -214,23 +227,27 @@ def cell_candidates(cell: Placed, column: _Column, when: When, subject: str = ""
         yield found
 
 
-def _part_drafts(listing: Listing, columns: list[_Column]) -> Iterator[Draft]:
+def _part_drafts(listing: Listing, columns: list[ListColumn]) -> Iterator[Draft]:
     numbers = [column for column in columns if column.use == "part_number"]
     for row, section in zip(listing.rows, listing.sections, strict=True):
-        base = _row_draft(row, columns, section)
+        base = row_draft(row, columns, section)
         for column in numbers:
             cell = row[column.index]
             if cell is None or wording.not_stated(cell.text):
                 continue
-            yield from _named(base, cell, column)
+            yield _named(base, cell, column)
 
 
-def _named(base: Draft, cell: Placed, column: _Column) -> Iterator[Draft]:
+def part_name(text: str) -> str:
+    """The part number in a cell of its column, other words left out."""
+    words = text.split()
+    tokens = part_tokens(" ".join(words)) if len(words) != 1 else ()
+    return tokens[0] if tokens else " ".join(words)
+
+
+def _named(base: Draft, cell: Placed, column: ListColumn) -> Draft:
     """The row's draft under the part number of one cell; its column's head may add a temperature range or a load."""
-    text = " ".join(cell.text.split())
-    tokens = part_tokens(text)
-    name = text if len(text.split()) == 1 or not tokens else tokens[0]
-    draft = replace(base, part_number=name, where=cell.where, candidates=list(base.candidates))
+    draft = replace(base, part_number=part_name(cell.text), where=cell.where, candidates=list(base.candidates))
     span = column.when.temperature_c
     if span is not None:
         draft.candidates.append(
@@ -247,10 +264,10 @@ def _named(base: Draft, cell: Placed, column: _Column) -> Iterator[Draft]:
             )
         )
         draft.candidates.extend(_headed_stability(cell, column, span))
-    yield draft
+    return draft
 
 
-def _headed_stability(cell: Placed, column: _Column, span: tuple[float, float]) -> Iterator[Candidate]:
+def _headed_stability(cell: Placed, column: ListColumn, span: tuple[float, float]) -> Iterator[Candidate]:
     """The one ± of a head such as "Part number -20 to +70 °C, ±15 ppm": the stability over that range."""
     found = [each for text in column.head.extra for each in read(text, "frequency_stability_ppm")]
     if len(found) != 1 or found[0].min is None or found[0].max is None:
@@ -259,7 +276,16 @@ def _headed_stability(cell: Placed, column: _Column, span: tuple[float, float]) 
     yield Candidate("frequency_stability_ppm", found[0].min, None, found[0].max, (), when, False, raw, cell.where)
 
 
-def _row_draft(row: Sequence[Placed | None], columns: list[_Column], section: str) -> Draft:
+def named_draft(listing: Listing, columns: list[ListColumn], at: int, column: ListColumn) -> Draft:
+    """What one row says of the part whose number stands in a column of it."""
+    row = listing.rows[at]
+    cell = row[column.index]
+    assert cell is not None  # noqa: S101 - the caller knows the name
+    return _named(row_draft(row, columns, listing.sections[at]), cell, column)
+
+
+def row_draft(row: Sequence[Placed | None], columns: list[ListColumn], section: str) -> Draft:
+    """What the cells of some columns of a row say together, and the section that it stands in."""
     draft = Draft()
     if section:
         _take_section(draft, section)
@@ -273,11 +299,11 @@ def _row_draft(row: Sequence[Placed | None], columns: list[_Column], section: st
         else:
             _take_use(draft, cell, column)
             pairs.setdefault(column.use, []).append(cell)
-    _take_sentences(draft, [cell for use in ("", "description") for cell in pairs.get(use, [])])
+    _take_sentences(draft, [cell for use in SENTENCES for cell in pairs.get(use, [])])
     return draft
 
 
-def _take_field(draft: Draft, cell: Placed, column: _Column) -> None:
+def _take_field(draft: Draft, cell: Placed, column: ListColumn) -> None:
     label = column.label
     assert label is not None  # noqa: S101 - the caller asked
     if label.field == "load_capacitance_pf" and any(
@@ -289,7 +315,7 @@ def _take_field(draft: Draft, cell: Placed, column: _Column) -> None:
         draft.take_mode_and_cut(cell.text)
 
 
-def _take_use(draft: Draft, cell: Placed, column: _Column) -> None:
+def _take_use(draft: Draft, cell: Placed, column: ListColumn) -> None:
     text = " ".join(cell.text.split())
     if column.use != "maker":
         draft.texts.append(text)
@@ -334,7 +360,7 @@ def _take_sentences(draft: Draft, cells: list[Placed]) -> None:
         known |= {each.field for each in found}
 
 
-def _series_drafts(listing: Listing, columns: list[_Column]) -> list[Draft]:
+def _series_drafts(listing: Listing, columns: list[ListColumn]) -> list[Draft]:
     """Rows without part numbers: each row's key cells say where its other cells hold."""
     draft = Draft()
     fields = [column for column in columns if column.label is not None]
@@ -360,7 +386,7 @@ def _without_range(when: When) -> When:
     return when.model_copy(update={"temperature_c": None})
 
 
-def _row_key(row: Sequence[Placed | None], columns: list[_Column], section: str, *, alone: bool) -> tuple[When, str]:
+def _row_key(row: Sequence[Placed | None], columns: list[ListColumn], section: str, *, alone: bool) -> tuple[When, str]:
     when, subject = condition_of(section), section if part_tokens(section) else ""
     for column in columns:
         cell = row[column.index]

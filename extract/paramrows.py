@@ -295,7 +295,7 @@ def _hand_down_labels(rows: list[_Row]) -> None:
 
     A band in the label column of a table whose title names the property has the title for its label.
     """
-    for row in rows:
+    for row in rows[:1]:
         if row.label is not None and row.values and row.section and _is_bare_band(row.label_text):
             titled = meaning(row.section).label
             if titled is not None and titled.exact:

@@ -137,9 +137,17 @@ def _label_start(text: str, begin: int, end: int, *, bound_first: bool = False) 
     for start in starts[-10:]:
         if _NEW_SENTENCE.search(text[start:end]) or _ends_value(text, begin, start, bound_first=bound_first):
             continue
-        if is_label(text[start:end]) and _may_follow(text[start:end], text[end + 1 :]):
+        if _names_something(text[start:end], text[begin:start]) and _may_follow(text[start:end], text[end + 1 :]):
             return start
     return None
+
+
+def _names_something(label: str, before: str) -> bool:
+    """Whether a text is a label; "series" and its like are none where a sentence runs into them ("For all series:")."""
+    known = meaning(label.strip(" -–*·、,.:："))
+    if known.label is None and (known.identity or known.role == "model") and before.rstrip()[-1:].isalpha():
+        return False
+    return is_label(label)
 
 
 _FIRST_WORD = re.compile(r"([^\W\d_]+)\.?\s?([,，、]?)")
@@ -365,6 +373,10 @@ def loose_in_prose(piece: Placed) -> list[Candidate]:
     return [each for each in found if each.field != "frequency_mhz" or len(frequencies) == 1]
 
 
+# A range behind a name that no wording file knows ("XYZ = -40/+125 °C") may be any range.
+_BEHIND_NAME = re.compile(r"[^\W\d_][\w.]*\s?[:=]\s?[-+]\d+(?:[.,]\d+)?\s?(?:°\s?C|C)?\s?(?:to|~|…|/|-)")
+
+
 def _on_request(clause: str) -> bool:
     folded = clause.casefold()
     return any(word in folded for word in vocabulary().phrases.get("request", ()) if len(word) > 6)
@@ -399,6 +411,6 @@ def _loose_in_clause(piece: Piece) -> list[Candidate]:
             found += _guesses(piece, "frequency_tolerance_ppm", match[0])
     span = condition_of(text).temperature_c
     stored = any(label.label.field == "storage_temperature_c" for label in wording.find_labels(text))
-    if span is not None and span[0] < 5 and span[1] - span[0] > 40 and not stored:
+    if span is not None and span[0] < 5 and span[1] - span[0] > 40 and not stored and not _BEHIND_NAME.search(text):
         found.append(_guess(piece, "operating_temperature_c", span[0], None, span[1]))
     return found

@@ -48,14 +48,18 @@ def with_measured(heads: list[Head]) -> list[Head]:
     models = sum(head.name is None and any(map(is_part_token, head.extra)) for head in heads)
     limits = any(head.role in ("value", "min", "typ", "max") for head in heads)
     marked: list[Head] = []
+    counted = any(_counts_from(heads, index) for index in range(len(heads)))
     for index, head in enumerate(heads):
         own = any(_says(level, "measured") or _says(level, "sample") for level in head.levels)
         behind = limits and _counts_from(heads, index)
-        after = bool(marked) and marked[-1].role == "measured" and head.role in ("min", "typ", "max")
+        after = counted and bool(marked) and marked[-1].role == "measured" and head.role not in _BESIDE
         asked = models > 1 and any(_says(level, "required") for level in head.levels)
         measured = (own and limits) or behind or (after and limits) or asked
         marked.append(Head(head.levels, role="measured") if measured else head)
     return marked
+
+
+_BESIDE = ("unit", "condition", "remarks", "parameter", "symbol")
 
 
 def _counts_from(heads: Sequence[Head], index: int) -> bool:

@@ -3,11 +3,14 @@
 from __future__ import annotations
 
 import re
+from collections.abc import Sequence
 from dataclasses import replace
+from functools import lru_cache
 
 from extract.candidates import Candidate
 from extract.conditions import condition_of, merged
 from extract.drafts import Draft
+from extract.fold import fold
 from extract.identity import is_package, package_in
 from extract.meaning import part_tokens
 from extract.model import When
@@ -52,6 +55,7 @@ def _for_name(draft: Draft, name: str, names: list[str]) -> Draft:
         elif name in named or (not named and each.field not in own_fields):
             mine.append(_conditioned(each) if not named else replace(each, subject=""))
             package = package_in(each.subject.replace(name, "")) or package if named else package
+    package = package_beside(name, names, draft.lines) or package
     own = Draft(resonance=set(draft.resonance), candidates=mine, texts=list(draft.texts), where=draft.where)
     entries = [entry for subject, each in draft.by_subject.items() if name in names_in(subject) for entry in each]
     own.take_identity(entries)
@@ -62,6 +66,43 @@ def _for_name(draft: Draft, name: str, names: list[str]) -> Draft:
     own.modes, own.cuts = own.modes or set(draft.modes), own.cuts or set(draft.cuts)
     own.attributes = draft.attributes | own.attributes
     return own
+
+
+_TO_SIZE = re.compile(r"[^\w]{0,6}(?:\w{2,12}[^\w]{0,4}){0,2}")
+
+
+@lru_cache(maxsize=512)
+def _sized_names(names: tuple[str, ...], lines: tuple[str, ...]) -> dict[str, str]:
+    """The size that a line prints behind a name or several ("AB-2016: 2.0 x 1.6 mm", "AB-1 / AB-2  3.2 x 2.5 mm")."""
+    found: dict[str, str] = {}
+    pattern = re.compile(
+        "|".join(rf"(?<![\w-]){re.escape(name)}(?![\w-])" for name in sorted(names, key=len, reverse=True))
+    )
+    for line in lines:
+        text = fold(line)
+        places = list(pattern.finditer(text))
+        run: list[str] = []
+        for index, place in enumerate(places):
+            run.append(place[0])
+            until = places[index + 1].start() if index + 1 < len(places) else len(text)
+            between = text[place.end() : until]
+            if until < len(text) and _BETWEEN_NAMES.fullmatch(between):
+                continue
+            package = package_in(between)
+            at = between.find(package) if package is not None else -1
+            if package is not None and at >= 0 and _TO_SIZE.fullmatch(between[:at]):
+                for name in run:
+                    found.setdefault(name, package)
+            run = []
+    return found
+
+
+_BETWEEN_NAMES = re.compile(r"\s*(?:[/,;&、・]|and|und|et|e|y|und|和)\s*")
+
+
+def package_beside(name: str, names: Sequence[str], lines: Sequence[str]) -> str | None:
+    """The size that some line prints beside the name of one model among several; None where none does."""
+    return _sized_names(tuple(names), tuple(lines)).get(name)
 
 
 def _conditioned(candidate: Candidate) -> Candidate:

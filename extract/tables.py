@@ -7,18 +7,20 @@ Bands that run across the top are turned into a listing first.
 from __future__ import annotations
 
 from collections.abc import Iterator, Sequence
-from dataclasses import dataclass, replace
+from dataclasses import dataclass, field, replace
 from itertools import pairwise
 
 from extract import trace
 from extract.candidates import read
+from extract.documents.grid import TextRow
 from extract.documents.model import Cell, Table
 from extract.entries import Column, Item, Listing, Piece, Text
 from extract.fold import fold, key
-from extract.heads import Head, interpret, is_unit
+from extract.heads import Head, bound_and_unit, interpret, is_unit
 from extract.identity import is_package
 from extract.keys import read_key_table, take_code_rows
 from extract.meaning import Meaning, is_part_token, meaning
+from extract.padtables import read_pad_table
 from extract.paramrows import parameter_entries
 from extract.samples import of_samples, with_measured
 from extract.vocabulary import vocabulary
@@ -30,12 +32,16 @@ LONG = 40
 
 def read_table(table: Table) -> list[Item]:
     """Everything that one table says, in reading order."""
-    rows: list[Row] = [row for row in table.grid() if any(row)]
+    rows: list[Row] = [row for row in table.grid() if _holds_any(row)]
     if not rows:
         return []
     short = len(rows) <= LONG
+    if short:
+        rows = whole(rows)
     if short and (keys := read_key_table(rows, table.title)):
         return list(keys)
+    if short and (pads := read_pad_table(rows)):
+        return list(pads)
     if _bands_across(rows):
         rows = [list(row) for row in zip(*rows, strict=True)]
     items: list[Item] = [Text(Piece(table.title, table.where), heading=True)] if table.title else []
@@ -47,6 +53,15 @@ def read_table(table: Table) -> list[Item]:
     return items
 
 
+def _holds_any(row: Row) -> bool:
+    return any(row.texts) if isinstance(row, TextRow) else any(row)
+
+
+def whole(rows: Sequence[Row]) -> list[Row]:
+    """Rows with their cells made once: only a long listing leaves most of its cells unmade."""
+    return [list(row) if isinstance(row, TextRow) else row for row in rows]
+
+
 @dataclass(slots=True)
 class _Block:
     """Heading rows and the rows that they govern; no heading rows where the table has none."""
@@ -55,6 +70,11 @@ class _Block:
     body: list[Row]
     title: str = ""
     above: str = ""
+    known: frozenset[str] = field(init=False)
+    """The heading's texts."""
+
+    def __post_init__(self) -> None:
+        self.known = frozenset(cell.text for head in self.heads for cell in head if cell is not None)
 
 
 def distinct(row: Row) -> list[Cell]:
@@ -70,7 +90,7 @@ def _blocks(rows: list[Row], title: str) -> Iterator[_Block]:
     block = _Block([], [], title)
     index = 0
     while index < len(rows):
-        if len(rows) > LONG and block.heads and not _repeats(block.heads, rows[index]):
+        if len(rows) > LONG and block.heads and not _repeats(block.known, rows[index]):
             block.body.append(rows[index])
             index += 1
         elif count := _head_rows(rows, index):
@@ -104,10 +124,12 @@ def _belongs_below(block: _Block, head: Row) -> bool:
 MOST_ABOVE = 3
 
 
-def _repeats(heads: list[Row], row: Row) -> bool:
+def _repeats(known: frozenset[str], row: Row) -> bool:
     """Whether a row of a long list has a heading's text in it: its heading comes again, or another begins."""
-    texts = {cell.text for head in heads for cell in head if cell is not None}
-    return len(distinct(row)) == 1 or any(cell is not None and cell.text in texts for cell in row)
+    if isinstance(row, TextRow):
+        texts = [text for text in row.texts if text.strip()]
+        return len(texts) == 1 or not known.isdisjoint(texts)
+    return len(distinct(row)) == 1 or any(cell is not None and cell.text in known for cell in row)
 
 
 def _title_before(body: list[Row]) -> str:
@@ -212,7 +234,8 @@ def _goes_on(rows: list[Row], start: int, index: int) -> bool:
         return bool(spanning)
     if spanning and all(cell.row < start + (index - start) for cell in spanning):
         return all(not meaning(cell.text).value or is_part_token(cell.text) or _short(cell) for cell in own)
-    if all(meaning(cell.text).role or is_unit(cell.text) for cell in own):
+    units = sum(bool(meaning(cell.text).role or is_unit(cell.text) or bound_and_unit(cell.text)) for cell in own)
+    if units == len(own) or (units >= 0.6 * len(own) and not any(meaning(cell.text).value for cell in own)):
         return True
     if any(cell.column_span > 1 for cell in distinct(above)) and is_head(row):
         return True
@@ -252,7 +275,7 @@ def _read_block(block: _Block, table: Table) -> Iterator[Item]:
     if heads and _is_listing(block, heads):
         yield from _listings(block, heads, table)
         return
-    yield from parameter_entries(block.body, heads, block.above or block.title)
+    yield from parameter_entries(whole(block.body), heads, block.above or block.title)
 
 
 def _typ_beside_bounds(heads: list[Head]) -> list[Head]:
@@ -313,8 +336,8 @@ def _listings(block: _Block, heads: list[Head], table: Table) -> Iterator[Item]:
     """The block as one listing, or as one for each group of columns where the headings repeat side by side."""
     sections, rows = _sectioned(block.body, block.above)
     for first, last in _folds(heads):
-        columns = tuple(Column(head.levels) for head in heads[first:last])
-        part = [row[first:last] for row in rows]
+        columns = _of_one_model(heads[first:last])
+        part = [row[first:last] for row in rows] if last - first < len(heads) else rows
         kept = [index for index, row in enumerate(part) if any(cell is not None for cell in row)]
         if kept:
             yield Listing(
@@ -326,13 +349,27 @@ def _listings(block: _Block, heads: list[Head], table: Table) -> Iterator[Item]:
             )
 
 
+def _of_one_model(heads: Sequence[Head]) -> tuple[Column, ...]:
+    """The columns of one group; the one model that some head of it names is that of the others, too."""
+    models = {extra for head in heads for extra in head.extra if is_part_token(extra)}
+    model = next(iter(models)) if len(models) == 1 else None
+    own = [head.levels if model is None or model in head.levels else (*head.levels, model) for head in heads]
+    alone = len(heads) > 2 or model is None or any(head.identity for head in heads)
+    return tuple(Column(head.levels) for head in heads) if alone else tuple(map(Column, own))
+
+
 def _sectioned(body: list[Row], section: str) -> tuple[list[str], list[Row]]:
     """Spanning rows are the section of the rows below them."""
     sections: list[str] = []
     rows: list[Row] = []
     for row in body:
-        cells = distinct(row)
-        if len(cells) == 1 and len(row) > 2 and (cells[0].column_span > 1 or row[0] is cells[0]):
+        if isinstance(row, TextRow) and sum(map(bool, map(str.strip, row.texts))) > 1:
+            sections.append(section)
+            rows.append(row)
+            continue
+        made = list(row)
+        cells = distinct(made)
+        if len(cells) == 1 and len(row) > 2 and (cells[0].column_span > 1 or made[0] is cells[0]):
             section = cells[0].text
         elif cells:
             sections.append(section)
@@ -340,9 +377,13 @@ def _sectioned(body: list[Row], section: str) -> tuple[list[str], list[Row]]:
     return sections, rows
 
 
+def _without_model(head: Head) -> Head:
+    return replace(head, extra=tuple(extra for extra in head.extra if not is_part_token(extra)))
+
+
 def _folds(heads: list[Head]) -> list[tuple[int, int]]:
     """Groups of columns: one, or several where the same sequence of headings repeats."""
-    names = [head.name or head.role for head in heads]
+    names = [_without_model(head).name or head.role for head in heads]
     for width in range(2, len(names) // 2 + 1):
         if len(names) % width:
             continue

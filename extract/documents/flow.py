@@ -26,6 +26,9 @@ TITLE_GAP = 1.6
 MOST_ACROSS = 0.35
 # Text sizes: baselines that differ by less are level, where the difference varies by less than the second.
 LEVEL, ALIKE = 0.3, 0.15
+# Two sides are rows where so many of the shorter one's lines are level with the other's, and where tables stand
+# elsewhere on the page, so many lines at least.
+LEVEL_SHARE, LEAST_ROWS = 0.6, 4
 # Three dots or one ellipsis stand for "to" in a range; leaders are longer.
 LEAST_DOTS = 4
 SINGLE_DOTS = frozenset({".", "·", "․", "…", ". .", "_"})
@@ -119,6 +122,11 @@ def _band_in_order(lead: list[Item], band: list[Item], gutter: tuple[float, floa
     left = [item for item in band if (item.box[0] + item.box[2]) / 2 < middle]
     right = [item for item in band if item not in left]
     if left and right and _are_columns(left, right):
+        zones = _zones(left, right)
+        if len(zones) > 1:
+            return [
+                flow for index, zone in enumerate(zones) for flow in _band_in_order([] if index else lead, zone, gutter)
+            ]
         tail = _rows_across(left, right, middle)
         left, right = ([item for item in side if item not in tail] for side in (left, right))
         flows = [lead] if lead else []
@@ -126,6 +134,35 @@ def _band_in_order(lead: list[Item], band: list[Item], gutter: tuple[float, floa
         return flows + ([tail] if tail else [])
     whole = sorted(lead + band, key=lambda item: (item.box[1], item.box[0]))
     return [whole] if whole else []
+
+
+def _zones(left: Sequence[Item], right: Sequence[Item]) -> list[list[Item]]:
+    """The two sides cut above and below tables and drawings, where rows of level texts run across.
+
+    There they are read row by row, though further down a table stands beside text.
+    """
+    items = sorted([*left, *right], key=lambda item: item.box[1])
+    blocks = [item.box for item in items if item.blocks]
+    if not blocks:
+        return [items]
+    upper, lower = min(box[1] for box in blocks), max(box[3] for box in blocks)
+    above = [item for item in items if item.words and item.box[3] <= upper]
+    below = [item for item in items if item.words and item.box[1] >= lower]
+    sides = {id(item) for item in left}
+    above, below = (zone if _are_rows(zone, sides) else [] for zone in (above, below))
+    apart = {id(item) for item in [*above, *below]}
+    middle = [item for item in items if id(item) not in apart]
+    return [zone for zone in (above, middle, below) if zone]
+
+
+def _are_rows(zone: Sequence[Item], left: set[int]) -> bool:
+    """Whether the texts of two sides are rows: three or more levels, nearly all of the shorter side's on both."""
+    sides = [item for item in zone if id(item) in left], [item for item in zone if id(item) not in left]
+    if not zone or not all(sides):
+        return False
+    size = _usual_size(zone)
+    fewer, more = sorted((_levels_of(side, size) for side in sides), key=len)
+    return len(fewer) >= LEAST_ROWS and _level_lines(fewer, more, size) >= LEVEL_SHARE * len(fewer)
 
 
 def _rows_across(left: Sequence[Item], right: Sequence[Item], middle: float) -> list[Item]:
@@ -202,7 +239,7 @@ def _are_columns(left: Sequence[Item], right: Sequence[Item]) -> bool:
     if len(fewer) < 2:
         return False
     level = _level_lines(fewer, more, size)
-    return level < 0.6 * len(fewer)
+    return level < LEVEL_SHARE * len(fewer)
 
 
 def _levels_of(items: Sequence[Item], size: float) -> list[float]:

@@ -114,7 +114,21 @@ def _fresh_levels(own: Sequence[Piece]) -> list[float]:
     shared = [line for line in lines if len({column_of[id(word)] for word in line}) > 1]
     if len(shared) < 3 or len(shared) < 0.6 * len(lines) or any(goes_on(line[0].text) for line in shared):
         return []
+    if _some_column_goes_on(shared, column_of):
+        return []
     return [_level(line) for line in shared]
+
+
+def _some_column_goes_on(lines: Sequence[Sequence[Word]], column_of: dict[int, int]) -> bool:
+    """Whether the text of some cell begins anew in the first line and goes on in a later one ("12 MHz", "to 54")."""
+    begins: dict[int, list[str]] = {}
+    for line in lines:
+        firsts: dict[int, str] = {}
+        for word in line:
+            firsts.setdefault(column_of[id(word)], word.text)
+        for column, text in firsts.items():
+            begins.setdefault(column, []).append(text)
+    return any(not goes_on(texts[0]) and any(goes_on(text) for text in texts[1:]) for texts in begins.values())
 
 
 def _joined_bands(bands: Sequence[list[list[Word]]], column_of: dict[int, int]) -> list[list[list[Word]]]:

@@ -560,3 +560,10 @@ def test_an_absurd_power_of_ten_is_refused_and_its_digits_are_no_choice(text):
     (value,) = read_values(text, "frequency_mhz")
     assert value.empty
     assert text in value.doubts[0]
+
+
+def test_a_coefficient_in_its_formula_is_the_parabola():
+    text = "-0.035 x (T-T0)² ±10%"
+    assert field_for(text, "frequency_stability_ppm") == "parabolic_coefficient_ppm_per_c2"
+    (value,) = read_values(text, "parabolic_coefficient_ppm_per_c2", unit="ppm")
+    assert (value.min, value.typ, value.max) == (-0.0385, -0.035, -0.0315)

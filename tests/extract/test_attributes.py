@@ -51,3 +51,9 @@ def test_pads_named_behind_the_word_crystal_are_read_and_nothing_is_said_of_the_
 
 def test_a_lone_pad_is_no_crystal():
     assert attributes_of({}, ["Pad 1: crystal"]).pads is None
+
+
+def test_pads_named_one_by_one_are_gathered():
+    pads = attributes_of({}, ["Pin map: #1 X'tal, #2 GND, #3 X'tal, #4 GND"]).pads
+    assert pads is not None
+    assert (pads.count, pads.crystal, pads.ground) == (4, (1, 3), (2, 4))

@@ -342,3 +342,16 @@ def test_a_table_on_its_side_reads_as_if_upright(angle):
     table = only_table(blocks(words, rulings))
     assert texts(table) == body
     assert table.cells[0].where.box == turned_back((50, 100, 150, 120), angle, 600, 800)
+
+
+def test_a_drawing_further_down_makes_no_columns_of_labels_and_values():
+    pairs = [
+        ("Tolerance", "20 ppm"),
+        ("Stability", "50 ppm"),
+        ("Load", "16 pF"),
+        ("Ageing", "3 ppm"),
+        ("Drive", "9 uW"),
+    ]
+    drawing = [*text("6.0 mm", 55, 305), *text("3.5 mm", 55, 325)]
+    found = blocks([*rows(pairs, (50, 260)), *drawing, *text("Pads 1 and 3", 260, 310)], grid((50, 120), (300, 340)))
+    assert [tuple(row) for row in texts(next(block for block in found if isinstance(block, Table)))] == pairs

@@ -200,3 +200,40 @@ def test_a_band_in_the_second_column_of_a_spanning_head_is_a_condition():
     found = [each for item in read_table(rows) if isinstance(item, Entry) for each in entry_candidates(item)]
     held = [(each.when.frequency_mhz, each.max) for each in found if each.field == "esr_ohm"]
     assert held == [((12.0, 16.0), 100.0), ((16.0, 54.0), 60.0)]
+
+
+def test_codes_under_one_spanning_label_are_an_ordering_key():
+    made = table(("Load Cap. (pF)", None), ("Blank", "18"), ("8", "8"), ("S", "Series"), spans={(0, 0): (1, 2)})
+    (found,) = read_table(made)
+    assert isinstance(found, Key)
+    assert [code for code, _ in found.choices] == ["Blank", "8", "S"]
+
+
+def test_rows_of_a_model_named_again_are_its_bands():
+    made = table(
+        ("Model", "Frequency", "ESR"),
+        ("AB-1", "16 MHz to 20 MHz", "100 Ω max."),
+        ("AB-1", "20 MHz to 54 MHz", "60 Ω max."),
+        ("AB-2", "12 MHz to 16 MHz", "120 Ω max."),
+    )
+    (draft,) = listing_drafts(read_table(made)[0])
+    found = [(each.subject, each.max, each.when.frequency_mhz) for each in draft.candidates]
+    assert found == [("AB-1", 100, (16, 20)), ("AB-1", 60, (20, 54)), ("AB-2", 120, (12, 16))]
+
+
+def test_pairs_of_columns_headed_by_a_model_are_that_models():
+    made = table(
+        ("AB-1 FREQUENCY RANGE", "ESR (MAX Ω)", "AB-2 FREQUENCY RANGE", "ESR (MAX Ω)"),
+        ("12.000 ~ 15.999 MHz", "120", "16.000 ~ 19.999 MHz", "200"),
+        ("16.000 ~ 29.999 MHz", "80", "20.000 ~ 29.999 MHz", "100"),
+    )
+    drafts = [draft for listing in read_table(made) for draft in listing_drafts(listing)]
+    found = [(each.subject, each.max) for draft in drafts for each in draft.candidates]
+    assert found == [("AB-1", 120), ("AB-1", 80), ("AB-2", 200), ("AB-2", 100)]
+
+
+def test_a_title_is_the_label_of_bands_without_a_heading():
+    made = table(("8 - 10 MHz", "80 Ω"), ("10 - 16 MHz", "60 Ω"), title="Series resistance ESR max.")
+    entries = [item for item in read_table(made) if isinstance(item, Entry)]
+    found = [(each.max, each.when.frequency_mhz) for entry in entries for each in entry_candidates(entry)]
+    assert found == [(80, (8, 10)), (60, (10, 16))]
