@@ -4,7 +4,7 @@ from __future__ import annotations
 
 import math
 import tomllib
-from collections.abc import Sequence
+from collections.abc import Callable, Sequence
 from functools import cache
 from importlib import resources
 from typing import Any
@@ -26,12 +26,17 @@ def doubts(readings: Sequence[Reading], cut: str | None, mode: str | None) -> di
     found: dict[int, str] = {}
     fork = is_fork(readings, cut)
     for index, reading in enumerate(readings):
-        sentence = _order(reading) or _range(reading, fork)
-        if sentence:
+        if sentence := own_doubt(reading, fork):
             found[index] = sentence
-    for index, sentence in _together(readings, cut, mode, fork):
-        found.setdefault(index, sentence)
+    for _, contradiction in TOGETHER:
+        for index, sentence in contradiction(readings, cut, mode, fork):
+            found.setdefault(index, sentence)
     return found
+
+
+def own_doubt(reading: Reading, fork: bool | None) -> str | None:
+    """Why a reading cannot be, whatever else its part states."""
+    return _order(reading) or _range(reading, fork)
 
 
 def is_fork(readings: Sequence[Reading], cut: str | None) -> bool | None:
@@ -100,18 +105,9 @@ def central(reading: Reading) -> float | None:
     return reading.max if reading.max is not None else reading.min
 
 
-def _together(
+def _storage(
     readings: Sequence[Reading], cut: str | None, mode: str | None, fork: bool | None
 ) -> list[tuple[int, str]]:
-    return [
-        *_storage(readings),
-        *_ratio_floor(readings, cut, mode, fork),
-        *_resonance(readings, mode),
-        *_quality(readings, mode),
-    ]
-
-
-def _storage(readings: Sequence[Reading]) -> list[tuple[int, str]]:
     """A part may be stored wherever it may work; the other way round a sign or a digit was lost."""
     working, stored = _first(readings, "operating_temperature_c"), _first(readings, "storage_temperature_c")
     if working is None or stored is None:
@@ -150,7 +146,9 @@ def _ratio_floor(
     return [(motional[0], f"C0/C1 of {ratio:.0f} is below {least:.0f}, the least that quartz of this cut can give")]
 
 
-def _resonance(readings: Sequence[Reading], mode: str | None) -> list[tuple[int, str]]:
+def _resonance(
+    readings: Sequence[Reading], cut: str | None, mode: str | None, fork: bool | None
+) -> list[tuple[int, str]]:
     """L1 against 1 / (ω² C1)."""
     picked = [_first(readings, name) for name in ("frequency_mhz", "motional_capacitance_ff", "motional_inductance_mh")]
     if any(each is None for each in picked):
@@ -166,7 +164,9 @@ def _resonance(readings: Sequence[Reading], mode: str | None) -> list[tuple[int,
     return [(picked[2][0], f"L1 of {l1:g} mH does not fit f and C1, which give {expected:.3g} mH")]
 
 
-def _quality(readings: Sequence[Reading], mode: str | None) -> list[tuple[int, str]]:
+def _quality(
+    readings: Sequence[Reading], cut: str | None, mode: str | None, fork: bool | None
+) -> list[tuple[int, str]]:
     """Q against 1 / (ω R1 C1), from typical values only."""
     names = ("frequency_mhz", "motional_capacitance_ff", "esr_ohm", "quality_factor")
     picked = [_first(readings, name) for name in names]
@@ -180,3 +180,13 @@ def _quality(readings: Sequence[Reading], mode: str | None) -> list[tuple[int, s
         return []
     assert picked[3] is not None  # noqa: S101 - asked above
     return [(picked[3][0], f"Q of {quality:g} does not fit f, C1 and ESR, which give {expected:.3g}")]
+
+
+Contradiction = Callable[[Sequence[Reading], str | None, str | None, bool | None], list[tuple[int, str]]]
+# Each contradiction with the fields whose first readings it compares; it asks nothing of a part that lacks one of them.
+TOGETHER: tuple[tuple[tuple[str, ...], Contradiction], ...] = (
+    (("operating_temperature_c", "storage_temperature_c"), _storage),
+    (("shunt_capacitance_pf", "motional_capacitance_ff"), _ratio_floor),
+    (("frequency_mhz", "motional_capacitance_ff", "motional_inductance_mh"), _resonance),
+    (("frequency_mhz", "motional_capacitance_ff", "esr_ohm", "quality_factor"), _quality),
+)

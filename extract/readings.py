@@ -24,12 +24,20 @@ _SOURCES = {
 ONE_HERTZ = 1e-6
 # Several ranges under one label are a choice.
 RANGES = ("operating_temperature_c", "storage_temperature_c")
+# Fields that choose together: a stability brings its range along, a parabola takes the place of a stability. Beside
+# these only a candidate that holds in a band is touched by another field, the frequency.
+CHOSEN_TOGETHER = frozenset({"operating_temperature_c", "frequency_stability_ppm", "parabolic_coefficient_ppm_per_c2"})
 
 
 def readings_of(
     candidates: Sequence[Candidate], *, cut: str | None = None, mode: str | None = None
 ) -> tuple[Reading, ...]:
     """The readings of one part, in the contract's order of fields, each with its `check` where one is due."""
+    return _written(chosen_of(candidates), cut, mode)
+
+
+def chosen_of(candidates: Sequence[Candidate]) -> list[Candidate]:
+    """The candidates that become readings: which ones hangs on those of the same field, save for `CHOSEN_TOGETHER`."""
     chosen: list[Candidate] = []
     offered = _offered(candidates)
     by_field: dict[str, list[Candidate]] = {}
@@ -38,8 +46,7 @@ def readings_of(
     for name in fields():
         if mine := by_field.get(name):
             chosen += _of_field([_closed(each, offered) for each in _by_temperature(mine)], offered)
-    chosen = _with_operating_range(_without_short_parabola(chosen), candidates)
-    return _written(chosen, cut, mode)
+    return _with_operating_range(_without_short_parabola(chosen), candidates)
 
 
 def _by_temperature(candidates: list[Candidate]) -> list[Candidate]:
@@ -316,12 +323,18 @@ def _written(chosen: Sequence[Candidate], cut: str | None, mode: str | None) -> 
     ordered = sorted(chosen, key=lambda each: order[each.field])
     plain = [_reading(each, None) for each in ordered]
     found = plausible.doubts(plain, cut, mode)
-    written = []
-    for index, each in enumerate(ordered):
-        reasons = [*each.doubts, *([found[index]] if index in found else [])]
-        written.append(_reading(each, "; ".join(dict.fromkeys(reasons))) if reasons else plain[index])
+    written = [
+        reading_of(each, found.get(index)) if each.doubts or index in found else plain[index]
+        for index, each in enumerate(ordered)
+    ]
     trace.took(written, ordered)
     return tuple(written)
+
+
+def reading_of(candidate: Candidate, doubt: str | None) -> Reading:
+    """The reading of a chosen candidate, its check made of the candidate's own doubts and one more."""
+    reasons = dict.fromkeys([*candidate.doubts, *([doubt] if doubt else [])])
+    return _reading(candidate, "; ".join(reasons) or None)
 
 
 def _reading(candidate: Candidate, check: str | None) -> Reading:

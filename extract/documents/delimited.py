@@ -9,7 +9,7 @@ from itertools import islice
 from typing import Literal
 
 from extract.documents.decoding import decode
-from extract.documents.grid import Placer, address, placed_cells
+from extract.documents.grid import address, column_letters, placed_cells
 from extract.documents.model import Document, DocumentError, Table
 from extract.model import Note, Where, lean
 
@@ -110,22 +110,29 @@ def _records(lines: list[str], delimiter: str) -> tuple[_Records, tuple[Note, ..
 
 def _table(records: _Records, skipped: int) -> Table:
     texts = [[cell.strip() for cell in cells] for cells in records.texts]
-    placer = _placer(records, skipped)
     width = max(len(cells) for cells in texts)
-    return Table(placed_cells(texts, placer), len(texts), width, Where(line=1 + skipped, cell="A1"))
+    cells = placed_cells(texts, width, _LinePlaces(records, skipped))
+    return Table(cells, len(texts), width, Where(line=1 + skipped, cell="A1"))
 
 
-def _placer(records: _Records, skipped: int) -> Placer:
-    first_lines, raw = records.first_lines, records.texts
-    broken = {row for row, texts in enumerate(raw) if any("\n" in text for text in texts)}
+class _LinePlaces:
+    """Places in a list: the line on which a cell starts, and its address in a spreadsheet."""
 
-    def place(row: int, column: int) -> Where:
-        line = first_lines[row] + skipped
-        if row in broken:
-            line += sum(text.count("\n") for text in islice(raw[row], column))
+    def __init__(self, records: _Records, skipped: int) -> None:
+        self._first_lines = [line + skipped for line in records.first_lines]
+        self._broken = {row: texts for row, texts in enumerate(records.texts) if any("\n" in text for text in texts)}
+
+    def __call__(self, row: int, column: int) -> Where:
+        line = self._first_lines[row]
+        if row in self._broken:
+            line += sum(text.count("\n") for text in islice(self._broken[row], column))
         return lean(Where(line=line, cell=address(row, column)))
 
-    return place
+    def json_before(self, column: int) -> str:
+        return f'{{"cell": "{column_letters(column)}'
+
+    def json_of_row(self, row: int) -> str | None:
+        return None if row in self._broken else f'{row + 1}", "line": {self._first_lines[row]}'
 
 
 def looks_delimited(text: str) -> bool:

@@ -5,6 +5,8 @@ The readers end here and the layers above start here, so a new format needs no c
 
 from __future__ import annotations
 
+from abc import abstractmethod
+from collections.abc import Sequence
 from dataclasses import dataclass, field
 
 from extract.model import Kind, Note, Where
@@ -31,19 +33,29 @@ class Cell:
     confidence: float = 1.0
 
 
+class GridCells(Sequence[Cell]):
+    """Cells that are kept as rows and know their own grid."""
+
+    @abstractmethod
+    def grid(self) -> list[Sequence[Cell | None]]:
+        """Rows of cells, a merged cell standing in each place that it covers."""
+
+
 @dataclass(frozen=True, slots=True)
 class Table:
     """A grid, ruled or by position. Cells in reading order; empty cells may be left out."""
 
-    cells: tuple[Cell, ...]
+    cells: Sequence[Cell]
     rows: int
     columns: int
     where: Where
     title: str = ""
     ruled: bool = True
 
-    def grid(self) -> list[list[Cell | None]]:
+    def grid(self) -> list[Sequence[Cell | None]]:
         """Rows of cells, a merged cell standing in each place that it covers."""
+        if isinstance(self.cells, GridCells):
+            return self.cells.grid()
         grid: list[list[Cell | None]] = [[None] * self.columns for _ in range(self.rows)]
         for cell in self.cells:
             if cell.row_span == cell.column_span == 1:
@@ -52,7 +64,7 @@ class Table:
             for row in range(cell.row, min(cell.row + cell.row_span, self.rows)):
                 for column in range(cell.column, min(cell.column + cell.column_span, self.columns)):
                     grid[row][column] = cell
-        return grid
+        return list(grid)
 
 
 @dataclass(frozen=True, slots=True)

@@ -4,12 +4,13 @@ from __future__ import annotations
 
 import datetime
 import io
+import json
 import re
-from collections.abc import Callable, Iterator, Mapping, Sequence
+from collections.abc import Iterator, Mapping, Sequence
 from typing import Any
 
 from extract.documents import numberformat, opendocument
-from extract.documents.grid import address, placed_cells, titled
+from extract.documents.grid import Placer, address, column_letters, placed_cells, titled
 from extract.documents.model import Cell, Document, DocumentError, Line, Segment, Table
 from extract.documents.opendocument import DAMAGED, LOCKED, ZIP_FAULTS
 from extract.documents.spacing import pieces
@@ -269,26 +270,42 @@ class _Sheet:
         return len(repeated) > 1 and sum(text in heads for text in repeated) * 2 >= len(repeated)
 
     def _table(self, left: int, right: int, top: int, bottom: int) -> Table:
-        place = self._placer(top, left)
-        cells = placed_cells([texts[left:right] for texts in self.grid[top:bottom]], place)
-        if self.spans:
-            cells = tuple(self._merged(cell, left, right, top, bottom) for cell in cells)
+        place = _SheetPlaces(self.name, top, left)
+        texts = [texts[left:right] for texts in self.grid[top:bottom]]
+        merged = self._merged(left, right, top, bottom, place) if self.spans else {}
+        cells = placed_cells(texts, right - left, place, merged)
         return Table(cells, bottom - top, right - left, place(0, 0))
 
-    def _merged(self, cell: Cell, left: int, right: int, top: int, bottom: int) -> Cell:
-        span = self.spans.get((cell.row + top, cell.column + left))
-        if span is None:
-            return cell
-        height, width = min(span[2] + 1, bottom) - span[0], min(span[3] + 1, right) - span[1]
-        return Cell(cell.text, cell.row, cell.column, cell.where, height, width)
+    def _merged(self, left: int, right: int, top: int, bottom: int, place: Placer) -> dict[tuple[int, int], Cell]:
+        """The merged cells of a table that hold a text, by row and column in it."""
+        found: dict[tuple[int, int], Cell] = {}
+        for (row, column), span in self.spans.items():
+            if not (top <= row < bottom and left <= column < min(right, len(self.grid[row]))):
+                continue
+            if text := self.grid[row][column]:
+                height, width = min(span[2] + 1, bottom) - row, min(span[3] + 1, right) - column
+                at = (row - top, column - left)
+                found[at] = Cell(text, *at, place(*at), height, width)
+        return found
 
-    def _placer(self, top: int, left: int) -> Callable[[int, int], Where]:
-        name = self.name
 
-        def place(row: int, column: int) -> Where:
-            return Where(sheet=name, cell=address(top + row, left + column))
+class _SheetPlaces:
+    """Places on a sheet, for a table whose first cell is at `top` and `left`."""
 
-        return place
+    def __init__(self, name: str, top: int, left: int) -> None:
+        self._name = name
+        self._top = top
+        self._left = left
+
+    def __call__(self, row: int, column: int) -> Where:
+        return Where(sheet=self._name, cell=address(self._top + row, self._left + column))
+
+    def json_before(self, column: int) -> str:
+        name = json.dumps(self._name, ensure_ascii=False)
+        return f'{{"sheet": {name}, "cell": "{column_letters(self._left + column)}'
+
+    def json_of_row(self, row: int) -> str | None:
+        return f'{self._top + row + 1}"'
 
 
 def _is_number(text: str) -> bool:

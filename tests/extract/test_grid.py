@@ -26,7 +26,7 @@ def test_the_seventh_row_of_the_second_column_is_b7() -> None:
 
 
 def test_a_light_cell_is_a_cell_with_its_place() -> None:
-    (cell,) = placed_cells([["", ""], ["", "60"]], place)
+    (cell,) = placed_cells([["", ""], ["", "60"]], 2, place)
     assert isinstance(cell, Cell)
     assert (cell.text, cell.row, cell.column, cell.row_span, cell.column_span) == ("60", 1, 1, 1, 1)
     assert cell.where == Where(line=2, cell="B2")
@@ -34,7 +34,7 @@ def test_a_light_cell_is_a_cell_with_its_place() -> None:
 
 
 def test_a_light_cell_cannot_be_changed() -> None:
-    (cell,) = placed_cells([["60"]], place)
+    (cell,) = placed_cells([["60"]], 1, place)
     with pytest.raises(AttributeError):
         cell.text = "61"  # type: ignore[misc]
 
