@@ -15,8 +15,9 @@ from extract.documents.layout import arrange
 from extract.documents.model import Document, DocumentError, Line, Segment, Table
 from extract.documents.pdf_page import Frame, pdfium_frame, pdfium_glyphs, pdfium_rulings, plumbed
 from extract.documents.pdf_pictures import Pictures, pictures_of
+from extract.documents.pdf_quick import quick_content
 from extract.documents.symbols import is_broken, translated
-from extract.documents.words import Box, inside, union
+from extract.documents.words import Box, Ruling, inside, union
 from extract.model import Note, Where
 from extract.progress import Progress
 
@@ -42,6 +43,8 @@ NO_OCR_BESIDE = (
     "Page {page} holds a large picture that was not read: look at it, or install the reading of pictures with "
     'pip install "quartzfolio[ocr]".'
 )
+
+Content = tuple[list[Glyph], list[Ruling]]
 
 
 @dataclass(slots=True)
@@ -122,7 +125,7 @@ class _Plumber:
         self._file: Any = None
         self.fault = ""
 
-    def page(self, number: int, frame: Frame) -> tuple[list[Glyph], list[Any]] | None:
+    def page(self, number: int, frame: Frame) -> Content | None:
         """Glyphs and lines of a page; None where pdfplumber cannot read it."""
         import pdfplumber
 
@@ -160,7 +163,6 @@ def _read_page(quick: Any, slow: _Plumber, number: int, wanted: Callable[[str], 
     frame = pdfium_frame(page)
     text_page = page.get_textpage()
     text = text_page.get_text_range()
-    text_page.close()
     printed = len(re.sub(r"\s", "", text))
     result = _Page(height=frame.size[1])
     looked_through = number > 1 and len(quick) > CATALOGUE_PAGES and wanted is not None
@@ -176,11 +178,13 @@ def _read_page(quick: Any, slow: _Plumber, number: int, wanted: Callable[[str], 
             result.blocks += blocks
             result.scanned = True
         elif printed:
-            _read_text(page, slow, number, frame, printed=printed, result=result)
+            content = quick_content(page, frame, text_page) or _slow_content(page, slow, number, frame, printed)
+            _place_text(content, number, frame, result)
             if pictures.with_hidden_text:
                 result.warn(HIDDEN_TEXT.format(page=number), number)
             elif printed < LITTLE_TEXT and pictures.boxes:
                 _read_pictures_beside_text(page, number, pictures, result)
+    text_page.close()
     page.close()
     return result
 
@@ -202,12 +206,15 @@ def _placer(number: int, scale: float = 1.0) -> Callable[[Box], Where]:
     return place
 
 
-def _read_text(page: Any, slow: _Plumber, number: int, frame: Frame, *, printed: int, result: _Page) -> None:
-    content = slow.page(number, frame)
-    glyphs, rulings = content if content else ([], pdfium_rulings(page, frame))
+def _slow_content(page: Any, slow: _Plumber, number: int, frame: Frame, printed: int) -> Content:
+    """Glyphs and lines by pdfplumber; glyphs by pdfium where pdfplumber finds fewer than the page has."""
+    glyphs, rulings = slow.page(number, frame) or ([], pdfium_rulings(page, frame))
     readable = sum(len(glyph.text.strip()) for glyph in glyphs if not glyph.text.startswith("(cid:"))
-    if readable < MOST * printed:
-        glyphs = pdfium_glyphs(page, frame)
+    return (glyphs if readable >= MOST * printed else pdfium_glyphs(page, frame)), rulings
+
+
+def _place_text(content: Content, number: int, frame: Frame, result: _Page) -> None:
+    glyphs, rulings = content
     straight = with_underlined_signs([glyph for glyph in glyphs if glyph.angle in (0, 90, 180, 270)], rulings)
     place = _placer(number)
     result.blocks += arrange(

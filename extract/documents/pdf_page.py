@@ -15,10 +15,13 @@ from dataclasses import dataclass
 from typing import Any, NamedTuple
 
 from extract.documents.glyphs import Glyph
+from extract.documents.shapes import Kind, Shape, rulings_of
 from extract.documents.words import Box, Ruling, union
 
-# Points: fills this near to one another show no line between them.
-ABUTTING = 0.6
+# Shares of its size by which type reaches above and below its baseline.
+ABOVE, BELOW = 0.78, 0.22
+# Shares of a colour that nobody tells from white.
+WHITE = 0.02
 RawBox = tuple[float, float, float, float]
 
 
@@ -56,6 +59,16 @@ def _ordered(box: Iterable[float]) -> RawBox:
     return (min(x0, x1), min(y0, y1), max(x0, x1), max(y0, y1))
 
 
+def type_box(box: Box, origin: tuple[float, float], angle: int, size: float) -> Box:
+    """Box from the advance in the reading direction and from the type size across it, where fonts tell odd heights."""
+    x, y = origin
+    return {
+        90: (x - ABOVE * size, box[1], x + BELOW * size, box[3]),
+        270: (x - BELOW * size, box[1], x + ABOVE * size, box[3]),
+        180: (box[0], y - BELOW * size, box[2], y + ABOVE * size),
+    }.get(angle, (box[0], y - ABOVE * size, box[2], y + BELOW * size))
+
+
 # --- pdfplumber
 
 
@@ -65,7 +78,7 @@ def plumbed(page: Any, frame: Frame) -> tuple[list[Glyph], list[Ruling]]:
     left, top = page.bbox[0] + dx, page.bbox[1] + dy
     width, height = frame.size
     glyphs = []
-    chars, shapes = _contents(page)
+    chars, shapes = _contents(page, left, top)
     descents = _descents(chars, page)
     for char in chars:
         box = (char.x0 - left, char.top - top, char.x1 - left, char.bottom - top)
@@ -74,11 +87,12 @@ def plumbed(page: Any, frame: Frame) -> tuple[list[Glyph], list[Ruling]]:
         a, b, _, _, e, f = char.matrix
         angle = round(math.degrees(math.atan2(b, a))) % 360
         base_x, base_y = page.bbox[0] + e - left, page.bbox[1] + page.height - f - top
-        if angle == 0:
-            base_y = box[3] - descents[char.font] * char.size
         size = char.size if angle in (0, 180) else box[2] - box[0]
+        if angle == 0:
+            base_y = box[3] - descents[char.font] * size
+            box = type_box(box, (base_x, base_y), 0, size)
         glyphs.append(Glyph(char.text, box, size, char.font, angle, _base(angle, base_x, base_y, width, height)))
-    return glyphs, [_moved(edge, left, top) for edge in _visible_edges(shapes, width, height)]
+    return glyphs, rulings_of(shapes, width, height)
 
 
 class _Char(NamedTuple):
@@ -95,21 +109,25 @@ class _Char(NamedTuple):
     matrix: tuple[float, float, float, float, float, float]
 
 
-def _contents(page: Any) -> tuple[list[_Char], dict[str, list[dict[str, Any]]]]:
-    """Characters and, by kind, drawn shapes. pdfplumber's dictionary of each character costs more than reading it."""
-    from pdfminer.layout import LTChar
+def _contents(page: Any, left: float, above: float) -> tuple[list[_Char], list[Shape]]:
+    """Characters and drawn shapes; pdfplumber's dictionary of each would cost more than reading it.
+
+    Shapes are counted from `left` and `above`, which is where the shown page begins.
+    """
+    from pdfminer.layout import LTChar, LTCurve, LTLine, LTRect
 
     x, top = page.mediabox[0], page.height + page.mediabox[1]
     chars: list[_Char] = []
-    shapes: dict[str, list[dict[str, Any]]] = {}
+    shapes: list[Shape] = []
     for item in _leaves(page.layout):
         if isinstance(item, LTChar):
             name = item.fontname if isinstance(item.fontname, str) else item.fontname.decode("latin-1")
             place = (item.x0 + x, top - item.y1, item.x1 + x, top - item.y0)
             chars.append(_Char(item.get_text(), *place, item.size, name, item.upright, item.matrix))
-        else:
-            shape = page.process_object(item)
-            shapes.setdefault(shape["object_type"], []).append(shape)
+        elif isinstance(item, LTCurve):
+            kind: Kind = "line" if isinstance(item, LTLine) else "rect" if isinstance(item, LTRect) else "curve"
+            points = [(px + x - left, top - py - above) for px, py in item.pts]
+            shapes.append(Shape(kind, points, bool(item.stroke), _colour(item)))
     return chars, shapes
 
 
@@ -141,62 +159,18 @@ def _base(angle: int, x: float, y: float, width: float, height: float) -> float:
     return {90: x, 270: width - x, 180: height - y}.get(angle, y)
 
 
-def _moved(edge: dict[str, Any], left: float, top: float) -> Ruling:
-    return Ruling(edge["x0"] - left, edge["top"] - top, edge["x1"] - left, edge["bottom"] - top)
-
-
-def _visible_edges(shapes: dict[str, list[dict[str, Any]]], width: float, height: float) -> list[dict[str, Any]]:
-    from pdfplumber.utils.geometry import curve_to_edges, line_to_edge, rect_to_edges
-
-    edges = [line_to_edge(line) for line in shapes.get("line", ())]
-    fills = []
-    for rect in shapes.get("rect", ()):
-        if rect["width"] > 0.97 * width and rect["height"] > 0.9 * height:
-            continue
-        if rect.get("stroke"):
-            edges += rect_to_edges(rect)
-        elif _is_coloured(rect):
-            fills.append(rect)
-    for fill in _abutting_joined(fills):
-        edges += rect_to_edges(fill)
-    for curve in shapes.get("curve", ()):
-        if curve.get("stroke") or _is_coloured(curve):
-            edges += [edge for edge in curve_to_edges(curve) if edge.get("orientation") in ("h", "v")]
-    return [edge for edge in edges if edge.get("orientation") in ("h", "v")]
-
-
-def _abutting_joined(fills: Iterable[dict[str, Any]]) -> list[dict[str, Any]]:
-    """Fills of one colour that stand edge to edge in a row as one: no line shows between them (striped tables)."""
-    joined: list[dict[str, Any]] = []
-    for fill in sorted(
-        fills, key=lambda rect: (str(rect["non_stroking_color"]), round(rect["top"]), round(rect["bottom"]), rect["x0"])
-    ):
-        last = joined[-1] if joined else None
-        if (
-            last is not None
-            and last["non_stroking_color"] == fill["non_stroking_color"]
-            and abs(last["top"] - fill["top"]) < ABUTTING
-            and abs(last["bottom"] - fill["bottom"]) < ABUTTING
-            and abs(last["x1"] - fill["x0"]) < ABUTTING
-        ):
-            last.update(x1=fill["x1"], width=fill["x1"] - last["x0"])
-        else:
-            joined.append(dict(fill))
-    return joined
-
-
-def _is_coloured(shape: dict[str, Any]) -> bool:
-    """Tell whether a filled shape stands out from white paper."""
-    if not shape.get("fill"):
-        return False
-    colour = shape.get("non_stroking_color")
-    if colour is None:
-        return True
+def _colour(item: Any) -> str | None:
+    """What a shape is filled with, as pdfminer tells it; None where it does not stand out from white paper."""
+    colour = item.non_stroking_color
+    if not item.fill:
+        return None
     values = colour if isinstance(colour, list | tuple) else (colour,)
     numbers = [value for value in values if isinstance(value, int | float)]
     if len(numbers) == 4:
-        return any(value > 0.02 for value in numbers)
-    return not numbers or any(value < 0.98 for value in numbers)
+        white = all(value <= WHITE for value in numbers)
+    else:
+        white = bool(numbers) and all(value >= 1 - WHITE for value in numbers)
+    return None if white else str(colour)
 
 
 # --- pdfium
@@ -227,7 +201,7 @@ def pdfium_glyphs(page: Any, frame: Frame) -> list[Glyph]:
         angle = round(-turn - frame.rotation) % 360
         size = _size(raw, text_page, index)
         corner, other = frame.shown(rect.left, rect.top), frame.shown(rect.right, rect.bottom)
-        box = _type_box(union([(*corner, *corner), (*other, *other)]), frame.shown(x.value, y.value), angle, size)
+        box = type_box(union([(*corner, *corner), (*other, *other)]), frame.shown(x.value, y.value), angle, size)
         if box[2] < 0 or box[3] < 0 or box[0] > width or box[1] > height:
             continue
         base = _base(angle, *frame.shown(x.value, y.value), width, height)
@@ -240,16 +214,6 @@ def _size(raw: Any, text_page: Any, index: int) -> float:
     matrix = raw.FS_MATRIX()
     raw.FPDFText_GetMatrix(text_page, index, matrix)
     return float(raw.FPDFText_GetFontSize(text_page, index)) * math.hypot(matrix.c, matrix.d)
-
-
-def _type_box(loose: Box, origin: tuple[float, float], angle: int, size: float) -> Box:
-    """Box from the advance in the reading direction and from the type size across it, where fonts tell odd heights."""
-    x, y = origin
-    return {
-        90: (x - 0.78 * size, loose[1], x + 0.22 * size, loose[3]),
-        270: (x - 0.22 * size, loose[1], x + 0.78 * size, loose[3]),
-        180: (loose[0], y - 0.22 * size, loose[2], y + 0.78 * size),
-    }.get(angle, (loose[0], y - 0.78 * size, loose[2], y + 0.22 * size))
 
 
 def _font_name(raw: Any, text_page: Any, index: int) -> str:
