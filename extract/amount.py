@@ -61,7 +61,22 @@ def read_values(
         In the order printed, one for each condition (band, temperature range, years, mode) or choice of ranges. What
         had to be refused is a value without bounds (`empty`) whose doubts say why; it is there only if nothing else is.
     """
+    if (date := _DATE.fullmatch(text.strip())) is not None:
+        return [_from_date(date, field, bound)]
     return list(_read(text, field, _Given(unit, bound, plus_minus, decimal)))
+
+
+_DATE = re.compile(r"(?:19|20)\d\d-(?P<month>\d\d)-(?P<day>\d\d)(?:[ T]00:00(?::00)?)?")
+
+
+def _from_date(date: re.Match[str], field: str, bound: str | None) -> Value:
+    """A date in the place of an amount: spreadsheets make one of "12.5"; what was meant only a person can say."""
+    day, month = int(date["day"]), int(date["month"])
+    meant = float(f"{day}.{month}")
+    doubt = f"a date stands here; a spreadsheet makes one of {meant:g}, which is taken"
+    limit = bound if bound in ("min", "max") else None
+    made = Value(typ=meant, bare=field_of(field).bare, doubts=(doubt,))
+    return made if limit is None else Value(**{limit: meant}, doubts=(doubt,))
 
 
 @dataclass(frozen=True, slots=True)

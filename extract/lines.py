@@ -5,6 +5,7 @@ from __future__ import annotations
 import math
 import re
 from collections.abc import Iterator, Sequence
+from dataclasses import replace
 from itertools import pairwise
 
 from extract.candidates import has_unit, read
@@ -20,12 +21,14 @@ from extract.meaning import meaning, part_tokens
 from extract.prose import is_label, pair_entries, split_pairs
 from extract.streams import Fragments, paragraph, stream_entries
 from extract.torn import torn_rows
+from extract.vocabulary import vocabulary
 
 
 def line_items(lines: Sequence[Line]) -> list[Item]:
     """A run of lines between two tables, read in order."""
     items: list[Item] = []
     index = 0
+    lines = _unhyphenated(lines)
     fragments = Fragments(lines)
     while index < len(lines):
         taken = (
@@ -38,6 +41,27 @@ def line_items(lines: Sequence[Line]) -> list[Item]:
         )
         index += taken
     return items
+
+
+_HYPHENATED = re.compile(r"[^\W\d_]{2,}-$")
+
+
+def _unhyphenated(lines: Sequence[Line]) -> Sequence[Line]:
+    """Lines with a label that was broken over two of them put together: "Last-" above "kapazität 6 pF"."""
+    if not any(_HYPHENATED.search(line.text) for line in lines):
+        return lines
+    whole: list[Line] = []
+    for line in lines:
+        above = whole[-1] if whole else None
+        if above is not None and _HYPHENATED.search(above.text) and line.text[:1].islower():
+            joined = above.text[:-1] + line.text
+            words = joined.split()
+            if any(is_label(" ".join(words[:count])) for count in range(1, min(4, len(words)) + 1)):
+                first = replace(above.segments[0], text=joined)
+                whole[-1] = replace(above, segments=(first,))
+                continue
+        whole.append(line)
+    return whole
 
 
 def _dump(lines: Sequence[Line], index: int, items: list[Item]) -> int:
@@ -82,7 +106,8 @@ def _one(line: Line, items: list[Item]) -> int:
     # A part number in the line begins a part, and the line's text belongs to that part: a line that begins with it goes
     # before what it states.
     own = [] if _is_footnote(line.text) else list(_entries(line))
-    items.extend([_text(line), *own] if begins_with_part(line.text) else [*own, _text(line)])
+    first = begins_with_part(line.text) or speaks_of_all(line.text)
+    items.extend([_text(line), *own] if first else [*own, _text(line)])
     return 1
 
 
@@ -90,7 +115,18 @@ def begins_with_part(text: str) -> bool:
     """Whether a line lists one part: its number first, perhaps numbered, and behind it what it is."""
     plain = ROW_NUMBER.sub("", fold(text))
     tokens = part_tokens(plain)
-    return bool(tokens) and bool(re.match(re.escape(tokens[0]) + r"\s?[:,;–-]", plain))
+    return bool(tokens) and bool(
+        re.match(re.escape(tokens[0]) + r"(?:\s?[:,;–-]|\s\(?\d+(?:[.,]\d+)?\s?[MkK]Hz)", plain)
+    )
+
+
+def speaks_of_all(text: str) -> bool:
+    """Whether a line says something of all parts named ("All parts: storage -55 to +125 °C")."""
+    folded = ROW_NUMBER.sub("", fold(text)).casefold().lstrip(" (")
+    return any(
+        folded.startswith(word) and not folded[len(word) : len(word) + 1].isalpha()
+        for word in vocabulary().phrases.get("all_parts", ())
+    )
 
 
 ROW_NUMBER = re.compile(r"^\s*(?:\(?\d{1,2}[.)]|[-•*·])\s+")

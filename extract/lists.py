@@ -342,7 +342,7 @@ def _take_section(draft: Draft, section: str) -> None:
 def _take_sentences(draft: Draft, cells: list[Placed]) -> None:
     """Properties inside one cell, as pairs or as a shop's one-line description, where no column states them."""
     from extract.candidates import entry_candidates, offers_series
-    from extract.prose import loose_candidates, pair_entries
+    from extract.prose import loose_candidates, loose_in_prose, pair_entries
 
     known = {candidate.field for candidate in draft.candidates}
     for cell in cells:
@@ -353,9 +353,10 @@ def _take_sentences(draft: Draft, cells: list[Placed]) -> None:
         draft.take_identity(entries)
         if any(offers_series(entry) for entry in entries):
             draft.resonance.add("series")
-        if len(found) < len(loose := loose_candidates(cell)):
-            labelled = {each.field for each in found}
-            found += [each for each in loose if each.field not in labelled]
+        for loose in (loose_in_prose(cell), loose_candidates(cell)):
+            told = {each.field for each in found}
+            found += [each for each in loose if each.field not in told]
+        draft.package = draft.package or package_in(cell.text)
         draft.candidates.extend(each for each in found if each.field not in known)
         known |= {each.field for each in found}
 

@@ -21,7 +21,7 @@ from extract.model import Note, Part, Reading, lean
 from extract.prose import loose_in_prose
 from extract.quoted import without_quoted
 from extract.readings import readings_of
-from extract.refusals import refusal
+from extract.refusals import REQUIREMENT, asks_of_a_crystal, refusal
 from extract.sections import Section, sections
 from extract.subjects import split_by_subject
 from extract.vocabulary import vocabulary
@@ -61,7 +61,10 @@ def parts_of(blocks: Blocks) -> Found:
     drafts: list[Draft] = []
     reason = None
     for section in named or [common]:
-        if (reason := refusal(texts_of(section.items))) is not None:
+        reason = refusal(texts_of(section.items))
+        if reason == REQUIREMENT and any(draft.part_number for draft in _listed(section)):
+            reason = None
+        if reason is not None:
             _pass_over(found, section.name or part_number_of(blocks.items, blocks.headers), reason)
             continue
         drafts += _of_section(section, shared if named else None, blocks)
@@ -94,7 +97,7 @@ def _pass_over(found: Found, name: str | None, reason: str) -> None:
 def _of_section(section: Section, shared: Draft | None, blocks: Blocks) -> list[Draft]:
     own = _draft(section, blocks)
     own.part_number = own.part_number or section.name
-    listed = [each for item in section.items if isinstance(item, Listing) for each in listing_drafts(item)]
+    listed = _listed(section)
     rows = [each for each in listed if each.part_number is not None]
     for each in listed:
         if each.part_number is None:
@@ -116,6 +119,10 @@ def _of_section(section: Section, shared: Draft | None, blocks: Blocks) -> list[
     if own.part_number is None:
         own.part_number = part_number_of(section.items, blocks.headers)
     return split_by_subject(own)
+
+
+def _listed(section: Section) -> list[Draft]:
+    return [each for item in section.items if isinstance(item, Listing) for each in listing_drafts(item)]
 
 
 LEAST_OF_ITS_OWN = 4
@@ -195,6 +202,9 @@ def _draft(section: Section, blocks: Blocks) -> Draft:
 
 def _take_entry(draft: Draft, entry: Entry, blocks: Blocks, heading: str) -> None:
     about = [heading, entry.section]
+    if asks_of_a_crystal(about):
+        trace.passed(f"{entry.label.text}", entry.where, "stands under a heading of what a chip asks of a crystal")
+        return
     if says(about, "reliability"):
         trace.passed(f"{entry.label.text}", entry.where, "stands under a heading of reliability tests")
         return

@@ -402,7 +402,7 @@ def _loose_in_clause(piece: Piece) -> list[Candidate]:
         if span is not None and span[1] - span[0] > 40:
             plain = _guesses(piece, "frequency_stability_ppm", match[0])
             found += [replace(each, doubts=(), inferred=False) for each in plain]
-        elif re.match(r"\W{0,3}\w{0,3}\s?\+?2[0-9]\s?°", tail):
+        elif re.match(r"\W{0,3}\w{0,3}\s?\+?2[0-9]\s?(?:°|C\b)", tail):
             plain = _guesses(piece, "frequency_tolerance_ppm", match[0])
             found += [replace(each, doubts=(), inferred=False) for each in plain]
         elif len(amounts) == len(amounts_ppm) == 1 and _FREQUENCY.match(

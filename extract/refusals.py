@@ -15,6 +15,17 @@ def _words(text: str) -> tuple[str, ...]:
     return tuple(wording.oscillator_words(text))
 
 
+REQUIREMENT = "a list of what a chip asks of a crystal"
+# A heading is short; longer is a sentence.
+HEADING = 80
+
+
+def asks_of_a_crystal(headings: Iterable[str]) -> bool:
+    """Whether a heading announces what a chip asks of a crystal."""
+    short = (text for text in headings if text and len(text) < HEADING)
+    return any(vocabulary().oscillator.get(key(word)) == "requirement" for text in short for word in _words(text))
+
+
 def refusal(texts: Iterable[str], *, least: int = 2) -> str | None:
     """Why the texts are not about a crystal; None where they may be.
 
@@ -23,7 +34,7 @@ def refusal(texts: Iterable[str], *, least: int = 2) -> str | None:
     found = {key(word) for text in texts for word in _words(text)}
     kinds = [vocabulary().oscillator.get(word, "words") for word in found]
     if "requirement" in kinds:
-        return "a list of what a chip asks of a crystal"
+        return REQUIREMENT
     if kinds.count("words") >= least:
         return "an oscillator"
     return "another kind of resonator or a filter" if "resonator" in kinds else None

@@ -7,7 +7,7 @@ from dataclasses import dataclass, field
 
 from extract.entries import Entry, Item, Listing, Text
 from extract.identity import package_in, unfolded
-from extract.lines import ROW_NUMBER, begins_with_part
+from extract.lines import ROW_NUMBER, begins_with_part, speaks_of_all
 from extract.meaning import identity_words, meaning, part_tokens
 from extract.prose import loose_in_prose
 
@@ -37,6 +37,8 @@ def sections(items: Sequence[Item]) -> list[Section]:
     """One section for each part where headings name several, the common one first; else everything in one."""
     found = [Section(None)]
     for item in items:
+        if isinstance(item, Text) and found[-1].name is not None and speaks_of_all(item.piece.text):
+            found.append(Section(None))
         name = _names(item)
         if name is not None and name != found[-1].name:
             found.append(Section(name))

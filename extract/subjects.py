@@ -10,6 +10,7 @@ from functools import lru_cache
 from extract.candidates import Candidate
 from extract.conditions import condition_of, merged
 from extract.drafts import Draft
+from extract.entries import Entry
 from extract.fold import fold
 from extract.identity import is_package, package_in
 from extract.meaning import part_tokens
@@ -25,8 +26,20 @@ def split_by_subject(draft: Draft) -> list[Draft]:
         return [draft]
     names = list(dict.fromkeys(name for subject in subjects for name in names_in(subject)))
     if len(names) < 2:
+        _take_common_identity(draft)
         return [replace_candidates(draft, [_conditioned(each) for each in draft.candidates])]
     return [_for_name(draft, name, names) for name in names]
+
+
+def _take_common_identity(draft: Draft) -> None:
+    """What all columns say alike of mode, cut or grade is said of the part."""
+    by_label: dict[str, list[Entry]] = {}
+    for entries in draft.by_subject.values():
+        for entry in entries:
+            by_label.setdefault(entry.label.text, []).append(entry)
+    for entries in by_label.values():
+        if len({" ".join(entry.values[0].piece.text.split()) for entry in entries}) == 1:
+            draft.take_identity(entries[:1])
 
 
 def names_in(subject: str) -> list[str]:

@@ -6,6 +6,7 @@ Bands that run across the top are turned into a listing first.
 
 from __future__ import annotations
 
+import re
 from collections.abc import Iterator, Sequence
 from dataclasses import dataclass, field, replace
 from itertools import pairwise
@@ -19,7 +20,7 @@ from extract.fold import fold, key
 from extract.heads import Head, bound_and_unit, interpret, is_unit
 from extract.identity import is_package
 from extract.keys import read_key_table, take_code_rows
-from extract.meaning import Meaning, is_part_token, meaning
+from extract.meaning import Meaning, is_part_token, meaning, part_tokens
 from extract.padtables import read_pad_table
 from extract.paramrows import parameter_entries
 from extract.samples import of_samples, with_measured
@@ -272,10 +273,34 @@ def _read_block(block: _Block, table: Table) -> Iterator[Item]:
     if of_samples(heads, block.body, block.above or block.title):
         trace.passed(block.title or "a table", table.where, "measured on samples, no limit")
         return
+    if not heads and (numbered := _rows_of_parts(block.body)) is not None:
+        yield from _listings(replace(block, body=numbered), [interpret(("part number",)), *_DESCRIBED], table)
+        return
     if heads and _is_listing(block, heads):
         yield from _listings(block, heads, table)
         return
     yield from parameter_entries(whole(block.body), heads, block.above or block.title)
+
+
+_DESCRIBED = [interpret(("description",))]
+_COUNT = re.compile(r"^\s*(?:\(?\d{1,2}[.)]|[-•*·])\s+")
+
+
+def _rows_of_parts(body: list[Row]) -> list[Row] | None:
+    """Rows of a table without headings that each begin with a part number and describe it beside; else None."""
+    rows: list[Row] = []
+    for row in body:
+        cells = distinct(row)
+        text = _COUNT.sub("", fold(cells[0].text)) if len(cells) == 2 else ""
+        if not text or part_tokens(text) != (text,) or not any(c.isdigit() for c in cells[1].text):
+            return None
+        rows.append([replace(cells[0], text=text), cells[1]])
+    names = {row[0].text for row in rows if row[0] is not None}
+    described = all(row[1] is not None and len(row[1].text) >= LEAST_DESCRIPTION for row in rows)
+    return rows if len(names) == len(rows) >= 2 and described else None
+
+
+LEAST_DESCRIPTION = 16
 
 
 def _typ_beside_bounds(heads: list[Head]) -> list[Head]:

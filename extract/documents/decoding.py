@@ -37,7 +37,23 @@ _COMMONNESS = {"euc_jp": 0.8, "big5": 0.8, "cp1250": 0.78}
 _KOREAN_SYLLABLES = frozenset(
     "의이다는을를에로하고가한지기도수사용부온정전주파허차동작범위저항량대최소준격제품류력압형"
 )
+# Ideographs that lists and sheets print over and over; a text read in the wrong encoding has few of them.
+_EVERYDAY = {
+    "euc_jp": frozenset(
+        "公称周波数許容偏差温度範囲動作保存負荷容量等価直列抵抗励振絶縁並経年変化外形寸法水晶子型番品名仕様書条件単位備考"
+        "最大小標準値以上下月日特性電圧定格項目記号製造社会式株部表図注意用途基本頂点係次率在庫金額納期価格一二三株式有限"
+    ),
+    "gb18030": frozenset(
+        "的标称频率负载电容谐振阻等效串联静态激励功工作温度范围储存老化绝缘最大小典型值单位条件备注编号厂家封装尺寸年月日"
+        "产品规格书公司有限晶体荡器误差稳定性参数项目符号说明价库期一二三个是在不为用于客户名数量检验标准品牌交货"
+    ),
+    "big5": frozenset(
+        "的標稱頻率負載電容諧振阻等效串聯靜態激勵功工作溫度範圍儲存老化絕緣最大小典型值單位條件備註編號廠家封裝尺寸年月日"
+        "產品規格書公司有限晶體盪器誤差穩定性參數項目符號說明價庫期一二三個是在不為用於客戶名數量檢驗標準品牌交貨"
+    ),
+}
 _SAMPLE = 4000  # characters beyond ASCII that are weighed
+_ENOUGH = 8  # ideographs from which on too few everyday ones tell something
 _CLEAR_LEAD = 0.15
 _TRADE_SIGNS = frozenset("°±µ²³×·–—“”„‘’…€§«»")
 _WIDE_SIGNS = frozenset("ΩΔμ±×℃°≤≥～〜・．，。：；、（）【】「」／％－＋—…→※■●○△▲①②③④⑤≦≧∞σπφαβγθ¢£‘’“”•·★☆◆◇□")
@@ -153,6 +169,10 @@ def _likelihood(text: str, encoding: str) -> float:
         hangul = [character for character in text if "\uac00" <= character <= "\ud7a3"][:_SAMPLE]
         everyday = sum(character in _KOREAN_SYLLABLES for character in hangul)
         likelihood *= 1.2 if everyday * 3 > len(hangul) else 0.6
+    if encoding in _EVERYDAY:
+        ideographs = [character for character in text if "\u4e00" <= character <= "\u9fff"][:_SAMPLE]
+        share = sum(character in _EVERYDAY[encoding] for character in ideographs) / max(1, len(ideographs))
+        likelihood *= 1.2 if share > 0.4 else 0.6 if share < 0.15 and len(ideographs) >= _ENOUGH else 1.0
     return likelihood * _COMMONNESS.get(encoding, 1.0)
 
 
@@ -190,7 +210,8 @@ def _chinese(before: str, character: str, after: str) -> float:
         # Traditional characters lie outside GB2312: weighed by Big5's everyday half.
         return simplified or 0.7 * _level(character, "big5", 0xC9)
     if "\u3040" <= character <= "\u30ff":
-        return 0.3
+        # EUC-JP has its kana where GB2312 has them; no Chinese sheet prints more than a stray one.
+        return -1.0
     return 0.0
 
 
