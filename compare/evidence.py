@@ -4,6 +4,7 @@ from __future__ import annotations
 
 import hashlib
 import io
+import threading
 from dataclasses import dataclass
 from pathlib import Path
 from typing import TYPE_CHECKING
@@ -16,6 +17,8 @@ if TYPE_CHECKING:
 POINTS_PER_INCH, DOTS_PER_INCH = 72, 150
 # A page is drawn no wider than this: a scan can be of any size.
 WIDEST = 1700
+# The library serves one thread at a time, and each person at the page has a thread.
+_one_at_a_time = threading.Lock()
 BOX_COLOUR, PAD = (91, 63, 143), 3.0
 
 
@@ -67,10 +70,26 @@ def sheet_bytes(sheet: SpecSheet) -> bytes | None:
     return data if hashlib.sha256(data).hexdigest() == sheet.sha256 else None
 
 
+def page_count(data: bytes, kind: str) -> int:
+    """How many pages there are to show; 0 where the kind of file has no picture or it cannot be opened."""
+    if kind == "image":
+        return 1
+    if kind != "pdf":
+        return 0
+    import pypdfium2
+
+    with _one_at_a_time:
+        try:
+            with pypdfium2.PdfDocument(data) as document:
+                return len(document)
+        except pypdfium2.PdfiumError:
+            return 0
+
+
 def _pdf_page(data: bytes, number: int) -> Image:
     import pypdfium2
 
-    with pypdfium2.PdfDocument(data) as document:
+    with _one_at_a_time, pypdfium2.PdfDocument(data) as document:
         page = document[number - 1]
         picture: Image = page.render(scale=DOTS_PER_INCH / POINTS_PER_INCH).to_pil().convert("RGB")
         page.close()

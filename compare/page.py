@@ -4,13 +4,14 @@ from __future__ import annotations
 
 import streamlit as st
 
-from compare import circuit_text, drawing, pieces, shown
+from compare import drawing, pieces, shown
 from compare import page_session as session
 from compare.page_choose import choose_view
 from compare.page_circuit import circuit_view
 from compare.page_reading import told_of_reading
 from compare.page_review import review_view
 from compare.page_sheets import sheets_view
+from compare.page_work import head
 
 
 def keys(views: list[str]) -> None:
@@ -36,9 +37,7 @@ def main() -> None:
         pages[name] = st.Page(view, title=name.capitalize() + looks, url_path=name, default=name == "sheets")
     st.session_state.pages = pages
     current = st.navigation(list(pages.values()), position="top")
-    terms = st.empty()
-    if (bench := session.desk().bench) is not None:
-        terms.html(pieces.terms_html(circuit_text.terms(bench)))
+    head()
     # Places of their own, filled in this order: else all that follows would shift while sheets are read.
     reading, body, foot = st.container(), st.container(), st.container()
     with reading:

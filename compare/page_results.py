@@ -5,14 +5,17 @@ from __future__ import annotations
 import hashlib
 import traceback
 from collections.abc import Callable, Sequence
-from typing import Any
+from typing import Any, TypeVar
 
 import streamlit as st
 
 from compare import evidence
 from compare.bench import Bench
+from compare.ranking import Ranked, rank_sheets
 from compare.work import OpenSheet, Work
-from extract.model import Reading, SpecSheet
+from extract.model import SpecSheet, Where
+
+Result = TypeVar("Result")
 
 
 def sheets() -> list[SpecSheet]:
@@ -29,6 +32,17 @@ def ranked(key: str, _sheets: Sequence[SpecSheet], _bench: Bench) -> dict[str, A
     return result
 
 
+@st.cache_resource(max_entries=8, show_spinner="Ranking …")
+def contested(key: str, _sheets: Sequence[SpecSheet], _bench: Bench) -> Ranked:  # noqa: ARG001
+    return rank_sheets(_sheets, _bench)
+
+
+def contest(bench: Bench) -> Ranked | None:
+    """All that is open in order, a row's sentences made when asked; None where that went wrong, which has been told."""
+    every = sheets()
+    return guarded("ranking", lambda: contested(key_of(bench, every), every, bench))
+
+
 @st.cache_resource(max_entries=64, show_spinner="Working the part out …")
 def reviewed(key: str, _sheets: Sequence[SpecSheet], _bench: Bench) -> dict[str, Any]:  # noqa: ARG001
     from compare.review import review
@@ -38,9 +52,15 @@ def reviewed(key: str, _sheets: Sequence[SpecSheet], _bench: Bench) -> dict[str,
 
 
 @st.cache_resource(max_entries=64, show_spinner=False)
-def picture(sha256: str, where: str, _one: OpenSheet, _reading: Reading) -> Any:  # noqa: ARG001
+def picture(sha256: str, where: str, _one: OpenSheet, _where: Where) -> Any:  # noqa: ARG001
     data = _one.data if _one.data is not None else evidence.sheet_bytes(_one.sheet)
-    return None if data is None else evidence.page_picture(data, _one.sheet, _reading.where)
+    return None if data is None else evidence.page_picture(data, _one.sheet, _where)
+
+
+@st.cache_resource(max_entries=256, show_spinner=False)
+def page_count(sha256: str, kind: str, _data: bytes) -> int:  # noqa: ARG001
+    """How many pages of a sheet can be shown; 0 where its kind has none."""
+    return evidence.page_count(_data, kind)
 
 
 def ranking(bench: Bench) -> dict[str, Any] | None:
@@ -58,7 +78,7 @@ def key_of(bench: Bench, of: Sequence[SpecSheet]) -> str:
     return hashlib.sha256("\n".join(told).encode()).hexdigest()
 
 
-def guarded(what: str, work: Callable[[], dict[str, Any]]) -> dict[str, Any] | None:
+def guarded(what: str, work: Callable[[], Result]) -> Result | None:
     """Do `work`; a fault of ours is told with what happened to save, and the person's work is kept."""
     try:
         return work()

@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 import getpass
+import hashlib
 import sys
 from collections.abc import Sequence
 from dataclasses import replace
@@ -15,14 +16,14 @@ from compare import background, keeping, typed
 from compare.background import File, Reader
 from compare.bench import BenchError
 from compare.desk import NO_EXAMPLE, Desk, desk_from_bench, field_of, orchard_example
-from compare.folio import SUFFIX, FolioError, read_folio
+from compare.folio import SUFFIX, FolioError, Reopened, read_folio
 from compare.intake import single_names
-from compare.page_results import guarded, key_of, ranked, ranking, reviewed, sheets
+from compare.page_results import contest, guarded, key_of, ranked, ranking, reviewed, sheets
 from compare.palette import Palette, palette_of
 from compare.serve import read_script_arguments
-from compare.work import History, Work, with_sheets
+from compare.work import History, OpenSheet, Work, with_sheets
 
-__all__ = ["guarded", "key_of", "ranked", "ranking", "reviewed", "sheets"]
+__all__ = ["contest", "guarded", "key_of", "ranked", "ranking", "reviewed", "sheets"]
 
 KEPT_WHERE = "Your work is not saved: {fault}. Save it as a work file before you close the page."
 
@@ -32,6 +33,8 @@ def start() -> None:
     state = st.session_state
     if "work" not in state:
         state.update(work=Work(), history=History(), saved="", inbox=0, chosen=None, said=[], reader=Reader())
+        # `turn` counts what was changed, `moved` what was looked at other than by a press: tables mark their row anew.
+        state.update(turn=0, moved=0, editing=None)
         state.ident = str(st.query_params.get("work", ""))
         if not recall(state.ident):
             state.ident = keeping.new_ident()
@@ -88,6 +91,7 @@ def remember(new: Work) -> None:
     if new == work() and st.session_state.saved:
         return
     st.session_state.work = new
+    st.session_state.turn += 1
     save()
 
 
@@ -117,9 +121,17 @@ def recall(ident: str) -> bool:
         return False
     if found is None:
         return False
-    st.session_state.update(work=found.work, history=found.history, ident=ident, saved=keeping.saved_at(ident))
-    forget_fields()
+    take_up(found, ident)
+    st.session_state.saved = keeping.saved_at(ident)
     return True
+
+
+def take_up(found: Reopened, ident: str) -> None:
+    """Make a work that was read the one that is open."""
+    state = st.session_state
+    state.update(work=found.work, history=found.history, ident=ident, chosen=None, said=[*found.said], editing=None)
+    state.turn += 1
+    forget_fields()
 
 
 def open_folio(data: bytes, name: str) -> bool:
@@ -129,11 +141,28 @@ def open_folio(data: bytes, name: str) -> bool:
     except FolioError as fault:
         say(str(fault))
         return False
-    state = st.session_state
-    state.update(work=found.work, history=found.history, ident=keeping.new_ident(), chosen=None, said=[*found.said])
-    forget_fields()
+    take_up(found, keeping.new_ident())
     save()
     return True
+
+
+def found(one: OpenSheet, data: bytes, name: str) -> str:
+    """Put a sheet's own file beside its readings; a sentence where it is not the file that was read."""
+    if hashlib.sha256(data).hexdigest() != one.sheet.sha256:
+        return f"{name} is not the file that was read: its fingerprint differs"
+    sheets = tuple(OpenSheet(each.sheet, data) if each.key == one.key else each for each in work().sheets)
+    st.session_state.work = replace(work(), sheets=sheets)
+    st.session_state.turn += 1
+    save()
+    return ""
+
+
+def forget_other(ident: str) -> None:
+    """Remove another work from this machine."""
+    try:
+        keeping.forget(ident)
+    except OSError as fault:
+        say(f"Not everything could be removed: {fault}")
 
 
 def forget() -> None:
@@ -147,6 +176,7 @@ def forget() -> None:
         say(f"Not everything could be removed: {fault}")
     state.update(work=Work(), history=History(), ident=keeping.new_ident(), saved="", chosen=None, reader=Reader())
     state.inbox += 1
+    state.turn += 1
     forget_fields()
 
 

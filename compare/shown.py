@@ -14,7 +14,10 @@ from extract.model import Note, Part, Reading, SpecSheet, When, Where
 
 LOOK, SHORT = "☞", "▼"
 HOW = {"stated": "stated", "inferred": "∴ inferred", "entered": "✎ entered"}
-HOW_LEGEND = "stated: printed there · ∴ inferred: worked out from other readings · ☞ look: a person must decide"
+HOW_LEGEND = (
+    "stated: printed there · ∴ inferred: worked out from other readings · ✎ entered: typed by a person · "
+    "☞ look: a person must decide"
+)
 
 
 # Short names for a row; `title` gives the trade's full ones.
@@ -134,47 +137,25 @@ def attributes_lines(part: Part) -> list[str]:
     return [f"{name}: {value}" for name, value in lines.items() if value is not None]
 
 
-def in_order(part: Part) -> list[Reading]:
-    """A part's readings, those to look at first, else as the sheet has them."""
-    return sorted(part.readings, key=lambda reading: reading.check is None)
-
-
-def readings_frame(part: Part) -> pd.DataFrame:
-    """A part's readings in the order of `in_order`: name, bounds as text, unit, where it holds, how we have it."""
-    rows = [
-        (
-            NAMES[reading.field],
-            _bound(reading, reading.min),
-            _options(reading) if reading.options else _bound(reading, reading.typ),
-            _bound(reading, reading.max),
-            _unit(reading.field),
-            how(reading),
-            when_text(reading.when),
-        )
-        for reading in in_order(part)
-    ]
-    return pd.DataFrame(rows, columns=["Reading", "Min", "Typ", "Max", "Unit", "How we have it", "Holds for"])
-
-
 def title(field: str) -> str:
     """A field's name in the trade's words, as a row begins with it."""
     named = field_of(field).title
     return named[0].upper() + named[1:]
 
 
-def _unit(field: str) -> str:
+def unit_of(field: str) -> str:
     unit = field_of(field).unit
     return "" if unit == "1" else unit
 
 
-def _bound(reading: Reading, value: float | None) -> str:
+def bound_text(reading: Reading, value: float | None) -> str:
     if value is None:
         return ""
     plus = "+" if value > 0 and field_of(reading.field).sign in ("symmetric", "either") else ""
     return plus + exact(value)
 
 
-def _options(reading: Reading) -> str:
+def options_text(reading: Reading) -> str:
     sign = "±" if field_of(reading.field).sign == "symmetric" else ""
     return ", ".join(sign + exact(value) for value in reading.options)
 
@@ -218,24 +199,22 @@ def when_text(when: When) -> str:
 
 def value_text(reading: Reading) -> str:
     """The whole reading in words: `28 typ, at most 50 Ω`."""
-    unit = _unit(reading.field)
+    unit = unit_of(reading.field)
     if reading.options:
-        return f"{_options(reading)} {unit}, to choose from".strip()
+        return f"{options_text(reading)} {unit}, to choose from".strip()
     if reading.min is not None and reading.max is not None:
         around = "" if reading.typ is None else f", {exact(reading.typ)} typical"
         return spread(reading.min, reading.max, unit, digits=9) + around
     bounds = ((reading.typ, "{}"), (reading.min, "at least {}"), (reading.max, "at most {}"))
-    said = [words.format(_bound(reading, value)) for value, words in bounds if value is not None]
+    said = [words.format(bound_text(reading, value)) for value, words in bounds if value is not None]
     return f"{', '.join(said)} {unit}".strip()
 
 
 @dataclass(frozen=True)
 class Evidence:
-    """What stands beside the page's picture: what was read, why to look, where it stands, the words printed there."""
+    """What stands beside the page's picture: what was read, where it stands, the words printed there."""
 
-    heading: str
     read: str
-    look: str | None
     stands: str
     printed: str
 
@@ -249,4 +228,4 @@ def evidence(reading: Reading) -> Evidence:
     }[reading.status]
     holds = when_text(reading.when)
     read = f"{value_text(reading)}, {status}" + (f"; holds for {holds}" if holds else "")
-    return Evidence(title(reading.field), read, reading.check, str(reading.where), reading.raw)
+    return Evidence(read, str(reading.where), reading.raw)

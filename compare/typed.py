@@ -5,7 +5,7 @@ from __future__ import annotations
 import math
 import re
 import tomllib
-from collections.abc import Mapping
+from collections.abc import Callable, Mapping
 from dataclasses import dataclass, field
 from functools import cache
 from pathlib import Path
@@ -80,8 +80,13 @@ def units(unit: str) -> Mapping[str, float]:
     return known.get(unit, {})
 
 
-def understand(text: str, asked: Field, *, kept: bool = False) -> Typed:
-    """Read `text` as the amount that `asked` wants; `kept`: a person has said that an unlikely value is so."""
+def understand(
+    text: str, asked: Field, *, kept: bool = False, factor_of: Callable[[str], float | None] | None = None
+) -> Typed:
+    """Read `text` as the amount that `asked` wants; `kept`: a person has said that an unlikely value is so.
+
+    `factor_of` gives the factor of a unit's spelling where the field is none of the bench's.
+    """
     plain = _plain(text)
     if not plain:
         return Typed()
@@ -91,12 +96,15 @@ def understand(text: str, asked: Field, *, kept: bool = False) -> Typed:
     if found is None:
         example = with_unit("12.5", asked.unit)
         return Typed(fault=f"“{text.strip()}” is no number; write it like {example}")
-    factor = _factor((found["unit"] or "").strip(), asked.unit)
+    spelling = (found["unit"] or "").strip()
+    factor = _factor(spelling, asked.unit)
+    if factor is None and factor_of is not None:
+        factor = factor_of(spelling)
     if factor is None:
         known = ", ".join(
             dict.fromkeys(spelling for spelling in units(asked.unit) if len(spelling) > 1 or asked.unit in "V%")
         )
-        wanted = f"{known} are" if known else "this is a plain number"
+        wanted = f"{known or asked.unit} are" if known or asked.unit else "this is a plain number"
         return Typed(fault=f"“{found['unit'].strip()}”: unit not known; {wanted}")
     sign = -1 if found["sign"] == "-" else 1
     # Twelve digits are more than anybody types, and 0.0047 nF becomes 4.7 pF and not 4.700000000000001.
