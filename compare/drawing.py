@@ -5,7 +5,6 @@ Plain text in, SVG text out; everything that could come from a sheet or a file i
 
 from __future__ import annotations
 
-import base64
 import math
 from collections.abc import Iterable, Mapping, Sequence
 from dataclasses import dataclass
@@ -13,6 +12,9 @@ from html import escape
 from typing import Literal
 
 from compare.palette import Palette
+from compare.picture import Pen, Picture, as_address, svg
+
+__all__ = ["CircuitFigures", "Mark", "as_address", "circuit_picture", "circuit_svg", "slack_strip_svg"]
 
 State = Literal["given", "taken", "none", "unknown"]
 
@@ -50,11 +52,15 @@ class CircuitFigures:
 WIDTH, HEIGHT = 800, 380
 LEFT, RIGHT, WIRE = 200, 600, 214
 AMPLIFIER_Y, FEEDBACK_Y = 96, 26
-STROKE = 1.6
 
 
 def circuit_svg(figures: CircuitFigures, palette: Palette) -> str:
-    """The circuit as drawn on the page and in the report, 800 by 380 pixels."""
+    """The circuit as drawn on the page, 800 by 380 pixels."""
+    return svg(circuit_picture(figures, palette))
+
+
+def circuit_picture(figures: CircuitFigures, palette: Palette) -> Picture:
+    """The circuit as page and report have it."""
     pen = _Pen(palette)
     _amplifier(pen, figures)
     _crystal(pen, figures)
@@ -69,7 +75,7 @@ def circuit_svg(figures: CircuitFigures, palette: Palette) -> str:
     _node(pen, "A", LEFT, ("amplifier", "input"), -1)
     beside = ("crystal’s", "output end") if figures.series_resistor else ("amplifier output,", "no series resistor")
     _node(pen, "B", RIGHT, beside, 1)
-    return _svg(WIDTH, HEIGHT, "".join(pen.drawn), _told(figures))
+    return Picture(WIDTH, HEIGHT, tuple(pen.marks), _told(figures))
 
 
 def _told(figures: CircuitFigures) -> str:
@@ -85,53 +91,22 @@ def _told(figures: CircuitFigures) -> str:
     return "Pierce oscillator, " + figures.crystal + ": " + ", ".join(f"{name} {mark.text}" for name, mark in banks)
 
 
-@dataclass(slots=True)
-class _Pen:
-    palette: Palette
-    drawn: list[str]
+class _Pen(Pen):
+    """The pen of the circuit: it knows the colours, and how a figure is written."""
 
     def __init__(self, palette: Palette) -> None:
+        super().__init__(palette.ink)
         self.palette = palette
-        self.drawn = []
 
-    def line(self, path: str, *, colour: str = "", width: float = STROKE, dashed: bool = False) -> None:
-        dash = ' stroke-dasharray="3 3"' if dashed else ""
-        stroke = colour or self.palette.ink
-        self.drawn.append(f'<path d="{path}" fill="none" stroke="{stroke}" stroke-width="{width}"{dash}/>')
+    def part(self, x: float, y: float, width: float, height: float, fill: str) -> None:
+        self.box(x, y, width, height, fill, edge=self.palette.ink)
 
-    def box(self, x: float, y: float, width: float, height: float, fill: str) -> None:
-        self.drawn.append(
-            f'<rect x="{x}" y="{y}" width="{width}" height="{height}" fill="{fill}" '
-            f'stroke="{self.palette.ink}" stroke-width="{STROKE}"/>'
-        )
-
-    def dot(self, x: float, y: float, radius: float, fill: str, *, edged: bool = False) -> None:
-        edge = f' stroke="{self.palette.ink}" stroke-width="{STROKE}"' if edged else ""
-        self.drawn.append(f'<circle cx="{x}" cy="{y}" r="{radius}" fill="{fill}"{edge}/>')
-
-    def write(
-        self,
-        x: float,
-        y: float,
-        text: str,
-        *,
-        anchor: str = "middle",
-        colour: str = "",
-        size: float = 13,
-        bold: bool = False,
-        key: str = "",
-    ) -> None:
-        weight = ' font-weight="600"' if bold else ""
-        pressed = f' data-field="{escape(key, quote=True)}" style="cursor:pointer"' if key else ""
-        self.drawn.append(
-            f'<text x="{x}" y="{y}" text-anchor="{anchor}" font-size="{size}" fill="{colour or self.palette.ink}"'
-            f"{weight}{pressed}>{escape(text)}</text>"
-        )
-
-    def figure(self, x: float, y: float, mark: Mark, *, anchor: str = "middle", size: float = 13) -> None:
+    def figure(self, x: float, y: float, mark: Mark, *, left: bool = False, size: float = 13) -> None:
         plain = mark.state in ("none", "unknown")
         colour = self.palette.soft if plain else self.palette.ink
-        self.write(x, y, mark.text, anchor=anchor, colour=colour, size=size, bold=not plain, key=mark.key)
+        self.write(
+            x, y, mark.text, "start" if left else "middle", colour=colour, size=size, bold=not plain, key=mark.key
+        )
 
 
 def _amplifier(pen: _Pen, figures: CircuitFigures) -> None:
@@ -140,16 +115,13 @@ def _amplifier(pen: _Pen, figures: CircuitFigures) -> None:
     output = 500 if resistor else RIGHT  # the node O, ahead of a series resistor
     pen.line(f"M{LEFT},{WIRE}V{FEEDBACK_Y}H340M460,{FEEDBACK_Y}H{output}V{y}")
     pen.line(f"M{LEFT},{y}H352M447.5,{y}H{output}" + ("" if resistor else f"M{RIGHT},{WIRE}V{y}"))
-    pen.box(340, FEEDBACK_Y - 12, 120, 24, pen.palette.page)
+    pen.part(340, FEEDBACK_Y - 12, 120, 24, pen.palette.page)
     node = "O" if resistor else "B"
     feedback = figures.feedback
     pen.figure(400, FEEDBACK_Y + 4.5, Mark(f"A–{node} {feedback.text}", feedback.state, feedback.key), size=12)
-    pen.drawn.append(
-        f'<path d="M352,{y - 34}V{y + 34}L436,{y}Z" fill="{pen.palette.leaf}" '
-        f'stroke="{pen.palette.ink}" stroke-width="{STROKE}"/>'
-    )
-    pen.dot(441.8, y, 5.5, pen.palette.page, edged=True)
-    pen.write(357, y + 4, "gm", anchor="start", size=12, bold=True)
+    pen.area(((352, y - 34), (352, y + 34), (436, y)), pen.palette.leaf, edge=pen.palette.ink)
+    pen.dot(441.8, y, 5.5, pen.palette.page, edge=pen.palette.ink)
+    pen.write(357, y + 4, "gm", "start", bold=True)
     pen.figure(394, y + 50, figures.transconductance, size=12)
     for x in (LEFT, output):
         pen.dot(x, y, 3.5, pen.palette.ink)
@@ -160,38 +132,41 @@ def _ahead_of_resistor(pen: _Pen, figures: CircuitFigures) -> None:
     assert figures.series_resistor is not None  # noqa: S101
     y = AMPLIFIER_Y
     pen.line(f"M500,{y}H530M590,{y}H{RIGHT}V{WIRE}")
-    pen.box(530, y - 9, 60, 18, pen.palette.page)
-    pen.figure(566, y - 16, figures.series_resistor, anchor="middle", size=12)
+    pen.part(530, y - 9, 60, 18, pen.palette.page)
+    pen.figure(566, y - 16, figures.series_resistor, size=12)
     pen.line(f"M500,{y}V{y + 20}")
     pen.dot(500, y, 10, pen.palette.accent)
-    pen.write(500, y + 4, "O", size=12, bold=True, colour=pen.palette.page)
+    pen.write(500, y + 4, "O", bold=True, colour=pen.palette.page)
     # O's capacitors are written out at the right of the drawing: there is no room for their symbols beside the crystal.
     pen.line(f"M492,{y + 20}H508M492,{y + 27}H508M500,{y + 27}V{y + 38}M490,{y + 38}H510M494,{y + 43}H506")
-    pen.write(514, y + 30, "O–0", anchor="start", colour=pen.palette.soft, size=12)
+    pen.write(514, y + 30, "O–0", "start", colour=pen.palette.soft)
     x = 640
-    pen.write(x, y - 36, "Ahead of the series resistor:", anchor="start", colour=pen.palette.soft, size=12)
+    pen.write(x, y - 36, "Ahead of the series resistor:", "start", colour=pen.palette.soft)
     for line, (cause, mark) in enumerate((("pin", figures.output_pin), ("inside IC", figures.output_inside))):
         if mark is not None:
-            pen.write(x, y - 16 + 18 * line, f"O–0 {cause}", anchor="start", colour=pen.palette.soft, size=12)
-            pen.figure(x + 84, y - 16 + 18 * line, mark, anchor="start", size=12)
+            pen.write(x, y - 16 + 18 * line, f"O–0 {cause}", "start", colour=pen.palette.soft)
+            pen.figure(x + 84, y - 16 + 18 * line, mark, left=True, size=12)
 
 
 def _crystal(pen: _Pen, figures: CircuitFigures) -> None:
     y, middle = WIRE, 400
     pen.line(f"M{LEFT},{y}H376M424,{y}H{RIGHT}M376,{y - 22}V{y + 22}M424,{y - 22}V{y + 22}")
-    pen.box(384, y - 22, 32, 44, pen.palette.wash)
-    pen.write(middle, y - 32, figures.crystal, bold=True)
-    pen.write(middle, y + 39, "its own C0 does not belong here", colour=pen.palette.soft, size=12)
+    pen.part(384, y - 22, 32, 44, pen.palette.wash)
+    pen.write(middle, y - 32, figures.crystal, bold=True, size=13)
+    pen.write(middle, y + 39, "its own C0 does not belong here", colour=pen.palette.soft)
     mark = figures.across_stray
-    colour, dashed = _stroke(pen.palette, mark)
-    pen.line(f"M290,{y}V{y + 68}H394M406,{y + 68}H510V{y}", colour=colour, dashed=dashed)
+    colour, dash = _stroke(pen.palette, mark)
+    pen.line(f"M290,{y}V{y + 68}H394M406,{y + 68}H510V{y}", colour=colour, dash=dash)
     pen.line(f"M394,{y + 57}V{y + 79}M406,{y + 57}V{y + 79}", colour=colour)
-    pen.write(middle, y + 98, "A–B stray", colour=pen.palette.soft, size=12)
+    pen.write(middle, y + 98, "A–B stray", colour=pen.palette.soft)
     pen.figure(middle, y + 115, mark)
 
 
-def _stroke(palette: Palette, mark: Mark) -> tuple[str, bool]:
-    return (palette.edge if mark.state in ("none", "unknown") else palette.ink), mark.state == "unknown"
+def _stroke(palette: Palette, mark: Mark) -> tuple[str, tuple[float, ...]]:
+    return (palette.edge if mark.state in ("none", "unknown") else palette.ink), (
+        3,
+        3,
+    ) if mark.state == "unknown" else ()
 
 
 def _bank(pen: _Pen, node: str, x: float, at: Sequence[float], marks: Sequence[tuple[str, Mark]]) -> None:
@@ -200,24 +175,23 @@ def _bank(pen: _Pen, node: str, x: float, at: Sequence[float], marks: Sequence[t
     places = [x + shift for shift in at]
     pen.line(f"M{x},{WIRE + 12}V{y - 30}M{min(places)},{y - 30}H{max(places)}")
     for place, (cause, mark) in zip(places, marks, strict=True):
-        colour, dashed = _stroke(pen.palette, mark)
-        pen.line(f"M{place},{y - 30}V{y - 4}M{place},{y + 4}V{y + 22}", colour=colour, dashed=dashed)
-        pen.line(f"M{place - 12},{y - 4}H{place + 12}M{place - 12},{y + 4}H{place + 12}", colour=colour, dashed=dashed)
-        pen.write(place, y + 58, f"{node}–0 {cause}", colour=pen.palette.soft, size=12)
+        colour, dash = _stroke(pen.palette, mark)
+        pen.line(f"M{place},{y - 30}V{y - 4}M{place},{y + 4}V{y + 22}", colour=colour, dash=dash)
+        pen.line(f"M{place - 12},{y - 4}H{place + 12}M{place - 12},{y + 4}H{place + 12}", colour=colour, dash=dash)
+        pen.write(place, y + 58, f"{node}–0 {cause}", colour=pen.palette.soft)
         pen.figure(place, y + 76, mark)
     low, high = min(places) - 12, max(places) + 12
     pen.line(f"M{low},{y + 22}H{high}", width=2.4)
     middle = (low + high) / 2
     pen.line(f"M{middle - 14},{y + 29}h28M{middle - 8},{y + 35}h16")
-    pen.write(high + 12 if node == "B" else low - 12, y + 27, "0", bold=True)
+    pen.write(high + 12 if node == "B" else low - 12, y + 27, "0", bold=True, size=13)
 
 
 def _node(pen: _Pen, name: str, x: float, beside: Iterable[str], side: int) -> None:
     pen.dot(x, WIRE, 12, pen.palette.accent)
-    pen.write(x, WIRE + 4.5, name, bold=True, colour=pen.palette.page)
+    pen.write(x, WIRE + 4.5, name, bold=True, colour=pen.palette.page, size=13)
     for line, text in enumerate(beside):
-        anchor = "end" if side < 0 else "start"
-        pen.write(x + side * 20, WIRE - 12 + 14 * line, text, anchor=anchor, colour=pen.palette.soft, size=12)
+        pen.write(x + side * 20, WIRE - 12 + 14 * line, text, "end" if side < 0 else "start", colour=pen.palette.soft)
 
 
 STRIP_WIDTH, STRIP_HEIGHT, STRIP_ROW, STRIP_ENDS = 200, 40, 6, (0.33, 30.0)
@@ -276,25 +250,20 @@ def name_svg(palette: Palette) -> str:
     """The program's name with the symbol of a crystal, for the top of the page."""
     pen = _Pen(palette)
     _symbol(pen)
-    pen.write(34, 17, "quartzfolio", anchor="start", size=15, bold=True)
-    return _svg(126, 24, "".join(pen.drawn), "quartzfolio")
+    pen.write(34, 17, "quartzfolio", "start", size=15, bold=True)
+    return svg(Picture(126, 24, tuple(pen.marks), "quartzfolio"))
 
 
 def icon_svg(palette: Palette) -> str:
     """The symbol alone, for the browser's tab."""
     pen = _Pen(palette)
     _symbol(pen)
-    return _svg(26, 24, "".join(pen.drawn), "quartzfolio")
+    return svg(Picture(26, 24, tuple(pen.marks), "quartzfolio"))
 
 
 def _symbol(pen: _Pen) -> None:
     pen.line("M1,12H6M20,12H25M6,4V20M20,4V20", colour=pen.palette.accent, width=2)
-    pen.drawn.append(f'<rect x="9.5" y="4" width="7" height="16" fill="{pen.palette.accent}"/>')
-
-
-def as_address(svg: str) -> str:
-    """An SVG as a `data:` address that an image or a grid cell can show."""
-    return "data:image/svg+xml;base64," + base64.b64encode(svg.encode()).decode()
+    pen.box(9.5, 4, 7, 16, pen.palette.accent)
 
 
 def _svg(width: float, height: float, body: str, told: str) -> str:

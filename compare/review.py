@@ -9,7 +9,7 @@ from compare.bench import Bench
 from compare.bench_readings import measured_numbers
 from compare.contributors import contributors_of
 from compare.cures import cures, gain_window_words
-from compare.offer import Offers
+from compare.find import Offers
 from compare.reckoning import Reckoning, part_result, reckon_sheets
 from compare.trial import advice_for
 from extract.model import SpecSheet
@@ -26,11 +26,11 @@ def review(sheets: Sequence[SpecSheet], bench: Bench, *, what_if: bool = False) 
     reckoning = reckon_sheets(sheets, bench)
     if isinstance(reckoning, Offers):
         return {"schema": SCHEMA, "reviews": [], "notes": list(reckoning.notes)}
-    reviews = [_reviewed(reckoning, at) | (_what_if(reckoning, at) if what_if else {}) for at in range(len(reckoning))]
+    reviews = [reviewed(reckoning, at) | (_what_if(reckoning, at) if what_if else {}) for at in range(len(reckoning))]
     return {"schema": SCHEMA, "reviews": reviews, "notes": list(reckoning.notes)}
 
 
-def _reviewed(reckoning: Reckoning, at: int) -> dict[str, Any]:
+def reviewed(reckoning: Reckoning, at: int) -> dict[str, Any]:
     columns, bench = reckoning.columns, reckoning.bench
     advice, sentences = advice_for(columns, bench, reckoning.total, reckoning.judged, at)
     rl_ohm = reckoning.numbers["load_resonance_resistance_ohm"].ends[:, at]

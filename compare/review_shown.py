@@ -20,8 +20,6 @@ from compare.answers import (
     worst_said,
 )
 from compare.bench import Bench
-from compare.charts import LoadPull
-from compare.circuit_text import ppm_limits
 from compare.figures import CLOCK_BELOW_MHZ, SECONDS_A_DAY_PER_PPM, number, scale, signed, with_unit
 from compare.shown import NAMES
 from extract.model import FIELD_NAMES
@@ -94,14 +92,19 @@ class Number:
 
 def numbers(review: Row, bench: Bench) -> list[Number]:
     """Every number that the review has, in the order of FIGURES; of a clock the error in seconds a day as well."""
-    shown = [_number(review[key], figure) for key, figure in FIGURES.items() if key in review]
+    return [number_ for _, number_ in keyed_numbers(review, bench)]
+
+
+def keyed_numbers(review: Row, bench: Bench) -> list[tuple[str, Number]]:
+    """The same with the key of each; that of the seconds a day is `seconds_per_day`."""
+    shown = [(key, _number(review[key], figure)) for key, figure in FIGURES.items() if key in review]
     if bench.requirement.frequency_mhz < CLOCK_BELOW_MHZ and "total_ppm" in review:
         total = review["total_ppm"]
         daily = {end: None if total[end] is None else total[end] * SECONDS_A_DAY_PER_PPM for end in ENDS}
         how = f"frequency error in ppm times {SECONDS_A_DAY_PER_PPM} s a day"
         day = {**daily, "how": how, "basis": total["basis"]}
         named = Figure("The same for a clock", "s a day", sign=True)
-        shown.insert(1 + [one.name for one in shown].index(FIGURES["total_ppm"].name), _number(day, named))
+        shown.insert(1 + [key for key, _ in shown].index("total_ppm"), ("seconds_per_day", _number(day, named)))
     return shown
 
 
@@ -117,44 +120,6 @@ def _number(figure: Row, shown: Figure) -> Number:
     basis = figure["basis"] or ""
     said = "∴ estimated" if basis == "estimated" else basis
     return Number(shown.name, end("low"), end("mid"), end("high"), unit, said, told(figure["how"] or ""))
-
-
-def load_pull(review: Row, bench: Bench, rated_pf: float | None, *, series: bool) -> LoadPull | None:
-    """What the chart of ppm against load needs, where C1, C0 and the loads are known; None otherwise.
-
-    C0 comes back from fs and fp, whose distance it sets in the equivalent circuit without losses: C1/C0 = (fp/fs)² - 1.
-    """
-    c1, load, shift, total = (
-        review[key] for key in ("motional_capacitance_ff", "circuit_load_pf", "load_error_ppm", "total_ppm")
-    )
-    fs, fp = review["series_resonance_mhz"]["mid"], review["parallel_resonance_mhz"]["mid"]
-    needed = (c1["mid"], load["low"], load["mid"], load["high"], fs, fp)
-    if any(value is None for value in needed) or not fp > fs or (rated_pf is None and not series):
-        return None
-    c0_pf = c1["mid"] * 1e-3 / ((fp / fs) ** 2 - 1)
-    room_low, room_high = _room(total, shift, bench)
-    return LoadPull(
-        motional_capacitance_ff=c1["mid"],
-        shunt_capacitance_pf=c0_pf,
-        rated_pf=None if series else rated_pf,
-        low_pf=load["low"],
-        mid_pf=load["mid"],
-        high_pf=load["high"],
-        room_low_ppm=room_low,
-        room_high_ppm=room_high,
-    )
-
-
-def _room(total: Row, shift: Row, bench: Bench) -> tuple[float | None, float | None]:
-    """What the other causes leave of the limits for the load, low and high."""
-    limits = ppm_limits(bench)
-    if limits is None or bench.requirement.trim_step_ppm is not None:
-        return None, None
-    rooms = [
-        limit - (total[end] - shift[end]) if total[end] is not None and shift[end] is not None else None
-        for limit, end in zip(limits, ("low", "high"), strict=True)
-    ]
-    return rooms[0], rooms[1]
 
 
 CONTRIBUTORS = {

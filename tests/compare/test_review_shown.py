@@ -1,7 +1,6 @@
 """What Review says, from results by hand in the data contract's shape."""
 
 import hand_made
-import pytest
 
 from compare import review_shown
 from compare.bench import read_bench
@@ -52,22 +51,6 @@ def test_an_estimate_is_marked_and_a_missing_end_is_a_dash():
     changed = hand_made.review(motional_capacitance_ff=hand_made.figure(1.0, 2.0, None, "estimated", "estimated"))
     c1 = next(one for one in review_shown.numbers(changed, BENCH) if one.name == "Motional capacitance C1")
     assert (c1.basis, c1.high) == ("∴ estimated", "—")
-
-
-def test_the_load_chart_gets_back_the_crystals_c0_and_what_is_left_for_the_load():
-    pull = review_shown.load_pull(hand_made.review(), BENCH, 8.0, series=False)
-    # fs 25.993715 MHz and fp 26.045646 MHz with C1 4.4 fF are C0 1.1 pF.
-    assert pull.shunt_capacitance_pf == pytest.approx(1.1, rel=1e-3)
-    # Other causes: 45.3 - 18.9 = 26.4 of the 50 ppm up, 26.8 - 0.4 = 26.4 down.
-    assert pull.room_high_ppm == pytest.approx(23.6)
-    assert pull.room_low_ppm == pytest.approx(-23.6)
-
-
-def test_without_c1_or_rated_load_there_is_no_load_chart():
-    unknown = hand_made.figure(None, None, None)
-    assert review_shown.load_pull(hand_made.review(motional_capacitance_ff=unknown), BENCH, 8.0, series=False) is None
-    assert review_shown.load_pull(hand_made.review(), BENCH, None, series=False) is None
-    assert review_shown.load_pull(hand_made.review(), BENCH, None, series=True).rated_pf is None
 
 
 def test_what_adds_to_a_worst_case_is_named_and_measured_against_the_greatest():
