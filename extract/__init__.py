@@ -73,6 +73,6 @@ def read_sheet(data: bytes, name: str, *, progress: Progress | None = None) -> S
         sha256=digest,
         kind=document.kind,
         scan=document.scan,
-        parts=tuple(found.parts),
+        parts=found.parts,
         notes=tuple(notes),
     )

@@ -2,9 +2,19 @@
 
 from __future__ import annotations
 
+from collections.abc import Sequence
 from typing import Any, Literal, Self, TypeVar, get_args
 
-from pydantic import BaseModel, ConfigDict, model_serializer, model_validator
+from pydantic import (
+    BaseModel,
+    ConfigDict,
+    SerializerFunctionWrapHandler,
+    ValidatorFunctionWrapHandler,
+    field_serializer,
+    field_validator,
+    model_serializer,
+    model_validator,
+)
 
 SCHEMA = "quartzfolio/extract/1"
 
@@ -181,6 +191,10 @@ def written(model: BaseModel) -> dict[str, Any]:
     return vars(model)
 
 
+class MadeParts(Sequence[Part]):
+    """Parts, each valid, that are made when somebody asks for them."""
+
+
 class SpecSheet(_Frozen):
     """Everything read from one file."""
 
@@ -188,5 +202,14 @@ class SpecSheet(_Frozen):
     sha256: str | None
     kind: Kind
     scan: bool = False
-    parts: tuple[Part, ...] = ()
+    parts: Sequence[Part] = ()
     notes: tuple[Note, ...] = ()
+
+    @field_validator("parts", mode="wrap")
+    @classmethod
+    def _kept_as_made(cls, parts: object, handler: ValidatorFunctionWrapHandler) -> Sequence[Part]:
+        return parts if isinstance(parts, MadeParts) else tuple(handler(parts))
+
+    @field_serializer("parts", mode="wrap")
+    def _one_by_one(self, parts: Sequence[Part], handler: SerializerFunctionWrapHandler) -> Any:
+        return handler(tuple(parts))

@@ -15,7 +15,7 @@ from operator import attrgetter
 from typing import TYPE_CHECKING, Generic, Literal, NamedTuple, TypeVar, overload
 
 from extract.fields import fields
-from extract.model import Attributes, Part, Reading, Where, lean
+from extract.model import Attributes, MadeParts, Part, Reading, Where, lean
 
 if TYPE_CHECKING:
     from extract.documents.grid import TextRow
@@ -101,7 +101,7 @@ def _template(readings: tuple[Reading, ...]) -> Template:
     return Template(bare, (None,) * len(bare))
 
 
-class PartList(Sequence[Part]):
+class PartList(MadeParts):
     """Parts in the order read.
 
     Attributes
@@ -193,6 +193,23 @@ class PartList(Sequence[Part]):
 
     def __repr__(self) -> str:
         return f"<{len(self)} parts>"
+
+
+def together(parts: Sequence[Part | Chunk]) -> Sequence[Part]:
+    """Parts one behind the other, as they are where none of them comes from a long list."""
+    if not any(isinstance(each, Chunk) for each in parts):
+        return [each for each in parts if isinstance(each, Part)]
+    return PartList([each if isinstance(each, Chunk) else Chunk.of_part(each) for each in parts])
+
+
+def numbers_without(parts: Sequence[Part], name: str) -> list[str | None]:
+    """The numbers of the parts that state nothing of a field."""
+    if not isinstance(parts, PartList):
+        return [part.part_number for part in parts if not any(each.field == name for each in part.readings)]
+    if name not in parts.placed:
+        return parts.part_numbers
+    index = parts.placed[name].index
+    return [number for number, at in zip(parts.part_numbers, index, strict=True) if at == 0]
 
 
 def _joined(name: str, chunks: Sequence[Chunk]) -> Shared[Template]:

@@ -20,6 +20,7 @@ from extract.fold import fold, key
 from extract.heads import Head, bound_and_unit, interpret, is_unit
 from extract.identity import is_package
 from extract.keys import read_key_table, take_code_rows
+from extract.matrices import read_matrix
 from extract.meaning import Meaning, is_part_token, meaning, part_tokens
 from extract.padtables import read_pad_table
 from extract.paramrows import parameter_entries
@@ -43,6 +44,8 @@ def read_table(table: Table) -> list[Item]:
         return list(keys)
     if short and (pads := read_pad_table(rows)):
         return list(pads)
+    if short and (offered := read_matrix(rows)):
+        return list(offered)
     if _bands_across(rows):
         rows = [list(row) for row in zip(*rows, strict=True)]
     items: list[Item] = [Text(Piece(table.title, table.where), heading=True)] if table.title else []
