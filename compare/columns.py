@@ -16,13 +16,13 @@ from numpy.typing import NDArray
 from compare import motional
 from compare.bench import Bench
 from compare.circuit import Array
+from compare.lot import C1_FROM, Coded, Lot, Separate, Whole, distinct, spans, together
 from compare.offer import C1_ROUTES, Offer
 from compare.prefix import FEMTO, PICO
-from compare.stated import Span, Taken
+from compare.stated import Taken
 
 SHUNT_FROM = ("motional_capacitance_ff", "capacitance_ratio")
 Flags = NDArray[np.bool_]
-Whole = NDArray[np.int_]
 LOW, MID, HIGH = 0, 1, 2
 ESTIMATED = len(C1_ROUTES)
 """Index of the route "no reading leads to C1"."""
@@ -49,7 +49,7 @@ class Columns:
         C1 by every other stated value, for the check.
     """
 
-    offers: tuple[Offer, ...]
+    offers: Lot
     frequency_mhz: Array
     load_pf: Array
     overtone: Array
@@ -63,8 +63,8 @@ class Columns:
     motional_estimated: Flags
     route: Whole
     other_routes_ff: Array
-    shunt_basis: tuple[str, ...]
-    motional_basis: tuple[str, ...]
+    shunt_basis: Coded[str]
+    motional_basis: Coded[str]
 
     def __len__(self) -> int:
         return len(self.offers)
@@ -73,7 +73,7 @@ class Columns:
         """The columns of some of the parts, by index."""
         index = np.asarray(which, dtype=int)
         picked: dict[str, Any] = {
-            name: value[..., index] if isinstance(value, np.ndarray) else tuple(value[at] for at in index)
+            name: value[..., index] if isinstance(value, np.ndarray) else value.take(index)
             for name, value in vars(self).items()
         }
         return Columns(**picked)
@@ -81,30 +81,32 @@ class Columns:
 
 def make_columns(offers: Sequence[Offer], bench: Bench) -> Columns:
     """Columns of the offers, estimates filled in."""
-    n, settings = len(offers), range(len(bench.settings))
-    frequency = np.array([o.frequency_mhz for o in offers], dtype=float)
-    load = np.array([o.load.span.mid for o in offers], dtype=float)
-    esr = np.stack([spans([o.at[s].esr for o in offers]) for s in settings])
-    shunt = np.stack([spans([o.at[s].shunt_capacitance for o in offers]) for s in settings])
-    guess, shunt_basis = _shunt_estimates(offers)
-    from_ratio = np.stack([_shunt_from_ratio(offers, s) for s in settings])
+    lot, settings = Separate.of(offers), range(len(bench.settings))
+    n = len(lot)
+    frequency = np.full(n, bench.requirement.frequency_mhz)
+    load = spans(lot.column("load"))[MID]
+    esr = np.stack([spans(lot.at(s, "esr")) for s in settings])
+    shunt = np.stack([spans(lot.at(s, "shunt")) for s in settings])
+    guess, shunt_basis = _shunt_estimates(lot, bench)
+    from_ratio = np.stack([_shunt_from_ratio(lot, s) for s in settings])
     shunt_derived = np.isnan(shunt[0, MID]) & ~np.isnan(from_ratio[0, MID])
     shunt = np.where(np.isnan(shunt), from_ratio, shunt)
     missing = np.isnan(shunt[0, MID])
-    loose = np.array([o.at[0].shunt_capacitance.limit_alone for o in offers], dtype=bool)
+    loose = lot.at(0, "shunt").array(lambda taken: taken.limit_alone, bool)
     shunt = np.where(np.isnan(shunt), guess, shunt)
     floor = np.where(loose, np.minimum(guess[LOW], shunt[0, LOW]), shunt[:, LOW].min(axis=0))
-    routes = [_by_every_route(offers, s, (frequency, load), (esr[s], shunt[s], floor)) for s in settings]
+    routes = [_by_every_route(lot, s, (frequency, load), (esr[s], shunt[s], floor)) for s in settings]
     route = _first_known(routes[0][:, MID])
     known_shunt = ~(missing | loose)
-    c1_guess, motional_basis = _motional_estimates(offers, shunt[0], known_shunt)
     c1 = np.stack([_along(route, by_route, routes[0]) for by_route in routes])
+    silent = np.logical_or.reduce(np.isnan(c1), axis=(0, 1))
+    c1_guess, motional_basis = _motional_estimates(lot, bench, shunt[0], known_shunt, silent)
     by_shunt = np.isin(route, [C1_ROUTES.index("capacitance_ratio"), C1_ROUTES.index("pulling_sensitivity_ppm_per_pf")])
     return Columns(
-        offers=tuple(offers),
+        offers=lot,
         frequency_mhz=frequency,
         load_pf=load,
-        overtone=np.array([o.overtone or np.nan for o in offers], dtype=float),
+        overtone=lot.column("overtone").array(lambda order: order or np.nan),
         esr_ohm=esr,
         shunt_pf=shunt,
         shunt_floor_pf=floor,
@@ -120,29 +122,18 @@ def make_columns(offers: Sequence[Offer], bench: Bench) -> Columns:
     )
 
 
-def spans(takens: Sequence[Taken]) -> Array:
-    """(3, n) low, mid, high."""
-    return ends([taken.span for taken in takens])
-
-
-def ends(listed: Sequence[Span]) -> Array:
-    """(3, n) low, mid, high of spans."""
-    return np.array([(s.low, s.mid, s.high) for s in listed], dtype=float).reshape(-1, 3).T
-
-
 Ends = tuple[float, float, float]
 
 
-def cut_of(offer: Offer) -> str | None:
-    return "tuning fork" if offer.fork else offer.part.cut
-
-
-def _shunt_estimates(offers: Sequence[Offer]) -> tuple[Array, tuple[str, ...]]:
+def _shunt_estimates(lot: Lot, bench: Bench) -> tuple[Array, Coded[str]]:
     """(3, n) C0 as it is likely to be, nothing above a limit that is stated, and what each rests on."""
-    found = [
-        _shunt_estimate(cut_of(o), o.frequency_mhz, o.part.package, _limit(o.at[0].shunt_capacitance)) for o in offers
-    ]
-    return np.array([values for values, _ in found], dtype=float).reshape(-1, 3).T, tuple(basis for _, basis in found)
+    frequency = bench.requirement.frequency_mhz
+
+    def of(cut: str | None, package: str | None, shunt: Taken) -> tuple[Ends, str]:
+        return _shunt_estimate(cut, frequency, package, _limit(shunt))
+
+    found = together(of, lot.column("cut"), lot.column("package"), lot.at(0, "shunt"))
+    return found.array(lambda one: one[0]).reshape(3, -1), Coded([basis for _, basis in found.values], found.codes)
 
 
 def _limit(shunt: Taken) -> float:
@@ -155,37 +146,56 @@ def _shunt_estimate(cut: str | None, frequency_mhz: float, package: str | None, 
     return (float(guess.low), float(guess.mid), float(guess.high)), guess.basis
 
 
-def _motional_estimates(offers: Sequence[Offer], shunt: Array, known: Flags) -> tuple[Array, tuple[str, ...]]:
-    """(3, n) C1 as it is likely to be, and what each rests on. A mode that is not known may be either of two."""
-    found = []
-    for at, o in enumerate(offers):
-        c0 = (float(shunt[LOW, at]), float(shunt[MID, at]), float(shunt[HIGH, at])) if known[at] else None
-        orders = (o.overtone,) if o.overtone else (1, 3)
-        of_part = (cut_of(o), o.frequency_mhz, o.part.package)
-        guesses = [_motional_estimate(order, of_part, _limit(o.at[0].shunt_capacitance), c0) for order in orders]
-        lows, mids, highs = zip(*(values for values, _ in guesses), strict=True)
-        found.append(((min(lows), mids[0], max(highs)), "; or ".join(basis for _, basis in guesses)))
-    return np.array([values for values, _ in found], dtype=float).reshape(-1, 3).T, tuple(basis for _, basis in found)
+def _motional_estimates(lot: Lot, bench: Bench, shunt: Array, known: Flags, wanted: Flags) -> tuple[Array, Coded[str]]:
+    """(3, n) C1 as it is likely to be, and what each rests on; NaN and nothing for parts of which it is not wanted.
+
+    A mode that is not known may be either of two.
+    """
+    guess, codes, said = np.full((3, len(lot)), np.nan), np.zeros(len(lot), dtype=int), [""]
+    which = np.flatnonzero(wanted)
+    if not which.size:
+        return guess, Coded(said, codes)
+    own = lot.take(which)
+    cuts, packages, overtones = (own.column(name) for name in ("cut", "package", "overtone"))
+    limits = own.at(0, "shunt").array(_limit)
+    by_limit = np.unique(np.where(known[which], np.inf, limits), return_inverse=True)[1]
+    first, group = distinct(cuts.codes, packages.codes, overtones.codes, known[which].astype(int), by_limit)
+    for number, members in enumerate(_groups(group, len(first))):
+        at = int(first[number])
+        rows = which[members]
+        c0 = (shunt[LOW, rows], shunt[MID, rows], shunt[HIGH, rows]) if known[which[at]] else None
+        of_part = (cuts[at], bench.requirement.frequency_mhz, packages[at])
+        orders = (overtones[at],) if overtones[at] else (1, 3)
+        guesses = [_motional_estimate(order, of_part, float(limits[at]), c0) for order in orders]
+        guess[LOW, rows] = np.minimum.reduce([one.low for one in guesses])
+        guess[MID, rows] = guesses[0].mid
+        guess[HIGH, rows] = np.maximum.reduce([one.high for one in guesses])
+        codes[rows] = len(said)
+        said.append("; or ".join(one.basis for one in guesses))
+    return guess, Coded(said, codes)
 
 
-@lru_cache(maxsize=4096)
+def _groups(codes: Whole, count: int) -> list[Whole]:
+    """The places of each code, in order."""
+    order = np.argsort(codes, kind="stable")
+    return np.split(order, np.cumsum(np.bincount(codes, minlength=count))[:-1])
+
+
 def _motional_estimate(
     overtone: int,
     of_part: tuple[str | None, float, str | None],
     limit_pf: float,
-    shunt_pf: Ends | None,
-) -> tuple[Ends, str]:
-    c0 = None if shunt_pf is None else (np.array(shunt_pf[0]), np.array(shunt_pf[1]), np.array(shunt_pf[2]))
+    shunt_pf: tuple[Array, Array, Array] | None,
+) -> motional.Estimate:
     cut, frequency_mhz, package = of_part
-    guess = motional.estimate_motional_capacitance_ff(
-        cut, overtone, frequency_mhz, package, shunt_capacitance_pf=c0, limit_pf=limit_pf
+    return motional.estimate_motional_capacitance_ff(
+        cut, overtone, frequency_mhz, package, shunt_capacitance_pf=shunt_pf, limit_pf=limit_pf
     )
-    return (float(guess.low), float(guess.mid), float(guess.high)), guess.basis
 
 
-def _shunt_from_ratio(offers: Sequence[Offer], setting: int) -> Array:
+def _shunt_from_ratio(lot: Lot, setting: int) -> Array:
     """(3, n) C0 = C1 (C0/C1), where both are stated."""
-    stated = [spans([o.at[setting].motional.get(name, Taken()) for o in offers]) for name in SHUNT_FROM]
+    stated = [spans(lot.at(setting, C1_FROM[name])) for name in SHUNT_FROM]
     shunt: Array = stated[0] * stated[1] * FEMTO / PICO
     return shunt
 
@@ -206,7 +216,7 @@ def _along(route: Whole, here: Array, at_room: Array) -> Array:
 
 
 def _by_every_route(
-    offers: Sequence[Offer], setting: int, of_part: tuple[Array, Array], at_setting: tuple[Array, Array, Array]
+    lot: Lot, setting: int, of_part: tuple[Array, Array], at_setting: tuple[Array, Array, Array]
 ) -> Array:
     """C1 in fF by each route, (routes, 3, n); NaN where the route is not stated or lacks what it needs.
 
@@ -216,7 +226,7 @@ def _by_every_route(
     esr, shunt, floor = at_setting
     low_shunt = np.stack([floor, shunt[MID], shunt[HIGH]])
     no_load = np.where(np.isnan(load), np.inf, load)  # a part in ten thousand of what L1 comes to
-    stated = {name: spans([o.at[setting].motional.get(name, Taken()) for o in offers]) for name in C1_ROUTES}
+    stated = {name: spans(lot.at(setting, key)) for name, key in C1_FROM.items()}
     pulling = np.abs(stated["pulling_sensitivity_ppm_per_pf"])
     with np.errstate(all="ignore"):
         routes = [

@@ -9,17 +9,18 @@ the negative resistance that point is one more corner.
 from __future__ import annotations
 
 import itertools
-from collections.abc import Iterator, Sequence
-from dataclasses import dataclass, field
+from collections.abc import Collection, Sequence
+from dataclasses import dataclass, field, replace
 from typing import Any
 
 import numpy as np
 from numpy.typing import NDArray
 
-from compare.bench import Bench, CircuitKeys, Setting
+from compare.bench import Bench, CircuitKeys
 from compare.circuit import Array, Circuit, Complex, terminal_impedance_ohm, turning_transconductance_ms
 from compare.columns import HIGH, LOW, MID, Columns, Flags
-from compare.oscillation import Crystal, End, Limiter, analyse
+from compare.lot import Whole, distinct
+from compare.oscillation import Crystal, End, Limiter, Swing, analyse, analyse_block, blocks
 from compare.rating import from_critical_ms, from_esr_ms, from_negative_resistance_ms, list_row
 from compare.turning import hardest_capacitances
 
@@ -32,10 +33,8 @@ BY_SHUNT_FLOOR = (
     "trim_ppm_per_pf",
 )
 """Numbers of frequency: where C0 is a loose limit their low end of C0 is an estimate. All others use the limit."""
-AT_MOST = 1 << 19
-"""Array elements of one key held at a time."""
-MOST_CORNERS = 3 * 2 * 2 * 16 * 4
-"""Ends of C0, C1 and ESR, corners of four capacitances, transconductances with turning points."""
+MOSTLY = 0.8
+"""Share of parts that differ above which looking for alike ones saves nothing."""
 SHUNT_FLOOR = 2
 """Index on the C0 axis of the estimated low end; 0 and 1 are the stated ends."""
 
@@ -104,6 +103,12 @@ class Reckoned:
     too_much_gain: Array = field(default_factory=lambda: np.empty(0))
     """(n,) the IC's greatest transconductance over the one where oscillation stops again, in the worst corner."""
 
+    def take(self, which: Whole) -> Reckoned:
+        """Of some of the parts, by index."""
+        nominal = {key: values[which] for key, values in self.nominal.items()}
+        over = {key: Envelope(*(values[which] for values in vars(one).values())) for key, one in self.over.items()}
+        return Reckoned(nominal, over, self.too_much_gain[which])
+
     def low(self, key: str) -> Array:
         """(n,) low end over every corner that counts for the key."""
         counting = self._counting(key, self.over[key].low)
@@ -128,36 +133,34 @@ def _ignoring_nan(reduce: np.ufunc, values: Array) -> Array:
     return reduced
 
 
-def reckon(columns: Columns, bench: Bench) -> Reckoned:
-    """Every number of every part, nominal and over the corners."""
-    n = len(columns)
-    size = AT_MOST // MOST_CORNERS
-    pieces = [_reckon_piece(columns.take(range(start, min(start + size, n))), bench) for start in range(0, n, size)]
-    return _joined(pieces) if pieces else Reckoned()
+def reckon(
+    columns: Columns, bench: Bench, *, wanted: Collection[str] | None = None, among: Columns | None = None
+) -> Reckoned:
+    """Every number of every part, nominal and over the corners; parts that are alike to a circuit only once.
+
+    `wanted`: the keys whose ends over the corners are asked for, all of them where it is not given. `among`: all the
+    parts that these few are taken from, where the numbers must be the same as beside the others: which capacitances
+    inside their tolerances drive hardest is settled for all parts together.
+    """
+    first, which = _alike(columns)
+    every = columns if among is None else among
+    if len(first) > MOSTLY * len(columns):
+        return _reckon_distinct(columns, bench, wanted, every)
+    return _reckon_distinct(columns.take(first), bench, wanted, every).take(which)
 
 
-def _joined(pieces: Sequence[Reckoned]) -> Reckoned:
-    if len(pieces) == 1:
-        return pieces[0]
-    keys = pieces[0].over
-    nominal = {key: np.concatenate([p.nominal[key] for p in pieces]) for key in pieces[0].nominal}
-    over = {
-        key: Envelope(*(np.concatenate([getattr(p.over[key], name) for p in pieces]) for name in vars(keys[key])))
-        for key in keys
-    }
-    return Reckoned(nominal, over, np.concatenate([p.too_much_gain for p in pieces]))
+def _alike(columns: Columns) -> tuple[Whole, Whole]:
+    """Where each part that differs from all before it stands, and which of these each part is like."""
+    ends = [columns.shunt_pf, columns.motional_ff, columns.esr_ohm]
+    values = [columns.load_pf, columns.shunt_floor_pf, *(row for end in ends for row in end.reshape(-1, len(columns)))]
+    return distinct(*(np.unique(row, return_inverse=True)[1] for row in values))
 
 
-def _reckon_piece(columns: Columns, bench: Bench) -> Reckoned:
+def _reckon_distinct(columns: Columns, bench: Bench, wanted: Collection[str] | None, among: Columns) -> Reckoned:
     nominal = analyse_nominal(columns, bench, limiters_of(bench.settings[0].circuit)[0])
     reckoned = Reckoned(nominal, {}, np.full(len(columns), -np.inf))
-    for number, setting in enumerate(bench.settings):
-        for found, greatest_gm, shunt_index in _corner_sets(columns, bench, number, setting):
-            for key, values in found.items():
-                _widen(reckoned.over, key, values, shunt_index)
-            ratio = (greatest_gm / found["greatest_transconductance_ms"])[:, shunt_index[:SHUNT_FLOOR]]
-            worst = np.nan_to_num(ratio, nan=-np.inf).max(axis=tuple(range(1, ratio.ndim)))
-            reckoned.too_much_gain = np.maximum(reckoned.too_much_gain, worst)
+    for corners in _corner_sets(columns, bench, among):
+        _widen_all(reckoned, corners, wanted)
     return reckoned
 
 
@@ -256,19 +259,74 @@ def swing_of(keys: CircuitKeys) -> tuple[float, End]:
     return np.nan if keys.swing_peak_v is None else keys.swing_peak_v, keys.swing_at
 
 
-def _corner_sets(
-    columns: Columns, bench: Bench, number: int, setting: Setting
-) -> Iterator[tuple[dict[str, Array], Array, Sequence[int]]]:
-    """For each limiter that may hold: every key at every corner, axes (part, C0, C1, ESR, node capacitances, gm).
+@dataclass(frozen=True)
+class Corners:
+    """All corners of one setting under one limiter, axes (part, C0, C1, ESR, node capacitances, transconductance).
 
-    Beside it the IC's greatest transconductance, and which index on the C0 axis stands for low, high and estimated low.
+    `peak_v` and the IC's greatest transconductance go along the last axis, for conditions that differ in nothing else
+    are corners of one set. `shunt_index` tells which index on the C0 axis is low, high and estimated low.
     """
-    keys = setting.circuit
-    shunt, shunt_index = shunt_ends_and_floor(columns, number)
-    crystal = crystal_at(columns, bench, number, shunt)
-    circuit, greatest_gm = corner_circuit(bench, keys, shunt, _with_hardest(bench, keys, crystal))
-    for limiter in limiters_of(keys):
-        yield analyse(circuit, crystal, *swing_of(keys), limiter, keys.probe_pf), greatest_gm, shunt_index
+
+    circuit: Circuit
+    crystal: Crystal
+    keys: CircuitKeys
+    limiter: Limiter
+    peak_v: Array
+    greatest_gm: Array
+    shunt_index: Sequence[int]
+
+    def joins(self, other: Corners) -> bool:
+        """True where the two differ in transconductance and swing alone."""
+        gain = ("transconductance_ms",)
+        return (
+            self.limiter == other.limiter
+            and self.keys.swing_at == other.keys.swing_at
+            and self.keys.probe_pf == other.keys.probe_pf
+            and self.shunt_index == other.shunt_index
+            and _same_fields(self.circuit, other.circuit, gain)
+            and _same_fields(self.crystal, other.crystal)
+        )
+
+    def joined(self, other: Corners) -> Corners:
+        gm = _side_by_side(np.asarray(self.circuit.transconductance_ms), np.asarray(other.circuit.transconductance_ms))
+        return replace(
+            self,
+            circuit=replace(self.circuit, transconductance_ms=gm),
+            peak_v=_side_by_side(self.peak_v, other.peak_v),
+            greatest_gm=_side_by_side(self.greatest_gm, other.greatest_gm),
+        )
+
+
+def _same_fields(one: Circuit | Crystal, other: Circuit | Crystal, but: Collection[str] = ()) -> bool:
+    names = [name for name in vars(one) if name not in but]
+    return all(np.array_equal(getattr(one, name), getattr(other, name), equal_nan=True) for name in names)
+
+
+def _side_by_side(*listed: Array) -> Array:
+    shape = np.broadcast_shapes(*((*values.shape[:-1], 1) for values in listed))
+    return np.concatenate([np.broadcast_to(x, (*shape[:-1], x.shape[-1])) for x in listed], axis=-1)
+
+
+def _corner_sets(columns: Columns, bench: Bench, among: Columns) -> list[Corners]:
+    """The corners of every setting, for each limiter that may hold."""
+    sets: list[Corners] = []
+    for number, setting in enumerate(bench.settings):
+        keys = setting.circuit
+        shunt, shunt_index = shunt_ends_and_floor(columns, number)
+        crystal = crystal_at(columns, bench, number, shunt)
+        every = crystal_at(among, bench, number, shunt_ends_and_floor(among, number)[0])
+        circuit, greatest_gm = corner_circuit(bench, keys, shunt, _with_hardest(bench, keys, every))
+        gains = np.shape(circuit.transconductance_ms)[-1]
+        peak_v = np.full((1,) * 5 + (gains,), swing_of(keys)[0])
+        greatest_gm = np.broadcast_to(greatest_gm, peak_v.shape)
+        for limiter in limiters_of(keys):
+            one = Corners(circuit, crystal, keys, limiter, peak_v, greatest_gm, shunt_index)
+            at = next((at for at, known in enumerate(sets) if known.joins(one)), None)
+            if at is None:
+                sets.append(one)
+            else:
+                sets[at] = sets[at].joined(one)
+    return sets
 
 
 def limiters_of(keys: CircuitKeys) -> tuple[Limiter, ...]:
@@ -397,23 +455,57 @@ def _transconductances(bench: Bench, keys: CircuitKeys, of: tuple[Sequence[Array
     circuit = make_circuit(keys, bench, capacitances, np.full((1,) * 6, low))
     frequency = bench.requirement.frequency_mhz
     turning = [np.clip(turning_transconductance_ms(circuit, frequency, c0), low, high) for c0 in (0.0, shunt)]
-    ends = [np.full((1,) * 6, low), np.full((1,) * 6, high), *turning]
-    shape = np.broadcast_shapes(*(x.shape for x in ends))
-    return np.concatenate([np.broadcast_to(x, shape) for x in ends], axis=-1), np.full((1,) * 6, high)
+    ends = [np.full((1,) * 6, low), np.full((1,) * 6, high)]
+    # A turning point that lies outside the range for all of them is an end once more.
+    ends += [at for at in turning if not ((at == low).all() or (at == high).all())]
+    return _side_by_side(*ends), np.full((1,) * 6, high)
 
 
-def _widen(over: dict[str, Envelope], key: str, values: Array, shunt_index: Sequence[int]) -> None:
-    corners = (3, 4, 5)
-    parts, motional = values.shape[0], 2
+def _widen_all(reckoned: Reckoned, corners: Corners, wanted: Collection[str] | None) -> None:
+    """Every key at every corner, some parts at a time, and only its ends kept: a list of thousands has millions."""
+    circuit, crystal, keys = corners.circuit, corners.crystal, corners.keys
+    inputs = [*circuit, *crystal, corners.peak_v, np.asarray(keys.probe_pf, dtype=float)]
+    shape = np.broadcast_shapes(*(x.shape for x in inputs))
+    fields = len(vars(circuit))
+    too_much = not np.isnan(corners.greatest_gm).all()
+    asked = {*wanted, "greatest_transconductance_ms"} if wanted is not None and too_much else wanted
+    for rows, block in blocks(inputs, shape):
+        with np.errstate(all="ignore"):
+            swing = Swing(block[-2], keys.swing_at, block[-1])
+            circuits, crystals = Circuit(*block[:fields]), Crystal(*block[fields:-2])
+            found = analyse_block(circuits, crystals, swing, corners.limiter, asked)
+        part = rows[0]
+        for key, values in found.items():
+            _widen(reckoned, key, values, part, corners.shunt_index)
+        if not too_much:
+            continue
+        of_stated = list(corners.shunt_index[:SHUNT_FLOOR])
+        greatest = _six(found["greatest_transconductance_ms"])
+        ratio = np.nan_to_num(corners.greatest_gm / greatest, nan=-np.inf).max(axis=CORNERS)
+        worst = ratio[:, of_stated if ratio.shape[1] > 1 else [0]].max(axis=(1, 2))
+        reckoned.too_much_gain[part] = np.maximum(reckoned.too_much_gain[part], worst)
 
-    def spread(reduced: NDArray[Any]) -> NDArray[Any]:
-        return np.broadcast_to(reduced[:, shunt_index], (parts, len(shunt_index), motional)).copy()
 
-    without = spread(np.logical_or.reduce(np.isnan(values), axis=corners))
-    low = spread(np.fmin.reduce(values, axis=corners))
-    high = spread(np.fmax.reduce(values, axis=corners))
-    if key in over:
-        known = over[key]
-        low, high = np.fmin(known.low, low), np.fmax(known.high, high)
-        without = without | known.some_without
-    over[key] = Envelope(low, high, without)
+CORNERS = (3, 4, 5)
+"""Axes of ESR, node capacitances and transconductance: those over which only the ends are kept."""
+
+
+def _six(values: NDArray[Any]) -> NDArray[Any]:
+    return values.reshape((1,) * (6 - values.ndim) + values.shape)
+
+
+def _widen(reckoned: Reckoned, key: str, values: Array, rows: slice, shunt_index: Sequence[int]) -> None:
+    n = len(reckoned.too_much_gain)
+    if key not in reckoned.over:
+        none = np.full((n, len(shunt_index), 2), np.nan)
+        reckoned.over[key] = Envelope(none, none.copy(), np.zeros(none.shape, dtype=bool))
+    known, found = reckoned.over[key], _six(values)
+    # Axes along which the key does not change are not there: what is not worked out twice is not compared twice.
+    which = list(shunt_index) if found.shape[1] > 1 else [0] * len(shunt_index)
+    low, high = (reduce.reduce(found, axis=CORNERS)[:, which] for reduce in (np.fmin, np.fmax))
+    np.fmin(known.low[rows], low, out=known.low[rows])
+    np.fmax(known.high[rows], high, out=known.high[rows])
+    without = np.isnan(low)
+    if not without.all():
+        without = np.logical_or.reduce(np.isnan(found), axis=CORNERS)[:, which]
+    known.some_without[rows] |= without

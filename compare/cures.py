@@ -17,6 +17,7 @@ from compare.bench import Bench, CircuitKeys
 from compare.columns import HIGH, MID, Columns
 from compare.corners import reckon
 from compare.explain import figure, joined
+from compare.lot import Separate
 from compare.reckoning import Reckoning
 from compare.verdict import FALLS_SHORT, GAINS, MEETS, Judged, judge
 
@@ -247,7 +248,7 @@ def _tolerance(trial: Changed) -> list[Cure]:
     def holds(size: float) -> bool:
         span = replace(offer.tolerance.span, low=-size, mid=0.0, high=size)
         tighter = replace(offer, tolerance=replace(offer.tolerance, span=span))
-        return trial.turns(names, replace(trial.one, offers=(tighter,)))
+        return trial.turns(names, replace(trial.one, offers=Separate([tighter])))
 
     if stated <= 0 or not holds(stated / REACH):
         return []

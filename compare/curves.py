@@ -28,7 +28,7 @@ from compare.oscillation import Arm, Crystal, analyse
 from compare.prefix import PPM
 from compare.reckoning import Reckoning
 from compare.roots import CRYSTAL, SHUNT, crystal_at_values, crystal_roots
-from compare.terms import fork_spans, reckoned_range_c
+from compare.terms import fork_spans, reckoned_ranges_c
 
 POINTS = 201
 SHAPE_NOT_STATED = "how far it drifts over the range is stated, not on what curve: the shape is not stated"
@@ -278,7 +278,7 @@ def ppm_over_temperature(reckoning: Reckoning, at: int, points: int = POINTS) ->
     """
     one, bench = _part(reckoning, at)
     offer = one.offers[0]
-    low_c, high_c = reckoned_range_c(offer, bench)
+    low_c, high_c = (float(end) for end in reckoned_ranges_c(one.offers, bench)[:, 0])
     temperature = np.linspace(low_c, high_c, points)
     if offer.fork:
         k, centre = (ends[:, 0] for ends in fork_spans(one.offers))

@@ -18,8 +18,9 @@ from compare import budget
 from compare.bench import Bench, CircuitKeys, Setting
 from compare.boards import Boards, every_board, load_errors_ppm
 from compare.circuit import Array
-from compare.columns import HIGH, LOW, MID, Columns, Flags, Whole, spans
+from compare.columns import HIGH, LOW, MID, Columns, Flags
 from compare.corners import BY_SHUNT_FLOOR, analyse_nominal, as_reckoned, limiters_of, rated_gm, swing_of
+from compare.lot import Whole, spans
 from compare.oscillation import Crystal, analyse
 from compare.prefix import MILLI
 from compare.result import OPEN_END
@@ -34,7 +35,7 @@ from compare.roots import (
     crystal_at_values,
     crystal_roots,
 )
-from compare.terms import ageing_term, fork_spans, make_term, reckoned_range_c, temperature_term
+from compare.terms import ageing_term, fork_spans, make_term, reckoned_ranges_c, temperature_term
 from compare.verdict import GAINS, silence, transconductance_missing
 
 Shape = Literal["uniform", "triangular", "normal"]
@@ -238,7 +239,7 @@ def _short_of(
 ) -> dict[str, Whole]:
     """How many boards of each part fall short of each requirement that the bench asks."""
     short: dict[str, Flags] = {}
-    rated = spans([o.drive for o in columns.offers])[MID][:, None]
+    rated = spans(columns.offers.column("drive"))[MID][:, None]
     for one in settings:
         for found in _evaluated(columns, bench, one, units):
             for name, flags in _falling_short(found, bench, one, budget_ends, rated):
@@ -301,9 +302,9 @@ class _Budget:
             (make.low, make.high),
             (ageing.low, ageing.high),
             (stability.low, stability.high),
-            np.array([o.fork for o in columns.offers], dtype=bool),
+            columns.offers.column("fork").array(bool, bool),
             *fork_spans(columns.offers),
-            np.array([reckoned_range_c(o, bench) for o in columns.offers], dtype=float).reshape(-1, 2).T,
+            reckoned_ranges_c(columns.offers, bench),
             offset,
         )
 

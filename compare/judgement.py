@@ -74,7 +74,8 @@ def _told_and_tried(swap: Swap) -> tuple[set[int | None], set[int | None]]:
     if reckoning is None:
         return set(range(len(swap.columns))), set()
     sits = {one.column for one in swap.candidates if not sits_elsewhere(swap.incumbent.part, one.part)}
-    best = sorted(order(reckoning), key=lambda at: at not in sits)
+    ranked = order(reckoning.judged, reckoning.verdict).tolist()
+    best = sorted(ranked, key=lambda at: at not in sits)
     short = [at for at in best if at in sits and reckoning.verdict[at] != MEETS]
     return set(best[: MOST_TOLD + 1]), set(short[:MOST_TRIED])
 

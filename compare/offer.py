@@ -5,7 +5,7 @@ from __future__ import annotations
 import math
 import re
 from collections.abc import Collection, Mapping, Sequence
-from dataclasses import dataclass, field, replace
+from dataclasses import dataclass, replace
 
 from compare.bench import Bench
 from compare.stated import (
@@ -121,27 +121,6 @@ class Match:
     printed_mhz: float | None
     said: str = ""
     reading: Reading | None = None
-
-
-@dataclass
-class Offers:
-    """The parts that offer the frequency, in the order read, and a note for each that does not."""
-
-    offers: list[Offer] = field(default_factory=list)
-    notes: list[dict[str, object]] = field(default_factory=list)
-
-
-def find_offers(sheets: Sequence[SpecSheet], bench: Bench) -> Offers:
-    """Every part that offers the bench's frequency; its load still open where the sheet leaves a choice."""
-    found = Offers()
-    for sheet in sheets:
-        for part in sheet.parts:
-            match = match_frequency(part, bench.requirement.frequency_mhz)
-            if match.printed_mhz is None:
-                found.notes.append({"level": "info", "message": f"{named(sheet, part)}: {match.said}", "where": None})
-            else:
-                found.offers.append(make_offer(sheet, part, match, bench))
-    return found
 
 
 def named(sheet: SpecSheet, part: Part) -> str:

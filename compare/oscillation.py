@@ -12,7 +12,7 @@ the critical transconductance and the other one the greatest. Each has its own f
 
 from __future__ import annotations
 
-from collections.abc import Callable, Iterator
+from collections.abc import Callable, Collection, Iterator
 from dataclasses import dataclass, fields, replace
 from functools import cached_property
 from typing import Any, Literal
@@ -129,14 +129,28 @@ class Loop:
         return self.nominal(self.net.gm)
 
     @cached_property
-    def pole(self) -> tuple[Complex, Complex]:
-        """s/ωs of the closed loop's crystal pole, and dZ/d(s/ωs) near it."""
+    def towards_pole(self) -> tuple[Complex, Complex, Complex]:
+        """s/ωs of the steady state and of the first step from it to the pole, and what the arm sees there."""
         first, second = 1j * (1 + self.arm.rated_pull), self.arm.pole_of(self.seen)
         seen = over_transconductance(self.net, second * self.arm.omega_s, self.arm.c_shunt)(self.net.gm)
+        return first, second, seen
+
+    @property
+    def pole(self) -> Complex:
+        """s/ωs of the closed loop's crystal pole."""
+        first, second, seen = self.towards_pole
         third = self.arm.pole_of(seen)
-        slope = np.nan_to_num((seen - self.seen) / (second - first), nan=0.0, posinf=0.0, neginf=0.0)
-        rate = np.nan_to_num((third - second) / (second - first), nan=0.0, posinf=0.0, neginf=0.0)
-        return third + (third - second) * rate / (1 - rate), slope
+        step = third - second
+        rate = np.nan_to_num(step / (second - first), nan=0.0, posinf=0.0, neginf=0.0)
+        pole: Complex = third + step * rate / (1 - rate)
+        return pole
+
+    @property
+    def slope(self) -> Complex:
+        """dZ/d(s/ωs) near the pole."""
+        first, second, seen = self.towards_pole
+        slope: Complex = np.nan_to_num((seen - self.seen) / (second - first), nan=0.0, posinf=0.0, neginf=0.0)
+        return slope
 
 
 @dataclass(frozen=True)
@@ -219,7 +233,10 @@ def blocks(inputs: list[Array], shape: tuple[int, ...]) -> Iterator[tuple[tuple[
         yield (rows,), [x if x.shape[0] == 1 else x[rows] for x in aligned]
 
 
-def analyse_block(circuit: Circuit, crystal: Crystal, swing: Swing, limiter: Limiter) -> dict[str, Array]:
+def analyse_block(
+    circuit: Circuit, crystal: Crystal, swing: Swing, limiter: Limiter, wanted: Collection[str] | None = None
+) -> dict[str, Array]:
+    """The keys of `analyse`, or those that are wanted, each along the axes that it changes along."""
     loop = Loop(Network.of(circuit), Arm.of(crystal))
     critical = critical_state(loop)
     steady = critical if limiter == "transconductance" else output_limited_state(loop, critical)
@@ -230,25 +247,26 @@ def analyse_block(circuit: Circuit, crystal: Crystal, swing: Swing, limiter: Lim
     load = np.where(cannot_oscillate, series_load_pf(circuit), steady_load_pf(loop.arm, steady))
     rl = motional.load_resonance_resistance_ohm(r1, c0, load)
     negative = terminal_impedance_ohm(circuit, frequency).real
-    return {
-        "motional_inductance_mh": motional.motional_inductance_mh(fs, c1),
-        "quality_factor": motional.quality_factor(fs, c1, r1),
-        "series_resonance_mhz": fs,
-        "parallel_resonance_mhz": motional.parallel_resonance_mhz(fs, c0, c1),
-        "circuit_load_pf": load,
-        "load_resonance_resistance_ohm": rl,
-        "negative_resistance_ohm": negative,
-        "margin": -negative / rl,
-        "gain_ratio": loop.net.gm / critical.net.gm,
-        "resistance_headroom": -loop.seen.real / r1,
-        "greatest_esr_ohm": greatest_esr_ohm(loop),
-        "critical_transconductance_ms": critical.net.gm / MILLI,
-        "greatest_transconductance_ms": greatest_transconductance(loop, critical) / MILLI,
-        "load_error_ppm": load_error_ppm(loop.arm, crystal, steady.pull),
-        "trim_ppm_per_pf": motional.trim_ppm_per_pf(fs, c0, c1, load, r1),
-        "drive_level_uw": drive_level_uw(loop.arm, driven, swing),
-        "startup_ms": startup_ms(loop),
+    keys: dict[str, Callable[[], NDArray[np.floating[Any]]]] = {
+        "motional_inductance_mh": lambda: motional.motional_inductance_mh(fs, c1),
+        "quality_factor": lambda: motional.quality_factor(fs, c1, r1),
+        "series_resonance_mhz": lambda: fs,
+        "parallel_resonance_mhz": lambda: motional.parallel_resonance_mhz(fs, c0, c1),
+        "circuit_load_pf": lambda: load,
+        "load_resonance_resistance_ohm": lambda: rl,
+        "negative_resistance_ohm": lambda: negative,
+        "margin": lambda: -negative / rl,
+        "gain_ratio": lambda: loop.net.gm / critical.net.gm,
+        "resistance_headroom": lambda: -loop.seen.real / r1,
+        "greatest_esr_ohm": lambda: greatest_esr_ohm(loop),
+        "critical_transconductance_ms": lambda: critical.net.gm / MILLI,
+        "greatest_transconductance_ms": lambda: greatest_transconductance(loop, critical) / MILLI,
+        "load_error_ppm": lambda: load_error_ppm(loop.arm, crystal, steady.pull),
+        "trim_ppm_per_pf": lambda: motional.trim_ppm_per_pf(fs, c0, c1, load, r1),
+        "drive_level_uw": lambda: drive_level_uw(loop.arm, driven, swing),
+        "startup_ms": lambda: startup_ms(loop),
     }
+    return {key: array(of()) for key, of in keys.items() if wanted is None or key in wanted}
 
 
 def secant(first: Array, second: Array, third: Array) -> Array:
@@ -393,7 +411,7 @@ def amplifier_swing_v(
 def greatest_esr_ohm(loop: Loop) -> Array:
     """R1 at which the amplitude would neither grow nor fall: -Re Z where the arm balances Im Z."""
     arm = loop.arm
-    _, slope = loop.pole
+    slope = loop.slope
     balanced = arm.pull_of(-loop.seen.imag)
     # Z at the balancing frequency, from Z and its slope at the nominal one: the bend between them is some 1e-7 of Z.
     resistance = -(loop.seen + slope * 1j * (balanced - arm.rated_pull)).real
@@ -406,6 +424,5 @@ def startup_ms(loop: Loop) -> Array:
     σ is (-Re Z - R1)/(2 L1) to 0.02 % in most circuits; here it is the pole itself. From noise to full swing takes more
     or fewer decades than five, and the gain falls on the way: an order of magnitude, not a promise.
     """
-    pole, _ = loop.pole
-    growth = pole.real * loop.arm.omega_s
+    growth = loop.pole.real * loop.arm.omega_s
     return np.where(growth > 0, DECADES_OF_GROWTH / growth, np.nan) / MILLI

@@ -6,8 +6,9 @@ import numpy as np
 
 from compare.bench import Bench, Setting
 from compare.circuit import Array
-from compare.columns import HIGH, LOW, Columns, Flags, spans
+from compare.columns import HIGH, LOW, Columns, Flags
 from compare.corners import corner_circuit, crystal_at, shunt_ends
+from compare.lot import spans
 from compare.motional import series_resonance_mhz
 from compare.oscillation import Crystal, analyse
 from compare.verdict import CANNOT_TELL, FALLS_SHORT, MEETS, Judged, Silence, transconductance_missing
@@ -68,7 +69,7 @@ def _growths(columns: Columns, bench: Bench, number: int, setting: Setting) -> t
     fs = series_resonance_mhz(*np.broadcast_arrays(*_with_known_load(crystal)))
     own = _growth(analyse(circuit, crystal)["startup_ms"])
     _, _, _, motional, esr = crystal
-    stated = spans([offer.at[number].fundamental_esr for offer in columns.offers])[:, :, None, None, None, None, None]
+    stated = spans(columns.offers.at(number, "fundamental_esr"))[:, :, None, None, None, None, None]
     lower = [
         Crystal(fs / order, np.inf, shunt, motional * order**2, np.where(np.isnan(own_esr), esr * part, own_esr))
         for part, own_esr in ((1 / order**2, stated[LOW]), (GREATEST_FUNDAMENTAL_ESR, stated[HIGH]))

@@ -3,19 +3,23 @@
 from __future__ import annotations
 
 from collections.abc import Mapping, Sequence
-from dataclasses import dataclass
+from dataclasses import dataclass, field
 from functools import cached_property
 from typing import Any
 
 import numpy as np
 
 from compare.bench import Bench
-from compare.offer import Offers
-from compare.reckoning import Reckoning, bare_result, part_result, reckon_sheets
-from compare.verdict import WORDS
+from compare.columns import make_columns
+from compare.corners import reckon
+from compare.find import Offers
+from compare.lot import Whole
+from compare.reckoning import JUDGED, Reckoning, bare_result, judge_all, part_result, reckon_offers, settled_offers
+from compare.verdict import WORDS, Judged, of_part
 from extract.model import SpecSheet
 
 SCHEMA = "quartzfolio/rank/1"
+MOST_KEPT = 2000
 
 
 @dataclass(frozen=True)
@@ -31,6 +35,7 @@ class Ranked:
     reckoning: Reckoning | None
     ordered: list[int]
     notes: tuple[Mapping[str, Any], ...]
+    made: dict[int, dict[str, Any]] = field(default_factory=dict, repr=False, compare=False)
 
     def __len__(self) -> int:
         return len(self.ordered)
@@ -64,10 +69,15 @@ class Ranked:
         }
 
     def row(self, place: int, *, whole: bool = True) -> dict[str, Any]:
-        """The row of section 5 at a place, from 1; with its sentences where it is wanted `whole`."""
+        """The row of section 5 at a place, from 1; with its sentences, and then kept, where it is wanted `whole`."""
         assert self.reckoning is not None  # noqa: S101
+        if place in self.made:
+            return self.made[place]
         make = part_result if whole else bare_result
-        return {"place": place, **make(self.reckoning, self.ordered[place - 1])}
+        row = {"place": place, **make(self.reckoning, self.ordered[place - 1])}
+        if whole and len(self.made) < MOST_KEPT:
+            self.made[place] = row
+        return row
 
     def result(self, shown: int | None = None) -> dict[str, Any]:
         """All rows, JSON-ready; those behind the first `shown` without their sentences."""
@@ -77,24 +87,37 @@ class Ranked:
 
 def rank_sheets(sheets: Sequence[SpecSheet], bench: Bench) -> Ranked:
     """Every part that offers the bench's frequency, in order."""
-    reckoning = reckon_sheets(sheets, bench)
-    if isinstance(reckoning, Offers):
-        return Ranked(None, [], tuple(reckoning.notes))
-    return Ranked(reckoning, order(reckoning), tuple(reckoning.notes))
+    return _ranked(settled_offers(sheets, bench), bench)
+
+
+def _ranked(found: Offers, bench: Bench) -> Ranked:
+    if not len(found.offers):
+        return Ranked(None, [], tuple(found.notes))
+    reckoning = reckon_offers(found.offers, bench, found.notes)
+    return Ranked(reckoning, order(reckoning.judged, reckoning.verdict).tolist(), tuple(found.notes))
 
 
 def rank(sheets: Sequence[SpecSheet], bench: Bench, *, shown: int | None = None) -> dict[str, Any]:
     """Rank every part that offers the bench's frequency; JSON-ready.
 
-    `shown`: for a list of thousands, how many rows carry their sentences (`how`, reasons, questions, remarks); the rows
-    after them have places, numbers, verdicts and slack alone. None, the rule: all of them.
+    `shown`: of a list of thousands, how many rows are wanted. Beside them `counts` tells how many parts there are of
+    each verdict; what the rows after them would hold is not worked out. None, the rule: all of them.
     """
-    return rank_sheets(sheets, bench).result(shown)
+    found = settled_offers(sheets, bench)
+    if shown is None or len(found.offers) <= shown:
+        return _ranked(found, bench).result()
+    columns = make_columns(found.offers, bench)
+    judged, _ = judge_all(columns, bench, reckon(columns, bench, wanted=JUDGED))
+    verdict = of_part(judged, len(columns))
+    first = order(judged, verdict)[:shown]
+    # The same numbers as beside all the others, at the cost of these few.
+    reckoning = reckon_offers(found.offers.take(first), bench, found.notes, among=columns)
+    counts = {words: int((verdict == code).sum()) for code, words in WORDS.items()}
+    return Ranked(reckoning, list(range(len(first))), tuple(found.notes)).result() | {"counts": counts}
 
 
-def order(reckoning: Reckoning) -> list[int]:
+def order(judged: Mapping[str, Judged], verdict: Whole) -> Whole:
     """Indices, best first: by verdict, then by least known slack (none last), then as given."""
-    slacks = [np.where(one.asked, one.slack, np.nan) for one in reckoning.judged.values()]
-    least = np.fmin.reduce(slacks)
+    least = np.fmin.reduce([np.where(one.asked, one.slack, np.nan) for one in judged.values()])
     known = ~np.isnan(least)
-    return [int(at) for at in np.lexsort((-np.where(known, least, 0.0), ~known, -reckoning.verdict))]
+    return np.lexsort((-np.where(known, least, 0.0), ~known, -verdict))

@@ -12,15 +12,18 @@ import numpy as np
 
 from compare.bench import Bench
 from compare.circuit import Array
-from compare.columns import MID, Columns, Whole, make_columns
+from compare.columns import MID, Columns, make_columns
 from compare.corners import Reckoned, lossless_load_pf, nominal_r1_and_gm, reckon
 from compare.explain import BenchWords, Subject, bench_words, how
-from compare.offer import Offer, Offers, fields_to_check, find_offers, with_load
+from compare.find import Offers, find_offers
+from compare.lot import Lot, Separate, Whole, together
+from compare.offer import Band, Offer, fields_to_check
 from compare.overtone import judge_mode
 from compare.questions import question
 from compare.reasons import Standing, budget_words, reasons
 from compare.result import Number, numbers
 from compare.sources import ageing_words, c0_words, c1_words, remarks
+from compare.stated import Taken
 from compare.terms import Total, total_ppm
 from compare.verdict import (
     CANNOT_TELL,
@@ -35,6 +38,9 @@ from compare.verdict import (
     silence,
 )
 from extract.model import SpecSheet
+
+JUDGED = (*GAINS, "load_error_ppm", "drive_level_uw", "startup_ms")
+"""The numbers over the corners that verdicts are made of."""
 
 
 @dataclass(frozen=True)
@@ -60,29 +66,27 @@ class Reckoning:
 
 def reckon_sheets(sheets: Sequence[SpecSheet], bench: Bench) -> Reckoning | Offers:
     """All parts that offer the frequency, reckoned together; the offers alone where there is none."""
+    found = settled_offers(sheets, bench)
+    return reckon_offers(found.offers, bench, found.notes) if len(found.offers) else found
+
+
+def settled_offers(sheets: Sequence[SpecSheet], bench: Bench) -> Offers:
+    """All parts that offer the frequency, each with its load settled, and what is to be noted."""
     found = find_offers(sheets, bench)
-    found.notes += bench_notes(bench)
-    if not found.offers:
-        return found
-    offers = choose_loads(found.offers, bench)
-    return reckon_offers(offers, bench, found.notes)
+    return Offers(choose_loads(found.offers, bench), [*found.notes, *bench_notes(bench)])
 
 
-def reckon_offers(offers: Sequence[Offer], bench: Bench, notes: Sequence[dict[str, Any]] = ()) -> Reckoning:
-    """Columns, corners, numbers and verdicts of offers whose options are settled."""
+def reckon_offers(
+    offers: Sequence[Offer], bench: Bench, notes: Sequence[dict[str, Any]] = (), *, among: Columns | None = None
+) -> Reckoning:
+    """Columns, corners, numbers and verdicts of offers whose options are settled.
+
+    `among`: the parts that these few are taken from, where the numbers must be what they are beside all of them.
+    """
     columns = make_columns(offers, bench)
-    reckoned = reckon(columns, bench)
-    judged, total = judge(columns, bench, reckoned)
+    reckoned = reckon(columns, bench, among=among)
+    judged, total = judge_all(columns, bench, reckoned)
     known = silence(columns, bench)
-    mode = judge_mode(columns, bench, known)
-    if mode is not None:
-        judged["mode"] = mode
-    least = judge_least_esr(columns, bench)
-    if least is not None:
-        judged["esr_ohm"] = least
-    rating = judge_rating(columns, bench)
-    if rating is not None:
-        judged["rating"] = rating
     return Reckoning(
         bench=bench,
         columns=columns,
@@ -98,6 +102,17 @@ def reckon_offers(offers: Sequence[Offer], bench: Bench, notes: Sequence[dict[st
     )
 
 
+def judge_all(columns: Columns, bench: Bench, reckoned: Reckoned) -> tuple[dict[str, Judged], Total]:
+    """Every requirement, those of mode, least ESR and rating among them, in the order in which they are told."""
+    judged, total = judge(columns, bench, reckoned)
+    more = {
+        "mode": judge_mode(columns, bench, silence(columns, bench)),
+        "esr_ohm": judge_least_esr(columns, bench),
+        "rating": judge_rating(columns, bench),
+    }
+    return judged | {key: one for key, one in more.items() if one is not None}, total
+
+
 def bench_notes(bench: Bench) -> list[dict[str, Any]]:
     """What the bench leaves open: defaults taken, ppm not judged."""
     said = list(bench.taken)
@@ -107,56 +122,61 @@ def bench_notes(bench: Bench) -> list[dict[str, Any]]:
     return [{"level": "info", "message": text, "where": None} for text in said]
 
 
-def choose_loads(offers: Sequence[Offer], bench: Bench) -> list[Offer]:
+Choice = tuple[tuple[float, ...], Band | None]
+"""The loads that a part may be ordered with: a list, or a range."""
+
+
+def choose_loads(offers: Sequence[Offer], bench: Bench) -> Lot:
     """Each offer with its load settled: the option with the least worst-case load error in this circuit."""
-    open_ones = [at for at, offer in enumerate(offers) if offer.load_options or offer.load_range]
-    settled = list(offers)
+    lot = Separate.of(offers)
+    choices = lot.column("load_choice")
+    open_ones = np.flatnonzero(choices.array(lambda choice: choice != ((), None), bool))
     nominal = lossless_load_pf(bench.settings[0].circuit)
-    if not open_ones or math.isnan(nominal):
-        return settled
-    guessed = [with_load(offers[at], _nearest(offers[at], nominal), bench) for at in open_ones]
+    if not open_ones.size or math.isnan(nominal):
+        return lot
+    guessed = lot.take(open_ones).ordered([(_nearest(choices[at], nominal), "") for at in open_ones.tolist()], bench)
     columns = make_columns(guessed, bench)
     reckoned = reckon(columns, bench)
-    loads = [reckoned.low("circuit_load_pf"), reckoned.nominal["circuit_load_pf"], reckoned.high("circuit_load_pf")]
-    for number, (at, guess) in enumerate(zip(open_ones, guessed, strict=True)):
-        low, mid, high = (float(values[number]) for values in loads)
-        if math.isnan(mid):  # no ESR, no steady state: the lossless load serves for choosing
-            low = mid = high = nominal
-        load, why = _best_load(offers[at], (low, mid, high), float(columns.shunt_pf[0, MID, number]))
-        chosen = guess if load == guess.load.span.mid else with_load(offers[at], load, bench)
-        settled[at] = replace(chosen, said=(*chosen.said, ("load_capacitance_pf", why)))
-    return settled
+    ends = [reckoned.low("circuit_load_pf"), reckoned.nominal["circuit_load_pf"], reckoned.high("circuit_load_pf")]
+    # No ESR, no steady state: the lossless load serves for choosing.
+    circuit = np.where(np.isnan(ends[MID]), nominal, np.stack(ends)).T.tolist()
+    loads: list[tuple[float, str] | None] = [None] * len(lot)
+    for at, (low, mid, high), shunt_pf in zip(
+        open_ones.tolist(), circuit, columns.shunt_pf[0, MID].tolist(), strict=True
+    ):
+        loads[at] = _best_load(choices[at], (low, mid, high), shunt_pf)
+    return lot.ordered(loads, bench)
 
 
-def _nearest(offer: Offer, load_pf: float) -> float:
-    if offer.load_range is not None:
-        return min(max(load_pf, offer.load_range[0]), offer.load_range[1])
-    return min(offer.load_options, key=lambda option: abs(option - load_pf))
+def _nearest(choice: Choice, load_pf: float) -> float:
+    options, band = choice
+    if band is not None:
+        return min(max(load_pf, band[0]), band[1])
+    return min(options, key=lambda option: abs(option - load_pf))
 
 
-def _best_load(offer: Offer, circuit: tuple[float, float, float], shunt_pf: float) -> tuple[float, str]:
+def _best_load(choice: Choice, circuit: tuple[float, float, float], shunt_pf: float) -> tuple[float, str]:
     """The rated load to order, and why. Whatever C1 is, it scales every option's error alike."""
     low, mid, high = circuit
-    if offer.load_range is not None:
-        nearest = _nearest(offer, mid)
+    options, band = choice
+    if band is not None:
+        nearest = _nearest(choice, mid)
         inside = "the circuit's own nominal load" if nearest == mid else "the end of the range nearest to the circuit's"
-        return (
-            nearest,
-            f"a load of {nearest:.4g} pF taken of {offer.load_range[0]:g} to {offer.load_range[1]:g}, {inside}",
-        )
+        return nearest, f"a load of {nearest:.4g} pF taken of {band[0]:g} to {band[1]:g}, {inside}"
 
     def error(option: float) -> float:
         return max(abs(1 / (shunt_pf + end) - 1 / (shunt_pf + option)) for end in (low, high))
 
-    best = min(offer.load_options, key=error)
-    listed = ", ".join(f"{option:g}" for option in offer.load_options)
+    best = min(options, key=error)
+    listed = ", ".join(f"{option:g}" for option in options)
     return best, f"a load of {best:g} pF taken of {listed}: the least worst-case load error in this circuit"
 
 
 def _loosest_slack(columns: Columns, bench: Bench, reckoned: Reckoned) -> Array:
     """Slack of total_ppm with every option at its loosest; NaN where the part leaves no choice."""
     limits = bench.requirement.limits_ppm
-    choice = np.array([bool(o.loosest) for o in columns.offers], dtype=bool)
+    loosest = (columns.offers.column("loosest_tolerance"), columns.offers.column("loosest_stability"))
+    choice = together(lambda *options: any(one is not None for one in options), *loosest).array(bool, bool)
     if limits is None or not choice.any():
         return np.full(len(columns), np.nan)
     total = total_ppm(columns, bench, reckoned, loosest=True)
@@ -170,15 +190,15 @@ def judge_least_esr(columns: Columns, bench: Bench) -> Judged | None:
     asked = [floor for floor in floors if floor is not None]
     if not asked:
         return None
-    verdict = np.array([_least_esr_verdict(o, max(asked)) for o in columns.offers], dtype=int)
+    by_setting = [columns.offers.at(number, "esr") for number in range(len(bench.settings))]
+    verdict = together(lambda *taken: _least_esr_verdict(taken, max(asked)), *by_setting).array(int, int)
     none = np.full(len(columns), np.nan)
     cannot = verdict == CANNOT_TELL
     missing = {"least_esr_ohm": cannot} if cannot.any() else {}
     return Judged("esr_ohm", np.ones(len(columns), dtype=bool), verdict, none, none.copy(), missing)
 
 
-def _least_esr_verdict(offer: Offer, floor: float) -> int:
-    taken = [at.esr for at in offer.at]
+def _least_esr_verdict(taken: Sequence[Taken], floor: float) -> int:
     if not all(one.stated for one in taken):
         return CANNOT_TELL
     if min(one.span.high for one in taken) < floor or min(one.span.mid for one in taken) < floor:
@@ -194,7 +214,7 @@ def judge_rating(columns: Columns, bench: Bench) -> Judged | None:
     if not any(s.circuit.rating is not None and s.circuit.rating.kind is not None for s in both):
         return None
     by_rating = bench_by_rating(bench)
-    judged, _ = judge(columns, by_rating, reckon(columns, by_rating))
+    judged, _ = judge(columns, by_rating, reckon(columns, by_rating, wanted=JUDGED))
     gains = [judged[key] for key in GAINS]
     slack = np.min([one.slack for one in gains], axis=0)
     missing: dict[str, Any] = {}

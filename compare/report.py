@@ -13,7 +13,9 @@ from extract.model import FIELD_NAMES, Part, Reading, SpecSheet, When
 
 WIDTH = 100
 MOST_ROWS = 60
-MARKS = {"meets": "▲", "falls short": "▼", "cannot tell": "◇", None: "·"}
+MOST_NOTES = 100
+VERDICT_ORDER = ("meets", "cannot tell", "falls short")
+MARKS: dict[str | None, str] = {"meets": "▲", "falls short": "▼", "cannot tell": "◇", None: "·"}
 NAMES = {
     "margin": "margin",
     "gain_ratio": "gain ratio",
@@ -104,23 +106,24 @@ def times(slack: float | None) -> str:
 def rank_text(result: Mapping[str, Any]) -> str:
     """The ranking as text: a table, then the reason for each place, notes and cautions."""
     rows: Sequence[Mapping[str, Any]] = result["rows"]
-    lines = [_rank_heading(rows), ""]
+    counts = result.get("counts") or {words: sum(row["verdict"] == words for row in rows) for words in MARKS if words}
+    lines = [_rank_heading(counts), ""]
     if rows:
         widths = (5, 13, 26, 20, 32)
         lines.append(_row(("place", "verdict", "part", "maker", "tightest requirement"), widths))
-        lines += [_rank_line(row, widths) for row in rows[:MOST_ROWS]]
-        if len(rows) > MOST_ROWS:
-            lines.append(f"... and {len(rows) - MOST_ROWS} more; --json gives all of them")
-        lines += ["", "Why", *(line for row in rows[:MOST_ROWS] for line in _why(row))]
+        lines += [_rank_line(row, widths) for row in rows]
+        if sum(counts.values()) > len(rows):
+            lines.append(f"... and {sum(counts.values()) - len(rows)} more; --all shows and --json gives all of them")
+        lines += ["", "Why", *(line for row in rows for line in _why(row))]
     return _with_end(lines, result["notes"], bool(rows))
 
 
-def _rank_heading(rows: Sequence[Mapping[str, Any]]) -> str:
-    if not rows:
+def _rank_heading(counts: Mapping[str, int]) -> str:
+    total = sum(counts.values())
+    if not total:
         return "No part offers the frequency asked."
-    counts = {words: sum(row["verdict"] == words for row in rows) for words in ("meets", "cannot tell", "falls short")}
-    said = ", ".join(f"{MARKS[words]} {count} {words}" for words, count in counts.items() if count)
-    return f"{len(rows)} part{'s offer' if len(rows) != 1 else ' offers'} the frequency: {said}"
+    said = ", ".join(f"{MARKS[words]} {counts[words]} {words}" for words in VERDICT_ORDER if counts.get(words))
+    return f"{total} part{'s offer' if total != 1 else ' offers'} the frequency: {said}"
 
 
 def _row(cells: Iterable[str], widths: Sequence[int]) -> str:
@@ -291,7 +294,9 @@ def _with_end(lines: list[str], notes: Sequence[Any], cautions: bool) -> str:
     said = [note["message"] if isinstance(note, Mapping) else str(note) for note in notes]
     if said:
         lines += ["", "Notes"]
-        lines += [line for note in said for line in wrapped(note, "  - ")]
+        lines += [line for note in said[:MOST_NOTES] for line in wrapped(note, "  - ")]
+        if len(said) > MOST_NOTES:
+            lines.append(f"  ... and {len(said) - MOST_NOTES} more; --json gives all of them")
     if cautions:
         lines += ["", "Cautions"]
         lines += [line for caution in CAUTIONS for line in wrapped(caution, "  - ")]

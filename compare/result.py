@@ -10,9 +10,9 @@ import numpy as np
 from compare import motional
 from compare.bench import Bench
 from compare.circuit import Array
-from compare.columns import HIGH, LOW, MID, Columns, Flags, spans
+from compare.columns import HIGH, LOW, MID, Columns, Flags
 from compare.corners import BY_SHUNT_FLOOR, Reckoned
-from compare.stated import Taken
+from compare.lot import C1_FROM, spans
 from compare.terms import Total
 from compare.verdict import Silence, transconductance_missing
 
@@ -80,7 +80,7 @@ def numbers(columns: Columns, bench: Bench, reckoned: Reckoned, total: Total, kn
         found[key] = Number(np.where(np.isinf(ends), np.nan, ends), _estimated(key, columns, total), none, short_of)
     _fill_arm(found, columns)
     for key in ("motional_inductance_mh", "quality_factor"):
-        _put_stated(found[key], spans([o.at[0].motional.get(key, Taken()) for o in columns.offers]))
+        _put_stated(found[key], spans(columns.offers.at(0, C1_FROM[key])))
     found["motional_capacitance_ff"].stated = columns.route == 0
     return found
 

@@ -17,11 +17,11 @@ from compare.circuit import Array
 from compare.columns import HIGH, LOW, MID, Columns, Flags
 from compare.corners import BY_SHUNT_FLOOR, analyse_nominal, limiters_of
 from compare.draws import HELD, SHAPES, Draws, Shape, draw, drawn_numbers
-from compare.offer import Offers
+from compare.find import Offers
 from compare.reckoning import Reckoning, reckon_sheets
 from compare.result import NEEDS, OPEN_END
 from compare.roots import SHUNT_FLOOR, moved_alone
-from compare.terms import Term, ageing_term, fork_spans, make_term, reckoned_range_c, temperature_term
+from compare.terms import Term, ageing_term, fork_spans, make_term, reckoned_ranges_c, temperature_term
 from extract.model import SpecSheet
 
 Method = Literal["rss", "draws"]
@@ -140,7 +140,7 @@ class _BudgetSquares:
 def _budget_squares(columns: Columns, bench: Bench) -> _BudgetSquares:
     """Make, ageing, a stability as stated: squares. A fork's parabola is certain, the spread of its values is not."""
     make, ageing, temperature = make_term(columns, bench), ageing_term(columns, bench), temperature_term(columns, bench)
-    fork = np.array([o.fork for o in columns.offers], dtype=bool)
+    fork = columns.offers.column("fork").array(bool, bool)
     certain_low, certain_high, fork_below, fork_above = _parabola_squares(columns, bench)
     stated = [_squares_of(term) for term in (make, ageing)]
     below, above = _squares_of(temperature)
@@ -164,7 +164,7 @@ def _squares_of(term: Term) -> tuple[Array, Array]:
 def _parabola_squares(columns: Columns, bench: Bench) -> tuple[Array, Array, Array, Array]:
     """Ends of the nominal parabola over the range, and squares of what each of its values does to them; (n,) each."""
     k, centre = fork_spans(columns.offers)
-    range_c = np.array([reckoned_range_c(o, bench) for o in columns.offers], dtype=float).reshape(-1, 2).T
+    range_c = reckoned_ranges_c(columns.offers, bench)
 
     def ends(coefficient: Array, turnover: Array) -> tuple[Array, Array]:
         return budget.parabola_ppm_range((range_c[0], range_c[1]), (coefficient, coefficient), (turnover, turnover))

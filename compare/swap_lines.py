@@ -12,7 +12,7 @@ from compare.columns import HIGH, LOW, MID, Columns
 from compare.footprint import Fit, package_fit, pads_fit, plain
 from compare.offer import Offer
 from compare.relations import Relation, relation, relation_words, rules, taken_value
-from compare.stated import NOTHING, Span, Taken, take
+from compare.stated import NOTHING, Facts, Span, Taken, take
 from extract.model import Attributes, Part
 
 MECHANICAL = ("package", "pads")
@@ -84,7 +84,7 @@ def _taken(columns: Columns, at: int, field: str) -> Taken:
     if field == "load_capacitance_pf":
         return offer.load
     if field in NO_OFFER_FIELDS:
-        return take(offer.part, field, replace(offer.case, temperature_c=None))
+        return take(Facts.of(offer.part), field, replace(offer.case, temperature_c=None))
     taken = offer.taken().get(field, NOTHING)
     if field == "motional_capacitance_ff" and not taken.stated and not columns.motional_estimated[at]:
         span = columns.motional_ff[:, :, at]

@@ -6,7 +6,7 @@ its best: a verdict that would differ between the two cannot be given.
 
 from __future__ import annotations
 
-from collections.abc import Mapping, Sequence
+from collections.abc import Mapping
 from dataclasses import dataclass, field
 
 import numpy as np
@@ -14,9 +14,9 @@ import numpy as np
 from compare import budget, motional
 from compare.bench import Bench
 from compare.circuit import Array
-from compare.columns import HIGH, LOW, MID, Columns, Flags, spans
+from compare.columns import HIGH, LOW, MID, Columns, Flags
 from compare.corners import Reckoned
-from compare.offer import Offer
+from compare.lot import Coded, Lot, spans, together
 from compare.stated import Taken
 
 
@@ -46,18 +46,25 @@ def make_term(columns: Columns, bench: Bench, *, loosest: bool = False) -> Term:
     trim = bench.requirement.trim_step_ppm
     if trim is not None:
         return Term.plain(np.tile(np.array([[-trim], [0.0], [trim]]), len(columns)), {})
-    span = spans([_at_option(o, "frequency_tolerance_ppm", o.tolerance, loosest) for o in columns.offers])
+    span = spans(_at_option(columns.offers, "tolerance", loosest))
     return Term.plain(span, {"frequency_tolerance_ppm": np.isnan(span[MID])})
 
 
-def _at_option(offer: Offer, name: str, taken: Taken, loosest: bool) -> Taken:
-    return offer.loosest.get(name, taken) if loosest else taken
+def _at_option(lot: Lot, name: str, loosest: bool) -> Coded[Taken]:
+    taken: Coded[Taken] = lot.column(name)
+    if not loosest:
+        return taken
+    return together(lambda own, loose: own if loose is None else loose, taken, lot.column(f"loosest_{name}"))
 
 
-def reckoned_range_c(offer: Offer, bench: Bench) -> tuple[float, float]:
-    """The temperatures reckoned over: the product's so far as the part's own range goes; NaN where none is known."""
+def reckoned_ranges_c(lot: Lot, bench: Bench) -> Array:
+    """(2, n) the temperatures reckoned over: the product's so far as the part's own range goes; NaN where not known."""
+    return lot.column("operating_range").array(lambda taken: _reckoned_range_c(taken, bench)).reshape(2, -1)
+
+
+def _reckoned_range_c(operating: Taken, bench: Bench) -> tuple[float, float]:
     product = bench.requirement.temperature_c
-    own = (offer.operating_range.span.low, offer.operating_range.span.high) if offer.operating_range.stated else None
+    own = (operating.span.low, operating.span.high) if operating.stated else None
     if product is None:
         return own or (np.nan, np.nan)
     if own is None:
@@ -68,8 +75,8 @@ def reckoned_range_c(offer: Offer, bench: Bench) -> tuple[float, float]:
 
 def temperature_term(columns: Columns, bench: Bench, *, loosest: bool = False) -> Term:
     """A tuning fork's parabola over the range; otherwise the stability as stated."""
-    stability = spans([_at_option(o, "frequency_stability_ppm", o.stability, loosest) for o in columns.offers])
-    fork = np.array([o.fork for o in columns.offers], dtype=bool)
+    stability = spans(_at_option(columns.offers, "stability", loosest))
+    fork = columns.offers.column("fork").array(bool, bool)
     parabola = _parabola_term(columns.offers, bench)
 
     def merged(of_fork: Array, of_cut: Array) -> Array:
@@ -88,20 +95,20 @@ def temperature_term(columns: Columns, bench: Bench, *, loosest: bool = False) -
     )
 
 
-def fork_spans(offers: Sequence[Offer]) -> tuple[Array, Array]:
+def fork_spans(lot: Lot) -> tuple[Array, Array]:
     """(3, n) parabolic coefficient, negative, and turnover temperature; estimated where the sheet is silent."""
-    turnover, _ = _stated_or_estimated(spans([o.turnover for o in offers]), motional.estimate_turnover_temperature_c())
+    turnover, _ = _stated_or_estimated(spans(lot.column("turnover")), motional.estimate_turnover_temperature_c())
     curve, _ = _stated_or_estimated(
-        -np.abs(spans([o.parabolic for o in offers])), motional.estimate_parabolic_coefficient_ppm_per_c2()
+        -np.abs(spans(lot.column("parabolic"))), motional.estimate_parabolic_coefficient_ppm_per_c2()
     )
     return np.sort(curve, axis=0), turnover
 
 
-def _parabola_term(offers: Sequence[Offer], bench: Bench) -> Term:
-    low_c, high_c = np.array([reckoned_range_c(o, bench) for o in offers], dtype=float).reshape(-1, 2).T
-    curve, turnover = fork_spans(offers)
-    no_curve = np.isnan(spans([o.parabolic for o in offers])[MID])
-    no_turnover = np.isnan(spans([o.turnover for o in offers])[MID])
+def _parabola_term(lot: Lot, bench: Bench) -> Term:
+    low_c, high_c = reckoned_ranges_c(lot, bench)
+    curve, turnover = fork_spans(lot)
+    no_curve = np.isnan(spans(lot.column("parabolic"))[MID])
+    no_turnover = np.isnan(spans(lot.column("turnover"))[MID])
     over = (low_c, high_c)
     low, high = budget.parabola_ppm_range(over, (curve[LOW], curve[HIGH]), (turnover[LOW], turnover[HIGH]))
     _, mid = budget.parabola_ppm_range(over, (curve[MID], curve[MID]), (turnover[MID], turnover[MID]))
@@ -128,9 +135,9 @@ def ageing_term(columns: Columns, bench: Bench) -> Term:
     """Ageing carried from the years stated to those asked; an estimate where none is stated, at its best nothing."""
     asked = bench.requirement
     stated, silent = _stated_or_estimated(
-        spans([o.ageing for o in columns.offers]), motional.estimate_first_year_ageing_ppm()
+        spans(columns.offers.column("ageing")), motional.estimate_first_year_ageing_ppm()
     )
-    years = np.array([o.ageing_years for o in columns.offers])
+    years = columns.offers.column("ageing_years").array(float)
     span = stated * budget.ageing_factor(asked.ageing_rule, years, asked.years)
     best = np.where(silent, 0.0, span)
     return Term(span[LOW], span[MID], span[HIGH], best[LOW], best[HIGH], {}, {"ageing_ppm": silent})

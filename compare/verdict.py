@@ -9,9 +9,11 @@ import numpy as np
 
 from compare.bench import Bench
 from compare.circuit import Array
-from compare.columns import MID, Columns, Flags, Whole, spans
+from compare.columns import MID, Columns, Flags
 from compare.corners import SHUNT_FLOOR, Reckoned, rated_gm
-from compare.offer import Offer, covers
+from compare.lot import Whole, spans, together
+from compare.offer import Band, covers
+from compare.stated import Taken
 from compare.terms import Total, total_ppm
 
 MEETS, CANNOT_TELL, FALLS_SHORT = 2, 1, 0
@@ -74,8 +76,13 @@ def silence(columns: Columns, bench: Bench) -> Silence:
         bench_keys=keys,
         esr=np.logical_or.reduce(np.isnan(columns.esr_ohm[:, MID]), axis=0),
         load=np.isnan(columns.load_pf),
-        drive=np.array([not o.drive.stated for o in columns.offers], dtype=bool),
-        esr_typical_only=np.array([any(at.esr.typical_only and at.esr.stated for at in o.at) for o in columns.offers]),
+        drive=columns.offers.column("drive").array(lambda taken: not taken.stated, bool),
+        esr_typical_only=np.logical_or.reduce(
+            [
+                columns.offers.at(s, "esr").array(lambda taken: taken.typical_only and taken.stated, bool)
+                for s in range(len(settings))
+            ]
+        ),
         motional_estimated=columns.motional_estimated,
         shunt_missing=columns.shunt_missing,
         shunt_loose=columns.shunt_loose,
@@ -223,7 +230,7 @@ def _total(columns: Columns, bench: Bench, total: Total, known: Silence) -> Judg
 
 
 def _drive(columns: Columns, bench: Bench, reckoned: Reckoned, known: Silence) -> Judged:
-    rated = spans([o.drive for o in columns.offers])[MID][:, None, None]
+    rated = spans(columns.offers.column("drive"))[MID][:, None, None]
     over = reckoned.over["drive_level_uw"]
     slack = times_over(rated, over.high[:, :SHUNT_FLOOR] * bench.requirement.drive_headroom)
     slacks = decide(slack, known.shunt_missing, np.zeros_like(known.shunt_missing))
@@ -245,21 +252,26 @@ def _startup(columns: Columns, bench: Bench, reckoned: Reckoned, known: Silence)
 
 def _range(columns: Columns, bench: Bench) -> Judged:
     """The part's range, and that of its stability, must hold the product's."""
-    verdict = np.array([_range_verdict(o, bench) for o in columns.offers], dtype=int)
+    product = bench.requirement.temperature_c
+    assert product is not None  # noqa: S101
+    lot = columns.offers
+    verdict = together(
+        lambda band, operating: _range_verdict(band, operating, product),
+        lot.column("stability_band"),
+        lot.column("operating_range"),
+    ).array(int, int)
     none = np.full(len(columns), np.nan)
     missing = {"operating_temperature_c": verdict == CANNOT_TELL}
     missing = {name: flags for name, flags in missing.items() if flags.any()}
     return Judged("operating_temperature_c", np.ones(len(columns), dtype=bool), verdict, none, none.copy(), missing)
 
 
-def _range_verdict(offer: Offer, bench: Bench) -> int:
-    product = bench.requirement.temperature_c
-    assert product is not None  # noqa: S101
-    if offer.stability_band is not None and not covers(offer.stability_band, product):
+def _range_verdict(band: Band | None, operating: Taken, product: Band) -> int:
+    if band is not None and not covers(band, product):
         return FALLS_SHORT
-    if not offer.operating_range.stated:
+    if not operating.stated:
         return CANNOT_TELL
-    span = offer.operating_range.span
+    span = operating.span
     return MEETS if covers((span.low, span.high), product) else FALLS_SHORT
 
 

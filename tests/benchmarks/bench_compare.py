@@ -58,7 +58,7 @@ from compare.bench import read_bench
 from compare.draws import draw
 from compare.reckoning import choose_loads
 from compare.columns import make_columns
-from compare.offer import find_offers
+from compare.find import find_offers
 from extract import read_sheet
 sheet = Path(sys.argv[1])
 bench = read_bench(Path(sys.argv[2]).read_text(encoding="utf-8"), "bench.toml")

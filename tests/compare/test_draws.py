@@ -5,7 +5,7 @@ from scipy import stats
 
 from compare.columns import make_columns
 from compare.draws import draw, share_interval, unit_draws
-from compare.offer import find_offers
+from compare.find import find_offers
 
 STILL = {"capacitor_tolerance_percent": 0.0, "stray_tolerance_percent": 0.0}
 EXACT = usual(exactly("esr_ohm", 60.0), exactly("shunt_capacitance_pf", 1.5), exactly("motional_capacitance_ff", 4.5))

@@ -5,7 +5,8 @@ import math
 import pytest
 from made_sheets import bench, part, reading, sheet, usual
 
-from compare.offer import decimals_printed, find_offers, match_frequency, overtone_of
+from compare.find import find_offers
+from compare.offer import decimals_printed, match_frequency, overtone_of
 from compare.reckoning import choose_loads
 from extract import read_sheet
 from extract.model import Part, Reading, Where

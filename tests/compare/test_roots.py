@@ -3,7 +3,7 @@ import pytest
 from made_sheets import bench, exactly, reading, sheet, usual
 
 from compare.columns import make_columns
-from compare.offer import find_offers
+from compare.find import find_offers
 from compare.reckoning import reckon_sheets
 from compare.roots import (
     AMPLIFIER,

@@ -6,7 +6,7 @@ from made_sheets import bench, exactly, part, reading, sheet
 
 from compare.columns import MID, make_columns
 from compare.corners import analyse_nominal
-from compare.offer import find_offers
+from compare.find import find_offers
 from compare.substitution import substitute
 from compare.swap import make_swap
 
