@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+from bisect import bisect_left
 from collections.abc import Callable, Sequence
 from dataclasses import replace
 
@@ -53,10 +54,10 @@ def without_empty(pieces: Sequence[Piece]) -> tuple[list[Piece], int]:
     result = []
     for piece in filled:
         cell = piece.cell
-        covered_rows = [row for row in rows if cell.row <= row < cell.row + cell.row_span]
-        covered = [column for column in columns if cell.column <= column < cell.column + cell.column_span]
-        kept = GridCell(rows.index(cell.row), columns.index(cell.column), len(covered_rows), len(covered), cell.box)
-        result.append(replace(piece, cell=kept))
+        row, column = bisect_left(rows, cell.row), bisect_left(columns, cell.column)
+        row_end = bisect_left(rows, cell.row + cell.row_span)
+        column_end = bisect_left(columns, cell.column + cell.column_span)
+        result.append(Piece(GridCell(row, column, row_end - row, column_end - column, cell.box), piece.words))
     return result, len(columns)
 
 

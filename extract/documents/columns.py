@@ -15,7 +15,8 @@ NARROWEST_GUTTER = 0.4
 
 def span_of(segment: Sequence[Word]) -> Span:
     """Left and right end of words on a line."""
-    return (segment[0].x0, max(word.x1 for word in segment))
+    first = segment[0]
+    return (first.x0, first.x1 if len(segment) == 1 else max(word.x1 for word in segment))
 
 
 def columns_of(lines: Sequence[Sequence[Segment]]) -> list[Span]:

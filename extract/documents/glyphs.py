@@ -5,7 +5,9 @@ from __future__ import annotations
 import re
 from bisect import bisect_left, bisect_right
 from collections.abc import Iterable, Sequence
-from dataclasses import dataclass, replace
+from dataclasses import dataclass
+from functools import lru_cache
+from typing import NamedTuple
 
 from extract.documents import marks
 from extract.documents.symbols import translated
@@ -19,8 +21,7 @@ LONGEST_UNDERLINE = 14.0
 UNDERLINED = {"<": "≤", ">": "≥"}
 
 
-@dataclass(frozen=True, slots=True)
-class Glyph:
+class Glyph(NamedTuple):
     """One character as drawn, in points from the top left of the page as shown.
 
     `base` is the baseline's distance from the top or, for sideways text, from the edge that is the top when it is read.
@@ -49,6 +50,16 @@ class _Run:
     # Distance between the last two letters.
     spacing: float = 0.0
 
+    def extend(self, text: str, box: Box) -> None:
+        """Go on with a letter."""
+        x0, top, x1, bottom = box
+        self.spacing = x0 - self.x1
+        self.text += text
+        self.x0 = min(self.x0, x0)
+        self.x1 = max(self.x1, x1)
+        self.top = min(self.top, top)
+        self.bottom = max(self.bottom, bottom)
+
     def take(self, other: _Run, text: str) -> None:
         self.text = text
         self.x0, self.x1 = min(self.x0, other.x0), max(self.x1, other.x1)
@@ -61,7 +72,7 @@ def with_underlined_signs(glyphs: Sequence[Glyph], rulings: Sequence[Ruling]) ->
     if not short:
         return list(glyphs)
     return [
-        replace(glyph, text=UNDERLINED[glyph.text])
+        glyph._replace(text=UNDERLINED[glyph.text])
         if glyph.text in UNDERLINED and any(_is_under(ruling, glyph) for ruling in short)
         else glyph
         for glyph in glyphs
@@ -84,7 +95,7 @@ def words_of(glyphs: Sequence[Glyph], width: float, height: float, rulings: Sequ
     for angle in sorted({glyph.angle for glyph in glyphs}):
         chosen = [glyph for glyph in glyphs if glyph.angle == angle]
         if angle:
-            chosen = [replace(glyph, box=turned(glyph.box, angle, width, height)) for glyph in chosen]
+            chosen = [glyph._replace(box=turned(glyph.box, angle, width, height)) for glyph in chosen]
         runs = _runs_put_right(chosen, _Fences(()) if angle else fences)
         words += [_word(run, angle, width, height) for run in runs]
     return words
@@ -99,8 +110,16 @@ class _Fences:
         self._xs = [ruling.x0 for ruling in self._lines]
 
     def between(self, left: _Run, right: _Run) -> bool:
-        first, last = bisect_left(self._xs, left.x1 - 0.3), bisect_right(self._xs, right.x0 + 0.3)
+        return self.between_ends(left, right.x0)
+
+    def between_ends(self, left: _Run, start: float) -> bool:
+        """Whether a line stands between a run and what starts there."""
+        xs = self._xs
+        first = bisect_left(xs, left.x1 - 0.3)
+        if first == len(xs) or xs[first] > start + 0.3:
+            return False
         middle = (left.top + left.bottom) / 2
+        last = bisect_right(xs, start + 0.3)
         return any(line.top <= middle <= line.bottom for line in self._lines[first:last])
 
 
@@ -118,28 +137,40 @@ def _runs_put_right(glyphs: Sequence[Glyph], fences: _Fences) -> list[_Run]:
 
 def _struck_once(glyphs: Iterable[Glyph]) -> list[Glyph]:
     """Leave out glyphs that are printed again over themselves, to make type bold or to shade it."""
-    seen: dict[tuple[str, int, int], tuple[float, float]] = {}
+    # By row of two points, by character, by column of two points: the place.
+    rows: dict[int, dict[str, dict[int, tuple[float, float]]]] = {}
     kept: list[Glyph] = []
     for glyph in glyphs:
-        if glyph.text.isspace():
+        text = glyph.text
+        if text.isspace():
             kept.append(glyph)
             continue
-        near = max(0.12 * glyph.size, 0.3)
+        x, y, x1, _ = glyph.box
+        row, column = int(y // 2), int(x // 2)
         # Thin letters stand close together: "ll" must not become "l".
-        near = min(near, 0.45 * max(glyph.box[2] - glyph.box[0], 0.1))
-        x, y = glyph.box[0], glyph.box[1]
-        column, row = int(x // 2), int(y // 2)
-        places = [
-            place
-            for dx in (-1, 0, 1)
-            for dy in (-1, 0, 1)
-            if (place := seen.get((glyph.text, column + dx, row + dy))) is not None
-        ]
-        if any(abs(x - px) < near and abs(y - py) < near for px, py in places):
+        near = min(max(0.12 * glyph.size, 0.3), 0.45 * max(x1 - x, 0.1))
+        if any(
+            (alike := rows[step].get(text)) is not None and _is_near(alike, column, x, y, near)
+            for step in (row, row - 1, row + 1)
+            if step in rows
+        ):
             continue
-        seen[glyph.text, column, row] = (x, y)
+        rows.setdefault(row, {}).setdefault(text, {})[column] = (x, y)
         kept.append(glyph)
     return kept
+
+
+def _is_near(places: dict[int, tuple[float, float]], column: int, x: float, y: float, near: float) -> bool:
+    for step in (column, column - 1, column + 1):
+        place = places.get(step)
+        if place is not None and abs(x - place[0]) < near and abs(y - place[1]) < near:
+            return True
+    return False
+
+
+@lru_cache(maxsize=1024)
+def _is_bold(font: str) -> bool:
+    return bool(re.search(r"bold|black|heavy|demi", font, re.I))
 
 
 def _runs(glyphs: Sequence[Glyph], fences: _Fences) -> list[_Run]:
@@ -147,39 +178,46 @@ def _runs(glyphs: Sequence[Glyph], fences: _Fences) -> list[_Run]:
     spaces = sum(glyph.text.isspace() for glyph in glyphs)
     spaced = spaces > 0.03 * len(glyphs)
     runs: list[_Run] = []
+    last: _Run | None = None
     broken = True
     for glyph in glyphs:
         text = translated(glyph.text, glyph.font)
         if not text.strip():
             broken = True
             continue
-        bold = bool(re.search(r"bold|black|heavy|demi", glyph.font, re.I))
-        run = _Run(text, *glyph.box, size=glyph.size, base=glyph.base, bold=bold)
-        if runs and not broken and _continues(runs[-1], run, spaced) and not fences.between(runs[-1], run):
-            runs[-1].spacing = run.x0 - runs[-1].x1
-            runs[-1].take(run, runs[-1].text + text)
+        box = glyph.box
+        if (
+            last is not None
+            and not broken
+            and _continues(last, glyph, text, spaced)
+            and not fences.between_ends(last, box[0])
+        ):
+            last.extend(text, box)
         else:
-            if runs and abs(runs[-1].base - run.base) < 0.1 * run.size:
-                run.spacing = runs[-1].spacing
+            run = _Run(text, *box, glyph.size, glyph.base, _is_bold(glyph.font))
+            if last is not None and abs(last.base - run.base) < 0.1 * run.size:
+                run.spacing = last.spacing
             runs.append(run)
+            last = run
         broken = False
     return runs
 
 
-def _continues(run: _Run, glyph: _Run, spaced: bool) -> bool:
+def _continues(run: _Run, glyph: Glyph, text: str, spaced: bool) -> bool:
     size = run.size
     if abs(glyph.base - run.base) > 0.1 * size or abs(glyph.size - size) > 0.12 * size:
         return False
-    gap = glyph.x0 - run.x1
+    gap = glyph.box[0] - run.x1
     if gap < -0.6 * size:
         return False
-    if run.spacing > 0.06 * size and gap < 1.25 * run.spacing:
+    # Less than a space in any case, or as loose as the letters before.
+    if gap < 0.2 * size or (run.spacing > 0.06 * size and gap < 1.25 * run.spacing):
         return True
-    last, first = run.text[-1], glyph.text[0]
+    last, first = run.text[-1], text[0]
     if spaced and last.isalpha() and first.isalpha() and not (is_cjk(last) or is_cjk(first)):
         # Where the page sets its spaces as characters, a gap without one inside letters is loose type, no space.
         return gap < (0.5 if first.islower() == last.islower() or first.islower() else 0.2) * size
-    return gap < 0.2 * size
+    return False
 
 
 def _same_line_neighbours(runs: Sequence[_Run], fences: _Fences) -> list[_Run]:

@@ -200,8 +200,11 @@ def _plain_line(text: str, number: int) -> Line:
 
 def _placer(number: int, scale: float = 1.0) -> Callable[[Box], Where]:
     def place(box: Box) -> Where:
-        x0, top, x1, bottom = (round(value * scale, 1) for value in box)
-        return Where(page=number, box=(x0, top, x1, bottom))
+        x0, top, x1, bottom = box
+        return Where(
+            page=number,
+            box=(round(x0 * scale, 1), round(top * scale, 1), round(x1 * scale, 1), round(bottom * scale, 1)),
+        )
 
     return place
 

@@ -7,7 +7,7 @@ only plain pages are read here: upright type whose characters are known and whos
 from __future__ import annotations
 
 import ctypes
-from dataclasses import dataclass, field, replace
+from dataclasses import dataclass, field
 from functools import cache
 from typing import Any, NamedTuple
 
@@ -288,7 +288,7 @@ class _Reader:
         y_place = x_place + ctypes.sizeof(ctypes.c_double)
         object_of, box_of, origin_of, objects = calls.text_object, calls.loose_box, calls.origin, self._objects
         found: list[tuple[int, Glyph]] = []
-        last: tuple[int, float, float] = (0, 0.0, 0.0)
+        last, last_x, last_y = 0, 0.0, 0.0
         for index, text in enumerate(self._text(text_page)):
             handle = object_of(text_page, index)
             if not handle:
@@ -301,13 +301,13 @@ class _Reader:
             if text not in font.sound:
                 text = self._known(text_page, index, text, font)  # noqa: PLW2901
             origin_of(text_page, index, x_place, y_place)
-            x, y = origin
-            if last == (handle, x, y):
+            x, y = origin[0], origin[1]
+            if x == last_x and y == last_y and handle == last:
                 # Characters of one glyph: a ligature.
                 before = found[-1][1]
-                found[-1] = (item.place, replace(before, text=before.text + text))
+                found[-1] = (item.place, before._replace(text=before.text + text))
                 continue
-            last = (handle, x, y)
+            last, last_x, last_y = handle, x, y
             item.seen = True
             box_of(text_page, index, rect_place)
             base = up - y

@@ -17,4 +17,7 @@ class Piece:
 
     @property
     def lines(self) -> list[list[Word]]:
-        return in_lines([word for word in self.words if not word.angle])
+        words = self.words
+        if len(words) < 2:
+            return [[words[0]]] if words and not words[0].angle else []
+        return in_lines([word for word in words if not word.angle])

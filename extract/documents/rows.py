@@ -9,7 +9,7 @@ from dataclasses import dataclass, replace
 
 from extract.documents.bands import bands_of, bottom_of, goes_on, top_of
 from extract.documents.piece import Piece
-from extract.documents.words import Word, in_lines, joined
+from extract.documents.words import Word, in_lines, joined, on_one_line
 
 # A table with more rows between its lines has a line for each.
 FEW_ROWS = 3
@@ -22,6 +22,8 @@ def rows_parted(pieces: Sequence[Piece]) -> list[Piece]:
     count = max(piece.cell.row + piece.cell.row_span for piece in pieces)
     for row in range(count - 1, -1, -1):
         own = [piece for piece in result if piece.cell.row == row and piece.cell.row_span == 1]
+        if on_one_line([word for piece in own for word in piece.words if not word.angle]):
+            continue
         levels = _levels(own)
         borders = [] if levels or _has_one_label(own) else _row_borders(own, strict=count > FEW_ROWS)
         levels = levels if levels or borders else _fresh_levels(own)

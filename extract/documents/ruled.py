@@ -58,6 +58,8 @@ class _Line:
 
     def covers(self, start: float, end: float) -> bool:
         """Tell whether most of the way from start to end is drawn."""
+        if any(a <= start and end <= b for a, b in self.stretches):
+            return True
         drawn = sum(max(0.0, min(end, b) - max(start, a)) for a, b in self.stretches)
         return drawn >= 0.8 * (end - start)
 

@@ -8,6 +8,7 @@ from __future__ import annotations
 
 import re
 import unicodedata
+from functools import lru_cache
 
 # fmt: off
 _GREEK = dict(zip(
@@ -34,6 +35,7 @@ def is_symbol_font(name: str) -> bool:
     return "symbol" in name.lower() and not _UNICODE_FONT.search(name)
 
 
+@lru_cache(maxsize=4096)
 def translated(text: str, font: str) -> str:
     """Give the character that the page shows for a private-use or Symbol-font one; others unchanged."""
     if len(text) != 1:

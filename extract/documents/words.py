@@ -16,6 +16,7 @@ from __future__ import annotations
 
 from collections.abc import Callable, Iterable, Sequence
 from dataclasses import dataclass, replace
+from operator import attrgetter
 from typing import NamedTuple
 
 Box = tuple[float, float, float, float]
@@ -118,17 +119,32 @@ def in_lines(words: Sequence[Word]) -> list[list[Word]]:
 
     A line is as tall as its words: two words share it when their baselines differ by less than 0.4 of the smaller size.
     """
+    if len(words) < 2:
+        return [list(words)] if words else []
     lines: list[list[Word]] = []
-    anchors: list[tuple[float, float]] = []
-    for word in sorted(words, key=lambda word: word.line_y):
-        if anchors and abs(word.line_y - anchors[-1][0]) < 0.4 * min(word.size, anchors[-1][1]):
+    anchor, size = 0.0, 0.0
+    for word in sorted(words, key=_line_y):
+        level = word.line_y
+        if lines and abs(level - anchor) < 0.4 * min(word.size, size):
             lines[-1].append(word)
         else:
             lines.append([word])
-            anchors.append((word.line_y, word.size))
+            anchor, size = level, word.size
     for line in lines:
-        line.sort(key=lambda word: word.x0)
+        if len(line) > 1:
+            line.sort(key=_left)
     return lines
+
+
+_line_y, _left = attrgetter("line_y"), attrgetter("x0")
+
+
+def on_one_line(words: Sequence[Word]) -> bool:
+    """Tell whether the words stand so level that any choice of them makes one line at most."""
+    if len(words) < 2:
+        return True
+    levels = [word.line_y for word in words]
+    return max(levels) - min(levels) < 0.4 * min(word.size for word in words)
 
 
 def is_cjk(character: str) -> bool:
@@ -153,6 +169,8 @@ def joined(line: Sequence[Word]) -> str:
 
 def text_of(words: Sequence[Word]) -> str:
     """Text of words that stand together (a cell), a line feed between lines; sideways ones along their lines."""
+    if len(words) == 1:
+        return words[0].text
     parts = []
     for angle in sorted({word.angle for word in words}):
         chosen = [word for word in words if word.angle == angle]
@@ -169,6 +187,8 @@ def confidence_of(words: Iterable[Word]) -> float:
 
 def split_at_gaps(line: Sequence[Word], wide: Callable[[Word, Word], bool] | None = None) -> list[list[Word]]:
     """Words of one line, from left to right, parted where the gap is wide."""
+    if len(line) == 1:
+        return [list(line)]
     groups: list[list[Word]] = []
     for word in line:
         if groups and not (wide or is_wide_gap)(groups[-1][-1], word):
