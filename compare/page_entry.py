@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 from collections.abc import Callable
+from functools import partial
 from typing import Any
 
 import streamlit as st
@@ -19,12 +20,25 @@ from extract.plausible import FORK, limits
 LABELS: dict[Bound, str] = {"min": "Least", "typ": "Typical or nominal", "max": "Greatest", "options": "A choice"}
 
 
-def entry_form(part: PartLines, line: Line | None, *, cancel: Callable[[], None], enter: Callable[..., None]) -> None:
-    """The form of one reading; of a new one it asks first what it is."""
+def entry_form(
+    part: PartLines,
+    line: Line | None,
+    *,
+    cancel: Callable[[], None],
+    enter: Callable[..., None],
+    enter_fact: Callable[..., None],
+) -> None:
+    """The form of one reading; of a new one it asks first what it is, a value or a word."""
     start = None if line is None else entered.draft_of(line.shown, part.part)
     if start is None:
         session.section("Add a reading")
-        name = st.selectbox("What is stated", list(fields()), format_func=shown.title, key="entry_field")
+        name = st.selectbox(
+            "What is stated", [*fields(), *sheet_lines.FACTS], format_func=stated_name, key="entry_field"
+        )
+        if name in sheet_lines.FACTS:
+            now = getattr(part.part, name)
+            fact_form(name, now, cancel=cancel, enter=partial(enter_fact, part, name))
+            return
         start = Draft(name, fork=entered.fork_of(part.part))
     prefix = f"entry_{part.sheet}_{part.at}_{'new' if line is None else line.number}_{start.field}"
     draft = bounds(start, prefix)
@@ -42,6 +56,10 @@ def entry_form(part: PartLines, line: Line | None, *, cancel: Callable[[], None]
             clear(prefix)
             st.rerun()
         st.button("Leave it", key="entry_leave", on_click=left, args=(cancel, prefix))
+
+
+def stated_name(name: str) -> str:
+    return sheet_lines.FACTS[name] if name in sheet_lines.FACTS else shown.title(name)
 
 
 def bounds(start: Draft, prefix: str) -> Draft:

@@ -4,6 +4,7 @@ from __future__ import annotations
 
 from collections.abc import Sequence
 from dataclasses import replace
+from functools import partial
 from typing import Any
 
 import streamlit as st
@@ -24,12 +25,18 @@ ADDING = "adding"
 
 
 def at_look() -> At:
-    """The sheet, part and reading that are looked at; the first sheet where none was chosen or it is closed."""
-    every = session.work().sheets
-    at: At | None = st.session_state.get("at")
-    if at is not None and session.work().of(at[0]) is not None:
+    """The sheet, part and reading that are looked at; what waits first where none was chosen or it is closed."""
+    work, state = session.work(), st.session_state
+    at: At | None = state.get("at")
+    if at is not None and work.of(at[0]) is not None:
         return at
-    return (every[0].key if every else "", 0, None)
+    if not work.sheets:
+        return "", 0, None
+    if state.get("first_for") != state.turn:
+        waiting = looks.queue(work)
+        state.update(first=waiting[0].place if waiting else (work.sheets[0].key, 0, None), first_for=state.turn)
+    first: At = state.first
+    return first
 
 
 def go_to(sheet: str, part: int, reading: int | str | None, *, moved: bool = True) -> None:
@@ -37,8 +44,7 @@ def go_to(sheet: str, part: int, reading: int | str | None, *, moved: bool = Tru
     state = st.session_state
     if moved:
         state.moved += 1
-    if sheet != at_look()[0]:
-        state.whole_page = True
+        state.whole_page = sheet != at_look()[0] or state.get("whole_page", False)
     state.update(at=(sheet, part, reading), editing=None)
 
 
@@ -47,7 +53,7 @@ def reading_area(one: OpenSheet, part: PartLines, queue: Sequence[Look]) -> None
     _, _, number = at_look()
     number = part.rows[part.row_of(number)] if part.rows else None
     if st.session_state.get("editing") == ADDING:
-        entry_form(part, None, cancel=leave, enter=enter)
+        entry_form(part, None, cancel=leave, enter=enter, enter_fact=enter_fact)
         return
     if isinstance(number, str):
         fact_area(part, number)
@@ -63,7 +69,7 @@ def reading_area(one: OpenSheet, part: PartLines, queue: Sequence[Look]) -> None
     else:
         settled(part, line, queue)
     if st.session_state.get("editing") is not None:
-        entry_form(part, line, cancel=leave, enter=enter)
+        entry_form(part, line, cancel=leave, enter=enter, enter_fact=enter_fact)
     evidence_of(one, line)
 
 
@@ -115,7 +121,7 @@ def fact_area(part: PartLines, fact: str) -> None:
         if changed is not None:
             answer("Put back the sheet’s value", "put_back", None, put_back, part, fact)
     if st.session_state.get("editing") is not None:
-        fact_form(fact, now, cancel=leave, enter=lambda value, why: enter_fact(part, fact, value, why))
+        fact_form(fact, now, cancel=leave, enter=partial(enter_fact, part, fact))
 
 
 def answer(name: str, key: str, shortcut: str | None, press: Any, *args: Any, primary: bool = False) -> None:

@@ -85,7 +85,7 @@ def sheet_list() -> OpenSheet | None:
         on_select="rerun",
         selection_mode="single-row-required",
         selection_default=session.first_row(start),
-        key=f"open_{len(every)}_{st.session_state.turn}",
+        key=f"open_{len(every)}_{st.session_state.turn}_{st.session_state.moved}",
         alt="Sheets that are open, with their outcome",
         column_config={
             "Sheet": st.column_config.TextColumn(width=150),
@@ -94,7 +94,7 @@ def sheet_list() -> OpenSheet | None:
     )
     chosen = every[session.selected_row(picked, len(every))]
     if chosen.key != sheet:
-        go_to(chosen.key, 0, None)
+        go_to(chosen.key, 0, None, moved=False)
     for said in shown.unread([one.sheet for one in every if one is not chosen]):
         st.markdown(f":small[{pieces.plain(said)}]")
     st.button("Close this sheet", key="close_sheet", on_click=close, args=(chosen,))
@@ -186,7 +186,7 @@ def columns() -> dict[str, Any]:
     return {
         "Reading": text(width=152),
         "Min": text(width=52, alignment="right"),
-        "Typ": text(width=76, alignment="right"),
+        "Typ": text(width=92, alignment="right"),
         "Max": text(width=56, alignment="right"),
         "Unit": text(width=52),
         "How we have it": text(width=112),

@@ -14,12 +14,10 @@ from compare.work import Circuit, Work
 
 
 def head() -> None:
-    """The line of terms at the left; at the right Undo, when it was saved, and the work."""
-    terms, undo, kept = st.columns([7.2, 0.75, 2.05], gap="small", vertical_alignment="center")
-    with terms:
-        bench = session.desk().bench
-        st.html(pieces.terms_html(circuit_text.terms(bench) if bench is not None else ["No circuit yet"]))
-    with undo:
+    """Undo, when it was saved, and the work, beside the names of the views; below them the line of terms."""
+    with st.container(
+        horizontal=True, horizontal_alignment="right", vertical_alignment="center", gap="small", key="work_bar"
+    ):
         said = session.history().said
         st.button(
             "Undo",
@@ -30,11 +28,12 @@ def head() -> None:
             disabled=not said,
             help=said or None,
         )
-    with kept:
-        menu = st.popover(pieces.plain(title()), key="work_menu", on_change="rerun", width="stretch")
+        menu = st.popover(pieces.plain(title()), key="work_menu", on_change="rerun")
         if menu.open:
             with menu:
                 work_menu()
+    bench = session.desk().bench
+    st.html(pieces.terms_html(circuit_text.terms(bench) if bench is not None else ["No circuit yet"]))
     if fault := st.session_state.get("save_fault"):
         st.html(pieces.fault_html(fault))
 
@@ -74,7 +73,11 @@ def circuits(work: Work) -> None:
         idents: list[str] = [one.ident for one in work.circuits]
         names = {one.ident: circuit_name(one, at) for at, one in enumerate(work.circuits, start=1)}
         at = st.selectbox(
-            "Circuit in view", idents, idents.index(work.circuit.ident), format_func=lambda ident: names[ident], key=f"circuit_{work.at}"
+            "Circuit in view",
+            idents,
+            idents.index(work.circuit.ident),
+            format_func=lambda ident: names[ident],
+            key=f"circuit_{work.at}",
         )
         if at != work.circuit.ident:
             session.forget_fields()

@@ -22,8 +22,8 @@ FACTS = {
     "maker": "Maker",
     "part_number": "Part number",
 }
-ALWAYS = ("mode", "cut", "package")
-"""Rows that are there though the sheet says nothing: a verdict hangs on them."""
+ALWAYS = ("mode", "cut")
+"""Rows that are always there: a verdict hangs on them. The others are rows once a person has set them."""
 COLUMNS = ("Reading", "Min", "Typ", "Max", "Unit", "How we have it", "Sheet says", "Holds for")
 # What a verdict rests on most; a part that does not state one of them says so.
 WANTED = (
@@ -58,7 +58,7 @@ class PartLines:
     @property
     def rows(self) -> list[int | str]:
         """What stands in each row: a reading by its number, below them the part's words by name."""
-        facts = [name for name in FACTS if name in ALWAYS or name in self.changed_facts or getattr(self.read, name)]
+        facts = [name for name in FACTS if name in ALWAYS or name in self.changed_facts]
         return [*(line.number for line in self.lines), *facts]
 
     def line(self, number: int | str | None) -> Line | None:
@@ -95,7 +95,7 @@ def _row(line: Line) -> tuple[str, ...]:
         bound_text(reading, reading.min),
         options_text(reading) if reading.options else bound_text(reading, reading.typ),
         bound_text(reading, reading.max),
-        unit_of(reading.field),
+        unit_of(reading),
         how_line(line),
         sheet_says(line),
         when_text(reading.when),

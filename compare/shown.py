@@ -8,7 +8,7 @@ from dataclasses import dataclass
 import pandas as pd
 
 from compare.circuit_text import temperatures
-from compare.figures import counted, exact, spread
+from compare.figures import counted, exact, scale, spread
 from extract.fields import field_of
 from extract.model import Note, Part, Reading, SpecSheet, When, Where
 
@@ -143,21 +143,32 @@ def title(field: str) -> str:
     return named[0].upper() + named[1:]
 
 
-def unit_of(field: str) -> str:
-    unit = field_of(field).unit
+def unit_of(reading: Reading) -> str:
+    """The unit that the trade says this reading in: kHz for a watch crystal, kΩ for its ESR."""
+    unit = _in_trade(reading)[1]
     return "" if unit == "1" else unit
 
 
+def _in_trade(reading: Reading) -> tuple[float, str]:
+    return scale(field_of(reading.field).unit, reading.min, reading.typ, reading.max, *reading.options)
+
+
 def bound_text(reading: Reading, value: float | None) -> str:
+    """One bound in the reading's unit, with a plus where both signs are possible."""
     if value is None:
         return ""
     plus = "+" if value > 0 and field_of(reading.field).sign in ("symmetric", "either") else ""
-    return plus + exact(value)
+    return plus + _figure(reading, value)
+
+
+def _figure(reading: Reading, value: float) -> str:
+    # Twelve digits are more than any sheet prints, and 0.032768 MHz is 32.768 kHz.
+    return exact(float(f"{value * _in_trade(reading)[0]:.12g}"))
 
 
 def options_text(reading: Reading) -> str:
     sign = "±" if field_of(reading.field).sign == "symmetric" else ""
-    return ", ".join(sign + exact(value) for value in reading.options)
+    return ", ".join(sign + _figure(reading, value) for value in reading.options)
 
 
 def how(reading: Reading) -> str:
@@ -199,12 +210,12 @@ def when_text(when: When) -> str:
 
 def value_text(reading: Reading) -> str:
     """The whole reading in words: `28 typ, at most 50 Ω`."""
-    unit = unit_of(reading.field)
+    unit, factor = unit_of(reading), _in_trade(reading)[0]
     if reading.options:
         return f"{options_text(reading)} {unit}, to choose from".strip()
     if reading.min is not None and reading.max is not None:
-        around = "" if reading.typ is None else f", {exact(reading.typ)} typical"
-        return spread(reading.min, reading.max, unit, digits=9) + around
+        around = "" if reading.typ is None else f", {_figure(reading, reading.typ)} typical"
+        return spread(reading.min * factor, reading.max * factor, unit, digits=9) + around
     bounds = ((reading.typ, "{}"), (reading.min, "at least {}"), (reading.max, "at most {}"))
     said = [words.format(bound_text(reading, value)) for value, words in bounds if value is not None]
     return f"{', '.join(said)} {unit}".strip()
