@@ -5,19 +5,20 @@ from __future__ import annotations
 import re
 from collections.abc import Iterable, Iterator, Sequence
 from dataclasses import dataclass, replace
-from functools import cache, lru_cache
+from functools import lru_cache
 from typing import Literal
 
 from extract import amount, trace, wording
 from extract.conditions import condition_of, kept, merged
 from extract.entries import Entry, Key, Piece, Placed, Source, Value
 from extract.fields import field_of
-from extract.fold import fold
+from extract.fold import fold, key
 from extract.meaning import meaning
 from extract.model import FieldName, Pair, When, Where
 from extract.units import unit_at
 from extract.vocabulary import vocabulary
 from extract.wording import Label
+from extract.wraps import unwrapped
 
 _PLUS_MINUS = re.compile(r"±")
 _BRACKET = re.compile(r"[(（][^()（）]*[)）]")
@@ -64,27 +65,31 @@ class Candidate:
         return self.min, self.typ, self.max, self.options
 
 
-@cache
-def _runs_on() -> re.Pattern[str]:
-    """A line break inside a range ("12 MHz", "to 54 MHz" below it)."""
-    words = "|".join(sorted(map(re.escape, vocabulary().phrases.get("to", ())), key=len, reverse=True))
-    return re.compile(
-        rf"(?i)\s*\n\s*(?=(?:(?:{words})\b|[~～…])\s*[-+−]?\d)|(?:(?<=[~～…])|(?<=\d to)|(?<=C to))\s*\n\s*"
-    )
-
-
 @lru_cache(maxsize=16384)
 def read(
     text: str, field: str, unit: str | None = None, bound: str | None = None, *, plus_minus: bool = False
 ) -> tuple[amount.Value, ...]:
     """`amount.read_values`, each distinct text read once."""
-    text = _runs_on().sub(" ", text) if "\n" in text else text
+    text = unwrapped(text) if "\n" in text else text
     text = _EAST_COMMA.sub(r"\g<0> ", _FOOTNOTE_MARK.sub("", text))
+    if field == "load_capacitance_pf":
+        text = _without_offer(text, unit)
     found = amount.read_values(text, field, unit=unit, bound=bound, plus_minus=plus_minus)
     if not found and _BRACKET.search(text):
         # What a bracket withdraws ("series resonance on request") is not the value before it.
         found = amount.read_values(_BRACKET.sub(" ", text), field, unit=unit, bound=bound, plus_minus=plus_minus)
     return tuple(value for value in found if not value.empty or value.series)
+
+
+def _without_offer(text: str, unit: str | None) -> str:
+    """A load without the bracket that says what else may be had ("12 pF (8 pF to 32 pF)")."""
+    inside, outside = "".join(_BRACKET.findall(text)), _BRACKET.sub(" ", text)
+    if not inside or not re.search(r"\d", outside) or not re.search(r"\d.*\d", inside):
+        return text
+    stated = amount.read_values(outside, "load_capacitance_pf", unit=unit)
+    offered = amount.read_values(inside.strip("()（）"), "load_capacitance_pf", unit=unit or "pF")
+    one = len(stated) == 1 and stated[0].typ is not None and stated[0].min is None and stated[0].max is None
+    return outside if one and any(None not in (each.min, each.max) for each in offered) else text
 
 
 def entry_candidates(entry: Entry) -> list[Candidate]:
@@ -95,6 +100,7 @@ def entry_candidates(entry: Entry) -> list[Candidate]:
             _pass_over(entry)
         return []
     label = _by_unit(label, [entry.unit, label.unit or "", *(value.piece.text for value in entry.values)])
+    label = _bounded_by_remark(label, entry)
     when = _entry_when(entry, label)
     found: list[Candidate] = []
     for subject in dict.fromkeys(value.subject for value in entry.values):
@@ -111,6 +117,14 @@ def entry_candidates(entry: Entry) -> list[Candidate]:
             label.field,
         )
     return [each for each in found if not _lone_temperature(each)]
+
+
+def _bounded_by_remark(label: Label, entry: Entry) -> Label:
+    """The label with the bound that stands alone in a remarks cell ("typ.")."""
+    if label.bound is not None or any(value.bound for value in entry.values):
+        return label
+    said = [bound for text in entry.conditions if (bound := vocabulary().bounds.get(key(text))) is not None]
+    return replace(label, bound=said[0]) if len(said) == 1 else label
 
 
 def _around(entry: Entry) -> list[tuple[str, Iterable[str]]]:
@@ -147,18 +161,16 @@ def _by_unit(label: Label, texts: Iterable[str]) -> Label:
     return label if field == label.field else replace(label, field=field, plus_minus=False)
 
 
-# No quartz turns there: the peak of a soldering profile, called "peak temperature" as well.
-SOLDERING_C = 150.0
+# No quartz turns there: the peak of a soldering profile, called "peak temperature" as well. In a table, where a slip
+# may have lost a decimal mark, only what is hotter than that.
+SOLDERING_C, SOLDERING_IN_TABLE_C = 150.0, 200.0
 
 
 def _lone_temperature(candidate: Candidate) -> bool:
     """One temperature with no bound is no range: it is where something was measured."""
     numbers = [each for each in (candidate.min, candidate.typ, candidate.max) if each is not None]
-    if (
-        candidate.field == "turnover_temperature_c"
-        and candidate.source != "table"
-        and min(numbers, default=0) >= SOLDERING_C
-    ):
+    least = SOLDERING_IN_TABLE_C if candidate.source == "table" else SOLDERING_C
+    if candidate.field == "turnover_temperature_c" and min(numbers, default=0) >= least:
         trace.dropped(candidate, "a peak as hot as this is that of soldering")
         return True
     ranged = candidate.field in ("operating_temperature_c", "storage_temperature_c")

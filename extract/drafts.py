@@ -59,6 +59,9 @@ class Draft:
             text = words[0]
         if what == "maker":
             text = re.split(r"\s+[·|•]\s+", text)[0]
+            text = next(
+                (before for before, _, behind in [text.rpartition(", ")] if before and part_tokens(behind)), text
+            )
         known = getattr(self, what)
         longer = what == "part_number" and known is not None and text.startswith(f"{known}-")
         sized = what == "part_number" and known is not None and is_package(known) and not is_package(text)
@@ -104,6 +107,11 @@ class Draft:
                 self.attributes.setdefault(known.attribute, text)
 
 
+# "(Grundton AT)": two capital letters beside a mode in a text no longer than this are a cut.
+SHORT = 60
+_CUT_LETTERS = re.compile(r"(?<![A-Za-z0-9-])(?:AT|BT|SC)(?![A-Za-z0-9])")
+
+
 def _runs(text: str, longest: int = 4) -> Iterator[str]:
     words = [match[0] for match in _WORD.finditer(fold(text))]
     for start in range(len(words)):
@@ -116,6 +124,9 @@ def modes_in(text: str, *, codes: bool = False) -> frozenset[str]:
     """Every mode of vibration that a text names."""
     coded = sum(character.isalpha() for character in text) < 2
     whole = wording.mode_of(text) if codes or not coded else None
+    if whole is not None and not codes and key(text) not in vocabulary().modes and _only_ordinal(text):
+        # "Third lead" is no overtone.
+        whole = None
     whole = whole or (vocabulary().mode_codes.get(key(text)) if codes else None)
     if whole is not None:
         return frozenset({whole})
@@ -127,6 +138,12 @@ def modes_in(text: str, *, codes: bool = False) -> frozenset[str]:
             found.add(known[wanted])
     found |= {mode for wanted, mode in known.items() if not wanted.isascii() and wanted in key(text)}
     return frozenset(found)
+
+
+def _only_ordinal(text: str) -> bool:
+    """Whether a bare ordinal is all that a text has of a mode."""
+    runs = vocabulary().modes.runs(fold(text)[:400])
+    return all(run.key in _ORDINALS for run in runs)
 
 
 @lru_cache(maxsize=8192)
@@ -144,5 +161,7 @@ def cuts_in(text: str, *, whole: bool = False) -> frozenset[str]:
             or (run.isupper() and text.strip().startswith((f"{run},", f"{run} /", f"{run}/")))
         ):
             found.add(known[wanted])
+    if not found and (beside := _CUT_LETTERS.search(text)) and len(text) < SHORT and modes_in(text):
+        found.add(known[key(beside[0])])
     found |= {cut for wanted, cut in known.items() if not wanted.isascii() and wanted in key(text)}
     return frozenset(found)

@@ -3,14 +3,14 @@
 from __future__ import annotations
 
 import re
-from dataclasses import dataclass
+from dataclasses import dataclass, replace
 from functools import lru_cache
 
 from extract import units
 from extract.conditions import condition_of
 from extract.entries import Bound
 from extract.fold import fold
-from extract.meaning import Meaning, meaning, part_tokens
+from extract.meaning import Meaning, is_part_token, meaning, part_tokens
 from extract.model import When
 from extract.wording import Label
 
@@ -88,18 +88,29 @@ def bound_and_unit(text: str) -> tuple[str, ...]:
     return ()
 
 
+def _over_models(known: Meaning, below: tuple[str, ...]) -> Meaning:
+    """The head "Type" over the numbers of models is no "typical"."""
+    if known.role == "typ" and known.identity is not None and any(map(is_part_token, below)):
+        return replace(known, role="value", identity=None)
+    return known
+
+
 @lru_cache(maxsize=4096)
 def interpret(levels: tuple[str, ...]) -> Head:
     """Put the levels of one heading together: the label from one of them or from all, the bound and unit from any."""
     levels = _parted(levels)
     if len(levels) > 1:
         levels = tuple(part for level in levels for part in bound_and_unit(level) or (level,))
-    known = [meaning(level) for level in levels]
+    known = [_over_models(each, levels[index + 1 :]) for index, each in enumerate(map(meaning, levels))]
     bound = next((BOUNDS[each.role] for each in reversed(known) if each.role in BOUNDS), None)
     unit = next((level for level in reversed(levels) if is_unit(level)), "")
     named = [index for index, each in enumerate(known) if each.head is not None]
     if len(named) > 1:
         whole = meaning(" ".join(levels))
+        last, first = known[named[-1]].label, known[named[0]].label
+        if last is not None and last.unit and first is not None and first.field != last.field:
+            # A column of its own under a group's name: "Series resistance" over "Frequency (MHz)" and "max. (Ω)".
+            return _head(levels, known[named[-1]], bound, unit, ())
         if whole.head is not None:
             return _head(levels, whole, bound, unit, ())
         named = named[-1:]

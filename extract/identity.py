@@ -18,7 +18,7 @@ _HOLDER = re.compile(
     r"(?i)\bHC[\s-]?/?\s?\d{2,3}(?:\s?[/-]\s?(?:US?|SMD|SM|S)|US?|SMD|S)?(?:[\s/-]?SMD)?\b|\bUM-?[1-5]\b|\bTO-?\d{1,2}\b"
 )
 _MILLIMETRES = re.compile(
-    r"(?<![\d.,±])(\d{1,2}(?:[.,]\d{1,2})?)\s?(?:mm)?\s?(?:±\s?0?[.,]\d+\s?)?[x×*]\s?[φ⌀∅]?\s?(\d{1,2}(?:[.,]\d{1,2})?)(?:\s?±\s?0?[.,]\d+)?(?:\s?(?:mm)?\s?[x×*]\s?\d{1,2}(?:[.,]\d{1,3})?)?(?![\d.,]*\d)(?:\s?mm\b)?"
+    r"(?<![\d.,±])(\d{1,2}(?:[.,]\d{1,2})?)\s?(?:mm)?\s?(?:±\s?0?[.,]\d+\s?)?[xX×*]\s?[φ⌀∅]?\s?(\d{1,2}(?:[.,]\d{1,2})?)(?:\s?±\s?0?[.,]\d+)?(?:\s?(?:mm)?\s?[x×*]\s?\d{1,2}(?:[.,]\d{1,3})?)?(?![\d.,]*\d)(?:\s?mm\b)?"
 )
 _CODE = re.compile(
     r"(?i)\b(?:SMD|贴片|封装|package|size|case)\s?-?(\d{4})(?:-\dP)?\b|(?<![\w-])(\d{4})(?=\s?(?:SMD|package|size))"
@@ -71,13 +71,14 @@ def makers_in(text: str) -> tuple[tuple[str, int], ...]:
         if score := _name_score(name, words):
             found.append((name, score + (1 if _BY.search(plain[: match.start()]) else 0)))
     for match in _EAST_NAME.finditer(plain):
+        name = _up_to_eastern_form(match[0], words["east"][1:5])
         if (
-            any(match[0].endswith(ending) or match[0].startswith(ending) for ending in words["east"])
-            and len(match[0]) > 3
-            and match[0] not in words["east_generic"]
+            any(name.endswith(ending) or name.startswith(ending) for ending in words["east"])
+            and len(name) > 3
+            and name not in words["east_generic"]
         ):
-            sure = any(mark in match[0] for mark in words["east"][:5])
-            found.append((match[0], 4 if sure else 2))
+            sure = any(mark in name for mark in words["east"][:5])
+            found.append((name, 4 if sure else 2))
     return tuple(found)
 
 
@@ -107,6 +108,12 @@ def _is_legal(part: str) -> bool:
     bare = part.strip(".,").replace(".", "")
     legal = identity_words()["maker"]["legal"]
     return bare in legal or (bare.isupper() and bare in {word.upper() for word in legal})
+
+
+def _up_to_eastern_form(name: str, forms: Sequence[str]) -> str:
+    """A name without what is set right behind its legal form ("... 有限公司电话")."""
+    ends = [name.find(form) + len(form) for form in forms if name.find(form) > 0]
+    return name[: max(ends)] if ends else name
 
 
 def _up_to_legal_form(name: str) -> str:
@@ -151,6 +158,7 @@ def _repeated_name(texts: Sequence[Text], headers: Sequence[Text]) -> str | None
         for segment in _segments(text):
             for piece in re.split(r" - |[|:;,]", unfolded(segment)):
                 name = piece.strip(" .")
+                name = _before_part(name) if top else name
                 if _is_proper(name):
                     scores[name.casefold()] += 1 + (top if scores[name.casefold()] == 0 else 0)
     best = max(scores, key=lambda name: scores[name], default=None)
@@ -159,6 +167,13 @@ def _repeated_name(texts: Sequence[Text], headers: Sequence[Text]) -> str | None
     everything = " ".join(unfolded(text.piece.text) for text in [*headers, *texts])
     found = re.search(re.escape(best), everything, re.IGNORECASE)
     return found[0] if found else None
+
+
+def _before_part(name: str) -> str:
+    """The words that stand before a part number at the beginning of a headline ("Oakmere QRB2016 Crystal")."""
+    tokens = part_tokens(name)
+    before = name[: name.find(tokens[0])].strip() if tokens else ""
+    return before or name
 
 
 def _is_proper(name: str) -> bool:
@@ -197,9 +212,12 @@ def part_number_of(items: Sequence[Item], headers: Sequence[Text]) -> str | None
 def _whole_number(name: str, texts: Sequence[Text]) -> str:
     """The longer number that begins with `name`, where the sheet's first lines print it and call `name` no series."""
     words = identity_words()["not_parts"]["series"]
+    elsewhere = identity_words()["not_parts"]["elsewhere"]
     longer = name
     for text in texts:
         line = unfolded(text.piece.text)
+        if any(word in line.casefold() for word in elsewhere):
+            continue
         at = line.find(name)
         behind = line[at + len(name) :].casefold().lstrip(" )-")
         if at >= 0 and any(behind.startswith(word) for word in words):

@@ -84,10 +84,17 @@ def _unit_in(parts: Parts, inside: str, words: list[str], bounds: list[str | Non
     """The unit that a bracket holds ("µW", "Ω max", "±ppm", "ppm @25 °C", "ppm/year"), and the condition behind it."""
     plain = " ".join(word for word, bound in zip(words, bounds, strict=True) if bound is None)
     before, _, condition = inside.partition("@")
-    for unit, rest in ((inside, ""), (plain, ""), (before, condition), (_take_years(parts, inside), "")):
+    first, _, behind = inside.partition(",")
+    several = ((before, condition), (first, behind) if condition_like(behind) else ("", ""))
+    for unit, rest in ((inside, ""), (plain, ""), *several, (_take_years(parts, inside), "")):
         if is_unit(unit.strip("± /")):
             return unit.strip("± /"), rest
     return "", ""
+
+
+def condition_like(text: str) -> bool:
+    """Whether a text behind a unit says where it was measured: "25 °C", "ref. 25 °C"."""
+    return bool(re.search(r"\d\s?°|\bMHz\b", text))
 
 
 @cache
@@ -178,10 +185,18 @@ def is_nominal(word: str) -> bool:
     return word.casefold().strip(".") in vocabulary().phrases.get("nominal", ()) or key(word) == "type"
 
 
+# "等效电阻Max": no space before a Latin word.
+_GLUED_BOUND = re.compile(r"(?<=[\u3040-\u30ff\u3400-\u9fff])\s?(max|min|typ)\.?$", re.IGNORECASE)
+
+
 def _cjk_bound(parts: Parts) -> bool:
     """Take off a bound word in ideographs ("最大"), written without a space; whether there was one."""
     if not IDEOGRAPHS.search(parts.core):
         return False
+    if glued := _GLUED_BOUND.search(parts.core):
+        parts.bound = parts.bound or glued[1].lower()
+        parts.core = parts.core[: glued.start()].strip(EDGE)
+        return True
     for word in vocabulary().phrases.get("max", ()) + vocabulary().phrases.get("min", ()):
         if not IDEOGRAPHS.match(word):
             continue

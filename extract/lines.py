@@ -194,7 +194,9 @@ def _label_over_value(lines: Sequence[Line], index: int, items: list[Item]) -> i
     if len(line.segments) != 1 or not is_label(line.text) or meaning(line.text).value or _holds_its_value(line.text):
         return 0
     end = index + 1
-    while end < len(lines) and _is_value_line(lines[end]) and end - index <= 8:
+    label_here = meaning(line.text.strip(" :：")).label
+    field = label_here.field if label_here is not None else ""
+    while end < len(lines) and (_is_value_line(lines[end]) or _case_first(lines[end].text, field)) and end - index <= 8:
         end += 1
     if end == index + 1 or (end < len(lines) and end - index > 2 and not is_label(lines[end].text) and end - index > 8):
         return 0
@@ -208,6 +210,14 @@ def _label_over_value(lines: Sequence[Line], index: int, items: list[Item]) -> i
         below = lines[index + 1 : end]
         items.extend(Entry(label, tuple(Value(segment) for segment in each.segments), source="pair") for each in below)
     return end - index
+
+
+def _case_first(text: str, field: str) -> bool:
+    """Whether a line is a value behind the mode, band or load that it holds for ("3rd overtone: 40 ohm")."""
+    before, mark, behind = text.partition(":")
+    if not field or not mark or not re.match(r"\s*[<≤>]?\s?\d", fold(behind)) or is_label(before):
+        return False
+    return has_unit(behind, field) and bool(kinds_of(before) & _CASE)
 
 
 def _is_axis(lines: Sequence[Line]) -> bool:

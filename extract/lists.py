@@ -50,8 +50,12 @@ class ListColumn:
 
 def listing_drafts(listing: Listing) -> list[Draft]:
     """What a listing says of each part, or of the series, that it lists."""
+    from extract.bandrows import merged_row_drafts
+
     columns = columns_of(listing)
     if lists_parts(listing, columns):
+        if merged := merged_row_drafts(listing, columns):
+            return merged
         return _crystals_among(list(_part_drafts(listing, columns)))
     return _series_drafts(listing, columns)
 
@@ -394,7 +398,7 @@ def _row_key(row: Sequence[Placed | None], columns: list[ListColumn], section: s
         if cell is None or not cell.text.strip():
             continue
         if column.label is not None and not alone:
-            when = merged(when, _key_when(cell, column.label))
+            when = merged(when, key_when(cell, column.label))
         elif column.use == "mode":
             mode = wording.mode_of(cell.text) or condition_of(cell.text).mode
             when = merged(when, When(mode=mode))
@@ -407,7 +411,7 @@ def _row_key(row: Sequence[Placed | None], columns: list[ListColumn], section: s
     return when, subject
 
 
-def _key_when(cell: Placed, label: Label) -> When:
+def key_when(cell: Placed, label: Label) -> When:
     if label.field == RANGE:
         return When(temperature_c=condition_of(cell.text).temperature_c)
     if label.field == "frequency_mhz":

@@ -295,13 +295,16 @@ def _without_short_parabola(chosen: list[Candidate]) -> list[Candidate]:
 
 def _with_operating_range(chosen: list[Candidate], candidates: Sequence[Candidate]) -> list[Candidate]:
     """A temperature range printed only beside the stability is the operating range too."""
-    if any(each.field == "operating_temperature_c" for each in chosen):
+    stated = [each for each in chosen if each.field == "operating_temperature_c"]
+    if any(each.source not in ("prose", "key", "loose") for each in stated):
         return chosen
     ranges: dict[Pair, Candidate] = {}
     for each in candidates:
         span = each.when.temperature_c
-        if each.field == "frequency_stability_ppm" and span is not None:
+        if each.field == "frequency_stability_ppm" and span is not None and (not stated or each.source == "table"):
             ranges.setdefault(span, each)
+    if stated and len(ranges) < 2:
+        return chosen
     added = [
         replace(
             each,
@@ -315,7 +318,9 @@ def _with_operating_range(chosen: list[Candidate], candidates: Sequence[Candidat
         )
         for span, each in ranges.items()
     ]
-    return [*chosen, *added]
+    for each in stated:
+        trace.dropped(each, "a range in running text gives way to those that a table gives each stability")
+    return [*(each for each in chosen if each not in stated), *added]
 
 
 def _written(chosen: Sequence[Candidate], cut: str | None, mode: str | None) -> tuple[Reading, ...]:

@@ -24,7 +24,7 @@ from extract.matrices import read_matrix
 from extract.meaning import Meaning, is_part_token, meaning, part_tokens
 from extract.padtables import read_pad_table
 from extract.paramrows import parameter_entries
-from extract.samples import of_samples, with_measured
+from extract.samples import heads_samples, of_samples, with_measured
 from extract.vocabulary import vocabulary
 
 Row = Sequence[Cell | None]
@@ -182,6 +182,8 @@ def is_head(row: Row) -> bool:
         for cell, each, name in zip(cells, known, names, strict=True)
     )
     if len(roles) >= 2 and values <= max(1, len(cells) // 2):
+        return True
+    if sum(heads_samples(cell.text) for cell in cells[1:]) > 1:
         return True
     if len(heads) >= 2 and values == 0:
         return len(heads) + len(roles) >= 0.4 * len(cells)

@@ -104,3 +104,17 @@ def test_a_further_cell_with_a_band_and_a_value_is_a_value_of_its_own():
     values = tuple(Value(Piece(text, Where(line=1))) for text in cells)
     found = entry_candidates(Entry(Piece("ESR", Where(line=1)), values))
     assert [(each.when.frequency_mhz, each.max) for each in found] == [((12, 15.999), 100), ((16, 54), 60)]
+
+
+def test_the_peak_of_a_soldering_profile_is_no_turnover():
+    assert entry_candidates(entry("Peak temperature", "260 °C, 10 s max.")) == []
+
+
+def test_a_bound_alone_in_the_remarks_is_the_values():
+    (found,) = entry_candidates(entry("Static capacitance", "1.2 pF", conditions=("typ.",)))
+    assert (found.typ, found.bare) == (1.2, False)
+
+
+def test_what_else_may_be_had_in_a_bracket_is_no_bound_of_the_load():
+    (found,) = entry_candidates(entry("Load capacitance", "12 pF standard (8 pF to 32 pF possible)"))
+    assert (found.min, found.typ, found.max) == (None, 12, None)

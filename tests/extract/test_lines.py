@@ -128,3 +128,18 @@ def test_values_side_by_side_with_a_band_each_are_a_row_each():
 def test_a_footnote_states_nothing_of_its_own():
     items = line_items([line("*1 For CL = 6 pF the motional resistance is 90 kΩ max.")])
     assert not any(isinstance(item, Entry) for item in items)
+
+
+def test_lines_of_a_mode_and_its_value_belong_to_the_label_above():
+    lines = [
+        line("Series resistance (max)"),
+        line("fundamental: 25 ohm", number=2),
+        line("3rd overtone: 40 ohm", number=3),
+    ]
+    found = [each for item in line_items(lines) if isinstance(item, Entry) for each in entry_candidates(item)]
+    assert [(each.max, each.when.mode) for each in found] == [(25, "fundamental"), (40, "third overtone")]
+
+
+def test_the_numbers_beside_a_graph_are_no_values():
+    lines = [line("Frequency stability"), *(line(str(-20 * at), number=at + 2) for at in range(4))]
+    assert not [item for item in line_items(lines) if isinstance(item, Entry)]

@@ -493,3 +493,15 @@ def test_no_text_breaks_the_label_reader(text):
     role_of(text)
     trap_of(text)
     ambiguous_label(text)
+
+
+def test_a_latin_bound_glued_to_an_eastern_label_is_its_bound():
+    label = read_label("等效电阻Max(Ω)")
+    assert label is not None
+    assert (label.field, label.bound, label.unit) == ("esr_ohm", "max", "Ω")
+
+
+def test_a_label_in_two_languages_by_weak_wordings_is_exact():
+    label = read_label("Frequenzbereich / frequency range")
+    assert label is not None
+    assert (label.field, label.exact) == ("frequency_mhz", True)
