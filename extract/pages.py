@@ -11,6 +11,7 @@ from extract.vocabulary import vocabulary
 
 # Shorter wordings ("load", "drive") stand inside too many other words.
 LEAST_LATIN, LEAST_EAST = 8, 3
+BEGINNING = 4
 _FIELDS = frozenset(
     {
         "load_capacitance_pf",
@@ -52,21 +53,29 @@ def speaks_of_crystals(text: str) -> bool:
     if any(word in lower for word in identity_words()["crystal"]["words"]):
         return True
     squeezed = key(folded)
-    if any(wording in squeezed for wording in _wordings()):
-        return True
-    return bool(_FREQUENCY.search(folded)) and len({found[0] for found in _SYMBOLS.finditer(folded)}) > 1
+    for beginning, wordings in _wordings():
+        if beginning in squeezed and any(wording in squeezed for wording in wordings):
+            return True
+    return (
+        "hz" in lower and bool(_FREQUENCY.search(folded)) and len({found[0] for found in _SYMBOLS.finditer(folded)}) > 1
+    )
 
 
 @cache
-def _wordings() -> tuple[str, ...]:
+def _wordings() -> tuple[tuple[str, tuple[str, ...]], ...]:
+    """Names of properties, grouped by how they begin: most pages hold few of the beginnings."""
     known = vocabulary()
-    return tuple(
+    names = [
         wording
         for wording, field in known.labels.items()
         if field in _FIELDS
         and wording not in known.weak
         and len(wording) >= (LEAST_LATIN if wording.isascii() else LEAST_EAST)
-    )
+    ]
+    groups: dict[str, list[str]] = {}
+    for name in names:
+        groups.setdefault(name[:BEGINNING], []).append(name)
+    return tuple((beginning, tuple(group)) for beginning, group in groups.items())
 
 
 def _has_table(text: str) -> bool:

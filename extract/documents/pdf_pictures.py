@@ -2,10 +2,12 @@
 
 from __future__ import annotations
 
+import ctypes
 from dataclasses import dataclass
 from typing import Any
 
 from extract.documents.pdf_page import Frame
+from extract.documents.pdfium import IMAGE, INVISIBLE, PATH, TEXT, bounds_of, calls, handle_of, objects_of
 from extract.documents.words import Box
 
 # Share of the page from which a picture counts as holding the page's content.
@@ -14,6 +16,8 @@ LARGE = 0.2
 WHOLE = 0.7
 # Drawn shapes from which a page without text is taken as text drawn in outlines.
 OUTLINES = 60
+# Forms inside forms.
+DEEPEST = 3
 # Pixels: type in a smaller picture cannot be read, so it is a photo or a mark.
 LEAST_PIXELS = 400
 
@@ -40,24 +44,32 @@ class Pictures:
 
 def pictures_of(page: Any, frame: Frame) -> Pictures:
     """Look through the objects of a pypdfium2 page."""
-    from pypdfium2 import raw
-
+    call = calls()
     width, height = frame.size
     boxes, area, paths, modes = [], 0.0, 0, set()
-    for item in page.get_objects(max_depth=4):
-        if item.type == raw.FPDF_PAGEOBJ_IMAGE:
-            box = _shown(item.get_bounds(), frame)
+    for item, kind, outer in objects_of(handle_of(page), DEEPEST):
+        if kind == IMAGE:
+            x0, y0, x1, y1 = bounds_of(item)
+            box = _shown((*outer.point(x0, y0), *outer.point(x1, y1)), frame)
             share = (box[2] - box[0]) * (box[3] - box[1]) / (width * height)
             area += share
-            if share > LARGE and min(item.get_px_size()) >= LEAST_PIXELS:
+            if share > LARGE and _pixels(item) >= LEAST_PIXELS:
                 boxes.append(box)
-        elif item.type == raw.FPDF_PAGEOBJ_PATH:
+        elif kind == PATH:
             paths += 1
-        elif item.type == raw.FPDF_PAGEOBJ_TEXT:
-            modes.add(raw.FPDFTextObj_GetTextRenderMode(item))
-    return Pictures(tuple(boxes), area, paths, modes == {raw.FPDF_TEXTRENDERMODE_INVISIBLE})
+        elif kind == TEXT:
+            modes.add(call.text_mode(item))
+    return Pictures(tuple(boxes), area, paths, modes == {INVISIBLE})
 
 
-def _shown(bounds: tuple[float, float, float, float], frame: Frame) -> Box:
+def _pixels(item: int) -> int:
+    """Pixels of a picture's shorter side."""
+    sides = (ctypes.c_uint * 2)()
+    place = ctypes.addressof(sides)
+    calls().pixels(item, place, place + ctypes.sizeof(ctypes.c_uint))
+    return int(min(sides))
+
+
+def _shown(bounds: Box, frame: Frame) -> Box:
     (x0, y0), (x1, y1) = frame.shown(*bounds[:2]), frame.shown(*bounds[2:])
     return (min(x0, x1), min(y0, y1), max(x0, x1), max(y0, y1))

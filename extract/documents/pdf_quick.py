@@ -8,16 +8,28 @@ from __future__ import annotations
 
 import ctypes
 from dataclasses import dataclass, field
-from functools import cache
-from typing import Any, NamedTuple
+from typing import Any
 
 from extract.documents.glyphs import Glyph
 from extract.documents.pdf_page import ABOVE, BELOW, WHITE, Frame
+from extract.documents.pdfium import (
+    BEND,
+    IDENTITY,
+    MOVE,
+    PATH,
+    TEXT,
+    Matrix,
+    bounds_of,
+    calls,
+    handle_of,
+    matrix_of,
+    objects_of,
+)
 from extract.documents.shapes import Shape, rulings_of, shape_of
 from extract.documents.symbols import is_broken, is_symbol_font
-from extract.documents.words import Ruling
+from extract.documents.words import Box, Ruling
 
-# Forms inside forms: a page with deeper ones is in doubt.
+# Forms inside forms.
 DEEPEST = 8
 # pdfium's mark in place of a hyphen at a line's end.
 HYPHEN = "\ufffe"
@@ -27,26 +39,6 @@ _LEFTWARD = ("\u0590", "\u08ff"), ("\ufb1d", "\ufdff"), ("\ufe70", "\ufefc")
 
 class DoubtError(Exception):
     """What the page holds that only pdfplumber reads well."""
-
-
-class _Matrix(NamedTuple):
-    """From (x, y) to (ax + cy + e, bx + dy + f)."""
-
-    a: float
-    b: float
-    c: float
-    d: float
-    e: float
-    f: float
-
-    def then(self, outer: _Matrix) -> _Matrix:
-        a, b, c, d, e, f = self
-        oa, ob, oc, od, oe, of = outer
-        moved = (e * oa + f * oc + oe, e * ob + f * od + of)
-        return _Matrix(a * oa + b * oc, a * ob + b * od, c * oa + d * oc, c * ob + d * od, *moved)
-
-
-_IDENTITY = _Matrix(1.0, 0.0, 0.0, 1.0, 0.0, 0.0)
 
 
 @dataclass(slots=True)
@@ -65,130 +57,57 @@ class _TextObject:
     font: _Font
     size: float
     handle: int
+    outer: Matrix
     seen: bool = False
 
 
 def quick_content(page: Any, frame: Frame, text_page: Any) -> tuple[list[Glyph], list[Ruling]] | None:
     """Glyphs in the order in which the page draws them, and drawn lines, as pdfplumber gives them; None if in doubt."""
-    if frame.rotation:
+    if frame.rotation or not calls().complete:
         return None
-    calls = _calls()
-    if calls is None:
-        return None
-    reader = _Reader(calls, frame)
+    reader = _Reader(frame)
     try:
-        reader.look_through(_handle(page), _IDENTITY, 0)
-        glyphs = reader.glyphs(_handle(text_page))
+        reader.look_through(handle_of(page))
+        glyphs = reader.glyphs(handle_of(text_page))
     except DoubtError:
         return None
     return glyphs, rulings_of(reader.shapes, *frame.size)
 
 
-def _handle(helper: Any) -> int:
-    return ctypes.cast(helper.raw, ctypes.c_void_p).value or 0
-
-
-class _Calls:
-    """pdfium's functions that take and give whole numbers for handles, in half the time of those for objects."""
-
-    def __init__(self, raw: Any) -> None:
-        def plain(name: str, result: Any, *takes: Any) -> Any:
-            address = ctypes.cast(getattr(raw, name), ctypes.c_void_p).value or 0
-            return ctypes.CFUNCTYPE(result, *takes)(address)
-
-        handle, number, size = ctypes.c_void_p, ctypes.c_int, ctypes.c_ulong
-        whole, out = ctypes.c_size_t, ctypes.c_void_p
-        self.count_objects = plain("FPDFPage_CountObjects", number, handle)
-        self.object_at = plain("FPDFPage_GetObject", handle, handle, number)
-        self.count_form_objects = plain("FPDFFormObj_CountObjects", number, handle)
-        self.form_object_at = plain("FPDFFormObj_GetObject", handle, handle, size)
-        self.kind = plain("FPDFPageObj_GetType", number, handle)
-        self.matrix = plain("FPDFPageObj_GetMatrix", number, handle, out)
-        self.bounds = plain("FPDFPageObj_GetBounds", number, handle, out, out, out, out)
-        self.count_marks = plain("FPDFPageObj_CountMarks", number, handle)
-        self.mark = plain("FPDFPageObj_GetMark", handle, handle, size)
-        self.mark_value_kind = plain("FPDFPageObjMark_GetParamValueType", number, handle, ctypes.c_char_p)
-        self.fill_colour = plain("FPDFPageObj_GetFillColor", number, handle, out, out, out, out)
-        self.font = plain("FPDFTextObj_GetFont", handle, handle)
-        self.font_size = plain("FPDFTextObj_GetFontSize", number, handle, out)
-        self.font_name = plain("FPDFFont_GetBaseFontName", whole, handle, out, whole)
-        self.draw_mode = plain("FPDFPath_GetDrawMode", number, handle, out, out)
-        self.count_segments = plain("FPDFPath_CountSegments", number, handle)
-        self.segment = plain("FPDFPath_GetPathSegment", handle, handle, number)
-        self.point = plain("FPDFPathSegment_GetPoint", number, handle, out, out)
-        self.segment_kind = plain("FPDFPathSegment_GetType", number, handle)
-        self.closes = plain("FPDFPathSegment_GetClose", number, handle)
-        self.count_chars = plain("FPDFText_CountChars", number, handle)
-        self.code = plain("FPDFText_GetUnicode", ctypes.c_uint, handle, number)
-        self.text = plain("FPDFText_GetText", number, handle, number, number, out)
-        self.text_object = plain("FPDFText_GetTextObject", handle, handle, number)
-        self.loose_box = plain("FPDFText_GetLooseCharBox", number, handle, number, out)
-        self.origin = plain("FPDFText_GetCharOrigin", number, handle, number, out, out)
-        self.has_no_map = plain("FPDFText_HasUnicodeMapError", number, handle, number)
-
-
-@cache
-def _calls() -> _Calls | None:
-    """The functions; None for a pdfium too old to have all of them."""
-    from pypdfium2 import raw
-
-    try:
-        return _Calls(raw)
-    except AttributeError:
-        return None
-
-
 class _Reader:
     """Reads one page."""
 
-    def __init__(self, calls: _Calls, frame: Frame) -> None:
-        self._calls, self._frame = calls, frame
+    def __init__(self, frame: Frame) -> None:
+        self._calls, self._frame = calls(), frame
         self._fonts: dict[int, _Font] = {}
         self._objects: dict[int, _TextObject] = {}
         self.shapes: list[Shape] = []
-        self._reals = [ctypes.c_float() for _ in range(4)]
-        self._whole = [ctypes.c_uint() for _ in range(4)]
-        self._real_places = [ctypes.addressof(real) for real in self._reals]
-        self._whole_places = [ctypes.addressof(whole) for whole in self._whole]
+        self._reals, self._wholes = (ctypes.c_float * 2)(), (ctypes.c_uint * 4)()
+        self._real, self._whole = ctypes.addressof(self._reals), ctypes.addressof(self._wholes)
 
     # --- objects
 
-    def look_through(self, holder: int, outer: _Matrix, depth: int) -> None:
-        """Take in the objects of a page, or of a form with the matrix round it."""
-        calls = self._calls
-        count, at = (
-            (calls.count_form_objects, calls.form_object_at) if depth else (calls.count_objects, calls.object_at)
-        )
-        for index in range(count(holder)):
-            item = at(holder, index)
-            kind = calls.kind(item)
-            if kind == _TEXT:
+    def look_through(self, page: int) -> None:
+        """Take in the objects of a page."""
+        for item, kind, outer in objects_of(page, DEEPEST):
+            if kind == TEXT:
                 self._take_text(item, outer)
-            elif kind == _PATH:
+            elif kind == PATH:
                 self._take_path(item, outer)
-            elif kind == _FORM:
-                if depth == DEEPEST:
-                    raise DoubtError("forms inside forms")
-                self.look_through(item, self._matrix(item).then(outer), depth + 1)
 
-    def _matrix(self, item: int) -> _Matrix:
-        values = (ctypes.c_float * 6)()
-        self._calls.matrix(item, ctypes.addressof(values))
-        return _Matrix(*values)
-
-    def _take_text(self, item: int, outer: _Matrix) -> None:
-        calls = self._calls
-        a, b, c, d, _, _ = self._matrix(item).then(outer)
+    def _take_text(self, item: int, outer: Matrix) -> None:
+        call = self._calls
+        a, b, c, d, _, _ = matrix_of(item).then(outer) if outer is not IDENTITY else matrix_of(item)
         if a <= 0 or d <= 0 or abs(b) + abs(c) > 1e-4 * d:
             raise DoubtError("turned type")
-        for index in range(calls.count_marks(item)):
-            if calls.mark_value_kind(calls.mark(item, index), b"ActualText"):
+        for index in range(call.count_marks(item)):
+            if call.mark_value_kind(call.mark(item, index), b"ActualText"):
                 raise DoubtError("text in place of what is drawn")
-        calls.font_size(item, self._real_places[0])
-        size = self._reals[0].value * d
+        call.font_size(item, self._real)
+        size = self._reals[0] * d
         if size <= 0:
             raise DoubtError("turned type")
-        self._objects[item] = _TextObject(len(self._objects), self._font(calls.font(item)), size, item)
+        self._objects[item] = _TextObject(len(self._objects), self._font(call.font(item)), size, item, outer)
 
     def _font(self, handle: int) -> _Font:
         if handle not in self._fonts:
@@ -196,9 +115,8 @@ class _Reader:
         return self._fonts[handle]
 
     def _new_font(self, handle: int) -> _Font:
-        calls = self._calls
         buffer = ctypes.create_string_buffer(256)
-        calls.font_name(handle, ctypes.addressof(buffer), 256)
+        self._calls.font_name(handle, ctypes.addressof(buffer), 256)
         name = buffer.value.decode("utf-8", "replace")
         if not name:
             raise DoubtError("font drawn by procedures")
@@ -206,36 +124,33 @@ class _Reader:
             raise DoubtError("font of signs")
         return _Font(name)
 
-    def _take_path(self, item: int, outer: _Matrix) -> None:
-        calls = self._calls
-        fill_place, stroke_place = self._whole_places[:2]
-        calls.draw_mode(item, fill_place, stroke_place)
-        fill, stroke = bool(self._whole[0].value), bool(self._whole[1].value)
+    def _take_path(self, item: int, outer: Matrix) -> None:
+        call, wholes, reals = self._calls, self._wholes, self._reals
+        call.draw_mode(item, self._whole, self._whole + 4)
+        fill, stroke = bool(wholes[0]), bool(wholes[1])
         if not (fill or stroke):
             return
         colour = self._colour(item) if fill else None
-        a, b, c, d, e, f = self._matrix(item).then(outer)
+        a, b, c, d, e, f = matrix_of(item).then(outer)
         left, _, _, up = self._frame.crop
         e, f = e - left, up - f
-        x_real, y_real = self._reals[:2]
-        x_place, y_place = self._real_places[:2]
         points: list[tuple[float, float]] = []
-        bends = 0
-        closed = False
-        for index in range(calls.count_segments(item)):
-            segment = calls.segment(item, index)
-            kind = calls.segment_kind(segment)
-            if kind == _MOVE and points:
+        bends, closed = 0, False
+        for index in range(call.count_segments(item)):
+            segment = call.segment(item, index)
+            kind = call.segment_kind(segment)
+            if kind == MOVE and points:
                 self._add(points, closed, stroke, colour)
                 points, closed, bends = [], False, 0
-            if kind == _BEND:
+            if kind == BEND:
+                # Two points that draw the curve, then the one where it ends.
                 bends += 1
                 if bends % 3:
                     continue
-            calls.point(segment, x_place, y_place)
-            x, y = x_real.value, y_real.value
+            call.point(segment, self._real, self._real + 4)
+            x, y = reals[0], reals[1]
             points.append((a * x + c * y + e, f - b * x - d * y))
-            closed = bool(calls.closes(segment))
+            closed = bool(call.closes(segment))
         self._add(points, closed, stroke, colour)
 
     def _add(self, points: list[tuple[float, float]], closed: bool, stroke: bool, colour: str | None) -> None:
@@ -243,12 +158,11 @@ class _Reader:
             self.shapes.append(shape_of(points, closed=closed, stroke=stroke, colour=colour))
 
     def _colour(self, item: int) -> str | None:
-        if not self._calls.fill_colour(item, *self._whole_places):
+        place = self._whole
+        if not self._calls.fill_colour(item, place, place + 4, place + 8, place + 12):
             return "a pattern"
-        red, green, blue = (whole.value for whole in self._whole[:3])
-        if min(red, green, blue) >= 255 * (1 - WHITE):
-            return None
-        return f"{red} {green} {blue}"
+        red, green, blue, _ = self._wholes
+        return None if min(red, green, blue) >= 255 * (1 - WHITE) else f"{red} {green} {blue}"
 
     # --- characters
 
@@ -270,23 +184,23 @@ class _Reader:
             if not (glyph.box[2] < 0 or glyph.box[3] < 0 or glyph.box[0] > width or glyph.box[1] > height)
         ]
 
-    def _box_of(self, item: _TextObject) -> tuple[float, float, float, float]:
-        self._calls.bounds(item.handle, *self._real_places)
-        x0, y0, x1, y1 = (real.value for real in self._reals)
+    def _box_of(self, item: _TextObject) -> Box:
+        x0, y0, x1, y1 = bounds_of(item.handle)
         left, _, _, up = self._frame.crop
-        return (x0 - left, up - y1, x1 - left, up - y0)
+        (x0, y0), (x1, y1) = item.outer.point(x0, y0), item.outer.point(x1, y1)
+        return (min(x0, x1) - left, up - max(y0, y1), max(x0, x1) - left, up - min(y0, y1))
 
     def _shows(self, item: _TextObject) -> bool:
         x0, top, x1, bottom = self._box_of(item)
         return x1 - x0 > 0.01 and bottom - top > 0.01
 
     def _chars(self, text_page: int) -> list[tuple[int, Glyph]]:
-        calls = self._calls
+        call = self._calls
         left, _, _, up = self._frame.crop
         rect, origin = (ctypes.c_float * 4)(), (ctypes.c_double * 2)()
         rect_place, x_place = ctypes.addressof(rect), ctypes.addressof(origin)
         y_place = x_place + ctypes.sizeof(ctypes.c_double)
-        object_of, box_of, origin_of, objects = calls.text_object, calls.loose_box, calls.origin, self._objects
+        object_of, box_of, origin_of, objects = call.text_object, call.loose_box, call.origin, self._objects
         found: list[tuple[int, Glyph]] = []
         last, last_x, last_y = 0, 0.0, 0.0
         for index, text in enumerate(self._text(text_page)):
@@ -318,14 +232,14 @@ class _Reader:
 
     def _text(self, text_page: int) -> str:
         """One character for each that pdfium counts."""
-        calls = self._calls
-        count = calls.count_chars(text_page)
+        call = self._calls
+        count = call.count_chars(text_page)
         buffer = ctypes.create_string_buffer(2 * count + 2)
-        written = calls.text(text_page, 0, count, ctypes.addressof(buffer)) - 1
+        written = call.text(text_page, 0, count, ctypes.addressof(buffer)) - 1
         text = buffer.raw[: 2 * max(written, 0)].decode("utf-16-le", "surrogatepass")
         if len(text) == count and not any("\ud800" <= character <= "\udfff" for character in text):
             return text
-        return "".join(chr(calls.code(text_page, index)) for index in range(count))
+        return "".join(chr(call.code(text_page, index)) for index in range(count))
 
     def _known(self, text_page: int, index: int, text: str, font: _Font) -> str:
         """The character, when it is sound in that font."""
@@ -336,7 +250,3 @@ class _Reader:
             raise DoubtError("a character without a sure meaning")
         font.sound.add(text)
         return text
-
-
-_TEXT, _PATH, _FORM = 1, 2, 5
-_MOVE, _BEND = 2, 1
