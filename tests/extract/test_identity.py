@@ -109,3 +109,21 @@ def test_a_row_called_series_under_resistance_names_no_part():
     entry = Entry(Piece("series", Where(line=2)), (value,), section="Resistance")
     title = Text(Piece("SX-21 crystal", Where(line=1)), heading=True)
     assert part_number_of([title, entry], ()) == "SX-21"
+
+
+def test_a_proper_word_before_the_part_number_at_the_top_is_the_maker():
+    top = [Text(Piece("OAKMERE QRB3225 MHz Crystal - RoHS - MSL 1", Where(line=1)))]
+    assert maker_of(top, ()) == "OAKMERE"
+
+
+def test_words_of_approval_are_no_maker():
+    top = [Text(Piece("RoHS - Preliminary - MSL 1", Where(line=1)))]
+    assert maker_of(top, ()) is None
+
+
+def test_an_example_of_an_order_code_does_not_replace_the_name_of_the_series():
+    texts = [
+        Text(Piece("Oakmere QRB3225 MHz Crystal", Where(line=1)), heading=True),
+        Text(Piece("Example: QRB3225-26.000MHz-8-1-D", Where(line=2))),
+    ]
+    assert part_number_of(texts, ()) == "QRB3225"
