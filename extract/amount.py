@@ -74,9 +74,11 @@ def _from_date(date: re.Match[str], field: str, bound: str | None) -> Value:
     day, month = int(date["day"]), int(date["month"])
     meant = float(f"{day}.{month}")
     doubt = f"a date stands here; a spreadsheet makes one of {meant:g}, which is taken"
-    limit = bound if bound in ("min", "max") else None
-    made = Value(typ=meant, bare=field_of(field).bare, doubts=(doubt,))
-    return made if limit is None else Value(**{limit: meant}, doubts=(doubt,))
+    if bound == "min":
+        return Value(min=meant, doubts=(doubt,))
+    if bound == "max":
+        return Value(max=meant, doubts=(doubt,))
+    return Value(typ=meant, bare=field_of(field).bare, doubts=(doubt,))
 
 
 @dataclass(frozen=True, slots=True)

@@ -76,6 +76,12 @@ _MOJIBAKE = {
 }
 _MOJIBAKE_RUN = re.compile("|".join(map(re.escape, _MOJIBAKE)))
 
+_LATEX = {
+    "mu": "μ", "omega": "Ω", "pm": "±", "times": "×", "circ": "°", "leq": "≤", "le": "≤", "geq": "≥", "ge": "≥",
+    "sim": "~", "delta": "Δ", "infty": "∞", "cdot": "·",
+}  # fmt: skip
+_LATEX_SIGN = re.compile(r"\$\s?\^?\{?\\(?P<name>[A-Za-z]+)\}?\s?\$|\$(?P<whole>[^$\\]{1,40})\$")
+
 _SPELT = [
     (re.compile(r"\+\s?/\s?-|-\s?/\s?\+|\+-(?=\s?[\d.])"), "±"),
     (re.compile(r"<\s?=|=\s?<"), "≤"),
@@ -101,6 +107,12 @@ def _unbroken(text: str) -> str:
     return text
 
 
+def _plain_sign(found: re.Match[str]) -> str:
+    if found["whole"] is not None:
+        return found[0]
+    return _LATEX.get(found["name"].casefold(), found[0])
+
+
 @lru_cache(maxsize=65536)
 def fold(text: str) -> str:
     """`text` with one glyph for each sign: "－４０℃～＋８５℃" and "−40 °C – +85 °C" come out in the same characters.
@@ -110,6 +122,8 @@ def fold(text: str) -> str:
     Runs of spaces become one, line breaks stay.
     """
     text = _unbroken(text)
+    if "$" in text and "\\" in text:
+        text = _LATEX_SIGN.sub(_plain_sign, text)
     if _SIMPLE.fullmatch(text):
         return text.strip()
     if not text.isascii():

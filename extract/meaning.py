@@ -12,6 +12,7 @@ from typing import Any
 
 from extract import wording
 from extract.fold import fold, key
+from extract.number import PLAIN_NUMBER
 from extract.vocabulary import vocabulary
 from extract.wording import Label
 
@@ -24,7 +25,7 @@ _EAST = re.compile(r"[\u3040-\u30ff\u3400-\u9fff\uac00-\ud7af]{2,}")
 _NUMBERING = re.compile(r"^\s*(?:\(?\d{1,2}[.)、]\s?|[•●■◆▪·*-]\s*)(?=\D)")
 _PART_TOKEN = re.compile(r"(?<![\w.,/±+×-])[A-Z0-9](?:[A-Za-z0-9]|[-./,](?=[A-Za-z0-9]))+(?![\w°%])")
 _AMOUNT = re.compile(
-    r"[-+]?[\d.,]+(?:[-~/][\d.,]+)*(?:[A-Za-z]{1,2}?(?:Hz|HZ|hz|F|f|ppm|PPM|pF|C|V|A|W|H|mm|MM|s|S|g|h|R|k|K|M|pcs|th|rd|st|nd|OT|ot|Vdc|VDC|dc|ohm|Ohm|ohms|Ohms))*"
+    r"[-+]?[\d.,]+(?:[-~/][\d.,]+)*(?:[A-Za-z]{0,2}?(?:Hz|HZ|hz|F|f|ppm|PPM|pF|C|V|A|W|H|mm|MM|s|S|g|h|R|k|K|M|pcs|th|rd|st|nd|OT|ot|Vdc|VDC|dc|ohm|Ohm|ohms|Ohms))*"
 )
 _SIZE = re.compile(r"[\d.,]+(?:[xX][\d.,]+)+(?:mm)?|\d{4}(?:-\d[A-Z])?")
 _LEAD = re.compile(r"[A-Za-z]+[-/.]?")
@@ -56,10 +57,15 @@ class Meaning:
         return bool(self.label or self.role or self.identity or self.attribute or self.trap)
 
 
+_A_NUMBER = Meaning(None, None, None, None, None, value=True)
+
+
 @lru_cache(maxsize=16384)
 def meaning(text: str) -> Meaning:
     """Look `text` up in all vocabularies; a name in two languages, or numbered, is looked up by its parts as well."""
     folded = fold(text)
+    if PLAIN_NUMBER.fullmatch(folded):
+        return _A_NUMBER
     number = bool(_NUMBER.search(folded))
     if not folded or len(folded) > 120:
         return Meaning(None, None, None, None, None, number)

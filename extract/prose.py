@@ -6,7 +6,7 @@ import re
 from collections.abc import Iterator
 from dataclasses import replace
 
-from extract import wording
+from extract import trace, wording
 from extract.candidates import Candidate, has_unit, read
 from extract.conditions import TEMPERATURES, condition_of
 from extract.entries import Entry, Piece, Placed, Source, Value
@@ -223,6 +223,9 @@ def _sentence_entries(sentence: str, piece: Placed) -> Iterator[Entry]:
         for label in wording.find_labels(sentence)
         if not any(start < label.start and label.end < end for start, end in bands)
     ]
+    if labels and _chip_asks(sentence):
+        trace.passed(sentence, piece.where, "says what a chip asks of its crystal")
+        return
     taken = 0
     for index, label in enumerate(labels):
         until = labels[index + 1].start if index + 1 < len(labels) else len(sentence)
@@ -243,6 +246,21 @@ def _sentence_entries(sentence: str, piece: Placed) -> Iterator[Entry]:
         elif field not in _UNITLESS and (last := _last_amount(before[-NEAR:], field)) is not None:
             yield _entry(name, last, piece, "prose")
             taken = label.end
+
+
+def _chip_asks(sentence: str) -> bool:
+    """Whether a sentence says what a chip asks for ("our MCU needs ESR < 80 Ω"): that is no value of the crystal."""
+    lowered = sentence.casefold()
+    return all(
+        any(_stands_alone(word, lowered) for word in vocabulary().phrases.get(kind, ())) for kind in ("asker", "asks")
+    )
+
+
+def _stands_alone(word: str, text: str) -> bool:
+    at = text.find(word)
+    if at < 0 or not word.isascii():
+        return at >= 0
+    return bool(re.search(rf"(?<![^\W_]){re.escape(word)}(?![^\W_])", text))
 
 
 def _adjacent(before: str, field: str) -> str | None:

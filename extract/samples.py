@@ -4,6 +4,7 @@ from __future__ import annotations
 
 import re
 from collections.abc import Sequence
+from functools import lru_cache
 
 from extract.documents.model import Cell
 from extract.fold import fold, key
@@ -15,15 +16,25 @@ _COUNTED = re.compile(r"(?i)(?:#|no\.?|n°|nr\.?|s/n|[a-z])?\s?(\d{1,3})")
 _NUMBER_BEHIND = re.compile(r"[\s#.:°-]*(?:no|nr|n)?[\s#.:°-]*\d{1,3}$", re.IGNORECASE)
 
 
+@lru_cache(maxsize=8)
+def _words(kind: str) -> frozenset[str]:
+    return frozenset(key(word) for word in vocabulary().phrases.get(kind, ()))
+
+
 def _says(text: str, kind: str) -> bool:
     """Whether a head is one of the words for samples ("sample") or for what was measured ("measured")."""
-    words = {key(word) for word in vocabulary().phrases.get(kind, ())}
+    words = _words(kind)
     return key(text) in words or key(_NUMBER_BEHIND.sub("", fold(text))) in words
 
 
 def _is_in(word: str, text: str) -> bool:
     """Whether a word stands in a text; a Latin one as a whole word ("ist" is not in "characteristics")."""
     return bool(re.search(rf"(?<!\w){re.escape(word)}(?!\w)", text)) if word.isascii() else word in text
+
+
+def heads_samples(text: str) -> bool:
+    """Whether a cell is the head of a column of measured values ("Sample 1", "Measured")."""
+    return _says(text, "sample") or _says(text, "measured")
 
 
 def of_samples(heads: Sequence[Head], body: Sequence[Sequence[Cell | None]], title: str) -> bool:
@@ -47,6 +58,7 @@ def with_measured(heads: list[Head]) -> list[Head]:
     """
     models = sum(head.name is None and any(map(is_part_token, head.extra)) for head in heads)
     limits = any(head.role in ("value", "min", "typ", "max") for head in heads)
+    limits = limits or sum(heads_samples(head.levels[-1]) for head in heads if head.levels) > 1
     marked: list[Head] = []
     counted = any(_counts_from(heads, index) for index in range(len(heads)))
     for index, head in enumerate(heads):

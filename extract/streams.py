@@ -51,16 +51,17 @@ class Fragments:
         self._lines = lines
         self._end = 0
         self._broken: list[int] | None = None
+        self._whole: list[int] | None = None
 
     def count(self, start: int) -> int:
         """How many lines from `start` on are such pieces; 0 where most lines stand by themselves."""
         if start >= self._end:
-            self._end, self._broken = self._run_end(start), None
+            self._end, self._broken, self._whole = self._run_end(start), None, None
         size = self._end - start
         if size < LEAST_FRAGMENTS:
             return 0
         broken = self._broken_from(start)
-        if broken < 3 or broken < 0.15 * size:
+        if broken < 3 or broken < 0.15 * size or self._whole_from(start) > broken:
             return 0
         return size if is_label(_first_words(self._lines[start : start + 2])) else 0
 
@@ -78,6 +79,20 @@ class Fragments:
                 below = self._lines[index + 1] if index + 1 < self._end else None
                 self._broken.append(self._broken[-1] + _is_broken(self._lines[index], below))
         return self._broken[self._end - start]
+
+
+    def _whole_from(self, start: int) -> int:
+        """How many lines from `start` to the end of its run are a label with its value and nothing else."""
+        if self._whole is None:
+            self._whole = [0]
+            for index in range(self._end - 1, start - 1, -1):
+                self._whole.append(self._whole[-1] + _is_whole(self._lines[index]))
+        return self._whole[self._end - start]
+
+
+def _is_whole(line: Line) -> bool:
+    pairs, rest = split_pairs(fold(line.text))
+    return len(pairs) == 1 and not rest.strip() and any(character.isdigit() for character in pairs[0][1])
 
 
 def _may_be_fragment(line: Line) -> bool:

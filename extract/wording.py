@@ -138,6 +138,12 @@ def _exact(parts: Parts) -> Label | None:
     if _symbol(parts.core, parts) is None and without_unit(parts) and (field := _named(parts.core)):
         return _label(parts, field)
     tokens = parts.core.split()
+    for at in range(1, len(tokens) - 1):
+        # "Temperatura min. di esercizio"
+        bound = vocabulary().bounds.get(key(tokens[at]))
+        if bound in ("min", "max") and (field := _named(" ".join(tokens[:at] + tokens[at + 1 :]))):
+            parts.bound = parts.bound or bound
+            return _label(parts, field)
     for at, rest in ((-1, tokens[:-1]), (0, tokens[1:])):
         name = " ".join(rest)
         if (
