@@ -10,6 +10,8 @@ from extract.fields import Field
 # Spaces part thousands only where every group after the first has three digits. A comma that follows no digit is a
 # separator ("10 µW typ,200 µW max").
 NUMBER = re.compile(r"\d{1,3}(?:[ '’]\d{3})+(?![\d.,])|\d+(?:[.,]\d+)*|\.\d+|\A,\d+")
+# A number and nothing else: no label, unit or condition.
+PLAIN_NUMBER = re.compile(r"\d+(?:\.\d+)?")
 _SEPARATORS = re.compile("[.,]")
 
 

@@ -194,8 +194,14 @@ def _line(number: int, text: str, *, underlined: bool) -> Line:
     )
 
 
+# What a chat sets before each message: "[10:05, 5/3/2026] Name: ".
+_STAMP = re.compile(r"^\s*(?P<stamp>\[[^\]]*\d{1,2}:\d{2}[^\]]*\]\s*[^:\[\]]{1,60}):\s+(?=\S)")
+
+
 def _segments(text: str) -> list[str]:
     """Pieces of a line, and within a piece each KEY=VALUE or each `label: value` between semicolons."""
+    if (stamp := _STAMP.match(text)) is not None:
+        return [stamp["stamp"], *_segments(text[stamp.end() :])]
     found: list[str] = []
     for piece in spacing.pieces(text):
         keys = [part.strip() for part in _KEY.split(piece.text) if part.strip()]
