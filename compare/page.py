@@ -11,6 +11,7 @@ from compare.page_circuit import circuit_view
 from compare.page_reading import told_of_reading
 from compare.page_review import review_view
 from compare.page_sheets import sheets_view
+from compare.page_substitute import substitute_view
 from compare.page_work import head
 
 
@@ -31,7 +32,13 @@ def main() -> None:
     session.start()
     waiting = sum(map(shown.waiting, session.sheets()))
     pages = {}
-    views = {"sheets": sheets_view, "circuit": circuit_view, "choose": choose_view, "review": review_view}
+    views = {
+        "sheets": sheets_view,
+        "circuit": circuit_view,
+        "choose": choose_view,
+        "substitute": substitute_view,
+        "review": review_view,
+    }
     for name, view in views.items():
         looks = f" ☞ {waiting}" if name == "sheets" and waiting else ""
         pages[name] = st.Page(view, title=name.capitalize() + looks, url_path=name, default=name == "sheets")

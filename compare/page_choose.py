@@ -1,59 +1,107 @@
-"""The Choose view: the candidates in order, and why the chosen one stands where it does."""
+"""The Choose view: the candidates in order, filters and supply before weights, and why the chosen one stands there."""
 
 from __future__ import annotations
 
 import hashlib
+from collections.abc import Iterable, Sequence
 from typing import Any
 
 import streamlit as st
 
-from compare import answers, charts, choose_shown, export, pieces, review_shown
+from compare import answers, approval, charts, choose_shown, choosing, curves, export, pieces, review_shown
 from compare import page_session as session
 from compare.bench import Bench
-from compare.offer import find_offers
-from compare.page_shared import cautions, others, ready, review_of
+from compare.choosing import Candidate, Sifted
+from compare.page_charts import picture
+from compare.page_copy import copy_button, figures
+from compare.page_filters import asked, filter_line, weights, weights_line
+from compare.page_shared import cautions, ready, review_of, save_buttons, show_sheet
+from compare.page_supply import supply_editor
+from compare.ranking import Ranked
+from compare.sheets_json import notes_of
+from compare.work import part_key
 
-COPY = """export default function({data, parentElement}) {
-  const button = parentElement.querySelector("button");
-  button.onclick = async () => { await navigator.clipboard.writeText(data); button.textContent = "Copied"; } }"""
-COPY_LOOK = """button{font:inherit;font-size:.875rem;color:var(--st-text-color);background:var(--st-background-color);
-  cursor:pointer;border:1px solid var(--st-border-color);border-radius:3px;padding:.42rem .75rem}"""
-
-# More rows would slow every press down; the saved tables hold all.
-MOST_ROWS = 500
+SIZE = 1.08
+"""Of the charts beside the rows: their type as large as the page's."""
 
 
 def choose_view() -> None:
     if (bench := ready()) is None:
         return
-    result = session.ranking(bench)
-    if result is None:
+    contest = session.contest(bench)
+    if contest is None:
         return
+    chosen_before()
     left, right = st.columns([1.54, 1], gap="medium")
     with left:
-        session.title(f"{pieces.plain(choose_shown.choose_heading(result, bench))}")
-        row = ranked_rows(result) if result["rows"] else None
-        others(result)
-        cautions()
-    if row is not None:
+        found = ranked(contest, bench)
+    if found is not None:
         with right:
-            why(row, bench)
+            why(found[0], found[1], contest, bench)
 
 
-def ranked_rows(result: dict[str, Any]) -> dict[str, Any]:
-    rows = result["rows"][:MOST_ROWS]
-    places = answers.identities(rows)
-    start_at = places.index(st.session_state.chosen) if st.session_state.chosen in places else 0
-    order = hashlib.sha256(repr(places).encode()).hexdigest()[:12]
+def chosen_before() -> None:
+    """What was chosen when the page was last open."""
+    if st.session_state.chosen is None and (kept := session.slot("selection").get("part")):
+        st.session_state.chosen = tuple(kept)
+
+
+def choose(identity: answers.Identity) -> None:
+    """Make a part the chosen one, also after a reload."""
+    if st.session_state.chosen == identity:
+        return
+    st.session_state.chosen = identity
+    session.put_slot("selection", {**session.slot("selection"), "part": list(identity)})
+
+
+def ranked(contest: Ranked, bench: Bench) -> tuple[Candidate, Sifted] | None:
+    """The heading, the filters and the rows; returns the chosen row and all that the filters leave."""
+    nearest = answers.tightest_text(contest.row(1)) if len(contest) else ""
+    session.title(pieces.plain(choose_shown.choose_heading(contest.briefs, bench, nearest)))
+    every = choosing.candidates(contest.briefs, session.slot("supply"))
+    parts = sum(len(sheet.parts) for sheet in session.sheets())
+    if not every:
+        other_parts(contest, parts, open_at_once=True)
+        return None
+    filters = asked()
+    filter_line(
+        filters, every, choose_shown.offered_text(len(every), parts, bench), lambda: other_parts(contest, parts)
+    )
+    weights_line(filters)
+    sifted = choosing.sift(every, filters, weights())
+    if said := choosing.left_out_text(sifted, len(every)):
+        limits = choosing.limits_text(filters, sifted.currency)
+        st.markdown(f":gray[:small[{pieces.plain(said + (f' ({limits})' if limits else ''))}.]]")
+    if not sifted.shown:
+        st.markdown("No part passes these filters. Take one back to see the others.")
+        return None
+    picked = rows(sifted, contest)
+    actions(sifted, contest)
+    to_ask(contest)
+    cautions()
+    return picked, sifted
+
+
+def rows(sifted: Sifted, contest: Ranked) -> Candidate:
+    """The page of rows in view; returns the chosen one, which may stand on another page."""
+    places = answers.identities([one.row for one in sifted.shown])
+    if st.session_state.chosen not in places:
+        choose(places[0])
+    page = page_in_view(places)
+    here = slice(page * choose_shown.PAGE_ROWS, (page + 1) * choose_shown.PAGE_ROWS)
+    shown = [whole(one, contest) for one in sifted.shown[here]]
+    at = places[here].index(st.session_state.chosen) if st.session_state.chosen in places[here] else None
+    frame = choose_shown.rank_frame(shown, session.palette())
+    order = hashlib.sha256(repr((places[here], list(frame.columns))).encode()).hexdigest()[:12]
     column = st.column_config
     picked = st.dataframe(
-        choose_shown.rank_frame(rows, session.palette()),
+        frame,
         hide_index=True,
         row_height=44,
-        height=min(38 + 44 * len(rows), 610),
+        height=min(38 + 44 * len(shown), 610),
         on_select="rerun",
         selection_mode="single-row",
-        selection_default=session.first_row(start_at),
+        selection_default=None if at is None else session.first_row(at),
         key=f"ranked_{order}",
         alt="Candidates in order, with their verdicts",
         column_config={
@@ -61,65 +109,158 @@ def ranked_rows(result: dict[str, Any]) -> dict[str, Any]:
             "Part": column.TextColumn(width=134),
             "Verdict": column.TextColumn(width=92),
             "Look": column.TextColumn(width=46),
-            "Times over: 1 is the line": column.ImageColumn(width=204),
+            choose_shown.STRIP_COLUMN: column.ImageColumn(width=204),
             "Tightest": column.TextColumn(width=168),
         },
     )
-    at = session.selected_row(picked, len(rows))
-    st.session_state.chosen = places[at]
-    legend = f"{choose_shown.strips_legend(rows)} {choose_shown.shown_of(len(result['rows']), len(rows))}"
-    st.markdown(f":gray[:small[{legend}]]")
-    save_ranking(result["rows"], rows)
-    row: dict[str, Any] = rows[at]
-    return row
+    if chosen := list(picked.selection.rows):
+        choose(places[here][chosen[0]])
+    turn_pages(page, len(places))
+    st.markdown(f":gray[:small[{choose_shown.strips_legend([one.row for one in shown])}]]")
+    return whole(sifted.shown[places.index(st.session_state.chosen)], contest)
 
 
-def save_ranking(rows: list[dict[str, Any]], shown: list[dict[str, Any]]) -> None:
-    """The rows shown, with what was asked, for the clipboard; all there is as files, made when they are asked for."""
+def whole(one: Candidate, contest: Ranked) -> Candidate:
+    """The candidate with its row's sentences."""
+    return Candidate(contest.row(one.row["place"]), one.supply)
 
-    def workbook() -> bytes:
-        return export.as_xlsx({"ranking": export.rank_table(rows), "sources": export.sources_table(rows)})
 
+def page_in_view(places: list[answers.Identity]) -> int:
+    """The page that was turned to; where the rows changed since, the one with the chosen row."""
+    state = st.session_state
+    order = hash(tuple(places))
+    if state.get("rows_order") != order:
+        state.rows_order, state.rows_page = order, choose_shown.page_of(places, state.chosen)
+    return int(state.rows_page)
+
+
+def turn_pages(page: int, count: int) -> None:
+    if not (said := choose_shown.page_text(page, count)):
+        return
+    last = (count - 1) // choose_shown.PAGE_ROWS
     with st.container(horizontal=True, vertical_alignment="center", gap="small"):
-        html = "<button>Copy table</button>"
-        copy = st.components.v2.component("quartzfolio_copy", html=html, js=COPY, css=COPY_LOOK)
-        copy(data=export.as_tabs(export.rank_table(shown, answers.STRIPS)), key="copy_ranking", width="content")
-        st.download_button("Save .xlsx", workbook, "ranking.xlsx", key="save_xlsx", on_click="ignore")
-        st.download_button(
-            "Save .csv",
-            lambda: export.as_csv(export.rank_table(rows)),
-            "ranking.csv",
-            key="save_csv",
-            on_click="ignore",
-        )
+        st.button("First", key="rows_first", disabled=page == 0, on_click=turn_to, args=(0,))
+        st.button("Earlier", key="rows_before", disabled=page == 0, on_click=turn_to, args=(page - 1,))
+        st.markdown(f":gray[{said}]", width="content")
+        st.button("Later", key="rows_after", disabled=page == last, on_click=turn_to, args=(page + 1,))
 
 
-def why(row: dict[str, Any], bench: Bench) -> None:
-    """The chosen row's reasons: the large slack chart, the reasons in words, ppm against load."""
-    session.section(f"{pieces.plain(choose_shown.place_heading(row))}")
-    review = review_of(row, bench)
+def turn_to(page: int) -> None:
+    st.session_state.rows_page = page
+
+
+def actions(sifted: Sifted, contest: Ranked) -> None:
+    """Copy what is in view; save all that is shown, the filters applied."""
+    view = [whole(one, contest) for one in in_view(sifted)]
+    approvals = approval.by_candidate(session.slot("decisions"))
+
+    def table(of: Sequence[Candidate], numbers: Iterable[str]) -> export.Table:
+        said = [approvals.get(part_key(one.row), "") for one in of]
+        return export.rank_table([o.row for o in of], numbers, supplies=[o.supply for o in of], approvals=said)
+
+    def tables() -> dict[str, export.Table]:
+        long = len(sifted.shown) > export.MOST_SOURCED
+        every = [Candidate(contest.row(one.row["place"], whole=not long), one.supply) for one in sifted.shown]
+        first = [whole(one, contest).row for one in sifted.shown[: export.MOST_SOURCED]]
+        return {
+            "ranking": table(every, answers.FIGURES),
+            "numbers": export.numbers_table(first),
+            "sources": export.sources_table(session.sheets(), first),
+            "decisions": approval.table(session.slot("decisions")),
+        }
+
+    def result() -> dict[str, Any]:
+        told = contest.result()
+        return {**told, "notes": [*notes_of(session.sheets()), *told["notes"]]}
+
+    save_buttons("ranking", table(view, answers.STRIPS), tables, result, key="ranking")
+    supply_editor(view, sifted.shown)
+
+
+def in_view(sifted: Sifted) -> list[Candidate]:
+    page = int(st.session_state.rows_page)
+    return sifted.shown[page * choose_shown.PAGE_ROWS : (page + 1) * choose_shown.PAGE_ROWS]
+
+
+def other_parts(contest: Ranked, parts: int, *, open_at_once: bool = False) -> None:
+    """What is not among the rows, and what the bench leaves open, one press away."""
+    lines = choose_shown.other_lines(contest.notes)
+    if not lines:
+        return
+    label = choose_shown.others_label(len(contest), parts) or "Notes"
+    place = st.container() if open_at_once else st.popover(label, type="tertiary", key="others")
+    with place:
+        for line in lines:
+            st.markdown(f"- {pieces.plain(line)}")
+
+
+def to_ask(contest: Ranked) -> None:
+    """Ready questions about the parts that cannot be told, best first."""
+    untold = [row["place"] for row in contest.briefs if row["verdict"] == "cannot tell"]
+    asks = choose_shown.to_ask([contest.row(place) for place in untold[:8]])
+    if not asks:
+        return
+    session.section(choose_shown.ask_heading(len(untold)))
+    for number, (part, question) in enumerate(asks):
+        with st.container(horizontal=True, vertical_alignment="center", gap="small"):
+            st.markdown(f"**{pieces.plain(part)}**: “{pieces.plain(question)}”", width="stretch")
+            copy_button(question, key=f"ask_{number}", label="Copy")
+
+
+def why(picked: Candidate, sifted: Sifted, contest: Ranked, bench: Bench) -> None:
+    """The chosen row's reasons: the slack chart, the reasons in words, ppm against load, what would help."""
+    session.section(pieces.plain(choose_shown.place_heading(picked.row)))
+    above(picked, sifted, contest)
+    review = review_of(dict(picked.row), bench)
     if review is None:
         return
-    if said := answers.chosen_text(row):
+    if said := answers.chosen_text(picked.row):
         st.markdown(f":gray[{pieces.plain(said)}]")
-    slack_chart(review, bench)
+    picture(charts.slack_chart(answers.slack_rows(review, bench)).draw(session.palette()), key="slack", widest=SIZE)
+    st.markdown(":gray[:small[▮ worst case · ○ nominal · hatched: not met · dotted: not known]]")
     reasons_of(review, bench)
-    for question in answers.question_lines(review):
-        st.markdown(f"Ask: “{pieces.plain(question)}”")
-    load_chart(review, bench)
+    load_chart(picked, contest)
     for line in answers.advice_lines(review)[:1]:
         st.markdown(line)
-    if st.button("Review this part", key="to_review", type="primary", shortcut="V"):
-        session.go("review")
+    onward(picked)
+    if known := choose_shown.supply_rows(picked):
+        figures(pieces.supply_html(known), key="supply")
+
+
+def above(picked: Candidate, sifted: Sifted, contest: Ranked) -> None:
+    """In a sentence why it stands above another row; the next one at first."""
+    state = st.session_state
+    places = [one.row["place"] for one in sifted.shown]
+    if picked.row["place"] not in places or len(places) < 2:
+        return
+    at = places.index(picked.row["place"])
+    near = [place for place in places[max(at - 40, 0) : at + 60] if place != picked.row["place"]]
+    following = places[at + 1] if at + 1 < len(places) else places[at - 1]
+    key = f"beside_{picked.row['place']}"
+    if state.setdefault(key, following) not in near:
+        state[key] = following
+    by_place = {one.row["place"]: one for one in sifted.shown}
+    with st.container(horizontal=True, vertical_alignment="center", gap="small"):
+        st.markdown("Beside", width="content")
+        other = st.selectbox(
+            "Beside which row",
+            near,
+            format_func=lambda place: choose_shown.place_heading(by_place[place].row),
+            key=key,
+            label_visibility="collapsed",
+        )
+    first, second = sorted((picked.row["place"], other), key=places.index)
+    upper, lower = (whole(by_place[place], contest) for place in (first, second))
+    st.markdown(pieces.plain(choosing.why_above(upper, lower, sifted, asked().by, weights())))
 
 
 def reasons_of(review: answers.Row, bench: Bench) -> None:
     """The reasons that decide in full; those that meet a step away."""
-    rows = review_shown.judged(review, bench)
-    deciding = [one for one in rows if not one.meets]
+    judged = review_shown.judged(review, bench)
+    deciding = [one for one in judged if not one.meets]
     for one in deciding:
         st.markdown(f"{one.verdict[0]} **{pieces.plain(one.requirement)}**: {pieces.plain(one.why)}")
-    met = [one for one in rows if one.meets]
+    met = [one for one in judged if one.meets]
     if not met:
         return
     with st.expander(f"Why the other {len(met)} meet" if deciding else f"Why all {len(met)} meet"):
@@ -127,26 +268,30 @@ def reasons_of(review: answers.Row, bench: Bench) -> None:
             st.markdown(f":small[▲ **{pieces.plain(one.requirement)}**: {pieces.plain(one.why)}]")
 
 
-def slack_chart(review: answers.Row, bench: Bench) -> None:
-    rows = tuple(answers.slack_rows(review, bench))
-    chart = charts.specification(charts.slack_chart, rows, session.palette())
-    alt = "How many times over each requirement is met"
-    st.vega_lite_chart(spec=chart, theme=None, width="content", key="slack", alt=alt)
-    st.markdown(":gray[:small[▮ worst case · ○ nominal · hatched: not met · dotted: not known]]")
-
-
-def load_chart(review: answers.Row, bench: Bench) -> None:
-    offers = find_offers(answers.sheets_of(review, session.sheets()), bench).offers
-    offer = next((one for one in offers if one.part.package == review["package"]), None)
-    if offer is None:
+def load_chart(picked: Candidate, contest: Ranked) -> None:
+    if contest.reckoning is None:
         return
-    rated = review["chosen"].get("load_capacitance_pf", offer.load.span.mid if offer.load.stated else None)
-    pull = review_shown.load_pull(review, bench, rated, series=offer.series)
-    if pull is None:
-        return
-    session.section("ppm against load")
-    chart = charts.specification(charts.load_chart, pull, session.palette())
-    alt = "Frequency shift in ppm against load in pF"
-    st.vega_lite_chart(spec=chart, theme=None, width="content", key="load", alt=alt)
+    curve = curves.ppm_against_load(contest.reckoning, contest.ordered[picked.row["place"] - 1])
+    chart = charts.load_chart(curve)
+    session.section(chart.title)
+    picture(chart.draw(session.palette()), key="load", widest=SIZE)
     with st.expander("The same as a table"):
-        st.dataframe(charts.load_table(pull), hide_index=True, key="load_table", alt="Shift at nine loads")
+        heads, table = chart.table
+        st.dataframe(
+            dict(zip(heads, zip(*table, strict=True), strict=True)), hide_index=True, key="load_table", alt=chart.title
+        )
+
+
+def onward(picked: Candidate) -> None:
+    """The three ways on from the chosen part."""
+    with st.container(horizontal=True, gap="small"):
+        if st.button("Review this part", key="to_review", type="primary", shortcut="V"):
+            session.go("review")
+        if st.button("Find substitutes for it", key="to_substitute", shortcut="J"):
+            kept: dict[str, Any] = dict(session.slot("selection"))
+            kept.pop("candidate", None)
+            session.put_slot("selection", {**kept, "incumbent": list(st.session_state.chosen)})
+            session.go("substitute")
+        if st.button("Its sheet", key="to_its_sheet", shortcut="S"):
+            show_sheet(picked.row["file"])
+            session.go("sheets")

@@ -11,7 +11,7 @@ import streamlit as st
 
 from compare import evidence
 from compare.bench import Bench
-from compare.ranking import Ranked, rank_sheets
+from compare.ranking import Ranked
 from compare.work import OpenSheet, Work
 from extract.model import SpecSheet, Where
 
@@ -34,6 +34,8 @@ def ranked(key: str, _sheets: Sequence[SpecSheet], _bench: Bench) -> dict[str, A
 
 @st.cache_resource(max_entries=8, show_spinner="Ranking …")
 def contested(key: str, _sheets: Sequence[SpecSheet], _bench: Bench) -> Ranked:  # noqa: ARG001
+    from compare.ranking import rank_sheets
+
     return rank_sheets(_sheets, _bench)
 
 

@@ -2,30 +2,42 @@
 
 from __future__ import annotations
 
+from collections.abc import Callable, Mapping
 from typing import Any
 
 import streamlit as st
 
-from compare import answers, pieces
+from compare import answers, export, pieces
 from compare import page_session as session
 from compare.bench import Bench
 from compare.cautions import CAUTIONS
 from compare.desk import NO_CIRCUIT, NO_PARTS, NOTHING_OPEN, PRIVACY, field_of
+from compare.export import DECIMAL_MARKS, SEPARATORS, Table
+from compare.page_copy import copy_button, figures
+
+__all__ = ["copy_button", "figures"]
+
+
+def something_open() -> bool:
+    """True where there is any part; else what to do is said."""
+    if any(sheet.parts for sheet in session.sheets()):
+        return True
+    session.title("Nothing to rank yet")
+    st.markdown(NO_PARTS if session.sheets() else NOTHING_OPEN)
+    with st.container(horizontal=True, gap="small"):
+        if st.button("Add sheets", key="to_sheets", type="primary"):
+            session.go("sheets")
+        if st.button("Open the orchard example", key="orchard_here"):
+            session.open_example()
+            st.rerun()
+    return False
 
 
 def ready() -> Bench | None:
     """The bench, where there is something to judge; else what to do is said and None is returned."""
-    desk = session.desk()
-    if not any(sheet.parts for sheet in session.sheets()):
-        session.title("Nothing to rank yet")
-        st.markdown(NO_PARTS if session.sheets() else NOTHING_OPEN)
-        with st.container(horizontal=True, gap="small"):
-            if st.button("Add sheets", key="to_sheets", type="primary"):
-                session.go("sheets")
-            if st.button("Open the orchard example", key="orchard_here"):
-                session.open_example()
-                st.rerun()
+    if not something_open():
         return None
+    desk = session.desk()
     for key, fault in desk.faults.items():
         st.html(pieces.fault_html(f"{field_of(key).label if key else 'Circuit'}: not used. {fault}"))
     if desk.bench is None:
@@ -52,3 +64,51 @@ def review_of(row: dict[str, Any], bench: Bench) -> answers.Row | None:
     own = answers.sheets_of(row, session.sheets())
     result = session.guarded("working the part out", lambda: session.reviewed(session.key_of(bench, own), own, bench))
     return None if result is None else answers.review_for(row, result["reviews"])
+
+
+def show_sheet(file: str) -> None:
+    """Have the Sheets view open at a file."""
+    for one in session.work().sheets:
+        if one.sheet.file == file:
+            st.session_state.sheet = one.key
+
+
+def save_buttons(
+    name: str,
+    copied: Table,
+    tables: Callable[[], Mapping[str, Table]],
+    result: Callable[[], Mapping[str, Any]],
+    *,
+    key: str,
+) -> None:
+    """Copy the table in view; save all there is as workbook, CSV or JSON, made when it is asked for.
+
+    The first of `tables` is the one that the CSV holds; `result` is the data contract's JSON.
+    """
+    separator, decimal = csv_signs()
+    with st.container(horizontal=True, vertical_alignment="center", gap="small"):
+        copy_button(export.as_tabs(copied, decimal), key=f"copy_{key}")
+        st.download_button(
+            "Save .xlsx", lambda: export.as_xlsx(tables()), f"{name}.xlsx", key=f"xlsx_{key}", on_click="ignore"
+        )
+        st.download_button(
+            "Save .csv",
+            lambda: export.as_csv(next(iter(tables().values())), separator, decimal),
+            f"{name}.csv",
+            key=f"csv_{key}",
+            on_click="ignore",
+        )
+        st.download_button(
+            "Save .json", lambda: export.as_json(result()), f"{name}.json", key=f"json_{key}", on_click="ignore"
+        )
+        with st.popover("CSV signs"):
+            st.selectbox("Decimal mark", list(DECIMAL_MARKS), key="decimal_mark", persist_state="session")
+            st.selectbox("Between columns", list(SEPARATORS), key="separator", persist_state="session")
+            st.markdown(":gray[:small[A decimal comma always takes the semicolon. The mark holds for copies too.]]")
+
+
+def csv_signs() -> tuple[str, str]:
+    """Separator and decimal mark as chosen; a decimal comma cannot have a comma beside it."""
+    decimal = DECIMAL_MARKS[st.session_state.get("decimal_mark", "point")]
+    chosen = SEPARATORS[st.session_state.get("separator", "comma")]
+    return (SEPARATORS["semicolon"] if decimal == "," else chosen), decimal

@@ -19,6 +19,11 @@ def plain(text: str) -> str:
     return MARKDOWN.sub(r"\\\1", text)
 
 
+def bold(text: str) -> str:
+    """Text that markdown shows as it stands, but for the figures between ** and **."""
+    return "**".join(plain(piece) for piece in text.split("**"))
+
+
 def style(palette: Palette) -> str:
     """The page's own rules, in the colours of its theme."""
     colours = "".join(f"--qf-{one.name.replace('_', '-')}:{getattr(palette, one.name)};" for one in fields(palette))
@@ -82,3 +87,21 @@ def look_html(text: str) -> str:
 def fault_html(text: str) -> str:
     """What is wrong with a field, under it."""
     return f'<p class="qf-fault" role="alert">▼ {escape(text)}</p>'
+
+
+def figure_html(shown: str, bare: str) -> str:
+    """A figure that copies itself without its unit; plain text where there is no number to copy."""
+    if not bare:
+        return escape(shown)
+    said = f"copy {bare}"
+    return f'<button class="qf-figure" data-copy="{escape(bare)}" title="{escape(said)}">{escape(shown)}</button>'
+
+
+def supply_html(rows: Sequence[tuple[str, str, str, str]]) -> str:
+    """What is known of a part's supply: name, value, and whence."""
+    body = "".join(
+        f'<tr><td>{escape(name)}</td><td class="n">{figure_html(value, bare)}</td>'
+        f'<td class="soft">{escape(whence)}</td></tr>'
+        for name, value, bare, whence in rows
+    )
+    return f'<table class="qf-table qf-supply"><tbody>{body}</tbody></table>'

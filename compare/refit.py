@@ -128,6 +128,17 @@ def with_circuit(bench: Bench, **keys: float) -> Bench:
     return bench.model_copy(update={"circuit": circuit})
 
 
+def with_changes(bench: Bench, changes: Sequence[Mapping[str, Any]]) -> Bench:
+    """The bench with the `changes` of a candidate (the data contract's section 6) made."""
+    for change in changes:
+        if change["what"] == "load capacitors":
+            first, second = change["to"]
+            bench = with_circuit(bench, input_capacitor_pf=first, output_capacitor_pf=second)
+        else:
+            bench = with_circuit(bench, series_resistor_ohm=change["to"])
+    return bench
+
+
 def relaxed(bench: Bench, excuses: Sequence[str]) -> Bench:
     """The bench without what is excused, so that the search for capacitors does not wait for it."""
     keys: dict[str, Any] = {}

@@ -187,10 +187,17 @@ def taken_value(field: str, taken: Taken) -> dict[str, Any] | None:
         text = f"{figure(mid)} {unit}".rstrip() + (
             f" ({figure(low)} to {figure(high)}, derived)" if low != high else ""
         )
-        return {"min": low, "typ": mid, "max": high, "options": [], "text": text}
+        return {"min": low, "typ": mid, "max": high, "options": [], "text": text, "taken": _taken(taken.span)}
     value = reading_value(taken.readings[0])
     if len(taken.readings) > 1:
         value["text"] = "; ".join(dict.fromkeys(reading_words(r) for r in taken.readings[:3]))
     if value["options"]:
         value["text"] = f"{figure(taken.span.high)} {unit} of {value['text']}"
-    return {**value, "text": f"{value['text']} ({'; '.join(dict.fromkeys(str(r.where) for r in taken.readings[:2]))})"}
+    places = "; ".join(dict.fromkeys(str(r.where) for r in taken.readings[:2]))
+    return {**value, "text": f"{value['text']} ({places})", "taken": _taken(taken.span)}
+
+
+def _taken(span: Span) -> dict[str, float | None]:
+    """The ends that count, an open one as None: of options the one that was taken."""
+    ends = {"low": span.low, "mid": span.mid, "high": span.high}
+    return {name: value if math.isfinite(value) else None for name, value in ends.items()}
