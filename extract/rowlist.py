@@ -16,6 +16,7 @@ from typing import TypeVar
 
 from extract import plausible, trace
 from extract.attributes import attributes_of
+from extract.bandrows import merged_row_drafts
 from extract.candidates import Candidate
 from extract.documents.grid import TextRow
 from extract.drafts import Draft
@@ -54,6 +55,8 @@ def long_list(listing: Listing) -> LongList | None:
     columns = columns_of(listing)
     numbers = [column for column in columns if column.use == "part_number"]
     if len(numbers) != 1 or numbers[0].when.temperature_c is not None or not lists_parts(listing, columns):
+        return None
+    if merged_row_drafts(listing, columns):
         return None
     return LongList(listing, columns, numbers[0])
 
