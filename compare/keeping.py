@@ -13,7 +13,7 @@ import secrets
 import shutil
 import sys
 import tempfile
-from collections.abc import Mapping
+from collections.abc import Mapping, Sequence
 from dataclasses import dataclass
 from datetime import datetime
 from pathlib import Path
@@ -69,8 +69,10 @@ def folder_of(ident: str) -> Path:
 def keep(ident: str, work: Work, history: History) -> str:
     """Write what changed; returns when. OSError where the folder cannot be written."""
     folder = folder_of(ident)
-    (folder / "sheets").mkdir(mode=0o700, parents=True, exist_ok=True)
-    (folder / "files").mkdir(mode=0o700, exist_ok=True)
+    # Parents that `mkdir` makes on its way have no mode of their own: each is made by itself.
+    folder.parent.mkdir(mode=0o700, parents=True, exist_ok=True)
+    for each in (folder, folder / "sheets", folder / "files"):
+        each.mkdir(mode=0o700, exist_ok=True)
     for one in _every_sheet(work, history):
         keep_sheet(folder, one)
     saved = now()
@@ -120,7 +122,18 @@ def recall(ident: str) -> Reopened | None:
         members = {path.relative_to(folder).as_posix(): path.read_bytes() for path in found}
     except OSError as fault:
         raise FolioError(f"{folder}: cannot be read: {(fault.strerror or str(fault)).lower()}") from None
-    return reopen(members, "the work kept on this machine")
+    reopened = reopen(members, "the work kept on this machine")
+    _sweep(folder, _every_sheet(reopened.work, reopened.history))
+    return reopened
+
+
+def _sweep(folder: Path, needed: Sequence[OpenSheet]) -> None:
+    """Remove the sheets that neither the work nor an undo needs any more."""
+    names = {sheet_member(one) for one in needed} | {f"files/{one.sheet.sha256}" for one in needed}
+    for kind in ("sheets", "files"):
+        for path in (folder / kind).glob("*"):
+            if f"{kind}/{path.name}" not in names:
+                path.unlink(missing_ok=True)
 
 
 def kept_works() -> list[Kept]:

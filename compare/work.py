@@ -17,7 +17,7 @@ from compare.desk import Desk
 from extract.model import Part, SpecSheet
 
 # Each circuit has its own; the other slots belong to the work as a whole.
-OF_A_CIRCUIT = ("filters", "weights", "measured", "decisions", "selection")
+OF_A_CIRCUIT = ("filters", "weights", "measured", "decisions", "selection", "report")
 OF_THE_WORK = ("supply", "notes")
 SLOTS = (*OF_THE_WORK, *OF_A_CIRCUIT)
 MOST_STEPS = 100
@@ -82,9 +82,10 @@ class Work:
 
     def with_slot(self, name: str, value: Any) -> Work:
         """The same with `value` under `name`; None or an empty mapping takes it away."""
-        others = {key: kept for key, kept in self.slots.items() if key != self._place(name)}
+        place = self._place(name)
+        others = {key: kept for key, kept in self.slots.items() if key != place}
         empty = value is None or value in ({}, [])
-        return replace(self, slots=others if empty else {**others, self._place(name): value})
+        return replace(self, slots=others if empty else {**others, place: value})
 
     def _place(self, name: str) -> str:
         if name not in SLOTS:
