@@ -8,6 +8,7 @@ offer; a whole offer, with its places on the sheet, is made only for a row that 
 from __future__ import annotations
 
 from collections.abc import Callable, Mapping, Sequence
+from dataclasses import replace
 from typing import Any, Self
 
 import numpy as np
@@ -30,11 +31,10 @@ from compare.offer import (
     tightest,
     with_load,
 )
-from compare.stated import Facts, Taken, rated_drive, take
+from compare.stated import Case, Facts, Taken, rated_drive, take
 from extract.model import Reading, SpecSheet, When
-from extract.partlist import PartList
+from extract.partlist import Identity, PartList
 
-NOWHERE = When()
 KEPT = 128
 """Whole offers that are kept for who asks again."""
 Said = list[tuple[str | None, str]]
@@ -97,8 +97,11 @@ class Listed(Lot):
         """By row of the list."""
         self._made: dict[int, Offer] = {}
         self._columns: dict[str, Coded[Any]] = {}
+        self._conditions: dict[str, bool] = {}
         self._index = {name: np.asarray(stated.index)[rows] for name, stated in parts.stated.items()}
-        self._identity = np.asarray(parts.identity.index)[rows]
+        known: dict[Identity, int] = {}
+        codes = np.array([known.setdefault(one, len(known)) for one in parts.identity.distinct], dtype=int)
+        self._identities, self._identity = list(known), codes[np.asarray(parts.identity.index)[rows]]
 
     def __len__(self) -> int:
         return len(self._rows)
@@ -132,15 +135,16 @@ class Listed(Lot):
         return self._columns[name]
 
     def at(self, setting: int, name: str) -> Coded[Taken]:
-        key = f"{name} at {setting}"
+        # What is stated without a condition is taken alike at any temperature.
+        temperature = self._bench.settings[setting].temperature_c if self._has_conditions(FIELDS_AT[name]) else None
+        key = f"{name} at {temperature}"
         if key not in self._columns:
-            temperature = self._bench.settings[setting].temperature_c
             self._columns[key] = self._at(name, temperature)
         return self._columns[key]
 
     def _at(self, name: str, temperature_c: float | None) -> Coded[Taken]:
         if name == "fundamental_esr":
-            return self._field("esr_ohm", fundamental_esr, always=True)
+            return self._field("esr_ohm", lambda facts, case: _fundamental_at(facts, case, temperature_c), always=True)
         field = FIELDS_AT[name]
         return self._field(field, lambda facts, case: take_at(facts, field, case, temperature_c))
 
@@ -169,7 +173,7 @@ class Listed(Lot):
 
     def _facts(self, at: int, *fields: str) -> Facts:
         """What the row says of some fields, its places left out."""
-        who = self._parts.identity.distinct[self._identity[at]]
+        who = self._identities[self._identity[at]]
         stated = self._parts.stated
         said = {name: stated[name].templates[self._index[name][at]] for name in fields if name in self._index}
         return Facts(who.package, who.mode, who.cut, who.resonance, said)
@@ -187,9 +191,10 @@ class Listed(Lot):
         return Coded(values, which)
 
     def _has_conditions(self, field: str) -> bool:
-        if field not in self._index:
-            return False
-        return any(r.when != NOWHERE for readings in self._parts.stated[field].templates for r in readings)
+        if field not in self._conditions:
+            templates = self._parts.stated[field].templates if field in self._index else ()
+            self._conditions[field] = any(_asks(r.when) for readings in templates for r in readings)
+        return self._conditions[field]
 
     def _stability(self) -> Coded[Any]:
         """(stability, its band of temperature, the same at its loosest option)."""
@@ -203,11 +208,21 @@ class Listed(Lot):
             tight, loose = tightest(taken, {})
             return tight, band, loose
 
-        hangs_on = [self.column("fork").codes]
+        hangs_on = [self.column("fork").array(int, int)]
         if self._has_conditions(field):
             hangs_on = [settled.codes, operating.codes]
         first, which = distinct(codes, *hangs_on)
         return Coded([of(at) for at in first.tolist()], which)
+
+
+def _fundamental_at(facts: Facts, case: Case, temperature_c: float | None) -> Taken:
+    return fundamental_esr(facts, case if temperature_c is None else replace(case, temperature_c=temperature_c))
+
+
+def _asks(when: When) -> bool:
+    """Whether the case decides if a reading holds; the years of ageing are no part of it."""
+    bands = when.frequency_mhz, when.load_capacitance_pf, when.temperature_c
+    return any(band is not None for band in bands) or when.mode is not None or when.package is not None
 
 
 def _of_settled(of: Callable[[Settled], Any]) -> Callable[[Listed], Coded[Any]]:
@@ -230,11 +245,16 @@ def _of_field(field: str, of: Callable[[Listed, Facts, Any], Any]) -> Callable[[
 
 
 def _cut(lot: Listed) -> Coded[Any]:
-    identity = Coded(lot._parts.identity.distinct, lot._identity)  # noqa: SLF001
+    identity = Coded(lot._identities, lot._identity)  # noqa: SLF001
     return together(lambda fork, who: "tuning fork" if fork else who.cut, lot.column("fork"), identity)
 
 
-FIELDS_AT = {"esr": "esr_ohm", "shunt": "shunt_capacitance_pf"} | {key: name for name, key in C1_FROM.items()}
+FIELDS_AT = {
+    "esr": "esr_ohm",
+    "fundamental_esr": "esr_ohm",
+    "shunt": "shunt_capacitance_pf",
+    **{key: name for name, key in C1_FROM.items()},
+}
 MAKERS: dict[str, Callable[[Listed], Coded[Any]]] = {
     "settled": Listed._settled,  # noqa: SLF001
     "load": _of_settled(lambda one: one.load),

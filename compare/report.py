@@ -61,6 +61,8 @@ NUMBERS = {
 
 def display_width(text: str) -> int:
     """Columns that the text takes in a terminal: two for a wide character, none for a combining one."""
+    if text.isascii():
+        return len(text)
     wide = sum(unicodedata.east_asian_width(c) in "WF" for c in text)
     return len(text) + wide - sum(unicodedata.combining(c) != 0 for c in text)
 
