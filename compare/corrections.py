@@ -6,13 +6,14 @@ of the reading in that part. Added readings follow on behind those of the sheet.
 
 from __future__ import annotations
 
-from collections.abc import Iterable, Sequence
-from dataclasses import dataclass
+from collections.abc import Iterable, Mapping, Sequence
+from dataclasses import dataclass, replace
 from typing import Literal, Self
 
 from pydantic import BaseModel, ConfigDict, model_validator
 
 from extract.model import Part, Reading, SpecSheet
+from extract.plausible import doubts
 
 What = Literal["value", "added", "not on the sheet", "as read", "fact"]
 FACTS = ("part_number", "maker", "package", "mode", "cut", "resonance")
@@ -96,6 +97,25 @@ def corrected_part(part: Part, corrections: Sequence[Correction]) -> Part:
     return part.model_copy(update={**facts(corrections), "readings": readings})
 
 
+def _doubted_anew(part: Part, every: list[Line], words: Mapping[str, str | None]) -> list[Line]:
+    """The lines with what the readings say of one another looked at once more: a correction of C0 can clear C1's doubt.
+
+    What a person entered or settled has no doubt; what the reader doubted for another cause keeps it.
+    """
+    counting = [line for line in every if line.now is not None]
+    before = doubts(part.readings, part.cut, part.mode)
+    now = [line.now for line in counting if line.now is not None]
+    after = doubts(now, words.get("cut", part.cut), words.get("mode", part.mode))
+    anew = {}
+    for place, line in enumerate(counting):
+        old, new = before.get(line.number), after.get(place)
+        if line.correction is None and line.now is not None and old != new:
+            others = (line.now.check or "").removesuffix(old or "").removesuffix("; ")
+            check = "; ".join(filter(None, (others, new))) or None
+            anew[line.number] = replace(line, now=line.now.model_copy(update={"check": check}))
+    return [anew.get(line.number, line) for line in every]
+
+
 def lines(part: Part, corrections: Sequence[Correction]) -> list[Line]:
     """Every reading of the part as read, and those added, each with what became of it; the part's own corrections."""
     last = {one.reading: one for one in corrections if one.reading is not None}
@@ -104,7 +124,8 @@ def lines(part: Part, corrections: Sequence[Correction]) -> list[Line]:
         for number, reading in enumerate(part.readings)
     ]
     added = [one for number, one in sorted(last.items()) if number >= len(part.readings) and one.new is not None]
-    return as_read + [Line(one.reading or 0, one.new, None, one) for one in added]
+    every = as_read + [Line(one.reading or 0, one.new, None, one) for one in added]
+    return _doubted_anew(part, every, facts(corrections)) if corrections else every
 
 
 def _now(read: Reading, last: Correction | None) -> Reading | None:

@@ -73,5 +73,4 @@ def not_here(one: OpenSheet) -> None:
         if fault:
             st.html(pieces.fault_html(fault))
         else:
-            st.session_state.whole_page = True
-            st.rerun(scope="fragment")
+            st.rerun()

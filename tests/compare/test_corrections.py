@@ -129,3 +129,39 @@ def test_a_review_of_the_corrected_sheet_reckons_with_the_entered_value_and_says
     assert after["margin"]["low"] / before["margin"]["low"] == pytest.approx(50 / 40, rel=1e-3)
     assert (before["to_check"], after["to_check"]) == (["esr_ohm"], [])
     assert "entered" in after["load_resonance_resistance_ohm"]["how"]
+
+
+def doubtful_pair(c0_raw):
+    """A part read with this C0; a thousandth of what it must be, the reader doubts it, and C1 beside it."""
+    from extract import read_sheet
+
+    return read_sheet(hand_made.MAIL.replace("C0 1.2 pF max", c0_raw).encode(), "offer.txt").parts[0]
+
+
+def test_a_correction_clears_the_doubt_that_hung_on_it():
+    part = doubtful_pair("C0 1.2 fF max")
+    by_field = {reading.field: number for number, reading in enumerate(part.readings)}
+    c0, c1 = by_field["shunt_capacitance_pf"], by_field["motional_capacitance_ff"]
+    assert "C0/C1" in part.readings[c1].check
+    new = hand_made.reading("shunt_capacitance_pf", "C0 1.2", max=1.2, status="entered")
+    one = Correction(sheet=KEY, part=0, reading=c0, what="value", new=new, was=part.readings[c0])
+    assert [reading.check for reading in corrected_part(part, [one]).readings] == [None] * len(part.readings)
+
+
+def test_an_entered_value_that_contradicts_another_makes_that_one_wait():
+    part = doubtful_pair("C0 1.2 pF max")
+    by_field = {reading.field: number for number, reading in enumerate(part.readings)}
+    c0, c1 = by_field["shunt_capacitance_pf"], by_field["motional_capacitance_ff"]
+    # C0/C1 of 0.2 pF and 2.4 fF is 83; quartz of AT cut cannot go below 158 (coupling of 8.8 %).
+    new = hand_made.reading("shunt_capacitance_pf", "C0 0.2", max=0.2, status="entered")
+    now = corrected_part(part, [Correction(sheet=KEY, part=0, reading=c0, what="value", new=new)])
+    assert "C0/C1 of 83" in now.readings[c1].check
+    kept = Correction(sheet=KEY, part=0, reading=c1, what="as read", was=part.readings[c1])
+    again = corrected_part(part, [Correction(sheet=KEY, part=0, reading=c0, what="value", new=new), kept])
+    assert again.readings[c1].check is None
+
+
+def test_a_doubt_of_another_cause_stays():
+    part = hand_made.PART
+    one = Correction(sheet=KEY, part=0, reading=9, what="not on the sheet", was=hand_made.READINGS[9])
+    assert corrected_part(part, [one]).readings[ESR].check == hand_made.READINGS[ESR].check
