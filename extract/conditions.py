@@ -8,6 +8,7 @@ from extract import wording
 from extract.band import read_band, read_when
 from extract.fold import fold
 from extract.model import Pair, When
+from extract.number import PLAIN_NUMBER
 
 OF_ONE_FREQUENCY = (
     "esr_ohm",
@@ -25,7 +26,8 @@ def condition_of(text: str) -> When:
     folded = fold(text)
     if not folded or wording.not_stated(folded):
         return When()
-    found = read_when(folded)
+    # A number without a unit says nothing of where a value holds; it may be the code of a mode.
+    found = When() if PLAIN_NUMBER.fullmatch(folded) else read_when(folded)
     if found.mode is None and (mode := wording.mode_of(folded)) is not None:
         found = found.model_copy(update={"mode": mode})
     return found

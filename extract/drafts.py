@@ -136,7 +136,8 @@ def modes_in(text: str, *, codes: bool = False) -> frozenset[str]:
         wanted = key(run)
         if wanted in known and wanted not in _ORDINALS and len(wanted) >= 3:
             found.add(known[wanted])
-    found |= {mode for wanted, mode in known.items() if not wanted.isascii() and wanted in key(text)}
+    if not text.isascii():
+        found |= {mode for wanted, mode in known.items() if not wanted.isascii() and wanted in key(text)}
     return frozenset(found)
 
 
@@ -163,5 +164,6 @@ def cuts_in(text: str, *, whole: bool = False) -> frozenset[str]:
             found.add(known[wanted])
     if not found and (beside := _CUT_LETTERS.search(text)) and len(text) < SHORT and modes_in(text):
         found.add(known[key(beside[0])])
-    found |= {cut for wanted, cut in known.items() if not wanted.isascii() and wanted in key(text)}
+    if not text.isascii():
+        found |= {cut for wanted, cut in known.items() if not wanted.isascii() and wanted in key(text)}
     return frozenset(found)

@@ -12,6 +12,7 @@ from extract.entries import Bound
 from extract.fold import fold
 from extract.meaning import Meaning, is_part_token, meaning, part_tokens
 from extract.model import When
+from extract.number import PLAIN_NUMBER
 from extract.wording import Label
 
 BOUNDS: dict[str, Bound] = {"min": "min", "typ": "typ", "max": "max"}
@@ -52,9 +53,10 @@ class Head:
 def is_unit(text: str) -> bool:
     """Whether the whole text is a unit of some quantity ("kΩ", "(± ppm)", "ppm/pF")."""
     bare = _TRIM.sub("", fold(text))
-    if not bare or len(bare) > 16:
+    if not bare or len(bare) > 16 or PLAIN_NUMBER.fullmatch(bare):
         return False
-    return any((unit := kind.unit(bare)) is not None and unit.sort == "sizes" for kind in units.kinds().values())
+    spelling = units.spelling_of(bare)
+    return any((unit := kind.look_up(spelling)) is not None and unit.sort == "sizes" for kind in units.kinds().values())
 
 
 _CONDITION = re.compile(r"^(?P<name>[^\d±]*[^\d±\s(\[,@-])[\s(\[,@]+(?P<condition>[-+±]?\d.*)$", re.DOTALL)

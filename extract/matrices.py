@@ -18,6 +18,7 @@ Row = Sequence[Cell | None]
 STABILITY = "frequency_stability_ppm"
 _MARKS = re.compile(r"[O○●◎√✓✔Yy]|[Yy]es")
 _NONE = re.compile(r"(?i)[x×✕✗✘\-–—]+|n\s?/?\s?a|no")
+_SIZE = re.compile(r"±\s?\d")
 _MARK_LENGTH = 4
 LEAST = 2
 
@@ -29,6 +30,8 @@ def read_matrix(rows: Sequence[Row]) -> list[Entry]:
 
 
 def _upright(rows: Sequence[Row]) -> list[Entry]:
+    if not any(_sizes_in(row) >= LEAST for row in rows):
+        return []
     start = next((index for index, row in enumerate(rows) if len(_ranges_below(rows, index)) >= LEAST), 0)
     head = rows[start - 1] if start else ()
     sizes = {column: size for column, cell in enumerate(head) if column and cell is not None and (size := _size(cell))}
@@ -45,6 +48,11 @@ def _upright(rows: Sequence[Row]) -> list[Entry]:
     ]
 
 
+def _sizes_in(row: Row) -> int:
+    """How many cells beside the first begin as a size does."""
+    return sum(cell is not None and _SIZE.match(fold(cell.text)) is not None for cell in row[1:])
+
+
 def _ranges_below(rows: Sequence[Row], start: int) -> list[Row]:
     return [] if start == 0 or _range_of(rows[start]) is None else [row for row in rows[start:] if _range_of(row)]
 
@@ -59,7 +67,7 @@ def _range_of(row: Row) -> tuple[float, float] | None:
 
 def _size(cell: Cell) -> tuple[str, float] | None:
     """The text and the size of a head that is one ± and no more."""
-    if not re.match(r"±\s?\d", fold(cell.text)):
+    if not _SIZE.match(fold(cell.text)):
         return None
     found = read_values(cell.text, STABILITY, unit="ppm")
     return (cell.text, found[0].max) if len(found) == 1 and found[0].max is not None else None

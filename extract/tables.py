@@ -11,7 +11,7 @@ from collections.abc import Iterator, Sequence
 from dataclasses import dataclass, field, replace
 from itertools import pairwise
 
-from extract import trace
+from extract import trace, wording
 from extract.candidates import read
 from extract.documents.grid import TextRow
 from extract.documents.model import Cell, Table
@@ -216,15 +216,19 @@ def _is_series_load(cells: Sequence[Cell]) -> bool:
     label = meaning(cells[0].text).label
     if label is None or label.field != "load_capacitance_pf":
         return False
+    beside = meaning(cells[1].text).label if len(cells) > 1 else None
+    if beside is not None and (beside.unit or beside.bound):
+        # "ESR max. (kΩ)" is a head, even where its word for a series resistance is also that for resonance.
+        return False
     return any(value.series for cell in cells[1:2] for value in read(cell.text, label.field))
 
 
 def _column_name(text: str) -> str | None:
     """What a column under this heading would hold; None for a text that begins like a value or is nearly a label."""
-    head = interpret((text,))
-    if head.label is not None and not head.label.exact and meaning(text).value:
+    if fold(text)[:1] in _VALUE_STARTS:
         return None
-    return None if fold(text)[:1] in _VALUE_STARTS else head.name
+    head = interpret((text,))
+    return None if head.label is not None and not head.label.exact and meaning(text).value else head.name
 
 
 _VALUE_STARTS = frozenset("0123456789-+±≤≥<>~")
@@ -245,8 +249,21 @@ def _goes_on(rows: list[Row], start: int, index: int) -> bool:
         return True
     if any(cell.column_span > 1 for cell in distinct(above)) and is_head(row):
         return True
+    if _symbols_of(row, above):
+        return True
     first_empty = row[0] is None or not row[0].text.strip()
     return first_empty and all(is_part_token(cell.text) or meaning(cell.text).role for cell in own)
+
+
+def _symbols_of(row: Row, above: Row) -> bool:
+    """Whether most cells of a row are the symbols of the labels right above them ("Load capacitance" over "CL")."""
+    pairs = [
+        (label, cell.text)
+        for cell, over in zip(row, above, strict=False)
+        if cell is not None and over is not None and cell.text.strip() and (label := meaning(over.text).label)
+    ]
+    own = sum(label.field in (wording.symbol_of(text), *wording.ambiguous_label(text)) for label, text in pairs)
+    return own >= 2 and 2 * own >= len(distinct(row))
 
 
 def _short(cell: Cell) -> bool:

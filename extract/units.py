@@ -41,13 +41,14 @@ class Kind:
 
     def unit(self, printed: str) -> Unit | None:
         """The unit that `printed` is as a whole, in any case, with any spaces and brackets in it."""
-        return self.look_up(_spelling(printed))
+        return self.look_up(spelling_of(printed))
 
     def look_up(self, spelling: str) -> Unit | None:
         return self.exact.get(spelling) or self.caseless.get(spelling.casefold())
 
 
-def _spelling(printed: str) -> str:
+def spelling_of(printed: str) -> str:
+    """How a unit is looked up (`Kind.look_up`): folded, without spaces and brackets."""
     return "".join(char for char in fold(printed).translate(_TIMES) if char not in _DROPPED)
 
 
@@ -57,7 +58,7 @@ def _kind(name: str, table: dict[str, Any]) -> Kind:
     for sort in ("sizes", "bare", "guessed"):
         for size, spellings in table.get(sort, {}).items():
             for printed in spellings:
-                spelling, unit = _spelling(printed), Unit(name, float(size), sort)
+                spelling, unit = spelling_of(printed), Unit(name, float(size), sort)
                 if exact.setdefault(spelling, unit).to_base != unit.to_base:
                     raise ValueError(f"units.toml: {printed!r} has two sizes in [{name}]")
                 caseless.setdefault(spelling.casefold(), unit)
@@ -88,7 +89,7 @@ def _of_fields() -> frozenset[str]:
 
 def is_unit(text: str) -> bool:
     """Whether the whole text is a unit of some field, printed in any spelling."""
-    return bool(text) and len(text) < _LONGEST and _spelling(text).casefold() in _of_fields()
+    return bool(text) and len(text) < _LONGEST and spelling_of(text).casefold() in _of_fields()
 
 
 @lru_cache(maxsize=4096)
