@@ -406,6 +406,7 @@ class Use:
     what_it_must_hold: str
     evidence: bool
     note: str
+    sources: tuple[str, ...] = ()
 
 
 @cache
@@ -421,6 +422,7 @@ def uses() -> dict[str, Use]:
             what_it_must_hold=row["what_it_must_hold"],
             evidence=bool(row["sources"]),
             note=row.get("note", ""),
+            sources=tuple(source["title"] for source in row["sources"]),
         )
         for row in table["uses"]
     }

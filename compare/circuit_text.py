@@ -134,16 +134,29 @@ def _at_the_crystal(circuit: CircuitKeys, side: int) -> tuple[float, float, floa
     )
 
 
-def circuit_heading(bench: Bench | None) -> str:
-    """The Circuit view's answer in a sentence."""
+APART_PF = 0.05
+"""More than this between the sum and the steady load, and the heading carries the steady one."""
+
+
+def circuit_heading(bench: Bench | None, steady_pf: float | None = None) -> str:
+    """The Circuit view's answer in a sentence.
+
+    `steady_pf` is the load that the circuit presents with its resistors in the steady state, with some part in it.
+    """
     if bench is None:
         return "The circuit is not set yet"
     total = circuit_sum(bench)
-    return "The load is not known yet" if total is None else f"The circuit presents {total.mid:.2f} pF"
+    if total is None:
+        return "The load is not known yet"
+    return f"The circuit presents {_presented(total, steady_pf):.2f} pF"
 
 
-def sum_sentence(bench: Bench) -> str:
-    """The sum in words, with what is not in it."""
+def _presented(total: LoadSum, steady_pf: float | None) -> float:
+    return total.mid if steady_pf is None or abs(steady_pf - total.mid) <= APART_PF else steady_pf
+
+
+def sum_sentence(bench: Bench, steady_pf: float | None = None) -> str:
+    """The sum in words, with what is not in it, and by how much the losses shift it."""
     total = circuit_sum(bench)
     circuit = bench.settings[0].circuit
     if total is None:
@@ -159,7 +172,24 @@ def sum_sentence(bench: Bench) -> str:
     ahead = circuit.amplifier_output_pf + circuit.internal_at_each_pin_pf
     if circuit.series_resistor_ohm and ahead:
         said += f" {number(ahead)} pF at O lie ahead of the series resistor and are not in this sum."
-    return said + " Losses shift it a little: Review gives each part the load with them."
+    return f"{said} {_shifted(total, steady_pf)}"
+
+
+def _shifted(total: LoadSum, steady_pf: float | None) -> str:
+    if steady_pf is None:
+        return "Losses shift it a little: Review gives each part the load with them."
+    by = steady_pf - total.mid
+    if abs(by) <= APART_PF:
+        return f"With its losses the circuit presents {steady_pf:.2f} pF in the steady state."
+    return (
+        f"In the steady state it is {steady_pf:.2f} pF, {abs(by):.2f} pF {'less' if by < 0 else 'more'}: the resistors "
+        "and the crystal’s own R1 turn the phase, and oscillation settles where the whole loop is in phase."
+    )
+
+
+def sum_text(bench: Bench, steady_pf: float | None = None) -> str:
+    """The same as plain text."""
+    return sum_sentence(bench, steady_pf).replace("**", "")
 
 
 def taken_sentences(bench: Bench) -> list[str]:

@@ -1,4 +1,4 @@
-"""The command line: `quartzfolio extract | review | rank | substitute | changes | page`, exit statuses by the contract.
+"""The command line: `quartzfolio extract | review | rank | substitute | changes | report | page`, and exit statuses.
 
 Heavy imports stand inside the commands that need them, so that `--help` answers at once.
 """
@@ -12,10 +12,12 @@ import sys
 from collections.abc import Sequence
 from typing import TYPE_CHECKING, Any
 
+from compare.command_report import add_arguments
+
 if TYPE_CHECKING:
     from compare.bench import Bench
     from compare.intake import Intake
-    from extract.model import Note, SpecSheet
+    from extract.model import Note
 
 DONE, LOOK, WRONG_CALL, STOPPED = 0, 1, 2, 130
 
@@ -77,6 +79,7 @@ def _parser() -> argparse.ArgumentParser:
     rank = _command(commands, "rank", "the candidates for your circuit, best first, and why", _rank)
     _sheets(rank)
     _bench(rank)
+    rank.add_argument("--all", action="store_true", help="show every part, however long the list")
     swap = _command(commands, "substitute", "may these parts stand in for that one, on the board as built", _substitute)
     swap.add_argument(
         "incumbent", type=_name, metavar="INCUMBENT", help="the part on the board: its sheet, or FILE#PART_NUMBER"
@@ -89,6 +92,10 @@ def _parser() -> argparse.ArgumentParser:
     changed.add_argument("old", metavar="OLD", help="the earlier revision")
     changed.add_argument("new", metavar="NEW", help="the later one")
     _bench(changed, required=False)
+    report = _command(commands, "report", "the margin report of one part, to be checked and signed", _report)
+    _sheets(report)
+    _bench(report)
+    add_arguments(report)
     page = commands.add_parser("page", help="the same in the browser, on this machine only")
     page.add_argument("sheets", nargs="*", type=_name, metavar="SHEET", help="sheets or folders to open at once")
     page.add_argument("--bench", metavar="BENCH.toml", help="circuit and requirement to open at once")
@@ -214,13 +221,28 @@ def _rank(options: argparse.Namespace) -> int:
 
     bench = _read_bench(options.bench)
     intake = _read(options, options.sheets)
-    result = rank(intake.sheets, bench, shown=None if options.json else MOST_ROWS)
+    result = rank(intake.sheets, bench, shown=None if options.json or options.all else MOST_ROWS)
     _add_notes(result, intake)
     _print_json(result) if options.json else _print(rank_text(result))
     if intake.stopped:
         return _say_stopped(intake)
     readable = not any(_faults(sheet.notes) for sheet in intake.sheets) and not _faults(intake.notes)
     return DONE if result["rows"] and readable else LOOK
+
+
+def _report(options: argparse.Namespace) -> int:
+    from compare.command_report import ReportCallError, write_report
+
+    if options.json:
+        raise CallError("report: there is no JSON of it; `quartzfolio review --json` has the same numbers")
+    bench = _read_bench(options.bench)
+    intake = _read(options, options.sheets, whole=True)
+    try:
+        dossier = write_report(intake.sheets, bench, options)
+    except ReportCallError as fault:
+        raise CallError(str(fault)) from None
+    review = dossier.review
+    return DONE if review["verdict"] == "meets" and not review["to_check"] and not _faults(intake.notes) else LOOK
 
 
 def _substitute(options: argparse.Namespace) -> int:
@@ -321,16 +343,10 @@ def _faults(notes: Sequence[Note]) -> bool:
 
 def _add_notes(result: dict[str, Any], intake: Intake) -> None:
     """Put what was said about names and sheets in front of what the reckoning has to say."""
+    from compare.sheets_json import notes_of
+
     said = [note.model_dump(mode="json") for note in intake.notes]
-    result["notes"] = [*said, *(note for sheet in intake.sheets for note in _notes_of(sheet)), *result["notes"]]
-
-
-def _notes_of(sheet: SpecSheet) -> list[dict[str, Any]]:
-    return [
-        {**note.model_dump(mode="json"), "message": f"{sheet.file}: {note.message}"}
-        for note in sheet.notes
-        if note.level != "info"
-    ]
+    result["notes"] = [*said, *notes_of(intake.sheets), *result["notes"]]
 
 
 def _print_json(document: dict[str, Any]) -> None:

@@ -57,7 +57,7 @@ class Dot:
 
 @dataclass(frozen=True, slots=True)
 class Words:
-    """Text on its base line; `key` names the field that a press on it leads to."""
+    """Text on its base line; `key` names the field that a press leads to, `halo` is a colour kept free round it."""
 
     x: float
     y: float
@@ -67,6 +67,7 @@ class Words:
     size: float = 12
     bold: bool = False
     key: str = ""
+    halo: str = ""
 
 
 Mark = Line | Box | Dot | Words
@@ -130,8 +131,9 @@ class Pen:
         size: float = 12,
         bold: bool = False,
         key: str = "",
+        halo: str = "",
     ) -> None:
-        self.marks.append(Words(x, y, text, colour or self.ink, anchor, size, bold, key))
+        self.marks.append(Words(x, y, text, colour or self.ink, anchor, size, bold, key, halo))
 
 
 STEP = re.compile(r"([MLHVhZ])([^MLHVhZ]*)")
@@ -193,9 +195,10 @@ def _mark(mark: Mark) -> str:
         if mark.key
         else ""
     )
+    halo = f' stroke="{mark.halo}" stroke-width="3" stroke-linejoin="round" paint-order="stroke"' if mark.halo else ""
     return (
         f'<text x="{_number(mark.x)}" y="{_number(mark.y)}" text-anchor="{mark.anchor}" '
-        f'font-size="{_number(mark.size)}" fill="{mark.colour}"{weight}{pressed}>{escape(mark.text)}</text>'
+        f'font-size="{_number(mark.size)}" fill="{mark.colour}"{halo}{weight}{pressed}>{escape(mark.text)}</text>'
     )
 
 

@@ -119,11 +119,25 @@ def _words(mark: Words, canvas: Any, height: float) -> None:
     parts = runs(mark.text, bold=mark.bold)
     whole = sum(stringWidth(part, font, mark.size) for font, part in parts)
     x = mark.x - {"start": 0.0, "middle": whole / 2, "end": whole}[mark.anchor]
+    if mark.halo:
+        canvas.setStrokeColor(mark.halo)
+        canvas.setDash()
+        canvas.setLineWidth(3)
+        canvas.setLineJoin(1)
+        _stretch(canvas, parts, (x, height - mark.y, mark.size), outlined=True)
     canvas.setFillColor(mark.colour)
+    _stretch(canvas, parts, (x, height - mark.y, mark.size), outlined=False)
+
+
+def _stretch(canvas: Any, parts: list[tuple[str, str]], at: tuple[float, float, float], *, outlined: bool) -> None:
+    """Text in its typefaces; `outlined` leaves the mark of its halo and nothing that can be selected twice."""
+    from reportlab.pdfbase.pdfmetrics import stringWidth
+
+    x, y, size = at
     for font, part in parts:
-        canvas.setFont(font, mark.size)
-        canvas.drawString(x, height - mark.y, part)
-        x += stringWidth(part, font, mark.size)
+        canvas.setFont(font, size)
+        canvas.drawString(x, y, part, mode=1 if outlined else None)
+        x += stringWidth(part, font, size)
 
 
 def pdf(picture: Picture, background: str) -> bytes:

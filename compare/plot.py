@@ -207,7 +207,7 @@ class Plot:
             shift = min(0.0, self.width - 2 - box[2]) or max(0.0, 2 - box[0])
             x, box = x + shift, (box[0] + shift, box[1], box[2] + shift, box[3])
         self.taken.append(box)
-        self.pen.write(x, y, text, anchor, colour=colour, bold=bold)
+        self.pen.write(x, y, text, anchor, colour=colour, bold=bold, halo=self.palette.page)
 
     def _box(
         self, text: str, at: Point, place: str

@@ -4,13 +4,15 @@ from __future__ import annotations
 
 from collections.abc import Sequence
 from dataclasses import dataclass
-
-import pandas as pd
+from typing import TYPE_CHECKING
 
 from compare.circuit_text import temperatures
 from compare.figures import counted, exact, scale, spread
 from extract.fields import field_of
 from extract.model import Note, Part, Reading, SpecSheet, When, Where
+
+if TYPE_CHECKING:
+    import pandas as pd
 
 LOOK, SHORT = "☞", "▼"
 HOW = {"stated": "stated", "inferred": "∴ inferred", "entered": "✎ entered"}
@@ -50,6 +52,8 @@ def waiting(sheet: SpecSheet) -> int:
 
 def sheets_frame(sheets: Sequence[SpecSheet]) -> pd.DataFrame:
     """One row a sheet, in the order opened: file and outcome."""
+    import pandas as pd
+
     return pd.DataFrame([(short_name(sheet.file), _outcome(sheet)) for sheet in sheets], columns=["Sheet", "Outcome"])
 
 
