@@ -179,6 +179,25 @@ def lean(model: Lean) -> Lean:
     return model
 
 
+def made(model: type[Lean], values: dict[str, Any]) -> Lean:
+    """A model of values that are valid already, all its keys in their order, in a fifth of the time of a check."""
+    one = object.__new__(model)
+    object.__setattr__(one, "__dict__", values)
+    object.__setattr__(one, "__pydantic_extra__", None)
+    object.__setattr__(one, "__pydantic_private__", None)
+    return lean(one)
+
+
+def moved(reading: Reading, where: Where) -> Reading:
+    """The same reading at another place."""
+    return made(Reading, {**reading.__dict__, "where": where})
+
+
+def place(*, sheet: str | None = None, cell: str | None = None, line: int | None = None) -> Where:
+    """A place in a list or on a sheet."""
+    return made(Where, {"page": None, "box": None, "sheet": sheet, "table": None, "cell": cell, "line": line})
+
+
 def written(model: BaseModel) -> dict[str, Any]:
     """The keys of one reading, part, note or sheet as the JSON has them, its parts not yet taken apart.
 

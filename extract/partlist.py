@@ -15,7 +15,7 @@ from operator import attrgetter
 from typing import TYPE_CHECKING, Generic, Literal, NamedTuple, TypeVar, overload
 
 from extract.fields import fields
-from extract.model import Attributes, MadeParts, Part, Reading, Where, lean
+from extract.model import Attributes, MadeParts, Part, Reading, Where, lean, made, moved
 
 if TYPE_CHECKING:
     from extract.documents.grid import TextRow
@@ -57,6 +57,16 @@ class Shared(Generic[Kind]):
         self.index.extend(array("i", [before + at for at in other.index]) if before else other.index)
         self.distinct += other.distinct
 
+    def copy(self) -> Shared[Kind]:
+        """The same, to be changed by itself."""
+        return Shared(self.index[:], list(self.distinct))
+
+    def put(self, at: int, one: Kind) -> None:
+        """Give part `at` another one."""
+        if one not in self.distinct:
+            self.distinct.append(one)
+        self.index[at] = self.distinct.index(one)
+
 
 @dataclass(frozen=True, slots=True)
 class Stated:
@@ -97,7 +107,7 @@ class Chunk:
 
 
 def _template(readings: tuple[Reading, ...]) -> Template:
-    bare = tuple(lean(reading.model_copy(update={"where": NOWHERE})) for reading in readings)
+    bare = tuple(moved(reading, NOWHERE) for reading in readings)
     return Template(bare, (None,) * len(bare))
 
 
@@ -150,22 +160,21 @@ class PartList(MadeParts):
             if column is None or row is None:
                 yield reading
             else:
-                yield lean(reading.model_copy(update={"where": row.placer(row.number, column)}))
+                yield moved(reading, row.placer(row.number, column))
 
     def _part(self, at: int) -> Part:
         if (part := self.kept.get(at)) is not None:
             return part
         said = (placed.distinct[placed.index[at]] for placed in self.placed.values())
         identity = self.identity.distinct[self.identity.index[at]]
-        return Part(
-            part_number=self.part_numbers[at],
-            maker=identity.maker,
-            package=identity.package,
-            mode=identity.mode,
-            cut=identity.cut,
-            resonance=identity.resonance,
-            attributes=self.grade.distinct[self.grade.index[at]],
-            readings=tuple(reading for template in said for reading in self._in_place(at, template)),
+        return made(
+            Part,
+            {
+                "part_number": self.part_numbers[at],
+                **identity._asdict(),
+                "attributes": self.grade.distinct[self.grade.index[at]],
+                "readings": tuple(reading for template in said for reading in self._in_place(at, template)),
+            },
         )
 
     def __len__(self) -> int:
@@ -234,3 +243,50 @@ def _without_columns(placed: Shared[Template]) -> Stated:
     new = [known.setdefault(template.readings, len(known)) for template in placed.distinct]
     same = len(known) == len(new)
     return Stated(placed.index if same else array("i", map(new.__getitem__, placed.index)), list(known))
+
+
+def part_numbers(parts: Sequence[Part]) -> list[str | None]:
+    """The number of each part; of a long list no part is made for it."""
+    return parts.part_numbers if isinstance(parts, PartList) else [part.part_number for part in parts]
+
+
+def doubted(parts: Sequence[Part]) -> dict[int, int]:
+    """Which parts have readings that a person must look at, in their order, and how many each."""
+    counts: dict[int, int] = {}
+    if not isinstance(parts, PartList):
+        for at, part in enumerate(parts):
+            if count := _doubts(part.readings):
+                counts[at] = count
+        return counts
+    for placed in parts.placed.values():
+        doubtful = {number: _doubts(template.readings) for number, template in enumerate(placed.distinct)}
+        if any(doubtful.values()):
+            for at, number in enumerate(placed.index):
+                if doubtful[number]:
+                    counts[at] = counts.get(at, 0) + doubtful[number]
+    return dict(sorted(counts.items()))
+
+
+def _doubts(readings: Sequence[Reading]) -> int:
+    return sum(reading.check is not None for reading in readings)
+
+
+def exchanged(parts: Sequence[Part], changed: Mapping[int, Part]) -> Sequence[Part]:
+    """The parts with some exchanged for others, by their places; a long list stays one."""
+    if not isinstance(parts, PartList):
+        return tuple(changed.get(at, part) for at, part in enumerate(parts))
+    made = PartList([])
+    made.part_numbers, made.rows, made.kept = list(parts.part_numbers), list(parts.rows), {**parts.kept, **changed}
+    made.identity, made.grade = parts.identity.copy(), parts.grade.copy()
+    placed = {name: shared.copy() for name, shared in parts.placed.items()}
+    for at, part in changed.items():
+        own = Chunk.of_part(part)
+        made.part_numbers[at], made.rows[at] = part.part_number, None
+        made.identity.put(at, own.identity.distinct[0])
+        made.grade.put(at, part.attributes)
+        for name in own.fields.keys() - placed.keys():
+            placed[name] = Shared(array("i", bytes(array("i").itemsize * len(parts))), [SILENCE])
+        for name, shared in placed.items():
+            shared.put(at, own.fields[name].distinct[1] if name in own.fields else SILENCE)
+    made.placed = {name: placed[name] for name in fields() if name in placed}
+    return made

@@ -48,6 +48,14 @@ def numbered(keys: Iterable[Key]) -> tuple[list[int], list[Key]]:
     return [known.setdefault(key, len(known)) for key in keys], list(known)
 
 
+def cases_of(*columns: Iterable[int]) -> tuple[list[int], list[tuple[int, ...]]]:
+    """Which case each row is, and the distinct cases, one number of each column in them."""
+    if len(columns) != 1:
+        return numbered(zip(*columns, strict=True))
+    ids, cases = numbered(columns[0])
+    return ids, [(case,) for case in cases]
+
+
 def long_list(listing: Listing) -> LongList | None:
     """A listing to be read by column; None where it is short, or its rows are no parts with one number each."""
     if len(listing.rows) < LEAST_ROWS or trace.asked():
@@ -243,15 +251,12 @@ class LongList:
         said = [each for each in self._said if any(_of(cluster.names, several) for several in each.candidates)]
         said = [each for each in said if not each.sentences] + self._sentences(said)
         asked = [one.where([_of(cluster.names, several) for several in one.candidates]) for one in said]
-        rows = len(self._context)
-        keys = zip(
-            self._context if moded else repeat(0, rows), beside.ids if beside else repeat(0, rows), *asked, strict=True
-        )
-        cluster.ids, cases = numbered(keys)
-        for context, case, *texts in cases:
-            own = _own(cluster.names, said, texts)
-            draft = Draft(candidates=[*own, *(beside.own[case] if beside else ())])
-            draft.modes = set(self._drafts[context].modes) if moded else set()
+        coupled = [*([self._context] if moded else []), *([beside.ids] if beside else [])]
+        cluster.ids, cases = cases_of(*asked, *coupled) if asked or coupled else ([0] * len(self.names), [()])
+        for case in cases:
+            own = _own(cluster.names, said, case[: len(said)])
+            draft = Draft(candidates=[*own, *(beside.own[case[-1]] if beside else ())])
+            draft.modes = set(self._drafts[case[len(said)]].modes) if moded else set()
             self._choose_case(cluster, own, draft, names)
 
     def _sentences(self, said: Sequence[_Said]) -> list[_Said]:
@@ -338,14 +343,15 @@ class LongList:
         return map(found.__getitem__, ids)
 
     def _written(self, name: str) -> Shared[Template]:
-        ids, cases = numbered(zip(self._of_field[name], self._fork, strict=True))
+        several = [self._fork] if len(self._forks) > 1 else []
+        ids, cases = cases_of(self._of_field[name], *several)
         templates = [SILENCE]
         place: list[int] = []
-        for number, fork in cases:
+        for number, *forks in cases:
             chosen = self._chosen[name][number]
             place.append(len(templates) if chosen else 0)
             if chosen:
-                templates.append(_template(chosen, self._forks[fork], None))
+                templates.append(_template(chosen, self._forks[forks[0] if forks else 0], None))
         return Shared(array("i", map(place.__getitem__, ids)), templates)
 
     def _contradictions(self) -> dict[tuple[int, str], str]:

@@ -11,7 +11,7 @@ from typing import Literal
 from extract.documents.decoding import decode
 from extract.documents.grid import address, column_letters, placed_cells
 from extract.documents.model import Document, DocumentError, Table
-from extract.model import Note, Where, lean
+from extract.model import Note, Where, place
 
 # Where two part the lines equally well, the one further left: a comma may be a decimal one.
 _DELIMITERS = "\t;|,"
@@ -126,7 +126,7 @@ class _LinePlaces:
         line = self._first_lines[row]
         if row in self._broken:
             line += sum(text.count("\n") for text in islice(self._broken[row], column))
-        return lean(Where(line=line, cell=address(row, column)))
+        return place(line=line, cell=address(row, column))
 
     def json_before(self, column: int) -> str:
         return f'{{"cell": "{column_letters(column)}'

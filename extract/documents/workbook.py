@@ -15,7 +15,7 @@ from extract.documents.model import Cell, Document, DocumentError, Line, Segment
 from extract.documents.opendocument import DAMAGED, LOCKED, ZIP_FAULTS
 from extract.documents.spacing import pieces
 from extract.documents.workbookparts import SheetStyles, sheet_styles
-from extract.model import Note, Where
+from extract.model import Note, Where, place
 
 Grid = list[list[str]]
 Span = tuple[int, int, int, int]
@@ -270,13 +270,13 @@ class _Sheet:
         return len(repeated) > 1 and sum(text in heads for text in repeated) * 2 >= len(repeated)
 
     def _table(self, left: int, right: int, top: int, bottom: int) -> Table:
-        place = _SheetPlaces(self.name, top, left)
+        places = _SheetPlaces(self.name, top, left)
         texts = [texts[left:right] for texts in self.grid[top:bottom]]
-        merged = self._merged(left, right, top, bottom, place) if self.spans else {}
-        cells = placed_cells(texts, right - left, place, merged)
-        return Table(cells, bottom - top, right - left, place(0, 0))
+        merged = self._merged(left, right, top, bottom, places) if self.spans else {}
+        cells = placed_cells(texts, right - left, places, merged)
+        return Table(cells, bottom - top, right - left, places(0, 0))
 
-    def _merged(self, left: int, right: int, top: int, bottom: int, place: Placer) -> dict[tuple[int, int], Cell]:
+    def _merged(self, left: int, right: int, top: int, bottom: int, places: Placer) -> dict[tuple[int, int], Cell]:
         """The merged cells of a table that hold a text, by row and column in it."""
         found: dict[tuple[int, int], Cell] = {}
         for (row, column), span in self.spans.items():
@@ -285,7 +285,7 @@ class _Sheet:
             if text := self.grid[row][column]:
                 height, width = min(span[2] + 1, bottom) - row, min(span[3] + 1, right) - column
                 at = (row - top, column - left)
-                found[at] = Cell(text, *at, place(*at), height, width)
+                found[at] = Cell(text, *at, places(*at), height, width)
         return found
 
 
@@ -298,7 +298,7 @@ class _SheetPlaces:
         self._left = left
 
     def __call__(self, row: int, column: int) -> Where:
-        return Where(sheet=self._name, cell=address(self._top + row, self._left + column))
+        return place(sheet=self._name, cell=address(self._top + row, self._left + column))
 
     def json_before(self, column: int) -> str:
         name = json.dumps(self._name, ensure_ascii=False)
