@@ -82,15 +82,16 @@ _LATEX = {
 }  # fmt: skip
 _LATEX_SIGN = re.compile(r"\$\s?\^?\{?\\(?P<name>[A-Za-z]+)\}?\s?\$|\$(?P<whole>[^$\\]{1,40})\$")
 
+# What each of the patterns needs to be there, for most texts have none of it; the pattern; what it becomes.
 _SPELT = [
-    (re.compile(r"\+\s?/\s?-|-\s?/\s?\+|\+-(?=\s?[\d.])"), "±"),
-    (re.compile(r"<\s?=|=\s?<"), "≤"),
-    (re.compile(r">\s?=|=\s?>"), "≥"),
-    (re.compile(r"\.{2,}"), "…"),
+    ("+", re.compile(r"\+\s?/\s?-|-\s?/\s?\+|\+-(?=\s?[\d.])"), "±"),
+    ("=", re.compile(r"<\s?=|=\s?<"), "≤"),
+    ("=", re.compile(r">\s?=|=\s?>"), "≥"),
+    ("..", re.compile(r"\.{2,}"), "…"),
     # A recogniser's reading of ±; the character is the Chinese word for earth, never printed before a number.
-    (re.compile(r"土(?=\s?\d)"), "±"),
-    (re.compile(r" {2,}"), " "),
-    (re.compile(r" ?\n[ \n]*"), "\n"),
+    ("土", re.compile(r"土(?=\s?\d)"), "±"),
+    ("  ", re.compile(r" {2,}"), " "),
+    ("\n", re.compile(r" ?\n[ \n]*"), "\n"),
 ]
 
 # Words with single marks between them, in which nothing can fold.
@@ -131,8 +132,9 @@ def fold(text: str) -> str:
         text = _unbroken(unicodedata.normalize("NFKC", text.translate(_TRANSLATE)).translate(_TRANSLATE))
     else:
         text = text.translate(_TRANSLATE)
-    for pattern, instead in _SPELT:
-        text = pattern.sub(instead, text)
+    for needed, pattern, instead in _SPELT:
+        if needed in text:
+            text = pattern.sub(instead, text)
     return text.strip()
 
 
@@ -149,10 +151,10 @@ def _key(text: str) -> str:
     if text.isascii() and (bare := text.replace(" ", "")).isalnum():
         return bare.lower()
     folded = fold(text).casefold()
-    if not folded.isascii():
-        folded = "".join(c for c in unicodedata.normalize("NFD", folded) if c not in _ACCENTS)
-        folded = unicodedata.normalize("NFC", folded).translate(_TRADITIONAL)
-    return _NOT_IN_KEY.sub("", folded)
+    if folded.isascii():
+        return folded.translate(_ASCII_NOT_IN_KEY)
+    folded = "".join(c for c in unicodedata.normalize("NFD", folded) if c not in _ACCENTS)
+    return _NOT_IN_KEY.sub("", unicodedata.normalize("NFC", folded).translate(_TRADITIONAL))
 
 
 # Traditional Chinese characters of this trade and the simplified ones: one wording serves both.
@@ -161,4 +163,5 @@ _TRADITIONAL = str.maketrans(
     "频负载电储稳温范围动静级标称准谐励驱绝缘联并线号类产厂制顶点系数额总调变周规测试条项单备注订价库货优维体圆质应与为环过内对湿选购达无实验击冲机压输占缓随误许师贮补偿软签触区间请参见详带转换回极细弯状况专业审认检记录术证书处编码阅长宽镀锡层连导线属",
 )
 _NOT_IN_KEY = re.compile(r"[^\w/]|_")
+_ASCII_NOT_IN_KEY = {code: None for code in range(128) if _NOT_IN_KEY.match(chr(code))}
 _ACCENTS = frozenset("\u0300\u0301\u0302\u0303\u0304\u0306\u0308\u030a\u030c\u0327\u0328")

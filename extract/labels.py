@@ -37,8 +37,23 @@ class Parts:
     bound: str | None = None
     unit: str | None = None
     plus_minus: bool = False
-    when: When = When()
     snake: bool = False
+    conditions: list[str | When] = field(default_factory=list)
+    """Printed and known conditions that `when` has not put together yet: few texts are labels and need it."""
+    _when: When = When()
+
+    @property
+    def when(self) -> When:
+        """All conditions together; where two speak of the same, the later counts."""
+        for condition in self.conditions:
+            self._when = joined(self._when, read_when(condition) if isinstance(condition, str) else condition)
+        self.conditions.clear()
+        return self._when
+
+    @when.setter
+    def when(self, when: When) -> None:
+        self.conditions.clear()
+        self._when = when
 
 
 def take_apart(folded: str) -> Parts:
@@ -72,10 +87,10 @@ def _keep_bracket(parts: Parts, inside: str) -> str:
     if unit:
         parts.unit = parts.unit or unit
         parts.plus_minus = parts.plus_minus or "±" in inside
-        parts.when = joined(parts.when, read_when(rest)) if rest else parts.when
+        parts.conditions += [rest] if rest else []
         return " "
     if inside:
-        parts.when = joined(parts.when, read_when(inside))
+        parts.conditions.append(inside)
         parts.brackets.append(inside)
     return " "
 
@@ -112,11 +127,11 @@ def _take_years(parts: Parts, text: str) -> str:
     one = (runs[0].start, runs[0].end) if runs else None
     many = years_pattern().search(text) if _DIGIT.search(text) else None
     if many and (one is None or not one[0] <= many.start() < one[1]):
-        parts.when = joined(parts.when, When(years=float(many[1])))
+        parts.conditions.append(When(years=float(many[1])))
         return text[: many.start()] + " " + text[many.end() :]
     if one is None:
         return text
-    parts.when = joined(parts.when, When(years=1.0))
+    parts.conditions.append(When(years=1.0))
     return text[: one[0]] + " " + text[one[1] :]
 
 
@@ -147,7 +162,7 @@ def _take_condition(parts: Parts, text: str) -> str:
     if not found or found.start() < 1:
         return text
     printed = found[0].strip(EDGE.replace("-", ""))
-    parts.when = joined(parts.when, read_when(printed))
+    parts.conditions.append(printed)
     last = printed.split()[-1] if printed.split() else ""
     parts.bound = parts.bound or vocabulary().bounds.get(key(last))
     if re.search(r"\s(?:in|en)\s\S+$", printed) and is_unit(last):
