@@ -150,9 +150,10 @@ def sift(every: Sequence[Candidate], filters: Filters, weights: Mapping[str, flo
 
 
 def common_currency(every: Sequence[Candidate]) -> str:
-    """The currency that most prices are in: prices in another one are not compared with them."""
+    """The currency that most prices are in: prices in another one, or in none, are not compared with them."""
     counts = Counter(supply.currency(one.supply) for one in every if supply.figure(one.supply, "price") is not None)
-    return counts.most_common(1)[0][0] if counts else ""
+    named = [currency for currency, _ in counts.most_common() if currency]
+    return named[0] if named else ""
 
 
 def _passes(one: Candidate, asked: Filters, money: str, unknown: Counter[str]) -> bool:
@@ -321,9 +322,9 @@ def _why_weighed(one: Candidate, other: Candidate, sifted: Sifted, weights: Mapp
     mine, theirs = rated.get(one.row["place"]), rated.get(other.row["place"])
     said = weights_text(weights)
     if mine is None:
-        return f"Of neither all that is weighed is known ({said}). {_by_place(one, other)}"
+        return f"Not all that is weighed ({said}) is known of either. {_by_place(one, other)}"
     if theirs is None:
-        return f"Of {row_name(other.row)} not all that is weighed is known ({said})."
+        return f"Of {row_name(other.row)} not all that is weighed ({said}) is known."
     return (
         f"Weighed ({said}), {row_name(one.row)} comes to {number(mine)} of the best of each, {row_name(other.row)} to "
         f"{number(theirs)}."

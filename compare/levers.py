@@ -110,7 +110,8 @@ def _lever(reckoning: Reckoning, at: int, bench: Bench, field: str) -> Lever:
     known = [move for move in moves if not math.isnan(move[0])]
     worst = max(known, default=(0.0, ""))
     if untold and worst[0] <= 1:
-        return Lever(untold[0], math.nan, f"{_called(untold[0])}: cannot be told")
+        says = f"{_becomes(reckoning, at, untold[0], bench)}: cannot be told" if untold[0] in FIGURES else ""
+        return Lever(untold[0], math.nan, says)
     if worst[0] <= NOTHING:
         worst = min(known, default=(0.0, ""))
     if abs(worst[0]) <= NOTHING:

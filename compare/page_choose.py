@@ -202,8 +202,9 @@ def to_ask(contest: Ranked) -> None:
         return
     session.section(choose_shown.ask_heading(len(untold)))
     for number, (part, question) in enumerate(asks):
-        with st.container(horizontal=True, vertical_alignment="center", gap="small"):
-            st.markdown(f"**{pieces.plain(part)}**: “{pieces.plain(question)}”", width="stretch")
+        words, button = st.columns([7, 1], gap="small", vertical_alignment="center")
+        words.markdown(f":small[**{pieces.plain(part)}**: “{pieces.plain(question)}”]")
+        with button:
             copy_button(question, key=f"ask_{number}", label="Copy")
 
 

@@ -17,9 +17,10 @@ COPY = """export default function({data, parentElement}) {
     if (event.key.toLowerCase() === data.shortcut && !event.ctrlKey && !event.metaKey && !typing()) button.click() };
   document.addEventListener("keydown", press);
   return () => document.removeEventListener("keydown", press); }"""
-# The page's own custom properties reach into a component; Streamlit's border would be below a contrast of 3.
+# As Streamlit's own buttons look; the page's custom properties reach into a component.
 COPY_LOOK = """button{font:inherit;font-size:.875rem;line-height:1.35;color:var(--st-text-color);cursor:pointer;
-  background:var(--st-background-color);border:1px solid var(--qf-edge);border-radius:3px;padding:.42rem .75rem;
+  background:var(--st-background-color);border:1px solid var(--st-border-color);border-radius:3px;padding:.25rem .75rem;
+  min-height:2.5rem;
   white-space:nowrap} kbd{font:inherit;font-size:.78rem;opacity:.65;margin-left:.5rem}
   button:hover,button:focus-visible{border-color:var(--qf-accent);color:var(--qf-accent)}"""
 # Text of a sheet is escaped before it comes here. A press says so in the button's own name, for who hears the page.

@@ -13,8 +13,9 @@ from compare.choosing import ASPECTS, LIMITS, MOST_WEIGHT, ORDERS, WEIGHTS, Cand
 
 NO_WEIGHT = "all weights are 0: the order is that of the ranking"
 ANY_WORDS = {"package": "any package", "maker": "any maker", "verdict": "any verdict", "status": "any status"}
-WIDTHS = {"package": 124, "maker": 138, "verdict": 124, "status": 120}
+WIDTHS = {"package": 124, "maker": 138, "verdict": 124, "status": 200}
 MOST_CHOICES = 200
+LEFT_OUT = "A part of which the thing limited is not known is left out, and counted."
 
 
 def asked() -> Filters:
@@ -33,13 +34,13 @@ def filter_line(filters: Filters, every: Sequence[Candidate], offered: str, othe
         others()
     with st.container(horizontal=True, vertical_alignment="center", gap="small"):
         st.markdown("Show", width="content")
-        for name in ("package", "maker", "verdict", "status"):
-            # One status or maker for all leaves nothing to choose.
+        for name in ("package", "maker", "verdict"):
+            # One maker for all leaves nothing to choose.
             if len(choices[name]) > 1 or getattr(filters, name):
                 choice(name, getattr(filters, name), choices[name])
         st.markdown("by", width="content")
         order(filters.by)
-        limits(filters)
+        limits(filters, choices["status"])
 
 
 def choice(name: str, value: str, options: list[str]) -> None:
@@ -87,7 +88,7 @@ def keep(name: str, value: Any) -> None:
     session.put_slot("filters", Filters.of({**before, name: value}).as_slot())
 
 
-def limits(filters: Filters) -> None:
+def limits(filters: Filters, statuses: list[str]) -> None:
     """Limits of price, lead time, stock and minimum order, and a search, one press away."""
     with st.popover("Limits", key="limits"):
         search = "field_choose_part"
@@ -95,11 +96,8 @@ def limits(filters: Filters) -> None:
         st.text_input("Part number or file has", key=search, on_change=put, args=("part", search))
         for name, (column, words) in LIMITS.items():
             limit(name, column, words, getattr(filters, name))
-        st.markdown(f":gray[:small[{supply_hint()}]]")
-
-
-def supply_hint() -> str:
-    return "A part of which the thing limited is not known is left out, and counted."
+        choice("status", filters.status, statuses)
+        st.markdown(f":gray[:small[{LEFT_OUT}]]")
 
 
 def limit(name: str, column: str, words: str, value: float | None) -> None:

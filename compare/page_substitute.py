@@ -7,7 +7,7 @@ from typing import Any
 
 import streamlit as st
 
-from compare import answers, approval, charts, export, pieces, swap_pieces, swap_shown
+from compare import answers, approval, charts, export, pieces, supply, swap_pieces, swap_shown
 from compare import page_session as session
 from compare.approval import ApprovalError, Decision
 from compare.bench import Bench
@@ -19,7 +19,7 @@ from compare.page_shared import cautions, save_buttons, something_open
 from compare.refit import with_changes
 from compare.sheets_json import notes_of
 from compare.substitution import SubstituteError, substitute
-from compare.swap_parts import Choice, alone, choices, default_candidate
+from compare.swap_parts import Choice, alone, as_row, choices, default_candidate
 from extract.model import SpecSheet
 
 SIZE = 1.08
@@ -55,6 +55,7 @@ def substitute_view() -> None:
         cautions()
     with right:
         as_it_is(result, one, candidate, bench)
+        supplied(incumbent, candidate)
         ask(one)
         decision(result, one)
 
@@ -179,7 +180,9 @@ def answer(result: dict[str, Any], one: dict[str, Any], bench: Bench | None) -> 
 
 
 def lines(result: dict[str, Any], one: dict[str, Any], bars: dict[str, Lever], bench: Bench | None) -> None:
-    differ, same = swap_shown.swap_lines(one, bars)
+    every, same = swap_shown.swap_lines(one, bars)
+    # What is known of their supply stands beside both, with its date.
+    differ = [line for line in every if line.field not in ("price", "lead_time")]
     colours = session.palette()
     if differ:
         session.section(swap_shown.differ_heading(differ))
@@ -188,13 +191,13 @@ def lines(result: dict[str, Any], one: dict[str, Any], bars: dict[str, Lever], b
             st.markdown(f":gray[:small[{swap_shown.LEVER_LEGEND}]]")
     if same:
         session.section(swap_shown.same_heading(same))
-        figures(swap_pieces.lines_html(same, colours, levers=False), key="same")
+        figures(swap_pieces.same_html(same), key="same")
 
     def tables() -> dict[str, export.Table]:
         both = [result["incumbent"], one]
         numbered = [row for row in both if "margin" in row]
         return {
-            "lines": swap_shown.lines_table(one, result["incumbent"], [*differ, *same]),
+            "lines": swap_shown.lines_table(one, result["incumbent"], [*every, *same]),
             "verdict": swap_shown.summary_table(result, one),
             "numbers": export.numbers_table(numbered),
             "sources": export.sources_table(session.sheets(), both),
@@ -204,7 +207,7 @@ def lines(result: dict[str, Any], one: dict[str, Any], bars: dict[str, Lever], b
     def told() -> dict[str, Any]:
         return {**result, "notes": [*notes_of(session.sheets()), *result["notes"]]}
 
-    copied = swap_shown.lines_table(one, result["incumbent"], [*differ, *same])
+    copied = swap_shown.lines_table(one, result["incumbent"], [*every, *same])
     save_buttons("substitute", copied, tables, told, key="substitute")
 
 
@@ -274,6 +277,14 @@ def as_it_is(result: dict[str, Any], one: dict[str, Any], candidate: Choice, ben
         figures(swap_pieces.both_html(both), key="both")
 
 
+def supplied(incumbent: Choice, candidate: Choice) -> None:
+    """Price, stock and lead time of both, where anything is known of them."""
+    sheets, slot = session.sheets(), session.slot("supply")
+    old, new = (supply.supply_of(as_row(alone(sheets, choice)), slot) for choice in (incumbent, candidate))
+    if both := swap_shown.both_supplied(old, new):
+        figures(swap_pieces.both_html(both, "Supply"), key="supplied")
+
+
 def ask(one: dict[str, Any]) -> None:
     letters = swap_shown.letters(one)
     if letters:
@@ -300,7 +311,7 @@ def decision(result: dict[str, Any], one: dict[str, Any]) -> None:
         state, by = st.columns([1, 1.4], gap="small")
         told = {
             "state": state.selectbox(
-                "Decision", approval.STATES, index=min(len(before), 2), key=f"state_{key}_{len(before)}"
+                "State", approval.STATES, index=min(len(before), 2), key=f"state_{key}_{len(before)}"
             )
         }
         told["by"] = by.text_input("By", session.person(), key=f"by_{key}_{len(before)}")

@@ -119,7 +119,11 @@ def _amount(text: str, wanted: str) -> tuple[float, str]:
 def _price(text: str) -> dict[str, Any]:
     wanted = "a price is one number with its currency, like 0.21 €"
     value, around = _amount(text, wanted)
-    word = folded(around)
+    # `each`, `per piece`: one price is always that of one piece, whatever the quantity it holds for.
+    words = [
+        word for word in re.split(r"[\s/]+", around) if folded(word) not in (*_words("pieces_words"), "per", "pro")
+    ]
+    word = folded("".join(words))
     if word and word not in _words("currencies"):
         raise SupplyError(f"“{text}”: currency not known; {', '.join(_tables()['currencies'])} are")
     return {"amount": value, "currency": _words("currencies").get(word, "")}

@@ -4,6 +4,7 @@ from __future__ import annotations
 
 from collections.abc import Sequence
 from dataclasses import dataclass
+from typing import Any
 
 from compare.answers import Identity, identities
 from compare.choosing import package_text
@@ -63,3 +64,10 @@ def alone(sheets: Sequence[SpecSheet], choice: Choice) -> SpecSheet:
                 return sheet.model_copy(update={"parts": (same[count - 1],)})
             count -= len(same)
     raise KeyError(f"{file}#{number}: not open")
+
+
+def as_row(sheet: SpecSheet) -> dict[str, Any]:
+    """What supply is looked up by: the identity of the sheet's one part, and what the sheet itself says of it."""
+    part = sheet.parts[0]
+    stated = {name: getattr(part.attributes, name) for name in ("price", "lead_time", "status")}
+    return {"file": sheet.file, "part_number": part.part_number, "maker": part.maker, "attributes": stated}

@@ -24,7 +24,7 @@ def lever_svg(line: SwapLine, palette: Palette) -> str:
     if lever is None and line.relation in ("different", "looser") and line.matters:
         return _svg(_arrow(left, y, palette) + axis, "does not fit the board")
     if lever is None or math.isnan(lever.used):
-        if line.relation != "unknown":
+        if line.relation != "unknown" and lever is None:
             return _svg(axis, "no requirement rests on it")
         dots = f'<path d="M{left},{y}H{right}" stroke="{palette.edge}" stroke-dasharray="1 4"/>'
         return _svg(dots + axis, "not known")
@@ -69,7 +69,7 @@ def lever_words(lever: Lever) -> str:
 def lines_html(lines: Sequence[SwapLine], palette: Palette, *, levers: bool) -> str:
     """The lines as a table; with `levers` a column of bars between present part and candidate."""
     heads = [("", "Reading", 18), ("n", "Present part", 13)]
-    heads += [("", "room used │ won", 14)] if levers else []
+    heads += [("lever", "room used │ won", 15)] if levers else []
     heads += [("", "Candidate", 13), ("n", "Difference", 10), ("rel", "Relation", 12)]
     heads.append(
         ("", "What it does here" if levers else "What is to be said", 100 - sum(width for _, _, width in heads))
@@ -102,15 +102,28 @@ def _line(line: SwapLine, palette: Palette, *, levers: bool) -> str:
     return f"<tr>{''.join(cells)}</tr>"
 
 
-def both_html(rows: Sequence[BothHave]) -> str:
-    """Both parts in the same circuit, low to high; a press copies the nominal value."""
+def same_html(lines: Sequence[SwapLine]) -> str:
+    """The lines that are the same, for who wants to see that none is left out."""
+    head = '<th>Reading</th><th class="n">Present part</th><th class="cand">Candidate</th><th>Relation</th>'
+    body = "".join(
+        f'<tr><td>{escape(line.name)}<span class="unit">{escape(line.unit)}</span></td>'
+        f'<td class="n">{figure_html(line.incumbent, line.bare_incumbent)}</td>'
+        f'<td class="cand">{figure_html(line.candidate, line.bare_candidate)}</td>'
+        f"<td>{line.sign} {escape(line.relation)}</td></tr>"
+        for line in lines
+    )
+    return f'<table class="qf-table qf-swap qf-same"><thead><tr>{head}</tr></thead><tbody>{body}</tbody></table>'
+
+
+def both_html(rows: Sequence[BothHave], heading: str = "In this circuit, low to high") -> str:
+    """Both parts side by side; a press copies a number, the nominal one of a span."""
     body = "".join(
         f'<tr><td>{escape(one.name)}<span class="unit">{escape(one.unit)}</span></td>'
         f'<td class="n">{figure_html(one.incumbent, one.bare_incumbent)}</td>'
         f'<td class="n">{figure_html(one.candidate, one.bare_candidate)}</td></tr>'
         for one in rows
     )
-    head = '<th>In this circuit, low to high</th><th class="n">Present part</th><th class="n">Candidate</th>'
+    head = f'<th>{escape(heading)}</th><th class="n">Present part</th><th class="n">Candidate</th>'
     return f'<table class="qf-table qf-swap"><thead><tr>{head}</tr></thead><tbody>{body}</tbody></table>'
 
 

@@ -10,6 +10,7 @@ from collections.abc import Mapping, Sequence
 from dataclasses import dataclass
 from typing import Any
 
+from compare import supply
 from compare.answers import FIGURES, SHORT_NAMES, Row, missing_name, row_name, told, verdict
 from compare.approval import MARKS
 from compare.export import Table
@@ -32,6 +33,7 @@ LEVER_LEGEND = (
     "Each line put in place alone. Bar to the end of its line: all the room that the present part had. "
     "Past it: an arrow, and the requirement falls short. Dotted: not known."
 )
+NOT_A_NO = "not a no: ask where the product needs it"
 WITHOUT_BENCH = "the board presents the present part’s rated load"
 ENDS_THAT_COUNT = {"low": ("high",), "high": ("low",), "inside": ("low", "high"), "outside": ("low", "high")}
 IN_CIRCUIT = ("margin", "gain_ratio", "resistance_headroom", "total_ppm", "drive_level_uw", "startup_ms")
@@ -235,15 +237,20 @@ def _swap_line(line: Row, lever: Lever | None) -> SwapLine:
 
 
 def _does(line: Row, lever: Lever | None) -> str:
-    if lever is not None and lever.says and not math.isnan(lever.used):
+    if lever is not None and lever.says:
         return with_minus(lever.says)
     if line["relation"] == "same":
         return ""
     message = spoken(line["message"]).partition(": ")[2] or spoken(line["message"])
+    if line["field"] in supply.columns():
+        return ""
+    if line["relation"] == "unknown" and not line["matters"]:
+        return NOT_A_NO if line["candidate"] is None else ""
     if line["relation"] in ("tighter", "looser") or message == "not the same":
         # The relation's own column says so already.
         return "changes nothing that is asked" if lever is not None else ""
-    return message
+    # That a sheet does not state it stands in its cell; what to do about it is said behind the colon.
+    return message.removeprefix("not the same; ").partition(": ")[2] or message.removeprefix("not the same; ")
 
 
 def _name(field: str) -> str:
@@ -459,3 +466,24 @@ def summary_table(result: Row, one: Row) -> Table:
 
 def next_text(at: int, count: int) -> str:
     return f"{at} of {counted(count, 'candidate')}"
+
+
+def both_supplied(old: supply.Record, new: supply.Record) -> list[BothHave]:
+    """What is known of the supply of both parts, each value with whence it is."""
+    rows = []
+    for key, column in supply.columns().items():
+        if key in old or key in new:
+            texts = [_supplied(one, key) for one in (old, new)]
+            bare = [_bare_figure(supply.figure(one, key)) for one in (old, new)]
+            rows.append(BothHave(column.name, "", texts[0], texts[1], bare[0], bare[1]))
+    return rows
+
+
+def _supplied(one: supply.Record, key: str) -> str:
+    return (
+        f"{supply.value_text(key, one[key]['value'])} ({supply.whence_text(one[key])})" if key in one else "not known"
+    )
+
+
+def _bare_figure(value: float | None) -> str:
+    return "" if value is None else f"{value:.10g}"

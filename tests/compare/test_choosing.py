@@ -92,6 +92,8 @@ def test_prices_of_another_currency_are_not_compared():
     sifted = sift(every, Filters(by="price", most_price=1.0), {})
     assert [each.row["part_number"] for each in sifted.shown] == ["B", "A"]
     assert sifted.currency == "€"
+    bare = [one(1, "A", price=euro(0.3, "")), one(2, "B", price=euro(0.4, "")), one(3, "C", price=euro(0.2))]
+    assert sift(bare, Filters(by="price"), {}).shown[0].row["part_number"] == "C"
 
 
 def test_weights_count_as_powers_of_the_ratio_to_the_best():

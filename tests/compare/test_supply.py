@@ -30,6 +30,8 @@ ROWS = [
         ("price", "USD 0.345", "0.345 $"),
         ("price", "1.234,50 EUR", "1234.5 €"),
         ("price", "0.22", "0.22"),
+        ("price", "EUR 0.19 each", "0.19 €"),
+        ("price", "0.19 €/pc", "0.19 €"),
         ("stock", "3.000", "3000 pieces"),
         ("stock", "3,000 pcs", "3000 pieces"),
         ("stock", "12k", "12000 pieces"),
