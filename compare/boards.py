@@ -75,6 +75,11 @@ class Boards:
             output=squared_line(at_rest, at_one - at_rest),
         )
 
+    def same_but_gain(self, other: Boards) -> bool:
+        """True where the boards differ in transconductance alone."""
+        mine, theirs = ({name: value for name, value in vars(one).items() if name != "gm"} for one in (self, other))
+        return all(np.array_equal(np.asarray(mine[name]), np.asarray(theirs[name]), equal_nan=True) for name in mine)
+
 
 def quadratic(zero: ArrayLike, one: ArrayLike, two: ArrayLike) -> Quadratic:
     first, second, third = np.broadcast_arrays(array(zero), array(one), array(two))
@@ -129,22 +134,35 @@ class Steady:
         return loading
 
 
-def every_board(boards: Boards, crystal: Crystal, swing_peak_v: float, swing_at: End) -> dict[str, Array]:
-    """What the requirements ask of each part on each board, (parts, boards), by the names of `oscillation.analyse`."""
+def every_board(
+    boards: Boards, crystal: Crystal, swing_peak_v: float, swing_at: End, steady: Steady
+) -> dict[str, Array]:
+    """Gains and drive of each part on each board, (parts, boards), by the names of `oscillation.analyse`.
+
+    `steady`: the critical state, which hangs on no transconductance and on no swing.
+    """
     with np.errstate(all="ignore"):
-        y = boards.omega * PICO * np.asarray(crystal.shunt_capacitance_pf)
-        steady = Steady.of(boards, y, np.asarray(crystal.esr_ohm))
-        return gains(boards, crystal, y, steady) | {
-            "load_error_ppm": load_error_ppm(boards, crystal, y, steady),
-            "drive_level_uw": drive_level_uw(boards, crystal, y, steady, (swing_peak_v, swing_at)),
-        }
+        y = shunt_susceptance(boards, crystal)
+        drive = drive_level_uw(boards, crystal, y, steady, (swing_peak_v, swing_at))
+        return gains(boards, crystal, y, steady) | {"drive_level_uw": drive}
 
 
-def load_errors_ppm(boards: Boards, crystal: Crystal) -> Array:
-    """The load error alone, (parts, boards)."""
+def shunt_susceptance(boards: Boards, crystal: Crystal) -> Array:
+    """ω C0, S."""
+    y: Array = boards.omega * PICO * np.asarray(crystal.shunt_capacitance_pf)
+    return y
+
+
+def steady_state(boards: Boards, crystal: Crystal) -> Steady:
     with np.errstate(all="ignore"):
-        y = boards.omega * PICO * np.asarray(crystal.shunt_capacitance_pf)
-        return load_error_ppm(boards, crystal, y, Steady.of(boards, y, np.asarray(crystal.esr_ohm)))
+        return Steady.of(boards, shunt_susceptance(boards, crystal), np.asarray(crystal.esr_ohm))
+
+
+def load_errors_ppm(boards: Boards, crystal: Crystal, steady: Steady | None = None) -> Array:
+    """The load error alone, (parts, boards); `steady`: the critical state of these crystals, where it is known."""
+    with np.errstate(all="ignore"):
+        steady = steady_state(boards, crystal) if steady is None else steady
+        return load_error_ppm(boards, crystal, shunt_susceptance(boards, crystal), steady)
 
 
 def gains(boards: Boards, crystal: Crystal, y: Array, steady: Steady) -> dict[str, Array]:

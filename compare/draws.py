@@ -16,7 +16,7 @@ import numpy as np
 
 from compare import budget
 from compare.bench import Bench, CircuitKeys, Setting
-from compare.boards import Boards, every_board, load_errors_ppm
+from compare.boards import Boards, Steady, every_board, load_errors_ppm, steady_state
 from compare.circuit import Array
 from compare.columns import HIGH, LOW, MID, Columns, Flags
 from compare.corners import BY_SHUNT_FLOOR, analyse_nominal, as_reckoned, limiters_of, rated_gm, swing_of
@@ -133,7 +133,7 @@ def draw(columns: Columns, bench: Bench, boards: int = 1000, seed: int = 1, shap
         Fewer boards than one, or a shape that there is none of.
     """
     units = unit_draws(boards, seed, shape)
-    settings = [_SettingDraws.of(setting, number, bench, units) for number, setting in enumerate(bench.settings)]
+    settings = _setting_draws(columns, bench, units)
     step = max(1, AT_ONCE // boards)
     pieces = [range(start, min(start + step, len(columns))) for start in range(0, len(columns), step)]
 
@@ -159,6 +159,8 @@ class _SettingDraws:
     boards: Boards | None
     """None where the amplitude is limited otherwise than by the transconductance, or a probe counts: then the whole
     analysis is run."""
+    like: int
+    """Number of the first setting with the same crystals and circuit but for gain and swing; often its own."""
 
     @classmethod
     def of(cls, setting: Setting, number: int, bench: Bench, units: Mapping[str, Array]) -> _SettingDraws:
@@ -166,7 +168,26 @@ class _SettingDraws:
         lean = limiters_of(setting.circuit) == ("transconductance",) and not setting.circuit.probe_pf
         known = values if GAIN in values else values | {GAIN: np.full_like(units[GAIN], np.nan)[None, :]}
         circuit = circuit_at(known, setting.circuit, bench, np.zeros(()))
-        return cls(number, setting, values, Boards.of(circuit, bench.requirement.frequency_mhz) if lean else None)
+        boards = Boards.of(circuit, bench.requirement.frequency_mhz) if lean else None
+        return cls(number, setting, values, boards, number)
+
+
+def _setting_draws(columns: Columns, bench: Bench, units: Mapping[str, Array]) -> list[_SettingDraws]:
+    """Every setting, and which of them have their critical state in common."""
+    drawn: list[_SettingDraws] = []
+    for number, setting in enumerate(bench.settings):
+        own = _SettingDraws.of(setting, number, bench, units)
+        like = next((one.number for one in drawn if _same_state(one, own, columns)), number)
+        drawn.append(replace(own, like=like))
+    return drawn
+
+
+def _same_state(one: _SettingDraws, other: _SettingDraws, columns: Columns) -> bool:
+    if one.boards is None or other.boards is None or not one.boards.same_but_gain(other.boards):
+        return False
+    ends = (columns.esr_ohm, columns.shunt_pf, columns.motional_ff)
+    crystals = all(np.array_equal(of[one.number], of[other.number], equal_nan=True) for of in ends)
+    return crystals and one.setting.circuit.series_resistor_ohm == other.setting.circuit.series_resistor_ohm
 
 
 def drawn_circuit(keys: CircuitKeys, bench: Bench, units: Mapping[str, Array]) -> dict[str, Array]:
@@ -198,8 +219,12 @@ def crystal_values(
     return values
 
 
+Critical = dict[int, tuple[Steady, Array]]
+"""Critical state and load error by the setting that they are of."""
+
+
 def _evaluated(
-    columns: Columns, bench: Bench, one: _SettingDraws, units: Mapping[str, Array]
+    columns: Columns, bench: Bench, one: _SettingDraws, units: Mapping[str, Array], critical: Critical
 ) -> Iterator[dict[str, Array]]:
     """What each board comes to, (n, boards), for each limiter that may hold."""
     crystal = crystal_at_values(
@@ -212,10 +237,12 @@ def _evaluated(
     keys = one.setting.circuit
     if one.boards is not None:
         boards = one.boards if GAIN in one.circuit else replace(one.boards, gm=_rated_siemens(one, bench, crystal))
-        found = every_board(boards, crystal, *swing_of(keys))
-        if of_frequency is not crystal:
-            found["load_error_ppm"] = load_errors_ppm(boards, of_frequency)
-        yield found
+        if one.like not in critical:
+            state = steady_state(boards, crystal)
+            error = load_errors_ppm(boards, of_frequency, state if of_frequency is crystal else None)
+            critical[one.like] = state, error
+        steady, error = critical[one.like]
+        yield every_board(boards, crystal, *swing_of(keys), steady) | {"load_error_ppm": error}
         return
     circuit = circuit_at(one.circuit, keys, bench, np.asarray(crystal.shunt_capacitance_pf))
     for limiter in limiters_of(keys):
@@ -240,8 +267,9 @@ def _short_of(
     """How many boards of each part fall short of each requirement that the bench asks."""
     short: dict[str, Flags] = {}
     rated = spans(columns.offers.column("drive"))[MID][:, None]
+    critical: Critical = {}
     for one in settings:
-        for found in _evaluated(columns, bench, one, units):
+        for found in _evaluated(columns, bench, one, units, critical):
             for name, flags in _falling_short(found, bench, one, budget_ends, rated):
                 short[name] = short[name] | flags if name in short else flags
     short[ANY] = np.logical_or.reduce(np.broadcast_arrays(*(flags for name, flags in short.items() if name != STARTS)))

@@ -8,6 +8,7 @@ offer; a whole offer, with its places on the sheet, is made only for a row that 
 from __future__ import annotations
 
 from collections.abc import Callable, Mapping, Sequence
+from copy import copy
 from dataclasses import replace
 from typing import Any, Self
 
@@ -107,7 +108,11 @@ class Listed(Lot):
         return len(self._rows)
 
     def take(self, which: Whole) -> Self:
-        return type(self)(self._sheet, self._parts, self._bench, self._rows[which], self._loads)
+        taken = copy(self)
+        taken._rows, taken._identity = self._rows[which], self._identity[which]
+        taken._index = {name: codes[which] for name, codes in self._index.items()}
+        taken._columns = {name: column.take(which) for name, column in self._columns.items()}
+        return taken
 
     def ordered(self, loads: Sequence[tuple[float, str] | None], bench: Bench) -> Self:
         rows = zip(self._rows.tolist(), loads, strict=True)

@@ -4,7 +4,7 @@ import numpy as np
 import pytest
 from reference_loops import CASES, circuit_of, crystal_of, swing_of
 
-from compare.boards import Boards, every_board
+from compare.boards import Boards, every_board, load_errors_ppm, steady_state
 from compare.circuit import Circuit
 from compare.oscillation import Crystal, analyse
 
@@ -14,7 +14,8 @@ STARTING = [name for name, case in CASES.items() if case["more"]["oscillates"]]
 
 def lean(circuit, crystal, swing_v=0.4, swing_at="input"):
     boards = Boards.of(circuit, float(np.ravel(crystal.frequency_mhz)[0]))
-    return every_board(boards, crystal, swing_v, swing_at)
+    found = every_board(boards, crystal, swing_v, swing_at, steady_state(boards, crystal))
+    return found | {"load_error_ppm": load_errors_ppm(boards, crystal)}
 
 
 @pytest.mark.parametrize("name", STARTING)
