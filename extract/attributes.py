@@ -57,9 +57,14 @@ def _yes_or_no(text: str | None) -> bool | None:
 _QUALIFIED = re.compile(r"(?i)\bAEC[\s-]?Q[\s-]?200\b")
 
 
+@lru_cache(maxsize=8192)
+def _names_q200(text: str) -> bool:
+    return _QUALIFIED.search(fold(text)) is not None
+
+
 def _qualified(texts: Sequence[str]) -> bool | None:
     """True where a line names AEC-Q200 and withdraws nothing; None where none does."""
-    lines = [fold(text) for text in texts if _QUALIFIED.search(fold(text))]
+    lines = [fold(text) for text in texts if _names_q200(text)]
     if not lines or any(re.search(r"(?i)\b(?:not|no|non|nicht|on request|optional)\b", line) for line in lines):
         return None
     return True

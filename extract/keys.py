@@ -65,11 +65,7 @@ def take_code_rows(rows: Sequence[Row]) -> tuple[list[Key], list[Row]]:
 
 
 def _distinct(cells: Sequence[Cell | None]) -> list[Cell]:
-    seen: list[Cell] = []
-    for cell in cells:
-        if cell is not None and cell.text.strip() and not any(cell is other for other in seen):
-            seen.append(cell)
-    return seen
+    return list({id(cell): cell for cell in cells if cell is not None and cell.text.strip()}.values())
 
 
 def _key(label: Placed, cells: Sequence[Cell]) -> Key:

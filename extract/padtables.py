@@ -48,11 +48,7 @@ def _upright(rows: Sequence[Row]) -> list[Text]:
 
 
 def _cells(row: Row) -> list[Cell]:
-    found: list[Cell] = []
-    for cell in row:
-        if cell is not None and cell.text.strip() and not any(cell is other for other in found):
-            found.append(cell)
-    return found
+    return list({id(cell): cell for cell in row if cell is not None and cell.text.strip()}.values())
 
 
 def _pads(row: Row) -> list[str]:
@@ -62,6 +58,7 @@ def _pads(row: Row) -> list[str]:
     return re.findall(r"\d", text) if _PADS.fullmatch(text) else []
 
 
+@cache
 def _names_pads(text: str) -> bool:
     words = {word.strip("#.").casefold() for word in re.split(r"[\s/]+", fold(text))}
     return any(
