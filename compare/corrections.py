@@ -13,6 +13,7 @@ from typing import Literal, Self
 from pydantic import BaseModel, ConfigDict, model_validator
 
 from extract.model import Part, Reading, SpecSheet
+from extract.partlist import exchanged
 from extract.plausible import doubts
 
 What = Literal["value", "added", "not on the sheet", "as read", "fact"]
@@ -87,8 +88,8 @@ def corrected(sheet: SpecSheet, corrections: Iterable[Correction]) -> SpecSheet:
         by_part.setdefault(one.part, []).append(one)
     if not by_part:
         return sheet
-    parts = tuple(corrected_part(part, by_part[at]) if at in by_part else part for at, part in enumerate(sheet.parts))
-    return sheet.model_copy(update={"parts": parts})
+    changed = {at: corrected_part(sheet.parts[at], own) for at, own in by_part.items() if at < len(sheet.parts)}
+    return sheet.model_copy(update={"parts": exchanged(sheet.parts, changed)})
 
 
 def corrected_part(part: Part, corrections: Sequence[Correction]) -> Part:

@@ -25,15 +25,24 @@ from pydantic import ValidationError
 from compare.corrections import Correction
 from compare.desk import Desk
 from compare.folio_versions import FORMAT, VERSION, upgraded
+from compare.intake import read_bytes
+from compare.sheets_json import write_sheets
 from compare.work import Circuit, History, OpenSheet, Step, Work
-from extract.model import SCHEMA, SpecSheet, written
+from extract.documents.grid import garbage_left
+from extract.model import SCHEMA, SpecSheet
 
 FORMULAS = "quartzfolio/formulas/1"
 """Raised when a formula or a rule changes so that the same readings and bench give other numbers."""
 SUFFIX = ".folio"
 MOST_BYTES = 1 << 30
 """A folio that unpacks to more is refused: it is damaged, or made to fill the machine."""
+LONG_BYTES = 2_000_000
+"""Readings of a sheet in JSON; of more the sheet is read again where it is at hand."""
 ZIP_TIME = (1980, 1, 1, 0, 0, 0)
+
+
+Find = Callable[[str, str], bytes | None]
+"""The bytes of the sheet with that name and sha256, where they lie outside the work."""
 
 
 class FolioError(ValueError):
@@ -84,7 +93,10 @@ def sheet_member(one: OpenSheet) -> str:
 
 
 def sheet_bytes(sheet: SpecSheet) -> bytes:
-    return json.dumps(sheet, ensure_ascii=False, allow_nan=False, default=written).encode()
+    """The sheet as the JSON document that `quartzfolio extract --json` prints."""
+    held = io.StringIO()
+    write_sheets([sheet], [], held)
+    return held.getvalue().encode()
 
 
 def json_bytes(value: Any) -> bytes:
@@ -148,8 +160,8 @@ def read_folio(data: bytes, name: str) -> Reopened:
     return reopen(members, name)
 
 
-def reopen(members: Mapping[str, bytes], name: str) -> Reopened:
-    """The work out of its members by name, as `read_folio`."""
+def reopen(members: Mapping[str, bytes], name: str, find: Find | None = None) -> Reopened:
+    """The work out of its members by name, as `read_folio`; `find` gives the bytes of a sheet that lies elsewhere."""
     told = _json(members, "folio.json", name)
     if not isinstance(told, dict) or told.get("format") != FORMAT:
         raise FolioError(f"{name}: no work file of quartzfolio: folio.json does not say “{FORMAT}”")
@@ -159,7 +171,8 @@ def reopen(members: Mapping[str, bytes], name: str) -> Reopened:
             f"{name}: a work file of version {number!r}, and this program reads 1 to {VERSION}; use a newer one"
         )
     try:
-        work, history = _rebuilt(upgraded(_json(members, "work.json", name), number), members, name)
+        told_work = upgraded(_json(members, "work.json", name), number)
+        work, history = _rebuilt(told_work, _Members(members, name, find or _nowhere))
     except FolioError:
         raise
     except (ValueError, TypeError, KeyError, AttributeError, RecursionError) as fault:
@@ -177,8 +190,21 @@ def _remarks(told: Mapping[str, Any], work: Work, name: str) -> list[str]:
     return said
 
 
-def _rebuilt(told: Mapping[str, Any], members: Mapping[str, bytes], name: str) -> tuple[Work, History]:
-    sheets = {row["key"]: _sheet(row, members, name) for row in told["sheets"]}
+@dataclass(frozen=True)
+class _Members:
+    """What the file holds, by name, and where a sheet may be found that it does not hold."""
+
+    members: Mapping[str, bytes]
+    name: str
+    find: Find
+
+
+def _nowhere(file: str, sha256: str) -> bytes | None:  # noqa: ARG001
+    return None
+
+
+def _rebuilt(told: Mapping[str, Any], held: _Members) -> tuple[Work, History]:
+    sheets = {row["key"]: _sheet(row, held) for row in told["sheets"]}
     circuits = tuple(_circuit(row) for row in told["circuits"]) or (Circuit(),)
     work = Work(
         name=str(told["name"]),
@@ -188,16 +214,15 @@ def _rebuilt(told: Mapping[str, Any], members: Mapping[str, bytes], name: str) -
         at=told["at"] if told["at"] in {one.ident for one in circuits} else circuits[0].ident,
         slots=dict(told["slots"]),
     )
-    steps: Sequence[Any] = _json(members, "history.json", name) if "history.json" in members else ()
-    return work, History(tuple(Step(str(row["said"]), _pieces(row["before"], sheets, members, name)) for row in steps))
+    there = "history.json" in held.members
+    steps: Sequence[Any] = _json(held.members, "history.json", held.name) if there else ()
+    return work, History(tuple(Step(str(row["said"]), _pieces(row["before"], sheets, held)) for row in steps))
 
 
-def _pieces(
-    told: Mapping[str, Any], sheets: dict[str, OpenSheet], members: Mapping[str, bytes], name: str
-) -> dict[str, Any]:
+def _pieces(told: Mapping[str, Any], sheets: dict[str, OpenSheet], held: _Members) -> dict[str, Any]:
     def sheet(key: str) -> OpenSheet | None:
-        if key not in sheets and f"sheets/{key}.json" in members:
-            sheets[key] = _sheet({"key": key}, members, name)
+        if key not in sheets and f"sheets/{key}.json" in held.members:
+            sheets[key] = _sheet({"key": key}, held)
         return sheets.get(key)
 
     rebuilt: dict[str, Callable[[Any], Any]] = {
@@ -216,18 +241,39 @@ def _circuit(told: Mapping[str, Any]) -> Circuit:
     return Circuit(str(told["ident"]), str(told["name"]), desk)
 
 
-def _sheet(row: Mapping[str, Any], members: Mapping[str, bytes], name: str) -> OpenSheet:
-    member = f"sheets/{row['key']}.json"
-    if member not in members:
+def _sheet(row: Mapping[str, Any], held: _Members) -> OpenSheet:
+    member, name = f"sheets/{row['key']}.json", held.name
+    file, sha256 = str(row.get("file")), str(row.get("sha256"))
+    if member not in held.members:
         raise FolioError(f"{name}: damaged, it lacks {member}, the readings of {row.get('file', 'a sheet')}")
-    try:
-        sheet = SpecSheet.model_validate_json(members[member])
-    except ValidationError as fault:
-        raise FolioError(f"{name}: damaged, {member} does not hold readings ({_short(fault)})") from None
-    data = members.get(f"files/{sheet.sha256}")
+    written, data = held.members[member], held.members.get(f"files/{sha256}")
+    sheet = None
+    if len(written) >= LONG_BYTES:
+        sheet = _read_again(written, data if data is not None else held.find(file, sha256), file)
+    if sheet is None:
+        sheet = _from_json(held.members, member, name)
+        data = held.members.get(f"files/{sheet.sha256}")
     if data is not None and hashlib.sha256(data).hexdigest() != sheet.sha256:
         raise FolioError(f"{name}: damaged, the sheet {sheet.file} in it is not the one that was read")
     return OpenSheet(sheet, data)
+
+
+def _read_again(written: bytes, data: bytes | None, file: str) -> SpecSheet | None:
+    """A long list out of its own bytes, which is quicker and leaves it a list; None where it reads otherwise now."""
+    if data is None:
+        return None
+    sheet = read_bytes(data, file)
+    return sheet if sheet_bytes(sheet) == written else None
+
+
+def _from_json(members: Mapping[str, bytes], member: str, name: str) -> SpecSheet:
+    told = _json(members, member, name)
+    try:
+        (only,) = told["sheets"] if isinstance(told, dict) and "sheets" in told else (told,)
+        with garbage_left():
+            return SpecSheet.model_validate(only)
+    except (ValidationError, ValueError) as fault:
+        raise FolioError(f"{name}: damaged, {member} does not hold readings ({_short(fault)})") from None
 
 
 def _json(members: Mapping[str, bytes], member: str, name: str) -> Any:

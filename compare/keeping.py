@@ -6,6 +6,7 @@ is not written again. It lies in the person's own folder for programs' state, re
 
 from __future__ import annotations
 
+import hashlib
 import json
 import os
 import re
@@ -122,9 +123,18 @@ def recall(ident: str) -> Reopened | None:
         members = {path.relative_to(folder).as_posix(): path.read_bytes() for path in found}
     except OSError as fault:
         raise FolioError(f"{folder}: cannot be read: {(fault.strerror or str(fault)).lower()}") from None
-    reopened = reopen(members, "the work kept on this machine")
+    reopened = reopen(members, "the work kept on this machine", _on_disk)
     _sweep(folder, _every_sheet(reopened.work, reopened.history))
     return reopened
+
+
+def _on_disk(file: str, sha256: str) -> bytes | None:
+    """A sheet that was opened by its name, where it still is the one that was read."""
+    try:
+        data = Path(file).read_bytes()
+    except OSError:
+        return None
+    return data if hashlib.sha256(data).hexdigest() == sha256 else None
 
 
 def _sweep(folder: Path, needed: Sequence[OpenSheet]) -> None:

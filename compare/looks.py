@@ -5,6 +5,7 @@ from __future__ import annotations
 import re
 from collections.abc import Mapping, Sequence
 from dataclasses import dataclass
+from itertools import islice
 from typing import Any
 
 from compare.corrections import Correction, lines, of_part, settled
@@ -14,6 +15,7 @@ from compare.shown import NAMES, part_name, value_text
 from compare.work import Work
 from extract.fields import field_of
 from extract.model import Part, Reading, SpecSheet
+from extract.partlist import doubted
 from extract.plausible import central
 
 # A share of certainty tells a person nothing that the picture beside it does not.
@@ -22,6 +24,8 @@ AT_LOAD = re.compile(r"\bRL\b|\bload\b", re.IGNORECASE)
 SLIPS = (1e-3, 1e3, 1e-6, 1e6)
 # What is told to change, in order of what decides most; name, and what it is called in a sentence.
 TOLD = {"margin": "the margin", "total_ppm": "ppm in all", "drive_level_uw": "the drive", "startup_ms": "the start-up"}
+MOST = 500
+"""Parts of one sheet; nobody goes through more of them one by one."""
 TELLING = 0.02
 """A change below this share is none."""
 
@@ -81,10 +85,9 @@ def queue(work: Work) -> list[Look]:
     """Every reading that waits for a look, in the order of the sheets."""
     found = []
     for one, sheet in zip(work.sheets, work.corrected, strict=True):
-        for at, part in enumerate(sheet.parts):
-            if any(reading.check is not None for reading in part.readings):
-                own = of_part(work.corrections, one.key, at)
-                found += _of_part(one.key, sheet, at, one.sheet.parts[at], own)
+        for at in islice(doubted(sheet.parts), MOST):
+            own = of_part(work.corrections, one.key, at)
+            found += _of_part(one.key, sheet, at, one.sheet.parts[at], own)
     return found
 
 

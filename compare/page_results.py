@@ -14,6 +14,7 @@ from compare.bench import Bench
 from compare.ranking import Ranked
 from compare.work import OpenSheet, Work
 from extract.model import SpecSheet, Where
+from extract.partlist import part_numbers
 
 Result = TypeVar("Result")
 
@@ -76,7 +77,7 @@ def key_of(bench: Bench, of: Sequence[SpecSheet]) -> str:
     work: Work = st.session_state.work
     told = [bench.to_toml(), *(one.model_dump_json(exclude_defaults=True) for one in work.corrections)]
     for sheet in of:
-        told += [sheet.file, str(sheet.sha256), *(part.part_number or "" for part in sheet.parts)]
+        told += [sheet.file, str(sheet.sha256), *(number or "" for number in part_numbers(sheet.parts))]
     return hashlib.sha256("\n".join(told).encode()).hexdigest()
 
 

@@ -16,7 +16,9 @@ from compare.page_copy import copy_button
 from compare.page_looks import add_reading, at_look, go_to, put_back_part, reading_area
 from compare.sheet_lines import PartLines
 from compare.work import OpenSheet
+from extract.partlist import part_numbers
 
+MOST_NAMES = 300
 ALL_PARTS, ONE_PART = "All parts", "One part"
 
 
@@ -143,18 +145,38 @@ def chosen_part(one: OpenSheet, at: int) -> PartLines:
     """The part of the sheet that is looked at; a list of them where the sheet has several."""
     parts = one.sheet.parts
     at = min(at, len(parts) - 1)
-    if len(parts) > 1:
+    if len(parts) > MOST_NAMES:
+        at = one_of_many(one, at)
+    elif len(parts) > 1:
         names = [shown.part_name(part, number) for number, part in enumerate(parts, start=1)]
         at = st.selectbox(
             f"Part, of {len(names)} on this sheet",
             range(len(names)),
             index=at,
             format_func=lambda number: names[number],
-            key=f"part_{one.key}_{st.session_state.turn}",
+            key=f"part_{one.key}_{st.session_state.turn}_{st.session_state.moved}",
         )
     if at != at_look()[1]:
         go_to(one.key, at, None)
     return sheet_lines.part_lines(session.work(), one.key, at)
+
+
+def one_of_many(one: OpenSheet, at: int) -> int:
+    """The part of a long list whose number holds what is typed; a list of them would be sent at every press."""
+    numbers = part_numbers(one.sheet.parts)
+    typed = st.text_input(f"Part number, of {len(numbers)} on this sheet", key=f"find_part_{one.key}").strip()
+    if not typed:
+        return at
+    found = [number for number, name in enumerate(numbers) if name and typed.casefold() in name.casefold()]
+    if not found:
+        st.markdown(f":small[No part number of this sheet holds “{pieces.plain(typed)}”.]")
+        return at
+    at = at if at in found else found[0]
+    with st.container(horizontal=True, gap="small", vertical_alignment="center"):
+        st.markdown(f":small[{found.index(at) + 1} of {len(found)} that hold it]", width="content")
+        on = found[(found.index(at) + 1) % len(found)]
+        st.button("Next one", key="next_part", on_click=go_to, args=(one.key, on, None), disabled=len(found) == 1)
+    return at
 
 
 def readings_of(one: OpenSheet, part: PartLines) -> None:

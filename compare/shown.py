@@ -10,6 +10,7 @@ from compare.circuit_text import temperatures
 from compare.figures import counted, exact, scale, spread
 from extract.fields import field_of
 from extract.model import Note, Part, Reading, SpecSheet, When, Where
+from extract.partlist import doubted
 
 if TYPE_CHECKING:
     import pandas as pd
@@ -47,7 +48,7 @@ NAMES = {
 
 def waiting(sheet: SpecSheet) -> int:
     """How many readings of a sheet a person must look at."""
-    return sum(reading.check is not None for part in sheet.parts for reading in part.readings)
+    return sum(doubted(sheet.parts).values())
 
 
 def sheets_frame(sheets: Sequence[SpecSheet]) -> pd.DataFrame:

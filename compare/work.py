@@ -15,9 +15,10 @@ from typing import Any
 from compare.corrections import Correction, corrected
 from compare.desk import Desk
 from extract.model import Part, SpecSheet
+from extract.partlist import part_numbers
 
 # Each circuit has its own; the other slots belong to the work as a whole.
-OF_A_CIRCUIT = ("filters", "weights", "measured", "decisions", "selection", "report")
+OF_A_CIRCUIT = ("filters", "weights", "measured", "decisions", "selection", "report", "trial", "settings")
 OF_THE_WORK = ("supply", "notes")
 SLOTS = (*OF_THE_WORK, *OF_A_CIRCUIT)
 MOST_STEPS = 100
@@ -34,7 +35,7 @@ class OpenSheet:
     @cached_property
     def key(self) -> str:
         """What tells sheets apart, the same on every machine: name, content, and the parts that were asked for."""
-        told = [self.sheet.file, self.sheet.sha256 or "", *(part.part_number or "" for part in self.sheet.parts)]
+        told = [self.sheet.file, self.sheet.sha256 or "", *(number or "" for number in part_numbers(self.sheet.parts))]
         return hashlib.sha256("\n".join(told).encode()).hexdigest()[:20]
 
 

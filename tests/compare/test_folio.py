@@ -17,6 +17,7 @@ from compare.folio import FolioError, folio_bytes, read_folio
 from compare.folio_versions import STEPS, VERSION
 from compare.work import Circuit, OpenSheet, Work
 from extract import read_sheet
+from extract.partlist import PartList
 
 MAIL = hand_made.MAIL.encode()
 OPEN = OpenSheet(read_sheet(MAIL, "offer.txt"), MAIL)
@@ -99,7 +100,8 @@ def test_the_file_says_what_it_is_and_carries_the_bench_for_the_command_line():
     assert (told["version"], told["saved"], told["schema"]) == (VERSION, SAVED, "quartzfolio/extract/1")
     assert {"program", "formulas"} <= set(told)
     assert b"frequency_mhz = 26.0" in inside["bench/c1.toml"]
-    assert json.loads(inside[f"sheets/{OPEN.key}.json"])["file"] == "offer.txt"
+    document = json.loads(inside[f"sheets/{OPEN.key}.json"])
+    assert (document["schema"], document["sheets"][0]["file"]) == ("quartzfolio/extract/1", "offer.txt")
 
 
 def test_the_same_work_gives_the_same_bytes():
@@ -200,3 +202,29 @@ def test_names_that_lead_out_of_a_folder_are_never_written(tmp_path, monkeypatch
 
 def test_the_fingerprint_in_the_file_is_that_of_the_sheet():
     assert OPEN.sheet.sha256 == hashlib.sha256(MAIL).hexdigest()
+
+
+def long_list(rows):
+    head = "part number,frequency MHz,CL pF,ESR ohm max,drive uW"
+    data = "\n".join([head, *(f"ABX-{at},26.0,{8 + at % 3},50,100" for at in range(rows))]).encode()
+    return OpenSheet(read_sheet(data, "list.csv"), data)
+
+
+def test_a_long_list_that_is_at_hand_comes_back_as_a_list(monkeypatch):
+    one = long_list(300)
+    monkeypatch.setattr(folio, "LONG_BYTES", 10_000)
+    with_it, without = (
+        read_folio(folio_bytes(Work(sheets=(one,)), SAVED, files=files), "work.folio").work
+        for files in ({one.sheet.sha256: one.data}, None)
+    )
+    assert isinstance(with_it.sheets[0].sheet.parts, PartList)
+    assert isinstance(without.sheets[0].sheet.parts, tuple)
+    assert with_it.sheets[0].sheet == without.sheets[0].sheet == one.sheet
+
+
+def test_a_long_list_that_would_be_read_otherwise_now_keeps_its_readings(monkeypatch):
+    one = long_list(300)
+    other = one.sheet.model_copy(update={"parts": tuple(one.sheet.parts)[:299]})
+    monkeypatch.setattr(folio, "LONG_BYTES", 10_000)
+    data = folio_bytes(Work(sheets=(OpenSheet(other, one.data),)), SAVED, files={one.sheet.sha256: one.data})
+    assert len(read_folio(data, "work.folio").work.sheets[0].sheet.parts) == 299

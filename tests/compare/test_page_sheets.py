@@ -308,3 +308,16 @@ def test_a_circuit_is_added_with_its_own_fields_and_removed(page):
     assert page.text_input(key="field_circuit_input_capacitor_pf").value == ""
     press(page, "drop_circuit")
     assert page.text_input(key="field_circuit_input_capacitor_pf").value == "13 pF"
+
+
+def test_a_part_of_a_long_list_is_found_by_its_number(page):
+    rows = ["part number,frequency MHz,CL pF,ESR ohm max", *(f"ABX-{at:03},26.0,8,50" for at in range(400))]
+    drop(page, ("list.csv", "\n".join(rows)))
+    assert "## ABX-000" in said(page)
+    find = next(one for one in page.text_input if one.key.startswith("find_part_"))
+    find.set_value("x-12").run()
+    assert "## ABX-120" in said(page)
+    press(page, "next_part")
+    assert "## ABX-121" in said(page)
+    next(one for one in page.text_input if one.key.startswith("find_part_")).set_value("zzz").run()
+    assert "No part number of this sheet holds “zzz”." in said(page)
