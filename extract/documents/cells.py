@@ -11,6 +11,7 @@ from extract.documents.model import Cell, Table
 from extract.documents.piece import Piece
 from extract.documents.rows import rows_parted
 from extract.documents.ruled import GridCell
+from extract.documents.sharing import shared_out
 from extract.documents.unfolded import unfolded
 from extract.documents.words import Box, Word, confidence_of, split_at_gaps, text_of, union
 from extract.model import Where
@@ -23,6 +24,8 @@ Placer = Callable[[Box], Where]
 def table_of(pieces: Sequence[Piece], place: Placer, *, ruled: bool, title: str = "") -> Table:
     """Table of cells that hold words, after columns and rows have been parted where the words show more than lines."""
     pieces, columns = unfolded(*without_empty(rows_parted(spans_parted(columns_parted(lines_parted(pieces))))))
+    if not ruled:
+        pieces, columns = without_empty(shared_out(pieces))
     box = union(piece.cell.box for piece in pieces)
     cells = tuple(
         Cell(
