@@ -8,7 +8,7 @@ from __future__ import annotations
 
 import re
 from dataclasses import dataclass, replace
-from functools import lru_cache
+from functools import cache, lru_cache
 
 from extract.attach import Amount, attach, own_amounts, share_years
 from extract.band import joined, when_of
@@ -96,6 +96,12 @@ def _read(text: str, field_name: str, given: _Given) -> tuple[Value, ...]:
     row = field_of(field_name)
     heading = _heading(given, field_name)
     folded = fold(text)[:LONGEST_AMOUNT]
+    hours: re.Match[str] | None = None
+    if row.limit == "min":
+        folded = _above().sub("≥", folded)
+    if field_name == "ageing_ppm":
+        hours = _HOURS.search(folded)
+        folded = _HOURS.sub(" ", folded)
     if field_name == "parabolic_coefficient_ppm_per_c2":
         folded = _out_of_formula(folded)
     if heading.bound is None and (told := _bounds_behind(folded)):
@@ -117,6 +123,9 @@ def _read(text: str, field_name: str, given: _Given) -> tuple[Value, ...]:
         values.append(Value(series=True))
     if not values:
         values = _refused(items, pieces, row)
+    if hours is not None:
+        years = When(years=round(float(hours[1]) / HOURS_OF_A_YEAR, 4))
+        values = [replace(value, when=joined(value.when, years)) for value in values]
     raw = text.strip()
     return tuple(replace(value, raw=raw, when=joined(heading.when, value.when)) for value in values)
 
@@ -133,6 +142,7 @@ def _bounds_behind(folded: str) -> tuple[str, str] | None:
     return folded[: found.start()], "/".join(bound for bound in bounds if bound)
 
 
+@lru_cache(maxsize=4096)
 def _heading(given: _Given, field_name: str) -> Heading:
     if not given.unit:
         return Heading(None, given.bound, given.plus_minus, When(), given.decimal)
@@ -244,6 +254,17 @@ _PER_SQUARE = re.compile(
 _FORMULA = re.compile(
     r"\s?(?:ppm(?:\s?/\s?°C\^?2)?\s?)?[x×*·]?\s?\(\s?Δ?[Ttθ][a-z]?\s?-\s?(?:[Ttθ]\s?\w{0,3}|25(?:\s?°C)?)\s?\)\s?\^?2(?:\s?ppm\b)?"
 )
+
+
+@cache
+def _above() -> re.Pattern[str]:
+    """A word for "more than" that a text begins with ("Over 500 MΩ")."""
+    words = "|".join(map(re.escape, vocabulary().phrases.get("above", ())))
+    return re.compile(rf"^\s*(?:{words})\s+(?=\d)", re.IGNORECASE)
+
+
+HOURS_OF_A_YEAR = 8766.0
+_HOURS = re.compile(r"/\s?(\d{3,5})\s?(?:h(?:ours|rs|\.)?|Std\.?|heures|ore|horas|小时|小時|時間)(?![a-zA-Z])")
 
 
 def _out_of_formula(folded: str) -> str:

@@ -78,7 +78,19 @@ def read(
     if not found and _BRACKET.search(text):
         # What a bracket withdraws ("series resonance on request") is not the value before it.
         found = amount.read_values(_BRACKET.sub(" ", text), field, unit=unit, bound=bound, plus_minus=plus_minus)
-    return tuple(value for value in found if not value.empty or value.series)
+    kept_values = tuple(value for value in found if not value.empty or value.series)
+    return _recommended_within(kept_values) if field == "drive_level_uw" else kept_values
+
+
+def _recommended_within(values: tuple[amount.Value, ...]) -> tuple[amount.Value, ...]:
+    """A drive level "10~100 µW (max. 300 µW)": the range is what is recommended, the greater maximum the limit."""
+    if len(values) != 2:
+        return values
+    span, limit = values
+    inside = None not in (span.min, span.max) and limit.min is None and limit.typ is None and limit.max is not None
+    if not inside or limit.max is None or span.max is None or limit.max < span.max:
+        return values
+    return (replace(limit, doubts=()),)
 
 
 def _without_offer(text: str, unit: str | None) -> str:
@@ -347,7 +359,12 @@ def _measured_at(entry: Entry, label: Label, pieces: Iterable[Placed]) -> Pair |
     """The one temperature that stands beside an ESR: at the value, in a condition or in the label."""
     if label.field != "esr_ohm":
         return None
-    texts = [fold(text) for text in (*(piece.text for piece in pieces), *entry.conditions, entry.label.text)]
+    return measured_in((*(piece.text for piece in pieces), *entry.conditions, entry.label.text))
+
+
+def measured_in(printed: Iterable[str]) -> Pair | None:
+    """The one temperature that texts beside a value name; None for none, for several or for a range."""
+    texts = [fold(text) for text in printed]
     found = [number for text in texts for number in _DEGREES.findall(text)]
     if len(found) != 1 or any(condition_of(text).temperature_c is not None for text in texts):
         return None

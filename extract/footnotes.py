@@ -37,7 +37,9 @@ def footnote_of(text: str) -> tuple[str, str] | None:
     return _name(mark), match["text"]
 
 
-_NEXT = re.compile(r"(?i)(?<=[.;:)\w])\s+(?=(?:\*\d{1,2}|※\s?\d|[(\[]\d{1,2}[)\]]|(?:note|注)\s?\d{1,2}\b)[\s:.)]*\S)")
+_NEXT = re.compile(
+    r"(?i)(?<=[.;:)\w。；])\s+(?=(?:\*\d{1,2}|※\s?\d|[(\[]\d{1,2}[)\]]|(?:note|注)\s?\d{1,2}\b)[\s:.)]*\S)"
+)
 
 
 def footnotes_in(text: str) -> list[tuple[str, str]]:

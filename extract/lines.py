@@ -6,15 +6,17 @@ import math
 import re
 from collections.abc import Iterator, Sequence
 from dataclasses import replace
+from functools import cache
 from itertools import pairwise
 
+from extract import wording
 from extract.candidates import has_unit, read
 from extract.conditions import kinds_of
 from extract.documents.model import Line
 from extract.dumps import column_dump
 from extract.entries import Entry, Item, Key, Piece, Text, Value
 from extract.fold import fold
-from extract.footnotes import footnote_of
+from extract.footnotes import footnote_of, footnotes_in
 from extract.heads import is_unit
 from extract.keys import choices_in, key_label
 from extract.meaning import meaning, part_tokens
@@ -87,6 +89,8 @@ def _stream(lines: Sequence[Line], index: int, items: list[Item], fragments: Fra
         items.extend(stream_entries(lines[index : index + count], "pair"))
         return count
     count = paragraph(lines, index)
+    # A line that lists one part begins what is said of it.
+    count = next((at for at in range(1, count) if begins_with_part(lines[index + at].text)), count)
     if count < 2:
         return 0
     run = lines[index : index + count]
@@ -105,7 +109,7 @@ def _text(line: Line) -> Text:
 def _one(line: Line, items: list[Item]) -> int:
     # A part number in the line begins a part, and the line's text belongs to that part: a line that begins with it goes
     # before what it states.
-    own = [] if _is_footnote(line.text) else list(_entries(line))
+    own = _of_footnotes(line) if _is_footnote(line.text) else list(_entries(line))
     first = begins_with_part(line.text) or speaks_of_all(line.text)
     items.extend([_text(line), *own] if first else [*own, _text(line)])
     return 1
@@ -113,18 +117,29 @@ def _one(line: Line, items: list[Item]) -> int:
 
 def begins_with_part(text: str) -> bool:
     """Whether a line lists one part: its number first, perhaps numbered, and behind it what it is."""
-    plain = ROW_NUMBER.sub("", fold(text))
+    plain = without_number(fold(text))
     tokens = part_tokens(plain)
     return bool(tokens) and bool(
         re.match(re.escape(tokens[0]) + r"(?:\s?[:,;–-]|\s\(?\d+(?:[.,]\d+)?\s?[MkK]Hz)", plain)
     )
 
 
+@cache
+def _proposal() -> re.Pattern[str]:
+    words = "|".join(map(re.escape, vocabulary().phrases.get("proposal", ())))
+    return re.compile(rf"^\s*(?:{words})\.?\s?(?:no\.?\s?)?[A-Z\d]{{1,2}}\s?[:：.)）–-]\s?", re.IGNORECASE)
+
+
+def without_number(text: str) -> str:
+    """A line without the number or letter of its row ("2) ", "Option B: ")."""
+    return _proposal().sub("", ROW_NUMBER.sub("", text))
+
+
 def speaks_of_all(text: str) -> bool:
     """Whether a line says something of all parts named ("All parts: storage -55 to +125 °C")."""
     folded = ROW_NUMBER.sub("", fold(text)).casefold().lstrip(" (")
     return any(
-        folded.startswith(word) and not folded[len(word) : len(word) + 1].isalpha()
+        folded.startswith(word) and not (word[-1].isascii() and folded[len(word) : len(word) + 1].isalpha())
         for word in vocabulary().phrases.get("all_parts", ())
     )
 
@@ -139,6 +154,22 @@ def _is_footnote(text: str) -> bool:
         return False
     pairs = split_pairs(found[1])[0]
     return not pairs or not found[1].lstrip(" -*").startswith(pairs[0][0])
+
+
+def _of_footnotes(line: Line) -> list[Entry]:
+    """What footnotes state by themselves: ranges of temperature under their own label."""
+    notes = [note for _, note in footnotes_in(line.text) if _states_a_range(note)]
+    return [entry for note in notes for entry in pair_entries(Piece(note, line.where))]
+
+
+def _states_a_range(note: str) -> bool:
+    """Whether a footnote is a label of a temperature range with the range behind it, and no more."""
+    labels = wording.find_labels(note)
+    label = labels[0] if labels and labels[0].start == 0 else None
+    if label is None or label.label.field not in ("operating_temperature_c", "storage_temperature_c"):
+        return False
+    values = read(note[label.end :], label.label.field)
+    return len(values) == 1 and None not in (values[0].min, values[0].max) and len(note) < 60
 
 
 def _entries(line: Line) -> Iterator[Entry]:

@@ -9,10 +9,11 @@ from __future__ import annotations
 import re
 from collections.abc import Callable, Iterator, Sequence
 from dataclasses import dataclass, field, replace
+from itertools import pairwise
 
 from extract import trace, wording
 from extract.amount import field_for
-from extract.candidates import Candidate, label_doubts, read
+from extract.candidates import Candidate, has_unit, label_doubts, measured_in, read
 from extract.conditions import band_of, condition_of, kept, merged
 from extract.drafts import Draft
 from extract.entries import Listing, Placed
@@ -165,6 +166,7 @@ def _settle(columns: list[ListColumn], listing: Listing) -> None:
         elif column.use == "band":
             column.label = wording.read_label("frequency range")
             column.use = ""
+    _unhead_bands(columns, texts)
     numbered = [column for column in columns if column.use == "part_number"]
     good = [column for column in numbered if _share(texts[column.index], _is_token) > 0.4]
     for column in numbered:
@@ -172,6 +174,18 @@ def _settle(columns: list[ListColumn], listing: Listing) -> None:
             column.use = "description"
     if not numbered and any(column.use in _MAY_NUMBER for column in columns):
         _part_column_by_content(columns, texts)
+
+
+def _unhead_bands(columns: Sequence[ListColumn], texts: dict[int, list[str]]) -> None:
+    """A head over a column of bands speaks of the values in the headless column beside it."""
+    for column, beside in pairwise(columns):
+        field = column.label.field if column.label is not None else "frequency_mhz"
+        if field == "frequency_mhz" or any(beside.head.levels) or beside.label is not None or not texts[column.index]:
+            continue
+        banded = all(band_of(text) is not None and not has_unit(text, field) for text in texts[column.index])
+        if banded and all(has_unit(text, field) for text in texts[beside.index]):
+            beside.label, beside.head = column.label, column.head
+            column.label = wording.read_label("frequency range")
 
 
 def _part_column_by_content(columns: list[ListColumn], texts: dict[int, list[str]]) -> None:
@@ -224,6 +238,7 @@ def cell_candidates(cell: Placed, column: ListColumn, when: When, subject: str =
             inferred=not label.exact,
             source="table",
             subject=subject,
+            measured_c=measured_in(column.head.levels) if label.field == "esr_ohm" else None,
         )
         if trace.asked():
             heads = column.head.levels
@@ -242,8 +257,13 @@ def _part_drafts(listing: Listing, columns: list[ListColumn]) -> Iterator[Draft]
             yield _named(base, cell, column)
 
 
+_BROKEN_NUMBER = re.compile(r"(?<=\w[-/])\s*\n\s*(?=\w)")
+
+
 def part_name(text: str) -> str:
     """The part number in a cell of its column, other words left out."""
+    # A number broken behind its own hyphen.
+    text = _BROKEN_NUMBER.sub("", text)
     words = text.split()
     tokens = part_tokens(" ".join(words)) if len(words) != 1 else ()
     return tokens[0] if tokens else " ".join(words)
@@ -373,6 +393,10 @@ def _series_drafts(listing: Listing, columns: list[ListColumn]) -> list[Draft]:
     # A range beside its stability says where that holds; what the part may be used in stands elsewhere.
     keys = (*KEYS, RANGE) if STABILITY in names else KEYS
     others = [column for column in fields if column.label is not None and column.label.field not in keys]
+    if len(listing.rows) == 1 and _is_whole_part(listing.rows[0], fields):
+        # One row under the labels of all that one part has.
+        others, columns = fields, []
+    draft.candidates.extend(_loads_offered(listing, fields) if others and "esr_ohm" in names else ())
     for row, section in zip(listing.rows, listing.sections, strict=True):
         when, subject = _row_key(row, columns, section, alone=not others)
         for column in others if others else fields:
@@ -384,6 +408,33 @@ def _series_drafts(listing: Listing, columns: list[ListColumn]) -> list[Draft]:
             own = own if column.label.field == STABILITY or RANGE not in names else _without_range(own)
             draft.candidates.extend(cell_candidates(cell, column, own, column.subject or subject))
     return [draft] if draft.candidates else []
+
+
+LEAST_OF_A_PART = 5
+
+
+def _is_whole_part(row: Sequence[Placed | None], fields: Sequence[ListColumn]) -> bool:
+    """Whether a row states one frequency and as many other properties as only a whole specification has."""
+    named = {column.label.field for column in fields if column.label is not None}
+    cells = [row[column.index] for column in fields if column.label and column.label.field == "frequency_mhz"]
+    bands = [band_of(cell.text, None) for cell in cells if cell is not None]
+    return len(named) >= LEAST_OF_A_PART and len(bands) == 1 and bands[0] is not None and bands[0][0] == bands[0][1]
+
+
+def _loads_offered(listing: Listing, fields: Sequence[ListColumn]) -> Iterator[Candidate]:
+    """The loads down a column that says where the other values hold: what may be ordered, if nothing else says so."""
+    column = next((each for each in fields if each.label and each.label.field == "load_capacitance_pf"), None)
+    if column is None or len(listing.rows) > LONGEST_BANDS:
+        return
+    found = [
+        each
+        for row in listing.rows
+        if (cell := row[column.index]) is not None
+        for each in cell_candidates(cell, column, When())
+    ]
+    loads = list(dict.fromkeys(each.typ for each in found if each.typ is not None))
+    if len(loads) > 1 and all(each.typ is not None for each in found):
+        yield replace(found[0], typ=None, options=tuple(loads), source="key")
 
 
 def _without_range(when: When) -> When:

@@ -7,6 +7,7 @@ from collections.abc import Iterator, Sequence
 from dataclasses import dataclass, field, replace
 from itertools import pairwise
 
+from extract import wording
 from extract.candidates import has_unit, read
 from extract.conditions import kinds_of
 from extract.documents.model import Cell
@@ -63,12 +64,19 @@ def _halves(body: Sequence[Row], heads: Sequence[Head]) -> list[tuple[int, int]]
     for column in range(2, width - 1):
         cells = [row[column] for row in body if column < len(row) and row[column] is not None]
         texts = {id(cell): cell.text for cell in cells if cell is not None and cell.column == column}
-        labels = sum(_is_label(text) for text in texts.values())
-        if labels >= 2 and labels >= 0.6 * len(texts) and not _mostly_symbols(list(texts.values())):
+        labels = sum(_is_label(text) or _is_named_trap(text) for text in texts.values())
+        own = sum(_is_label(text) for text in texts.values())
+        if own >= 2 and labels >= 2 and labels >= 0.6 * len(texts) and not _mostly_symbols(list(texts.values())):
             starts.append(column)
     if heads and len(starts) > 1:
         starts = [start for start in starts if start == 0 or heads[start].role == "parameter"]
     return list(zip(starts, [*starts[1:], width], strict=True))
+
+
+def _is_named_trap(text: str) -> bool:
+    """Whether a text names what is no property ("Shock", "Reflow"), beside labels that are."""
+    found = meaning(text)
+    return found.trap is not None and not found.value and len(text) < 40
 
 
 def _is_label(text: str) -> bool:
@@ -116,10 +124,20 @@ def _guessed_heads(rows: Sequence[Row]) -> list[Head]:
         else:
             heads.append(Head(()))
     numeric = _numeric_columns(rows, heads)
-    if len(numeric) == 3:
+    if len(numeric) == 3 and _ascending(rows, numeric):
         for column, bound in zip(numeric, ("min", "typ", "max"), strict=True):
             heads[column] = Head((), role=bound, bound=BOUNDS[bound], guessed=True)
     return heads
+
+
+def _ascending(rows: Sequence[Row], columns: Sequence[int]) -> bool:
+    """Whether no row's numbers fall from left to right or stay the same: else the columns are three parts."""
+    for row in rows:
+        texts = [fold(cell.text) for column in columns if column < len(row) and (cell := row[column]) is not None]
+        numbers = [float(text.replace(",", ".")) for text in texts if re.fullmatch(r"[-+]?\d+(?:[.,]\d+)?", text)]
+        if len(numbers) == len(columns) and (numbers != sorted(numbers) or numbers[0] == numbers[-1]):
+            return False
+    return True
 
 
 def _looks_like_symbol(text: str) -> bool:
@@ -259,7 +277,7 @@ def _place(found: _Row, cell: Cell, head: Head, span: list[Head], *, governed: b
     elif any(role in _VALUE_ROLES for role in roles) or _is_subject(head):
         found.values.extend(_values(cell, span, governed=governed))
     elif head.role in _KEY_ROLES or head.label is not None:
-        found.conditions.append(cell.text)
+        found.conditions.append((wording.mode_of(cell.text) if head.role == "mode" else None) or cell.text)
     elif is_unit(cell.text) and not found.unit:
         found.unit = cell.text
     elif not found.values and not found.symbol and _looks_like_symbol(cell.text) and not meaning(cell.text).value:

@@ -2,13 +2,14 @@
 
 from __future__ import annotations
 
+import re
 from collections import Counter
 from collections.abc import Iterator, Sequence
 from dataclasses import dataclass, field, replace
 
 from extract import trace
 from extract.blocks import Blocks
-from extract.candidates import entry_candidates, key_candidates, offers_series
+from extract.candidates import entry_candidates, key_candidates, label_of, offers_series, read
 from extract.drafts import Draft, cuts_in, modes_in
 from extract.entries import Entry, Key, Listing, Text
 from extract.finish import CRYSTAL_FIELDS, inherit, lacks_crystal, part_of
@@ -177,7 +178,7 @@ def _take_entry(draft: Draft, entry: Entry, blocks: Blocks, heading: str) -> Non
     if asks_of_a_crystal(about):
         trace.passed(f"{entry.label.text}", entry.where, "stands under a heading of what a chip asks of a crystal")
         return
-    if says(about, "reliability"):
+    if says(about, "reliability") and not _is_range(entry):
         trace.passed(f"{entry.label.text}", entry.where, "stands under a heading of reliability tests")
         return
     found = entry_candidates(entry)
@@ -197,6 +198,16 @@ def _take_entry(draft: Draft, entry: Entry, blocks: Blocks, heading: str) -> Non
         if found[0].field == "frequency_mhz":
             for value in entry.values:
                 draft.take_mode_and_cut(value.piece.text)
+
+
+def _is_range(entry: Entry) -> bool:
+    """Whether a row under a heading such as "Environmental" states the range of use or storage all the same."""
+    label = label_of(entry)
+    if label is None or not label.exact or label.field not in ("operating_temperature_c", "storage_temperature_c"):
+        return False
+    values = [each for value in entry.values for each in read(value.piece.text, label.field)]
+    numbers = re.findall(r"\d+(?:[.,]\d+)?", " ".join(value.piece.text for value in entry.values))
+    return len(values) == 1 and None not in (values[0].min, values[0].max) and len(numbers) == 2
 
 
 def says(texts: Sequence[str], kind: str) -> bool:

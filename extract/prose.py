@@ -26,7 +26,9 @@ _ABBREVIATED = "".join(
 _SENTENCE = re.compile(
     rf"(?i:{_ABBREVIATED})(?<=[^\W\d])[.;!?]\s+(?=[^\W\d_])(?![a-zà-ÿ])|(?<=[\d%)°])(?<![\s(]\d)[.;]\s+(?=[^\W\d_])|[。；]\s*|\n"
 )
-_NEW_SENTENCE = re.compile(r"\d[^.]{0,6}\.\s|\)\.?\s(?=\S+\s)")
+_NEW_SENTENCE = re.compile(
+    r"(?<=[a-zà-ÿ]{5})(?<!equiv)(?<!capac)(?<!resis)(?<!toler)\.\s+(?=[A-Z])|\d[^.]{0,6}\.\s|\)\.?\s(?=\S+\s)"
+)
 _SUBSCRIPT = re.compile(r"(?<=(?<![A-Za-z0-9])[A-Za-z])_(?=[A-Za-z0-9])")
 _LONG_BRACKET = re.compile(r"\([^()]{24,}\)")
 _UNITLESS = ("quality_factor", "capacitance_ratio")

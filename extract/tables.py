@@ -25,6 +25,7 @@ from extract.meaning import Meaning, is_part_token, meaning, part_tokens
 from extract.padtables import read_pad_table
 from extract.paramrows import parameter_entries
 from extract.samples import heads_samples, of_samples, with_measured
+from extract.shared_rows import shared_by_models
 from extract.vocabulary import vocabulary
 
 Row = Sequence[Cell | None]
@@ -83,11 +84,7 @@ class _Block:
 
 def distinct(row: Row) -> list[Cell]:
     """The cells of a row that hold text, a spanning one once, from left to right."""
-    seen: list[Cell] = []
-    for cell in row:
-        if cell is not None and cell.text.strip() and not any(cell is other for other in seen):
-            seen.append(cell)
-    return seen
+    return list({id(cell): cell for cell in row if cell is not None and cell.text.strip()}.values())
 
 
 def _blocks(rows: list[Row], title: str) -> Iterator[_Block]:
@@ -199,7 +196,7 @@ def is_head(row: Row) -> bool:
 def _heads_models(cells: Sequence[Cell], known: Sequence[Meaning], names: Sequence[str | None], roles: int) -> bool:
     """Whether one named head stands before models, packages or a bare unit: one column for each of them."""
     tokens = len({cell.text for cell in cells[1:] if is_part_token(cell.text)})
-    if known[0].role == "parameter" or known[0].identity == "part_number":
+    if known[0].role == "parameter" or known[0].identity in ("part_number", "stock_number"):
         return tokens >= 2 and tokens + roles >= len(cells) - 2
     if names[0] in ("frequency_mhz", "load_capacitance_pf") and not known[0].value:
         return all(is_part_token(cell.text) or is_package(cell.text) for cell in cells[1:])
@@ -301,7 +298,7 @@ def _read_block(block: _Block, table: Table) -> Iterator[Item]:
     if heads and _is_listing(block, heads):
         yield from _listings(block, heads, table)
         return
-    yield from parameter_entries(whole(block.body), heads, block.above or block.title)
+    yield from parameter_entries(shared_by_models(whole(block.body), heads), heads, block.above or block.title)
 
 
 _DESCRIBED = [interpret(("description",))]

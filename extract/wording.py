@@ -59,14 +59,33 @@ def read_label(text: str) -> Label | None:
     if not folded or len(folded) > LONGEST_LABEL or key(folded).isdigit():
         return None
     parts = take_apart(folded)
+    if any(_trap_in(inside) == _TOTAL for inside in parts.brackets):
+        return None
     if shared := _shared_by_condition(parts, folded):
         return _label(parts, shared)
     if key(parts.core) in vocabulary().shared and not parts.brackets:
         return None
     found = _exact(parts) or _beside_symbol(parts) or _inside(parts) or _run_together(parts) or _misspelt(parts)
+    found = found or _one_of_two_languages(folded)
     if found and found.bound is None and field_of(found.field).limit == "max" and _recommends(folded):
         return replace(found, bound="typ")
     return found
+
+
+# "Tolerance (total over temperature)" is neither tolerance nor stability.
+_TOTAL = "a total of all causes"
+_LANGUAGES = re.compile(r"(?<=[^\W\d_])\s*(?:\s/\s|\n)\s*(?=[^\W\d_])")
+
+
+def _one_of_two_languages(folded: str) -> Label | None:
+    """The field of "Charge / Load" where one of the two is a wording and the other is in a language not known."""
+    pieces = _LANGUAGES.split(folded)
+    if len(pieces) != 2 or any(re.search(r"\d", piece) or len(piece.split()) > 4 for piece in pieces):
+        return None
+    known = [label for piece in pieces if (label := read_label(piece)) is not None and label.exact]
+    if len(known) != 1 or known[0].symbol or any(_trap_in(piece) for piece in pieces):
+        return None
+    return replace(known[0], exact=False)
 
 
 _ROOM = re.compile(r"(?<![\d.,±-])\+?2[0-9]\s?(?:±\s?\d\s?)?(?:°|C\b)")

@@ -15,7 +15,7 @@ from extract.units import kinds
 from extract.vocabulary import vocabulary
 
 # What a line that is not at its end ends in: a sign between two numbers, a relation, an opened list.
-_OPEN_END = re.compile(r"[~…≤≥<>=±@,]$|(?<![\w-])[-+]?\d[\d.]*\s*[a-zΩμµ°]{0,3}\s*-$", re.IGNORECASE)
+_OPEN_END = re.compile(r"[~…≤≥<>=±@,]$|[^\W\d_]/$|(?<![\w-])[-+]?\d[\d.]*\s*[a-zΩμµ°]{0,3}\s*-$", re.IGNORECASE)
 # A relation in the middle of a band ("20 MHz" above "≤ f < 30 MHz").
 _MIDDLE = re.compile(r"(?:[≤≥<>]\s*f\b|[~…]\s*[-+]?\d)", re.IGNORECASE)
 _UNIT_ALONE = re.compile(r"[^\s\d,;:()]+")
@@ -40,7 +40,8 @@ def unwrapped(text: str) -> str:
     lines = text.split("\n")
     out = lines[0]
     for line in lines[1:]:
-        out += (" " if _runs_on(fold(out.rpartition("\n")[2]).strip(), fold(line).strip()) else "\n") + line
+        joint = "" if out.endswith("/") else " "
+        out += (joint if _runs_on(fold(out.rpartition("\n")[2]).strip(), fold(line).strip()) else "\n") + line
     return out
 
 

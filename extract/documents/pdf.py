@@ -163,7 +163,7 @@ def _read_page(quick: Any, slow: _Plumber, number: int, wanted: Callable[[str], 
     frame = pdfium_frame(page)
     text_page = page.get_textpage()
     text = text_page.get_text_range()
-    printed = len(re.sub(r"\s", "", text))
+    printed = sum(map(len, text.split()))
     result = _Page(height=frame.size[1])
     looked_through = number > 1 and len(quick) > CATALOGUE_PAGES and wanted is not None
     if looked_through and printed > ALMOST_NO_TEXT and wanted is not None and not wanted(text):
@@ -245,9 +245,11 @@ def _slanted_lines(glyphs: Sequence[Glyph], place: Callable[[Box], Where]) -> li
 
 
 def _broken_notes(glyphs: Sequence[Glyph], number: int) -> list[Note]:
-    broken = [glyph for glyph in glyphs if is_broken(translated(glyph.text, glyph.font))]
-    if not broken:
+    kinds = {(glyph.text, glyph.font) for glyph in glyphs}
+    kinds = {(text, font) for text, font in kinds if is_broken(translated(text, font))}
+    if not kinds:
         return []
+    broken = [glyph for glyph in glyphs if (glyph.text, glyph.font) in kinds]
     shown = ", ".join(repr(text) for text, _ in Counter(glyph.text for glyph in broken).most_common(3))
     message = (
         f"Page {number}: {len(broken)} characters come out of the file's text as {shown}, since its fonts do "
@@ -327,6 +329,10 @@ def _left_out_note(pages: Sequence[_Page]) -> list[Note]:
     return [Note(level="info", message=message)]
 
 
+# Share of the page's height; what is taller is a text on its side.
+TALLEST_RUNNING = 0.1
+
+
 def _page_headers(pages: Sequence[_Page]) -> tuple[Line, ...]:
     """Take the running heads and feet off the pages: lines alike on several pages, and a last line set apart.
 
@@ -364,7 +370,9 @@ def _running(line: Line, page: _Page) -> str:
 
 def _at_edge(line: Line, page: _Page) -> bool:
     box = line.where.box
-    return box is not None and page.height > 0 and (box[1] < 0.12 * page.height or box[3] > 0.9 * page.height)
+    if box is None or page.height <= 0 or box[3] - box[1] > TALLEST_RUNNING * page.height:
+        return False
+    return box[1] < 0.12 * page.height or box[3] > 0.9 * page.height
 
 
 def _is_foot(line: Line, page: _Page) -> bool:

@@ -24,6 +24,8 @@ def rows_parted(pieces: Sequence[Piece]) -> list[Piece]:
         own = [piece for piece in result if piece.cell.row == row and piece.cell.row_span == 1]
         if on_one_line([word for piece in own for word in piece.words if not word.angle]):
             continue
+        if _mostly_wrapped(own):
+            continue
         levels = _levels(own)
         borders = [] if levels or _has_one_label(own) else _row_borders(own, strict=count > FEW_ROWS)
         levels = levels if levels or borders else _fresh_levels(own)
@@ -32,6 +34,31 @@ def rows_parted(pieces: Sequence[Piece]) -> list[Piece]:
         elif borders:
             result = _cut(result, own, row, borders)
     return result
+
+
+_OPEN_END = re.compile(r"(?:[\w)][-/]|(?<=\d)\s?[~～…]|\b(?:to|bis|à|a|and|or|und))$")
+_EAST_END, _EAST_START = re.compile(r"[\u3040-\u30ff\u3400-\u9fff]$"), re.compile(r"^[\u3040-\u30ff\u3400-\u9fff]")
+
+
+def _mostly_wrapped(own: Sequence[Piece]) -> bool:
+    """Tell whether most cells of more than one line hold one text that was too long for the cell's width."""
+    several = [piece for piece in own if len(piece.lines) > 1]
+    wrapped = sum(_is_wrapped(piece) for piece in several)
+    return 0 < len(several) <= 2 * wrapped
+
+
+def _is_wrapped(piece: Piece) -> bool:
+    """Tell whether each line of a cell but the last leaves its text open: a joint, or full to the edge in the East."""
+    left, _, right, _ = piece.cell.box
+    for line, below in zip(piece.lines, piece.lines[1:], strict=False):
+        end, begin = line[-1], below[0]
+        if _OPEN_END.search(joined(line)):
+            continue
+        free = right - end.x1 - (min(word.x0 for word in line) - left)
+        full = free < 1.2 * end.size and len(end.text) > 1
+        if not (full and _EAST_END.search(end.text) and _EAST_START.search(begin.text)):
+            return False
+    return True
 
 
 def _has_one_label(own: Sequence[Piece]) -> bool:

@@ -567,3 +567,13 @@ def test_a_coefficient_in_its_formula_is_the_parabola():
     assert field_for(text, "frequency_stability_ppm") == "parabolic_coefficient_ppm_per_c2"
     (value,) = read_values(text, "parabolic_coefficient_ppm_per_c2", unit="ppm")
     assert (value.min, value.typ, value.max) == (-0.0385, -0.035, -0.0315)
+
+
+def test_a_word_for_more_than_before_an_insulation_is_its_least():
+    (value,) = read_values("Over 500 MΩ", "insulation_resistance_megohm")
+    assert (value.min, value.typ) == (500, None)
+
+
+def test_ageing_in_hours_holds_for_so_many():
+    (value,) = read_values("±5 ppm/1000 h at 150 °C", "ageing_ppm")
+    assert (value.min, value.max, value.when.years) == (-5, 5, pytest.approx(1000 / 8766, abs=1e-4))

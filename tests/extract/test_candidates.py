@@ -118,3 +118,8 @@ def test_a_bound_alone_in_the_remarks_is_the_values():
 def test_what_else_may_be_had_in_a_bracket_is_no_bound_of_the_load():
     (found,) = entry_candidates(entry("Load capacitance", "12 pF standard (8 pF to 32 pF possible)"))
     assert (found.min, found.typ, found.max) == (None, 12, None)
+
+
+def test_a_range_of_drive_with_a_greater_maximum_behind_it_is_limited_by_that():
+    (found,) = entry_candidates(entry("Drive level", "10~100 µW (Max. 300 µW)"))
+    assert (found.min, found.typ, found.max, found.doubts) == (None, None, 300, ())

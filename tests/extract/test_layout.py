@@ -355,3 +355,15 @@ def test_a_drawing_further_down_makes_no_columns_of_labels_and_values():
     drawing = [*text("6.0 mm", 55, 305), *text("3.5 mm", 55, 325)]
     found = blocks([*rows(pairs, (50, 260)), *drawing, *text("Pads 1 and 3", 260, 310)], grid((50, 120), (300, 340)))
     assert [tuple(row) for row in texts(next(block for block in found if isinstance(block, Table)))] == pairs
+
+
+def test_an_eastern_heading_wrapped_in_most_cells_is_one_row():
+    xs, ys = (40, 78, 116), (90, 112, 130)
+    heads = [*text("周波数許容", 46, 91, size=6), *text("偏差", 46, 99, size=6), *text("負荷静電容", 84, 91, size=6)]
+    words = [*heads, *text("量値", 84, 99, size=6), *text("20", 46, 116), *text("7", 84, 116)]
+    wide = [
+        Word(w.text, w.x0, w.top, w.x0 + 6 * len(w.text), w.bottom, w.size) if not w.text.isascii() else w
+        for w in words
+    ]
+    table = only_table(blocks(wide, grid(xs, ys)))
+    assert table.rows == 2

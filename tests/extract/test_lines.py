@@ -143,3 +143,9 @@ def test_lines_of_a_mode_and_its_value_belong_to_the_label_above():
 def test_the_numbers_beside_a_graph_are_no_values():
     lines = [line("Frequency stability"), *(line(str(-20 * at), number=at + 2) for at in range(4))]
     assert not [item for item in line_items(lines) if isinstance(item, Entry)]
+
+
+def test_a_footnote_that_is_a_temperature_range_states_it():
+    items = line_items([line("*1 ref. to 25 °C. *2 Storage temperature -40 to +125 °C")])
+    found = [each for item in items if isinstance(item, Entry) for each in entry_candidates(item)]
+    assert [(each.field, each.min, each.max) for each in found] == [("storage_temperature_c", -40, 125)]

@@ -141,3 +141,21 @@ def test_a_range_beside_its_stability_says_where_that_holds():
         ("frequency_stability_ppm", 15, (-20, 70)),
         ("frequency_stability_ppm", 30, (-40, 85)),
     ]
+
+
+def test_a_head_over_bands_speaks_of_the_values_beside_them():
+    (draft,) = drafts(("ESR", ""), ("8.000 - 9.999 MHz", "120 ohms"), ("10.000 - 60.000 MHz", "50 ohms"))
+    assert [(each.field, each.typ, each.when.frequency_mhz) for each in draft.candidates] == [
+        ("esr_ohm", 120, (8, 9.999)),
+        ("esr_ohm", 50, (10, 60)),
+    ]
+
+
+def test_resistances_at_two_temperatures_keep_theirs():
+    (draft,) = drafts(("Part no.", "ESR max (Ω) @ 25 °C", "ESR max (Ω) @ 150 °C"), ("BHT-08", "120", "180"))
+    assert [(each.max, each.measured_c) for each in draft.candidates] == [(120, (25, 25)), (180, (150, 150))]
+
+
+def test_a_number_broken_behind_its_hyphen_is_whole():
+    (draft,) = drafts(("Type", "Frequency (MHz)", "ESR max. (Ω)"), ("CRX-\n18A/U", "16", "60"))
+    assert draft.part_number == "CRX-18A/U"

@@ -237,3 +237,39 @@ def test_a_title_is_the_label_of_bands_without_a_heading():
     entries = [item for item in read_table(made) if isinstance(item, Entry)]
     found = [(each.max, each.when.frequency_mhz) for entry in entries for each in entry_candidates(entry)]
     assert found == [(80, (8, 10)), (60, (10, 16))]
+
+
+def test_symbols_below_the_labels_belong_to_the_heading():
+    made = table(
+        ("Nominal frequency", "Load capacitance", "Shunt capacitance", "Drive level", "Ageing"),
+        ("f0", "CL", "C0", "DL", None),
+        ("26.000 MHz", "7.0 pF", "1.5 pF max.", "10 μW typ.", "±1 ppm/year"),
+    )
+    (draft,) = listing_drafts(read_table(made)[0])
+    assert {each.field for each in draft.candidates} == {
+        "frequency_mhz",
+        "load_capacitance_pf",
+        "shunt_capacitance_pf",
+        "drive_level_uw",
+        "ageing_ppm",
+    }
+
+
+def test_a_resistance_across_loads_is_no_load_of_series_resonance():
+    made = table(("负载电容 CL (pF)", "6.0", "9.0"), ("等效串联电阻 ESR 最大 (kΩ)", "70", "65"))
+    (draft,) = listing_drafts(read_table(made)[0])
+    found = [(each.max, each.when.load_capacitance_pf) for each in draft.candidates if each.field == "esr_ohm"]
+    assert found == [(70000, (6, 6)), (65000, (9, 9))]
+    assert [each.options for each in draft.candidates if each.field == "load_capacitance_pf"] == [(6, 9)]
+
+
+def test_labels_beside_rows_of_no_property_are_a_table_of_their_own():
+    made = table(
+        ("Tolerance", "±20 ppm", "Operating temperature", "-40 to +85 °C"),
+        ("Load capacitance", "12 pF", "Storage temperature", "-55 to +125 °C"),
+        ("Drive level", "100 µW max.", "Vibration", "10 to 2000 Hz, 10 g"),
+        ("Shunt capacitance", "5 pF max.", "Shock", "1000 g"),
+    )
+    labels = [item.label.text for item in read_table(made) if isinstance(item, Entry)]
+    assert "Operating temperature" in labels
+    assert "Storage temperature" in labels

@@ -505,3 +505,13 @@ def test_a_label_in_two_languages_by_weak_wordings_is_exact():
     label = read_label("Frequenzbereich / frequency range")
     assert label is not None
     assert (label.field, label.exact) == ("frequency_mhz", True)
+
+
+def test_a_tolerance_that_is_a_total_is_no_tolerance():
+    assert read_label("FREQ. TOLERANCE (TOTAL OVER TEMP.)") is None
+
+
+def test_a_wording_beside_one_in_a_language_not_known_is_taken_with_a_doubt():
+    label = read_label("Zátěž / Load capacitance")
+    assert label is not None
+    assert (label.field, label.exact) == ("load_capacitance_pf", False)
