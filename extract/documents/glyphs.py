@@ -141,22 +141,21 @@ def _struck_once(glyphs: Iterable[Glyph]) -> list[Glyph]:
     rows: dict[int, dict[str, dict[int, tuple[float, float]]]] = {}
     kept: list[Glyph] = []
     for glyph in glyphs:
-        text = glyph.text
+        text, (x, y, x1, _), size, _, _, _ = glyph
         if text.isspace():
             kept.append(glyph)
             continue
-        x, y, x1, _ = glyph.box
         row, column = int(y // 2), int(x // 2)
         # Thin letters stand close together: "ll" must not become "l".
-        near = min(max(0.12 * glyph.size, 0.3), 0.45 * max(x1 - x, 0.1))
-        if any(
-            (alike := rows[step].get(text)) is not None and _is_near(alike, column, x, y, near)
-            for step in (row, row - 1, row + 1)
-            if step in rows
-        ):
-            continue
-        rows.setdefault(row, {}).setdefault(text, {})[column] = (x, y)
-        kept.append(glyph)
+        near = min(max(0.12 * size, 0.3), 0.45 * max(x1 - x, 0.1))
+        for step in (row, row - 1, row + 1):
+            letters = rows.get(step)
+            alike = letters.get(text) if letters is not None else None
+            if alike is not None and _is_near(alike, column, x, y, near):
+                break
+        else:
+            rows.setdefault(row, {}).setdefault(text, {})[column] = (x, y)
+            kept.append(glyph)
     return kept
 
 
@@ -181,11 +180,11 @@ def _runs(glyphs: Sequence[Glyph], fences: _Fences) -> list[_Run]:
     last: _Run | None = None
     broken = True
     for glyph in glyphs:
-        text = translated(glyph.text, glyph.font)
+        printed, box, size, font, _, base = glyph
+        text = translated(printed, font)
         if not text.strip():
             broken = True
             continue
-        box = glyph.box
         if (
             last is not None
             and not broken
@@ -194,7 +193,7 @@ def _runs(glyphs: Sequence[Glyph], fences: _Fences) -> list[_Run]:
         ):
             last.extend(text, box)
         else:
-            run = _Run(text, *box, glyph.size, glyph.base, _is_bold(glyph.font))
+            run = _Run(text, *box, size, base, _is_bold(font))
             if last is not None and abs(last.base - run.base) < 0.1 * run.size:
                 run.spacing = last.spacing
             runs.append(run)
@@ -205,9 +204,10 @@ def _runs(glyphs: Sequence[Glyph], fences: _Fences) -> list[_Run]:
 
 def _continues(run: _Run, glyph: Glyph, text: str, spaced: bool) -> bool:
     size = run.size
-    if abs(glyph.base - run.base) > 0.1 * size or abs(glyph.size - size) > 0.12 * size:
+    _, box, own_size, _, _, base = glyph
+    if abs(base - run.base) > 0.1 * size or abs(own_size - size) > 0.12 * size:
         return False
-    gap = glyph.box[0] - run.x1
+    gap = box[0] - run.x1
     if gap < -0.6 * size:
         return False
     # Less than a space in any case, or as loose as the letters before.

@@ -8,6 +8,7 @@ from __future__ import annotations
 
 import ctypes
 from dataclasses import dataclass, field
+from operator import itemgetter
 from typing import Any
 
 from extract.documents.glyphs import Glyph
@@ -33,6 +34,8 @@ from extract.documents.words import Box, Ruling
 DEEPEST = 8
 # pdfium's mark in place of a hyphen at a line's end.
 HYPHEN = "\ufffe"
+# What parts words; where it stands is of no matter.
+_SPACE = Glyph(" ", (0.0, 0.0, 0.0, 0.0), 0.0, "")
 # Characters that pdfium sets from right to left, and so in another order.
 _LEFTWARD = ("\u0590", "\u08ff"), ("\ufb1d", "\ufdff"), ("\ufe70", "\ufefc")
 
@@ -174,15 +177,9 @@ class _Reader:
                 if self._shows(item):
                     raise DoubtError("text that pdfium leaves out")
                 # Nothing but spaces, which part words.
-                box = self._box_of(item)
-                found.append((item.place, Glyph(" ", box, item.size, item.font.name, 0, box[3])))
-        found.sort(key=lambda each: each[0])
-        width, height = self._frame.size
-        return [
-            glyph
-            for _, glyph in found
-            if not (glyph.box[2] < 0 or glyph.box[3] < 0 or glyph.box[0] > width or glyph.box[1] > height)
-        ]
+                found.append((item.place, Glyph(" ", self._box_of(item), item.size, item.font.name)))
+        found.sort(key=itemgetter(0))
+        return [glyph for _, glyph in found]
 
     def _box_of(self, item: _TextObject) -> Box:
         x0, y0, x1, y1 = bounds_of(item.handle)
@@ -197,6 +194,7 @@ class _Reader:
     def _chars(self, text_page: int) -> list[tuple[int, Glyph]]:
         call = self._calls
         left, _, _, up = self._frame.crop
+        width, height = self._frame.size
         rect, origin = (ctypes.c_float * 4)(), (ctypes.c_double * 2)()
         rect_place, x_place = ctypes.addressof(rect), ctypes.addressof(origin)
         y_place = x_place + ctypes.sizeof(ctypes.c_double)
@@ -214,6 +212,10 @@ class _Reader:
             font = item.font
             if text not in font.sound:
                 text = self._known(text_page, index, text, font)  # noqa: PLW2901
+            item.seen = True
+            if text == " ":
+                found.append((item.place, _SPACE))
+                continue
             origin_of(text_page, index, x_place, y_place)
             x, y = origin[0], origin[1]
             if x == last_x and y == last_y and handle == last:
@@ -221,13 +223,14 @@ class _Reader:
                 before = found[-1][1]
                 found[-1] = (item.place, before._replace(text=before.text + text))
                 continue
-            last, last_x, last_y = handle, x, y
-            item.seen = True
             box_of(text_page, index, rect_place)
-            base = up - y
-            size = item.size
-            box = (x - left, base - ABOVE * size, rect[2] - left, base + BELOW * size)
-            found.append((item.place, Glyph(text, box, size, font.name, 0, base)))
+            base, size = up - y, item.size
+            x0, top, x1, bottom = x - left, base - ABOVE * size, rect[2] - left, base + BELOW * size
+            if x1 < 0 or bottom < 0 or x0 > width or top > height:
+                last = 0
+                continue
+            last, last_x, last_y = handle, x, y
+            found.append((item.place, Glyph(text, (x0, top, x1, bottom), size, font.name, 0, base)))
         return found
 
     def _text(self, text_page: int) -> str:

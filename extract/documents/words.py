@@ -182,7 +182,7 @@ def text_of(words: Sequence[Word]) -> str:
 
 def confidence_of(words: Iterable[Word]) -> float:
     """Confidence of the least certain word; 1.0 for none."""
-    return min((word.confidence for word in words), default=1.0)
+    return min([word.confidence for word in words], default=1.0)
 
 
 def split_at_gaps(line: Sequence[Word], wide: Callable[[Word, Word], bool] | None = None) -> list[list[Word]]:
