@@ -144,7 +144,11 @@ def test_a_range_beside_its_stability_says_where_that_holds():
 
 
 def test_a_head_over_bands_speaks_of_the_values_beside_them():
-    (draft,) = drafts(("ESR", ""), ("8.000 - 9.999 MHz", "120 ohms"), ("10.000 - 60.000 MHz", "50 ohms"))
+    (draft,) = drafts(
+        ("ESR", None, "Connections"),
+        ("8.000 - 9.999 MHz", "120 ohms", "1, 3 crystal"),
+        ("10.000 - 60.000 MHz", "50 ohms", "2, 4 ground"),
+    )
     assert [(each.field, each.typ, each.when.frequency_mhz) for each in draft.candidates] == [
         ("esr_ohm", 120, (8, 9.999)),
         ("esr_ohm", 50, (10, 60)),
