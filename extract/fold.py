@@ -76,6 +76,7 @@ _MOJIBAKE = {
 }
 _MOJIBAKE_RUN = re.compile("|".join(map(re.escape, _MOJIBAKE)))
 
+_WIDE_COMMA = re.compile("(?<=[\x20-\x7e])，(?=[\x21-\x7e])")
 _LATEX = {
     "mu": "μ", "omega": "Ω", "pm": "±", "times": "×", "circ": "°", "leq": "≤", "le": "≤", "geq": "≥", "ge": "≥",
     "sim": "~", "delta": "Δ", "infty": "∞", "cdot": "·",
@@ -128,6 +129,8 @@ def fold(text: str) -> str:
     if _SIMPLE.fullmatch(text):
         return text.strip()
     if not text.isascii():
+        # Beside plain digits it is never a decimal mark ("AB-12，25 MHz").
+        text = _WIDE_COMMA.sub(", ", text)
         text = _SUPERSCRIPT_RUN.sub(lambda found: "^" + found[0].translate(_SUPERSCRIPTS), text)
         text = _unbroken(unicodedata.normalize("NFKC", text.translate(_TRANSLATE)).translate(_TRANSLATE))
     else:

@@ -23,7 +23,10 @@ _NUMBER = re.compile(
 )
 _EAST = re.compile(r"[\u3040-\u30ff\u3400-\u9fff\uac00-\ud7af]{2,}")
 _NUMBERING = re.compile(r"^\s*(?:\(?\d{1,2}[.)、]\s?|[•●■◆▪·*-]\s*)(?=\D)")
-_PART_TOKEN = re.compile(r"(?<![\w.,/±+×-])[A-Z0-9](?:[A-Za-z0-9]|[-./,](?=[A-Za-z0-9]))+(?![\w°%])")
+_WORDLIKE = r"[^\W\u3040-\u30ff\u3400-\u9fff\uac00-\ud7af]"
+_PART_TOKEN = re.compile(
+    rf"(?<!{_WORDLIKE})(?<![.,/±+×-])[A-Z0-9](?:[A-Za-z0-9]|[-./,](?=[A-Za-z0-9]))+(?!{_WORDLIKE}|[°%])"
+)
 _AMOUNT = re.compile(
     r"[-+]?[\d.,]+(?:[-~/][\d.,]+)*(?:[A-Za-z]{0,2}?(?:Hz|HZ|hz|F|f|ppm|PPM|pF|C|V|A|W|H|mm|MM|s|S|g|h|R|k|K|M|pcs|th|rd|st|nd|OT|ot|Vdc|VDC|dc|ohm|Ohm|ohms|Ohms))*"
 )

@@ -13,6 +13,7 @@ from extract.meaning import is_part_token
 from extract.vocabulary import vocabulary
 
 _COUNTED = re.compile(r"(?i)(?:#|no\.?|n°|nr\.?|s/n|[a-z])?\s?(\d{1,3})")
+_BRACKET = re.compile(r"[(\[][^()\[\]]*[)\]]")
 _NUMBER_BEHIND = re.compile(r"[\s#.:°-]*(?:no|nr|n)?[\s#.:°-]*\d{1,3}$", re.IGNORECASE)
 
 
@@ -21,10 +22,12 @@ def _words(kind: str) -> frozenset[str]:
     return frozenset(key(word) for word in vocabulary().phrases.get(kind, ()))
 
 
+@lru_cache(maxsize=8192)
 def _says(text: str, kind: str) -> bool:
     """Whether a head is one of the words for samples ("sample") or for what was measured ("measured")."""
     words = _words(kind)
-    return key(text) in words or key(_NUMBER_BEHIND.sub("", fold(text))) in words
+    plain = _BRACKET.sub(" ", fold(text))
+    return key(plain) in words or key(_NUMBER_BEHIND.sub("", plain)) in words
 
 
 def _is_in(word: str, text: str) -> bool:

@@ -7,7 +7,7 @@ from dataclasses import dataclass, field
 
 from extract.entries import Entry, Item, Listing, Text
 from extract.identity import package_in, unfolded
-from extract.lines import ROW_NUMBER, begins_with_part, speaks_of_all
+from extract.lines import begins_with_part, speaks_of_all, without_number
 from extract.meaning import identity_words, meaning, part_tokens
 from extract.prose import loose_in_prose
 
@@ -60,7 +60,7 @@ def _names(item: Item) -> str | None:
 
 def _named_in_heading(item: Text) -> str | None:
     segments = [segment.text for segment in item.segments] or [item.piece.text]
-    text = ROW_NUMBER.sub("", unfolded(segments[0]))
+    text = without_number(unfolded(segments[0]))
     tokens = part_tokens(text)
     lowered = text.casefold()
     if (

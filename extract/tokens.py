@@ -34,8 +34,8 @@ class Token:
 
 # Which meaning a word has that stands in several lists of the wording files: the first of these.
 _WORD_KINDS = (
-    "first_year", "per_year", "others", "request", "standard", "recommended", "min", "typ", "max", "series",
-    "plus_minus", "see", "except", "between", "to", "or", "from", "for", "at", "minus", "plus", "above", "below",
+    "first_year", "ten_years", "five_years", "per_year", "others", "request", "standard", "recommended", "min", "typ",
+    "max", "series", "plus_minus", "see", "except", "between", "to", "or", "from", "for", "at", "minus", "plus", "above", "below",
 )  # fmt: skip
 _MARKS = {
     "±": "pm", "~": "to", "…": "to", "<": "compare", "≤": "compare", ">": "compare", "≥": "compare",
@@ -156,6 +156,8 @@ def _phrase(text: str, lower: str, at: int, before: list[Token]) -> list[Token]:
     printed = text[at:end]
     if kind in ("first_year", "per_year"):
         return [Token("years", printed, at, end, meaning=kind, value=1.0)]
+    if kind in _YEARS_IN_WORDS:
+        return [Token("years", printed, at, end, value=_YEARS_IN_WORDS[kind])]
     if kind in ("min", "typ", "max"):
         return [Token("bound", printed, at, end, meaning=kind)]
     if kind.startswith("mode "):
@@ -163,6 +165,7 @@ def _phrase(text: str, lower: str, at: int, before: list[Token]) -> list[Token]:
     return [Token("pm" if kind == "plus_minus" else kind, printed, at, end)]
 
 
+_YEARS_IN_WORDS = {"ten_years": 10.0, "five_years": 5.0}
 _TEMPERATURE = re.compile(r"-\d+(?:[.,]\d+)?\s?(?:(?:~|…|to|bis|/|-)\s?\+?\d+(?:[.,]\d+)?\s?)?°")
 
 

@@ -31,7 +31,7 @@ def read(data: bytes) -> Document:
     message = email.message_from_bytes(data, policy=email.policy.default)
     if not isinstance(message, EmailMessage):
         raise DocumentError("The mail cannot be read. Copy its text into a file.")
-    body = message.get_body(preferencelist=("plain", "html"))
+    body = _fuller(message)
     blocks: list[Table | Line] = [
         Line((Segment(f"{name}: {message[name]}", Where(line=1)),), Where(line=1)) for name in _HEADERS if message[name]
     ]
@@ -45,13 +45,45 @@ def read(data: bytes) -> Document:
     return Document("text", tuple(blocks), notes=tuple(notes))
 
 
+def _fuller(message: EmailMessage) -> MIMEPart | None:
+    """The plain text, or the HTML where that holds a table or the plain text says next to nothing."""
+    plain, page = message.get_body(preferencelist=("plain",)), message.get_body(preferencelist=("html",))
+    if plain is None or page is None:
+        return plain or page
+    words, markup = (part.get_payload(decode=True) for part in (plain, page))
+    if not isinstance(words, bytes) or not isinstance(markup, bytes):
+        return plain
+    return page if b"<table" in markup.lower() or not re.search(rb"\d.*\d", words, re.DOTALL) else plain
+
+
+def _with_marks(markup: str) -> bytes:
+    """A page with ">" before each line that it quotes, each block of text on a line of its own."""
+    from lxml import etree, html
+
+    try:
+        root = html.fromstring(markup)
+    except (etree.ParserError, ValueError):
+        return markup.encode()
+    for element in list(root.iter("blockquote")):
+        lines = [str(line).strip() for line in element.itertext() if str(line).strip()]
+        for child in list(element):
+            element.remove(child)
+        element.text = None
+        for line in lines:
+            quoted = etree.SubElement(element, "p")
+            quoted.text, quoted.tail = f"> {line}", "\n"
+    for element in root.iter("p", "div", "br", "table", "tr", "blockquote", "li"):
+        element.tail = "\n" + (element.tail or "")
+    return bytes(html.tostring(root, encoding="utf-8"))
+
+
 def _body(part: MIMEPart, is_whole: bool, data: bytes) -> tuple[tuple[Table | Line, ...], tuple[Note, ...]]:
     from extract.documents import text, webpage
 
     payload = part.get_payload(decode=True)
     content = payload if isinstance(payload, bytes) else b""
     if part.get_content_subtype() == "html":
-        page = webpage.read(content)
+        page = webpage.read(_with_marks(decode(content, declared=part.get_content_charset())[0]))
         return page.blocks, page.notes
     words, notes = decode(content, declared=part.get_content_charset())
     plain = str(part.get("Content-Transfer-Encoding", "7bit")).strip().lower() in ("7bit", "8bit", "binary")

@@ -12,7 +12,9 @@ from extract.model import Where
 
 LEAST_LINES = 3
 _GAP = re.compile(r"[ \u00a0]{2,}|\u3000+|\t+")
-_LEADER = re.compile(r"(?<=[^\s.·…_])\s?(?:\.{3,}|…{2,}|·{3,}|(?:\s\.){3,}|_{4,})\s*(?=\S)")
+_LEADER = re.compile(
+    r"(?<=[^\s.·…_])\s?(?:\.{3,}|…{2,}|·{3,}|(?:\s\.){3,}|_{4,})\s*(?=\S)|(?<=[^\W\d])\s\.\s(?=[-+±−]?\d)"
+)
 _NUMBER_ENDS = re.compile(r"(?:\d|℃|°\s?C?)\s*$")
 _NUMBER_STARTS = re.compile(r"\s*[+\-−–±]?\s*\d")
 _RULE_SIGNS = frozenset("-=_─━*+|│")
