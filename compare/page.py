@@ -12,6 +12,7 @@ from compare.page_reading import told_of_reading
 from compare.page_review import review_view
 from compare.page_sheets import sheets_view
 from compare.page_substitute import substitute_view
+from compare.page_trial import banner
 from compare.page_work import head
 
 
@@ -45,6 +46,7 @@ def main() -> None:
     st.session_state.pages = pages
     current = st.navigation(list(pages.values()), position="top")
     head()
+    banner()
     # Places of their own, filled in this order: else all that follows would shift while sheets are read.
     reading, body, foot = st.container(), st.container(), st.container()
     with reading:

@@ -2,14 +2,40 @@
 
 from __future__ import annotations
 
+import math
+from collections.abc import Sequence
 from dataclasses import replace
+from html import escape
 
 import streamlit as st
 
-from compare import circuit_text, drawing, pieces, typed
+from compare import bearing_text, circuit_text, drawing, pieces, review_html, typed
+from compare import page_converters as converters
 from compare import page_session as session
-from compare.bench import uses
+from compare.bench import Bench, uses
+from compare.columns import MID
 from compare.desk import Desk, carried_sentence, field_of, orchard_example
+from compare.page_bearing import advice, bears, candidates, chosen_at, gain_settings
+from compare.ranking import Ranked
+
+# What an IC's sheet may give of its gain, and the fields for it; the first is the one that it hangs on.
+ROADS = {
+    "Transconductance, least and most": ("circuit.transconductance_ms.low", "circuit.transconductance_ms.high"),
+    "Greatest critical gm": ("rating.critical_transconductance_max_ms", "rating.factor_inside"),
+    "Negative resistance": ("rating.negative_resistance_ohm", "rating.load_pf", "rating.factor_inside"),
+    "ESR limit": (
+        "rating.esr_max_ohm",
+        "rating.load_pf",
+        "rating.factor_inside",
+        "rating.shunt_capacitance_pf",
+        "rating.esr_means",
+    ),
+}
+NOTHING = "None of these"
+ASK_OR_TEST = (
+    "Ask the IC’s maker: “What is the least transconductance of the oscillator’s amplifier over temperature and "
+    "supply?” Until then margins read “cannot tell”; Review gives the series resistor with which it must still start."
+)
 
 # The drawing fits its column, and a pressed figure puts the cursor into its field.
 PRESS = """export default function({data, parentElement}) {
@@ -21,21 +47,27 @@ PRESS = """export default function({data, parentElement}) {
 
 
 def circuit_view() -> None:
+    bench = session.desk().bench
+    contest = None if bench is None else candidates(bench)
     left, right = st.columns([1.25, 1], gap="large")
     with right:
         bench_files()
-        circuit_fields()
+        circuit_fields(contest)
     with left:
-        drawn = summed_up(session.desk())
-        corners()
+        drawn = summed_up(session.desk(), contest)
+        if bench is not None:
+            bears(bench, contest)
+            if contest is not None:
+                advice(bench, contest)
+            gain_settings(bench, contest)
         if drawn and st.button("Choose a crystal", key="to_choose", type="primary", shortcut="N"):
             session.go("choose")
 
 
-def summed_up(desk: Desk) -> bool:
+def summed_up(desk: Desk, contest: Ranked | None) -> bool:
     """The drawing, the sum in words and what was taken by default; False where there is no bench yet."""
-    bench = desk.bench
-    session.title(f"{circuit_text.circuit_heading(bench)}")
+    bench, steady = desk.bench, steady_pf(contest)
+    session.title(f"{circuit_text.circuit_heading(bench, steady)}")
     if bench is None:
         st.markdown(pieces.plain(desk.faults.get("", "")) or circuit_text.SET_IT)
         return False
@@ -43,12 +75,21 @@ def summed_up(desk: Desk) -> bool:
     show = st.components.v2.component("quartzfolio_circuit", html="<div></div>", js=PRESS)
     svg = drawing.circuit_svg(circuit_text.circuit_figures(bench), session.palette())
     show(data=svg, key="drawing", width="stretch")
-    st.markdown(circuit_text.sum_sentence(bench))
+    st.markdown(circuit_text.sum_sentence(bench, steady))
     for said in circuit_text.taken_sentences(bench):
         st.markdown(f"- {pieces.plain(said)}")
     if carried := carried_sentence(desk):
         st.markdown(f":gray[{pieces.plain(carried)}]")
     return True
+
+
+def steady_pf(contest: Ranked | None) -> float | None:
+    """The load in the steady state with the chosen part in the circuit; None where there is none."""
+    if contest is None or contest.reckoning is None:
+        return None
+    at = contest.ordered[chosen_at(contest)]
+    value = float(contest.reckoning.numbers["circuit_load_pf"].ends[MID, at])
+    return value if math.isfinite(value) else None
 
 
 def bench_files() -> None:
@@ -72,18 +113,60 @@ def bench_files() -> None:
         st.html(pieces.fault_html(f"The bench file is not used. {fault}"))
 
 
-def circuit_fields() -> None:
+def circuit_fields(contest: Ranked | None) -> None:
+    bench = session.desk().bench
     session.section("What is asked")
     form("asked")
+    what_the_use_asks(bench)
     session.section("Capacitance")
     form("capacitance")
-    session.section("Amplifier")
-    form("amplifier")
-    with st.expander("The IC’s sheet gives no gm, but a limit"):
-        form("rating")
+    if bench is not None:
+        with st.container(horizontal=True, gap="small"):
+            with st.popover("The maker gives one figure for stray"):
+                converters.single_figure(bench)
+            with st.popover("I measured two frequencies"):
+                converters.two_frequencies(bench, contest)
+    amplifier()
+    corners()
     with st.expander("How the sheets are to be read; measured on the bench"):
         form("crystal")
         form("measured")
+
+
+def what_the_use_asks(bench: Bench | None) -> None:
+    """The limit of the use that is set, and all uses with limit and source."""
+    if said := bearing_text.use_sentence(bench, session.desk().typed.get("requirement.use", "")):
+        st.html(f'<p class="qf-small">{escape(said)}</p>')
+    with st.popover("Uses, their limits and sources", type="tertiary"):
+        st.html(review_html.table_html(*bearing_text.uses_table()))
+
+
+def amplifier() -> None:
+    """What the IC's sheet gives of its gain, by one of four roads; the others' fields stay at hand."""
+    session.section("Amplifier, in the words of its sheet")
+    typed_in = session.desk().typed
+    given = next((road for road, keys in ROADS.items() if any(typed_in.get(key, "").strip() for key in keys[:1])), None)
+    roads = [*ROADS, NOTHING]
+    # Another bench may give another figure: then the choice begins afresh.
+    at = roads.index(given) if given else 0
+    road = st.selectbox("The IC’s sheet gives", roads, index=at, key=f"road_{at}")
+    rows_of(ROADS.get(road, ()))
+    if road == NOTHING:
+        st.markdown(ASK_OR_TEST)
+    form("amplifier_rest")
+    others = [key for name, keys in ROADS.items() if name != road for key in keys]
+    beside = [key for key in dict.fromkeys(others) if key not in ROADS.get(road, ())]
+    filled = any(typed_in.get(key, "").strip() for key in beside)
+    with st.expander("What else the IC’s sheet gives" + (": in use, see inside" if filled else "")):
+        rows_of([*beside, "rating.esr_min_ohm"])
+
+
+def rows_of(keys: Sequence[str], wide: int = 4) -> None:
+    """Fields side by side, some to a row."""
+    for first in range(0, len(keys), wide):
+        for column, key in zip(st.columns(wide, gap="small"), keys[first : first + wide], strict=False):
+            with column:
+                field(key)
 
 
 def form(group: str, number: int | None = None) -> None:

@@ -49,12 +49,12 @@ def review_view() -> None:
     with left:
         verdict(dossier)
         charts(dossier)
+        measured(dossier)
         every_number(dossier)
         what_fails(dossier)
     with right:
         save_report(dossier)
         to_do(dossier)
-        measured(dossier)
 
 
 def choose_part(contest: Ranked) -> int:

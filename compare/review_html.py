@@ -39,7 +39,7 @@ def _verdict_row(line: VerdictLine) -> str:
         ("n", line.times_over),
         (look, line.verdict),
     )
-    shown = "".join(f"<span{_class(kind)}>{escape(text)}</span>" for kind, text in cells)
+    shown = "".join(f"<span{_class(kind)}><i>{escape(text)}</i></span>" for kind, text in cells)
     why = f"<p>{escape(line.why)}.</p>" if line.why else ""
     opened = working_html(line.working) if line.working else ""
     return f"<details><summary>{shown}</summary><div class=qf-how>{why}{opened}</div></details>"

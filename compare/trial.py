@@ -111,7 +111,7 @@ class Trial:
         nominal = self.nominal_pairs(c_in, c_out).load_error_ppm
         worst: Worst = {}
         for number, keys in self._settings():
-            capacitances = _pair_corners(keys, c_in, c_out)
+            capacitances = pair_corners(keys, c_in, c_out)
             shunt, index = shunt_ends_and_floor(self.one, number)
             circuit, _ = corner_circuit(self.bench, keys, shunt, capacitances)
             crystal = crystal_at(self.one, self.bench, number, shunt)
@@ -164,7 +164,7 @@ class Trial:
         return Outcome(error, worst["margin"][0], np.where(np.isnan(error), np.nan, slack))
 
 
-def _pair_corners(keys: CircuitKeys, c_in: Array, c_out: Array) -> Sequence[Array]:
+def pair_corners(keys: CircuitKeys, c_in: Array, c_out: Array) -> Sequence[Array]:
     """Node capacitances with each pair fitted, (m, 1, 1, 1, k, 1)."""
     bare = Nodes.of(keys.model_copy(update={"input_capacitor_pf": 0.0, "output_capacitor_pf": 0.0}))
     part = keys.capacitor_tolerance_percent / 100

@@ -60,7 +60,8 @@ def fields() -> dict[str, Field]:
 
 def layout(group: str) -> list[list[tuple[Field | None, int]]]:
     """The form's rows of one group: each place a field, or None, with its width in places."""
-    own = {one.key.partition(".")[2]: one for one in fields().values() if one.group == group}
+    of = group.removesuffix("_rest")
+    own = {one.key.partition(".")[2]: one for one in fields().values() if one.group == of}
     rows: list[list[tuple[Field | None, int]]] = []
     for row in _table()["layout"][group]:
         places = [place.partition("*") for place in row]
