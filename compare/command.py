@@ -216,18 +216,26 @@ def _review(options: argparse.Namespace) -> int:
 
 
 def _rank(options: argparse.Namespace) -> int:
-    from compare.ranking import rank
+    from compare.ranking import MOST_INDENTED, rank, rank_sheets, write_ranking
     from compare.report import MOST_ROWS, rank_text
 
     bench = _read_bench(options.bench)
     intake = _read(options, options.sheets)
-    result = rank(intake.sheets, bench, shown=None if options.json or options.all else MOST_ROWS)
-    _add_notes(result, intake)
-    _print_json(result) if options.json else _print(rank_text(result))
+    if options.json:
+        ranked = rank_sheets(intake.sheets, bench)
+        said: dict[str, Any] = {"notes": []}
+        _add_notes(said, intake)
+        write_ranking(ranked, said["notes"], sys.stdout, indented=len(ranked) <= MOST_INDENTED)
+        found = len(ranked)
+    else:
+        result = rank(intake.sheets, bench, shown=None if options.all else MOST_ROWS)
+        _add_notes(result, intake)
+        _print(rank_text(result))
+        found = len(result["rows"])
     if intake.stopped:
         return _say_stopped(intake)
     readable = not any(_faults(sheet.notes) for sheet in intake.sheets) and not _faults(intake.notes)
-    return DONE if result["rows"] and readable else LOOK
+    return DONE if found and readable else LOOK
 
 
 def _report(options: argparse.Namespace) -> int:

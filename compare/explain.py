@@ -7,7 +7,7 @@ from collections.abc import Callable, Iterable, Mapping, Sequence
 from dataclasses import dataclass
 from functools import cached_property
 
-from compare.bench import Bench, CircuitKeys
+from compare.bench import Bench, CircuitKeys, Setting
 from compare.corners import as_reckoned
 from compare.motional import estimate_quality_factor
 from compare.offer import Offer
@@ -95,6 +95,7 @@ class BenchWords:
     """What the sentences say of the circuit, the same for every part."""
 
     circuit: CircuitKeys
+    settings: tuple[Setting, ...]
     capacitors: str
     transconductance: str
 
@@ -103,7 +104,7 @@ def bench_words(bench: Bench) -> BenchWords:
     """The circuit's capacitances and resistors, and its transconductance with where it comes from."""
     keys = bench.settings[0].circuit
     words = _capacitors(as_reckoned(keys, bench), bench.requirement.frequency_mhz)
-    return BenchWords(keys, words, _transconductance(keys))
+    return BenchWords(keys, bench.settings, words, _transconductance(keys))
 
 
 def _capacitors(keys: CircuitKeys, frequency_mhz: float) -> str:

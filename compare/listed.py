@@ -18,6 +18,8 @@ from compare.bench import Bench
 from compare.lot import C1_FROM, Coded, Joined, Lot, Separate, Whole, distinct, together
 from compare.offer import (
     FORK_FIELDS,
+    AtSetting,
+    Band,
     Offer,
     Settled,
     ageing_for,
@@ -25,14 +27,14 @@ from compare.offer import (
     make_offer,
     match_readings,
     overtone_of,
+    room_only,
     settle,
     settle_range,
     stability_over_range,
     take_at,
     tightest,
-    with_load,
 )
-from compare.stated import Case, Facts, Taken, rated_drive, take
+from compare.stated import Case, Facts, Span, Taken, rated_drive, take
 from extract.model import Reading, SpecSheet, When
 from extract.partlist import Identity, PartList
 
@@ -94,11 +96,14 @@ class Listed(Lot):
         loads: Mapping[int, tuple[float, str]] | None = None,
     ) -> None:
         self._sheet, self._parts, self._bench, self._rows = sheet, parts, bench, rows
+        self._settings = bench.settings
         self._loads = dict(loads or {})
         """By row of the list."""
         self._made: dict[int, Offer] = {}
         self._columns: dict[str, Coded[Any]] = {}
         self._conditions: dict[str, bool] = {}
+        asked, frequency = bench.requirement.frequency_mhz, parts.stated["frequency_mhz"]
+        self._matches = [match_readings(readings, asked) for readings in frequency.templates]
         self._index = {name: np.asarray(stated.index)[rows] for name, stated in parts.stated.items()}
         known: dict[Identity, int] = {}
         codes = np.array([known.setdefault(one, len(known)) for one in parts.identity.distinct], dtype=int)
@@ -112,6 +117,7 @@ class Listed(Lot):
         taken._rows, taken._identity = self._rows[which], self._identity[which]
         taken._index = {name: codes[which] for name, codes in self._index.items()}
         taken._columns = {name: column.take(which) for name, column in self._columns.items()}
+        taken._made = {}
         return taken
 
     def ordered(self, loads: Sequence[tuple[float, str] | None], bench: Bench) -> Self:
@@ -124,15 +130,77 @@ class Listed(Lot):
         if row not in self._made:
             if len(self._made) >= KEPT:
                 self._made.clear()
-            self._made[row] = self._make(row)
+            self._made[row] = self._make(at)
         return self._made[row]
 
-    def _make(self, row: int) -> Offer:
-        part = self._parts[row]
-        match = match_readings(_readings(part, "frequency_mhz"), self._bench.requirement.frequency_mhz)
-        offer = make_offer(self._sheet, part, match, self._bench)
-        load = self._loads.get(row)
-        return offer if load is None else with_load(offer, load[0], self._bench, load[1])
+    def _make(self, at: int) -> Offer:
+        """The whole offer of one row: what its columns hold, with the row's own places."""
+        row, asked = int(self._rows[at]), self._bench.requirement
+        part, settled = self._parts[row], self.settled[at]
+        placed = Facts.of(part).by_field
+
+        made: dict[int, Taken] = {}
+
+        def own(taken: Taken) -> Taken:
+            if not taken.readings:
+                return taken
+            if id(taken) not in made:
+                made[id(taken)] = replace(taken, readings=self._placed(at, taken.readings, placed))
+            return made[id(taken)]
+
+        operating, chosen_range, said = self.column("operating range with words")[at]
+        chosen = {**settled.chosen, **chosen_range}
+        loosest = {}
+        for name, field in OPTIONS.items():
+            loose = self.column(f"loosest_{name}")[at]
+            if loose is not None:
+                chosen[field] = self.column(name)[at].span.high
+                loosest[field] = own(loose)
+        matched = self._matches[self._index["frequency_mhz"][at]].reading
+        why = (("load_capacitance_pf", self._loads[row][1]),) if row in self._loads and self._loads[row][1] else ()
+        return Offer(
+            sheet=self._sheet,
+            part=part,
+            frequency=own(Taken(Span.at(asked.frequency_mhz), (matched,) if matched else ())),
+            case=settled.case,
+            mode=settled.mode,
+            overtone=overtone_of(settled.mode),
+            fork=settled.fork,
+            series=settled.series,
+            load=own(settled.load),
+            load_options=settled.load_options,
+            load_range=settled.load_range,
+            at=tuple(self._setting(at, number, own) for number in range(len(self._settings))),
+            loosest=loosest,
+            ageing_years=self.column("ageing_years")[at],
+            operating_range=own(operating),
+            stability_band=self.column("stability_band")[at],
+            chosen=chosen,
+            said=(*settled.said, *said, *why),
+            **{name: own(self.column(name)[at]) for name in PLAIN},
+        )
+
+    def _placed(
+        self, at: int, readings: Sequence[Reading], placed: Mapping[str, Sequence[Reading]]
+    ) -> tuple[Reading, ...]:
+        """The row's own readings in the place of a template's."""
+        field = readings[0].field
+        template, own = self._parts.stated[field].templates[self._index[field][at]], placed[field]
+        if len(template) == 1:
+            return (own[0],)
+        numbers = {id(reading): number for number, reading in enumerate(template)}
+        return tuple(own[numbers[id(reading)]] for reading in readings)
+
+    def _setting(self, at: int, number: int, own: Callable[[Taken], Taken]) -> AtSetting:
+        esr = own(self.at(number, "esr")[at])
+        routes = {name: self.at(number, key)[at] for name, key in C1_FROM.items() if name in self._index}
+        return AtSetting(
+            esr=esr,
+            shunt_capacitance=own(self.at(number, "shunt")[at]),
+            motional={name: own(taken) for name, taken in routes.items() if taken.readings},
+            room_only=room_only(esr, self.settled[at].case, self._settings[number].temperature_c),
+            fundamental_esr=own(self.at(number, "fundamental_esr")[at]),
+        )
 
     def column(self, name: str) -> Coded[Any]:
         if name not in self._columns:
@@ -141,7 +209,7 @@ class Listed(Lot):
 
     def at(self, setting: int, name: str) -> Coded[Taken]:
         # What is stated without a condition is taken alike at any temperature.
-        temperature = self._bench.settings[setting].temperature_c if self._has_conditions(FIELDS_AT[name]) else None
+        temperature = self._settings[setting].temperature_c if self._has_conditions(FIELDS_AT[name]) else None
         key = f"{name} at {temperature}"
         if key not in self._columns:
             self._columns[key] = self._at(name, temperature)
@@ -172,7 +240,7 @@ class Listed(Lot):
 
     def _settle(self, at: int) -> Settled:
         facts = self._facts(at, *self._index)
-        match = match_readings(facts["frequency_mhz"], self._bench.requirement.frequency_mhz)
+        match = self._matches[self._index["frequency_mhz"][at]]
         load = self._loads.get(int(self._rows[at]))
         return settle(facts, match, self._bench, None if load is None else load[0])
 
@@ -224,6 +292,14 @@ def _fundamental_at(facts: Facts, case: Case, temperature_c: float | None) -> Ta
     return fundamental_esr(facts, case if temperature_c is None else replace(case, temperature_c=temperature_c))
 
 
+def _range_with_words(
+    facts: Facts, case: Case, product: Band | None
+) -> tuple[Taken, dict[str, object], list[tuple[str, str]]]:
+    chosen: dict[str, object] = {}
+    said: list[tuple[str, str]] = []
+    return settle_range(facts, case, product, chosen, said), chosen, said
+
+
 def _asks(when: When) -> bool:
     """Whether the case decides if a reading holds; the years of ageing are no part of it."""
     bands = when.frequency_mhz, when.load_capacitance_pf, when.temperature_c
@@ -254,6 +330,18 @@ def _cut(lot: Listed) -> Coded[Any]:
     return together(lambda fork, who: "tuning fork" if fork else who.cut, lot.column("fork"), identity)
 
 
+def _of_identity(of: Callable[[Identity], Any]) -> Callable[[Listed], Coded[Any]]:
+    return lambda lot: Coded([of(who) for who in lot._identities], lot._identity)  # noqa: SLF001
+
+
+def _grade(lot: Listed) -> Coded[Any]:
+    grade = lot._parts.grade  # noqa: SLF001
+    return Coded(grade.distinct, np.asarray(grade.index)[lot._rows])  # noqa: SLF001
+
+
+PLAIN = ("tolerance", "stability", "ageing", "turnover", "parabolic", "drive")
+"""Columns of what is taken that an offer has under the same name."""
+OPTIONS = {"tolerance": "frequency_tolerance_ppm", "stability": "frequency_stability_ppm"}
 FIELDS_AT = {
     "esr": "esr_ohm",
     "fundamental_esr": "esr_ohm",
@@ -261,6 +349,11 @@ FIELDS_AT = {
     **{key: name for name, key in C1_FROM.items()},
 }
 MAKERS: dict[str, Callable[[Listed], Coded[Any]]] = {
+    "file": lambda lot: Coded([lot._sheet.file], np.zeros(len(lot), dtype=int)),  # noqa: SLF001
+    "part_number": lambda lot: Coded(lot._parts.part_numbers, lot._rows),  # noqa: SLF001
+    "maker": _of_identity(lambda who: who.maker),
+    "mode": _of_settled(lambda one: one.mode),
+    "attributes": _grade,
     "settled": Listed._settled,  # noqa: SLF001
     "load": _of_settled(lambda one: one.load),
     "load_choice": _of_settled(lambda one: (one.load_options, one.load_range)),
@@ -283,10 +376,11 @@ MAKERS: dict[str, Callable[[Listed], Coded[Any]]] = {
     ),
     "ageing": _part_of("ageing with years", 0),
     "ageing_years": _part_of("ageing with years", 1),
-    "operating_range": _of_field(
+    "operating range with words": _of_field(
         "operating_temperature_c",
-        lambda lot, facts, case: settle_range(facts, case, lot._bench.requirement.temperature_c, {}, []),  # noqa: SLF001
+        lambda lot, facts, case: _range_with_words(facts, case, lot._bench.requirement.temperature_c),  # noqa: SLF001
     ),
+    "operating_range": _part_of("operating range with words", 0),
     "turnover": _of_field(FORK_FIELDS[0], lambda _, facts, case: take(facts, FORK_FIELDS[0], case)),
     "parabolic": _of_field(FORK_FIELDS[1], lambda _, facts, case: take(facts, FORK_FIELDS[1], case)),
     "drive": _of_field("drive_level_uw", lambda _, facts, case: rated_drive(facts, case)),

@@ -79,6 +79,11 @@ def together(of: Callable[..., Value], *columns: Coded[Any]) -> Coded[Value]:
 
 
 OF_OFFER: dict[str, Callable[[Offer], Any]] = {
+    "file": lambda o: o.sheet.file,
+    "part_number": lambda o: o.part.part_number,
+    "maker": lambda o: o.part.maker,
+    "mode": lambda o: o.mode,
+    "attributes": lambda o: o.part.attributes,
     "load": lambda o: o.load,
     "load_choice": lambda o: (o.load_options, o.load_range),
     "overtone": lambda o: o.overtone,

@@ -443,10 +443,17 @@ def at_setting(facts: Facts, case: Case, temperature_c: float | None) -> AtSetti
     esr = take_at(facts, "esr_ohm", case, temperature_c)
     routes = {name: take_at(facts, name, case, temperature_c) for name in C1_ROUTES if name in facts}
     motional = {name: taken for name, taken in routes.items() if taken.readings}
-    stated_here = any(r.when.temperature_c and holds(r.when, warm) for r in esr.readings)
-    room_only = temperature_c is not None and bool(esr.readings) and not stated_here
     shunt = take_at(facts, "shunt_capacitance_pf", case, temperature_c)
-    return AtSetting(esr, shunt, motional, room_only, fundamental_esr(facts, warm))
+    room = room_only(esr, case, temperature_c)
+    return AtSetting(esr, shunt, motional, room, fundamental_esr(facts, warm))
+
+
+def room_only(esr: Taken, case: Case, temperature_c: float | None) -> bool:
+    """Whether a temperature is asked for which no ESR is stated, so that one for room is taken."""
+    if temperature_c is None or not esr.readings:
+        return False
+    warm = replace(case, temperature_c=temperature_c)
+    return not any(r.when.temperature_c and holds(r.when, warm) for r in esr.readings)
 
 
 def take_at(facts: Facts, name: str, case: Case, temperature_c: float | None) -> Taken:

@@ -2,10 +2,11 @@
 
 from __future__ import annotations
 
+import json
 from collections.abc import Mapping, Sequence
 from dataclasses import dataclass, field
 from functools import cached_property
-from typing import Any
+from typing import Any, TextIO
 
 import numpy as np
 
@@ -16,10 +17,21 @@ from compare.find import Offers
 from compare.lot import Whole
 from compare.reckoning import JUDGED, Reckoning, bare_result, judge_all, part_result, reckon_offers, settled_offers
 from compare.verdict import WORDS, Judged, of_part
-from extract.model import SpecSheet
+from extract.model import Attributes, SpecSheet
 
 SCHEMA = "quartzfolio/rank/1"
 MOST_KEPT = 2000
+IDENTITY = ("file", "part_number", "maker", "package", "mode")
+
+
+def _supply(attributes: Attributes) -> dict[str, str]:
+    """What a sheet says of price, lead time and status."""
+    stated = {"price": attributes.price, "lead_time": attributes.lead_time, "status": attributes.status}
+    return {key: value for key, value in stated.items() if value is not None}
+
+
+MOST_INDENTED = 100
+"""Rows up to which a document is set for eyes rather than for programs."""
 
 
 @dataclass(frozen=True)
@@ -45,37 +57,41 @@ class Ranked:
         """One row a part with its place, identity, verdict and slack, enough to filter and order thousands by."""
         if self.reckoning is None:
             return []
-        judged = {key: (one.asked.tolist(), one.slack.tolist()) for key, one in self.reckoning.judged.items()}
-        return [self._brief(place, at, judged) for place, at in enumerate(self.ordered, start=1)]
+        offers, judged = self.reckoning.columns.offers, self.reckoning.judged.items()
+        columns = [list(offers.column(name)) for name in IDENTITY]
+        attributes = offers.column("attributes")
+        supply = [_supply(one) for one in attributes.values]
+        told, verdicts = attributes.codes.tolist(), self.reckoning.verdict.tolist()
+        slacks = [(key, one.asked.tolist(), one.slack.tolist()) for key, one in judged]
+        rows = []
+        for place, at in enumerate(self.ordered, start=1):
+            slack = {key: None if s[at] != s[at] else s[at] for key, asked, s in slacks if asked[at]}
+            known = {key: value for key, value in slack.items() if value is not None}
+            row = {"place": place} | {name: column[at] for name, column in zip(IDENTITY, columns, strict=True)}
+            tightest = min(known, key=known.__getitem__) if known else None
+            row |= {
+                "verdict": WORDS[verdicts[at]],
+                "slack": slack,
+                "tightest": tightest,
+                "attributes": supply[told[at]],
+            }
+            rows.append(row)
+        return rows
 
-    def _brief(self, place: int, at: int, judged: Mapping[str, tuple[list[bool], list[float]]]) -> dict[str, Any]:
+    def sheet_of(self, place: int) -> SpecSheet:
+        """The sheet of a row with the row's part alone."""
         assert self.reckoning is not None  # noqa: S101
-        offer = self.reckoning.columns.offers[at]
-        part, supply = offer.part, offer.part.attributes
-        slack = {key: None if s[at] != s[at] else s[at] for key, (asked, s) in judged.items() if asked[at]}
-        known = {key: value for key, value in slack.items() if value is not None}
-        stated = {"price": supply.price, "lead_time": supply.lead_time, "status": supply.status}
-        return {
-            "place": place,
-            "file": offer.sheet.file,
-            "part_number": part.part_number,
-            "maker": part.maker,
-            "package": part.package,
-            "mode": offer.mode,
-            "verdict": WORDS[int(self.reckoning.verdict[at])],
-            "slack": slack,
-            "tightest": min(known, key=lambda key: known[key]) if known else None,
-            "attributes": {key: value for key, value in stated.items() if value is not None},
-        }
+        offer = self.reckoning.columns.offers[self.ordered[place - 1]]
+        return offer.sheet.model_copy(update={"parts": (offer.part,)})
 
-    def row(self, place: int, *, whole: bool = True) -> dict[str, Any]:
+    def row(self, place: int, *, whole: bool = True, keep: bool = True) -> dict[str, Any]:
         """The row of section 5 at a place, from 1; with its sentences, and then kept, where it is wanted `whole`."""
         assert self.reckoning is not None  # noqa: S101
         if place in self.made:
             return self.made[place]
         make = part_result if whole else bare_result
         row = {"place": place, **make(self.reckoning, self.ordered[place - 1])}
-        if whole and len(self.made) < MOST_KEPT:
+        if whole and keep and len(self.made) < MOST_KEPT:
             self.made[place] = row
         return row
 
@@ -114,6 +130,27 @@ def rank(sheets: Sequence[SpecSheet], bench: Bench, *, shown: int | None = None)
     reckoning = reckon_offers(found.offers.take(first), bench, found.notes, among=columns)
     counts = {words: int((verdict == code).sum()) for code, words in WORDS.items()}
     return Ranked(reckoning, list(range(len(first))), tuple(found.notes)).result() | {"counts": counts}
+
+
+def write_ranking(
+    ranked: Ranked, notes: Sequence[Mapping[str, Any]], stream: TextIO, *, indented: bool = False
+) -> None:
+    """Write the JSON document of section 5, `notes` before its own.
+
+    A line for each row, and none of them kept, unless it is to be `indented` for eyes.
+    """
+    if indented:
+        whole = ranked.result() | {"notes": [*notes, *ranked.notes]}
+        stream.write(json.dumps(whole, ensure_ascii=False, indent=1, allow_nan=False) + "\n")
+        return
+    stream.write(f'{{"schema": {json.dumps(SCHEMA)},\n"rows": [')
+    for place in range(1, len(ranked) + 1):
+        stream.write(("\n" if place == 1 else ",\n") + _text(ranked.row(place, keep=False)))
+    stream.write(f'],\n"notes": {_text([*notes, *ranked.notes])}}}\n')
+
+
+def _text(value: Any) -> str:
+    return json.dumps(value, ensure_ascii=False, allow_nan=False)
 
 
 def order(judged: Mapping[str, Judged], verdict: Whole) -> Whole:

@@ -119,7 +119,8 @@ def _gain(one: Judged, standing: Standing) -> str:
 def gain_remarks(one: Judged, standing: Standing) -> list[str]:
     """What a gain figure holds for: temperature of the readings, the upper end of the transconductance."""
     offer, said = standing.subject.offer, []
-    rooms = [setting.name for setting, at in zip(standing.bench.settings, offer.at, strict=True) if at.room_only]
+    every = zip(standing.subject.words.settings, offer.at, strict=True)
+    rooms = [setting.name for setting, at in every if at.room_only]
     if rooms:
         said.append(f"room values only: the sheet states no ESR for {joined(rooms)}")
     if one.about == "resistance_headroom":
@@ -258,7 +259,7 @@ def _mode(one: Judged, standing: Standing) -> str:
 
 
 def _least_esr(one: Judged, standing: Standing) -> str:
-    floors = [s.circuit.rating.esr_min_ohm for s in standing.bench.settings if s.circuit.rating is not None]
+    floors = [s.circuit.rating.esr_min_ohm for s in standing.subject.words.settings if s.circuit.rating is not None]
     floor = max(value for value in floors if value is not None)
     said = reading_text("esr_ohm", standing.subject.offer.at[0].esr)
     if one.verdict[standing.at] == CANNOT_TELL:
@@ -291,7 +292,7 @@ def findings(standing: Standing) -> list[dict[str, Any]]:
     """What is to be said without a verdict."""
     said = []
     rule = standing.bench.crystal.series_resistor_rule
-    for setting in standing.bench.settings:
+    for setting in standing.subject.words.settings:
         keys = setting.circuit
         if keys.series_resistor_ohm > 0 and "output_resistance_kohm" not in keys.given and rule == "circuit":
             said.append(

@@ -2,6 +2,8 @@
 
 from __future__ import annotations
 
+from functools import lru_cache
+
 from compare.bench import Bench
 from compare.budget import ageing_factor
 from compare.columns import DISAGREES, ESTIMATED, HIGH, LOW, MID, SHUNT_FROM, Columns
@@ -13,7 +15,7 @@ from compare.offer import C1_ROUTES, Offer
 def ageing_words(offer: Offer, bench: Bench) -> str:
     """The ageing reading, the factor used, and what the other rule would have given."""
     asked, stated = bench.requirement, offer.ageing_years
-    factors = {rule: float(ageing_factor(rule, stated, asked.years)) for rule in ("logarithm", "linear")}
+    factors = _ageing_factors(stated, asked.years)
     other = "linear" if asked.ageing_rule == "logarithm" else "logarithm"
     source = reading_text("ageing_ppm", offer.ageing)
     if not offer.ageing.stated:
@@ -22,6 +24,11 @@ def ageing_words(offer: Offer, bench: Bench) -> str:
         f"{source} after {_years(stated)}, times {factors[asked.ageing_rule]:.3g} for {_years(asked.years)} by the "
         f"{asked.ageing_rule} rule (by the {other} rule {factors[other]:.3g})"
     )
+
+
+@lru_cache(maxsize=64)
+def _ageing_factors(stated_years: float, asked_years: float) -> dict[str, float]:
+    return {rule: float(ageing_factor(rule, stated_years, asked_years)) for rule in ("logarithm", "linear")}
 
 
 def _years(count: float) -> str:

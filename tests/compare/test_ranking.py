@@ -2,14 +2,16 @@
 
 import json
 import math
+from io import StringIO
 
 import pytest
 from hypothesis import given, settings
 from hypothesis import strategies as st
 from made_sheets import bench, reading, sheet, usual
 
-from compare.ranking import rank
+from compare.ranking import rank, rank_sheets, write_ranking
 from compare.review import review
+from extract.model import Attributes
 
 ORDER = {"meets": 2, "cannot tell": 1, "falls short": 0}
 
@@ -139,3 +141,37 @@ def test_what_is_not_known_never_ranks_above_what_is_known_to_do(without):
     if not estimated_only:
         assert places(rows) == ["good", "unknown"]
         assert rows[1]["verdict"] == "cannot tell"
+
+
+@pytest.mark.parametrize("indented", [True, False])
+def test_the_document_written_row_by_row_is_the_ranking(indented):
+    sheets, asked, out = (
+        [sheet(SHORTER, BARE, OPEN, usual(number="far", without=("frequency_mhz",)))],
+        bench(),
+        StringIO(),
+    )
+    write_ranking(
+        rank_sheets(sheets, asked), [{"level": "info", "message": "read", "where": None}], out, indented=indented
+    )
+    written, whole = json.loads(out.getvalue()), rank(sheets, asked)
+    assert written["notes"] == [{"level": "info", "message": "read", "where": None}, *whole["notes"]]
+    assert written | {"notes": whole["notes"]} == whole
+    assert out.getvalue().count("\n") == len(whole["rows"]) + 3 or indented
+
+
+def test_a_brief_row_says_what_the_whole_row_says_and_the_sheet_has_its_part_alone():
+    found = rank_sheets([sheet(GOOD, SHORT, BARE)], bench())
+    for brief in found.briefs:
+        row = found.row(brief["place"])
+        assert {key: brief[key] for key in brief if key != "attributes"} == {
+            key: row[key] for key in brief if key != "attributes"
+        }
+        (alone,) = found.sheet_of(brief["place"]).parts
+        assert alone.part_number == brief["part_number"]
+    assert found.row(1) is found.row(1)
+
+
+def test_a_brief_row_has_the_supply_that_its_sheet_states():
+    priced = usual(number="priced").model_copy(update={"attributes": Attributes(price="0.21 €", status="active")})
+    (brief,) = rank_sheets([sheet(priced)], bench()).briefs
+    assert brief["attributes"] == {"price": "0.21 €", "status": "active"}
