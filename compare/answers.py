@@ -5,7 +5,6 @@ Everything here takes the dictionaries of `ranking.rank` and `review.review` (th
 
 from __future__ import annotations
 
-import math
 import re
 from collections.abc import Mapping, Sequence
 from dataclasses import dataclass
@@ -128,28 +127,12 @@ def identities(rows: Sequence[Row]) -> list[Identity]:
     return known
 
 
-def review_for(row: Row, reviews: Sequence[Row]) -> Row | None:
-    """The review of a ranked row: of parts without a number, or twice in a file, the one with the row's own figures."""
-    return next((one for one in reviews if _is_same(one, row)), None)
-
-
-def _is_same(one: Row, other: Row) -> bool:
-    if any(one[key] != other[key] for key in ("file", "part_number", "package", "mode", "verdict")):
-        return False
-    # Worked out alone or among others, a figure may differ in its last bit.
-    slacks = [(one["slack"].get(key), other["slack"].get(key)) for key in {*one["slack"], *other["slack"]}]
-    return all(a == b or (a is not None and b is not None and math.isclose(a, b, rel_tol=1e-9)) for a, b in slacks)
-
-
-def sheets_of(row: Row, sheets: Sequence[SpecSheet]) -> list[SpecSheet]:
-    """The row's sheet with the row's part alone, so that one part is worked out and not a whole catalogue."""
-    return [
-        sheet.model_copy(
-            update={"parts": tuple(part for part in sheet.parts if part.part_number == row["part_number"])}
-        )
-        for sheet in sheets
-        if sheet.file == row["file"]
+def part_numbers(sheet: SpecSheet) -> Sequence[str | None]:
+    """Those of a list without making each of its parts."""
+    numbers: Sequence[str | None] = getattr(sheet.parts, "part_numbers", None) or [
+        part.part_number for part in sheet.parts
     ]
+    return numbers
 
 
 def tightest_text(row: Row) -> str:

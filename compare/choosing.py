@@ -8,8 +8,9 @@ from __future__ import annotations
 
 import math
 from collections import Counter
-from collections.abc import Callable, Mapping, Sequence
+from collections.abc import Mapping, Sequence
 from dataclasses import asdict, dataclass, fields
+from functools import lru_cache
 from typing import Any
 
 from compare import supply
@@ -109,6 +110,7 @@ def candidates(rows: Sequence[Row], slot: Mapping[str, Any]) -> list[Candidate]:
     return [Candidate(row, supply.supply_of(row, slot)) for row in rows]
 
 
+@lru_cache(maxsize=4096)
 def package_text(package: str | None) -> str:
     """A package as filters call it: `2.0 × 1.6` whatever the sheet writes around it, else its own name."""
     if not package:
@@ -119,15 +121,14 @@ def package_text(package: str | None) -> str:
 
 def choices(every: Sequence[Candidate]) -> dict[str, list[str]]:
     """What there is to filter by, the commonest first."""
-    of: dict[str, Callable[[Candidate], str]] = {
-        "package": lambda one: package_text(one.row["package"]),
-        "maker": lambda one: one.row["maker"] or "",
-        "status": lambda one: str(one.supply.get("status", {}).get("value", "")),
-    }
-    found = {}
-    for name, take in of.items():
-        counts = Counter(filter(None, map(take, every)))
-        found[name] = [value for value, _ in counts.most_common()]
+    packages = Counter(one.row["package"] for one in every)
+    by_size: Counter[str] = Counter()
+    for package, count in packages.items():
+        by_size[package_text(package)] += count
+    makers = Counter(one.row["maker"] or "" for one in every)
+    statuses = Counter(_status(one) for one in every if one.supply)
+    counted = {"package": by_size, "maker": makers, "status": statuses}
+    found = {name: [value for value, _ in counts.most_common() if value] for name, counts in counted.items()}
     present = {one.row["verdict"] for one in every}
     return {**found, "verdict": [name for name in CLASSES if name in present]}
 
@@ -145,13 +146,14 @@ def sift(every: Sequence[Candidate], filters: Filters, weights: Mapping[str, flo
     """Filter, then put in order."""
     money = common_currency(every)
     unknown: Counter[str] = Counter()
-    shown = [one for one in every if _passes(one, filters, money, unknown)]
+    shown = [one for one in every if _passes(one, filters, money, unknown)] if filters.asks else list(every)
     return Sifted(_in_order(shown, filters.by, weights, money), dict(unknown), money)
 
 
 def common_currency(every: Sequence[Candidate]) -> str:
     """The currency that most prices are in: prices in another one, or in none, are not compared with them."""
-    counts = Counter(supply.currency(one.supply) for one in every if supply.figure(one.supply, "price") is not None)
+    priced = [one.supply for one in every if "price" in one.supply]
+    counts = Counter(supply.currency(one) for one in priced if supply.figure(one, "price") is not None)
     named = [currency for currency, _ in counts.most_common() if currency]
     return named[0] if named else ""
 
@@ -162,7 +164,7 @@ def _passes(one: Candidate, asked: Filters, money: str, unknown: Counter[str]) -
         (asked.package, package_text(row["package"])),
         (asked.maker, row["maker"] or ""),
         (asked.verdict, row["verdict"]),
-        (asked.status, str(one.supply.get("status", {}).get("value", ""))),
+        (asked.status, _status(one)),
     )
     if any(wanted and wanted != has for wanted, has in plain):
         return False
@@ -329,3 +331,7 @@ def _why_weighed(one: Candidate, other: Candidate, sifted: Sifted, weights: Mapp
         f"Weighed ({said}), {row_name(one.row)} comes to {number(mine)} of the best of each, {row_name(other.row)} to "
         f"{number(theirs)}."
     )
+
+
+def _status(one: Candidate) -> str:
+    return str(one.supply.get("status", {}).get("value", ""))

@@ -12,7 +12,7 @@ from collections.abc import Iterable, Mapping, Sequence
 from typing import Any
 
 from compare import shown, supply
-from compare.answers import ENDS, FIGURES, SHORT_NAMES, asked_strips, row_name
+from compare.answers import ENDS, FIGURES, SHORT_NAMES, asked_strips, part_numbers, row_name
 from compare.figures import with_unit
 from extract.fields import field_of
 from extract.model import Part, Reading, SpecSheet, Where
@@ -119,8 +119,9 @@ def sources_table(sheets: Sequence[SpecSheet], rows: Sequence[Row]) -> Table:
     table = [
         _source_row(sheet, part, reading)
         for sheet in sheets
-        for part in sheet.parts
-        if (sheet.file, part.part_number) in wanted
+        for at, number in enumerate(part_numbers(sheet))
+        if (sheet.file, number) in wanted
+        for part in (sheet.parts[at],)
         for reading in part.readings
     ]
     return headings, table

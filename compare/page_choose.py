@@ -212,7 +212,7 @@ def why(picked: Candidate, sifted: Sifted, contest: Ranked, bench: Bench) -> Non
     """The chosen row's reasons: the slack chart, the reasons in words, ppm against load, what would help."""
     session.section(pieces.plain(choose_shown.place_heading(picked.row)))
     above(picked, sifted, contest)
-    review = review_of(dict(picked.row), bench)
+    review = review_of(contest.sheet_of(picked.row["place"]), bench)
     if review is None:
         return
     if said := answers.chosen_text(picked.row):

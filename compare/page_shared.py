@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import hashlib
 from collections.abc import Callable, Mapping
 from typing import Any
 
@@ -14,6 +15,7 @@ from compare.cautions import CAUTIONS
 from compare.desk import NO_CIRCUIT, NO_PARTS, NOTHING_OPEN, PRIVACY, field_of
 from compare.export import DECIMAL_MARKS, SEPARATORS, Table
 from compare.page_copy import copy_button, figures
+from extract.model import SpecSheet
 
 __all__ = ["copy_button", "figures"]
 
@@ -59,11 +61,16 @@ def cautions() -> None:
     st.markdown(f":gray[:small[{' '.join(CAUTIONS)} {PRIVACY}]]")
 
 
-def review_of(row: dict[str, Any], bench: Bench) -> answers.Row | None:
-    """The review of the ranked part, worked out for it alone."""
-    own = answers.sheets_of(row, session.sheets())
-    result = session.guarded("working the part out", lambda: session.reviewed(session.key_of(bench, own), own, bench))
-    return None if result is None else answers.review_for(row, result["reviews"])
+def review_of(sheet: SpecSheet, bench: Bench) -> answers.Row | None:
+    """The review of the one part of a sheet, worked out for it alone."""
+    key = f"{session.key_of(bench, [sheet])} {fingerprint(sheet)}"
+    result = session.guarded("working the part out", lambda: session.reviewed(key, [sheet], bench))
+    return None if result is None or not result["reviews"] else dict(result["reviews"][0])
+
+
+def fingerprint(sheet: SpecSheet) -> str:
+    """What tells apart parts of one number on one sheet."""
+    return hashlib.sha256("".join(part.model_dump_json() for part in sheet.parts).encode()).hexdigest()[:16]
 
 
 def show_sheet(file: str) -> None:

@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import hashlib
 from collections.abc import Sequence
 from typing import Any
 
@@ -15,11 +16,11 @@ from compare.figures import counted
 from compare.levers import Lever, levers
 from compare.page_charts import picture
 from compare.page_copy import copy_button, figures
-from compare.page_shared import cautions, save_buttons, something_open
+from compare.page_shared import cautions, fingerprint, review_of, save_buttons, something_open
 from compare.refit import with_changes
 from compare.sheets_json import notes_of
 from compare.substitution import SubstituteError, substitute
-from compare.swap_parts import Choice, alone, as_row, choices, default_candidate
+from compare.swap_parts import Choice, as_row, choices, default_candidate
 from extract.model import SpecSheet
 
 SIZE = 1.08
@@ -31,7 +32,9 @@ def substitute_view() -> None:
         return
     bench = session.desk().bench
     contest = session.contest(bench) if bench is not None else None
-    places = choices(session.sheets(), contest)
+    kept = session.slot("selection")
+    wanted = {tuple(kept[role]) for role in ("incumbent", "candidate") if kept.get(role)} | {st.session_state.chosen}
+    places = choices(session.sheets(), contest, wanted)
     if len(places) < 2:
         session.title("Nothing to compare yet")
         st.markdown(
@@ -114,16 +117,14 @@ def substituted(
 
 
 def key_of(bench: Bench | None, *parts: Sequence[SpecSheet]) -> str:
-    if bench is not None:
-        return "|".join(session.key_of(bench, of) for of in parts)
-    told = [(sheet.file, sheet.sha256, tuple(part.part_number for part in sheet.parts)) for of in parts for sheet in of]
-    return repr((told, session.work().corrections))
+    """A key that changes with the bench, with any part and with any correction."""
+    told = [one.file + fingerprint(one) for of in parts for one in of]
+    return hashlib.sha256(repr((bench.to_toml() if bench is not None else "", told)).encode()).hexdigest()
 
 
 def judged(incumbent: Choice, candidate: Choice, bench: Bench | None) -> tuple[dict[str, Any], dict[str, Any]] | None:
     """The result and the candidate in it; None where the question cannot be put, which is said then."""
-    sheets = session.sheets()
-    pair_of = [alone(sheets, incumbent)], [alone(sheets, candidate)]
+    pair_of = [incumbent.alone()], [candidate.alone()]
     result = compared(key_of(bench, *pair_of), *pair_of, bench)
     return None if result is None else (result, result["candidates"][0])
 
@@ -159,8 +160,7 @@ def levers_of(incumbent: Choice, candidate: Choice, one: dict[str, Any], bench: 
     """What each reading does alone; nothing without a circuit or at another frequency."""
     if bench is None or "slack" not in one:
         return {}
-    sheets = session.sheets()
-    old, new = alone(sheets, incumbent), alone(sheets, candidate)
+    old, new = incumbent.alone(), candidate.alone()
     key = key_of(bench, [old], [new])
     return (
         session.guarded("weighing the lines", lambda: levered(key, old, new, swap_shown.differing_fields(one), bench))
@@ -236,9 +236,8 @@ def every_candidate(incumbent: Choice, places: Sequence[Choice], bench: Bench | 
     ) as opened:
         if not opened.open:
             return
-        sheets = session.sheets()
-        own = [alone(sheets, incumbent)]
-        rest = [alone(sheets, one) for one in others]
+        own = [incumbent.alone()]
+        rest = [one.alone() for one in others]
         result = compared(key_of(bench, own, rest), own, rest, bench)
         if result is None:
             return
@@ -265,10 +264,8 @@ def as_it_is(result: dict[str, Any], one: dict[str, Any], candidate: Choice, ben
     picture(charts.slack_chart(answers.slack_rows(one, bench)).draw(session.palette()), key="as_it_is", widest=SIZE)
     if one["changes"]:
         changed = with_changes(bench, one["changes"])
-        own = [alone(session.sheets(), candidate)]
-        after = session.guarded("working it out", lambda: session.reviewed(session.key_of(changed, own), own, changed))
-        if after is not None and after["reviews"]:
-            review = after["reviews"][0]
+        review = review_of(candidate.alone(), changed)
+        if review is not None:
             session.section(pieces.plain(swap_shown.after_heading(one["changes"], review["verdict"])))
             chart = charts.slack_chart(answers.slack_rows(review, changed))
             picture(chart.draw(session.palette()), key="as_changed", widest=SIZE)
@@ -279,8 +276,8 @@ def as_it_is(result: dict[str, Any], one: dict[str, Any], candidate: Choice, ben
 
 def supplied(incumbent: Choice, candidate: Choice) -> None:
     """Price, stock and lead time of both, where anything is known of them."""
-    sheets, slot = session.sheets(), session.slot("supply")
-    old, new = (supply.supply_of(as_row(alone(sheets, choice)), slot) for choice in (incumbent, candidate))
+    slot = session.slot("supply")
+    old, new = (supply.supply_of(as_row(choice.alone()), slot) for choice in (incumbent, candidate))
     if both := swap_shown.both_supplied(old, new):
         figures(swap_pieces.both_html(both, "Supply"), key="supplied")
 

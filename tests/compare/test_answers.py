@@ -99,16 +99,3 @@ def test_parts_of_the_same_name_are_told_apart():
     rows = [hand_made.row(1, None), hand_made.row(2, None, slack={"margin": 1.5}), hand_made.row(3, "A")]
     file = hand_made.SHEET.file
     assert answers.identities(rows) == [(file, None, 1), (file, None, 2), (file, "A", 1)]
-    reviews = [
-        hand_made.review(part_number=None, verdict="falls short"),
-        hand_made.review(part_number=None, slack={"margin": 1.5}),
-    ]
-    assert answers.review_for(rows[1], reviews) is reviews[1]
-    assert answers.review_for(rows[2], reviews) is None
-
-
-def test_only_the_rows_own_part_is_worked_out():
-    other = hand_made.PART.model_copy(update={"part_number": "B"})
-    catalogue = hand_made.SHEET.model_copy(update={"parts": (hand_made.PART, other)})
-    (sheet,) = answers.sheets_of(MEETS, [catalogue, hand_made.LOCKED])
-    assert [part.part_number for part in sheet.parts] == ["MRB25-260-08H"]
