@@ -121,6 +121,8 @@ def columns_parted(pieces: Sequence[Piece]) -> list[Piece]:
 
 def _columns_in(own: Sequence[Piece]) -> list[Span]:
     """Columns inside one grid column; texts merged over them, which stand in the middle, do not hide them."""
+    if sum(len(line) > 1 for piece in own for line in piece.lines) < 2:
+        return []
     apart = [piece for piece in own if not _in_middle(piece)]
     columns = _all_columns([line for piece in apart for line in piece.lines])
     if len(columns) > 1 and not any(_is_middle_column(piece, columns) for piece in apart):
@@ -217,10 +219,12 @@ def spans_parted(pieces: Sequence[Piece]) -> list[Piece]:
     result: list[Piece] = []
     for piece in pieces:
         cell = piece.cell
+        if cell.column_span == 1:
+            result.append(piece)
+            continue
         covered = range(cell.column, cell.column + cell.column_span)
         columns = [sides[column] for column in covered if column in sides]
-        lines = [split_at_gaps(line) for line in piece.lines]
-        if len(columns) == cell.column_span > 1 and any(len(line) > 1 for line in lines):
+        if len(columns) == cell.column_span and any(len(split_at_gaps(line)) > 1 for line in piece.lines):
             parted = _across(piece, columns, borders_of(columns, cell.box[0], cell.box[2]))
             filled = [one for one in parted if one.words]
             if len(filled) >= 2 and all(one.cell.column_span == 1 for one in filled):

@@ -183,7 +183,7 @@ def _row_label(outer: Table | Line, inner: Table | Line) -> str:
 def _pieces(grid: Grid, words: Sequence[Word], width: float, height: float) -> list[Piece] | None:
     """Cells with their words; None where the lines are a frame, a drawing or a graph and no table."""
     x0, top, x1, bottom = grid.box
-    within = [word for word in words if x0 <= word.centre[0] <= x1 and top <= word.centre[1] <= bottom]
+    within = [word for word in words for x, y in (word.centre,) if x0 <= x <= x1 and top <= y <= bottom]
     finder = _Finder(within)
     pieces = []
     for cell in grid.cells:
@@ -216,7 +216,7 @@ class _Finder:
     """Words by the height of their centres, so that a cell looks only at those of its own rows."""
 
     def __init__(self, words: Sequence[Word]) -> None:
-        placed = sorted((word.centre[1], index, word.centre[0], word) for index, word in enumerate(words))
+        placed = sorted((y, index, x, word) for index, word in enumerate(words) for x, y in (word.centre,))
         self._placed, self._heights = placed, [each[0] for each in placed]
 
     def in_cell(self, box: Box) -> tuple[Word, ...]:

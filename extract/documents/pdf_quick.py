@@ -86,6 +86,8 @@ class _Reader:
         self._objects: dict[int, _TextObject] = {}
         self.shapes: list[Shape] = []
         self._reals, self._wholes = (ctypes.c_float * 2)(), (ctypes.c_uint * 4)()
+        self._six = (ctypes.c_float * 6)()
+        self._six_place = ctypes.addressof(self._six)
         self._real, self._whole = ctypes.addressof(self._reals), ctypes.addressof(self._wholes)
 
     # --- objects
@@ -100,7 +102,11 @@ class _Reader:
 
     def _take_text(self, item: int, outer: Matrix) -> None:
         call = self._calls
-        a, b, c, d, _, _ = matrix_of(item).then(outer) if outer is not IDENTITY else matrix_of(item)
+        values = self._six
+        call.matrix(item, self._six_place)
+        a, b, c, d = values[0], values[1], values[2], values[3]
+        if outer is not IDENTITY:
+            a, b, c, d, _, _ = Matrix(*values).then(outer)
         if a <= 0 or d <= 0 or abs(b) + abs(c) > 1e-4 * d:
             raise DoubtError("turned type")
         for index in range(call.count_marks(item)):

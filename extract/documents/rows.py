@@ -20,8 +20,9 @@ def rows_parted(pieces: Sequence[Piece]) -> list[Piece]:
     """Pieces with each grid row parted where several cells hold values line by line."""
     result = list(pieces)
     count = max(piece.cell.row + piece.cell.row_span for piece in pieces)
+    rows = _by_row(result)
     for row in range(count - 1, -1, -1):
-        own = [piece for piece in result if piece.cell.row == row and piece.cell.row_span == 1]
+        own = rows.get(row, [])
         if on_one_line([word for piece in own for word in piece.words if not word.angle]):
             continue
         if _mostly_wrapped(own):
@@ -31,9 +32,20 @@ def rows_parted(pieces: Sequence[Piece]) -> list[Piece]:
         levels = levels if levels or borders else _fresh_levels(own)
         if len(levels) > 1:
             result = _row_parted(result, own, row, levels)
+            rows = _by_row(result)
         elif borders:
             result = _cut(result, own, row, borders)
+            rows = _by_row(result)
     return result
+
+
+def _by_row(pieces: Sequence[Piece]) -> dict[int, list[Piece]]:
+    """Pieces that cover one row, by that row."""
+    rows: dict[int, list[Piece]] = {}
+    for piece in pieces:
+        if piece.cell.row_span == 1:
+            rows.setdefault(piece.cell.row, []).append(piece)
+    return rows
 
 
 _OPEN_END = re.compile(r"(?:[\w)][-/]|(?<=\d)\s?[~～…]|\b(?:to|bis|à|a|and|or|und))$")
