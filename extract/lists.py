@@ -172,8 +172,26 @@ def _settle(columns: list[ListColumn], listing: Listing) -> None:
     for column in numbered:
         if good and column not in good:
             column.use = "description"
+    if len(good) > 1:
+        _set_series_apart(good, listing)
     if not numbered and any(column.use in _MAY_NUMBER for column in columns):
         _part_column_by_content(columns, texts)
+
+
+def _set_series_apart(numbered: Sequence[ListColumn], listing: Listing) -> None:
+    """Of a column of part numbers and one of their series or models the second names no part of its own."""
+    distinct: dict[int, float] = {}
+    for column in numbered:
+        texts = [cell.text for row in listing.rows if (cell := row[column.index]) is not None and cell.text.strip()]
+        distinct[column.index] = len(set(texts)) / len(texts) if texts else 0.0
+    most = max(distinct.values())
+    for column in numbered:
+        if most > MOSTLY and distinct[column.index] <= most / 2:
+            column.use = "series"
+
+
+# The share of distinct texts above which a column numbers its rows.
+MOSTLY = 0.75
 
 
 def _unhead_bands(columns: Sequence[ListColumn], texts: dict[int, list[str]]) -> None:

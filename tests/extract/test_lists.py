@@ -163,3 +163,15 @@ def test_resistances_at_two_temperatures_keep_theirs():
 def test_a_number_broken_behind_its_hyphen_is_whole():
     (draft,) = drafts(("Type", "Frequency (MHz)", "ESR max. (Ω)"), ("CRX-\n18A/U", "16", "60"))
     assert draft.part_number == "CRX-18A/U"
+
+
+def test_a_series_beside_the_part_numbers_is_no_part_of_its_own():
+    rows = [(f"ABQ32-{frequency}M-8", "ABQ32", frequency) for frequency in ("12", "16", "24", "26")]
+    found = drafts(("Part number", "Series", "Frequency (MHz)"), *rows)
+    assert [draft.part_number for draft in found] == [row[0] for row in rows]
+
+
+def test_two_columns_of_part_numbers_are_parts_both():
+    rows = [("12", "ABP-1001", "ABP-2001"), ("16", "ABP-1002", "ABP-2002"), ("24", "ABP-1003", "ABP-2003")]
+    found = drafts(("Frequency (MHz)", "Part number -20 to +70 °C", "Part number -40 to +85 °C"), *rows)
+    assert len(found) == 6
