@@ -195,7 +195,7 @@ def gain_chart(curve: Curve, band_ms: tuple[float, float] | None, least: float |
                 sides = "dr dl" if name == "critical" else "dl dr"
                 plot.say(f"{name} {number(at)}", (plot.x(at), plot.y(plot.y.held(mark["headroom"]))), sides)
         _gain_words(plot, (band_ms, least), factor)
-        plot.say(f"needed {plain(asked)}", (plot.x.end + 5, plot.y(plot.y.held(asked))), "ul dl")
+        plot.say_on(f"needed {plain(asked)}", asked)
         return plot.picture(told)
 
     said = ("Dashed: the worst corner. IC: from its least to its most over all conditions.", *map(sentence, curve.said))
@@ -263,7 +263,7 @@ def esr_chart(curve: Curve) -> Chart:
             plot.bar(at, margin)
             said = f"greatest {number(at)} {unit}: {number(margin)}"
             plot.say(said, (plot.x(at), plot.y(margin)), "ur dl ul dr", bold=True, colour=palette.accent)
-        plot.say(f"needed {plain(asked)}", (plot.x.end + 5, plot.y(plot.y.held(asked))), "ul dl")
+        plot.say_on(f"needed {plain(asked)}", asked)
         return plot.picture(told)
 
     said = ("Dashed: the worst corner of everything but R1.", *map(sentence, curve.said))

@@ -23,7 +23,7 @@ SHOW = """export default function({data, parentElement}) {
   const place = parentElement.querySelector("div"); place.innerHTML = data.svg;
   const svg = place.firstElementChild;
   svg.removeAttribute("height"); svg.style.cssText = "width:100%;display:block;max-width:" + data.widest + "px"; }"""
-WIDEST = 1.3
+WIDEST = 1.5
 
 
 def picture(of: Picture, *, key: str, widest: float = WIDEST) -> None:

@@ -17,13 +17,17 @@ from compare import (
 )
 from compare import page_session as session
 from compare.cautions import CAUTIONS
+from compare.charts import slack_chart
+from compare.corrections import Line
 from compare.desk import PRIVACY
 from compare.dossier import Dossier
 from compare.figures import frequency_text
 from compare.page_circuit import field
+from compare.page_evidence import evidence_of
 from compare.page_report import save_report
 from compare.page_shared import ready
 from compare.ranking import Ranked
+from compare.shown import NAMES, how, value_text
 from compare.working import words, working
 
 NONE_OFFERS = "Choose says what each of them offers instead."
@@ -54,6 +58,7 @@ def review_view() -> None:
         what_fails(dossier)
     with right:
         save_report(dossier)
+        the_sheet(dossier)
         to_do(dossier)
 
 
@@ -92,7 +97,7 @@ def charts(dossier: Dossier) -> None:
             '<span class="qf-small">▮ worst case · ○ nominal · hatched: outside the limit · tinted: what IC or '
             "tolerances may do</span>"
         )
-    drawn = list(dossier.charts.values())
+    drawn = [*dossier.charts.values(), slack_chart(answers.slack_rows(dossier.review, dossier.bench))]
     for first in range(0, len(drawn), 2):
         columns = st.columns(2, gap="medium")
         for column, chart in zip(columns, drawn[first : first + 2], strict=False):
@@ -100,6 +105,30 @@ def charts(dossier: Dossier) -> None:
                 page_charts.draw(chart, key=chart.name, tables=tables, save=True)
     for said in dossier.not_drawn:
         st.markdown(f":gray[{pieces.plain(answers.told(said))}]")
+
+
+def the_sheet(dossier: Dossier) -> None:
+    """A reading that was used, with the page that it stands on."""
+    if not st.toggle("Show a reading on its sheet", key="show_sheet"):
+        return
+    readings = [one for taken in dossier.offer.taken().values() for one in taken.readings]
+    opened = next(
+        (one for one in session.work().sheets if (one.sheet.file, one.sheet.sha256) == _named(dossier)),
+        None,
+    )
+    if not readings or opened is None:
+        st.markdown("No reading of a sheet was used.")
+        return
+
+    def name(at: int) -> str:
+        return f"{NAMES[readings[at].field]}: {value_text(readings[at])}, {how(readings[at])}"
+
+    at = st.selectbox("Reading", range(len(readings)), format_func=name, key="sheet_reading")
+    evidence_of(opened, Line(at, readings[at], None if readings[at].status == "entered" else readings[at]))
+
+
+def _named(dossier: Dossier) -> tuple[str, str | None]:
+    return dossier.sheet.file, dossier.sheet.sha256
 
 
 def every_number(dossier: Dossier) -> None:

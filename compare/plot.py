@@ -209,6 +209,16 @@ class Plot:
         self.taken.append(box)
         self.pen.write(x, y, text, anchor, colour=colour, bold=bold, halo=self.palette.page)
 
+    def say_on(self, text: str, level: float) -> None:
+        """Words on a horizontal line: above it where nothing is in the way, else below or elsewhere along it."""
+        if not self.y.inside(level):
+            return
+        at = self.y(level)
+        ends = [(self.x.end + 5, "ul"), (self.x.start - 5, "ur"), ((self.x.start + self.x.end) / 2, "u")]
+        places = [(x, side) for x, side in ends] + [(x, side.replace("u", "d")) for x, side in ends]
+        free = next((one for one in places if not self._meets(self._box(text, (one[0], at), one[1])[1])), places[0])
+        self.say(text, (free[0], at), free[1])
+
     def _box(
         self, text: str, at: Point, place: str
     ) -> tuple[tuple[float, float, Anchor], tuple[float, float, float, float]]:
