@@ -86,6 +86,8 @@ def _sum(*ends: tuple[float, float, float]) -> tuple[float, float, float]:
 class Envelope:
     """One key over its corners. Arrays are (n, C0 ends, C1 ends): the estimates' axes stay open for the verdict.
 
+    The last C0 end is the estimated low one, NaN for keys that do not count it where it is one of its own.
+
     `low` and `high` pass over corners where there is no such number; `some_without` tells that there were any.
     """
 
@@ -461,51 +463,67 @@ def _transconductances(bench: Bench, keys: CircuitKeys, of: tuple[Sequence[Array
     return _side_by_side(*ends), np.full((1,) * 6, high)
 
 
-def _widen_all(reckoned: Reckoned, corners: Corners, wanted: Collection[str] | None) -> None:
-    """Every key at every corner, some parts at a time, and only its ends kept: a list of thousands has millions."""
-    circuit, crystal, keys = corners.circuit, corners.crystal, corners.keys
-    inputs = [*circuit, *crystal, corners.peak_v, np.asarray(keys.probe_pf, dtype=float)]
-    shape = np.broadcast_shapes(*(x.shape for x in inputs))
-    fields = len(vars(circuit))
-    too_much = not np.isnan(corners.greatest_gm).all()
-    asked = {*wanted, "greatest_transconductance_ms"} if wanted is not None and too_much else wanted
-    for rows, block in blocks(inputs, shape):
-        with np.errstate(all="ignore"):
-            swing = Swing(block[-2], keys.swing_at, block[-1])
-            circuits, crystals = Circuit(*block[:fields]), Crystal(*block[fields:-2])
-            found = analyse_block(circuits, crystals, swing, corners.limiter, asked)
-        part = rows[0]
-        for key, values in found.items():
-            _widen(reckoned, key, values, part, corners.shunt_index)
-        if not too_much:
-            continue
-        of_stated = list(corners.shunt_index[:SHUNT_FLOOR])
-        greatest = _six(found["greatest_transconductance_ms"])
-        ratio = np.nan_to_num(corners.greatest_gm / greatest, nan=-np.inf).max(axis=CORNERS)
-        worst = ratio[:, of_stated if ratio.shape[1] > 1 else [0]].max(axis=(1, 2))
-        reckoned.too_much_gain[part] = np.maximum(reckoned.too_much_gain[part], worst)
-
-
 CORNERS = (3, 4, 5)
 """Axes of ESR, node capacitances and transconductance: those over which only the ends are kept."""
+
+
+def _widen_all(reckoned: Reckoned, corners: Corners, wanted: Collection[str] | None) -> None:
+    """Every key at every corner; the estimated low end of C0 apart, for few keys count it."""
+    low, high, floor = corners.shunt_index
+    if floor in (low, high):
+        _widen_at(reckoned, corners, wanted, slice(0, 3), [low, high, floor])
+        return
+    _widen_at(reckoned, corners, wanted, slice(0, SHUNT_FLOOR), [low, high])
+    counting = {key for key in BY_SHUNT_FLOOR if wanted is None or key in wanted}
+    _widen_at(reckoned, corners, counting, slice(SHUNT_FLOOR, 3), [floor])
+
+
+def _widen_at(
+    reckoned: Reckoned, corners: Corners, wanted: Collection[str] | None, slots: slice, shunt_index: Sequence[int]
+) -> None:
+    """Some keys at some C0, a few parts at a time, and only their ends kept: a list of thousands has millions."""
+    keys, at = corners.keys, sorted(set(shunt_index))
+    circuit = [_at_shunt(values, at) for values in corners.circuit]
+    crystal = [_at_shunt(values, at) for values in corners.crystal]
+    inputs = [*circuit, *crystal, corners.peak_v, np.asarray(keys.probe_pf, dtype=float)]
+    # The greatest transconductance counts for no key of the estimated low end.
+    too_much = slots.start == 0 and not np.isnan(corners.greatest_gm).all()
+    asked = {*wanted, "greatest_transconductance_ms"} if wanted is not None and too_much else wanted
+    place = [at.index(one) for one in shunt_index]
+    for rows, block in blocks(inputs, np.broadcast_shapes(*(x.shape for x in inputs))):
+        with np.errstate(all="ignore"):
+            swing = Swing(block[-2], keys.swing_at, block[-1])
+            circuits, crystals = Circuit(*block[: len(circuit)]), Crystal(*block[len(circuit) : -2])
+            found = analyse_block(circuits, crystals, swing, corners.limiter, asked)
+        for key, values in found.items():
+            _widen(reckoned, key, _six(values), (rows[0], slots), place)
+        if too_much:
+            greatest = _six(found["greatest_transconductance_ms"])
+            ratio = np.nan_to_num(corners.greatest_gm / greatest, nan=-np.inf).max(axis=(1, 2, *CORNERS))
+            reckoned.too_much_gain[rows[0]] = np.maximum(reckoned.too_much_gain[rows[0]], ratio)
+
+
+def _at_shunt(values: Array, at: Sequence[int]) -> Array:
+    """What goes along the C0 axis, at some of its ends."""
+    return values[:, list(at)] if values.ndim == 6 and values.shape[1] > 1 else values
 
 
 def _six(values: NDArray[Any]) -> NDArray[Any]:
     return values.reshape((1,) * (6 - values.ndim) + values.shape)
 
 
-def _widen(reckoned: Reckoned, key: str, values: Array, rows: slice, shunt_index: Sequence[int]) -> None:
+def _widen(reckoned: Reckoned, key: str, found: NDArray[Any], where: tuple[slice, slice], place: Sequence[int]) -> None:
     n = len(reckoned.too_much_gain)
     if key not in reckoned.over:
-        none = np.full((n, len(shunt_index), 2), np.nan)
+        none = np.full((n, SHUNT_FLOOR + 1, 2), np.nan)
         reckoned.over[key] = Envelope(none, none.copy(), np.zeros(none.shape, dtype=bool))
-    known, found = reckoned.over[key], _six(values)
+    known = reckoned.over[key]
     # Axes along which the key does not change are not there: what is not worked out twice is not compared twice.
-    which = list(shunt_index) if found.shape[1] > 1 else [0] * len(shunt_index)
+    which = list(place) if found.shape[1] > 1 else [0] * len(place)
     low, high = (reduce.reduce(found, axis=CORNERS)[:, which] for reduce in (np.fmin, np.fmax))
-    np.fmin(known.low[rows], low, out=known.low[rows])
-    np.fmax(known.high[rows], high, out=known.high[rows])
+    np.fmin(known.low[where], low, out=known.low[where])
+    np.fmax(known.high[where], high, out=known.high[where])
     without = np.isnan(low)
     if not without.all():
         without = np.logical_or.reduce(np.isnan(found), axis=CORNERS)[:, which]
-    known.some_without[rows] |= without
+    known.some_without[where] |= without

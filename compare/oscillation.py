@@ -14,7 +14,7 @@ from __future__ import annotations
 
 from collections.abc import Callable, Collection, Iterator
 from dataclasses import dataclass, fields, replace
-from functools import cached_property
+from functools import cache, cached_property
 from typing import Any, Literal
 
 import numpy as np
@@ -240,30 +240,42 @@ def analyse_block(
     loop = Loop(Network.of(circuit), Arm.of(crystal))
     critical = critical_state(loop)
     steady = critical if limiter == "transconductance" else output_limited_state(loop, critical)
-    driven = steady if not np.any(swing.probe_pf > 0) else state_with_probe(circuit, loop.arm, swing, limiter)
     frequency, rated_load, c0, c1, r1 = crystal
     fs = np.where(np.isnan(rated_load + c1), np.nan, frequency / (1 + loop.arm.rated_pull))
-    cannot_oscillate = np.isnan(critical.net.gm) & ~np.isnan(c0 + r1)
-    load = np.where(cannot_oscillate, series_load_pf(circuit), steady_load_pf(loop.arm, steady))
-    rl = motional.load_resonance_resistance_ohm(r1, c0, load)
-    negative = terminal_impedance_ohm(circuit, frequency).real
+
+    @cache
+    def load() -> Array:
+        cannot_oscillate = np.isnan(critical.net.gm) & ~np.isnan(c0 + r1)
+        return np.where(cannot_oscillate, series_load_pf(circuit), steady_load_pf(loop.arm, steady))
+
+    @cache
+    def rl() -> Array:
+        return motional.load_resonance_resistance_ohm(r1, c0, load())
+
+    @cache
+    def negative() -> NDArray[np.floating[Any]]:
+        return terminal_impedance_ohm(circuit, frequency).real
+
+    def driven() -> Steady:
+        return steady if not np.any(swing.probe_pf > 0) else state_with_probe(circuit, loop.arm, swing, limiter)
+
     keys: dict[str, Callable[[], NDArray[np.floating[Any]]]] = {
         "motional_inductance_mh": lambda: motional.motional_inductance_mh(fs, c1),
         "quality_factor": lambda: motional.quality_factor(fs, c1, r1),
         "series_resonance_mhz": lambda: fs,
         "parallel_resonance_mhz": lambda: motional.parallel_resonance_mhz(fs, c0, c1),
-        "circuit_load_pf": lambda: load,
-        "load_resonance_resistance_ohm": lambda: rl,
-        "negative_resistance_ohm": lambda: negative,
-        "margin": lambda: -negative / rl,
+        "circuit_load_pf": load,
+        "load_resonance_resistance_ohm": rl,
+        "negative_resistance_ohm": negative,
+        "margin": lambda: -negative() / rl(),
         "gain_ratio": lambda: loop.net.gm / critical.net.gm,
         "resistance_headroom": lambda: -loop.seen.real / r1,
         "greatest_esr_ohm": lambda: greatest_esr_ohm(loop),
         "critical_transconductance_ms": lambda: critical.net.gm / MILLI,
         "greatest_transconductance_ms": lambda: greatest_transconductance(loop, critical) / MILLI,
         "load_error_ppm": lambda: load_error_ppm(loop.arm, crystal, steady.pull),
-        "trim_ppm_per_pf": lambda: motional.trim_ppm_per_pf(fs, c0, c1, load, r1),
-        "drive_level_uw": lambda: drive_level_uw(loop.arm, driven, swing),
+        "trim_ppm_per_pf": lambda: motional.trim_ppm_per_pf(fs, c0, c1, load(), r1),
+        "drive_level_uw": lambda: drive_level_uw(loop.arm, driven(), swing),
         "startup_ms": lambda: startup_ms(loop),
     }
     return {key: array(of()) for key, of in keys.items() if wanted is None or key in wanted}
