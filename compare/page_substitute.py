@@ -180,34 +180,39 @@ def answer(result: dict[str, Any], one: dict[str, Any], bench: Bench | None) -> 
 
 
 def lines(result: dict[str, Any], one: dict[str, Any], bars: dict[str, Lever], bench: Bench | None) -> None:
-    every, same = swap_shown.swap_lines(one, bars)
+    found = swap_shown.swap_lines(one, bars)
     # What is known of their supply stands beside both, with its date.
-    differ = [line for line in every if line.field not in ("price", "lead_time")]
+    differ = [line for line in found.differ if line.field not in ("price", "lead_time")]
     colours = session.palette()
     if differ:
         session.section(swap_shown.differ_heading(differ))
         figures(swap_pieces.lines_html(differ, colours, levers=bench is not None), key="differ")
         if bench is not None:
             st.markdown(f":gray[:small[{swap_shown.LEVER_LEGEND}]]")
-    if same:
-        session.section(swap_shown.same_heading(same))
-        figures(swap_pieces.same_html(same), key="same")
+    if found.same:
+        session.section(swap_shown.same_heading(found.same))
+        figures(swap_pieces.same_html(found.same), key="same")
+    if found.silent:
+        st.markdown(f":gray[{pieces.plain(swap_shown.silent_text(found.silent))}]")
+
+    # What is saved is made once it is asked for, by then outside the session.
+    sheets, decided = session.sheets(), session.slot("decisions")
 
     def tables() -> dict[str, export.Table]:
         both = [result["incumbent"], one]
         numbered = [row for row in both if "margin" in row]
         return {
-            "lines": swap_shown.lines_table(one, result["incumbent"], [*every, *same]),
+            "lines": swap_shown.lines_table(one, result["incumbent"], found.every),
             "verdict": swap_shown.summary_table(result, one),
             "numbers": export.numbers_table(numbered),
-            "sources": export.sources_table(session.sheets(), both),
-            "decisions": approval.table(session.slot("decisions")),
+            "sources": export.sources_table(sheets, both),
+            "decisions": approval.table(decided),
         }
 
     def told() -> dict[str, Any]:
-        return {**result, "notes": [*notes_of(session.sheets()), *result["notes"]]}
+        return {**result, "notes": [*notes_of(sheets), *result["notes"]]}
 
-    copied = swap_shown.lines_table(one, result["incumbent"], [*every, *same])
+    copied = swap_shown.lines_table(one, result["incumbent"], found.every)
     save_buttons("substitute", copied, tables, told, key="substitute")
 
 

@@ -33,6 +33,7 @@ LEVER_LEGEND = (
     "Each line put in place alone. Bar to the end of its line: all the room that the present part had. "
     "Past it: an arrow, and the requirement falls short. Dotted: not known."
 )
+CHECK_PADS = "Check the drawings against the board."
 NOT_A_NO = "not a no: ask where the product needs it"
 WITHOUT_BENCH = "the board presents the present part’s rated load"
 ENDS_THAT_COUNT = {"low": ("high",), "high": ("low",), "inside": ("low", "high"), "outside": ("low", "high")}
@@ -71,7 +72,8 @@ def decided_by(one: Row) -> str:
 
 def _shortfall(one: Row) -> str:
     about = decided_by(one)
-    if about == "mode":
+    # An overtone is why, whatever requirement falls furthest.
+    if about == "mode" or any(r["about"] == "mode" and r["verdict"] == "falls short" for r in one.get("reasons", ())):
         return str(one["mode"] or "another mode")
     return SHORTFALLS.get(about) or SHORT_NAMES.get(about) or _name(about)
 
@@ -203,11 +205,17 @@ class SwapLine:
         return order[self.relation], used
 
 
-def swap_lines(one: Row, levers: Mapping[str, Lever]) -> tuple[list[SwapLine], list[SwapLine]]:
-    """The lines that differ, most harmful first, and those that are the same."""
+def swap_lines(one: Row, levers: Mapping[str, Lever]) -> Compared:
+    """Every line of a candidate, in the three groups that it is shown in."""
     lines = [_swap_line(line, levers.get(line["field"])) for line in one["lines"]]
-    differ = sorted((line for line in lines if line.relation != "same"), key=lambda line: line.harm)
-    return differ, [line for line in lines if line.relation == "same"]
+    silent = {line["field"] for line in one["lines"] if line["incumbent"] is line["candidate"] is None}
+    silent -= {line.field for line in lines if line.matters or line.relation == "same"}
+    differ = [line for line in lines if line.relation != "same" and line.field not in silent]
+    return Compared(
+        differ=sorted(differ, key=lambda line: line.harm),
+        same=[line for line in lines if line.relation == "same"],
+        silent=[line for line in lines if line.field in silent],
+    )
 
 
 def differing_fields(one: Row) -> list[str]:
@@ -487,3 +495,26 @@ def _supplied(one: supply.Record, key: str) -> str:
 
 def _bare_figure(value: float | None) -> str:
     return "" if value is None else f"{value:.10g}"
+
+
+@dataclass(frozen=True)
+class Compared:
+    """The lines of a comparison: those that differ, most harmful first; those alike; what neither sheet states."""
+
+    differ: list[SwapLine]
+    same: list[SwapLine]
+    silent: list[SwapLine]
+
+    @property
+    def every(self) -> list[SwapLine]:
+        return [*self.differ, *self.same, *self.silent]
+
+
+def silent_text(silent: Sequence[SwapLine]) -> str:
+    """What neither sheet states, in one sentence."""
+    names = ", ".join(
+        line.name[:1].lower() + line.name[1:] if line.name[1:2].islower() else line.name for line in silent
+    )
+    return (
+        f"Neither sheet states: {names}. {CHECK_PADS if any(line.field == 'pads' for line in silent) else ''}".strip()
+    )
