@@ -59,6 +59,8 @@ def is_unit(text: str) -> bool:
     return any((unit := kind.look_up(spelling)) is not None and unit.sort == "sizes" for kind in units.kinds().values())
 
 
+# A column headed by nothing but the unit of frequency holds frequencies.
+_MEGAHERTZ = re.compile(r"[(\[]?\s*[MkK][Hh][zZ]\s*[)\]]?")
 _CONDITION = re.compile(r"^(?P<name>[^\d±]*[^\d±\s(\[,@-])[\s(\[,@]+(?P<condition>[-+±]?\d.*)$", re.DOTALL)
 
 
@@ -76,6 +78,9 @@ def _parted(levels: tuple[str, ...]) -> tuple[str, ...]:
         return levels
     match = _CONDITION.match(fold(levels[0]))
     if match is None or meaning(match["name"]).head is None or condition_of(match["condition"]) == When():
+        return levels
+    if meaning(match["name"]).role in BOUNDS:
+        # "typ. 1,1 pF" is a value; only alone is "Typ" the name of a column of types.
         return levels
     return match["name"], match["condition"].rstrip(")]")
 
@@ -100,7 +105,7 @@ def _over_models(known: Meaning, below: tuple[str, ...]) -> Meaning:
 @lru_cache(maxsize=4096)
 def interpret(levels: tuple[str, ...]) -> Head:
     """Put the levels of one heading together: the label from one of them or from all, the bound and unit from any."""
-    levels = _parted(levels)
+    levels = ("frequency", *levels) if len(levels) == 1 and _MEGAHERTZ.fullmatch(levels[0].strip()) else _parted(levels)
     if len(levels) > 1:
         levels = tuple(part for level in levels for part in bound_and_unit(level) or (level,))
     known = [_over_models(each, levels[index + 1 :]) for index, each in enumerate(map(meaning, levels))]

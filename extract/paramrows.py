@@ -17,6 +17,7 @@ from extract.heads import BOUNDS, Head, is_unit
 from extract.keys import choices_in, key_label
 from extract.meaning import Meaning, is_part_token, meaning
 from extract.prose import pair_entries
+from extract.runs import IDEOGRAPHS
 
 Row = Sequence[Cell | None]
 _VALUE_ROLES = ("value", "min", "typ", "max")
@@ -85,7 +86,7 @@ def _is_label(text: str) -> bool:
 
 
 def _mostly_symbols(texts: list[str]) -> bool:
-    return sum(len(text) <= 8 for text in texts) >= 0.6 * len(texts)
+    return sum(len(text) <= 8 and not IDEOGRAPHS.search(text) for text in texts) >= 0.6 * len(texts)
 
 
 def _bounds_by_place(heads: list[Head]) -> list[Head]:
@@ -323,6 +324,7 @@ def _hand_down_labels(rows: list[_Row]) -> None:
         if row.label is not None and previous.label is not None and row.values and _is_bare_band(row.label_text):
             row.conditions.append(row.label_text)
             row.label, row.label_text = previous.label, _BAND_BEHIND.split(previous.label_text)[0]
+    _join_wrapped_labels(rows)
     labelled = [row.label is not None for row in rows]
     for index, row in enumerate(rows):
         if labelled[index] or not row.values:
@@ -335,6 +337,21 @@ def _hand_down_labels(rows: list[_Row]) -> None:
         row.label, row.label_text = source.label, source.label_text
         row.unit, row.symbol = row.unit or source.unit, row.symbol or source.symbol
     _share_units(rows)
+
+
+def _join_wrapped_labels(rows: list[_Row]) -> None:
+    """A label wrapped beside a stack of values is one label: "Series resistance" over "max.", a band beside each."""
+    for above, row in pairwise(rows):
+        if above.label is None or row.label is None or not above.values or not row.values:
+            continue
+        whole = f"{above.label_text} {row.label_text}"
+        own, known = meaning(above.label_text).label, meaning(whole).label
+        rest = meaning(row.label_text)
+        bound = rest.role in BOUNDS and rest.identity is None and own is not None and own.exact
+        torn = known is not None and known.exact and rest.head is None and (own is None or not own.exact)
+        if bound or torn:
+            above.label_text = row.label_text = whole
+            row.label = above.label
 
 
 def _share_units(rows: list[_Row]) -> None:

@@ -273,3 +273,20 @@ def test_labels_beside_rows_of_no_property_are_a_table_of_their_own():
     labels = [item.label.text for item in read_table(made) if isinstance(item, Entry)]
     assert "Operating temperature" in labels
     assert "Storage temperature" in labels
+
+
+def test_a_label_wrapped_beside_its_bands_is_one_label() -> None:
+    rows = [
+        ("Kenngröße", "Bedingung", "Wert"),
+        ("Serienwiderstand R1", "8,0 … 9,9 MHz", "250 Ω"),
+        ("max.", "10,0 … 15,9 MHz", "120 Ω"),
+        ("Alterung", "1. Jahr", "±2 ppm"),
+    ]
+    entries = [item for item in read_table(table(*rows)) if isinstance(item, Entry)]
+    assert [entry.label.text for entry in entries] == ["Serienwiderstand R1 max."] * 2 + ["Alterung"]
+
+
+def test_a_value_that_begins_with_typ_is_no_heading() -> None:
+    rows = [("Parameter", "Value"), ("Shunt capacitance", "typ 1.1 pF, max 3 pF"), ("Ageing", "max ±2 ppm")]
+    entries = [item for item in read_table(table(*rows)) if isinstance(item, Entry)]
+    assert [value.piece.text for entry in entries for value in entry.values] == ["typ 1.1 pF, max 3 pF", "max ±2 ppm"]
