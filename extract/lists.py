@@ -33,6 +33,19 @@ OF_A_BAND = frozenset({"esr_ohm", "shunt_capacitance_pf", "drive_level_uw", "mot
 LONGEST_BANDS = 200
 # Uses of columns whose cells may hold whole sentences, in the order in which they are asked.
 SENTENCES = ("", "description")
+# Fields whose amounts are known without a label, by unit and place.
+LOOSE = frozenset(
+    {
+        "frequency_mhz",
+        "load_capacitance_pf",
+        "esr_ohm",
+        "frequency_tolerance_ppm",
+        "frequency_stability_ppm",
+        "operating_temperature_c",
+    }
+)
+# A web address says nothing of the part: its words are those of a shop's shelves and of file names.
+_ADDRESS = re.compile(r"\s*(?:https?|ftp)://\S+\s*", re.IGNORECASE)
 KEYS = ("frequency_mhz", "load_capacitance_pf")
 RANGE, STABILITY = "operating_temperature_c", "frequency_stability_ppm"
 
@@ -326,8 +339,16 @@ def named_draft(listing: Listing, columns: list[ListColumn], at: int, column: Li
     return _named(row_draft(row, columns, listing.sections[at]), cell, column)
 
 
-def row_draft(row: Sequence[Placed | None], columns: list[ListColumn], section: str) -> Draft:
-    """What the cells of some columns of a row say together, and the section that it stands in."""
+def row_draft(
+    row: Sequence[Placed | None],
+    columns: Sequence[ListColumn],
+    section: str,
+    known: frozenset[str] = frozenset(),
+) -> Draft:
+    """What the cells of some columns of a row say together, and the section that it stands in.
+
+    `known`: fields that other columns state, so that no sentence is asked for them.
+    """
     draft = Draft()
     if section:
         _take_section(draft, section)
@@ -336,12 +357,14 @@ def row_draft(row: Sequence[Placed | None], columns: list[ListColumn], section: 
         cell = row[column.index]
         if cell is None or not cell.text.strip():
             continue
+        if column.label is None and column.use in SENTENCES and _ADDRESS.fullmatch(cell.text):
+            continue
         if column.label is not None:
             _take_field(draft, cell, column)
         else:
             _take_use(draft, cell, column)
             pairs.setdefault(column.use, []).append(cell)
-    _take_sentences(draft, [cell for use in SENTENCES for cell in pairs.get(use, [])])
+    _take_sentences(draft, [cell for use in SENTENCES for cell in pairs.get(use, [])], known)
     return draft
 
 
@@ -381,12 +404,12 @@ def _take_section(draft: Draft, section: str) -> None:
     draft.take_mode_and_cut(section)
 
 
-def _take_sentences(draft: Draft, cells: list[Placed]) -> None:
+def _take_sentences(draft: Draft, cells: list[Placed], elsewhere: frozenset[str]) -> None:
     """Properties inside one cell, as pairs or as a shop's one-line description, where no column states them."""
     from extract.candidates import entry_candidates, offers_series
     from extract.prose import loose_candidates, loose_in_prose, pair_entries
 
-    known = {candidate.field for candidate in draft.candidates}
+    known = elsewhere | {candidate.field for candidate in draft.candidates}
     for cell in cells:
         if len(cell.text) < 8:
             continue
@@ -395,9 +418,10 @@ def _take_sentences(draft: Draft, cells: list[Placed]) -> None:
         draft.take_identity(entries)
         if any(offers_series(entry) for entry in entries):
             draft.resonance.add("series")
-        for loose in (loose_in_prose(cell), loose_candidates(cell)):
+        for loosely in (loose_in_prose, loose_candidates):
             told = {each.field for each in found}
-            found += [each for each in loose if each.field not in told]
+            if LOOSE - known - told:
+                found += [each for each in loosely(cell) if each.field not in told]
         draft.package = draft.package or package_in(cell.text)
         draft.candidates.extend(each for each in found if each.field not in known)
         known |= {each.field for each in found}

@@ -95,14 +95,14 @@ class _Said:
         return [kept[number] for number in self.ids]
 
 
-def _read_column(column: ListColumn, texts: Sequence[str]) -> _Said:
+def _read_column(column: ListColumn, texts: Sequence[str], known: frozenset[str]) -> _Said:
     mark = Where(cell=_MARK, line=column.index)
     ids, distinct = numbered(["", *texts])
     said = _Said(column, ids[1:], [()], [0], [()], [None])
     contexts: dict[tuple[object, ...], int] = {_context(Draft(), ""): 0}
     for text in distinct[1:]:
         cell = Piece(text, mark)
-        draft = row_draft([*repeat(None, column.index), cell], [column], "")
+        draft = row_draft([*repeat(None, column.index), cell], [column], "", known)
         told = _context(draft, text if said.sentences else "")
         if told not in contexts:
             said.speaker.append(cell)
@@ -155,7 +155,7 @@ class LongList:
         texts = list(zip_longest(*plain, fillvalue=""))
         blank = ("",) * len(plain)
         by_column = [texts[at] if at < len(texts) else blank for at in range(len(columns))]
-        self._said = [_read_column(each, by_column[each.index]) for each in columns if each is not number]
+        self._said = self._read_columns(by_column)
         self._numbers = list(by_column[number.index])
         # Rows with merged cells are no row of texts.
         self.alone: set[int] = set()
@@ -166,6 +166,26 @@ class LongList:
                 self.alone.add(at)
         self.names = part_names(self._numbers)
         self._read_contexts()
+
+    def _read_columns(self, texts: Sequence[Sequence[str]]) -> list[_Said]:
+        """Every column; the sentences last, which are not asked for what another column states in each row."""
+        nothing: frozenset[str] = frozenset()
+        labelled = [each for each in self._columns if each.label is not None]
+        said = [_read_column(each, texts[each.index], nothing) for each in labelled]
+        known = self._in_every_row(said)
+        others = [each for each in self._columns if each.label is None and each is not self._number]
+        said += [_read_column(each, texts[each.index], known) for each in others]
+        return sorted(said, key=lambda each: each.column.index)
+
+    def _in_every_row(self, said: Sequence[_Said]) -> frozenset[str]:
+        """Fields that one column states in every row of texts."""
+        plain = [at for at, row in enumerate(self._listing.rows) if isinstance(row, TextRow)]
+        known: set[str] = set()
+        for each in said:
+            used = {each.ids[at] for at in plain}
+            fields_of: list[set[str]] = [{one.field for one in each.candidates[text]} for text in used]
+            known |= set.intersection(*fields_of) if fields_of else set()
+        return frozenset(known)
 
     # --- what a row says besides values
 

@@ -1,7 +1,11 @@
 from building import table
+from hypothesis import given
+from hypothesis import strategies as st
 
-from extract.entries import Listing
-from extract.lists import listing_drafts
+from extract.entries import Listing, Piece
+from extract.lists import LOOSE, listing_drafts
+from extract.model import Where
+from extract.prose import loose_candidates, loose_in_prose
 from extract.tables import read_table
 
 
@@ -175,3 +179,18 @@ def test_two_columns_of_part_numbers_are_parts_both():
     rows = [("12", "ABP-1001", "ABP-2001"), ("16", "ABP-1002", "ABP-2002"), ("24", "ABP-1003", "ABP-2003")]
     found = drafts(("Frequency (MHz)", "Part number -20 to +70 °C", "Part number -40 to +85 °C"), *rows)
     assert len(found) == 6
+
+
+@given(st.text(alphabet="0123456789.,±-~ kMHzpFΩppm°C@to;max", max_size=40))
+def test_no_other_field_is_told_without_a_label(text):
+    cell = Piece(text, Where(line=1))
+    assert {each.field for each in (*loose_in_prose(cell), *loose_candidates(cell))} <= LOOSE
+
+
+def test_a_web_address_says_nothing_of_the_part():
+    (draft,) = drafts(
+        ("Datasheet", "Part number", "Frequency (MHz)"),
+        ("https://shop.example/crystals-oscillators/abq32-25mhz-8pf.pdf", "ABQ32-16M-09", "16"),
+    )
+    assert [each.field for each in draft.candidates] == ["frequency_mhz"]
+    assert draft.texts == ["ABQ32-16M-09"]
