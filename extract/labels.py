@@ -165,7 +165,9 @@ def _take_condition(parts: Parts, text: str) -> str:
     parts.conditions.append(printed)
     last = printed.split()[-1] if printed.split() else ""
     parts.bound = parts.bound or vocabulary().bounds.get(key(last))
-    if re.search(r"\s(?:in|en)\s\S+$", printed) and is_unit(last):
+    before = printed.split()[-2:-1]
+    behind_unit = bool(before) and (is_unit(before[0]) or bool(re.search(r"°\s?C?$", before[0])))
+    if (re.search(r"\s(?:in|en)\s\S+$", printed) or behind_unit) and is_unit(last):
         parts.unit = parts.unit or last
     return text[: found.start()]
 

@@ -9,9 +9,10 @@ from dataclasses import dataclass, field, replace
 
 from extract import trace
 from extract.blocks import Blocks
-from extract.candidates import entry_candidates, key_candidates, label_of, offers_series, read
+from extract.candidates import entry_candidates, key_candidates, label_of, offers_series, read, unreadable
 from extract.drafts import Draft, cuts_in, modes_in
 from extract.entries import Entry, Key, Listing, Text
+from extract.fields import field_of
 from extract.finish import CRYSTAL_FIELDS, inherit, lacks_crystal, part_of
 from extract.fold import fold
 from extract.footnotes import noted_candidates
@@ -53,7 +54,7 @@ def parts_of(blocks: Blocks) -> Found:
         if reason is not None:
             _pass_over(found, section.name or part_number_of(blocks.items, blocks.headers), reason)
             continue
-        drafts += _of_section(section, shared if named else None, blocks)
+        drafts += _of_section(section, shared if named else None, blocks, found)
     for each in drafts:
         if isinstance(each, LongList):
             each.read(maker)
@@ -89,8 +90,18 @@ def _pass_over(found: Found, name: str | None, reason: str) -> None:
     found.notes.append(Note(level="info", message=f"{who}passed over, because it is {reason}, no crystal"))
 
 
-def _of_section(section: Section, shared: Draft | None, blocks: Blocks) -> Sequence[Draft | LongList]:
+def _note_unread(own: Draft, found: Found) -> None:
+    """A warning for each value that no number could be read of, where the field is stated nowhere else."""
+    stated = {each.field for each in own.candidates}
+    for name, text, where in own.unread:
+        if name not in stated:
+            message = f"{field_of(name).title} is named, but no number can be read in {' '.join(text.split())[:60]!r}"
+            found.notes.append(Note(level="warning", message=message, where=where))
+
+
+def _of_section(section: Section, shared: Draft | None, blocks: Blocks, found: Found) -> Sequence[Draft | LongList]:
     own = _draft(section, blocks)
+    _note_unread(own, found)
     own.part_number = own.part_number or section.name
     listed = _listed(section, blocks)
     rows = [each for each in listed if isinstance(each, LongList) or each.part_number is not None]
@@ -189,6 +200,8 @@ def _take_entry(draft: Draft, entry: Entry, blocks: Blocks, heading: str) -> Non
     if len(named) == 1:
         found = [each if each.subject else replace(each, about=named[0]) for each in found]
     draft.candidates += found
+    if not found and (unread := unreadable(entry)) is not None:
+        draft.unread.append(unread)
     draft.candidates += noted_candidates(entry, blocks.notes)
     if offers_series(entry):
         draft.resonance.add("series")
@@ -221,7 +234,7 @@ def _take_texts(draft: Draft, texts: Sequence[Text]) -> None:
     had_mode, had_cut = bool(draft.modes), bool(draft.cuts)
     for index, text in enumerate(texts):
         for segment in [each.text for each in text.segments] or [text.piece.text]:
-            if not had_mode:
+            if not had_mode and not says((segment,), "request"):
                 draft.modes.update(modes_in(segment))
             if not had_cut:
                 draft.cuts.update(cuts_in(segment))
@@ -259,7 +272,7 @@ def _pieces(drafts: Sequence[Draft | LongList]) -> Iterator[Draft | RowRun]:
     counts = Counter(
         name for each in drafts for name in (each.names if isinstance(each, LongList) else (each.part_number,)) if name
     )
-    repeated = {name for name, count in counts.items() if count > 1}
+    repeated = {name: count for name, count in counts.items() if count > 1}
     for each in drafts:
         if isinstance(each, LongList):
             yield from each.pieces(repeated)

@@ -68,8 +68,14 @@ def _order(reading: Reading) -> str | None:
     return f"the bounds are out of order: {low:g} {unit} below, {high:g} {unit} above"
 
 
+SIZED = ("frequency_tolerance_ppm", "frequency_stability_ppm", "ageing_ppm")
+
+
 def _range(reading: Reading, fork: bool | None) -> str | None:
     known = field_of(reading.field)
+    stated = numbers_of(reading)
+    if reading.field in SIZED and len(stated) == 1 and stated[0] < 0 and reading.min is None:
+        return f"one number with a minus sign, {stated[0]:g} ppm, is printed where ± is usual: look at the sign"
     ranged = reading.field in ("operating_temperature_c", "storage_temperature_c")
     if ranged and reading.min is not None and reading.min > limits()["warmest_low_end_c"]:
         return f"a {known.title} that begins at {reading.min:g} °C: a minus sign may be lost"

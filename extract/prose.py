@@ -24,10 +24,10 @@ _ABBREVIATED = "".join(
     f"(?<!{word})" for word in ("max", "min", "typ", "nom", "std", "ref", "req", "emp", "cap", "res", "mfr", "mfg")
 )
 _SENTENCE = re.compile(
-    rf"(?i:{_ABBREVIATED})(?<=[^\W\d])[.;!?]\s+(?=[^\W\d_])(?![a-zà-ÿ])|(?<=[\d%)°])(?<![\s(]\d)[.;]\s+(?=[^\W\d_])|[。；]\s*|\n"
+    rf"(?i:{_ABBREVIATED})(?<=[^\W\d])[.;!?]\s+(?=[^\W\d_])(?![a-zà-ÿ])|(?<=[\d%)°])(?<![\s(]\d)[.;]\s+(?=[^\W\d_])|(?<=(?:max|min|typ|Max|Min|Typ)\.)\s+(?=[A-Z][a-z]{{3,}}\s+[a-z])|[。；]\s*|\n"
 )
 _NEW_SENTENCE = re.compile(
-    r"(?<=[a-zà-ÿ]{5})(?<!equiv)(?<!capac)(?<!resis)(?<!toler)\.\s+(?=[A-Z])|\d[^.]{0,6}\.\s|\)\.?\s(?=\S+\s)"
+    r"(?:°C|ppm|pF|Ω|W|Hz|year)\.\s+(?=[A-Z])|(?<=[a-zà-ÿ]{5})(?<!equiv)(?<!capac)(?<!resis)(?<!toler)\.\s+(?=[A-Z])|\d[^.]{0,6}\.\s|\)\.?\s(?=\S+\s)"
 )
 _SUBSCRIPT = re.compile(r"(?<=(?<![A-Za-z0-9])[A-Za-z])_(?=[A-Za-z0-9])")
 _LONG_BRACKET = re.compile(r"\([^()]{24,}\)")
@@ -351,6 +351,10 @@ _OHMS = re.compile(r"(?i)\d+(?:[.,]\d+)?\s?[km]?(?:Ω|ohms?)(?:\s?(?:max|typ)\b\
 _PPM = re.compile(r"(?i)±\s?\d+(?:[.,]\d+)?(?:\s?-?[\d.,]+)?\s?ppm")
 
 
+# The first of "±30/±50 ppm".
+_TWO_PPM = re.compile(r"(?i)±\s?\d+(?:[.,]\d+)?(?=\s?/\s?±\s?\d+(?:[.,]\d+)?\s?ppm)")
+
+
 def loose_candidates(cell: Placed) -> list[Candidate]:
     """A shop's one-line description: what each amount must be by its unit alone. All are guesses, and say so."""
     text = fold(cell.text)
@@ -361,7 +365,7 @@ def loose_candidates(cell: Placed) -> list[Candidate]:
         amounts = re.findall(pattern, text)
         if len(amounts) == 1:
             found += _guesses(cell, field, amounts[0])
-    ppm = re.findall(r"(?i)±?\s?[\d.,]+\s?ppm", text)
+    ppm = re.findall(r"(?i)±?\s?[\d.,]+\s?ppm", _TWO_PPM.sub(r"\g<0> ppm", text))
     for field, amount in zip(("frequency_tolerance_ppm", "frequency_stability_ppm"), ppm[:2], strict=False):
         found += _guesses(cell, field, f"±{amount.strip(' ±')}")
     span = condition_of(text).temperature_c
@@ -418,6 +422,8 @@ def _loose_in_clause(piece: Piece) -> list[Candidate]:
         # Behind the next label stands what belongs to that.
         end = min([following, *(label.start for label in labels if label.start >= match.end())])
         tail = text[match.end() : end][:45]
+        # In "16 MHz/±10 ppm/-40~85 °C" each stands by itself.
+        tail = "" if re.match(r"\s?[/|]", tail) else tail
         span = condition_of(tail).temperature_c
         if span is not None and span[1] - span[0] > 40:
             plain = _guesses(piece, "frequency_stability_ppm", match[0])

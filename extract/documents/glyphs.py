@@ -270,6 +270,11 @@ def _next_letter(letters: Sequence[_Run]) -> bool:
     return not gaps or gap < 1.5 * max(gaps) + 0.1 * last.size
 
 
+# A raised "-6" behind "10" is known by its place, where small print leaves it little smaller than its neighbours.
+SMALL_EXPONENT = 0.93
+_EXPONENT = re.compile(r"[-−–]\d{1,2}")
+
+
 def _marks_attached(runs: Sequence[_Run], fences: _Fences) -> list[_Run]:
     """Join lowered and raised small type to the word that it stands behind."""
     largest = max((run.size for run in runs), default=0.0)
@@ -277,7 +282,9 @@ def _marks_attached(runs: Sequence[_Run], fences: _Fences) -> list[_Run]:
     ends = [run.x1 for run in by_end]
     taken: set[int] = set()
     for mark in sorted(runs, key=lambda run: run.x0):
-        if mark.size > 0.85 * largest or len(mark.text) > LONGEST_MARK:
+        if mark.size > (SMALL_EXPONENT if _EXPONENT.fullmatch(mark.text) else 0.85) * largest:
+            continue
+        if len(mark.text) > LONGEST_MARK:
             continue
         first = bisect_left(ends, mark.x0 - 3 * largest)
         last = bisect_right(ends, mark.x0 + 0.35 * largest)
@@ -318,7 +325,8 @@ def _host(mark: _Run, runs: Sequence[_Run], taken: set[int]) -> _Run | None:
     """Give the bigger word right before a small one whose baseline is shifted; None where there is none."""
     best: _Run | None = None
     for run in runs:
-        if run is mark or id(run) in taken or mark.size > 0.85 * run.size or run.x0 > mark.x0:
+        small = SMALL_EXPONENT if run.text.endswith("10") and _EXPONENT.fullmatch(mark.text) else 0.85
+        if run is mark or id(run) in taken or mark.size > small * run.size or run.x0 > mark.x0:
             continue
         gap, shift = mark.x0 - run.x1, mark.base - run.base
         near = -0.35 * run.size < gap < 0.3 * run.size

@@ -30,6 +30,21 @@ _UNICODE_FONT = re.compile(r"segoe|noto|dejavu|apple|symbols|symbola", re.I)
 LIGATURES = frozenset({"ff", "fi", "fl", "ffi", "ffl", "ft", "st", "...", "..", "IJ", "ij", "°C", "°F"})
 
 
+# A Symbol font without a table of its own is read by parsers as if it had Adobe's standard encoding: code 0xB1, the
+# plus-minus sign in Symbol, comes out as the en dash (Adobe, PDF Reference 1.7, annex D.1, from memory).
+_STANDARD_CODES = {
+    "–": 0xB1, "†": 0xB2, "‡": 0xB3, "·": 0xB4, "¶": 0xB6, "‚": 0xB8, "„": 0xB9, "”": 0xBA, "»": 0xBB, "£": 0xA3,
+    "⁄": 0xA4, "ƒ": 0xA6, "“": 0xAA, "«": 0xAB, "‹": 0xAC, "›": 0xAD, "ﬁ": 0xAE, "ﬂ": 0xAF, "—": 0xD0, "Æ": 0xE1,
+}  # fmt: skip
+# Letters of fonts of ornaments; what is not told apart is a bullet.
+_DINGBATS = {"ü": "✓", "4": "✔", "û": "✗", "à": "→", "è": "→"}
+
+
+def is_dingbat_font(name: str) -> bool:
+    """Tell whether a font of that name prints ornaments in the place of letters."""
+    return any(sign in name.lower() for sign in ("dingbat", "wingding", "webding"))
+
+
 def is_symbol_font(name: str) -> bool:
     """Tell whether a font of that name has the Symbol encoding, so that its letter m is a micro sign."""
     return "symbol" in name.lower() and not _UNICODE_FONT.search(name)
@@ -47,8 +62,10 @@ def translated(text: str, font: str) -> str:
     if 0xF020 <= code <= 0xF0FF:
         # What Symbol prints as itself (digits, brackets) is given as such.
         return SYMBOL_CODES.get(code - 0xF000, chr(code - 0xF000) if code < 0xF07F else text)
-    if code < 0x100 and is_symbol_font(font):
-        return SYMBOL_CODES.get(code, text)
+    if is_symbol_font(font):
+        return SYMBOL_CODES.get(_STANDARD_CODES.get(text, code), text)
+    if is_dingbat_font(font) and text.isprintable() and not text.isspace():
+        return _DINGBATS.get(text, "•")
     return text
 
 

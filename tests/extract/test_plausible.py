@@ -102,3 +102,9 @@ def test_storage_narrower_than_operation_is_flagged():
         reading("storage_temperature_c", -40.0, None, 105.0),
     )
     assert flagged(*narrow) == ["storage_temperature_c"]
+
+
+def test_a_tolerance_that_is_one_negative_number_is_doubted():
+    (sentence,) = doubts([reading("frequency_tolerance_ppm", typ=-20.0)], None, None).values()
+    assert "look at the sign" in sentence
+    assert doubts([reading("frequency_tolerance_ppm", -20.0, None, 20.0)], None, None) == {}

@@ -171,3 +171,13 @@ def test_a_tolerance_behind_the_frequency_is_a_guess_that_asks_to_be_checked():
     (tolerance,) = [each for each in found if each.field == "frequency_tolerance_ppm"]
     assert (tolerance.min, tolerance.max, bool(tolerance.doubts)) == (-10.0, 10.0, True)
     assert not [each for each in found if each.field == "frequency_stability_ppm"]
+
+
+def test_a_request_in_the_next_sentence_withdraws_nothing():
+    text = "Storage temperature: -40 to +125 °C. Frequency aging: ±1 ppm/year max. Frequencies outside on request."
+    assert [(field, bounds[2]) for field, bounds in held(text)] == [("storage_temperature_c", 125), ("ageing_ppm", 1)]
+
+
+def test_series_in_a_sentence_is_no_label():
+    found = held("For all series: load capacitance 18 pF")
+    assert [(field, bounds[1]) for field, bounds in found] == [("load_capacitance_pf", 18)]

@@ -515,3 +515,9 @@ def test_a_wording_beside_one_in_a_language_not_known_is_taken_with_a_doubt():
     label = read_label("Zátěž / Load capacitance")
     assert label is not None
     assert (label.field, label.exact) == ("load_capacitance_pf", False)
+
+
+def test_a_unit_behind_a_condition_is_the_labels():
+    label = read_label("Calibration tolerance @ 25 °C ppm")
+    assert label is not None
+    assert (label.field, label.unit) == ("frequency_tolerance_ppm", "ppm")

@@ -4,6 +4,7 @@ from __future__ import annotations
 
 import pytest
 
+from extract.heads import interpret
 from extract.wording import identity_label, read_label, role_of
 
 TOL, STAB, AGE = "frequency_tolerance_ppm", "frequency_stability_ppm", "ageing_ppm"
@@ -120,3 +121,13 @@ def test_what_follows_a_colon_is_no_name_of_a_head() -> None:
 @pytest.mark.parametrize("text", ["Codice articolo", "Manufacturer PN", "Mfr. Part #"])
 def test_codes_that_a_maker_gives_are_the_part_number(text: str) -> None:
     assert identity_label(text) == "part_number"
+
+
+def test_a_head_of_megahertz_alone_is_one_of_frequencies():
+    head = interpret(("MHz",))
+    assert head.label is not None
+    assert (head.label.field, head.unit) == ("frequency_mhz", "MHz")
+
+
+def test_type_over_models_is_no_typical():
+    assert interpret(("Type", "AB-2016")).bound is None
