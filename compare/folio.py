@@ -25,7 +25,7 @@ from pydantic import ValidationError
 from compare.corrections import Correction
 from compare.desk import Desk
 from compare.folio_versions import FORMAT, VERSION, upgraded
-from compare.intake import read_bytes
+from compare.intake import WORK_SUFFIX, read_bytes
 from compare.sheets_json import write_sheets
 from compare.work import Circuit, History, OpenSheet, Step, Work
 from extract.documents.grid import garbage_left
@@ -33,7 +33,7 @@ from extract.model import SCHEMA, SpecSheet
 
 FORMULAS = "quartzfolio/formulas/1"
 """Raised when a formula or a rule changes so that the same readings and bench give other numbers."""
-SUFFIX = ".folio"
+SUFFIX = WORK_SUFFIX
 MOST_BYTES = 1 << 30
 """A folio that unpacks to more is refused: it is damaged, or made to fill the machine."""
 LONG_BYTES = 2_000_000

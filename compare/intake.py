@@ -1,4 +1,4 @@
-"""From names as a person gives them (files, folders, `FILE#PART`, `-`) to sheets read; one bad file stops no other."""
+"""From names (files, folders, `FILE#PART`, work files, `-`) to sheets read; one bad file stops no other."""
 
 from __future__ import annotations
 
@@ -14,6 +14,7 @@ from extract.model import Note, Part, SpecSheet
 from extract.progress import Progress
 
 STANDARD_INPUT = "-"
+WORK_SUFFIX = ".folio"
 
 
 @dataclass(frozen=True, slots=True)
@@ -48,7 +49,8 @@ def read_sheets(names: Iterable[str], *, progress: Progress | None = None) -> In
     Parameters
     ----------
     names
-        Files, folders (their sheets and those of their sub-folders, in order of name), `FILE#PART_NUMBER`, or `-`.
+        Files, folders (their sheets and those of their sub-folders, in order of name), `FILE#PART_NUMBER`, work files
+        (their sheets, corrected), or `-`.
     progress
         Told each file and page before it is read. With it, Ctrl-C ends the read and what is finished is kept.
     """
@@ -60,8 +62,7 @@ def read_sheets(names: Iterable[str], *, progress: Progress | None = None) -> In
         for number, named in enumerate(plan.files, start=1):
             if progress is not None:
                 progress.file(number, len(plan.files), named.name)
-            sheet = _read_one(named.name, progress)
-            sheets.append(sheet if named.part is None else _only(sheet, named.part))
+            sheets += _sheets_of(named, progress)
             if progress is not None and progress.stopped:
                 break
     except KeyboardInterrupt:
@@ -140,8 +141,32 @@ def _visible_files(folder: Path) -> Iterator[Path]:
             yield path
 
 
+def _sheets_of(named: _Named, progress: Progress | None) -> list[SpecSheet]:
+    """The sheet of a file; of a work file all that it holds, with every correction put in."""
+    if not named.name.lower().endswith(WORK_SUFFIX):
+        sheet = _read_one(named.name, progress)
+        return [sheet if named.part is None else _only(sheet, named.part)]
+    from compare.folio import FolioError, read_folio
+
+    data = _bytes_of(named.name)
+    if isinstance(data, SpecSheet):
+        return [data]
+    try:
+        sheets = list(read_folio(data, named.name).work.corrected)
+    except FolioError as fault:
+        return [_failed(named.name, str(fault).removeprefix(f"{named.name}: "))]
+    if not sheets:
+        return [_failed(named.name, "this work holds no sheets")]
+    if named.part is None:
+        return sheets
+    chosen = [_only(sheet, named.part) for sheet in sheets]
+    return [sheet for sheet in chosen if sheet.parts] or chosen[:1]
+
+
 def _read_one(name: str, progress: Progress | None) -> SpecSheet:
     data = sys.stdin.buffer.read() if name == STANDARD_INPUT else _bytes_of(name)
+    if name == STANDARD_INPUT and not data:
+        return _failed(name, "nothing came in on standard input; send a sheet to it, or name a file")
     return data if isinstance(data, SpecSheet) else read_bytes(data, name, progress)
 
 

@@ -15,7 +15,7 @@ from compare.choosing import Candidate, Sifted
 from compare.page_charts import picture
 from compare.page_copy import copy_button, figures
 from compare.page_filters import asked, filter_line, weights, weights_line
-from compare.page_shared import cautions, ready, review_of, save_buttons, show_sheet
+from compare.page_shared import cautions, ready, review_of, save_buttons
 from compare.page_supply import supply_editor
 from compare.ranking import Ranked
 from compare.sheets_json import notes_of
@@ -152,7 +152,9 @@ def turn_to(page: int) -> None:
 def actions(sifted: Sifted, contest: Ranked) -> None:
     """Copy what is in view; save all that is shown, the filters applied."""
     view = [whole(one, contest) for one in in_view(sifted)]
-    approvals = approval.by_candidate(session.slot("decisions"))
+    # What is saved is made once it is asked for, by then outside the session.
+    sheets, decided = session.sheets(), session.slot("decisions")
+    approvals = approval.by_candidate(decided)
 
     def table(of: Sequence[Candidate], numbers: Iterable[str]) -> export.Table:
         said = [approvals.get(part_key(one.row), "") for one in of]
@@ -165,13 +167,13 @@ def actions(sifted: Sifted, contest: Ranked) -> None:
         return {
             "ranking": table(every, answers.FIGURES),
             "numbers": export.numbers_table(first),
-            "sources": export.sources_table(session.sheets(), first),
-            "decisions": approval.table(session.slot("decisions")),
+            "sources": export.sources_table(sheets, first),
+            "decisions": approval.table(decided),
         }
 
     def result() -> dict[str, Any]:
         told = contest.result()
-        return {**told, "notes": [*notes_of(session.sheets()), *told["notes"]]}
+        return {**told, "notes": [*notes_of(sheets), *told["notes"]]}
 
     save_buttons("ranking", table(view, answers.STRIPS), tables, result, key="ranking")
     supply_editor(view, sifted.shown)
@@ -294,5 +296,5 @@ def onward(picked: Candidate) -> None:
             session.put_slot("selection", {**kept, "incumbent": list(st.session_state.chosen)})
             session.go("substitute")
         if st.button("Its sheet", key="to_its_sheet", shortcut="S"):
-            show_sheet(picked.row["file"])
+            session.show_part(picked.row["file"], picked.row["part_number"])
             session.go("sheets")

@@ -76,8 +76,8 @@ def reading_area(one: OpenSheet, part: PartLines, queue: Sequence[Look]) -> None
 def doubtful(part: PartLines, look: Look, queue: Sequence[Look]) -> None:
     """The question, what hangs on it, and a key for each answer."""
     session.section(f"{queue.index(look) + 1} of {len(queue)} to look at: {pieces.plain(look.asks)}")
-    st.markdown(f"Read **{pieces.plain(shown.value_text(look.now))}**. {pieces.plain(look.reason)}")
-    st.markdown(pieces.plain(consequence(part, look)))
+    told = f"{look.reason} {consequence(part, look)}".strip()
+    st.markdown(f"Read **{pieces.plain(shown.value_text(look.now))}**. {pieces.plain(told)}")
     with st.container(horizontal=True, gap="small"):
         if look.can_keep:
             answer(look.keep, "keep", "K", as_read, part, look.reading, primary=True)

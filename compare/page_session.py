@@ -22,6 +22,7 @@ from compare.page_results import contest, guarded, key_of, ranked, ranking, revi
 from compare.palette import Palette, palette_of
 from compare.serve import read_script_arguments
 from compare.work import History, OpenSheet, Work, with_sheets
+from extract.partlist import part_numbers
 
 __all__ = ["contest", "guarded", "key_of", "ranked", "ranking", "reviewed", "sheets"]
 
@@ -278,6 +279,16 @@ def take_read() -> None:
     """Put the sheets that were read meanwhile into the work."""
     if new := reader().take():
         remember(replace(work(), sheets=with_sheets(work().sheets, new)))
+
+
+def show_part(file: str, part_number: str | None = None) -> None:
+    """Have the Sheets view open at a part of a file, or at the first one."""
+    for one in work().sheets:
+        if one.sheet.file == file:
+            numbers = part_numbers(one.sheet.parts)
+            at = numbers.index(part_number) if part_number in numbers else 0
+            st.session_state.update(at=(one.key, at, None), editing=None, moved=st.session_state.moved + 1)
+            return
 
 
 def palette() -> Palette:

@@ -73,13 +73,6 @@ def fingerprint(sheet: SpecSheet) -> str:
     return hashlib.sha256("".join(part.model_dump_json() for part in sheet.parts).encode()).hexdigest()[:16]
 
 
-def show_sheet(file: str) -> None:
-    """Have the Sheets view open at a file."""
-    for one in session.work().sheets:
-        if one.sheet.file == file:
-            st.session_state.sheet = one.key
-
-
 def save_buttons(
     name: str,
     copied: Table,

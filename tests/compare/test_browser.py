@@ -1,5 +1,6 @@
 """One whole job in a real browser: sheet, circuit, ranking, review; and nothing leaves the machine."""
 
+import json
 import os
 import re
 import shutil
@@ -8,6 +9,7 @@ import subprocess
 import sys
 import time
 from pathlib import Path
+from typing import NamedTuple
 from urllib.parse import urlsplit
 
 import hand_made
@@ -16,6 +18,8 @@ import pytest
 pytestmark = pytest.mark.browser
 NAMES = ("chromium", "chromium-browser", "google-chrome", "chrome")
 HOME = ("127.0.0.1", "localhost")
+COMMAND = [sys.executable, "-c", "import sys; from compare.command import main; sys.exit(main())"]
+SAMPLES = Path(__file__).parents[2] / "sample_specs"
 
 
 def chromium():
@@ -35,19 +39,41 @@ def free_port():
         return probe.getsockname()[1]
 
 
+class Served(NamedTuple):
+    """The page's address, and where it keeps work."""
+
+    address: str
+    state: Path
+
+
+@pytest.fixture
+def address(served):
+    return served.address
+
+
+@pytest.fixture
+def state_of(served):
+    return served.state
+
+
 @pytest.fixture(scope="module")
-def address(tmp_path_factory):
+def served(tmp_path_factory):
     """The page as the command starts it, from a folder that has no settings of its own."""
     folder, port = tmp_path_factory.mktemp("elsewhere"), free_port()
     (folder / "bench.toml").write_text(hand_made.BENCH_TEXT, encoding="utf-8")
-    command = [sys.executable, "-c", "import sys; from compare.command import main; sys.exit(main())", "page"]
+    # Work is kept in the test's own folder, never in that of whoever runs it.
+    own = {**os.environ, "XDG_STATE_HOME": str(folder / "state"), "LOCALAPPDATA": str(folder / "state")}
     with (folder / "log.txt").open("w") as log:
         server = subprocess.Popen(
-            [*command, "--bench", "bench.toml", "--port", str(port)], cwd=folder, stdout=log, stderr=subprocess.STDOUT
+            [*COMMAND, "page", "--bench", "bench.toml", "--port", str(port)],
+            cwd=folder,
+            stdout=log,
+            stderr=subprocess.STDOUT,
+            env=own,
         )
         try:
             wait_for(port, server, folder / "log.txt")
-            yield f"http://127.0.0.1:{port}"
+            yield Served(f"http://127.0.0.1:{port}", folder / "state")
         finally:
             server.terminate()
             server.wait(20)
@@ -101,7 +127,7 @@ def test_a_sheet_is_dropped_judged_and_reviewed_and_nothing_leaves_the_machine(v
     view.get_by_role("link", name="Choose").click()
     view.get_by_role("heading", name="The one part that offers it").wait_for()
     view.get_by_role("heading", name="1st: ABX-26").wait_for()
-    view.locator(".stVegaLiteChart").first.wait_for()
+    view.locator(".st-key-slack svg").first.wait_for()
     with view.expect_download() as download:
         view.get_by_role("button", name="Save .csv").click()
     assert "ABX-26" in Path(download.value.path()).read_text(encoding="utf-8-sig")
@@ -112,6 +138,61 @@ def test_a_sheet_is_dropped_judged_and_reviewed_and_nothing_leaves_the_machine(v
     assert "Rn/RL" in row.locator("p").inner_text()
 
     assert view.faults == []
+    assert {host for host in view.hosts if host is not None} <= set(HOME)
+
+
+def saved(view, button, tmp_path, name):
+    with view.expect_download() as download:
+        view.get_by_role("button", name=button).click()
+    download.value.save_as(tmp_path / name)
+    return tmp_path / name
+
+
+def test_a_correction_and_the_saved_work_give_the_command_lines_numbers_and_leave_nothing_when_forgotten(
+    view, tmp_path, state_of
+):
+    sheets = [SAMPLES / "ondalba_odb25_26mhz_it.md", SAMPLES / "brindlewick_bwk21_26mhz.pdf"]
+    view.locator("input[type=file]").first.set_input_files([str(path) for path in sheets])
+    # C0 is printed as 1.1 fF: one key takes what is meant.
+    view.get_by_text("1 of 1 to look at: Shunt C0 of ODB25-26M000-08").wait_for(timeout=60_000)
+    view.get_by_text("2 sheets, 2 parts").wait_for(timeout=60_000)
+    view.keyboard.press("l")
+    view.get_by_text("Nothing left to look at.").wait_for()
+
+    view.keyboard.press("e")
+    field = view.get_by_label("Typical or nominal")
+    field.fill("1,3 pF")
+    field.press("Enter")
+    view.get_by_label("Why").fill("mail from the maker")
+    view.get_by_label("Entered by").fill("M. Quill")
+    view.get_by_role("button", name="Enter it").click()
+    view.get_by_text("Corrected by M. Quill").wait_for()
+    assert view.get_by_text("The sheet says 0.0011 pF.").is_visible()
+
+    view.get_by_role("link", name="Choose").click()
+    view.get_by_role("button", name="Save .json").wait_for(timeout=60_000)
+    on_page = json.loads(saved(view, "Save .json", tmp_path, "page.json").read_text(encoding="utf-8"))
+    view.locator(".st-key-work_menu button").first.click()
+    work = saved(view, "Save work", tmp_path, "frost.folio")
+    bench = tmp_path / "bench.toml"
+    bench.write_text(hand_made.BENCH_TEXT, encoding="utf-8")
+    told = subprocess.run(
+        [*COMMAND, "rank", str(work), "--bench", str(bench), "--json"], capture_output=True, text=True, check=False
+    )
+    assert json.loads(told.stdout)["rows"] == on_page["rows"]
+    assert len(on_page["rows"]) == 2
+
+    view.get_by_role("button", name="Forget this work").click()
+    view.get_by_role("button", name="Forget it").click()
+    view.get_by_text("Nothing to rank yet").wait_for()
+    assert not list(state_of.rglob("*"))
+
+    view.get_by_role("link", name="Sheets").click()
+    view.locator("input[type=file]").first.set_input_files(str(work))
+    view.get_by_text("2 sheets, 2 parts").wait_for(timeout=60_000)
+    view.reload()
+    view.get_by_text("2 sheets, 2 parts").wait_for(timeout=60_000)
+    assert view.locator(".stException").count() == 0
     assert {host for host in view.hosts if host is not None} <= set(HOME)
 
 
