@@ -239,7 +239,7 @@ def _offset(one: Candidate, key: str, money: str) -> float | None:
 
 def weights_text(weights: Mapping[str, float]) -> str:
     """`least slack 3, price 2`."""
-    said = [f"{ASPECTS[key].name} {number(weight)}" for key, weight in weights.items() if key in ASPECTS and weight > 0]
+    said = [f"{one.name} {number(weights[key])}" for key, one in ASPECTS.items() if weights.get(key, 0) > 0]
     return ", ".join(said)
 
 
