@@ -73,6 +73,8 @@ def pair(places: Sequence[Choice]) -> tuple[Choice, Choice]:
     candidate = by_identity.get(wanted)
     if candidate is None or candidate is incumbent:
         candidate = default_candidate(incumbent, places)
+    # A pair once looked at stays, also where a change of the circuit puts the parts in another order.
+    keep({"incumbent": incumbent.identity, "candidate": candidate.identity})
     with st.container(horizontal=True, vertical_alignment="center", gap="small"):
         st.markdown("In place of", width="content")
         choose("incumbent", incumbent, places)
@@ -105,8 +107,10 @@ def put(role: str, key: str) -> None:
 
 
 def keep(roles: dict[str, answers.Identity]) -> None:
-    told = {role: list(identity) for role, identity in roles.items()}
-    session.put_slot("selection", {**session.slot("selection"), **told})
+    before = session.slot("selection")
+    told = {**before, **{role: list(identity) for role, identity in roles.items()}}
+    if told != before:
+        session.put_slot("selection", told)
 
 
 @st.cache_resource(max_entries=64, show_spinner="Comparing …")
