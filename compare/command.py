@@ -97,7 +97,9 @@ def _parser() -> argparse.ArgumentParser:
     _bench(report)
     add_arguments(report)
     page = commands.add_parser("page", help="the same in the browser, on this machine only")
-    page.add_argument("sheets", nargs="*", type=_name, metavar="SHEET", help="sheets or folders to open at once")
+    page.add_argument(
+        "sheets", nargs="*", type=_name, metavar="SHEET", help="sheets, folders or a work file (.folio) to open at once"
+    )
     page.add_argument("--bench", metavar="BENCH.toml", help="circuit and requirement to open at once")
     page.add_argument("--port", type=int, default=8733, help="port on 127.0.0.1 (default %(default)s)")
     page.set_defaults(run=_page)
@@ -327,12 +329,10 @@ def _add_wordings(folder: str) -> None:
 
 
 def _read_bench(name: str) -> Bench:
-    from pathlib import Path
-
     from compare.bench import BenchError, read_bench
 
     try:
-        text = Path(name).read_text(encoding="utf-8-sig")
+        text = _bench_text(name)
     except FileNotFoundError:
         raise CallError(f"{name}: no such bench file; check the name") from None
     except UnicodeDecodeError:
@@ -342,6 +342,19 @@ def _read_bench(name: str) -> Bench:
     try:
         return read_bench(text, name)
     except BenchError as fault:
+        raise CallError(str(fault)) from None
+
+
+def _bench_text(name: str) -> str:
+    if not name.lower().endswith(".folio"):
+        from pathlib import Path
+
+        return Path(name).read_text(encoding="utf-8-sig")
+    from compare.folio import FolioError, bench_text
+
+    try:
+        return bench_text(name)
+    except FolioError as fault:
         raise CallError(str(fault)) from None
 
 

@@ -18,6 +18,7 @@ import zlib
 from collections.abc import Callable, Mapping, Sequence
 from dataclasses import dataclass
 from importlib.metadata import PackageNotFoundError, version
+from pathlib import Path
 from typing import Any
 
 from pydantic import ValidationError
@@ -158,6 +159,19 @@ def read_folio(data: bytes, name: str) -> Reopened:
             f"{name}: no work file, or a damaged one ({fault}); save it again on the machine it comes from"
         ) from None
     return reopen(members, name)
+
+
+def bench_text(name: str) -> str:
+    """The text of a bench file by its name; of a work file that of the circuit in view.
+
+    OSError and UnicodeDecodeError as the file gives them, FolioError where a work cannot be read or has no circuit.
+    """
+    if not name.lower().endswith(SUFFIX):
+        return Path(name).read_text(encoding="utf-8-sig")
+    text = read_folio(Path(name).read_bytes(), name).work.desk.bench_text
+    if not text:
+        raise FolioError(f"{name}: no circuit is set in this work; set it on the page, or name a bench file")
+    return text
 
 
 def reopen(members: Mapping[str, bytes], name: str, find: Find | None = None) -> Reopened:

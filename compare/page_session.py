@@ -16,7 +16,7 @@ from compare import background, keeping, typed
 from compare.background import File, Reader
 from compare.bench import BenchError
 from compare.desk import NO_EXAMPLE, Desk, desk_from_bench, field_of, orchard_example
-from compare.folio import SUFFIX, FolioError, Reopened, read_folio
+from compare.folio import SUFFIX, FolioError, Reopened, bench_text, read_folio
 from compare.intake import single_names
 from compare.page_results import contest, guarded, key_of, ranked, ranking, reviewed, sheets
 from compare.palette import Palette, palette_of
@@ -59,8 +59,8 @@ def open_named(arguments: Sequence[str]) -> None:
             say(f"{name}: cannot be opened: {(fault.strerror or str(fault)).lower()}")
     if bench is not None:
         try:
-            open_bench(Path(bench).read_text(encoding="utf-8-sig"), bench)
-        except (OSError, UnicodeDecodeError) as fault:
+            open_bench(bench_text(bench), bench)
+        except (OSError, UnicodeDecodeError, FolioError) as fault:
             st.session_state.bench_fault = f"{bench}: cannot be read: {fault}"
     open_sheets([(name, None) for name in files])
 

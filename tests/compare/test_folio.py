@@ -228,3 +228,24 @@ def test_a_long_list_that_would_be_read_otherwise_now_keeps_its_readings(monkeyp
     monkeypatch.setattr(folio, "LONG_BYTES", 10_000)
     data = folio_bytes(Work(sheets=(OpenSheet(other, one.data),)), SAVED, files={one.sheet.sha256: one.data})
     assert len(read_folio(data, "work.folio").work.sheets[0].sheet.parts) == 299
+
+
+def test_a_work_file_is_a_bench_file_too(tmp_path):
+    path = tmp_path / "work.folio"
+    path.write_bytes(folio_bytes(replace(WORK, at="c1"), SAVED))
+    assert folio.bench_text(str(path)) == WORK.circuits[0].desk.bench_text
+    path.write_bytes(folio_bytes(WORK, SAVED))
+    with pytest.raises(FolioError, match="no circuit is set in this work"):
+        folio.bench_text(str(path))
+
+
+def test_the_command_line_takes_sheets_and_bench_from_one_work_file(tmp_path, capsys):
+    from compare.command import main
+
+    path = tmp_path / "work.folio"
+    path.write_bytes(folio_bytes(replace(WORK, at="c1"), SAVED))
+    main(["rank", str(path), "--bench", str(path), "--json"])
+    assert {row["part_number"] for row in json.loads(capsys.readouterr().out)["rows"]} >= {"MRB25-260-08H"}
+    path.write_bytes(folio_bytes(WORK, SAVED))
+    assert main(["rank", str(path), "--bench", str(path)]) == 2
+    assert "no circuit is set in this work" in capsys.readouterr().err
