@@ -226,7 +226,8 @@ def _is_range(entry: Entry) -> bool:
 def says(texts: Sequence[str], kind: str) -> bool:
     """Whether a heading is one of ordering keys ("ordering") or of tests ("reliability")."""
     words = vocabulary().phrases.get(kind, ())
-    return any(word in fold(text).casefold() for text in texts if text and len(text) < 80 for word in words)
+    lines = [fold(text).casefold() for text in texts if text and len(text) < 80]
+    return any(word in line for line in lines for word in words)
 
 
 def _take_texts(draft: Draft, texts: Sequence[Text]) -> None:

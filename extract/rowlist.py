@@ -9,7 +9,7 @@ mark for their column. A row that these steps would have to see whole is left to
 from __future__ import annotations
 
 from array import array
-from collections.abc import Collection, Hashable, Iterable, Iterator, Sequence
+from collections.abc import Collection, Hashable, Iterable, Iterator, Mapping, Sequence
 from dataclasses import dataclass, field, replace
 from itertools import repeat, zip_longest
 from typing import TypeVar
@@ -444,13 +444,18 @@ class LongList:
         inherit(draft, self.general)
         return draft
 
-    def pieces(self, repeated: Collection[str]) -> Iterator[Draft | RowRun]:
-        """The rows in order: by themselves those that ask for it or whose number comes again, the others in runs."""
+    def pieces(self, repeated: Mapping[str, int]) -> Iterator[Draft | RowRun]:
+        """The rows in order: by themselves those that ask for it or whose number comes again, the others in runs.
+
+        `repeated`: how often each number comes in the whole sheet that comes more than once. Of rows here that say the
+        same of one number the first is as good as all.
+        """
+        first, apart = self._first_of_same(repeated)
         run: list[int] = []
         for at, name in enumerate(self.names):
-            if name is None:
+            if name is None or first.get(name, at) != at:
                 continue
-            if at in self.alone or name in repeated:
+            if at in self.alone or name in apart:
                 if run:
                     yield RowRun(self, run)
                     run = []
@@ -459,6 +464,19 @@ class LongList:
                 run.append(at)
         if run:
             yield RowRun(self, run)
+
+    def _first_of_same(self, repeated: Mapping[str, int]) -> tuple[dict[str, int], set[str]]:
+        """For each number whose rows all say the same the first of them, and the other repeated numbers."""
+        groups: dict[str, list[int]] = {}
+        for at, name in enumerate(self.names) if repeated else ():
+            if name is not None and name in repeated:
+                groups.setdefault(name, []).append(at)
+        first: dict[str, int] = {}
+        for name, rows in groups.items():
+            cases = {(self._context[at], *(cluster.ids[at] for cluster in self._clusters)) for at in rows}
+            if len(rows) == repeated[name] and len(cases) == 1 and self.alone.isdisjoint(rows):
+                first[name] = rows[0]
+        return first, groups.keys() - first.keys()
 
     def why_none(self, at: int) -> str | None:
         """Why a row is no part: what is to be said of it, "" where nothing is; None where it is one."""

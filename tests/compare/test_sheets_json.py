@@ -1,13 +1,16 @@
+import csv
 import io
 import json
 from pathlib import Path
 
 import pytest
+from openpyxl import Workbook
 
 from compare import sheets_json
 from compare.sheets_json import write_sheets
 from extract import read_sheet
 from extract.model import Note
+from extract.partlist import PartList
 
 SAMPLES = Path(__file__).parents[2] / "sample_specs"
 
@@ -47,3 +50,39 @@ def test_a_sheet_of_many_parts_takes_a_line_for_each():
 
 def test_no_sheet_at_all_is_still_one_document():
     assert json.loads(written([])) == {"schema": "quartzfolio/extract/1", "sheets": [], "notes": []}
+
+
+HEAD = "Part number,Frequency (MHz),Load capacitance (pF),ESR max (ohm),C0 max (pF),C1 (fF),Description\n"
+
+
+def made_list(rows):
+    lines = (f"QV{n:04d},26,{6 + n % 5},{n % 20 + 20},{n % 7}.5,{n % 9 + 1}.{n % 10},reel {n}\n" for n in range(rows))
+    return HEAD + "".join(lines)
+
+
+def as_xlsx(text):
+    book = Workbook()
+    for line in csv.reader(io.StringIO(text)):
+        book.active.append(line)
+    stream = io.BytesIO()
+    book.save(stream)
+    return stream.getvalue()
+
+
+@pytest.mark.parametrize("kind", ["csv", "xlsx", "csv with cells of two lines"])
+def test_a_long_list_is_written_from_templates_as_part_by_part(kind):
+    text = made_list(300)
+    if kind.endswith("lines"):
+        text = text.replace("reel 7\n", '"reel\n7"\n').replace("reel 8\n", '"a ""reel"" ß\n"\n')
+    data = as_xlsx(text) if kind == "xlsx" else text.encode()
+    sheet = read_sheet(data, f"list.{kind[:4].strip()}")
+    assert isinstance(sheet.parts, PartList)
+    whole = sheet.model_copy(update={"parts": tuple(sheet.parts)})
+    assert written([sheet]) == written([whole])
+
+
+def test_the_few_parts_of_a_long_list_are_laid_out_for_eyes():
+    rows = "".join(f"QV{n:04d},{'26' if n < 3 else ''},{'20' if n < 3 else ''}\n" for n in range(300))
+    sheet = read_sheet(f"Part number,Frequency (MHz),ESR max (ohm)\n{rows}".encode(), "list.csv")
+    assert len(sheet.parts) == 3
+    assert '\n   "part_number": "QV0000"' in written([sheet])

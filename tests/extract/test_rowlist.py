@@ -13,6 +13,7 @@ from hypothesis import strategies as st
 from extract import read_sheet, rowlist, tables
 from extract.model import SpecSheet
 from extract.partlist import PartList
+from extract.trace import tracing
 
 NEVER = 10**9
 SAMPLES = Path(__file__).parents[2] / "sample_specs"
@@ -129,6 +130,9 @@ def lists(draw: st.DrawFn) -> list[list[str]]:
             known = st.sampled_from(HEADS[head])
             cells.append(draw(ANYTHING) if odd and draw(st.integers(0, odd)) == 0 else draw(known))
         body.append(cells)
+    for at in draw(st.lists(st.integers(0, rows - 1), max_size=6)):
+        # The same part again, on another reel.
+        body.insert(draw(st.integers(0, rows)), list(body[at]))
     if draw(st.integers(0, 3)) == 0:
         body.insert(draw(st.integers(2, rows)), ["Tuning forks", *[""] * (len(heads) - 1)])
     order = draw(st.permutations(range(len(heads))))
@@ -149,3 +153,106 @@ def as_csv(rows: list[list[str]]) -> bytes:
 def test_random_lists_read_the_same_both_ways(rows):
     data = as_csv(rows)
     assert read_by_column(data, "list.csv") == read_by_row(data, "list.csv")
+
+
+# --- what surrounds a list
+
+HEAD = ["Part number", "Frequency (MHz)", "Load capacitance (pF)", "ESR max (ohm)", "C0 max (pF)"]
+
+
+def row(number: int, prefix: str = "ABX") -> list[str | float]:
+    return [f"{prefix}{number:04d}-26", 26.0, 8 + number % 3, 40 + 10 * (number % 4), round(1 + number % 7 / 10, 1)]
+
+
+def as_xlsx(*sheets: tuple[str, list[list[str | float]]], merged: tuple[str, ...] = ()) -> bytes:
+    from openpyxl import Workbook
+
+    book = Workbook()
+    book.remove(book.active)
+    for name, rows in sheets:
+        sheet = book.create_sheet(name)
+        for each in rows:
+            sheet.append(each)
+        for span in merged:
+            sheet.merge_cells(span)
+    buffer = io.BytesIO()
+    book.save(buffer)
+    return buffer.getvalue()
+
+
+def test_several_sheets_are_one_list_each_part_at_its_own_place():
+    first = [["Quartz crystals, AT cut"], [], HEAD, *(row(number) for number in range(300))]
+    second = [HEAD, *(row(number, "ABY") for number in range(250))]
+    data = as_xlsx(("Stock", first), ("More", second))
+    sheet = read_sheet(data, "list.xlsx")
+    assert isinstance(sheet.parts, PartList)
+    assert sheet.parts.part_numbers == [row(n)[0] for n in range(300)] + [row(n, "ABY")[0] for n in range(250)]
+    assert [str(part.readings[0].where) for part in (sheet.parts[0], sheet.parts[-1])] == [
+        "sheet Stock, cell B4",
+        "sheet More, cell B251",
+    ]
+    assert {part.cut for part in sheet.parts} == {"AT"}
+    assert sheet == read_by_row(data, "list.xlsx")
+
+
+def test_rows_with_merged_cells_are_read_by_themselves():
+    data = as_xlsx(("Stock", [HEAD, *(row(number) for number in range(260))]), merged=("D10:E10", "B20:B22"))
+    sheet = read_sheet(data, "list.xlsx")
+    assert isinstance(sheet.parts, PartList)
+    assert sorted(at for at, place in enumerate(sheet.parts.rows) if place is None) == [8, 18, 19, 20]
+    assert sheet == read_by_row(data, "list.xlsx")
+
+
+def test_what_stands_below_a_list_holds_for_all_of_it():
+    rows = [HEAD, *(list(map(str, row(number))) for number in range(260))]
+    below = "\n\nOperating temperature: -40 to +85 °C\nESR 70 ohm max (12 - 30 MHz)\n"
+    data = as_csv(rows) + below.encode()
+    sheet = read_sheet(data, "list.csv")
+    assert sheet == read_by_row(data, "list.csv")
+    assert len(sheet.parts) == 260
+
+
+def test_a_part_that_says_two_things_carries_the_place_of_the_other():
+    rows = [["Part number", "Frequency (MHz)", "ESR (ohm)", "ESR max (ohm)"]]
+    rows += [[f"ABX{number:04d}-26", "26", "50", "60" if number == 7 else "50"] for number in range(220)]
+    data = as_csv(rows)
+    sheet = read_sheet(data, "list.csv")
+    assert sheet == read_by_row(data, "list.csv")
+    odd = [part.part_number for part in sheet.parts if any("line 9" in (r.check or "") for r in part.readings)]
+    assert odd in ([], ["ABX0007-26"])
+
+
+def test_a_contradiction_between_two_fields_is_told_of_that_row_alone():
+    rows = [["Part number", "Frequency (MHz)", "C0 max (pF)", "C1 (fF)"]]
+    rows += [[f"ABX{number:04d}-26", "26", "1.0", "30" if number == 7 else "3"] for number in range(220)]
+    sheet = read_sheet(as_csv(rows), "list.csv")
+    doubted = {part.part_number for part in sheet.parts if any(reading.check for reading in part.readings)}
+    assert isinstance(sheet.parts, PartList)
+    assert doubted == {"ABX0007-26"}
+
+
+def test_the_same_part_on_another_reel_is_one_part():
+    rows = [["Part number", "Frequency (MHz)", "ESR max (ohm)", "Packing"]]
+    rows += [[f"ABX{number // 2:04d}-26", "26", "60", ("reel", "tape")[number % 2]] for number in range(440)]
+    sheet = read_sheet(as_csv(rows), "list.csv")
+    assert isinstance(sheet.parts, PartList)
+    assert not sheet.parts.kept
+    assert len(sheet.parts) == 220
+
+
+def test_while_somebody_asks_why_every_row_is_explained():
+    data = as_csv([HEAD, *(list(map(str, row(number))) for number in range(210))])
+    with tracing() as trace:
+        sheet = read_sheet(data, "list.csv")
+    assert len(trace.taken) == sum(len(part.readings) for part in sheet.parts) == 840
+
+
+def test_other_things_in_a_list_of_crystals_are_left_out_and_oscillators_named():
+    kinds = ["Quartz crystal", "Resistor", "TCXO"]
+    rows = [["Part number", "Type", "Frequency (MHz)", "ESR max (ohm)"]]
+    rows += [[f"ABX{number:04d}-26", kinds[number % 3], "26", "60"] for number in range(240)]
+    data = as_csv(rows)
+    sheet = read_sheet(data, "list.csv")
+    assert sheet == read_by_row(data, "list.csv")
+    assert len(sheet.parts) == 80
+    assert sum("oscillator" in note.message for note in sheet.notes) == 80
