@@ -133,7 +133,16 @@ def _columns_in(own: Sequence[Piece]) -> list[Span]:
 def _all_columns(lines: Sequence[list[Word]]) -> list[Span]:
     """Columns by wide gaps, or by narrow ones where these show more."""
     columns, fine = columns_of([split_at_gaps(line) for line in lines]), fine_columns_of(lines)
-    return fine if len(fine) > len(columns) else columns
+    columns = fine if len(fine) > len(columns) else columns
+    if len(columns) < 2:
+        return columns
+    # Rows of many lines hide two narrow columns that hold one line each: what stands in each column, by itself.
+    return [part for column in columns for part in fine_columns_of(_lines_in(column, lines)) or [column]]
+
+
+def _lines_in(column: Span, lines: Sequence[list[Word]]) -> list[list[Word]]:
+    inside = ([word for word in line if column[0] <= (word.x0 + word.x1) / 2 <= column[1]] for line in lines)
+    return [line for line in inside if line]
 
 
 def _column_parted(pieces: Sequence[Piece], own: Sequence[Piece], column: int, columns: Sequence[Span]) -> list[Piece]:

@@ -38,10 +38,14 @@ def fine_columns_of(lines: Sequence[Sequence[Word]]) -> list[Span]:
     """Narrow columns: stripes that nearly all of four or more lines leave free; none where there are none."""
     split = [split_at_gaps(line, is_fine_gap) for line in lines]
     several = [line for line in split if len(line) > 1]
-    if len(several) < 4 or len(several) < 0.8 * len(split):
+    if len(several) < 4 or len(several) < 0.5 * len(split):
         return []
     spans = [[span_of(segment) for segment in line] for line in split]
     columns = _covered([span for line in spans for span in line], int(0.34 * len(split)))
+    # The second line of a wrapped cell stands in one column alone and says nothing against the others.
+    alone = [line[0] for line in spans if len(line) == 1]
+    if sum(1 for span in alone if not _inside_one(span, columns)) > 0.2 * len(split):
+        return []
     merged = columns[:1]
     for column in columns[1:]:
         if sum(_part(line, merged[-1], column) for line in spans) >= 0.5 * len(spans):
@@ -49,6 +53,10 @@ def fine_columns_of(lines: Sequence[Sequence[Word]]) -> list[Span]:
         else:
             merged[-1] = (merged[-1][0], column[1])
     return merged if len(merged) > 1 else []
+
+
+def _inside_one(span: Span, columns: Sequence[Span]) -> bool:
+    return len(columns) > 1 and sum(overlap(span, column) > 0 for column in columns) == 1
 
 
 def _part(line: Sequence[Span], left: Span, right: Span) -> bool:
