@@ -25,6 +25,7 @@ from extract.vocabulary import vocabulary
 __all__ = ["Value", "as_plus_minus", "decimal_mark", "field_for", "read_values"]
 
 LONGEST_AMOUNT = 600
+UNIT_NOT_PRINTED = "unit not printed"
 
 
 def read_values(
@@ -168,7 +169,7 @@ def _give_units(amounts: list[Amount], pieces: list[Token], heading: Heading, ro
         name, scale = (unit.text, unit.value) if unit else heading.unit or ("", 1.0)
         if not name and row.name == "frequency_mhz" and _is_khz(amount, row):
             name, scale = "kHz", 1e-3
-            amount.doubts.append("unit not printed, taken as kHz")
+            amount.doubts.append(f"{UNIT_NOT_PRINTED}, taken as kHz")
         elif not name and row.unit and row.sign != "either":
             amount.doubts.append(_no_unit(heading, row))
         elif name and guessed(name, row.name):
@@ -192,7 +193,7 @@ def _is_khz(amount: Amount, row: Field) -> bool:
 def _no_unit(heading: Heading, row: Field) -> str:
     if heading.alien:
         return f"{heading.alien!r} is no unit of {row.title}; taken as {row.unit}"
-    return f"unit not printed, taken as {row.unit}"
+    return f"{UNIT_NOT_PRINTED}, taken as {row.unit}"
 
 
 def _scaled(amount: Amount, token: Token, unit: tuple[str, float], row: Field, decimal: str | None) -> float:

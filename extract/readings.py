@@ -6,7 +6,7 @@ import math
 from collections.abc import Iterable, Sequence
 from dataclasses import replace
 
-from extract import plausible, trace
+from extract import amount, plausible, trace
 from extract.band import HIGHEST_MHZ, LOWEST_MHZ
 from extract.candidates import Candidate
 from extract.fields import field_of, fields
@@ -315,6 +315,8 @@ def _with_operating_range(chosen: list[Candidate], candidates: Sequence[Candidat
             options=(),
             when=When(),
             bare=False,
+            # That no ppm is printed is a doubt about the stability's number and none about the range beside it.
+            doubts=tuple(doubt for doubt in each.doubts if not doubt.startswith(amount.UNIT_NOT_PRINTED)),
         )
         for span, each in ranges.items()
     ]

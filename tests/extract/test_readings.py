@@ -105,3 +105,13 @@ def test_bounds_out_of_order_are_kept_and_flagged():
     (found,) = readings_of([candidate("motional_capacitance_ff", 2.9, 2.4, 1.9)])
     assert (found.min, found.typ, found.max) == (2.9, 2.4, 1.9)
     assert found.check is not None
+
+
+def test_a_missing_ppm_is_no_doubt_about_the_range_beside_the_stability():
+    over = When(temperature_c=(-40.0, 85.0))
+    doubted = candidate(
+        "frequency_stability_ppm", -15.0, None, 15.0, when=over, doubts=("unit not printed, taken as ppm",)
+    )
+    checks = {each.field: each.check for each in readings_of([doubted])}
+    assert checks["operating_temperature_c"] is None
+    assert checks["frequency_stability_ppm"] == "unit not printed, taken as ppm"
