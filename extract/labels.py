@@ -155,10 +155,26 @@ def _condition_pattern() -> re.Pattern[str]:
     )
 
 
+@cache
+def _condition_words() -> tuple[str, ...]:
+    return tuple({word.casefold() for word in vocabulary().phrases.get("at", ()) if word not in ("over", "in")})
+
+
+_IS_RANGE = re.compile(_RANGE, re.IGNORECASE)
+
+
+def _may_hold_condition(text: str) -> bool:
+    """Whether there is anything that a condition begins with; the pattern takes long to find that there is not."""
+    if "@" in text or "°" in text or _IS_RANGE.search(text):
+        return True
+    lower = text.casefold()
+    return any(word in lower for word in _condition_words())
+
+
 def _take_condition(parts: Parts, text: str) -> str:
     if "@" not in text and not _DIGIT.search(text):
         return text
-    found = _condition_pattern().search(text) or _AT_REST.search(text)
+    found = (_may_hold_condition(text) and _condition_pattern().search(text)) or _AT_REST.search(text)
     if not found or found.start() < 1:
         return text
     printed = found[0].strip(EDGE.replace("-", ""))

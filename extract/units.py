@@ -143,12 +143,13 @@ def other_unit_at(text: str, field: str, start: int = 0) -> tuple[str, float, in
     return None
 
 
-def _spellings_at(text: str, start: int) -> list[tuple[int, int, str]]:
+@lru_cache(maxsize=4096)
+def _spellings_at(text: str, start: int) -> tuple[tuple[int, int, str], ...]:
     """What may be a unit at `start`: (begin, end, spelling without spaces and brackets), the longest first."""
     while start < len(text) and text[start] == " ":
         start += 1
     if start == len(text) or text[start] in _DROPPED or text[start].isdecimal() and not text.startswith("10", start):
-        return [] if not text.startswith("0C", start) else [(start, start + 2, "0C")]
+        return () if not text.startswith("0C", start) else ((start, start + 2, "0C"),)
     spelling, found, gap = "", [], 0
     for at in range(start, min(start + _LONGEST, len(text))):
         char = text[at]
@@ -161,7 +162,7 @@ def _spellings_at(text: str, start: int) -> list[tuple[int, int, str]]:
         spelling += char.translate(_TIMES)
         if _END.match(text, at + 1):
             found.append((start, at + 1, spelling))
-    return found[::-1]
+    return tuple(found[::-1])
 
 
 def _rounded(value: float) -> float:
