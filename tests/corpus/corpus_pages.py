@@ -115,3 +115,19 @@ class Sheet:
     def bytes(self) -> bytes:
         self.canvas.save()
         return self.buffer.getvalue()
+
+
+def drawing(page: Sheet, x: float, y: float, *sizes: str) -> None:
+    """An outline drawing with its length, width and height and its pads, as it stands beside a table."""
+    length, width, height = sizes
+    canvas, top = page.canvas, page.height
+    canvas.rect(x, top - y - 60, 90, 60)
+    for across, down in ((8, 22), (60, 22), (8, 52), (60, 52)):
+        canvas.rect(x + across, top - y - down, 22, 14)
+    page.text(x + 30, y - 6, f"{length} ±0.10", 6)
+    page.text(x + 96, y + 32, f"{width} ±0.10", 6)
+    page.text(x + 96, y + 80, f"{height} max", 6)
+    for pad, (across, down) in {"#4": (14, 18), "#3": (66, 18), "#1": (14, 48), "#2": (66, 48)}.items():
+        page.text(x + across, y + down, pad, 6)
+    page.text(x + 20, y + 75, "0.90 ±0.1", 6)
+    page.text(x, y + 95, "Unit: mm", 6)
