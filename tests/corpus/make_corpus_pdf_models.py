@@ -24,7 +24,6 @@ Motional resistance (ESR)|R<sub>1</sub>|{c3}As per table below|-20 °C to +75 °
 Frequency aging|f_age|{c3}±5 × 10<sup>-6</sup> / year Max.|+25 °C, First year""")
         .replace("f_nom", "f<sub>nom</sub>")
         .replace("T_", "T")
-        .replace("f_t", "f_t")
     )
     e = rows("""Model|Frequency|Motional resistance (ESR)
 {r4}TQ-128|16 MHz ≤ f<sub>nom</sub> &lt; 20 MHz|100 Ω Max.
@@ -51,13 +50,8 @@ the GND terminals.</small></p>"""
             dl <200
             tol ±50
             stab ±30 t=-20:75
-            cl {}
-            age ±5 y=1""".replace(
-        """
-            cl {}""",
-        """
-            cl >6""",
-    )
+            cl >6
+            age ±5 y=1"""
     one = {"maker": "Tenquay Timing", "mode": "fund", "attributes": PADS}
     keep(
         "tq_models_en.pdf",
