@@ -70,7 +70,7 @@ def settings_of(text: str, gm: Field) -> tuple[list[float], str]:
 
 
 def settings_table(rows: Sequence[Sequence[Setting]]) -> Table:
-    """A row for each rated load, a column for each gm: margin and ppm of the part that does best there."""
+    """A row for each rated load, a column for each gm: least margin and ppm of the part that does best there."""
     gains = [one.gm_ms for one in rows[0]] if rows else []
     factor, unit = scale("mS", *gains)
     heads = ["Rated load, pF", "Fitted, pF", *(f"{number(gain * factor)} {unit}" for gain in gains), "Best part"]
@@ -86,10 +86,10 @@ def settings_table(rows: Sequence[Sequence[Setting]]) -> Table:
 
 def _cell(one: Setting) -> str:
     mark = "▲" if one.meets else "▼"
-    margin = "not known" if one.margin is None else number(one.margin)
+    margin = "margin not known" if one.margin is None else number(one.margin)
     if one.low_ppm is None or one.high_ppm is None:
-        return f"{mark} margin {margin}"
-    return f"{mark} margin {margin}, {signed(one.low_ppm)}…{signed(one.high_ppm)} ppm"
+        return f"{mark} {margin}"
+    return f"{mark} {margin}; {signed(round(one.low_ppm))}…{signed(round(one.high_ppm))} ppm"
 
 
 def settings_sentence(rows: Sequence[Sequence[Setting]], bench: Bench) -> str:

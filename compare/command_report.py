@@ -6,11 +6,12 @@ import argparse
 import datetime
 import sys
 import tomllib
+from dataclasses import replace
 from pathlib import Path
-from typing import TYPE_CHECKING
+from typing import TYPE_CHECKING, Any
 
 if TYPE_CHECKING:
-    from collections.abc import Sequence
+    from collections.abc import Mapping, Sequence
 
     from compare.bench import Bench
     from compare.dossier import Dossier
@@ -44,8 +45,8 @@ def write_report(sheets: Sequence[SpecSheet], bench: Bench, options: argparse.Na
     target = None if options.out is None else Path(options.out)
     if target is not None and target.suffix.lower() not in KINDS:
         raise ReportCallError(f"--out {options.out}: a report is written as .html or .pdf; end the name so")
-    head = read_head(options.head)
     dossier = the_one(sheets, bench)
+    head = read_head(options.head, *of_works(options.sheets, dossier))
     report = margin_report(dossier, head)
     if target is None:
         sys.stdout.write(report_html(report))
@@ -84,11 +85,29 @@ def the_one(sheets: Sequence[SpecSheet], bench: Bench) -> Dossier:
     return found[0]
 
 
-def read_head(name: str | None) -> ReportHead:
-    """The head's fields from a TOML file; today's date where it gives none."""
+def of_works(names: Sequence[str], dossier: Dossier) -> tuple[dict[str, object], list[Mapping[str, Any]]]:
+    """What work files among the sheets hold: the head as it was set on the page, and decisions on this part."""
+    from compare.folio import SUFFIX, read_folio
+    from compare.report_head import alternates_of
+    from compare.work import part_key
+
+    head: dict[str, object] = {}
+    decided: list[Mapping[str, Any]] = []
+    for name in (name.partition("#")[0] for name in names):
+        if name.lower().endswith(SUFFIX) and Path(name).is_file():
+            work = read_folio(Path(name).read_bytes(), name).work
+            head |= {field: text for field, text in work.slot("report").items() if text}
+            decided += alternates_of(work.slot("decisions"), part_key(dossier.review))
+    return head, decided
+
+
+def read_head(
+    name: str | None, of_work: Mapping[str, object], alternates: Sequence[Mapping[str, Any]] = ()
+) -> ReportHead:
+    """The head's fields from a TOML file, else from the work; today's date where none gives one."""
     from compare.report_head import HeadError, ReportHead
 
-    given: dict[str, object] = {"date": datetime.date.today().isoformat()}
+    given: dict[str, object] = {"date": datetime.date.today().isoformat(), **of_work}
     if name is not None:
         try:
             given |= tomllib.loads(Path(name).read_text(encoding="utf-8-sig"))
@@ -97,6 +116,6 @@ def read_head(name: str | None) -> ReportHead:
         except (tomllib.TOMLDecodeError, UnicodeDecodeError) as fault:
             raise ReportCallError(f"{name}: no TOML file: {fault}") from None
     try:
-        return ReportHead.of(given)
+        return replace(ReportHead.of(given), alternates=tuple(alternates))
     except HeadError as fault:
         raise ReportCallError(f"{name}: {fault}") from None

@@ -17,7 +17,6 @@ import zipfile
 import zlib
 from collections.abc import Callable, Mapping, Sequence
 from dataclasses import dataclass
-from importlib.metadata import PackageNotFoundError, version
 from pathlib import Path
 from typing import Any
 
@@ -28,12 +27,12 @@ from compare.desk import Desk
 from compare.folio_versions import FORMAT, VERSION, upgraded
 from compare.intake import WORK_SUFFIX, read_bytes
 from compare.sheets_json import write_sheets
+from compare.versions import FORMULA_SET as FORMULAS
+from compare.versions import program_version
 from compare.work import Circuit, History, OpenSheet, Step, Work
 from extract.documents.grid import garbage_left
 from extract.model import SCHEMA, SpecSheet
 
-FORMULAS = "quartzfolio/formulas/1"
-"""Raised when a formula or a rule changes so that the same readings and bench give other numbers."""
 SUFFIX = WORK_SUFFIX
 MOST_BYTES = 1 << 30
 """A folio that unpacks to more is refused: it is damaged, or made to fill the machine."""
@@ -57,14 +56,6 @@ class Reopened:
     work: Work
     history: History = History()
     said: tuple[str, ...] = ()
-
-
-def program_version() -> str:
-    """The version installed; "unknown" in a checkout that is not."""
-    try:
-        return version("quartzfolio")
-    except PackageNotFoundError:
-        return "unknown"
 
 
 def head(saved: str) -> dict[str, Any]:

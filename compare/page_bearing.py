@@ -87,6 +87,9 @@ def gain_settings(bench: Bench, contest: Ranked | None) -> None:
 def show(rows: Sequence[Sequence[bearing.Setting]], bench: Bench) -> None:
     heads, cells = bearing_text.settings_table(rows)
     st.html(review_html.table_html(heads, cells, (0, 1)))
+    st.html(
+        '<p class="qf-small">In each place: least margin; ppm in all. ▲ meets what is asked, ▮ the least that does.</p>'
+    )
     st.markdown(pieces.plain(bearing_text.settings_sentence(rows, bench)))
 
 

@@ -3,16 +3,18 @@
 from __future__ import annotations
 
 from collections.abc import Callable
+from html import escape
 from typing import Any
 
-import pandas as pd
 import streamlit as st
 
-from compare import export, picture_pdf
+from compare import export, picture_pdf, review_html
 from compare import page_session as session
 from compare.bench import Bench
 from compare.charts import Chart, Table
 from compare.dossier import Dossier
+from compare.figures import number
+from compare.page_copy import copy_button
 from compare.palette import LIGHT
 from compare.picture import Picture, svg, svg_file
 from compare.ranking import Ranked
@@ -37,17 +39,11 @@ def draw(chart: Chart, *, key: str, tables: bool = False, save: bool = False) ->
     if save:
         heading(chart, key)
     if tables:
-        table(chart.table, f"{key}_table", chart.title)
+        table(chart.table, f"{key}_table")
     else:
         picture(chart.draw(session.palette()), key=key)
     if save and chart.said:
-        st.html(f'<p class="qf-small">{" ".join(map(_escaped, chart.said))}</p>')
-
-
-def _escaped(text: str) -> str:
-    from html import escape
-
-    return escape(text)
+        st.html(f'<p class="qf-small">{" ".join(map(escape, chart.said))}</p>')
 
 
 def heading(chart: Chart, key: str) -> None:
@@ -77,10 +73,22 @@ def files(chart: Chart) -> list[tuple[str, str, Callable[[], bytes]]]:
     ]
 
 
-def table(of: Table, key: str, told: str) -> None:
-    """A table as the grid shows it."""
+def table(of: Table, key: str) -> None:
+    """A chart's figures as a plain table, with a button that copies them."""
     heads, rows = of
-    st.dataframe(pd.DataFrame(rows, columns=heads), hide_index=True, key=key, alt=told)
+    figures = [at for at in range(len(heads)) if all(isinstance(row[at], float | None) for row in rows)]
+    shown = [
+        ["" if one is None else number(one, 4) if isinstance(one, float) else str(one) for one in row] for row in rows
+    ]
+    with st.container(key=key):
+        st.html(review_html.table_html(heads, shown, figures))
+        copy_button(export.as_tabs((heads, rows)), key=f"{key}_copy")
+
+
+def _cell(value: object) -> str:
+    if value is None:
+        return ""
+    return number(value, 4) if isinstance(value, float) else str(value)
 
 
 @st.cache_resource(max_entries=64, show_spinner=False)

@@ -42,8 +42,12 @@ PRESS = """export default function({data, parentElement}) {
   const place = parentElement.querySelector("div"); place.innerHTML = data;
   const svg = place.firstElementChild;
   svg.removeAttribute("height"); svg.style.cssText = "width:100%;max-width:800px;display:block";
-  place.querySelectorAll("[data-field]").forEach(figure => { figure.onclick = () =>
-    document.querySelector(".st-key-field_" + figure.dataset.field.replaceAll(".", "_") + " input")?.focus(); }); }"""
+  const field = figure =>
+    document.querySelector(".st-key-field_" + figure.dataset.field.replaceAll(".", "_") + " input");
+  place.querySelectorAll("[data-field]").forEach(figure => {
+    figure.onclick = () => field(figure)?.focus();
+    figure.onkeydown = press => { if (press.key === "Enter" || press.key === " ") {
+      press.preventDefault(); field(figure)?.focus(); } } }); }"""
 
 
 def circuit_view() -> None:

@@ -90,4 +90,4 @@ def table_html(heads: Sequence[str], rows: Sequence[Sequence[str]], numbers: Seq
         + "</tr>"
         for row in rows
     )
-    return f'<table class="qf-table"><thead><tr>{head}</tr></thead><tbody>{body}</tbody></table>'
+    return f'<table class="qf-table qf-figures"><thead><tr>{head}</tr></thead><tbody>{body}</tbody></table>'

@@ -68,8 +68,8 @@ def test_each_cell_has_margin_and_ppm_and_the_advised_one_its_mark():
     rows = gm_settings(watch().bench, watch().reckoning.columns, [0.002, 0.02])
     heads, cells = settings_table(rows)
     assert heads[2:4] == ["2 µS", "20 µS"]
-    assert cells[0][2].startswith("▼ margin ")
-    assert cells[0][3].startswith("▮ ▲ margin ")
+    assert cells[0][2].startswith("▼ ")
+    assert cells[0][3].startswith("▮ ▲ ")
     assert cells[0][3].endswith(" ppm")
     said = settings_sentence(rows, watch().bench)
     assert said.startswith("Least current: 20 µS with a rated load of 7 pF (ABX-32), margin ")

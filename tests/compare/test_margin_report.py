@@ -14,8 +14,12 @@ from compare.answers import FIGURES
 from compare.bench import read_bench
 from compare.blocks import Drawn, Grid, Heading, Items, Side, Text, Together
 from compare.command import main
+from compare.desk import desk_from_bench
+from compare.folio import folio_bytes
+from compare.intake import read_sheets
 from compare.margin_report import margin_report
 from compare.report_head import HeadError, ReportHead, alternates_of
+from compare.work import Circuit, OpenSheet, Work, part_key
 
 BARE = "[requirement]\nfrequency_mhz = 26.0\n"
 SECTIONS = [
@@ -93,7 +97,7 @@ def test_the_head_has_its_fields_and_blanks_where_nothing_is_known():
     assert rows["Report number"] == "MR-14"
     assert set(rows["Revision"]) == {"_"}
     assert rows["Made by"].startswith("quartzfolio ")
-    assert "formula set" in rows["Made by"]
+    assert "quartzfolio/formulas/" in rows["Made by"]
     assert "quartzfolio/review/1" in rows["Made by"]
 
 
@@ -317,6 +321,30 @@ def test_nothing_that_offers_the_frequency_is_a_wrong_call(files, capsys):
     (files / "bench.toml").write_text(text, encoding="utf-8")
     assert main(call(files)) == 2
     assert "no part to report on: none offers 25 MHz" in capsys.readouterr().err
+
+
+def test_a_work_file_gives_head_decisions_and_circuit(files):
+    sheet = read_sheets([str(files / "offer.txt")]).sheets[0]
+    decision = {
+        "candidate": "PPD-26",
+        "incumbent": "ABX-26",
+        "state": "approved",
+        "by": "M. Alder",
+        "when": "2026-03-01",
+    }
+    work = Work(
+        sheets=(OpenSheet(sheet),), circuits=(Circuit(desk=desk_from_bench(hand_made.BENCH_TEXT, "bench.toml")),)
+    )
+    work = work.with_slot("report", {"project": "Frost node", "board": ""})
+    key = f"{part_key(sheet.parts[0])} > pippinstow|ppd-26"
+    work = work.with_slot("decisions", {key: {"decisions": [decision]}})
+    (files / "frost.folio").write_bytes(folio_bytes(work, "2026-03-02T10:00+00:00"))
+    name = str(files / "frost.folio")
+    assert main(["report", name, "--bench", name, "--out", str(files / "r.html")]) == 0
+    text = (files / "r.html").read_text(encoding="utf-8")
+    assert "Margin report: ABX-26, Frost node" in text
+    assert "PPD-26" in text
+    assert "approved" in text
 
 
 def test_the_report_of_a_part_named_of_a_list(files):

@@ -114,8 +114,8 @@ def test_below_1_mhz_gm_settings_give_margin_ppm_and_the_one_to_take(page):
     open_bench(drop(page, "fork.txt", FORK), WATCH_TEXT)
     page.text_input(key="field_gm_settings").set_value("2 10 20 µS").run()
     told = said(page)
-    assert "▼ margin " in told
-    assert "▮ ▲ margin " in told
+    assert "<td>▼ " in told
+    assert "<td>▮ ▲ " in told
     assert "Least current: " in told
     assert " s a day" in told
     to(to(page, "choose"), "circuit")
