@@ -18,6 +18,7 @@ from collections.abc import Mapping, Sequence
 from dataclasses import dataclass
 from datetime import datetime
 from pathlib import Path
+from typing import NamedTuple
 
 from compare.folio import FolioError, Reopened, head, history_json, json_bytes, reopen, sheet_bytes, sheet_member
 from compare.folio import work_json as as_json
@@ -67,20 +68,38 @@ def folder_of(ident: str) -> Path:
     return state_folder() / ident
 
 
-def keep(ident: str, work: Work, history: History) -> str:
-    """Write what changed; returns when. OSError where the folder cannot be written."""
+class Stamp(NamedTuple):
+    """When a work was written, and for the how manieth time."""
+
+    saved: str
+    times: int
+
+
+class ChangedElsewhere(RuntimeError):  # noqa: N818 - not a fault: another page has the same work open
+    """The work on the machine is not the one that was last written from here."""
+
+
+def keep(ident: str, work: Work, history: History, after: Stamp | None = None) -> Stamp:
+    """Write what changed; returns when.
+
+    `after` is what the writer was given when it last wrote or recalled the work. ChangedElsewhere where another page
+    has written since, OSError where the folder cannot be written.
+    """
     folder = folder_of(ident)
+    there = stamp_of(ident)
+    if after is not None and there is not None and there.times != after.times:
+        raise ChangedElsewhere(ident)
     # Parents that `mkdir` makes on its way have no mode of their own: each is made by itself.
     folder.parent.mkdir(mode=0o700, parents=True, exist_ok=True)
     for each in (folder, folder / "sheets", folder / "files"):
         each.mkdir(mode=0o700, exist_ok=True)
     for one in _every_sheet(work, history):
         keep_sheet(folder, one)
-    saved = now()
+    stamp = Stamp(now(), 1 if there is None else there.times + 1)
     _write(folder / "history.json", json_bytes(history_json(history)))
     _write(folder / "work.json", json_bytes(as_json(work)))
-    _write(folder / "folio.json", json_bytes(head(saved)))
-    return saved
+    _write(folder / "folio.json", json_bytes({**head(stamp.saved), "times": stamp.times}))
+    return stamp
 
 
 def keep_sheet(folder: Path, one: OpenSheet) -> None:
@@ -161,13 +180,13 @@ def kept_works() -> list[Kept]:
     return sorted(found, key=lambda one: one.saved, reverse=True)
 
 
-def saved_at(ident: str) -> str:
-    """When the work of that name was last written; "" where it lies not here."""
+def stamp_of(ident: str) -> Stamp | None:
+    """When the work of that name was last written; None where it lies not here."""
     try:
-        saved: str = json.loads((folder_of(ident) / "folio.json").read_bytes())["saved"]
+        told = json.loads((folder_of(ident) / "folio.json").read_bytes())
+        return Stamp(str(told["saved"]), int(told["times"]))
     except (OSError, ValueError, KeyError, TypeError):
-        return ""
-    return saved
+        return None
 
 
 def forget(ident: str) -> None:

@@ -18,6 +18,7 @@ from compare.page_filters import asked, filter_line, weights, weights_line
 from compare.page_shared import cautions, ready, review_of, save_buttons
 from compare.page_supply import supply_editor
 from compare.ranking import Ranked
+from compare.sheet_lines import corrections_table
 from compare.sheets_json import notes_of
 from compare.work import part_key
 
@@ -153,7 +154,7 @@ def actions(sifted: Sifted, contest: Ranked) -> None:
     """Copy what is in view; save all that is shown, the filters applied."""
     view = [whole(one, contest) for one in in_view(sifted)]
     # What is saved is made once it is asked for, by then outside the session.
-    sheets, decided = session.sheets(), session.slot("decisions")
+    work, sheets, decided = session.work(), session.sheets(), session.slot("decisions")
     approvals = approval.by_candidate(decided)
 
     def table(of: Sequence[Candidate], numbers: Iterable[str]) -> export.Table:
@@ -169,6 +170,7 @@ def actions(sifted: Sifted, contest: Ranked) -> None:
             "numbers": export.numbers_table(first),
             "sources": export.sources_table(sheets, first),
             "decisions": approval.table(decided),
+            "corrections": corrections_table(work),
         }
 
     def result() -> dict[str, Any]:

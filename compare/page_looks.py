@@ -46,6 +46,7 @@ def go_to(sheet: str, part: int, reading: int | str | None, *, moved: bool = Tru
         state.moved += 1
         state.whole_page = sheet != at_look()[0] or state.get("whole_page", False)
     state.update(at=(sheet, part, reading), editing=None)
+    st.query_params.update(sheet=sheet, part=str(part))
 
 
 def reading_area(one: OpenSheet, part: PartLines, queue: Sequence[Look]) -> None:

@@ -33,17 +33,27 @@ def start() -> None:
     """Fill the state once: from the work that the address names, else from what the command line gave."""
     state = st.session_state
     if "work" not in state:
-        state.update(work=Work(), history=History(), saved="", inbox=0, chosen=None, said=[], reader=Reader())
+        state.update(work=Work(), history=History(), saved=None, inbox=0, chosen=None, said=[], reader=Reader())
         # `turn` counts what was changed, `moved` what was looked at other than by a press: tables mark their row anew.
         state.update(turn=0, moved=0, editing=None)
         state.ident = str(st.query_params.get("work", ""))
-        if not recall(state.ident):
+        if recall(state.ident):
+            look_where(st.query_params.get("sheet", ""), st.query_params.get("part", ""))
+        else:
             state.ident = keeping.new_ident()
             open_named(sys.argv[1:])
     # Going to another view empties the address.
     if st.query_params.get("work") != state.ident:
         st.query_params["work"] = state.ident
     take_read()
+
+
+def look_where(sheet: str, part: str) -> None:
+    """Have the Sheets view open where the address says, after a reload or on the way back."""
+    one = work().of(sheet)
+    if one is not None:
+        at = int(part) if part.isdecimal() and int(part) < len(one.sheet.parts) else 0
+        st.session_state.at = (sheet, at, None)
 
 
 def open_named(arguments: Sequence[str]) -> None:
@@ -108,7 +118,11 @@ def save() -> None:
     """Write the work to this machine; where that cannot be, it is said and the page goes on."""
     state = st.session_state
     try:
+        state.saved, state.save_fault = keeping.keep(state.ident, work(), history(), state.saved), ""
+    except keeping.ChangedElsewhere:
+        state.ident = keeping.new_ident()
         state.saved, state.save_fault = keeping.keep(state.ident, work(), history()), ""
+        say("This work was changed in another tab too; from here on the two are kept apart.")
     except OSError as fault:
         state.save_fault = KEPT_WHERE.format(fault=f"{keeping.state_folder()}: {fault.strerror or fault}")
 
@@ -123,7 +137,7 @@ def recall(ident: str) -> bool:
     if found is None:
         return False
     take_up(found, ident)
-    st.session_state.saved = keeping.saved_at(ident)
+    st.session_state.saved = keeping.stamp_of(ident)
     return True
 
 
@@ -143,6 +157,7 @@ def open_folio(data: bytes, name: str) -> bool:
         say(str(fault))
         return False
     take_up(found, keeping.new_ident())
+    st.session_state.saved = None
     save()
     return True
 
@@ -175,7 +190,7 @@ def forget() -> None:
         keeping.forget(state.ident)
     except OSError as fault:
         say(f"Not everything could be removed: {fault}")
-    state.update(work=Work(), history=History(), ident=keeping.new_ident(), saved="", chosen=None, reader=Reader())
+    state.update(work=Work(), history=History(), ident=keeping.new_ident(), saved=None, chosen=None, reader=Reader())
     state.inbox += 1
     state.turn += 1
     forget_fields()

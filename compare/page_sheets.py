@@ -2,19 +2,23 @@
 
 from __future__ import annotations
 
+import io
+import json
 from collections.abc import Sequence
 from dataclasses import replace
 from typing import Any
 
 import streamlit as st
 
-from compare import looks, pieces, sheet_lines, shown
+from compare import export, looks, pieces, sheet_lines, shown
 from compare import page_session as session
 from compare.desk import NO_SHEETS, PRIVACY
 from compare.folio import SUFFIX
 from compare.page_copy import copy_button
 from compare.page_looks import add_reading, at_look, go_to, put_back_part, reading_area
+from compare.page_shared import save_buttons
 from compare.sheet_lines import PartLines
+from compare.sheets_json import write_sheets
 from compare.work import OpenSheet
 from extract.partlist import part_numbers
 
@@ -257,11 +261,32 @@ def all_parts() -> None:
     st.markdown(f":gray[:small[{shown.HOW_LEGEND}]]")
     if every > len(frame):
         st.markdown(f":small[The first {len(frame)} of {every} are shown.]")
-    with st.container(horizontal=True, gap="small"):
-        copy_button(sheet_lines.as_tabbed(frame), key="copy_parts")
-        if picked is not None and picked.selection.rows:
-            place = places[picked.selection.rows[0]]
-            st.button("Its readings", key="to_part", on_click=to_part, args=(place,), type="primary")
+    if picked is not None and picked.selection.rows:
+        place = places[picked.selection.rows[0]]
+        st.button("Its readings", key="to_part", on_click=to_part, args=(place,), type="primary")
+    save_readings(frame)
+
+
+def save_readings(frame: Any) -> None:
+    """Copy the table; save every reading with its source, and every correction."""
+    work = session.work()
+
+    def tables() -> dict[str, export.Table]:
+        rows = [
+            {"file": sheet.file, "part_number": number}
+            for sheet in work.corrected
+            for number in part_numbers(sheet.parts)[: export.MOST_SOURCED]
+        ]
+        corrections = sheet_lines.corrections_table(work)
+        return {"readings": export.sources_table(work.corrected, rows), "corrections": corrections}
+
+    def result() -> Any:
+        document = io.StringIO()
+        write_sheets(work.corrected, [], document)
+        return json.loads(document.getvalue())
+
+    copied = list(frame.columns), frame.to_numpy().tolist()
+    save_buttons("readings", copied, tables, result, key="readings")
 
 
 def to_part(place: sheet_lines.PartPlace) -> None:

@@ -42,7 +42,7 @@ def title() -> str:
     """`Frost node · 26 MHz radio · saved 14:32`."""
     work, saved = session.work(), st.session_state.saved
     named = work.circuit.name if len(work.circuits) > 1 or work.circuit.name else ""
-    when = f"saved {saved[11:16]}" if saved else "nothing to save yet"
+    when = f"saved {saved.saved[11:16]}" if saved else "nothing to save yet"
     return " · ".join(filter(None, (work.name or "Work", named, when)))
 
 

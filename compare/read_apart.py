@@ -96,6 +96,9 @@ def main() -> None:
     from compare.intake import read_bytes
     from extract.model import written
 
+    if hasattr(os, "nice"):
+        # Whoever presses something on the page goes before the reading of a scan.
+        os.nice(10)
     # Libraries that print would spoil the answers: what they print goes to standard error.
     answers = os.fdopen(os.dup(1), "wb")
     os.dup2(2, 1)

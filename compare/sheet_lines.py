@@ -194,3 +194,38 @@ def as_tabbed(frame: pd.DataFrame) -> str:
     """A table as text with tabs, headings and units included, for a spreadsheet or a mail."""
     rows = [list(frame.columns), *frame.astype(str).to_numpy().tolist()]
     return "\n".join("\t".join(" ".join(str(cell).split()) for cell in row) for row in rows)
+
+
+def corrections_table(work: Work) -> tuple[list[str], list[list[str]]]:
+    """Every correction with both values, who, when and why: headings and rows, for a workbook."""
+    headings = ["Part number", "Reading", "What was done", "Now", "Sheet says", "As typed", "By", "When", "Why", "File"]
+    return headings, [row for one in work.corrections if (row := _correction_row(work, one)) is not None]
+
+
+def _correction_row(work: Work, one: Correction) -> list[str] | None:
+    sheet = work.of(one.sheet)
+    if sheet is None or one.part >= len(sheet.sheet.parts):
+        return None
+    part = sheet.sheet.parts[one.part]
+    reading = one.new or one.was
+    if one.fact is not None:
+        name, now, before = FACTS[one.fact], one.value or "not stated", getattr(part, one.fact) or "not stated"
+    else:
+        name = NAMES[reading.field] if reading is not None else ""
+        before = "not stated" if one.was is None else value_text(one.was)
+        now = {"not on the sheet": "not stated", "as read": before}.get(
+            one.what, "" if one.new is None else value_text(one.new)
+        )
+    done = {"value": "corrected", "added": "added", "as read": "kept as read", "fact": "corrected"}
+    return [
+        part_name(part, one.part + 1),
+        name,
+        done.get(one.what, one.what),
+        now,
+        before,
+        one.typed,
+        one.by,
+        one.at,
+        one.why,
+        sheet.sheet.file,
+    ]

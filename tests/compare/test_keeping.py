@@ -28,11 +28,11 @@ def files(folder):
 def test_kept_work_comes_back_with_its_way_back_and_its_sheets():
     ident, corrected = keeping.new_ident(), replace(WORK, corrections=(GONE,))
     history = History().after("frequency not on the sheet", WORK, corrected)
-    saved = keeping.keep(ident, corrected, history)
+    stamp = keeping.keep(ident, corrected, history)
     back = keeping.recall(ident)
     assert (back.work, back.work.sheets[0].data) == (corrected, MAIL)
     assert back.history.undone(back.work)[0] == WORK
-    assert keeping.saved_at(ident) == saved
+    assert keeping.stamp_of(ident) == stamp
 
 
 def test_a_closed_sheet_can_be_brought_back_after_a_reload():
@@ -90,12 +90,23 @@ def test_forgetting_one_work_leaves_the_other():
 
 def test_kept_works_are_listed_with_name_time_and_sheets(state_folder):
     ident = keeping.new_ident()
-    saved = keeping.keep(ident, WORK, History())
+    saved = keeping.keep(ident, WORK, History()).saved
     (state_folder / ("0" * 16)).mkdir()
     assert keeping.kept_works() == [
         keeping.Kept(ident, "Frost node", saved, 1),
         keeping.Kept("0" * 16, "a damaged one", "", 0),
     ]
+
+
+def test_what_another_page_has_written_since_is_not_written_over():
+    ident = keeping.new_ident()
+    mine = keeping.keep(ident, WORK, History())
+    theirs = keeping.keep(ident, replace(WORK, name="theirs"), History(), mine)
+    with pytest.raises(keeping.ChangedElsewhere):
+        keeping.keep(ident, replace(WORK, name="mine"), History(), mine)
+    assert keeping.recall(ident).work.name == "theirs"
+    keeping.keep(ident, replace(WORK, name="theirs again"), History(), theirs)
+    assert keeping.recall(ident).work.name == "theirs again"
 
 
 @pytest.mark.parametrize("ident", ["", "../other", "0123", "g" * 16, "0" * 16])

@@ -211,6 +211,33 @@ def test_a_reload_finds_everything_and_can_still_undo(page):
     assert readings(again).loc["ESR", "How we have it"].startswith("☞ look")
 
 
+def reloaded(page, **address):
+    again = AppTest.from_file(str(SCRIPT), default_timeout=60)
+    for key, value in {"work": page.session_state.ident, **address}.items():
+        again.query_params[key] = value
+    again.run()
+    assert not again.exception
+    return again
+
+
+def test_a_reload_lands_on_the_same_part(page):
+    drop(page, ("a.txt", hand_made.MAIL), ("b.txt", hand_made.MAIL.replace("ABX-26", "ABX-27")))
+    again = reloaded(page, sheet=page.session_state.work.sheets[1].key, part="0")
+    assert "## ABX-27" in said(again)
+    assert "## ABX-26" in said(reloaded(page, sheet="gone", part="x"))
+
+
+def test_two_tabs_of_one_work_do_not_write_over_each_other(page):
+    drop(page, ("offer.txt", DOUBTFUL))
+    other = reloaded(page)
+    press(page, "look_other")
+    press(other, "look_keep")
+    assert "This work was changed in another tab too; from here on the two are kept apart." in said(other)
+    assert other.session_state.ident != page.session_state.ident
+    assert [one.what for one in keeping.recall(page.session_state.ident).work.corrections] == ["value"]
+    assert [one.what for one in keeping.recall(other.session_state.ident).work.corrections] == ["as read"]
+
+
 def test_an_empty_page_keeps_nothing_and_a_dropped_sheet_is_kept(page, state_folder):
     assert not state_folder.exists()
     drop(page, ("offer.txt", hand_made.MAIL))

@@ -6,7 +6,15 @@ import hand_made
 import pytest
 
 from compare.corrections import Correction
-from compare.sheet_lines import as_tabbed, history_lines, lines_frame, not_stated, part_lines, parts_frame
+from compare.sheet_lines import (
+    as_tabbed,
+    corrections_table,
+    history_lines,
+    lines_frame,
+    not_stated,
+    part_lines,
+    parts_frame,
+)
 from compare.work import OpenSheet, Work
 
 OPEN = OpenSheet(hand_made.SHEET)
@@ -129,3 +137,36 @@ def test_a_copied_table_has_headings_and_tabs_and_no_line_break_inside():
     assert lines[0].split("\t")[:3] == ["Reading", "Min", "Typ"]
     assert lines[1].split("\t")[0] == "ESR"
     assert {line.count("\t") for line in lines} == {lines[0].count("\t")}
+
+
+def test_the_table_of_corrections_has_both_values_who_when_and_why():
+    mode = Correction(sheet=OPEN.key, part=0, what="fact", fact="mode", value="third overtone", by="M. Quill")
+    changes = (
+        correction(ESR, new=entered(max=40.0), typed="max 40", by="M. Quill", at="2031-04-02T14:32+02:00", why="mail"),
+        correction(DRIVE, "not on the sheet"),
+        correction(C1, "as read"),
+        mode,
+    )
+    headings, rows = corrections_table(replace(WORK, corrections=changes))
+    name = hand_made.PART.part_number
+    assert [dict(zip(headings, row, strict=True))["Now"] for row in rows] == [
+        "at most 40 Ω",
+        "not stated",
+        "4.4 fF",
+        "third overtone",
+    ]
+    assert rows[0] == [
+        name,
+        "ESR",
+        "corrected",
+        "at most 40 Ω",
+        "28, at most 50 Ω",
+        "max 40",
+        "M. Quill",
+        "2031-04-02T14:32+02:00",
+        "mail",
+        "merrowby_mrb25.txt",
+    ]
+    assert rows[3][1:5] == ["Mode", "corrected", "third overtone", "fundamental"]
+    lone = Correction(sheet="x" * 20, part=0, reading=0, what="as read")
+    assert corrections_table(replace(WORK, corrections=(lone,)))[1] == []
