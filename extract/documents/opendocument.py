@@ -10,6 +10,7 @@ import zipfile
 import zlib
 from collections.abc import Iterator
 from dataclasses import dataclass, field
+from typing import IO
 
 from lxml import etree
 
@@ -20,6 +21,10 @@ _TABLE = "{urn:oasis:names:tc:opendocument:xmlns:table:1.0}"
 _TEXT = "{urn:oasis:names:tc:opendocument:xmlns:text:1.0}"
 _OFFICE = "{urn:oasis:names:tc:opendocument:xmlns:office:1.0}"
 _STYLE = "{urn:oasis:names:tc:opendocument:xmlns:style:1.0}"
+_SHEET, _ROW, _ONE_STYLE = f"{_TABLE}table", f"{_TABLE}table-row", f"{_STYLE}style"
+_CELL, _COVERED, _PARAGRAPH = f"{_TABLE}table-cell", f"{_TABLE}covered-table-cell", f"{_TEXT}p"
+_ROWS_REPEATED, _COLUMNS_REPEATED = f"{_TABLE}number-rows-repeated", f"{_TABLE}number-columns-repeated"
+_ROWS_SPANNED, _COLUMNS_SPANNED = f"{_TABLE}number-rows-spanned", f"{_TABLE}number-columns-spanned"
 DAMAGED = "The workbook is damaged or cut short. Fetch it again, or open it and save it as XLSX."
 
 LOCKED = "The workbook is locked with a password. Open it, save it without a password and try again."
@@ -48,58 +53,68 @@ def read_sheets(data: bytes) -> list[OpenSheet]:
         with zipfile.ZipFile(io.BytesIO(data)) as archive:
             if b"encryption-data" in archive.read("META-INF/manifest.xml"):
                 raise DocumentError(LOCKED)
-            root = etree.fromstring(
-                archive.read("content.xml"), etree.XMLParser(huge_tree=True, resolve_entities=False)
-            )
+            with archive.open("content.xml") as content:
+                return list(_sheets(content))
     except ZIP_FAULTS as fault:
         raise DocumentError(DAMAGED) from fault
-    hidden = _hidden_styles(root)
-    return [_sheet(table, hidden) for table in root.iter(f"{_TABLE}table")]
 
 
-def _hidden_styles(root: etree._Element) -> frozenset[str]:
-    return frozenset(
-        style.get(f"{_STYLE}name", "")
-        for style in root.iter(f"{_STYLE}style")
-        for properties in style.iter(f"{_STYLE}table-properties")
-        if properties.get(f"{_TABLE}display") == "false"
+def _sheets(content: IO[bytes]) -> Iterator[OpenSheet]:
+    """Every sheet; a row goes as soon as it is read, for a long list's tree would fill a small machine."""
+    hidden: set[str] = set()
+    sheet: OpenSheet | None = None
+    events = etree.iterparse(
+        content, ("start", "end"), tag=(_SHEET, _ROW, _ONE_STYLE), huge_tree=True, resolve_entities=False
     )
+    for event, element in events:
+        if element.tag == _SHEET and event == "start":
+            sheet = OpenSheet(element.get(f"{_TABLE}name", ""), element.get(f"{_TABLE}style-name") in hidden)
+        elif element.tag == _SHEET and sheet is not None:
+            while sheet.grid and not sheet.grid[-1]:
+                sheet.grid.pop()
+            yield sheet
+            sheet = None
+        elif event == "end" and element.tag == _ONE_STYLE and _hides(element):
+            hidden.add(element.get(f"{_STYLE}name", ""))
+        elif event == "end" and element.tag == _ROW and sheet is not None:
+            _take_row(sheet, element)
+            element.clear()
 
 
-def _sheet(table: etree._Element, hidden: frozenset[str]) -> OpenSheet:
-    sheet = OpenSheet(table.get(f"{_TABLE}name", ""), table.get(f"{_TABLE}style-name") in hidden)
-    for element in table.iter(f"{_TABLE}table-row"):
-        texts = list(_row(sheet, element, len(sheet.grid)))
-        while texts and not texts[-1]:
-            texts.pop()
-        repeats = _count(element, "number-rows-repeated")
-        sheet.grid.extend([texts] * (min(repeats, _MOST_REPEATS) if texts else repeats if repeats < 10_000 else 1))
-    while sheet.grid and not sheet.grid[-1]:
-        sheet.grid.pop()
-    return sheet
+def _hides(style: etree._Element) -> bool:
+    properties = style.iter(f"{_STYLE}table-properties")
+    return any(each.get(f"{_TABLE}display") == "false" for each in properties)
+
+
+def _take_row(sheet: OpenSheet, element: etree._Element) -> None:
+    texts = list(_row(sheet, element, len(sheet.grid)))
+    while texts and not texts[-1]:
+        texts.pop()
+    repeats = _count(element, _ROWS_REPEATED)
+    sheet.grid.extend([texts] * (min(repeats, _MOST_REPEATS) if texts else repeats if repeats < 10_000 else 1))
 
 
 def _row(sheet: OpenSheet, element: etree._Element, row: int) -> Iterator[str]:
     column = 0
-    for cell in element.iterchildren(f"{_TABLE}table-cell", f"{_TABLE}covered-table-cell"):
-        covered = cell.tag == f"{_TABLE}covered-table-cell"
-        text = "" if covered else _cell_text(cell)
-        height, width = _count(cell, "number-rows-spanned"), _count(cell, "number-columns-spanned")
+    for cell in element.iterchildren(_CELL, _COVERED):
+        text = "" if cell.tag == _COVERED else _cell_text(cell)
+        height, width = _count(cell, _ROWS_SPANNED), _count(cell, _COLUMNS_SPANNED)
         if height > 1 or width > 1:
             sheet.spans.append((row, column, row + height - 1, column + width - 1))
-        repeats = _count(cell, "number-columns-repeated")
-        repeats = min(repeats, _MOST_REPEATS)
+        repeats = min(_count(cell, _COLUMNS_REPEATED), _MOST_REPEATS)
         yield from [text] * repeats
         column += repeats
 
 
 def _count(element: etree._Element, name: str) -> int:
-    value = element.get(f"{_TABLE}{name}", "1")
-    return int(value) if value.isdigit() else 1
+    value = element.get(name)
+    return int(value) if value is not None and value.isdigit() else 1
 
 
 def _cell_text(cell: etree._Element) -> str:
-    paragraphs = cell.findall(f"{_TEXT}p")
+    if len(cell) == 1 and cell[0].tag == _PARAGRAPH and len(cell[0]) == 0:
+        return (cell[0].text or "").strip()
+    paragraphs = cell.findall(_PARAGRAPH)
     if paragraphs:
         return "\n".join(_flow(paragraph) for paragraph in paragraphs).strip()
     value = cell.get(f"{_OFFICE}value")
