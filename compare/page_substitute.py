@@ -12,15 +12,18 @@ from compare import answers, approval, charts, export, pieces, supply, swap_piec
 from compare import page_session as session
 from compare.approval import ApprovalError, Decision
 from compare.bench import Bench
+from compare.blocks import Report
 from compare.figures import counted
 from compare.levers import Lever, levers
 from compare.page_charts import picture
 from compare.page_copy import copy_button, figures
 from compare.page_shared import cautions, fingerprint, review_of, save_buttons, something_open
 from compare.refit import with_changes
+from compare.report_html import report_html
 from compare.sheets_json import notes_of
 from compare.substitution import SubstituteError, substitute
 from compare.swap_parts import Choice, as_row, choices, default_candidate
+from compare.swap_report import file_name, swap_report
 from extract.model import SpecSheet
 
 SIZE = 1.08
@@ -50,15 +53,18 @@ def substitute_view() -> None:
         return
     result, one = found
     bars = levers_of(incumbent, candidate, one, bench)
+    found_lines = swap_shown.swap_lines(one, bars)
+    both = supplied_both(incumbent, candidate)
     with left:
         answer(result, one, bench)
-        lines(result, one, bars, bench)
+        lines(result, one, found_lines, bench)
+        report(result, one, found_lines, bench, both, (incumbent, candidate))
         steps(incumbent, candidate, places)
         every_candidate(incumbent, places, bench)
         cautions()
     with right:
         as_it_is(result, one, candidate, bench)
-        supplied(incumbent, candidate)
+        supplied(both)
         ask(one)
         decision(result, one)
 
@@ -183,8 +189,7 @@ def answer(result: dict[str, Any], one: dict[str, Any], bench: Bench | None) -> 
                 session.go("circuit")
 
 
-def lines(result: dict[str, Any], one: dict[str, Any], bars: dict[str, Lever], bench: Bench | None) -> None:
-    found = swap_shown.swap_lines(one, bars)
+def lines(result: dict[str, Any], one: dict[str, Any], found: swap_shown.Compared, bench: Bench | None) -> None:
     # What is known of their supply stands beside both, with its date.
     differ = [line for line in found.differ if line.field not in ("price", "lead_time")]
     colours = session.palette()
@@ -283,12 +288,53 @@ def as_it_is(result: dict[str, Any], one: dict[str, Any], candidate: Choice, ben
         figures(swap_pieces.both_html(both), key="both")
 
 
-def supplied(incumbent: Choice, candidate: Choice) -> None:
+def supplied_both(incumbent: Choice, candidate: Choice) -> list[swap_shown.BothHave]:
     """Price, stock and lead time of both, where anything is known of them."""
     slot = session.slot("supply")
     old, new = (supply.supply_of(as_row(choice.alone()), slot) for choice in (incumbent, candidate))
-    if both := swap_shown.both_supplied(old, new):
+    return swap_shown.both_supplied(old, new)
+
+
+def supplied(both: list[swap_shown.BothHave]) -> None:
+    if both:
         figures(swap_pieces.both_html(both, "Supply"), key="supplied")
+
+
+def report(  # noqa: PLR0917
+    result: dict[str, Any],
+    one: dict[str, Any],
+    found: swap_shown.Compared,
+    bench: Bench | None,
+    both: list[swap_shown.BothHave],
+    pair_of: tuple[Choice, Choice],
+) -> None:
+    """The same on paper, with the decisions, to be filed and signed."""
+    decisions = approval.decided(session.slot("decisions"), approval.pair_key(result["incumbent"], one))
+    day = session.today()[:10]
+
+    def made() -> Report:
+        of = [choice.alone() for choice in pair_of]
+        sheets = list(dict.fromkeys((sheet.file, sheet.sha256 or "") for sheet in of))
+        return swap_report(result, one, found, bench=bench, supply=both, decisions=decisions, sheets=sheets, day=day)
+
+    def pdf() -> bytes:
+        from compare.report_pdf import report_pdf
+
+        return report_pdf(made())
+
+    name = file_name(result, one)
+    with st.container(horizontal=True, gap="small"):
+        st.download_button(
+            "Save report, PDF", pdf, f"{name}.pdf", "application/pdf", key="swap_pdf", on_click="ignore", shortcut="P"
+        )
+        st.download_button(
+            "HTML, one file",
+            lambda: report_html(made()),
+            f"{name}.html",
+            "text/html",
+            key="swap_html",
+            on_click="ignore",
+        )
 
 
 def ask(one: dict[str, Any]) -> None:

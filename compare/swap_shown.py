@@ -29,6 +29,7 @@ HEADS = {
     "does not fit": "Does not fit",
     "cannot tell": "Cannot tell",
 }
+ALONE = "What a line does here: with this reading alone put in place of the present part's."
 LEVER_LEGEND = (
     "Each line put in place alone. Bar to the end of its line: all the room that the present part had. "
     "Past it: an arrow, and the requirement falls short. Dotted: not known."
