@@ -9,7 +9,7 @@ from html import escape
 from pathlib import Path
 
 from compare.palette import Palette
-from compare.review_shown import Judged, Number, Share
+from compare.review_shown import Share
 
 MARKDOWN = re.compile(r"([\\`*_{}\[\]()#+!|<>$~:^-])")
 
@@ -35,33 +35,6 @@ def terms_html(terms: Sequence[str]) -> str:
     """The line of terms; figures stand between ** in `terms`."""
     said = (re.sub(r"\*\*(.+?)\*\*", r"<b>\1</b>", escape(term)) for term in terms)
     return f'<div class="qf-terms">{"".join(f"<span>{term}</span>" for term in said)}</div>'
-
-
-def numbers_html(numbers: Sequence[Number]) -> str:
-    """Every number with its three values; pressed, a row opens to how it was reached."""
-    head = ("Number", "Low", "Nominal", "High", "Unit", "How we have it")
-    cells = "".join(f"<span{' class=n' if name in head[1:4] else ''}>{name}</span>" for name in head)
-    return f'<div class="qf-head">{cells}</div><div class="qf-numbers">{"".join(map(_number_row, numbers))}</div>'
-
-
-def _number_row(number: Number) -> str:
-    values = "".join(f'<span class="n">{escape(value)}</span>' for value in (number.low, number.mid, number.high))
-    said = f'<span class="soft">{escape(number.unit)}</span><span class="soft">{escape(number.basis)}</span>'
-    how = escape(number.how or "Nothing is said about how.")
-    return f"<details><summary><span>{escape(number.name)}</span>{values}{said}</summary><p>{how}</p></details>"
-
-
-def judged_html(rows: Sequence[Judged]) -> str:
-    """Verdict by requirement as a table whose reasons may run over several lines."""
-    head = "".join(f"<th>{name}</th>" for name in ("Requirement", "Worst case", "Times over", "Verdict", "Why"))
-    body = "".join(map(_judged_row, rows))
-    return f'<table class="qf-table"><thead><tr>{head}</tr></thead><tbody>{body}</tbody></table>'
-
-
-def _judged_row(row: Judged) -> str:
-    look = "short" if row.verdict.startswith("▼") else "v"
-    cells = (("", row.requirement), ("n", row.worst), ("n", row.times_over), (look, row.verdict), ("soft", row.why))
-    return "<tr>" + "".join(f'<td class="{kind}">{escape(text)}</td>' for kind, text in cells) + "</tr>"
 
 
 def shares_html(shares: Sequence[Share]) -> str:

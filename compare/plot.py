@@ -180,7 +180,10 @@ class Plot:
 
     def _through(self, piece: list[Point], width: float, dash: Sequence[float]) -> None:
         self.pen.through(piece, colour=self.palette.accent, width=width, dash=dash)
-        self.taken += [(px - 2, py - 2, px + 2, py + 2) for px, py in piece[::3]]
+        for (x1, y1), (x2, y2) in zip(piece, piece[1:], strict=False):
+            steps = max(1, round(math.hypot(x2 - x1, y2 - y1) / 5))
+            at = [(x1 + (x2 - x1) * n / steps, y1 + (y2 - y1) * n / steps) for n in range(steps)]
+            self.taken += [(px - 2, py - 2, px + 2, py + 2) for px, py in at]
 
     def ring(self, x: float, y: float, *, colour: str = "", radius: float = 4.5) -> None:
         """The nominal mark."""

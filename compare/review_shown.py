@@ -8,12 +8,9 @@ from compare.answers import (
     ENDS,
     FIGURES,
     FULL_NAMES,
-    MARKS,
     Figure,
     Row,
     missing_name,
-    row_name,
-    tightest_text,
     times,
     told,
     verdict,
@@ -53,30 +50,6 @@ def judged(review: Row, bench: Bench) -> list[Judged]:
     return rows
 
 
-def review_heading(review: Row) -> str:
-    """`▲ MRB25-260-08H meets what is asked`, `, as read so far` while a reading of it waits for a look."""
-    name = row_name(review)
-    words = {
-        "meets": f"{name} meets what is asked",
-        "falls short": f"{name} falls short",
-        "cannot tell": f"{name}: cannot tell",
-    }[review["verdict"]]
-    return f"{MARKS[review['verdict']]} {words}" + (", as read so far" if review["to_check"] else "")
-
-
-def short_of(review: Row) -> str:
-    """What it falls short in or cannot be told of, in one sentence; "" where it meets."""
-    about = [
-        FULL_NAMES.get(reason["about"], reason["about"])
-        for reason in review["reasons"]
-        if reason["verdict"] == review["verdict"]
-    ]
-    if review["verdict"] == "meets":
-        least = tightest_text(review)
-        return f"Tightest: {least}." if least else ""
-    return f"{'Short' if review['verdict'] == 'falls short' else 'Open'}: {'; '.join(dict.fromkeys(about))}."
-
-
 @dataclass(frozen=True)
 class Number:
     """One number of a review, ready to be shown: its three values, how we have it and how it was reached."""
@@ -90,13 +63,8 @@ class Number:
     how: str
 
 
-def numbers(review: Row, bench: Bench) -> list[Number]:
-    """Every number that the review has, in the order of FIGURES; of a clock the error in seconds a day as well."""
-    return [number_ for _, number_ in keyed_numbers(review, bench)]
-
-
 def keyed_numbers(review: Row, bench: Bench) -> list[tuple[str, Number]]:
-    """The same with the key of each; that of the seconds a day is `seconds_per_day`."""
+    """Every number that the review has with its key, in the order of FIGURES; of a clock also `seconds_per_day`."""
     shown = [(key, _number(review[key], figure)) for key, figure in FIGURES.items() if key in review]
     if bench.requirement.frequency_mhz < CLOCK_BELOW_MHZ and "total_ppm" in review:
         total = review["total_ppm"]

@@ -22,23 +22,8 @@ def test_every_reason_is_judged_in_its_own_row_with_a_true_minus():
     assert all(row.meets for row in rows)
 
 
-def test_the_review_says_when_a_reading_still_waits():
-    assert review_shown.review_heading(hand_made.review()) == "▲ MRB25-260-08H meets what is asked, as read so far"
-    assert review_shown.review_heading(hand_made.review(to_check=[])) == "▲ MRB25-260-08H meets what is asked"
-    assert (
-        review_shown.review_heading(hand_made.review(verdict="cannot tell", to_check=[]))
-        == "◇ MRB25-260-08H: cannot tell"
-    )
-
-
-def test_under_the_heading_stands_what_decides():
-    assert review_shown.short_of(MEETS) == "Tightest: ppm in all 1.10 times."
-    short = hand_made.review(verdict="falls short", reasons=[hand_made.reason("total_ppm", "falls short", "")])
-    assert review_shown.short_of(short) == "Short: Frequency, all causes."
-
-
 def test_every_number_has_three_values_a_unit_and_how():
-    rows = {one.name: one for one in review_shown.numbers(hand_made.review(), BENCH)}
+    rows = {one.name: one for _, one in review_shown.keyed_numbers(hand_made.review(), BENCH)}
     load = rows["Load that the circuit presents"]
     assert (load.low, load.mid, load.high, load.unit) == ("7.38", "7.698", "8.01", "pF")
     assert load.how == "A–0 14.6 pF in series with B–0 14.6 pF, and 0.4 pF"
@@ -49,7 +34,7 @@ def test_every_number_has_three_values_a_unit_and_how():
 
 def test_an_estimate_is_marked_and_a_missing_end_is_a_dash():
     changed = hand_made.review(motional_capacitance_ff=hand_made.figure(1.0, 2.0, None, "estimated", "estimated"))
-    c1 = next(one for one in review_shown.numbers(changed, BENCH) if one.name == "Motional capacitance C1")
+    c1 = next(one for _, one in review_shown.keyed_numbers(changed, BENCH) if one.name == "Motional capacitance C1")
     assert (c1.basis, c1.high) == ("∴ estimated", "—")
 
 
@@ -81,14 +66,16 @@ def test_what_is_open_is_listed_before_it_is_signed():
 def test_a_clocks_error_is_said_in_seconds_a_day_too():
     # 100 ppm of 86 400 s are 8.64 s.
     review = hand_made.review(total_ppm=hand_made.figure(-100.0, 0.0, 50.0))
-    day = next(one for one in review_shown.numbers(review, WATCH) if one.name == "The same for a clock")
+    day = next(one for _, one in review_shown.keyed_numbers(review, WATCH) if one.name == "The same for a clock")
     assert (day.low, day.high, day.unit) == ("−8.64", "+4.32", "s a day")
-    assert all(one.name != "The same for a clock" for one in review_shown.numbers(review, BENCH))
+    assert all(one.name != "The same for a clock" for _, one in review_shown.keyed_numbers(review, BENCH))
 
 
 def test_a_small_transconductance_is_said_in_microsiemens():
     review = hand_made.review(critical_transconductance_ms=hand_made.figure(0.001, 0.0012, 0.0023))
-    critical = next(one for one in review_shown.numbers(review, WATCH) if one.name == "Critical transconductance")
+    critical = next(
+        one for _, one in review_shown.keyed_numbers(review, WATCH) if one.name == "Critical transconductance"
+    )
     assert (critical.low, critical.mid, critical.high, critical.unit) == ("1", "1.2", "2.3", "µS")
 
 
@@ -97,6 +84,6 @@ def test_a_forks_kilohms_and_henries_are_said_as_such():
         negative_resistance_ohm=hand_made.figure(-461564.0, -422555.0, -352727.0),
         motional_inductance_mh=hand_made.figure(4.7e6, 8.58e6, 17.2e6),
     )
-    rows = {one.name: one for one in review_shown.numbers(review, WATCH)}
+    rows = {one.name: one for _, one in review_shown.keyed_numbers(review, WATCH)}
     assert (rows["Negative resistance"].low, rows["Negative resistance"].unit) == ("−461.6", "kΩ")
     assert (rows["Motional inductance L1"].mid, rows["Motional inductance L1"].unit) == ("8580", "H")
