@@ -32,6 +32,7 @@ def _pads_for(use: str) -> re.Pattern[str]:
 
 def attributes_of(stated: Mapping[str, str], texts: Sequence[str] = ()) -> Attributes:
     """Attributes from labelled texts, and pads from the lines that name them."""
+    price, lead_time = _without_lead_time(stated.get("price", ""))
     reflow = re.search(r"\d{3}", stated.get("reflow_peak_c", ""))
     return Attributes(
         pads=_pads([stated.get("pads", ""), *texts]),
@@ -39,9 +40,17 @@ def attributes_of(stated: Mapping[str, str], texts: Sequence[str] = ()) -> Attri
         moisture_level=stated.get("moisture_level"),
         reflow_peak_c=float(reflow[0]) if reflow else None,
         status=stated.get("status"),
-        price=stated.get("price"),
-        lead_time=stated.get("lead_time"),
+        price=price or None,
+        lead_time=stated.get("lead_time") or lead_time or None,
     )
+
+
+def _without_lead_time(price: str) -> tuple[str, str]:
+    """The price and the lead time of a text that states both ("0.31 EUR, delivery 10 weeks")."""
+    for run in vocabulary().attributes.runs(price):
+        if run.meaning == "lead_time" and run.start > 0:
+            return price[: run.start].rstrip(" ,;:("), price[run.end :].strip(" ,;:=)")
+    return price, ""
 
 
 def _yes_or_no(text: str | None) -> bool | None:

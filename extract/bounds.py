@@ -250,6 +250,9 @@ def _number(amount: Amount, row: Field, heading: Heading, doubts: tuple[str, ...
     return _bounded(value, bound, doubts, bare=row.bare)
 
 
+SIGN_NOT_PRINTED = "printed without ±, taken as ±"
+
+
 def _magnitude(size: float, amount: Amount, heading: Heading, doubts: tuple[str, ...]) -> Value:
     """A ppm figure without a sign: ± where a heading prints it, the heading's bound, else a guess that is said."""
     if "typ" in (amount.bound, heading.bound) and amount.bound in (None, "typ"):
@@ -258,7 +261,7 @@ def _magnitude(size: float, amount: Amount, heading: Heading, doubts: tuple[str,
         return Value(min=-size, max=size, doubts=doubts)
     if heading.bound and not amount.bound:
         return _bounded(size, heading.bound, doubts, bare=False)
-    return Value(min=-size, max=size, doubts=(*doubts, "printed without ±, taken as ±"))
+    return Value(min=-size, max=size, doubts=(*doubts, SIGN_NOT_PRINTED))
 
 
 def _bounded(value: float, bound: str | None, doubts: tuple[str, ...], *, bare: bool) -> Value:

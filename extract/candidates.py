@@ -9,6 +9,7 @@ from functools import lru_cache
 from typing import Literal
 
 from extract import amount, trace, wording
+from extract.bounds import SIGN_NOT_PRINTED
 from extract.conditions import condition_of, kept, merged
 from extract.entries import Entry, Key, Piece, Placed, Source, Value
 from extract.fields import field_of
@@ -384,9 +385,15 @@ def _raw(entry: Entry, pieces: Iterable[Placed]) -> str:
     return " ".join(" ".join(text.split()) for text in texts if text.strip())
 
 
+_ALWAYS_SYMMETRIC = ("frequency_tolerance_ppm", "frequency_stability_ppm")
+
+
 def label_doubts(label: Label, pieces: Iterable[Placed], doubts: Iterable[str]) -> tuple[str, ...]:
     """Reasons to look at a reading: those of the amount, a label that is only nearly one, an unsure recogniser."""
     pieces, found = list(pieces), list(doubts)
+    if label.exact and label.field in _ALWAYS_SYMMETRIC and found == [SIGN_NOT_PRINTED]:
+        # Shops leave the sign out of every tolerance and stability; the label leaves no other meaning.
+        found = []
     if label.exact and not found and all(piece.confidence >= LEAST_CONFIDENCE for piece in pieces):
         return ()
     if not label.exact:
@@ -482,6 +489,27 @@ def offers_series(entry: Entry) -> bool:
     text = " ".join([*(value.piece.text for value in entry.values), *entry.conditions])
     asked = any(word in fold(text).casefold() for word in vocabulary().phrases.get("request", ()))
     return not asked and any(each.series for value in entry.values for each in read(value.piece.text, label.field))
+
+
+_NO_NUMBER = re.compile(r"^[^\d]*[^\W\d_][^\d]*$")
+
+
+def unreadable(entry: Entry) -> tuple[str, str, Where] | None:
+    """Field, text and place of a value that has ± and its unit and letters where the number should stand ("±Sppm")."""
+    label = label_of(entry)
+    text = " ".join(value.piece.text for value in entry.values)
+    folded = fold(text)
+    if label is None or not label.exact or "±" not in folded or not _NO_NUMBER.match(folded):
+        return None
+    rest = folded.replace("±", " ").strip()
+    units = [unit for at in range(len(rest)) if (unit := unit_at(rest, label.field, at)) is not None]
+    return (label.field, text, entry.where) if units and not is_unit_alone(rest, label.field) else None
+
+
+def is_unit_alone(text: str, field: str) -> bool:
+    """Whether a text is a unit of the field and nothing else."""
+    found = unit_at(text, field, 0)
+    return found is not None and found[2] >= len(text.rstrip())
 
 
 def key_candidates(ordering: Key) -> Iterator[Candidate]:

@@ -27,6 +27,7 @@ class Draft:
     `texts` are the words beside its values, for what it is not; `lines` all that its section prints, for its pads.
     `offered_modes`: those that one label offers to choose from. `crystal`: its own row calls it one; `other`: rows
     beside it do and its own does not. `by_subject`: identity entries under the name of a model in a column head.
+    `unread`: field, text and place of values beside a label that hold its unit and no number.
     """
 
     part_number: str | None = None
@@ -44,6 +45,7 @@ class Draft:
     crystal: bool = False
     other: bool = False
     by_subject: dict[str, list[Entry]] = field(default_factory=dict)
+    unread: list[tuple[str, str, Where]] = field(default_factory=list)
 
     def take_mode_and_cut(self, text: str, *, codes: bool = False) -> None:
         """Note the modes and cuts that a text prints; single letters count only in a mode's own cell (`codes`)."""

@@ -22,7 +22,7 @@ from extract.keys import choices_in, key_label
 from extract.meaning import meaning, part_tokens
 from extract.prose import is_label, pair_entries, split_pairs
 from extract.streams import Fragments, paragraph, stream_entries
-from extract.torn import torn_rows
+from extract.torn import spaced_rows, torn_rows
 from extract.vocabulary import vocabulary
 
 
@@ -75,6 +75,8 @@ def _dump(lines: Sequence[Line], index: int, items: list[Item]) -> int:
 
 def _torn(lines: Sequence[Line], index: int, items: list[Item]) -> int:
     entries, taken = torn_rows(lines, index)
+    if not entries:
+        entries, taken = spaced_rows(lines, index)
     items.extend(_text(line) for line in lines[index : index + taken])
     items.extend(entries)
     return taken

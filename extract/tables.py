@@ -128,8 +128,7 @@ MOST_ABOVE = 3
 def _repeats(known: frozenset[str], row: Row) -> bool:
     """Whether a row of a long list has a heading's text in it: its heading comes again, or another begins."""
     if isinstance(row, TextRow):
-        texts = [text for text in row.texts if text.strip()]
-        return len(texts) == 1 or not known.isdisjoint(texts)
+        return row.filled == 1 or not known.isdisjoint(row.texts)
     return len(distinct(row)) == 1 or any(cell is not None and cell.text in known for cell in row)
 
 
@@ -407,7 +406,7 @@ def _sectioned(body: list[Row], section: str) -> tuple[list[str], list[Row]]:
     sections: list[str] = []
     rows: list[Row] = []
     for row in body:
-        if isinstance(row, TextRow) and sum(map(bool, map(str.strip, row.texts))) > 1:
+        if isinstance(row, TextRow) and row.filled > 1:
             sections.append(section)
             rows.append(row)
             continue
@@ -425,8 +424,19 @@ def _without_model(head: Head) -> Head:
     return replace(head, extra=tuple(extra for extra in head.extra if not is_part_token(extra)))
 
 
+def _parted_by_gaps(heads: list[Head]) -> list[tuple[int, int]]:
+    """Groups of columns between columns without a head, where each group has a column of part numbers."""
+    gaps = [index for index, head in enumerate(heads) if not head.levels]
+    bounds = list(zip([0, *(gap + 1 for gap in gaps)], [*gaps, len(heads)], strict=True))
+    groups = [(first, last) for first, last in bounds if last > first]
+    named = all(sum(head.identity == "part_number" for head in heads[first:last]) == 1 for first, last in groups)
+    return groups if named else []
+
+
 def _folds(heads: list[Head]) -> list[tuple[int, int]]:
     """Groups of columns: one, or several where the same sequence of headings repeats."""
+    if len(abreast := _parted_by_gaps(heads)) > 1:
+        return abreast
     names = [_without_model(head).name or head.role for head in heads]
     for width in range(2, len(names) // 2 + 1):
         if len(names) % width:

@@ -35,7 +35,8 @@ class Token:
 # Which meaning a word has that stands in several lists of the wording files: the first of these.
 _WORD_KINDS = (
     "first_year", "ten_years", "five_years", "per_year", "others", "request", "standard", "recommended", "min", "typ",
-    "max", "series", "plus_minus", "see", "except", "between", "to", "or", "from", "for", "at", "minus", "plus", "above", "below",
+    "max", "series", "plus_minus", "see", "except", "between", "to", "or", "from", "for", "at", "minus", "plus",
+    "above", "below",
 )  # fmt: skip
 _MARKS = {
     "±": "pm", "~": "to", "…": "to", "<": "compare", "≤": "compare", ">": "compare", "≥": "compare",

@@ -23,6 +23,7 @@ _NUMBER = re.compile(r"[-+±≤≥<>~]?\s?\d+(?:[.,]\d+)*")
 _EMPTY = re.compile(r"[-–—]+")
 _RANGED = ("operating_temperature_c", "storage_temperature_c", "frequency_mhz", "turnover_temperature_c")
 LEAST_ROWS = 3
+LONGEST_HEADINGS = 80
 
 
 @dataclass(slots=True)
@@ -48,6 +49,51 @@ def torn_rows(lines: Sequence[Line], start: int) -> tuple[list[Entry], int]:
     if len(told) < LEAST_ROWS:
         return [], 0
     return [entry for row in rows for entry in _entry(row, bounds)], index - start
+
+
+def spaced_rows(lines: Sequence[Line], start: int) -> tuple[list[Entry], int]:
+    """Rows that single spaces hold together under a line of headings ("Parameter Min Typ Max Unit"): "ESR - - 80 Ω".
+
+    Each row has as many numbers or dashes as there are bounds, and what stands behind them is the unit.
+    """
+    bounds = _bounds_on_one_line(lines[start])
+    if len(bounds) < 2:
+        return [], 0
+    entries: list[Entry] = []
+    index = start + 1
+    while index < len(lines) and (entry := _spaced_row(lines[index], bounds)) is not None:
+        entries.append(entry)
+        index += 1
+    return (entries, index - start) if len(entries) >= LEAST_ROWS else ([], 0)
+
+
+def _bounds_on_one_line(line: Line) -> list[str]:
+    if len(line.segments) != 1 or len(line.text) > LONGEST_HEADINGS or any(c.isdigit() for c in line.text):
+        return []
+    words = fold(line.text).split()
+    roles = [meaning(word).role for word in words]
+    bounds = [role for role in roles if role in BOUNDS]
+    return bounds if words and all(role in _HEADS for role in roles) and len(set(bounds)) == len(bounds) else []
+
+
+def _spaced_row(line: Line, bounds: Sequence[str]) -> Entry | None:
+    words = fold(line.text).split() if len(line.segments) == 1 else []
+    cells = [index for index, word in enumerate(words) if _NUMBER.fullmatch(word) or _EMPTY.fullmatch(word)]
+    if len(cells) < len(bounds):
+        return None
+    first, last = cells[-len(bounds)], cells[-1]
+    label, unit = " ".join(words[:first]), " ".join(words[last + 1 :])
+    known = meaning(label)
+    if last - first != len(bounds) - 1 or not (known.label or known.trap) or (unit and not _is_printed_unit(unit)):
+        return None
+    placed = zip(bounds, words[first : last + 1], strict=True)
+    values = tuple(Value(Piece(w, line.where), bound=BOUNDS[b]) for b, w in placed if not _EMPTY.fullmatch(w))
+    size, _, year = unit.partition("/")
+    return Entry(Piece(label, line.where), values, size, "", (f"/{year}",) if year else (), source="pair")
+
+
+def _is_printed_unit(text: str) -> bool:
+    return is_unit(text) or is_unit(text.split("/", maxsplit=1)[0])
 
 
 def _headings(lines: Sequence[Line], start: int) -> tuple[list[str], int]:
