@@ -44,8 +44,9 @@ Key = TypeVar("Key", bound=Hashable)
 
 def numbered(keys: Iterable[Key]) -> tuple[list[int], list[Key]]:
     """Which of the distinct keys each one is, and these in the order met."""
-    known: dict[Key, int] = {}
-    return [known.setdefault(key, len(known)) for key in keys], list(known)
+    listed = list(keys)
+    known = {key: number for number, key in enumerate(dict.fromkeys(listed))}
+    return list(map(known.__getitem__, listed)), list(known)
 
 
 def cases_of(*columns: Iterable[int]) -> tuple[list[int], list[tuple[int, ...]]]:

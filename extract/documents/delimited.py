@@ -109,8 +109,8 @@ def _records(lines: list[str], delimiter: str) -> tuple[_Records, tuple[Note, ..
 
 
 def _table(records: _Records, skipped: int) -> Table:
-    texts = [[cell.strip() for cell in cells] for cells in records.texts]
-    width = max(len(cells) for cells in texts)
+    texts = records.texts
+    width = max(map(len, texts))
     cells = placed_cells(texts, width, _LinePlaces(records, skipped))
     return Table(cells, len(texts), width, Where(line=1 + skipped, cell="A1"))
 
@@ -120,7 +120,12 @@ class _LinePlaces:
 
     def __init__(self, records: _Records, skipped: int) -> None:
         self._first_lines = [line + skipped for line in records.first_lines]
-        self._broken = {row: texts for row, texts in enumerate(records.texts) if any("\n" in text for text in texts)}
+        following = [*records.first_lines[1:], records.first_lines[-1] + records.longest]
+        self._broken = {
+            row: records.texts[row]
+            for row, (first, after) in enumerate(zip(records.first_lines, following, strict=True))
+            if after - first > 1 and any("\n" in text for text in records.texts[row])
+        }
 
     def __call__(self, row: int, column: int) -> Where:
         line = self._first_lines[row]

@@ -89,6 +89,11 @@ class TextRow(Sequence[Cell | None]):
     def __len__(self) -> int:
         return self.width
 
+    @property
+    def filled(self) -> int:
+        """How many of its cells hold text."""
+        return len(self.texts) - self.texts.count("")
+
     @overload
     def __getitem__(self, index: int) -> Cell | None: ...
     @overload
@@ -157,9 +162,17 @@ class RowCells(GridCells):
 def placed_cells(
     rows: list[list[str]], width: int, placer: Placer, merged: Mapping[tuple[int, int], Cell] | None = None
 ) -> RowCells:
-    """Cells of all texts that are not empty; a text that repeats is held once."""
-    known: dict[str, str] = {}
-    return RowCells([[known.setdefault(text, text) for text in texts] for texts in rows], width, placer, merged)
+    """Cells of all texts that are not blank, without the space around them; a text that repeats is held once."""
+    known = _Stripped()
+    return RowCells([list(map(known.__getitem__, texts)) for texts in rows], width, placer, merged)
+
+
+class _Stripped(dict[str, str]):
+    """Texts without the space around them, each stripped once."""
+
+    def __missing__(self, text: str) -> str:
+        bare = text.strip()
+        return self.setdefault(text, self.setdefault(bare, bare))
 
 
 @contextmanager
