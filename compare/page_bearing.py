@@ -34,7 +34,7 @@ def chosen_at(contest: Ranked) -> int:
 
 def bears(bench: Bench, contest: Ranked | None) -> None:
     session.section("How much ESR this circuit can bear")
-    rows, c0 = bearing.bearings(bench, None if contest is None else contest.reckoning)
+    rows, c0 = _bearings(session.key_of(bench, session.sheets()), bench, contest)
     heads, cells = bearing_text.bearing_table(rows, bench)
     st.html(review_html.table_html(heads, cells, (0, 1, 2, 3)))
     st.html(f'<p class="qf-small">{bearing_text.bearing_note(c0, parts=contest is not None)}</p>')
@@ -55,6 +55,11 @@ def advice(bench: Bench, contest: Ranked) -> None:
             st.markdown(pieces.plain(said) + ".", width="content")
     for said in dossier.review.get("advice_messages", ()):
         st.markdown(pieces.plain(answers.told(said)))
+
+
+@st.cache_resource(max_entries=16, show_spinner=False)
+def _bearings(key: str, _bench: Bench, _contest: Ranked | None) -> tuple[list[bearing.Bearing], float]:  # noqa: ARG001
+    return bearing.bearings(_bench, None if _contest is None else _contest.reckoning)
 
 
 @st.cache_resource(max_entries=16, show_spinner=False)

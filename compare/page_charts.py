@@ -47,7 +47,7 @@ def draw(chart: Chart, *, key: str, tables: bool = False, save: bool = False) ->
 
 
 def heading(chart: Chart, key: str) -> None:
-    with st.container(horizontal=True, vertical_alignment="center", gap="small"):
+    with st.container(horizontal=True, vertical_alignment="center", gap="small", key=f"chart_head_{key}"):
         session.section(chart.title)
         with st.popover("Save", type="tertiary", key=f"{key}_save", help=f"{chart.title}: picture or figures"):
             for label, name, made in files(chart):

@@ -31,6 +31,7 @@ from compare.shown import NAMES, how, value_text
 from compare.working import words, working
 
 NONE_OFFERS = "Choose says what each of them offers instead."
+MOST_OFFERED = 200
 MEASURED = ("stopping_resistor_ohm", "frequency_mhz", "startup_ms", "probe_pf", "probe_at")
 
 
@@ -77,8 +78,10 @@ def choose_part(contest: Ranked) -> int:
         st.session_state.chosen = known[st.session_state.review_part]
         session.put_slot("selection", {**session.slot("selection"), "part": list(st.session_state.chosen)})
 
+    # Of a list of thousands the first, which are the best, and the one chosen.
+    offered = sorted({*range(min(len(known), MOST_OFFERED)), at})
     st.session_state.review_part = at
-    st.selectbox("Part under review", range(len(known)), format_func=name, key="review_part", on_change=chosen)
+    st.selectbox("Part under review", offered, format_func=name, key="review_part", on_change=chosen)
     return at
 
 
