@@ -72,7 +72,7 @@ def lines_html(lines: Sequence[SwapLine], palette: Palette, *, levers: bool) -> 
     heads += [("lever", "room used │ won", 15)] if levers else []
     heads += [("", "Candidate", 13), ("n", "Difference", 10), ("rel", "Relation", 12)]
     heads.append(
-        ("", "What it does here" if levers else "What is to be said", 100 - sum(width for _, _, width in heads))
+        ("", "What it does here" if levers else "To note", 100 - sum(width for _, _, width in heads))
     )
     columns = "".join(f'<col style="width:{width}%">' for _, _, width in heads)
     head = "".join(f'<th class="{kind}">{escape(name)}</th>' for kind, name, _ in heads)
