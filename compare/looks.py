@@ -32,11 +32,16 @@ TELLING = 0.02
 
 @dataclass(frozen=True)
 class Other:
-    """Another meaning of a reading: the button that takes it, the reading then, and why it would be so."""
+    """Another meaning of a reading: the button that takes it, the reading then, why it would be so.
+
+    `words` begin the sentence about what it would change. `likely`: what was read cannot be, this is probably meant.
+    """
 
     button: str
     reading: Reading
     why: str
+    words: str
+    likely: bool = True
 
 
 @dataclass(frozen=True)
@@ -114,7 +119,7 @@ def _as_rl(reading: Reading, part: Part) -> Other | None:
         return None
     ratio = (1 + shunt / load) ** 2
     why = f"RL at the rated load {exact(load)} pF: R1 = RL/(1 + {exact(shunt)} pF/{exact(load)} pF)²"
-    return Other("Take as RL", _scaled(reading, 1 / ratio, digits=4), why)
+    return Other("Take as RL", _scaled(reading, 1 / ratio, digits=4), why, "Taken as RL", likely=False)
 
 
 def _central(part: Part, field: str) -> float | None:
@@ -128,7 +133,7 @@ def _swapped(reading: Reading) -> Other | None:
     if stated == sorted(stated) or reading.min is None or reading.max is None or reading.typ is not None:
         return None
     turned = _entered(reading, min=reading.max, max=reading.min)
-    return Other("Swap the ends", turned, "least and greatest were read the wrong way round")
+    return Other("Swap the ends", turned, "least and greatest were read the wrong way round", "With its ends swapped")
 
 
 def _slipped(reading: Reading, part: Part) -> Other | None:
@@ -140,7 +145,8 @@ def _slipped(reading: Reading, part: Part) -> Other | None:
     for slip in SLIPS:
         if all(known.plausible(value * slip, tuning_fork=fork) for value in values):
             meant = _scaled(reading, slip, digits=9)
-            return Other(f"Take {value_text(meant)}", meant, "a prefix of the unit was misprinted or misread")
+            why, value = "a prefix of the unit was misprinted or misread", value_text(meant)
+            return Other(f"Take {value}", meant, why, f"With {value}")
     return None
 
 

@@ -80,10 +80,11 @@ def doubtful(part: PartLines, look: Look, queue: Sequence[Look]) -> None:
     told = f"{look.reason} {consequence(part, look)}".strip()
     st.markdown(f"Read **{pieces.plain(shown.value_text(look.now))}**. {pieces.plain(told)}")
     with st.container(horizontal=True, gap="small"):
+        likely = look.other is not None and look.other.likely
         if look.can_keep:
-            answer(look.keep, "keep", "K", as_read, part, look.reading, primary=True)
+            answer(look.keep, "keep", "K", as_read, part, look.reading, primary=not likely)
         if look.other is not None:
-            answer(look.other.button, "other", "L", take_other, part, look)
+            answer(look.other.button, "other", "L", take_other, part, look, primary=likely)
         answer("Correct…", "correct", "E", edit)
         answer("Not on the sheet", "gone", "O", take_away, part, look.reading)
         if len(queue) > 1:
@@ -149,8 +150,7 @@ def consequence(part: PartLines, look: Look) -> str:
     before, after = (_judged(part, one, at) for at, one in enumerate((work, then)))
     if before is None or after is None:
         return "" if before is None else "Without it the part does not offer the frequency asked."
-    words = "Without it" if look.other is None else f"{look.other.button.replace('Take', 'Taken')}"
-    return looks.consequence(before, after, words.replace("Swap the ends", "With its ends swapped"))
+    return looks.consequence(before, after, "Without it" if look.other is None else look.other.words)
 
 
 def _judged(part: PartLines, work: Work, variant: int) -> Any:
@@ -206,7 +206,7 @@ def take_other(part: PartLines, look: Look) -> None:
     on, other = after(part, look.reading), look.other
     make(
         _correction(part, look.reading, "value", new=other.reading, why=other.why),
-        f"{named(part, look.reading)}: {other.button.lower()}",
+        f"{named(part, look.reading)}: {other.button[:1].lower()}{other.button[1:]}",
     )
     go_to(*on)
 

@@ -42,6 +42,8 @@ def start() -> None:
         else:
             state.ident = keeping.new_ident()
             open_named(sys.argv[1:])
+            # What the command line named is where the work begins, and no step to take back.
+            state.history = History()
     # Going to another view empties the address.
     if st.query_params.get("work") != state.ident:
         st.query_params["work"] = state.ident

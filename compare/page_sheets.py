@@ -17,6 +17,7 @@ from compare.folio import SUFFIX
 from compare.page_copy import copy_button
 from compare.page_looks import add_reading, at_look, go_to, put_back_part, reading_area
 from compare.page_shared import save_buttons
+from compare.page_work import kept_works
 from compare.sheet_lines import PartLines
 from compare.sheets_json import write_sheets
 from compare.work import OpenSheet
@@ -35,6 +36,7 @@ def sheets_view() -> None:
         if chosen is None:
             session.title("No sheets yet")
             st.markdown(NO_SHEETS)
+            kept_works("page")
             return
         st.fragment(part_area)()
 
@@ -210,12 +212,12 @@ def readings_of(one: OpenSheet, part: PartLines) -> None:
 def columns() -> dict[str, Any]:
     text = st.column_config.TextColumn
     return {
-        "Reading": text(width=152),
+        "Reading": text(width=146),
         "Min": text(width=52, alignment="right"),
         "Typ": text(width=92, alignment="right"),
         "Max": text(width=56, alignment="right"),
-        "Unit": text(width=52),
-        "How we have it": text(width=112),
+        "Unit": text(width=48),
+        "How we have it": text(width=116),
         "Sheet says": text(width=92),
     }
 

@@ -150,15 +150,7 @@ def kept_here() -> None:
     st.markdown(
         f":small[Kept on this machine after each change, in {pieces.plain(str(keeping.state_folder() / ident))}]"
     )
-    others = [one for one in keeping.kept_works() if one.ident != ident]
-    for one in others[: keeping.MOST_LISTED]:
-        told = f"{one.name or 'Work'}, {one.saved.replace('T', ' ')[:16]}, {counted(one.sheets, 'sheet')}"
-        with st.container(horizontal=True, gap="small", vertical_alignment="center"):
-            st.markdown(f":small[{pieces.plain(told)}]", width="stretch")
-            st.button("Open", key=f"recall_{one.ident}", on_click=take_up, args=(one.ident,))
-            st.button("Forget", key=f"forget_{one.ident}", on_click=session.forget_other, args=(one.ident,))
-    if len(others) > keeping.MOST_LISTED:
-        st.markdown(f":small[and {len(others) - keeping.MOST_LISTED} more]")
+    kept_works("menu")
     if st.session_state.get("forgetting"):
         st.markdown("Sheets, corrections and circuits of this work are removed from this machine.")
         with st.container(horizontal=True, gap="small"):
@@ -166,6 +158,21 @@ def kept_here() -> None:
             st.button("Keep it", key="forget_not", on_click=ask_forget, args=(False,))
     else:
         st.button("Forget this work", key="forget", on_click=ask_forget, args=(True,))
+
+
+def kept_works(place: str) -> None:
+    """The other works that lie on this machine, to be opened or forgotten; `place` tells the two lists apart."""
+    others = [one for one in keeping.kept_works() if one.ident != st.session_state.ident]
+    if others:
+        st.markdown(":gray[:small[Other work kept on this machine:]]")
+    for one in others[: keeping.MOST_LISTED]:
+        told = f"{one.name or 'Work'}, {one.saved.replace('T', ' ')[:16]}, {counted(one.sheets, 'sheet')}"
+        with st.container(horizontal=True, gap="small", vertical_alignment="center"):
+            st.markdown(f":small[{pieces.plain(told)}]", width=280)
+            st.button("Open", key=f"recall_{place}_{one.ident}", on_click=take_up, args=(one.ident,))
+            st.button("Forget", key=f"forget_{place}_{one.ident}", on_click=session.forget_other, args=(one.ident,))
+    if len(others) > keeping.MOST_LISTED:
+        st.markdown(f":small[and {len(others) - keeping.MOST_LISTED} more]")
 
 
 def take_up(ident: str) -> None:

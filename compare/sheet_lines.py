@@ -13,7 +13,7 @@ from compare.shown import HOW, LOOK, NAMES, bound_text, how, options_text, part_
 from compare.work import Work
 from extract.model import Part, Reading, SpecSheet
 
-ENTERED, GONE = "✎", "not on the sheet"
+ENTERED, GONE = "✎", "not on sheet"
 FACTS = {
     "mode": "Mode",
     "cut": "Cut",
@@ -90,25 +90,20 @@ def lines_frame(shown: PartLines) -> pd.DataFrame:
 
 def _row(line: Line) -> tuple[str, ...]:
     reading = line.shown
-    return (
-        NAMES[reading.field],
-        bound_text(reading, reading.min),
-        options_text(reading) if reading.options else bound_text(reading, reading.typ),
-        bound_text(reading, reading.max),
-        unit_of(reading),
-        how_line(line),
-        sheet_says(line),
-        when_text(reading.when),
-    )
+    middle = options_text(reading) if reading.options else bound_text(reading, reading.typ)
+    values = (bound_text(reading, reading.min), middle, bound_text(reading, reading.max), unit_of(reading))
+    if line.now is None:
+        values = ("", "", "", "")
+    return NAMES[reading.field], *values, how_line(line), sheet_says(line), when_text(reading.when)
 
 
 def how_line(line: Line) -> str:
-    """`stated p.1`, `☞ look p.2`, `✎ entered`, `✎ not on the sheet`, `stated p.1, looked at`."""
+    """`stated p.1`, `☞ look p.2`, `✎ entered`, `✎ not on sheet`, `stated p.1, seen`."""
     if line.now is None:
         return f"{ENTERED} {GONE}"
     if line.correction is None:
         return how(line.now)
-    return how(line.now) + ", looked at" if line.correction.what == "as read" else HOW["entered"]
+    return how(line.now) + ", seen" if line.correction.what == "as read" else HOW["entered"]
 
 
 def sheet_says(line: Line) -> str:
@@ -139,7 +134,7 @@ def history_lines(one: Correction | None) -> list[str]:
     who = ", ".join(filter(None, (one.by, one.at.replace("T", " ")[:16])))
     done = {
         "as read": "Looked at and kept as read",
-        "not on the sheet": "Taken away: not on the sheet",
+        "not on the sheet": "Said not to be on the sheet",
         "added": "Added",
     }.get(one.what, "Corrected")
     said = [f"{done} by {who}." if who else f"{done}."]

@@ -91,7 +91,7 @@ def test_one_key_settles_it_and_undo_brings_it_back(page):
 
 def test_kept_as_read_it_stays_stated(page):
     press(drop(page, ("offer.txt", DOUBTFUL)), "look_keep")
-    assert readings(page).loc["ESR", "How we have it"] == "stated line 7, looked at"
+    assert readings(page).loc["ESR", "How we have it"] == "stated line 7, seen"
 
 
 def test_later_goes_to_the_next_one_and_round(page):
@@ -176,7 +176,7 @@ def test_the_mode_is_a_word_that_can_be_entered(page):
 def test_a_reading_not_on_the_sheet_is_out_and_comes_back_with_the_sheets_values(page):
     drop(page, ("offer.txt", DOUBTFUL))
     press(page, "look_gone")
-    assert readings(page).loc["ESR", "How we have it"] == "✎ not on the sheet"
+    assert readings(page).loc["ESR", "How we have it"] == "✎ not on sheet"
     assert "Not stated: ESR." in said(page)
     press(page, "put_back_part")
     assert readings(page).loc["ESR", "How we have it"].startswith("☞ look")
@@ -243,6 +243,28 @@ def test_an_empty_page_keeps_nothing_and_a_dropped_sheet_is_kept(page, state_fol
     drop(page, ("offer.txt", hand_made.MAIL))
     (kept,) = keeping.kept_works()
     assert (kept.ident, kept.sheets) == (page.session_state.ident, 1)
+
+
+def test_other_work_on_this_machine_is_offered_on_an_empty_page(page):
+    drop(page, ("offer.txt", DOUBTFUL))
+    other = start()
+    assert "Other work kept on this machine:" in said(other)
+    other.session_state.work_menu = True
+    assert not other.run().exception
+    press(other, f"recall_page_{page.session_state.ident}")
+    assert other.session_state.work == page.session_state.work
+    third = start()
+    press(third, f"forget_page_{page.session_state.ident}")
+    assert "Other work kept on this machine:" not in said(third)
+    assert keeping.kept_works() == []
+
+
+def test_what_the_command_line_named_is_no_step_to_undo(monkeypatch, tmp_path):
+    (tmp_path / "bench.toml").write_text(hand_made.BENCH_TEXT, encoding="utf-8")
+    monkeypatch.setattr("sys.argv", ["page.py", "--bench", str(tmp_path / "bench.toml"), "--"])
+    page = start()
+    assert page.session_state.work.desk.bench is not None
+    assert page.button(key="undo").disabled
 
 
 def test_a_work_file_that_is_dropped_is_taken_up(page, tmp_path):

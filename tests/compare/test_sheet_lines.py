@@ -70,11 +70,11 @@ def test_a_corrected_reading_shows_both_values():
 
 
 def test_a_reading_that_is_not_on_the_sheet_stays_in_its_row():
-    assert frame(correction(ESR, "not on the sheet"))["How we have it"]["ESR"] == "✎ not on the sheet"
+    assert frame(correction(ESR, "not on the sheet"))["How we have it"]["ESR"] == "✎ not on sheet"
 
 
 def test_a_reading_kept_as_read_says_so():
-    assert frame(correction(ESR, "as read"))["How we have it"]["ESR"] == "stated line 8, looked at"
+    assert frame(correction(ESR, "as read"))["How we have it"]["ESR"] == "stated line 8, seen"
 
 
 def test_an_added_reading_is_marked_and_was_not_stated():
