@@ -13,6 +13,7 @@ from dataclasses import replace
 from typing import Any, Self
 
 import numpy as np
+from numpy.typing import NDArray
 
 from compare.bench import Bench
 from compare.lot import C1_FROM, Coded, Joined, Lot, Separate, Whole, distinct, together
@@ -20,6 +21,7 @@ from compare.offer import (
     FORK_FIELDS,
     AtSetting,
     Band,
+    Match,
     Offer,
     Settled,
     ageing_for,
@@ -45,34 +47,48 @@ Said = list[tuple[str | None, str]]
 
 def list_lot(sheet: SpecSheet, parts: PartList, bench: Bench) -> tuple[Lot, Said]:
     """The parts of a list that offer the bench's frequency, and (part number, why) of each that does not."""
-    frequency = parts.stated.get("frequency_mhz")
-    if frequency is None:
-        return Separate([]), [(number, match_readings((), 0.0).said) for number in parts.part_numbers]
-    codes = np.asarray(frequency.index)
-    asked = bench.requirement.frequency_mhz
-    matches = [match_readings(readings, asked) for readings in frequency.templates]
-    offered = np.array([match.printed_mhz is not None for match in matches], dtype=bool)[codes]
-    said = [
-        (parts.part_numbers[at], matches[code].said)
-        for at, code in zip(np.flatnonzero(~offered).tolist(), codes[~offered].tolist(), strict=True)
-    ]
-    rows = np.flatnonzero(offered)
-    by_row = _mode_hangs_on_readings(parts, rows)
+    matches, codes = _matched(parts, bench)
+    offered = offering(parts, bench)
+    others = np.flatnonzero(~offered)
+    said = [(parts.part_numbers[at], matches[code].said) for at, code in zip(others, codes[others], strict=True)]
+    return rows_lot(sheet, parts, bench, np.flatnonzero(offered)), said
+
+
+def offering(parts: PartList, bench: Bench) -> NDArray[np.bool_]:
+    """(parts,) which of them offer the bench's frequency."""
+    matches, codes = _matched(parts, bench)
+    offered: NDArray[np.bool_] = np.array([match.printed_mhz is not None for match in matches], dtype=np.bool_)[codes]
+    return offered
+
+
+def _matched(parts: PartList, bench: Bench) -> tuple[list[Match], Whole]:
+    """How each distinct frequency stands to the bench's, and which of them each part has."""
+    stated, asked = parts.stated.get("frequency_mhz"), bench.requirement.frequency_mhz
+    if stated is None:
+        return [match_readings((), asked)], np.zeros(len(parts), dtype=int)
+    return [match_readings(readings, asked) for readings in stated.templates], np.asarray(stated.index)
+
+
+def rows_lot(sheet: SpecSheet, parts: PartList, bench: Bench, rows: Whole) -> Lot:
+    """Some rows, all of which offer the bench's frequency, as a lot."""
+    if not rows.size:
+        return Separate([])
+    by_row, asked = _mode_hangs_on_readings(parts, rows), bench.requirement.frequency_mhz
     if not by_row.any():
-        return Listed(sheet, parts, bench, rows), said
+        return Listed(sheet, parts, bench, rows)
     alone = [
         make_offer(sheet, part := parts[at], match_readings(_readings(part, "frequency_mhz"), asked), bench)
         for at in rows[by_row].tolist()
     ]
     order = np.argsort(np.concatenate([rows[~by_row], rows[by_row]]), kind="stable")
-    return Joined([Listed(sheet, parts, bench, rows[~by_row]), Separate(alone)]).take(order), said
+    return Joined([Listed(sheet, parts, bench, rows[~by_row]), Separate(alone)]).take(order)
 
 
 def _readings(part: Any, field: str) -> list[Reading]:
     return [reading for reading in part.readings if reading.field == field]
 
 
-def _mode_hangs_on_readings(parts: PartList, rows: Whole) -> np.ndarray[Any, np.dtype[np.bool_]]:
+def _mode_hangs_on_readings(parts: PartList, rows: Whole) -> NDArray[np.bool_]:
     """Rows that state no mode, of which some reading holds for one: any cell may then settle what the others mean."""
     unknown = np.array([one.mode is None for one in parts.identity.distinct], dtype=np.bool_)
     unknown = unknown[np.asarray(parts.identity.index)[rows]]

@@ -3,23 +3,27 @@
 import json
 import subprocess
 
-from bench_substitute import COMMAND, HEAD, INCUMBENT, RADIO, ROOT, make_list, run
+import pytest
+from bench_substitute import COMMAND, RADIO, ROOT, run, write_all
 
 
-def written(folder, rows):
-    (folder / "list.csv").write_text(make_list(rows), encoding="utf-8")
-    (folder / "incumbent.csv").write_text(f"{HEAD}\n{INCUMBENT}\n", encoding="utf-8")
+@pytest.fixture(scope="module")
+def whole(tmp_path_factory):
+    folder = tmp_path_factory.mktemp("whole")
+    write_all(folder, 20_000)
     return folder
 
 
-def test_the_substitutes_in_a_list_of_twenty_thousand_rows_take_a_few_seconds_of_the_processor(tmp_path):
+@pytest.mark.parametrize("listed", ["list.csv", "alike.csv", "list.xlsx", "alike.xlsx"])
+def test_the_substitutes_in_a_list_of_twenty_thousand_rows_take_a_few_seconds_of_the_processor(whole, listed):
     """3 s on two cores of their own; a machine that is shared gets twice that."""
-    _, processor = run(written(tmp_path, 20_000), "--bench", str(RADIO))
+    _, processor = run(whole, "--bench", str(RADIO), listed=listed)
     assert processor <= 6.0
 
 
 def test_a_list_is_ranked_with_its_near_misses_and_what_was_passed_over_is_counted(tmp_path):
-    folder = written(tmp_path, 3_000)
+    folder = tmp_path
+    write_all(folder, 3_000)
     names = [str(folder / "incumbent.csv"), str(folder / "list.csv")]
     done = subprocess.run(
         [*COMMAND, "substitute", *names, "--bench", str(RADIO), "--json"], cwd=ROOT, capture_output=True, check=False
