@@ -98,6 +98,18 @@ def _dossier(key: str, at: int, _contest: Ranked) -> Dossier:  # noqa: ARG001
     return Dossier(reviewed(_contest.reckoning, at), _contest.reckoning, at)
 
 
+@st.cache_resource(max_entries=32, show_spinner="Trying single changes …")
+def _single_changes(key: str, _dossier: Dossier) -> list[str]:  # noqa: ARG001
+    from compare.cures import cures
+
+    return [one.message[:1].upper() + one.message[1:] + "." for one in cures(_dossier.reckoning, _dossier.at)]
+
+
+def single_changes(of: Dossier) -> list[str]:
+    """Every single change that would turn what falls short, as sentences."""
+    return _single_changes(f"{session.key_of(of.bench, session.sheets())} {of.at}", of)
+
+
 def dossier(contest: Ranked, at: int, bench: Bench) -> Dossier | None:
     """One part's dossier, kept while neither sheets nor bench change; None where that went wrong, which was told."""
     key = session.key_of(bench, session.sheets())

@@ -169,12 +169,25 @@ def to_do(dossier: Dossier) -> None:
         with st.expander("Load capacitors, and what else would help"):
             for line in lines:
                 st.markdown(f"- {line}")
+    if review["verdict"] == "falls short":
+        single_changes(dossier)
     with st.expander("Crystal as a SPICE subcircuit"):
         subcircuits(dossier)
     with st.expander("Cautions"):
         for caution in CAUTIONS:
             st.markdown(f"- {caution}")
     st.markdown(f":gray[:small[{PRIVACY}]]")
+
+
+def single_changes(dossier: Dossier) -> None:
+    """What one change alone would make it meet; tried only when asked for: each goes through the whole chain."""
+    if not st.toggle("Try single changes", key="single_changes", help="Each through the whole chain: about a second"):
+        return
+    found = session.guarded("trying single changes", lambda: page_charts.single_changes(dossier))
+    for said in found or ():
+        st.markdown(f"- {pieces.plain(answers.told(said))}")
+    if found == []:
+        st.markdown("No single change would do.")
 
 
 def subcircuits(dossier: Dossier) -> None:

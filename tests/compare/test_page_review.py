@@ -92,3 +92,12 @@ def test_text_of_a_sheet_never_becomes_markup(page):
     to(open_bench(drop(page, text=bad)), "review")
     for element in page.html:
         assert "<script>" not in element.value
+
+
+def test_single_changes_are_tried_when_asked_for(page):
+    bench = hand_made.BENCH_TEXT.replace("margin = 5.0", "margin = 20.0")
+    to(open_bench(drop(page), bench), "review")
+    assert "would meet" not in said(page)
+    page.toggle(key="single_changes").set_value(True).run()
+    assert not page.exception
+    assert "A nominal transconductance of at least" in said(page)
