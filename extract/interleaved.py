@@ -13,6 +13,8 @@ from extract.groups import read_items
 from extract.tokens import tokens
 
 LEAST_NAMES = 5
+# A dump of a whole sheet in one line is no shorter.
+LEAST_LENGTH = 200
 _CELSIUS = re.compile(r"(?<=°)C|(?<=°\s)C")
 _BETWEEN = 25
 _SIGN = re.compile(r"[-+±≤≥<>~]?\s?$")
@@ -56,6 +58,16 @@ def interleaved(text: str) -> list[tuple[str, str]] | None:
     if len(pairs) < 2:
         return None
     return [pair for block in blocks for pair in _read(text, block) if _states(*pair)]
+
+
+def left_out(text: str) -> list[str]:
+    """The fields that such a dump names and whose values cannot be told apart; empty for any other text."""
+    told = interleaved(text) if len(text) > LEAST_LENGTH else None
+    if told is None:
+        return []
+    named = [name.field for block in _blocks(text, _words(text)) for name in block.names]
+    read = {known.field for label, _ in told if (known := wording.read_label(label)) is not None}
+    return [field for field in dict.fromkeys(named) if field not in read]
 
 
 def _words(text: str) -> list[_Word]:

@@ -12,11 +12,12 @@ from extract.blocks import Blocks
 from extract.candidates import entry_candidates, key_candidates, label_of, offers_series, read, unreadable
 from extract.drafts import Draft, cuts_in, modes_in
 from extract.entries import Entry, Key, Listing, Text
-from extract.fields import field_of
+from extract.fields import field_of, fields
 from extract.finish import CRYSTAL_FIELDS, inherit, lacks_crystal, part_of
 from extract.fold import fold
 from extract.footnotes import noted_candidates
 from extract.identity import FIRST_LINES, maker_of, package_in, part_number_of, texts_of
+from extract.leftovers import leftovers
 from extract.lists import listing_drafts
 from extract.meaning import meaning, part_tokens
 from extract.model import Note, Part
@@ -72,6 +73,11 @@ def parts_of(blocks: Blocks) -> Found:
         finished += _finished(piece, maker, found)
     found.parts = together(finished)
     _note_missing_frequencies(found)
+    if found.parts:
+        count = len(found.parts)
+        found.notes += leftovers(
+            blocks.items, [name for name in fields() if len(numbers_without(found.parts, name)) < count]
+        )
     return found
 
 
