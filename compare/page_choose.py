@@ -8,7 +8,19 @@ from typing import Any
 
 import streamlit as st
 
-from compare import answers, approval, charts, choose_shown, choosing, curves, export, pieces, review_shown
+from compare import (
+    answers,
+    approval,
+    bearing_text,
+    charts,
+    choose_shown,
+    choosing,
+    curves,
+    export,
+    page_charts,
+    pieces,
+    review_shown,
+)
 from compare import page_session as session
 from compare.bench import Bench
 from compare.choosing import Candidate, Sifted
@@ -17,6 +29,7 @@ from compare.page_copy import copy_button, figures
 from compare.page_filters import asked, filter_line, weights, weights_line
 from compare.page_shared import cautions, ready, review_of, save_buttons
 from compare.page_supply import supply_editor
+from compare.page_trial import try_it
 from compare.ranking import Ranked
 from compare.sheet_lines import corrections_table
 from compare.sheets_json import notes_of
@@ -178,6 +191,11 @@ def actions(sifted: Sifted, contest: Ranked) -> None:
         return {**told, "notes": [*notes_of(sheets), *told["notes"]]}
 
     save_buttons("ranking", table(view, answers.STRIPS), tables, result, key="ranking")
+    with st.expander("All numbers", key="all_numbers", on_change="rerun") as opened:
+        if opened.open:
+            heads, wide = export.rank_table([one.row for one in view], supplies=[one.supply for one in view])
+            columns = dict(zip(heads, zip(*wide, strict=True), strict=True))
+            st.dataframe(columns, hide_index=True, key="wide_table", alt="All numbers of the rows in view")
     supply_editor(view, sifted.shown)
 
 
@@ -221,15 +239,28 @@ def why(picked: Candidate, sifted: Sifted, contest: Ranked, bench: Bench) -> Non
         return
     if said := answers.chosen_text(picked.row):
         st.markdown(f":gray[{pieces.plain(said)}]")
-    picture(charts.slack_chart(answers.slack_rows(review, bench)).draw(session.palette()), key="slack", widest=SIZE)
+    slack = charts.slack_chart(answers.slack_rows(review, bench))
+    picture(slack.draw(session.palette()), key="slack", widest=SIZE)
     st.markdown(":gray[:small[▮ worst case · ○ nominal · hatched: not met · dotted: not known]]")
     reasons_of(review, bench)
-    load_chart(picked, contest)
-    for line in answers.advice_lines(review)[:1]:
-        st.markdown(line)
+    drawn = [slack, *load_chart(picked, contest)]
+    with st.expander("The same as tables"):
+        for chart in drawn:
+            page_charts.table(chart.table, f"{chart.name}_table")
+    advice(review)
     onward(picked)
     if known := choose_shown.supply_rows(picked):
         figures(pieces.supply_html(known), key="supply")
+
+
+def advice(review: answers.Row) -> None:
+    """What would help most, to be tried at once; all views follow a trial."""
+    for said, values, name in bearing_text.advice_rows(review)[:1]:
+        with st.container(horizontal=True, vertical_alignment="center", gap="small"):
+            st.markdown(f"{pieces.plain(said)}.", width="content")
+            st.button("Try it", key="try_advice", on_click=try_it, args=(values, name))
+    for said in review.get("advice_messages", ())[:1]:
+        st.markdown(pieces.plain(answers.told(said)))
 
 
 def above(picked: Candidate, sifted: Sifted, contest: Ranked) -> None:
@@ -273,18 +304,15 @@ def reasons_of(review: answers.Row, bench: Bench) -> None:
             st.markdown(f":small[▲ **{pieces.plain(one.requirement)}**: {pieces.plain(one.why)}]")
 
 
-def load_chart(picked: Candidate, contest: Ranked) -> None:
+def load_chart(picked: Candidate, contest: Ranked) -> list[charts.Chart]:
+    """The shift in ppm over the load; none where there is no curve."""
     if contest.reckoning is None:
-        return
+        return []
     curve = curves.ppm_against_load(contest.reckoning, contest.ordered[picked.row["place"] - 1])
     chart = charts.load_chart(curve)
     session.section(chart.title)
     picture(chart.draw(session.palette()), key="load", widest=SIZE)
-    with st.expander("The same as a table"):
-        heads, table = chart.table
-        st.dataframe(
-            dict(zip(heads, zip(*table, strict=True), strict=True)), hide_index=True, key="load_table", alt=chart.title
-        )
+    return [chart]
 
 
 def onward(picked: Candidate) -> None:

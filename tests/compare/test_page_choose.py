@@ -152,3 +152,18 @@ def test_exports_have_the_numbers_of_the_command_line(page, tmp_path, capsys, mo
     by_heading = dict(zip(headings_, rows[0], strict=True))
     assert by_heading["Drive level, high (µW)"] == told["rows"][0]["drive_level_uw"]["high"]
     assert by_heading["ppm in all, times over"] == told["rows"][0]["slack"]["total_ppm"]
+
+
+def test_the_capacitor_that_helps_is_tried_at_once_and_can_be_put_back(page):
+    before = page.session_state.work.desk
+    press(page, "try_advice")
+    assert "**Trial:**" in said(page)
+    assert page.session_state.work.desk != before
+    press(page, "drop_trial")
+    assert page.session_state.work.desk == before
+
+
+def test_charts_have_their_tables(page):
+    told = said(page)
+    assert "Times over, nominal" in told
+    assert "Load, pF" in told
