@@ -28,8 +28,9 @@ def condition_of(text: str) -> When:
         return When()
     # A number without a unit says nothing of where a value holds; it may be the code of a mode.
     found = When() if PLAIN_NUMBER.fullmatch(folded) else read_when(folded)
-    # A lone digit or letter stands for a mode only where one is asked for.
-    if found.mode is None and len(folded) > 1 and (mode := wording.mode_of(folded)) is not None:
+    # A lone digit or letter stands for a mode only where one is asked for; "1st year" speaks of ageing.
+    asked = found.mode is None and found.years is None and len(folded) > 1
+    if asked and (mode := wording.mode_of(folded)) is not None:
         found = found.model_copy(update={"mode": mode})
     return found
 

@@ -106,8 +106,7 @@ def _over_models(known: Meaning, below: tuple[str, ...]) -> Meaning:
 def interpret(levels: tuple[str, ...]) -> Head:
     """Put the levels of one heading together: the label from one of them or from all, the bound and unit from any."""
     levels = ("frequency", *levels) if len(levels) == 1 and _MEGAHERTZ.fullmatch(levels[0].strip()) else _parted(levels)
-    if len(levels) > 1:
-        levels = tuple(part for level in levels for part in bound_and_unit(level) or (level,))
+    levels = tuple(part for level in levels for part in bound_and_unit(level) or (level,))
     known = [_over_models(each, levels[index + 1 :]) for index, each in enumerate(map(meaning, levels))]
     bound = next((BOUNDS[each.role] for each in reversed(known) if each.role in BOUNDS), None)
     unit = next((level for level in reversed(levels) if is_unit(level)), "")

@@ -25,7 +25,7 @@ _CODE = re.compile(
 )
 _NAME_WORD = r"[A-ZÀ-Þ][^\W\d_]*(?:['&-][^\W\d_]+)*"
 _LATIN_NAME = re.compile(
-    rf"(?<![\w-]){_NAME_WORD}(?![\w-])"
+    rf"(?<![\w/-]){_NAME_WORD}(?![\w/-])"
     rf"(?:,?[ ]+[A-Z]\.\s?[A-Za-z]\.(?:\s?[A-Za-z]\.?)?(?!\w)"
     rf"|(?:,?[ ]+(?:&[ ])?|[ ]?&[ ]?){_NAME_WORD}(?![\w-])(?:\.(?=[ ,]|$))?|[ ]+e\.\s?K\.?)*"
 )

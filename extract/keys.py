@@ -127,7 +127,46 @@ def _titled_codes(rows: Sequence[Row]) -> list[Key]:
     return [Key(Piece(key_label(title[0].text), title[0].where), tuple((cells[0].text, cells[1]) for cells in choices))]
 
 
+RANGE, STABILITY = "operating_temperature_c", "frequency_stability_ppm"
+
+
+def _graded(rows: Sequence[Row], heads: Sequence[str]) -> list[Key]:
+    """One column of codes beside two or more of properties: what each code stands for in each of them.
+
+    A range and the stability over it belong together, a pair for each code.
+    """
+    known = [meaning(head) for head in heads]
+    codes = [index for index, each in enumerate(known) if each.role == "code"]
+    labelled = {index: each.label for index, each in enumerate(known) if each.label is not None and each.label.exact}
+    if len(codes) != 1 or len(labelled) < 2 or len(labelled) < len(heads) - 1:
+        return []
+    column_of = {label.field: index for index, label in labelled.items()}
+    pairs = [column_of[STABILITY], column_of[RANGE]] if {RANGE, STABILITY} <= column_of.keys() else []
+    anchor = rows[0][codes[0]]
+    groups = [[index] for index in labelled if index not in pairs] + ([pairs] if pairs else [])
+    keys = []
+    for columns in groups:
+        head = rows[0][columns[0]] if len(columns) == 1 else anchor
+        choices = tuple(
+            (code.text, Piece(" ".join(map(_with_unit, cells, [labelled[k].unit for k in columns])), cells[0].where))
+            for row in rows[1:]
+            if (code := row[codes[0]]) is not None
+            and len(cells := [cell for k in columns if (cell := row[k]) is not None]) == len(columns)
+        )
+        if head is not None and choices:
+            keys.append(Key(Piece(key_label(head.text), head.where), choices))
+    return keys
+
+
+def _with_unit(cell: Cell, unit: str | None) -> str:
+    """A cell's text, behind it the unit of its head where it has none of its own."""
+    return cell.text if unit is None or any(char.isalpha() for char in cell.text) else f"{cell.text} {unit}"
+
+
 def _beside_codes(rows: Sequence[Row], heads: Sequence[str], title: str) -> Iterator[Key]:
+    if graded := _graded(rows, heads):
+        yield from graded
+        return
     for column, head in enumerate(heads):
         partner = next((k for k in (column + 1, column - 1) if 0 <= k < len(heads) and k != column), None)
         if meaning(head).role != "code" or partner is None:

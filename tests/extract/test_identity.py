@@ -127,3 +127,11 @@ def test_an_example_of_an_order_code_does_not_replace_the_name_of_the_series():
         Text(Piece("Example: QRB3225-26.000MHz-8-1-D", Where(line=2))),
     ]
     assert part_number_of(texts, ()) == "QRB3225"
+
+
+def test_words_behind_a_holder_are_no_maker():
+    top = [
+        Text(Piece("HC-49/U & HC-49/US Microprocessor Crystals", Where(line=1))),
+        Text(Piece("BELLCHAMBER CRYSTALS", Where(line=2))),
+    ]
+    assert maker_of(top, ()) == "BELLCHAMBER CRYSTALS"

@@ -1,6 +1,6 @@
 from building import table
 
-from extract.candidates import entry_candidates
+from extract.candidates import entry_candidates, key_candidates
 from extract.entries import Entry, Key, Listing
 from extract.lists import listing_drafts
 from extract.tables import read_table
@@ -290,3 +290,27 @@ def test_a_value_that_begins_with_typ_is_no_heading() -> None:
     rows = [("Parameter", "Value"), ("Shunt capacitance", "typ 1.1 pF, max 3 pF"), ("Ageing", "max ±2 ppm")]
     entries = [item for item in read_table(table(*rows)) if isinstance(item, Entry)]
     assert [value.piece.text for entry in entries for value in entry.values] == ["typ 1.1 pF, max 3 pF", "max ±2 ppm"]
+
+
+def test_a_column_of_limits_takes_its_property_from_the_title() -> None:
+    rows = [("Frequency (MHz)", "Mode", "Max. ohms"), ("4.000 - 7.999", "Fund.", "100"), ("8 - 30", "Fund.", "40")]
+    (listing,) = (
+        item for item in read_table(table(*rows, title="EQUIVALENT SERIES RESISTANCE")) if isinstance(item, Listing)
+    )
+    found = [each for draft in listing_drafts(listing) for each in draft.candidates if each.field == "esr_ohm"]
+    assert [(each.when.frequency_mhz, each.max) for each in found] == [((4.0, 7.999), 100.0), ((8.0, 30.0), 40.0)]
+
+
+def test_codes_beside_several_properties_stand_for_each_of_them() -> None:
+    rows = [
+        ("Code", "Précision à 25 °C", "Stabilité", "Plage de température"),
+        ("A", "±10 ppm", "±15 ppm", "-20 / +70 °C"),
+        ("B", "±15 ppm", "±25 ppm", "-40 / +85 °C"),
+    ]
+    keys = [item for item in read_table(table(*rows)) if isinstance(item, Key)]
+    found = [each for ordering in keys for each in key_candidates(ordering)]
+    assert [each.options for each in found if each.field == "frequency_tolerance_ppm"] == [(10.0, 15.0)]
+    assert [(each.max, each.when.temperature_c) for each in found if each.field == "frequency_stability_ppm"] == [
+        (15.0, (-20.0, 70.0)),
+        (25.0, (-40.0, 85.0)),
+    ]
