@@ -247,10 +247,21 @@ def _of_subject(entry: Entry, label: Label, when: When, subject: str, values: Se
             when = merged(when, extra)
             if not found:
                 continue
-            found = [replace(each, when=merged(when, each.when)) for each in found]
+            beside = _stated_beside(found, value, label)
+            found = [replace(each, when=merged(when, each.when), doubts=(*each.doubts, *beside)) for each in found]
             continue
         found = _single(entry, label, when, subject, value)
     return found or _last_resort(entry, label, when, subject, values)
+
+
+def _stated_beside(found: Sequence[Candidate], value: Value, label: Label) -> tuple[str, ...]:
+    """A doubt where a further cell of the row states another value of the field and no head says for what."""
+    text = value.piece.text
+    others = read(text, label.field, None, label.bound) if has_unit(text, label.field) else ()
+    stated = {each.bounds for each in found}
+    if not others or any((each.min, each.typ, each.max, tuple(each.options)) in stated for each in others):
+        return ()
+    return (f"another column states {' '.join(text.split())[:40]}; its head says nothing that is known",)
 
 
 def _another_case(value: Value, label: Label) -> bool:

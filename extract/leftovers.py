@@ -23,6 +23,7 @@ UNITS = {
     "esr_ohm": ("esr_ohm", "insulation_resistance_megohm"),
     "drive_level_uw": ("drive_level_uw",),
     "motional_inductance_mh": ("motional_inductance_mh",),
+    "frequency_mhz": ("frequency_mhz",),
 }
 SHOWN = 3
 LONGEST_LABEL = 60

@@ -9,7 +9,7 @@ from itertools import pairwise
 
 from extract import wording
 from extract.candidates import has_unit, read
-from extract.conditions import kinds_of
+from extract.conditions import condition_of, kinds_of
 from extract.documents.model import Cell
 from extract.entries import HEADING_UNREAD, Entry, Item, Key, Piece, Text, Value
 from extract.fold import fold
@@ -373,7 +373,8 @@ _BAND_BEHIND = re.compile(r"\s+(?=[-+]?\d|[<≤≥>])")
 def _is_bare_band(text: str) -> bool:
     """A band in the label column, with no label of its own."""
     known = meaning(text)
-    return known.head is None and known.label is None and known.trap is None and _is_band(text)
+    names_mode = known.role == "mode" and condition_of(text).mode is not None
+    return (known.head is None or names_mode) and known.label is None and known.trap is None and _is_band(text)
 
 
 def _nearer(row: _Row, above: _Row | None, below: _Row | None) -> _Row | None:

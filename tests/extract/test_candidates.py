@@ -123,3 +123,10 @@ def test_what_else_may_be_had_in_a_bracket_is_no_bound_of_the_load():
 def test_a_range_of_drive_with_a_greater_maximum_behind_it_is_limited_by_that():
     (found,) = entry_candidates(entry("Drive level", "10~100 µW (Max. 300 µW)"))
     assert (found.min, found.typ, found.max, found.doubts) == (None, None, 300, ())
+
+
+def test_a_value_in_a_further_column_that_no_head_explains_is_a_doubt():
+    (found,) = entry_candidates(entry("Frequency tolerance", "±20 ppm", "±10 ppm"))
+    assert (found.max, [doubt[:22] for doubt in found.doubts]) == (20, ["another column states "])
+    (same,) = entry_candidates(entry("Frequency tolerance", "±20 ppm", "±20 ppm"))
+    assert same.doubts == ()

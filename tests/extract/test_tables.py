@@ -314,3 +314,15 @@ def test_codes_beside_several_properties_stand_for_each_of_them() -> None:
         (15.0, (-20.0, 70.0)),
         (25.0, (-40.0, 85.0)),
     ]
+
+
+def test_rows_of_modes_below_a_label_are_its_rows():
+    made = table(
+        ("Frequenzbereich:", "10,0 … 160 MHz"), ("– Grundton:", "10,0 … 45 MHz"), ("– 3. Oberton:", "45 … 110 MHz")
+    )
+    found = [each for item in read_table(made) if isinstance(item, Entry) for each in entry_candidates(item)]
+    assert [(each.max, each.when.mode) for each in found] == [
+        (160, None),
+        (45, "fundamental"),
+        (110, "third overtone"),
+    ]
