@@ -22,6 +22,7 @@ _SOURCES = {
     "loose": "a value without a label",
 }
 ONE_HERTZ = 1e-6
+EVERYWHERE = When()
 # Several ranges under one label are a choice.
 RANGES = ("operating_temperature_c", "storage_temperature_c")
 # Fields that choose together: a stability brings its range along, a parabola takes the place of a stability. Beside
@@ -122,18 +123,23 @@ def _close(one: float | None, other: float | None) -> bool:
 
 def _without_repeats(candidates: Iterable[Candidate]) -> list[Candidate]:
     """The same statement in two places is one reading, at the first place; a bare number gives way to a bounded one."""
-    kept: list[Candidate] = []
-    for each in candidates:
-        fuller = next((other for other in kept if _same(each, other) or _says_less(each, other)), None)
+    kept: dict[int, Candidate] = {}
+    placed: dict[When, list[int]] = {}
+    for at, each in enumerate(candidates):
+        # Only what holds everywhere can say less than what holds somewhere: a list of bands compares none with all.
+        near = list(kept) if each.when == EVERYWHERE else placed.get(each.when, [])
+        fuller = next((kept[k] for k in near if _same(each, kept[k]) or _says_less(each, kept[k])), None)
         if fuller is not None:
             trace.dropped(each, f"says no more than {fuller.where} does: {fuller.raw}")
             continue
-        lesser = [other for other in kept if _says_less(other, each)]
-        for other in lesser:
-            trace.dropped(other, f"says less than {each.where} does: {each.raw}")
-        kept = [other for other in kept if other not in lesser]
-        kept.append(each)
-    return kept
+        for k in sorted({*placed.get(each.when, []), *placed.get(EVERYWHERE, [])}):
+            if _says_less(kept[k], each):
+                trace.dropped(kept[k], f"says less than {each.where} does: {each.raw}")
+                placed[kept[k].when].remove(k)
+                del kept[k]
+        kept[at] = each
+        placed.setdefault(each.when, []).append(at)
+    return list(kept.values())
 
 
 def _says_less(one: Candidate, other: Candidate) -> bool:
@@ -158,12 +164,14 @@ def _says_less(one: Candidate, other: Candidate) -> bool:
 def _joined_halves(candidates: list[Candidate]) -> list[Candidate]:
     """Separate rows or columns for the least and the greatest (T min, T max; typ, max) are one reading."""
     kept: list[Candidate] = []
+    placed: dict[When, list[int]] = {}
     for each in candidates:
-        for index, other in enumerate(kept):
-            if (both := _both(other, each)) is not None:
-                kept[index] = both
-                break
+        same = placed.setdefault(each.when, [])
+        joined = next(((k, both) for k in same if (both := _both(kept[k], each)) is not None), None)
+        if joined is not None:
+            kept[joined[0]] = joined[1]
         else:
+            same.append(len(kept))
             kept.append(each)
     return kept
 
@@ -190,9 +198,12 @@ def _both(one: Candidate, other: Candidate) -> Candidate | None:
 def _contradictions_marked(candidates: list[Candidate]) -> list[Candidate]:
     """The first of two places counts; its doubt names what the other one says, and where."""
     kept: list[Candidate] = []
+    placed: dict[When, list[int]] = {}
     for each in candidates:
-        rival = next((k for k, other in enumerate(kept) if _contradicts(other, each)), None)
+        same = placed.setdefault(each.when, [])
+        rival = next((k for k in same if _contradicts(kept[k], each)), None)
         if rival is None:
+            same.append(len(kept))
             kept.append(each)
             continue
         first = kept[rival]
@@ -203,35 +214,17 @@ def _contradictions_marked(candidates: list[Candidate]) -> list[Candidate]:
 
 
 def _contradicts(first: Candidate, second: Candidate) -> bool:
+    """Whether two statements for one and the same case exclude each other."""
     if first.source == "key" and second.source == "key":
         return False
     if first.field in RANGES and (first.label_where or first.where) == (second.label_where or second.where):
         return False
-    if first.when != second.when:
-        return _overlap(first.when, second.when) and not _same_row(first, second)
     return not _same_cell(first, second)
-
-
-def _overlap(one: When, other: When) -> bool:
-    """Whether two bands share more than an end, all else being equal: two rows for one frequency."""
-    a, b = one.frequency_mhz, other.frequency_mhz
-    if (
-        a is None
-        or b is None
-        or one.model_copy(update={"frequency_mhz": None}) != other.model_copy(update={"frequency_mhz": None})
-    ):
-        return False
-    inside = (a[0] <= b[0] and b[1] <= a[1]) or (b[0] <= a[0] and a[1] <= b[1])
-    return a == b or (inside and a[0] < a[1] and b[0] < b[1] and False)
 
 
 def _same_cell(one: Candidate, other: Candidate) -> bool:
     """Several values in one cell are a choice, not a contradiction."""
     return one.where == other.where and one.raw == other.raw
-
-
-def _same_row(one: Candidate, other: Candidate) -> bool:
-    return one.where == other.where
 
 
 def _narrowed(candidates: list[Candidate], offered: Pair | None) -> list[Candidate]:

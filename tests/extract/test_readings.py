@@ -1,5 +1,8 @@
+from dataclasses import replace
+
 from building import candidate
 
+from extract import readings
 from extract.model import When, Where
 from extract.readings import readings_of
 
@@ -115,3 +118,19 @@ def test_a_missing_ppm_is_no_doubt_about_the_range_beside_the_stability():
     checks = {each.field: each.check for each in readings_of([doubted])}
     assert checks["operating_temperature_c"] is None
     assert checks["frequency_stability_ppm"] == "unit not printed, taken as ppm"
+
+
+def test_a_thousand_bands_are_not_compared_each_with_each(monkeypatch):
+    asked = 0
+    says_less = readings._says_less
+
+    def counted(one, other):
+        nonlocal asked
+        asked += 1
+        return says_less(one, other)
+
+    monkeypatch.setattr(readings, "_says_less", counted)
+    bands = [candidate("esr_ohm", high=60.0, when=When(frequency_mhz=(at, at + 0.5))) for at in range(1, 1001)]
+    again = [replace(each, where=Where(line=9)) for each in bands]
+    assert len(readings.chosen_of([*bands, candidate("esr_ohm", high=70.0), *again])) == 1001
+    assert asked < 10_000
