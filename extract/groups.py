@@ -178,7 +178,9 @@ class _Reader:
         made = Group("pm", self.take())
         made.low_unit = self.take_unit()
         if self.kind() == "to" and (self.kind(1) == "pm" and self.kind(2) == "number" or self.kind(1) == "number"):
-            if self.kind(1) == "number" and self.tokens[self.at + 1].meaning:
+            if self.kind(1) == "number" and (
+                self.tokens[self.at + 1].meaning or self._other_kind_follows(made.low_unit)
+            ):
                 return made
             self.take()
             if self.kind() == "pm":

@@ -14,7 +14,7 @@ Meaning = TypeVar("Meaning")
 
 _IDEOGRAPH = r"\u3040-\u30ff\u3400-\u9fff\uac00-\ud7af々〇"
 IDEOGRAPHS = re.compile(f"[{_IDEOGRAPH}]+")
-_WORDS = re.compile(rf"[{_IDEOGRAPH}]|[^\W_{_IDEOGRAPH}]+(?:'[a-zA-Z]+)?|/")
+_WORDS = re.compile(rf"[{_IDEOGRAPH}]|[^\W_{_IDEOGRAPH}]+(?:'(?:s|tal)(?![a-zA-Z]))?|/")
 
 
 @dataclass(frozen=True, slots=True)

@@ -64,8 +64,11 @@ def with_measured(heads: list[Head]) -> list[Head]:
     limits = limits or sum(heads_samples(head.levels[-1]) for head in heads if head.levels) > 1
     marked: list[Head] = []
     counted = any(_counts_from(heads, index) for index in range(len(heads)))
+    # Where the spread stands beside it, the mean is of a lot, and no typical value of the part.
+    spread = any(_says(level, "spread") for head in heads for level in head.levels)
     for index, head in enumerate(heads):
-        own = any(_says(level, "measured") or _says(level, "sample") for level in head.levels)
+        counts = spread and any(_says(level, kind) for level in head.levels for kind in ("spread", "average"))
+        own = counts or any(_says(level, "measured") or _says(level, "sample") for level in head.levels)
         behind = limits and _counts_from(heads, index)
         after = counted and bool(marked) and marked[-1].role == "measured" and head.role not in _BESIDE
         asked = models > 1 and any(_says(level, "required") for level in head.levels)

@@ -443,6 +443,126 @@ def parts_below_types() -> None:
     )
 
 
+def rows_by_single_spaces() -> None:
+    x = """Brentonico Quarzi S.r.l.
+BQ-3225 Quarzo SMD 3,2 x 2,5 mm
+Caratteristiche elettriche
+Parametro Min Tip Max Unità
+Frequenza nominale 8 - 54 MHz
+Tolleranza a 25 °C -15 - +15 ppm
+Stabilità in temperatura -25 - +25 ppm
+Temperatura di esercizio -40 - +85 °C
+Capacità di carico - 10 - pF
+ESR (8-12 MHz) - - 150 Ω
+ESR (12-20 MHz) - - 80 Ω
+ESR (20-54 MHz) - - 50 Ω
+Capacità parallela - 1,2 3 pF
+Livello di pilotaggio - 10 200 µW
+Invecchiamento -3 - +3 ppm/anno
+Temperatura di stoccaggio -55 - +125 °C
+Resistenza di isolamento 500 - - MΩ
+"""
+    keep(
+        "righe_spazi_it.txt",
+        x,
+        [
+            part(
+                "BQ-3225",
+                "f 8..54\ntol ±15\nstab ±25\nop -40..85\ncl 10\nesr <150 f=8:12\nesr <80 f=12:20\nesr <50 f=20:54\nc0 -/1.2/3\ndl -/10/200\nage ±3 y=1\nsto -55..125\nir >500",
+                maker="Brentonico Quarzi S.r.l.",
+            )
+        ],
+        "it",
+        "rows with single spaces, dashes for empty cells",
+    )
+
+
+def letter_in_sentences() -> None:
+    x = """Buongiorno Ing. Ferri,
+
+in merito alla Sua richiesta Le confermiamo il quarzo CRX-5032-20M di nostra produzione, frequenza 20 MHz in fondamentale,
+capacità di carico 18 pF, tolleranza ±20 ppm a 25 °C e stabilità ±30 ppm da -40 °C a +85 °C. La resistenza serie
+equivalente è al massimo 50 Ω (tipico 25 Ω), la capacità parallela al massimo 5 pF, il livello di pilotaggio 100 µW
+tipico, 500 µW massimo. L'invecchiamento è di ±3 ppm il primo anno. Temperatura di magazzino da -55 a +125 °C.
+Il prezzo per 1000 pezzi è di 0,27 € cad., consegna 6 settimane.
+
+Cordiali saluti
+Carla Nerini
+Cristalvox S.r.l.
+"""
+    keep(
+        "lettera_it.txt",
+        x,
+        [
+            part(
+                "CRX-5032-20M",
+                "f 20\ncl 18\ntol ±20\nstab ±30 t=-40:85\nop -40..85\nesr -/25/50\nc0 <5\ndl -/100/500\nage ±3 y=1\nsto -55..125",
+                maker="Cristalvox S.r.l.",
+                mode="fund",
+            )
+        ],
+        "it",
+        "letter in sentences",
+    )
+
+
+def values_between_slashes() -> None:
+    x = """物料编码,名称,参数,品牌,型号,单价
+30010021,贴片电容,12pF ±5% 50V 0402,风岭,FL0402-12P,0.01
+30020001,晶振,16MHz/9pF/±10ppm/-40~85℃/3225,沐风晶体,MFX3225-16M-9,0.35
+30020002,晶振,26MHz/8pF/±10ppm/-30~85℃/2016,沐风晶体,MFX2016-26M-8,0.52
+30020003,晶振,32.768kHz/12.5pF/±20ppm/-40~85℃/3215,沐风晶体,MFT3215-32K-12.5,0.41
+30020004,有源晶振,50MHz/3.3V/±50ppm/-40~85℃/3225,沐风晶体,MFO3225-50M,1.10
+30030001,电感,10uH ±20% 1A,绕能,RN4040-100,0.2
+"""
+    keep(
+        "wuliao_gb.csv",
+        x.encode("gb18030"),
+        [
+            part("MFX3225-16M-9", "f 16\ncl 9 flag\ntol ±10 flag\nop -40..85", maker="沐风晶体"),
+            part("MFX2016-26M-8", "f 26\ncl 8 flag\ntol ±10 flag\nop -30..85", maker="沐风晶体"),
+            part("MFT3215-32K-12.5", "f 0.032768\ncl 12.5 flag\ntol ±20 flag\nop -40..85", maker="沐风晶体"),
+        ],
+        "zh",
+        "list of materials, values between slashes and without labels",
+        not_parts=["MFO3225-50M", "FL0402-12P", "RN4040-100"],
+    )
+
+
+def bands_in_their_own_table() -> None:
+    x = """# QRB-5032 — quartz CMS 5,0 × 3,2 mm
+
+| Paramètre | Valeur |
+|---|---|
+| Fréquence | 8 à 50 MHz |
+| Capacité de charge | 10 à 30 pF, standard 18 pF |
+| Tolérance (25 °C) | ±30 ppm (±10 ppm sur demande) |
+| Stabilité | ±50 ppm (-20/+70 °C), ±100 ppm (-40/+85 °C) |
+| Capacité statique | 5 pF max |
+| Niveau de pilotage | 100 µW typ., 500 µW max |
+| Isolement | 500 MΩ min sous 100 V |
+
+| Bande | R1 max |
+|---|---|
+| 8 – 10 MHz | 80 Ω |
+| 10 – 16 MHz | 60 Ω |
+| 16 – 50 MHz | 40 Ω |
+"""
+    keep(
+        "deux_tables_fr.md",
+        x,
+        [
+            part(
+                "QRB-5032",
+                "f 8..50\ncl 18 also=10/18/30\ntol ±30\nstab ±50 t=-20:70\nstab ±100 t=-40:85\nop -20..70\nop -40..85\nc0 <5\ndl -/100/500\nir >500\nesr <80 f=8:10\nesr <60 f=10:16\nesr <40 f=16:50",
+                package="5,0 × 3,2 mm",
+            )
+        ],
+        "fr",
+        "two ranges in one cell, bands in a table of their own",
+    )
+
+
 if __name__ == "__main__":
     quoted_request()
     torn_into_lines()
@@ -454,3 +574,7 @@ if __name__ == "__main__":
     html_mail()
     numbers_in_words()
     parts_below_types()
+    rows_by_single_spaces()
+    letter_in_sentences()
+    values_between_slashes()
+    bands_in_their_own_table()

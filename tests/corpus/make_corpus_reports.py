@@ -408,6 +408,128 @@ def compared_in_a_shop() -> None:
     )
 
 
+def pairs_side_by_side() -> None:
+    d = docx.Document()
+    d.add_heading("产品承认书", 0)
+    t = d.add_table(rows=0, cols=4)
+    for r in [
+        ("客户名称", "湖滨电器", "供方", "凌湾晶体有限公司"),
+        ("产品名称", "石英晶体谐振器", "型号", "LWX-49S-6.000M"),
+        ("标称频率", "6.000MHz", "负载电容", "20pF"),
+        ("调整频差", "±20ppm（25℃）", "温度频差", "±30ppm"),
+        ("谐振电阻", "≤100Ω", "静态电容", "≤7pF"),
+        ("激励功率", "100μW", "绝缘电阻", "≥500MΩ"),
+        ("工作温度", "-20℃~+70℃", "储存温度", "-40℃~+85℃"),
+        ("振动模式", "基频 AT", "老化率", "±5ppm/年"),
+        ("日期", "2026.01.15", "版本", "A/1"),
+    ]:
+        for a, x in zip(t.add_row().cells, r, strict=True):
+            a.text = x
+    d.add_heading("可靠性试验", 1)
+    t = d.add_table(rows=0, cols=3)
+    for r in [
+        ("试验项目", "条件", "判定"),
+        ("高温储存", "85℃ 96h", "频率变化≤±5ppm，电阻变化≤±20%"),
+        ("低温储存", "-40℃ 96h", "频率变化≤±5ppm"),
+        ("跌落", "75cm 3次", "频率变化≤±5ppm"),
+    ]:
+        for a, x in zip(t.add_row().cells, r, strict=True):
+            a.text = x
+    keep(
+        "chengrenshu_zh.docx",
+        _saved(d),
+        [
+            part(
+                "LWX-49S-6.000M",
+                "f 6\ncl 20\ntol ±20\nstab ±30\nesr <100\nc0 <7\ndl 100 bare\nir >500\nop -20..70\nsto -40..85\nage ±5 y=1",
+                maker="凌湾晶体有限公司",
+                mode="fund",
+                cut="AT",
+            )
+        ],
+        "zh",
+        "approval sheet, two pairs of label and value in a row",
+    )
+
+
+def tables_abreast() -> None:
+    wb = Workbook()
+    ws = wb.active
+    ws.title = "Timing parts"
+    crystals = ["MPN", "MHz", "CL pF", "ESR max Ω", "Tol ±ppm", "Temp °C"]
+    oscillators = ["MPN", "MHz", "Vdd V", "Idd mA", "Stab ±ppm", "Temp °C"]
+    ws.append(["Crystals", "", "", "", "", "", "", "Oscillators"])
+    ws.append(crystals + [""] + oscillators)
+    for a, b in [
+        (["PDX20-19M2-8", 19.2, 8, 60, 10, "-40..85"], ["PDO25-25M", 25, 1.8, 4.5, 25, "-40..85"]),
+        (["PDX20-26M-7", 26, 7, 50, 10, "-30..85"], ["PDO25-48M", 48, 3.3, 9, 50, "-20..70"]),
+        (["PDX16-52M-6", 52, 6, 40, 8, "-40..105"], ["", "", "", "", "", ""]),
+    ]:
+        ws.append(a + [""] + b)
+    ws.append([])
+    ws.append(["Note: all crystals fundamental, made by Pendoggett Frequency."])
+    keep(
+        "two_tables_abreast_en.xlsx",
+        _saved(wb),
+        [
+            part("PDX20-19M2-8", "f 19.2\ncl 8\nesr <60\ntol ±10\nop -40..85", res="load"),
+            part("PDX20-26M-7", "f 26\ncl 7\nesr <50\ntol ±10\nop -30..85", res="load"),
+            part("PDX16-52M-6", "f 52\ncl 6\nesr <40\ntol ±8\nop -40..105", res="load"),
+        ],
+        "en",
+        "crystals and oscillators side by side on one sheet",
+        not_parts=["PDO25-25M", "PDO25-48M"],
+    )
+
+
+def lot_report() -> None:
+    d = docx.Document()
+    d.add_heading("Outgoing quality report lot 2611-04", 0)
+    d.add_paragraph("Part: RWX-2016-37M4 by Rosewarne Frequency Ltd. Frequency 37.400 MHz, fundamental.")
+    t = d.add_table(rows=0, cols=7)
+    for r in [
+        ("Characteristic", "Unit", "LSL", "USL", "Mean", "Std dev", "Cpk"),
+        ("Frequency deviation @25C", "ppm", "-10", "10", "0.8", "1.9", "1.61"),
+        ("ESR", "ohm", "", "60", "24.1", "2.2", "5.44"),
+        ("C0", "pF", "", "2.0", "0.83", "0.03", "13.0"),
+        ("C1", "fF", "", "", "2.61", "0.05", ""),
+        ("Insulation resistance", "Mohm", "500", "", "", "", ""),
+    ]:
+        for a, y in zip(t.add_row().cells, r, strict=True):
+            a.text = y
+    keep(
+        "quality_report_en.docx",
+        _saved(d),
+        [
+            part(
+                "RWX-2016-37M4",
+                "f 37.4\ntol ±10\nesr <60\nc0 <2\nir >500",
+                maker="Rosewarne Frequency Ltd",
+                mode="fund",
+            )
+        ],
+        "en",
+        "lot report with limits, mean and Cpk",
+    )
+
+
+def before_and_after() -> None:
+    h = """<html lang=en><meta charset=utf-8><body><h1>Product change notice PCN-2026-07: TLX32-25.000-10</h1><p>Issued by Tolcarne Crystals Ltd</p><table><tr><th>Parameter</th><th>Before</th><th>After</th><th>Unit</th></tr><tr><td>Nominal frequency</td><td>25.000</td><td>25.000</td><td>MHz</td></tr><tr><td>Load capacitance</td><td>10</td><td>10</td><td>pF</td></tr><tr><td>ESR max.</td><td>50</td><td>40</td><td>Ω</td></tr><tr><td>Shunt capacitance max.</td><td>3</td><td>2.5</td><td>pF</td></tr><tr><td>Frequency tolerance</td><td>±20</td><td>±15</td><td>ppm</td></tr></table></body></html>"""
+    keep(
+        "pcn_en.html",
+        h,
+        [
+            part(
+                "TLX32-25.000-10",
+                "f 25\ncl 10\nesr <50 flag also=<40\nc0 <3 flag also=<2.5\ntol ±20 flag also=±15",
+                maker="Tolcarne Crystals Ltd",
+            )
+        ],
+        "en",
+        "change notice, before and after",
+    )
+
+
 if __name__ == "__main__":
     samples_below()
     samples_beside()
@@ -416,3 +538,7 @@ if __name__ == "__main__":
     form_a_sheet()
     page_with_related_parts()
     compared_in_a_shop()
+    pairs_side_by_side()
+    tables_abreast()
+    lot_report()
+    before_and_after()

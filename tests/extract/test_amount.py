@@ -577,3 +577,19 @@ def test_a_word_for_more_than_before_an_insulation_is_its_least():
 def test_ageing_in_hours_holds_for_so_many():
     (value,) = read_values("±5 ppm/1000 h at 150 °C", "ageing_ppm")
     assert (value.min, value.max, value.when.years) == (-5, 5, pytest.approx(1000 / 8766, abs=1e-4))
+
+
+def test_a_date_in_place_of_a_load_is_taken_for_the_number_it_was_and_must_be_looked_at():
+    (value,) = read_values("2026-05-12", "load_capacitance_pf", unit="pF")
+    assert (value.typ, value.min, value.max) == (12.5, None, None)
+    assert value.doubts == ("a date stands here; a spreadsheet makes one of 12.5, which is taken",)
+
+
+def test_a_word_for_at_and_to_before_another_unit_is_no_range():
+    (value,) = read_values("±20 ppm a 25 °C", "frequency_tolerance_ppm")
+    assert (value.min, value.max, value.doubts) == (-20.0, 20.0, ())
+
+
+def test_two_limits_in_one_text_must_be_looked_at():
+    found = read_values("100 µW max., 500 µW absolute max.", "drive_level_uw")
+    assert [(each.max, bool(each.doubts)) for each in found] == [(100.0, True), (500.0, True)]

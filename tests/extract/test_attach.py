@@ -43,3 +43,8 @@ def test_a_mode_at_the_head_governs_all_until_the_next():
 def test_a_number_apart_from_the_units_is_no_value():
     (value,) = read_values("60 Ω max, IEC 60444 network", "esr_ohm")
     assert value.max == 60
+
+
+def test_a_bound_behind_another_propertys_amount_limits_nothing_before_it():
+    (value,) = read_values("8 pF ±10 ppm 60 Ω max", "load_capacitance_pf")
+    assert (value.typ, value.max) == (8.0, None)

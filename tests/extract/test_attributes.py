@@ -57,3 +57,8 @@ def test_pads_named_one_by_one_are_gathered():
     pads = attributes_of({}, ["Pin map: #1 X'tal, #2 GND, #3 X'tal, #4 GND"]).pads
     assert pads is not None
     assert (pads.count, pads.crystal, pads.ground) == (4, (1, 3), (2, 4))
+
+
+def test_a_lead_time_behind_the_price_stands_by_itself():
+    found = attributes_of({"price": "0.31 EUR for 5000, delivery 10 weeks"})
+    assert (found.price, found.lead_time) == ("0.31 EUR for 5000", "10 weeks")

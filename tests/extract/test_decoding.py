@@ -55,3 +55,9 @@ def test_a_few_broken_bytes_in_utf8_are_shown_and_told() -> None:
     text, notes = decode(data)
     assert text == "负载电容 标称频率 温度频差 工作温度\ufffd"
     assert "Look at the original." in notes[0].message
+
+
+@pytest.mark.parametrize("encoding", ["euc_jp", "cp932"])
+def test_japanese_is_told_from_chinese_by_its_kana_and_everyday_signs(encoding: str) -> None:
+    words = "公称周波数 32.768 kHz 負荷容量 9 pF 励振レベル 等価直列抵抗 最大 動作温度範囲"
+    assert decode(words.encode(encoding)) == (words, ())

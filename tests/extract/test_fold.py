@@ -58,3 +58,15 @@ def test_labels_that_differ_in_case_spaces_and_marks_have_one_key(one, other):
 
 def test_voiced_kana_keep_their_marks():
     assert key("パ") != key("ハ")
+
+
+def test_a_wide_comma_beside_plain_digits_parts_them():
+    assert fold("AB-12，25MHz") == "AB-12, 25MHz"
+
+
+def test_signs_between_dollars_are_the_signs():
+    assert fold(r"200 $\mu$W, 80 k$\Omega$") == "200 μW, 80 kΩ"
+
+
+def test_traditional_and_simplified_characters_have_one_key():
+    assert key("負載電容") == key("负载电容")

@@ -62,3 +62,17 @@ def test_a_mail_of_attachments_only_is_refused() -> None:
     mail.add_attachment(b"%PDF-1.4", maintype="application", subtype="pdf", filename="sheet.pdf")
     with pytest.raises(DocumentError, match="^The mail holds no text, only attachments"):
         read_document(mail.as_bytes(), "offer.eml")
+
+
+def test_the_html_of_a_mail_is_read_where_only_it_holds_the_table_and_its_quotation_is_marked() -> None:
+    mail = message("See the HTML version.")
+    mail.add_alternative(
+        "<p>Our offer:</p><table><tr><td>ESR</td><td>35 Ω</td></tr></table>"
+        "<blockquote><p>Please quote ESR: 50 Ω</p></blockquote>",
+        subtype="html",
+    )
+    document = read_document(mail.as_bytes(), "offer.eml")
+    assert [[cell.text for cell in block.cells] for block in document.blocks if isinstance(block, Table)] == [
+        ["ESR", "35 Ω"]
+    ]
+    assert "> Please quote ESR: 50 Ω" in [block.text for block in document.blocks if isinstance(block, Line)]

@@ -46,3 +46,8 @@ def test_what_a_buyer_requires_is_no_value_of_the_parts_beside_it():
 
 def test_a_list_of_parts_is_no_table_of_samples():
     assert not of_samples(heads("Part number", "Frequency (MHz)", "ESR (Ω)"), [], "Measured parts")
+
+
+def test_the_mean_beside_a_spread_is_of_a_lot_and_no_typical_value():
+    found = with_measured(heads("Characteristic", "Unit", "LSL", "USL", "Mean", "Std dev", "Cpk"))
+    assert [head.role for head in found] == ["parameter", "unit", "min", "max", "measured", "measured", "measured"]

@@ -2,7 +2,7 @@ from building import line
 
 from extract.candidates import entry_candidates
 from extract.entries import EMPTY_CELLS_LOST
-from extract.torn import torn_rows
+from extract.torn import spaced_rows, torn_rows
 
 HEADS = ["Parameter", "Conditions", "Min.", "Typ.", "Max.", "Units"]
 FREQUENCY = ["Nominal Frequency", "12.000", "MHz"]
@@ -47,3 +47,30 @@ def test_a_condition_that_begins_with_over_is_no_label():
 def test_lines_without_headings_are_no_torn_table():
     lines = [line(text, number=number) for number, text in enumerate([*FREQUENCY, *LOAD, *DRIVE])]
     assert torn_rows(lines, 0) == ([], 0)
+
+
+SPACED = [
+    "Parametro Min Tip Max Unità",
+    "Frequenza nominale 8 - 54 MHz",
+    "Capacità di carico - 10 - pF",
+    "ESR (8-12 MHz) - - 150 Ω",
+    "Invecchiamento -3 - +3 ppm/anno",
+]
+
+
+def spaced(*texts):
+    entries, taken = spaced_rows([line(text, number=number) for number, text in enumerate(texts)], 0)
+    return {each.field: each for entry in entries for each in entry_candidates(entry)}, taken
+
+
+def test_rows_held_by_single_spaces_have_a_number_or_a_dash_under_each_heading():
+    found, taken = spaced(*SPACED)
+    assert taken == 5
+    assert found["frequency_mhz"].bounds[:3] == (8.0, None, 54.0)
+    assert found["load_capacitance_pf"].bounds[:3] == (None, 10.0, None)
+    assert (found["esr_ohm"].max, found["esr_ohm"].when.frequency_mhz) == (150.0, (8.0, 12.0))
+    assert (found["ageing_ppm"].max, found["ageing_ppm"].when.years) == (3.0, 1.0)
+
+
+def test_a_row_that_lacks_a_cell_ends_such_a_table():
+    assert spaced(*SPACED[:3], "ESR 150 Ω", *SPACED[4:])[1] == 0
