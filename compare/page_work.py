@@ -18,6 +18,8 @@ def head() -> None:
     with st.container(
         horizontal=True, horizontal_alignment="right", vertical_alignment="center", gap="small", key="work_bar"
     ):
+        # Not on the button of the menu: a button of another name is another menu, and that one would be closed.
+        st.markdown(f":gray[:small[{saved()}]]", width="content")
         said = session.history().said
         st.button(
             "Undo",
@@ -38,12 +40,16 @@ def head() -> None:
         st.html(pieces.fault_html(fault))
 
 
+def saved() -> str:
+    """`Kept on this machine · saved 14:32`."""
+    stamp = st.session_state.saved
+    return f"Kept on this machine · saved {stamp.saved[11:16]}" if stamp else "Nothing to keep yet"
+
+
 def title() -> str:
-    """`Frost node · 26 MHz radio · saved 14:32`."""
-    work, saved = session.work(), st.session_state.saved
-    named = work.circuit.name if len(work.circuits) > 1 or work.circuit.name else ""
-    when = f"saved {saved.saved[11:16]}" if saved else "nothing to save yet"
-    return " · ".join(filter(None, (work.name or "Work", named, when)))
+    """`Frost node · 26 MHz radio`."""
+    work = session.work()
+    return " · ".join(filter(None, (work.name or "Work", work.circuit.name)))
 
 
 def work_menu() -> None:
