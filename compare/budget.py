@@ -94,13 +94,6 @@ def parabola_ppm_range(
     return np.minimum.reduce(corners), np.maximum.reduce(corners)
 
 
-def sum_of_ends(*terms: tuple[ArrayLike, ArrayLike]) -> tuple[Array, Array]:
-    """Low and high of a sum of causes that know nothing of one another: all lows together, all highs together."""
-    low = sum((array(term[0]) for term in terms), np.zeros(()))
-    high = sum((array(term[1]) for term in terms), np.zeros(()))
-    return low, high
-
-
 def seconds_per_day(error_ppm: ArrayLike) -> Array:
     """Seconds a day = ppm × 0.0864."""
     seconds: Array = array(error_ppm) * PPM * SECONDS_PER_DAY

@@ -166,16 +166,6 @@ def motional_resistance_ohm(esr_at_load_ohm: Array, shunt_capacitance_pf: Array,
     return resistance
 
 
-def load_step_ppm(
-    motional_capacitance_ff: Array, shunt_capacitance_pf: Array, from_load_pf: Array, to_load_pf: Array
-) -> Array:
-    """(f(CL') - f(CL)) / f(CL) with fL = fs √(1 + C1/(C0 + CL)): a finite step of load, R1 neglected."""
-    before = motional_capacitance_ff * FEMTO / ((shunt_capacitance_pf + from_load_pf) * PICO)
-    after = motional_capacitance_ff * FEMTO / ((shunt_capacitance_pf + to_load_pf) * PICO)
-    step: Array = np.expm1((np.log1p(after) - np.log1p(before)) / 2) / PPM
-    return step
-
-
 class Estimate(NamedTuple):
     """What a value is likely to be: an interval meant to hold nine crystals in ten, and what it rests on."""
 

@@ -350,11 +350,6 @@ def _reading_lines(reading: Reading, widths: Sequence[int]) -> Iterator[str]:
         yield from wrapped(f"look: {reading.check}", "      ")
 
 
-def _band_text(band: tuple[float, float], unit: str) -> str:
-    low, high = (figure(end, 8) for end in band)
-    return f"at {low} {unit}" if low == high else f"{low} to {high} {unit}"
-
-
 def when_text(when: When) -> str:
     """Where a reading holds, in words; empty where it holds everywhere."""
     bands = {"MHz": when.frequency_mhz, "pF": when.load_capacitance_pf, "°C": when.temperature_c}

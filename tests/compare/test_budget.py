@@ -76,8 +76,3 @@ def test_a_range_short_of_the_turnover_never_touches_zero() -> None:
     """By hand: at best -0.03 (20 - 10)² = -3 ppm."""
     low, high = budget.parabola_ppm_range((0, 10), (-0.04, -0.03), (20, 30))
     assert (float(low), float(high)) == (pytest.approx(-36.0), pytest.approx(-3.0))
-
-
-def test_ends_are_added_to_ends() -> None:
-    low, high = budget.sum_of_ends((-10, 10), (-20, 5), (np.array([-3.0, 0.0]), np.array([3.0, 1.0])))
-    assert (low.tolist(), high.tolist()) == ([-33.0, -30.0], [18.0, 16.0])
