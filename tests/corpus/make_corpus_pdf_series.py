@@ -211,6 +211,53 @@ level 1 mW max., fundamental.</p><table>\
     )
 
 
+def indented_modes() -> None:
+    body = f"""<h1>Schwingquarz-Serie HWQ-75</h1><p>Halbwerk Quarze e.K.</p>\
+<table class=n>{
+        rows('''Frequenzbereich:|10,0 … 160 MHz
+– Grundton:|10,0 … 45 MHz
+– 3. Oberton:|45 … 110 MHz
+– 5. Oberton:|110 … 160 MHz
+Abgleichtoleranz <sup>1)</sup>:|±10 ppm
+Frequenzstabilität <sup>2)</sup>:|±15 ppm
+Arbeitstemperaturbereich:|-10 °C … +60 °C
+Lastkapazität:|20 pF oder Serie
+Resonanzwiderstand R<sub>r</sub>:|typ. 20 Ω, max. 40 Ω
+Statische Kapazität:|max. 6 pF
+Alterung:|max. ±2 ppm/Jahr
+Quarzbelastung:|0,1 mW
+Gehäuse:|7,5 × 5,0 mm''')
+    }</table><p><small>1) bei 25 °C ± 2 °C; engere Toleranzen auf Anfrage\
+<br>2) bezogen auf 25 °C; ±30 ppm für -40 °C … +85 °C</small></p>"""
+    keep(
+        "hwq_de.pdf",
+        printed(body, "td{text-align:left}", lang="de"),
+        [
+            part(
+                "HWQ-75",
+                """
+            f 10..160 also=10..45
+            f 10..45 mode=fund also=10..45
+            f 45..110 mode=3rd also=45..110
+            f 110..160 mode=5th also=110..160
+            tol ±10
+            stab ±15
+            stab ±30 t=-40:85
+            op -10..60
+            cl 20
+            esr -/20/40
+            c0 <6
+            age ±2 y=1
+            dl 100 bare""",
+                maker="Halbwerk Quarze e.K.",
+                package="7,5 × 5,0 mm",
+            )
+        ],
+        "de",
+        "modes in indented rows, footnotes that widen the range",
+    )
+
+
 if __name__ == "__main__":
-    for make in (lying_symbols, percent_totals, unit_in_label, folded_order_numbers):
+    for make in (indented_modes, lying_symbols, percent_totals, unit_in_label, folded_order_numbers):
         make()
