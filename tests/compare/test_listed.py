@@ -11,6 +11,7 @@ from compare.lot import AT_SETTING, OF_OFFER
 from compare.ranking import rank
 from compare.reckoning import choose_loads
 from compare.review import review
+from extract import read_sheet
 from extract.model import FIELD_NAMES, SpecSheet
 from extract.partlist import Chunk, PartList
 
@@ -196,3 +197,15 @@ def test_a_list_is_not_taken_apart_row_by_row(monkeypatch):
     assert len(lot.at(0, "esr").values) == 1
     rank_of = choose_loads(lot, bench())
     assert len(rank_of) == 50
+
+
+def test_a_list_as_read_is_ranked_as_its_parts_are_with_the_same_places():
+    head = "Part number,Frequency (MHz),Load capacitance (pF),ESR max (ohm),C0 max (pF),Package,Mode"
+    cells = [
+        f"OR{at:03d},{(12, 16, 16.0)[at % 3]},{6 + at % 4},{40 + at % 7},{1 + at % 5},3225,Fundamental"
+        for at in range(300)
+    ]
+    read = read_sheet("\n".join([head, *cells]).encode(), "list.csv")
+    assert isinstance(read.parts, PartList)
+    apart = read.model_copy(update={"parts": tuple(read.parts)})
+    assert rank([read], bench()) == rank([apart], bench())

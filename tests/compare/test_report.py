@@ -102,3 +102,20 @@ def test_a_sheets_readings_are_told_with_bounds_band_and_place():
         ["12", "to", "16", "MHz"],
         ["look:", "unit", "guessed"],
     ]
+
+
+def test_rows_that_are_not_shown_are_counted_by_verdict():
+    parts = [usual(number=f"P{number}") for number in range(4)] + [usual(number="P4", without=("esr_ohm",))]
+    text = rank_text(rank([sheet(*parts)], bench(), shown=2))
+    assert text.startswith("5 parts offer the frequency: ▲ 4 meets, ◇ 1 cannot tell")
+    assert "... and 3 more; --all shows and --json gives all of them" in text
+    assert "P1" in text
+    assert "P2" not in text
+
+
+def test_of_thousands_of_notes_the_first_are_told_and_the_rest_counted():
+    far = [usual(reading("frequency_mhz", 12.0), number=f"N{number}") for number in range(150)]
+    text = rank_text(rank([sheet(usual(), *far)], bench()))
+    assert "N99:" in text
+    assert "N100:" not in text
+    assert "... and 50 more; --json gives all of them" in text
