@@ -267,11 +267,6 @@ def _advice(advice: Row) -> str:
     return f"A series resistor of **{ohm} Ω**: drive at most {drive} µW, margin {margin}."
 
 
-def note_lines(result: Mapping[str, Any]) -> list[str]:
-    """What else there is to say: parts that do not offer the frequency, and the like."""
-    return [told(note["message"] if isinstance(note, Mapping) else str(note)) for note in result["notes"]]
-
-
 def question_lines(review: Row) -> list[str]:
     """What to ask, as ready sentences."""
     return [told(question) for question in review["questions"]]

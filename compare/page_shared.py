@@ -50,13 +50,6 @@ def ready() -> Bench | None:
     return desk.bench
 
 
-def others(result: dict[str, Any]) -> None:
-    if lines := answers.note_lines(result):
-        with st.expander(f"What else there is to say ({len(lines)})", expanded=not result["rows"]):
-            for line in lines:
-                st.markdown(f"- {pieces.plain(line)}")
-
-
 def cautions() -> None:
     st.markdown(f":gray[:small[{' '.join(CAUTIONS)} {PRIVACY}]]")
 

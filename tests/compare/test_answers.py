@@ -84,11 +84,6 @@ def test_advice_is_a_sentence_with_what_it_does_at_worst():
     ]
 
 
-def test_notes_of_either_shape_are_read():
-    notes = [{"level": "info", "message": "x.pdf: states no frequency", "where": None}, "plain"]
-    assert answers.note_lines(hand_made.ranking(notes=notes)) == ["x.pdf: states no frequency", "plain"]
-
-
 def test_bench_keys_in_messages_are_said_by_the_names_of_their_fields():
     message = "cannot be told: circuit.input_capacitor_pf not known; give circuit.condition[1].swing_v"
     assert answers.told(message) == "cannot be told: “Fitted, A–0” not known; give “Swing”"

@@ -93,3 +93,17 @@ def test_the_questions_about_what_cannot_be_told_are_ready():
     untold = UNTOLD | {"maker": "Quenby", "questions": ["What is the greatest ESR of QX26-8 at 26 MHz?"]}
     assert choose_shown.to_ask([MEETS, untold]) == [("Quenby, QX26-8", "What is the greatest ESR of QX26-8 at 26 MHz?")]
     assert choose_shown.ask_heading(2) == "Two cannot be told. Ask:"
+
+
+def test_a_page_of_rows_is_small_enough_to_send_at_each_change():
+    names = list(MEETS["slack"])
+    rows = [
+        hand_made.row(
+            place, f"PART-{place:05}", slack={name: 0.4 + 0.037 * place * (at + 1) for at, name in enumerate(names)}
+        )
+        for place in range(1, choose_shown.PAGE_ROWS + 1)
+    ]
+    frame = choose_shown.rank_frame([Candidate(row, PRICED) for row in rows], LIGHT)
+    assert len(set(frame[choose_shown.STRIP_COLUMN])) == len(rows)
+    # Half a megabyte is what a change may cost; a change sends the rows once, and charts and words beside them.
+    assert len(frame.to_csv().encode()) < 300_000
