@@ -14,12 +14,13 @@ import numpy as np
 from compare.advice import candidate_pairs
 from compare.bench import Bench
 from compare.circuit import Array
-from compare.columns import HIGH, LOW, MID, Columns
+from compare.columns import HIGH, LOW, MID, Columns, Flags
 from compare.corners import Nodes, as_reckoned, corner_circuit
 from compare.figures import number
 from compare.offer import Offer, with_load
 from compare.oscillation import Crystal, analyse
 from compare.reckoning import Reckoning, reckon_offers
+from compare.stated import Taken
 from compare.trial import pair_corners
 from compare.verdict import MEETS
 
@@ -64,22 +65,37 @@ class Bearing:
 def rated_loads(bench: Bench, reckoning: Reckoning | None) -> list[float]:
     """Loads that parts offer, and the usual ones, in order."""
     clock = bench.requirement.frequency_mhz < CLOCKS_BELOW_MHZ
-    offered = {load for offer in _offers(reckoning) for load in loads_of(offer)}
+    offered = set() if reckoning is None else {load for loads, _ in _by_loads(reckoning.columns) for load in loads}
     usual = [load for load in USUAL_LOADS_PF[clock] if all(abs(load - one) > CLOSE_PF for one in offered)]
     room = max(MOST_LOADS - len(usual), 3)
     return sorted([*sorted(offered)[:room], *usual])
 
 
-def _offers(reckoning: Reckoning | None) -> Sequence[Offer]:
-    return () if reckoning is None else reckoning.columns.offers
+def _by_loads(columns: Columns) -> list[tuple[tuple[float, ...], Flags]]:
+    """For each choice of rated loads that occurs, which parts have it; looked up by column, for lists of thousands."""
+    choice, rated = columns.offers.column("load_choice"), columns.offers.column("load")
+    pairs, which = np.unique(np.stack([choice.codes, rated.codes]), axis=1, return_inverse=True)
+    numbers: dict[tuple[float, ...], list[int]] = {}
+    for at, (chosen, load) in enumerate(pairs.T.tolist()):
+        options, _ = choice.values[chosen]
+        numbers.setdefault(_loads(options, rated.values[load]), []).append(at)
+    return [(loads, np.isin(which.ravel(), of)) for loads, of in numbers.items()]
 
 
-def loads_of(offer: Offer) -> tuple[float, ...]:
+def _loads(options: tuple[float, ...], rated: Taken) -> tuple[float, ...]:
     """The rated loads that a part can be ordered with; none for a series-resonant one."""
-    if offer.load_options:
-        return offer.load_options
-    value = offer.load.span.mid
-    return (value,) if math.isfinite(value) else ()
+    if options:
+        return options
+    return (rated.span.mid,) if math.isfinite(rated.span.mid) else ()
+
+
+def offering(columns: Columns, load_pf: float) -> Flags:
+    """(n,) true for the parts that offer a rated load."""
+    found: Flags = np.zeros(len(columns), dtype=bool)
+    for loads, which in _by_loads(columns):
+        if load_pf in loads:
+            found |= which
+    return found
 
 
 def pair_for(bench: Bench, load_pf: float) -> Pair | None:
@@ -130,12 +146,12 @@ def bearings(bench: Bench, reckoning: Reckoning | None) -> tuple[list[Bearing], 
     for load, pair in zip(loads, pairs, strict=True):
         bears = next(borne) if pair is not None else np.full(1 + len(steps), np.nan)
         allowed = bears / bench.requirement.margin
-        offering, below = _below(reckoning, load, allowed[1:][step_of] if len(steps) else allowed[:0])
+        offer, below = _below(reckoning, load, allowed[1:][step_of] if len(steps) else allowed[:0])
         fitted = pair is not None and (pair.input_pf, pair.output_pf) == (
             now.input_capacitor_pf,
             now.output_capacitor_pf,
         )
-        found.append(Bearing(load, pair, _or_none(bears[0]), _or_none(allowed[0]), offering, below, fitted))
+        found.append(Bearing(load, pair, _or_none(bears[0]), _or_none(allowed[0]), offer, below, fitted))
     return found, c0
 
 
@@ -168,8 +184,8 @@ def _below(reckoning: Reckoning | None, load_pf: float, allowed_ohm: Array) -> t
     if reckoning is None:
         return 0, 0
     esr: Array = reckoning.columns.esr_ohm[:, HIGH].max(axis=0)
-    offers = [at for at, offer in enumerate(reckoning.columns.offers) if load_pf in loads_of(offer)]
-    return len(offers), sum(bool(esr[at] <= allowed_ohm[at]) for at in offers)
+    offers = offering(reckoning.columns, load_pf)
+    return int(offers.sum()), int((offers & (esr <= allowed_ohm)).sum())
 
 
 @dataclass(frozen=True)
@@ -191,12 +207,13 @@ def gm_settings(bench: Bench, columns: Columns, settings_ms: Sequence[float]) ->
 
     The conditions of the bench keep their ratio to the circuit's gm.
     """
-    loads = sorted({load for offer in columns.offers for load in loads_of(offer)})
+    loads = sorted({load for loads, _ in _by_loads(columns) for load in loads})
     rows = []
     for load in loads:
         pair = pair_for(bench, load)
         if pair is not None:
-            offers = [with_load(offer, load, bench) for offer in columns.offers if load in loads_of(offer)]
+            there = np.flatnonzero(offering(columns, load)).tolist()
+            offers = [with_load(columns.offers[at], load, bench) for at in there]
             rows.append([_setting(bench, offers, (load, pair, gm)) for gm in sorted(settings_ms)])
     return rows
 

@@ -15,6 +15,8 @@ from compare.page_trial import try_it
 from compare.ranking import Ranked
 
 MOST_ADVICE = 4
+# Of a list of thousands the best as the circuit is now; all of them would take minutes.
+MOST_PARTS = 100
 
 
 def candidates(bench: Bench) -> Ranked | None:
@@ -66,7 +68,7 @@ def _bearings(key: str, _bench: Bench, _contest: Ranked | None) -> tuple[list[be
 def _settings(key: str, gains: tuple[float, ...], _bench: Bench, _contest: Ranked) -> list[list[bearing.Setting]]:  # noqa: ARG001
     if _contest.reckoning is None:
         return []
-    return bearing.gm_settings(_bench, _contest.reckoning.columns, gains)
+    return bearing.gm_settings(_bench, _contest.reckoning.columns.take(_contest.ordered[:MOST_PARTS]), gains)
 
 
 def gain_settings(bench: Bench, contest: Ranked | None) -> None:
