@@ -15,6 +15,9 @@ def _words(text: str) -> tuple[str, ...]:
     return tuple(wording.oscillator_words(text))
 
 
+# Sentences about a crystal speak of its oscillator; in a short text the word names the part.
+ALONE = 40
+_GENERIC = ("oscillat", "oszillat", "oscilador")
 REQUIREMENT = "a list of what a chip asks of a crystal"
 # A heading is short; longer is a sentence.
 HEADING = 80
@@ -31,7 +34,12 @@ def refusal(texts: Iterable[str], *, least: int = 2) -> str | None:
 
     `least` is how many different words of an oscillator's sheet it takes: one beside a list's row, two in a sheet.
     """
-    found = {key(word) for text in texts for word in _words(text)}
+    found = {
+        key(word)
+        for text in texts
+        for word in _words(text)
+        if len(text) <= ALONE or " " in word.strip() or not key(word).startswith(_GENERIC)
+    }
     kinds = [vocabulary().oscillator.get(word, "words") for word in found]
     if "requirement" in kinds:
         return REQUIREMENT
