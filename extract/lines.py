@@ -226,6 +226,9 @@ def _label_over_value(lines: Sequence[Line], index: int, items: list[Item]) -> i
     line = lines[index]
     if len(line.segments) != 1 or not is_label(line.text) or meaning(line.text).value or _holds_its_value(line.text):
         return 0
+    if _has_pair(line.text) or line.text.rstrip().endswith("。"):
+        # "製造者：..." has its value beside it, and a sentence is no label of what stands below it.
+        return 0
     end = index + 1
     label_here = meaning(line.text.strip(" :：")).label
     field = label_here.field if label_here is not None else ""
@@ -282,7 +285,17 @@ def _is_value_line(line: Line) -> bool:
         and not is_label(text)
         and len(text) <= 60
         and not choices_in(text)
+        and not _is_numbered_pair(text)
     )
+
+
+def _is_numbered_pair(text: str) -> bool:
+    """Whether a line is a label with its value behind the number of its paragraph ("2.1 Nominal frequency: 26 MHz")."""
+    pairs = split_pairs(text)[0]
+    return bool(pairs) and is_label(_PARAGRAPH.sub("", pairs[0][0]))
+
+
+_PARAGRAPH = re.compile(r"^[\d.()]+\s+")
 
 
 def _key_run(lines: Sequence[Line], index: int, items: list[Item]) -> int:

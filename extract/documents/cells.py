@@ -113,26 +113,34 @@ def columns_parted(pieces: Sequence[Piece]) -> list[Piece]:
     count = max(piece.cell.column + piece.cell.column_span for piece in pieces)
     for column in range(count - 1, -1, -1):
         own = [piece for piece in result if piece.cell.column == column and piece.cell.column_span == 1]
-        columns = _columns_in(own)
+        columns = _columns_in(own, whole_rows=count == 1)
         if len(columns) > 1:
             result = _column_parted(result, own, column, columns)
     return result
 
 
-def _columns_in(own: Sequence[Piece]) -> list[Span]:
-    """Columns inside one grid column; texts merged over them, which stand in the middle, do not hide them."""
+def _columns_in(own: Sequence[Piece], *, whole_rows: bool) -> list[Span]:
+    """Columns inside one grid column; texts merged over them, which stand in the middle, do not hide them.
+
+    `whole_rows`: each piece is a row of the table, so that what stands in its lines stands side by side.
+    """
     if sum(len(line) > 1 for piece in own for line in piece.lines) < 2:
         return []
     apart = [piece for piece in own if not _in_middle(piece)]
-    columns = _all_columns([line for piece in apart for line in piece.lines])
+    columns = _columns_of_pieces(apart, whole_rows)
     if len(columns) > 1 and not any(_is_middle_column(piece, columns) for piece in apart):
         return columns
-    return _all_columns([line for piece in own for line in piece.lines])
+    return _columns_of_pieces(own, whole_rows)
 
 
-def _all_columns(lines: Sequence[list[Word]]) -> list[Span]:
+def _columns_of_pieces(pieces: Sequence[Piece], whole_rows: bool) -> list[Span]:
+    rows = [[segment for line in piece.lines for segment in split_at_gaps(line)] for piece in pieces]
+    return _all_columns([line for piece in pieces for line in piece.lines], rows if whole_rows else None)
+
+
+def _all_columns(lines: Sequence[list[Word]], rows: Sequence[Sequence[list[Word]]] | None = None) -> list[Span]:
     """Columns by wide gaps, or by narrow ones where these show more."""
-    columns, fine = columns_of([split_at_gaps(line) for line in lines]), fine_columns_of(lines)
+    columns, fine = columns_of([split_at_gaps(line) for line in lines], rows), fine_columns_of(lines)
     columns = fine if len(fine) > len(columns) else columns
     if len(columns) < 2:
         return columns

@@ -19,10 +19,11 @@ def span_of(segment: Sequence[Word]) -> Span:
     return (first.x0, first.x1 if len(segment) == 1 else max(word.x1 for word in segment))
 
 
-def columns_of(lines: Sequence[Sequence[Segment]]) -> list[Span]:
+def columns_of(lines: Sequence[Sequence[Segment]], rows: Sequence[Sequence[Segment]] | None = None) -> list[Span]:
     """Columns that the segments of these lines stand in, from left to right; one column where they do not line up.
 
-    A few lines may run across a gutter (a merged cell, a heading): one in five.
+    A few lines may run across a gutter (a merged cell, a heading): one in five. A column has others beside it in a
+    line, or where `rows` of several lines are given in a row: a wrapped number stands above and below its neighbours.
     """
     spans = [[span_of(segment) for segment in line] for line in lines]
     several = [line for line in spans if len(line) > 1]
@@ -30,7 +31,8 @@ def columns_of(lines: Sequence[Sequence[Segment]]) -> list[Span]:
         return [_whole(spans)] if any(spans) else []
     columns = _covered([span for line in spans for span in line], int(0.2 * len(spans)))
     columns = _with_lonely(columns, [span for line in spans for span in line])
-    columns = [column for column in columns if _has_company(column, columns, several)]
+    beside = several if rows is None else [[span_of(segment) for segment in row] for row in rows]
+    columns = [column for column in columns if _has_company(column, columns, beside)]
     return columns if len(columns) > 1 else [_whole(spans)]
 
 

@@ -367,3 +367,14 @@ def test_an_eastern_heading_wrapped_in_most_cells_is_one_row():
     ]
     table = only_table(blocks(wide, grid(xs, ys)))
     assert table.rows == 2
+
+
+def test_a_wrapped_number_is_a_column_beside_values_set_between_its_lines():
+    words, rulings = [], [Ruling(40, 90, 400, 90)]
+    for index, (number, end, value) in enumerate([("QRB16-", "A", "16"), ("QRB20-", "B", "20"), ("QRB24-", "C", "24")]):
+        top = 95.0 + 40 * index
+        words += (
+            text(number, 45, top) + text(end, 45, top + 20) + text(value, 200, top + 10) + text("60", 300, top + 10)
+        )
+        rulings.append(Ruling(40, top + 35, 400, top + 35))
+    assert texts(only_table(blocks(words, rulings)))[0] == ["QRB16-\nA", "16", "60"]

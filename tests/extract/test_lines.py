@@ -149,3 +149,11 @@ def test_a_footnote_that_is_a_temperature_range_states_it():
     items = line_items([line("*1 ref. to 25 °C. *2 Storage temperature -40 to +125 °C")])
     found = [each for item in items if isinstance(item, Entry) for each in entry_candidates(item)]
     assert [(each.field, each.min, each.max) for each in found] == [("storage_temperature_c", -40, 125)]
+
+
+def test_a_numbered_paragraph_with_its_own_value_is_no_value_of_the_line_above():
+    lines = ["製造者:羽根水晶工業株式会社", "1. 適用範囲", "本仕様書は水晶振動子に適用する。", "2.1 公称周波数:26 MHz"]
+    entries = [item for item in line_items([line(text) for text in lines]) if isinstance(item, Entry)]
+    found = {entry.label.text: [value.piece.text for value in entry.values] for entry in entries}
+    assert found["製造者"] == ["羽根水晶工業株式会社"]
+    assert [values for label, values in found.items() if "公称周波数" in label] == [["26 MHz"]]
