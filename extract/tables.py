@@ -13,6 +13,7 @@ from itertools import pairwise
 
 from extract import trace, wording
 from extract.candidates import read
+from extract.cards import rows_of_cards
 from extract.documents.grid import TextRow
 from extract.documents.model import Cell, Table
 from extract.entries import Column, Item, Listing, Piece, Text
@@ -47,6 +48,8 @@ def read_table(table: Table) -> list[Item]:
         return list(pads)
     if short and (offered := read_matrix(rows)):
         return list(offered)
+    if short and (cards := rows_of_cards(rows)):
+        return list(parameter_entries(cards, [], table.title))
     if _bands_across(rows):
         rows = [list(row) for row in zip(*rows, strict=True)]
     items: list[Item] = [Text(Piece(table.title, table.where), heading=True)] if table.title else []

@@ -15,7 +15,7 @@ from extract.units import kinds
 from extract.vocabulary import vocabulary
 
 # What a line that is not at its end ends in: a sign between two numbers, a relation, an opened list.
-_OPEN_END = re.compile(r"[~…≤≥<>=±@,]$|[^\W\d_]/$|(?<![\w-])[-+]?\d[\d.]*\s*[a-zΩμµ°]{0,3}\s*-$", re.IGNORECASE)
+_OPEN_END = re.compile(r"[~…≤≥<>=±@,]$|[^\W\d_]/$|(?<![\w.-])[-+]?\d[\d.]*\s*[a-zΩμµ°]{0,3}\s*-$", re.IGNORECASE)
 # A relation in the middle of a band ("20 MHz" above "≤ f < 30 MHz").
 _MIDDLE = re.compile(r"(?:[≤≥<>]\s*f\b|[~…]\s*[-+]?\d)", re.IGNORECASE)
 _UNIT_ALONE = re.compile(r"[^\s\d,;:()]+")

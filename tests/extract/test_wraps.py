@@ -24,7 +24,16 @@ def test_a_break_inside_one_expression_is_a_space(wrapped: str, line: str) -> No
 
 @pytest.mark.parametrize(
     "stacked",
-    ["7\n9\n12.5 pF", "-40\n+85", "A: 10 ppm\nB: 20 ppm", "QRB-2016-\n4567", "-\n60 Ω", "60\nF", "typ 10\nmax 60"],
+    [
+        "7\n9\n12.5 pF",
+        "-40\n+85",
+        "A: 10 ppm\nB: 20 ppm",
+        "QRB-2016-\n4567",
+        "QRB16-16.000M-\n08A",
+        "-\n60 Ω",
+        "60\nF",
+        "typ 10\nmax 60",
+    ],
 )
 def test_lines_that_stand_for_themselves_stay_apart(stacked: str) -> None:
     assert unwrapped(stacked) == stacked
