@@ -120,7 +120,7 @@ def _up_to_legal_form(name: str) -> str:
     """The name without what follows its legal form ("Able Crystals Ltd. SMD")."""
     words = name.split()
     last = max((index for index, word in enumerate(words) if index and _is_legal(word)), default=len(words) - 1)
-    return " ".join(words[: last + 1])
+    return " ".join(words[: last + 1]).rstrip(",")
 
 
 def maker_of(items: Sequence[Item], headers: Sequence[Text], *, sure: bool = False) -> str | None:

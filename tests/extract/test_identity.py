@@ -135,3 +135,7 @@ def test_words_behind_a_holder_are_no_maker():
         Text(Piece("BELLCHAMBER CRYSTALS", Where(line=2))),
     ]
     assert maker_of(top, ()) == "BELLCHAMBER CRYSTALS"
+
+
+def test_a_comma_behind_the_legal_form_is_no_part_of_the_name():
+    assert makers_in("Lindenbrück Quarztechnik KG, Katalog 2025")[0][0] == "Lindenbrück Quarztechnik KG"
