@@ -49,6 +49,8 @@ def _by_row(pieces: Sequence[Piece]) -> dict[int, list[Piece]]:
 
 
 _OPEN_END = re.compile(r"(?:[\w)][-/]|(?<=\d)\s?[~～…]|\b(?:to|bis|à|a|and|or|und))$")
+# A unit, or a word such as "max", that had no room behind its number.
+_WORD_ALONE = re.compile(r"[^\W\d]{1,6}\.?|[^\w\s]{0,2}[^\W\d_]{1,4}(?:/[^\W\d_]{1,4})?[²2]?")
 _EAST_END, _EAST_START = re.compile(r"[\u3040-\u30ff\u3400-\u9fff]$"), re.compile(r"^[\u3040-\u30ff\u3400-\u9fff]")
 
 
@@ -64,7 +66,7 @@ def _is_wrapped(piece: Piece) -> bool:
     left, _, right, _ = piece.cell.box
     for line, below in zip(piece.lines, piece.lines[1:], strict=False):
         end, begin = line[-1], below[0]
-        if _OPEN_END.search(joined(line)):
+        if _OPEN_END.search(joined(line)) or (end.text[-1:].isdigit() and _WORD_ALONE.fullmatch(joined(below))):
             continue
         free = right - end.x1 - (min(word.x0 for word in line) - left)
         full = free < 1.2 * end.size and len(end.text) > 1

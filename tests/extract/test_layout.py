@@ -378,3 +378,14 @@ def test_a_wrapped_number_is_a_column_beside_values_set_between_its_lines():
         )
         rulings.append(Ruling(40, top + 35, 400, top + 35))
     assert texts(only_table(blocks(words, rulings)))[0] == ["QRB16-\nA", "16", "60"]
+
+
+def test_a_unit_that_had_no_room_behind_its_number_begins_no_row():
+    words = text("Frequency", 55, 110)
+    for x, low in ((155, "24.0-60.0"), (355, "8.0-60.0")):
+        words += text(low, x, 104) + text("MHz", x, 116)
+    words += text("16.0-60.0 MHz", 255, 110)
+    rulings = grid([50, 150, 250, 350, 450], [100, 130])
+    assert texts(only_table(blocks(words, rulings))) == [
+        ["Frequency", "24.0-60.0\nMHz", "16.0-60.0 MHz", "8.0-60.0\nMHz"]
+    ]
