@@ -13,6 +13,7 @@ from extract.conditions import condition_of
 from extract.documents.model import Cell
 from extract.entries import Entry, Piece, Value
 from extract.fold import fold
+from extract.model import Where
 
 Row = Sequence[Cell | None]
 STABILITY = "frequency_stability_ppm"
@@ -34,13 +35,13 @@ def _upright(rows: Sequence[Row]) -> list[Entry]:
         return []
     start = next((index for index, row in enumerate(rows) if len(_ranges_below(rows, index)) >= LEAST), 0)
     head = rows[start - 1] if start else ()
-    sizes = {column: size for column, cell in enumerate(head) if column and cell is not None and (size := _size(cell))}
+    sizes = {column: cell for column, cell in enumerate(head) if column and cell is not None and _is_size(cell)}
     body = [row for row in rows[start:] if _range_of(row) is not None]
     marks = [[row[column] for column in sizes] for row in body]
     if len(sizes) < LEAST or len(body) < LEAST or not _all_marks([cell for row in marks for cell in row]):
         return []
     marked = any(cell is not None and _MARKS.fullmatch(fold(cell.text)) for row in marks for cell in row)
-    unit = "" if any("ppm" in fold(text).casefold() for text, _ in sizes.values()) else "ppm"
+    unit = "" if any("ppm" in fold(cell.text).casefold() for cell in sizes.values()) else "ppm"
     return [
         entry
         for row in body
@@ -65,12 +66,12 @@ def _range_of(row: Row) -> tuple[float, float] | None:
     return span or condition_of(f"{fold(cell.text)} °C").temperature_c
 
 
-def _size(cell: Cell) -> tuple[str, float] | None:
-    """The text and the size of a head that is one ± and no more."""
+def _is_size(cell: Cell) -> bool:
+    """Whether a head is one ± and no more."""
     if not _SIZE.match(fold(cell.text)):
-        return None
+        return False
     found = read_values(cell.text, STABILITY, unit="ppm")
-    return (cell.text, found[0].max) if len(found) == 1 and found[0].max is not None else None
+    return len(found) == 1 and found[0].max is not None
 
 
 def _all_marks(cells: Sequence[Cell | None]) -> bool:
@@ -85,11 +86,21 @@ def _offered(cell: Cell | None, *, marked: bool) -> bool:
     return bool(text) and not refused
 
 
-def _entry(row: Row, sizes: dict[int, tuple[str, float]], unit: str) -> Entry | None:
+def _entry(row: Row, sizes: dict[int, Cell], unit: str) -> Entry | None:
     cell = row[0]
     if cell is None or not sizes:
         return None
-    choice = ", ".join(" ".join(text.split()) for text, _ in sizes.values())
+    heads = list(sizes.values())
+    choice = ", ".join(" ".join(head.text.split()) for head in heads)
     span = fold(cell.text) if "°" in fold(cell.text) else f"{fold(cell.text)} °C"
-    value = Value(Piece(f"{choice} {unit}".strip(), cell.where, cell.confidence))
+    value = Value(Piece(f"{choice} {unit}".strip(), _place(heads), min(head.confidence for head in heads)))
     return Entry(Piece(" ".join(cell.text.split()), cell.where), (value,), symbol="f_stab", conditions=(span,))
+
+
+def _place(heads: Sequence[Cell]) -> Where:
+    """The place of the heads that hold the sizes: the box around them, or the first one's cell."""
+    boxes = [head.where.box for head in heads if head.where.box is not None]
+    if not boxes:
+        return heads[0].where
+    left, top, right, bottom = zip(*boxes, strict=True)
+    return heads[0].where.model_copy(update={"box": (min(left), min(top), max(right), max(bottom))})

@@ -80,7 +80,6 @@ class Fragments:
                 self._broken.append(self._broken[-1] + _is_broken(self._lines[index], below))
         return self._broken[self._end - start]
 
-
     def _whole_from(self, start: int) -> int:
         """How many lines from `start` to the end of its run are a label with its value and nothing else."""
         if self._whole is None:
@@ -148,10 +147,18 @@ def _sure(line: Line) -> float:
     return min((segment.confidence for segment in line.segments), default=1.0)
 
 
+_NUMBER = re.compile(r"[-+±]?\d+(?:[.,]\d+)*")
+_UNIT_BEHIND = re.compile(r"\s?[^\s\d,;]*")
+
+
 def _line_of(text: str, lines: Sequence[Line], start: int) -> tuple[Line, int]:
-    """The first line from `start` on that holds the first number of a text."""
-    number = re.search(r"[-+±]?\d+(?:[.,]\d+)*", text)
-    for index in range(start, len(lines)):
-        if number is None or number[0] in fold(lines[index].text):
-            return lines[index], index
+    """The first line from `start` on that holds the first number of a text, if possible with the unit behind it."""
+    number = _NUMBER.search(text)
+    if number is not None:
+        unit = _UNIT_BEHIND.match(text, number.end())
+        for printed in (number[0] + (unit[0] if unit else ""), number[0]):
+            whole = re.compile(rf"(?<![\d.,]){re.escape(printed)}(?![\d])")
+            for index in range(start, len(lines)):
+                if whole.search(fold(lines[index].text)):
+                    return lines[index], index
     return lines[start if start < len(lines) else 0], start

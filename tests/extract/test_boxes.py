@@ -21,6 +21,9 @@ FOLDERS = (ROOT.parent / "sample_specs", ROOT / "corpus" / "sheets")
 PREFIXES = (1.0, 1e3, 1e-3, 1e6, 1e-6, 1e-9)
 NUMBER = re.compile(r"\d+(?:[.,' ]\d+)*")
 POWER = re.compile(r"(\d+(?:[.,]\d+)?)\s*[x×]\s*10\s*\^?(\d)")
+# "± .002%" of a frequency is 20 ppm.
+PERCENT = re.compile(r"(\d*[.,]?\d+)\s?%")
+PPM_PER_PERCENT = 1e4
 # A stroke's width, and rounding to a tenth of a point.
 MARGIN = 1.0
 
@@ -51,6 +54,7 @@ def numbers_in(text: str) -> set[float]:
                 found.add(float(plain))
             except ValueError:
                 continue
+    found |= {float(percent[1].replace(",", ".")) * PPM_PER_PERCENT for percent in PERCENT.finditer(text)}
     return found | {float(power[1].replace(",", ".")) * 10 ** int(power[2]) for power in POWER.finditer(text)}
 
 

@@ -31,3 +31,8 @@ def test_numbers_under_the_heads_make_no_matrix():
         )
         == []
     )
+
+
+def test_a_choice_stands_where_its_sizes_are_printed():
+    rows = table(("Temp.", "±10 ppm", "±20 ppm"), ("-20 ~ +70", "X", "O"), ("-40 ~ +85", "O", "X")).grid()
+    assert [entry.where for entry in read_matrix(rows)] == [rows[0][2].where, rows[0][1].where]
