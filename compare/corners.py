@@ -102,8 +102,8 @@ class Reckoned:
 
     nominal: dict[str, Array] = field(default_factory=dict)
     over: dict[str, Envelope] = field(default_factory=dict)
-    too_much_gain: Array = field(default_factory=lambda: np.empty(0))
-    """(n,) the IC's greatest transconductance over the one where oscillation stops again, in the worst corner."""
+    too_much_gain: Array = field(default_factory=lambda: np.empty((0, SHUNT_FLOOR)))
+    """(n, C0 ends) the IC's greatest transconductance over the one where oscillation stops again, worst corner."""
 
     def take(self, which: Whole) -> Reckoned:
         """Of some of the parts, by index."""
@@ -160,7 +160,7 @@ def _alike(columns: Columns) -> tuple[Whole, Whole]:
 
 def _reckon_distinct(columns: Columns, bench: Bench, wanted: Collection[str] | None, among: Columns) -> Reckoned:
     nominal = analyse_nominal(columns, bench, limiters_of(bench.settings[0].circuit)[0])
-    reckoned = Reckoned(nominal, {}, np.full(len(columns), -np.inf))
+    reckoned = Reckoned(nominal, {}, np.full((len(columns), SHUNT_FLOOR), -np.inf))
     for corners in _corner_sets(columns, bench, among):
         _widen_all(reckoned, corners, wanted)
     return reckoned
@@ -499,7 +499,8 @@ def _widen_at(
             _widen(reckoned, key, _six(values), (rows[0], slots), place)
         if too_much:
             greatest = _six(found["greatest_transconductance_ms"])
-            ratio = np.nan_to_num(corners.greatest_gm / greatest, nan=-np.inf).max(axis=(1, 2, *CORNERS))
+            ratio = np.nan_to_num(corners.greatest_gm / greatest, nan=-np.inf).max(axis=(2, *CORNERS))
+            ratio = ratio[:, place[:SHUNT_FLOOR] if ratio.shape[1] > 1 else [0] * SHUNT_FLOOR]
             reckoned.too_much_gain[rows[0]] = np.maximum(reckoned.too_much_gain[rows[0]], ratio)
 
 

@@ -8,7 +8,7 @@ from compare.bench import Bench, Setting
 from compare.circuit import Array
 from compare.columns import HIGH, LOW, Columns, Flags
 from compare.corners import corner_circuit, crystal_at, shunt_ends
-from compare.lot import spans
+from compare.lot import Whole, spans
 from compare.motional import series_resonance_mhz
 from compare.oscillation import Crystal, analyse
 from compare.verdict import CANNOT_TELL, FALLS_SHORT, MEETS, Judged, Silence, transconductance_missing
@@ -24,20 +24,30 @@ def judge_mode(columns: Columns, bench: Bench, known: Silence) -> Judged | None:
     n = len(columns)
     if not (overtone | unknown).any():
         return None
-    faster, starts = np.zeros(n, dtype=bool), np.zeros(n, dtype=bool)
+    trap, by_circuit = bench.circuit.overtone_trap, np.full(n, MEETS)
     which = np.flatnonzero(overtone)
-    if which.size:
-        faster[which], starts[which] = fundamental_against(columns.take(which), bench)
-    trap = bench.circuit.overtone_trap
+    if which.size and not trap:
+        by_circuit[which] = _by_circuit(columns.take(which), bench, known.shunt_missing[which])
     missing = {"mode": unknown} if unknown.any() else {}
     for key, flags in _lacking(columns, bench, known).items():
         if (flags & overtone).any() and not trap:
             missing[key] = flags & overtone
     lacking = np.logical_or.reduce([unknown, *missing.values()])
-    by_circuit = np.where(faster, FALLS_SHORT, np.where(starts, CANNOT_TELL, MEETS))
-    verdict = np.where(lacking, CANNOT_TELL, MEETS if trap else by_circuit)
-    none = np.full(n, np.nan)
-    return Judged("mode", overtone | unknown, verdict, none, none.copy(), missing)
+    reckoned = overtone & ~lacking & (not trap)
+    typical_only = known.esr_typical_only & reckoned
+    verdict = np.where(lacking | (typical_only & (by_circuit == MEETS)), CANNOT_TELL, by_circuit)
+    none, estimated = np.full(n, np.nan), known.shunt_missing & reckoned
+    by_estimate = {"shunt_capacitance_pf": estimated} if estimated.any() else {}
+    return Judged("mode", overtone | unknown, verdict, none, none.copy(), missing, by_estimate, typical_only)
+
+
+def _by_circuit(columns: Columns, bench: Bench, shunt_missing: Flags) -> Whole:
+    """(n,) verdict at the worst C0; where C0 is estimated and its ends differ it cannot be told."""
+    faster, starts = fundamental_against(columns, bench)
+    at_ends = np.where(faster, FALLS_SHORT, np.where(starts, CANNOT_TELL, MEETS))
+    worst = at_ends.min(axis=1)
+    verdict: Whole = np.where(shunt_missing & (worst != at_ends.max(axis=1)), CANNOT_TELL, worst)
+    return verdict
 
 
 def _lacking(columns: Columns, bench: Bench, known: Silence) -> dict[str, Flags]:
@@ -46,11 +56,11 @@ def _lacking(columns: Columns, bench: Bench, known: Silence) -> dict[str, Flags]
 
 
 def fundamental_against(columns: Columns, bench: Bench) -> tuple[Flags, Flags]:
-    """(n,) whether the fundamental grows faster than the overtone at any corner, and whether it can start at any."""
-    faster, starts = np.zeros(len(columns), dtype=bool), np.zeros(len(columns), dtype=bool)
+    """(n, C0 ends) whether the fundamental grows faster than the overtone at any corner, and whether it can start."""
+    faster, starts = np.zeros((2, len(columns), 2), dtype=bool)
     for number, setting in enumerate(bench.settings):
-        own, fundamental = _growths(columns, bench, number, setting)
-        corners = tuple(range(1, own.ndim))
+        own, fundamental = np.broadcast_arrays(*_growths(columns, bench, number, setting))
+        corners = tuple(range(2, own.ndim))
         faster |= (fundamental > own).any(axis=corners)
         starts |= (fundamental > 0).any(axis=corners)
     return faster, starts

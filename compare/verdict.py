@@ -94,7 +94,7 @@ def judge(columns: Columns, bench: Bench, reckoned: Reckoned) -> tuple[dict[str,
     known = silence(columns, bench)
     total = total_ppm(columns, bench, reckoned)
     judged = {key: _gain(key, columns, bench, reckoned, known) for key in GAINS}
-    judged["resistance_headroom"] = _with_greatest_gain(judged["resistance_headroom"], reckoned)
+    judged["resistance_headroom"] = _with_greatest_gain(judged["resistance_headroom"], reckoned, known)
     if bench.requirement.limits_ppm is not None:
         judged["total_ppm"] = _total(columns, bench, total, known)
     if "drive_headroom" in bench.requirement.given or any(s.circuit.swing_v is not None for s in bench.settings):
@@ -189,12 +189,18 @@ def _gain(key: str, columns: Columns, bench: Bench, reckoned: Reckoned, known: S
     return _judged(key, slacks, missing, estimated, known.esr_typical_only)
 
 
-def _with_greatest_gain(judged: Judged, reckoned: Reckoned) -> Judged:
-    """At or above the transconductance where oscillation stops again, in any corner: falls short."""
-    too_much = (reckoned.too_much_gain >= 1) & ~np.isnan(judged.worst)
-    over = np.minimum(judged.worst, 1 / np.where(too_much, reckoned.too_much_gain, 1.0))
-    judged.verdict = np.where(too_much, FALLS_SHORT, judged.verdict)
-    judged.slack = np.where(too_much, over, judged.slack)
+def _with_greatest_gain(judged: Judged, reckoned: Reckoned, known: Silence) -> Judged:
+    """At or above the transconductance where oscillation stops again, in any corner: falls short.
+
+    Where only some of the C0 that is estimated would bring it there it cannot be told.
+    """
+    most = reckoned.too_much_gain.max(axis=1)
+    least = np.where(known.shunt_missing, reckoned.too_much_gain.min(axis=1), most)
+    told = ~np.isnan(judged.worst)
+    too_much, perhaps = (most >= 1) & told, (least < 1) & (judged.verdict != FALLS_SHORT)
+    over = np.minimum(judged.worst, 1 / np.where(too_much, most, 1.0))
+    judged.verdict = np.where(too_much, np.where(perhaps, CANNOT_TELL, FALLS_SHORT), judged.verdict)
+    judged.slack = np.where(too_much, np.where(perhaps, np.nan, over), judged.slack)
     judged.worst = np.where(too_much, over, judged.worst)
     return judged
 

@@ -95,3 +95,24 @@ def test_a_resistance_stated_for_the_fundamental_is_put_in():
     both = usual(*[r for r in one.readings if r.field != "esr_ohm"], own, stated, mode="third overtone")
     assert reason(reviewed(one))["verdict"] == "falls short"
     assert reason(reviewed(both))["verdict"] == "meets"
+
+
+def at_c0(c0_pf):
+    one = third(*([] if c0_pf is None else [exactly("shunt_capacitance_pf", c0_pf)]))
+    kept = [r for r in one.readings if c0_pf is not None or r.field != "shunt_capacitance_pf"]
+    return one.model_copy(update={"readings": tuple(kept)})
+
+
+def test_an_estimate_of_c0_alone_does_not_let_the_fundamental_win():
+    """With Rf 5.1k the fundamental wins at a C0 of 0.5 pF and not at 5 pF, the ends of the estimate."""
+    told = {c0: reason(reviewed(at_c0(c0), feedback_resistor_kohm=5.1)) for c0 in (None, 0.5, 5.0)}
+    assert [told[c0]["verdict"] for c0 in (0.5, 5.0, None)] == ["falls short", "cannot tell", "cannot tell"]
+    assert told[None]["estimated"] == ["shunt_capacitance_pf"]
+    assert reason(reviewed(at_c0(None), feedback_resistor_kohm=10.0))["verdict"] == "falls short"
+
+
+def test_a_typical_esr_promises_nothing_of_the_mode_either():
+    typical = third(reading("esr_ohm", 60.0))
+    assert reason(reviewed(typical, feedback_resistor_kohm=3.3))["verdict"] == "cannot tell"
+    assert reason(reviewed(typical, feedback_resistor_kohm=1000.0))["verdict"] == "falls short"
+    assert reason(reviewed(typical, overtone_trap=True))["verdict"] == "meets"

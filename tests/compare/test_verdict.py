@@ -323,3 +323,24 @@ def test_a_reading_that_only_a_condition_takes_asks_for_a_look():
     cold = {"circuit": {"condition": [{"name": "cold", "temperature_c": -40.0}]}}
     frost = reading("esr_ohm", max=70.0, temperature_c=(-40.0, -20.0), check="unit guessed")
     assert reviewed(usual(reading("esr_ohm", max=60.0), frost), cold)["to_check"] == ["esr_ohm"]
+
+
+HARD_DRIVEN = {"requirement": {"margin": 1.5}, "circuit": {"transconductance_ms": [20.0, 90.0]}}
+
+
+def test_an_estimate_of_c0_alone_does_not_make_the_gain_too_much():
+    """Greatest gm = Cin Cout/(R1 (C0 + Cx)²) without losses: 90 mS lies between its values at both ends of C0."""
+    found = reviewed(usual(reading("esr_ohm", max=80.0), without=("shunt_capacitance_pf",)), HARD_DRIVEN)
+    stops = found["greatest_transconductance_ms"]
+    assert stops["low"] < 90.0 < stops["mid"]
+    told = reason(found, "resistance_headroom")
+    assert (told["verdict"], told["estimated"]) == ("cannot tell", ["shunt_capacitance_pf"])
+    assert found["slack"]["resistance_headroom"] is None
+    assert "shunt_capacitance_pf" in found["missing"]
+
+
+def test_a_stated_c0_makes_the_gain_too_much():
+    at_limit = usual(reading("esr_ohm", max=80.0), reading("shunt_capacitance_pf", max=5.0))
+    found = reviewed(at_limit, HARD_DRIVEN)
+    assert reason(found, "resistance_headroom")["verdict"] == "falls short"
+    assert found["slack"]["resistance_headroom"] == pytest.approx(found["resistance_headroom"]["low"] / 1.5)
