@@ -75,12 +75,26 @@ def read(
     text = _EAST_COMMA.sub(r"\g<0> ", _FOOTNOTE_MARK.sub("", text))
     if field == "load_capacitance_pf":
         text = _without_offer(text, unit)
+    elif field == "ageing_ppm":
+        text = _without_later_years(text)
     found = amount.read_values(text, field, unit=unit, bound=bound, plus_minus=plus_minus)
     if not found and _BRACKET.search(text):
         # What a bracket withdraws ("series resonance on request") is not the value before it.
         found = amount.read_values(_BRACKET.sub(" ", text), field, unit=unit, bound=bound, plus_minus=plus_minus)
     kept_values = tuple(value for value in found if not value.empty or value.series)
     return _recommended_within(kept_values) if field == "drive_level_uw" else kept_values
+
+
+_CLAUSE = re.compile(r"[,;，；、]\s*|\n|\s+(?:and|und|et|e|y)\s+(?=[±<≤\d])")
+
+
+def _without_later_years(text: str) -> str:
+    """Ageing without what it is from the second year on ("±2 ppm first year, ±1 ppm/year thereafter")."""
+    later = vocabulary().phrases.get("later_years", ())
+    clauses = [clause for clause in _CLAUSE.split(text) if clause.strip()]
+    first = [clause for clause in clauses if not any(word in fold(clause).casefold() for word in later)]
+    stated = any(char.isdigit() for clause in first for char in clause)
+    return "; ".join(first) if stated and len(first) < len(clauses) else text
 
 
 def _recommended_within(values: tuple[amount.Value, ...]) -> tuple[amount.Value, ...]:

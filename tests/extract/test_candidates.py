@@ -1,6 +1,6 @@
 import pytest
 
-from extract.candidates import entry_candidates, key_candidates
+from extract.candidates import entry_candidates, key_candidates, read
 from extract.entries import Entry, Key, Piece, Value
 from extract.model import When, Where
 
@@ -130,3 +130,16 @@ def test_a_value_in_a_further_column_that_no_head_explains_is_a_doubt():
     assert (found.max, [doubt[:22] for doubt in found.doubts]) == (20, ["another column states "])
     (same,) = entry_candidates(entry("Frequency tolerance", "±20 ppm", "±20 ppm"))
     assert same.doubts == ()
+
+
+@pytest.mark.parametrize(
+    "text",
+    [
+        "±2 ppm max. first year, ±1 ppm/year thereafter",
+        "±2 ppm im ersten Jahr, danach ±1 ppm/Jahr",
+        "第一年±2ppm，以后±1ppm/年",
+    ],
+)
+def test_ageing_of_later_years_is_not_that_of_the_first(text):
+    (value,) = read(text, "ageing_ppm")
+    assert (value.min, value.max, value.when.years, value.doubts) == (-2.0, 2.0, 1.0, ())
