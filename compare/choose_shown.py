@@ -4,9 +4,7 @@ from __future__ import annotations
 
 from collections.abc import Mapping, Sequence
 from functools import lru_cache
-from typing import Any
-
-import pandas as pd
+from typing import TYPE_CHECKING, Any
 
 from compare import supply
 from compare.answers import SHORT_NAMES, Row, asked_strips, question_lines, row_name, tightest_text, told, verdict
@@ -15,6 +13,9 @@ from compare.choosing import Candidate
 from compare.drawing import as_address, slack_strip_svg
 from compare.figures import count_word, exact, frequency_text, ordinal
 from compare.palette import Palette
+
+if TYPE_CHECKING:
+    import pandas as pd
 
 PAGE_ROWS = 100
 """How many rows are sent at once; the saved tables hold all."""
@@ -100,6 +101,8 @@ def rank_frame(shown: Sequence[Candidate], palette: Palette) -> pd.DataFrame:
 
     Each candidate's row carries its sentences (`Ranked.row`).
     """
+    import pandas as pd
+
     rows = [one.row for one in shown]
     strips, columns = asked_strips(rows), supply_columns(shown)
     table = [
@@ -140,6 +143,8 @@ def supply_rows(one: Candidate) -> list[tuple[str, str, str, str]]:
 
 def supply_frame(shown: Sequence[Candidate]) -> pd.DataFrame:
     """The rows as they are typed in: text, so that `0,21 €` and `14 weeks` are taken as written."""
+    import pandas as pd
+
     table = [
         [row_name(one.row), *(supply.value_text(key, one.supply.get(key, {}).get("value")) for key in supply.columns())]
         for one in shown

@@ -2,10 +2,13 @@
 
 from __future__ import annotations
 
+import gc
 import socket
 import sys
+import threading
 import tomllib
 from collections.abc import Iterator, Sequence
+from importlib import import_module
 from pathlib import Path
 from typing import Any
 
@@ -13,6 +16,9 @@ HOST = "127.0.0.1"
 SCRIPT = Path(__file__).with_name("page.py")
 SETTINGS = Path(__file__).with_name("page.toml")
 STARTED, WRONG_CALL = 0, 2
+DRAWN_WITH = ("page_sheets", "page_circuit", "page_choose", "page_review", "page_substitute", "page_work")
+"""The modules of the views; what they import in turn is the most part of the page's start."""
+TABLES = ("pandas", "pyarrow")
 
 
 def serve(sheets: Sequence[str], *, bench: str | None = None, port: int = 8733) -> int:
@@ -27,14 +33,30 @@ def serve(sheets: Sequence[str], *, bench: str | None = None, port: int = 8733) 
     if fault is not None:
         print(f"quartzfolio: {fault}", file=sys.stderr)  # noqa: T201
         return WRONG_CALL
+    # Thousands of classes are made now and none of them goes: searching for garbage among them is lost time.
+    gc.disable()
     from streamlit import config
     from streamlit.web import bootstrap
 
     config._main_script_path = str(SCRIPT)
     flags = settings(port)
     bootstrap.load_config_options(flags)
+    threading.Thread(target=load, name="loading the views", daemon=True).start()
     bootstrap.run(str(SCRIPT), False, script_arguments(sheets, bench), flags)
     return STARTED
+
+
+def load() -> None:
+    """Import what the views need while the browser is still busy with Streamlit's own files.
+
+    Nothing of it ever becomes garbage: frozen, it is passed over by the collection that Streamlit does after each run.
+    """
+    try:
+        for name in (*(f"compare.{one}" for one in DRAWN_WITH), *TABLES):
+            import_module(name)
+    finally:
+        gc.freeze()
+        gc.enable()
 
 
 def settings(port: int) -> dict[str, Any]:

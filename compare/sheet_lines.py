@@ -4,14 +4,16 @@ from __future__ import annotations
 
 from collections.abc import Sequence
 from dataclasses import dataclass
-
-import pandas as pd
+from typing import TYPE_CHECKING
 
 from compare.corrections import Correction, Line, lines, of_part
 from compare.figures import counted
 from compare.shown import HOW, LOOK, NAMES, bound_text, how, options_text, part_name, unit_of, value_text, when_text
 from compare.work import Work
 from extract.model import Part, Reading, SpecSheet
+
+if TYPE_CHECKING:
+    import pandas as pd
 
 ENTERED, GONE = "✎", "not on sheet"
 FACTS = {
@@ -81,6 +83,8 @@ def part_lines(work: Work, sheet: str, at: int) -> PartLines:
 
 def lines_frame(shown: PartLines) -> pd.DataFrame:
     """One row a reading, then the part's words. A reading that was taken away stands there with its word."""
+    import pandas as pd
+
     rows = [_row(line) for line in shown.lines] + [
         _fact_row(shown, name) for name in shown.rows if isinstance(name, str)
     ]
@@ -155,6 +159,8 @@ class PartPlace:
 
 def parts_frame(work: Work, most: int = MOST_PARTS) -> tuple[pd.DataFrame, list[PartPlace]]:
     """All parts, one row each, each value with its mark; at most `most`, with where each lies."""
+    import pandas as pd
+
     rows: list[dict[str, str]] = []
     places: list[PartPlace] = []
     for one, sheet in zip(work.sheets, work.corrected, strict=True):

@@ -1,6 +1,8 @@
 """How the page is started: settings, arguments and the port."""
 
 import socket
+import subprocess
+import sys
 import tomllib
 from pathlib import Path
 
@@ -58,3 +60,24 @@ def test_standard_input_is_turned_away_with_what_to_do(capsys):
     assert capsys.readouterr().err == (
         "quartzfolio: -: the page reads no standard input; name files, or paste the text on the page\n"
     )
+
+
+def test_the_views_are_loaded_without_the_tables_that_the_first_one_does_not_show():
+    script = (
+        "import sys; from compare import serve; "
+        "[__import__(f'compare.{name}') for name in serve.DRAWN_WITH]; "
+        "print([name for name in ('pandas', 'pdfplumber', 'pypdfium2', 'openpyxl', 'reportlab', 'scipy') "
+        "if name in sys.modules])"
+    )
+    done = subprocess.run([sys.executable, "-c", script], capture_output=True, text=True, check=True)
+    assert done.stdout.strip() == "[]"
+
+
+def test_what_is_loaded_is_passed_over_by_the_search_for_garbage():
+    script = (
+        "import gc; from compare import serve; gc.disable(); serve.load(); print(gc.get_freeze_count(), gc.isenabled())"
+    )
+    done = subprocess.run([sys.executable, "-c", script], capture_output=True, text=True, check=True)
+    count, enabled = done.stdout.split()
+    assert int(count) > 50_000
+    assert enabled == "True"
