@@ -8,9 +8,10 @@ from dataclasses import dataclass
 from functools import cached_property
 
 from compare.bench import Bench, CircuitKeys, Setting
-from compare.corners import as_reckoned
+from compare.corners import as_reckoned, lossless_load_pf
 from compare.motional import estimate_quality_factor
 from compare.offer import Offer
+from compare.rating import list_row
 from compare.stated import Taken
 from extract.model import Reading
 
@@ -104,7 +105,7 @@ def bench_words(bench: Bench) -> BenchWords:
     """The circuit's capacitances and resistors, and its transconductance with where it comes from."""
     keys = bench.settings[0].circuit
     words = _capacitors(as_reckoned(keys, bench), bench.requirement.frequency_mhz)
-    return BenchWords(keys, bench.settings, words, _transconductance(keys))
+    return BenchWords(keys, bench.settings, words, _transconductance(keys, bench.requirement.frequency_mhz))
 
 
 def _capacitors(keys: CircuitKeys, frequency_mhz: float) -> str:
@@ -127,7 +128,7 @@ def _capacitors(keys: CircuitKeys, frequency_mhz: float) -> str:
     return ", ".join(parts)
 
 
-def _transconductance(keys: CircuitKeys) -> str:
+def _transconductance(keys: CircuitKeys, frequency_mhz: float) -> str:
     stated = keys.transconductance_range_ms
     if stated is not None:
         return f"gm {ends_text(stated, 'mS')}" + (", nominal the geometric mean" if stated[0] != stated[2] else "")
@@ -138,11 +139,15 @@ def _transconductance(keys: CircuitKeys) -> str:
         "negative_resistance_ohm": "F |R| ω² (2 CL)²",
         "esr_max_ohm": "F 4 R ω² (CL + C0)²" if keys.rating.esr_means == "motional" else "F 4 R ω² CL²",
     }
-    stated_value = getattr(keys.rating, keys.rating.kind)
+    stated_value, load_pf = getattr(keys.rating, keys.rating.kind), keys.rating.load_pf
+    row = list_row(stated_value, frequency_mhz, lossless_load_pf(keys)) if isinstance(stated_value, tuple) else None
+    if row is not None:
+        load_pf, stated_value = row[2:]
     value = "" if isinstance(stated_value, tuple) else f" {figure(stated_value)}"
-    load = "" if keys.rating.load_pf is None else f" at CL {figure(keys.rating.load_pf)} pF"
+    load = "" if load_pf is None else f" at CL {figure(load_pf)} pF"
+    of_list = "" if row is None else f", the row for {figure(row[0])} to {figure(row[1])} MHz"
     factor = figure(keys.rating.factor_inside)
-    rated = f"circuit.rating.{keys.rating.kind}{value}{load}"
+    rated = f"circuit.rating.{keys.rating.kind}{value}{load}{of_list}"
     return f"from the IC's rating, {forms[keys.rating.kind]} with F {factor} ({rated})"
 
 
@@ -183,7 +188,9 @@ class Subject:
     def esr(self) -> str:
         text = reading_text("esr_ohm", self.offer.at[0].esr)
         if self.bench.crystal.esr_means == "at load":
-            text += ', read as RL: R1 = ESR/(1 + C0/CL rated)² (crystal.esr_means "at load")'
+            no_load = "R1 is the ESR itself, the safe side, for no rated load is stated"
+            rule = "R1 = ESR/(1 + C0/CL rated)²" if self.offer.load.stated else no_load
+            text += f', read as RL: {rule} (crystal.esr_means "at load")'
         if self.bench.crystal.series_resistor_rule == "add to ESR":
             added = figure(self.circuit.series_resistor_ohm)
             text += f", plus the series resistor {added} Ω as ESR (crystal.series_resistor_rule)"
@@ -280,7 +287,9 @@ def _margin(s: Subject) -> str:
 
 
 def _gain_ratio(s: Subject) -> str:
-    return f"gm/critical gm, critical {s.mid('critical_transconductance_ms')} mS; {s.gm}, {s.esr}"
+    critical = s.ends["critical_transconductance_ms"][1]
+    least = "which there is none of" if math.isnan(critical) else f"critical {figure(critical)} mS"
+    return f"gm/critical gm, {least}; {s.gm}, {s.esr}"
 
 
 HOW: dict[str, Callable[[Subject], str]] = {

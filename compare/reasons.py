@@ -108,7 +108,7 @@ def times(slack: float) -> str:
 def _gain(one: Judged, standing: Standing) -> str:
     low, mid, _ = standing.subject.ends[one.about]
     asked = standing.bench.requirement
-    least = "cannot oscillate in some corner" if math.isnan(low) else f"{figure(low, 3)} at the worst"
+    least = "none in some corner, which cannot oscillate" if math.isnan(low) else f"{figure(low, 3)} at the worst"
     source = "default" if asked.margin_source == "default" and "margin" not in asked.given else asked.margin_source
     return (
         f"{GAIN_WORDS[one.about]} {least}, {figure(mid, 3)} nominal; {figure(asked.margin)} asked ({source}): "

@@ -127,6 +127,8 @@ def _estimated(key: str, columns: Columns, total: Total) -> Flags:
         for term in total.terms.values():
             for flags in term.estimated.values():
                 rests |= flags
+    if key == "series_resonance_mhz":
+        rests &= ~np.isinf(columns.load_pf)  # of a series part it is the frequency stated
     return rests
 
 

@@ -316,3 +316,17 @@ def test_the_terms_of_the_total_add_up_to_it(name):
         parts = [float(term[side]) for term in terms]
         # Three digits are printed of each.
         assert sum(parts) == pytest.approx(total[end], abs=0.005 * sum(map(abs, parts)) + 0.01)
+
+
+def test_the_row_of_an_esr_list_that_was_used_is_named():
+    rows = [[10.0, 20.0, 12.0, 60.0], [10.0, 20.0, 8.5, 90.0], [4.0, 10.0, 8.5, 200.0]]
+    rated = {"transconductance_ms": None, "rating": {"esr_max_ohm": rows, "factor_inside": 5.0}}
+    found = review([sheet(usual())], bench({"circuit": rated}))["reviews"][0]
+    assert "(circuit.rating.esr_max_ohm 90 at CL 8.5 pF, the row for 10 to 20 MHz)" in found["margin"]["how"]
+
+
+def test_esr_at_the_load_of_a_part_without_a_rated_load_says_that_it_is_taken_as_it_stands():
+    silent = usual(without=("load_capacitance_pf",))
+    found = review([sheet(silent)], bench({"crystal": {"esr_means": "at load"}}))["reviews"][0]
+    assert "R1 is the ESR itself, the safe side, for no rated load is stated" in found["margin"]["how"]
+    assert "R1 60 Ω" in found["margin"]["how"]

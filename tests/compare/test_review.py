@@ -75,3 +75,12 @@ def test_a_total_that_lacks_a_term_says_which_reading_is_missing(field):
     (found,) = review([sheet(usual(without=(field,)))], bench())["reviews"]
     assert found["total_ppm"]["mid"] is None
     assert found["total_ppm"]["how"] == f"cannot be had: {field} not known"
+
+
+def test_the_series_resonance_of_a_series_part_rests_on_no_estimate():
+    """It is the frequency stated, whatever C1 and C0 are."""
+    series = usual(resonance="series", without=("load_capacitance_pf", "motional_capacitance_ff"))
+    found = review([sheet(series)], bench())["reviews"][0]
+    assert found["series_resonance_mhz"]["basis"] == "derived"
+    assert found["series_resonance_mhz"]["mid"] == 16.0
+    assert found["load_error_ppm"]["basis"] == "estimated"
