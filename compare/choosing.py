@@ -10,11 +10,11 @@ import math
 from collections import Counter
 from collections.abc import Mapping, Sequence
 from dataclasses import asdict, dataclass, fields
-from functools import lru_cache
+from functools import cached_property, lru_cache
 from typing import Any
 
 from compare import supply
-from compare.answers import SHORT_NAMES, missing_name, row_name, times
+from compare.answers import SHORT_NAMES, Identity, identities, missing_name, row_name, times
 from compare.figures import number
 from compare.footprint import size_mm
 
@@ -134,12 +134,43 @@ def choices(every: Sequence[Candidate]) -> dict[str, list[str]]:
 
 
 @dataclass(frozen=True)
+class Field:
+    """All that offer the frequency, with what is worked out once for all that is asked of them."""
+
+    every: list[Candidate]
+
+    @cached_property
+    def choices(self) -> dict[str, list[str]]:
+        """What there is to filter by, the commonest first."""
+        return choices(self.every)
+
+    @cached_property
+    def untold(self) -> list[int]:
+        """The places of those that cannot be told."""
+        return [one.row["place"] for one in self.every if one.row["verdict"] == "cannot tell"]
+
+
+@dataclass(frozen=True)
 class Sifted:
     """What is left after the filters, in order; and how many were left out because a thing asked is not known."""
 
     shown: list[Candidate]
     unknown: Mapping[str, int]
     currency: str = ""
+
+    @cached_property
+    def identities(self) -> list[Identity]:
+        """What each is known by while the ranking changes."""
+        return identities([one.row for one in self.shown])
+
+    @cached_property
+    def places(self) -> list[int]:
+        """The place of each in the ranking."""
+        return [one.row["place"] for one in self.shown]
+
+    @cached_property
+    def by_place(self) -> dict[int, Candidate]:
+        return dict(zip(self.places, self.shown, strict=True))
 
 
 def sift(every: Sequence[Candidate], filters: Filters, weights: Mapping[str, float]) -> Sifted:

@@ -11,6 +11,7 @@ from compare import page_session as session
 from compare.bench import Bench
 from compare.desk import field_of
 from compare.figures import CLOCK_BELOW_MHZ
+from compare.page_results import remembered
 from compare.page_trial import try_it
 from compare.ranking import Ranked
 
@@ -29,8 +30,10 @@ def candidates(bench: Bench) -> Ranked | None:
 
 def chosen_at(contest: Ranked) -> int:
     """The place of the chosen part in the order, from 0."""
-    known = answers.identities(contest.briefs)
     chosen = st.session_state.get("chosen")
+    if chosen is None:
+        return 0
+    known = remembered("known", (contest,), None, lambda: answers.identities(contest.briefs))
     return known.index(chosen) if chosen in known else 0
 
 

@@ -23,10 +23,11 @@ from compare import (
 )
 from compare import page_session as session
 from compare.bench import Bench
-from compare.choosing import Candidate, Sifted
+from compare.choosing import Candidate, Field, Sifted
 from compare.page_charts import picture
 from compare.page_copy import copy_button, figures
 from compare.page_filters import asked, filter_line, weights, weights_line
+from compare.page_results import remembered
 from compare.page_shared import cautions, ready, review_of, save_buttons
 from compare.page_supply import supply_editor
 from compare.page_trial import try_it
@@ -70,20 +71,19 @@ def choose(identity: answers.Identity) -> None:
 
 def ranked(contest: Ranked, bench: Bench) -> tuple[Candidate, Sifted] | None:
     """The heading, the filters and the rows; returns the chosen row and all that the filters leave."""
-    nearest = answers.tightest_text(contest.row(1)) if len(contest) else ""
-    session.title(pieces.plain(choose_shown.choose_heading(contest.briefs, bench, nearest)))
-    every = choosing.candidates(contest.briefs, session.slot("supply"))
+    session.title(pieces.plain(remembered("heading", (contest, bench), None, lambda: heading(contest, bench))))
+    slot = session.slot("supply")
+    field = remembered("field", (contest, slot), None, lambda: Field(choosing.candidates(contest.briefs, slot)))
     parts = sum(len(sheet.parts) for sheet in session.sheets())
-    if not every:
+    if not field.every:
         other_parts(contest, parts, open_at_once=True)
         return None
-    filters = asked()
-    filter_line(
-        filters, every, choose_shown.offered_text(len(every), parts, bench), lambda: other_parts(contest, parts)
-    )
+    filters, weighed = asked(), weights()
+    offered = choose_shown.offered_text(len(field.every), parts, bench)
+    filter_line(filters, field.choices, offered, lambda: other_parts(contest, parts))
     weights_line(filters)
-    sifted = choosing.sift(every, filters, weights())
-    if said := choosing.left_out_text(sifted, len(every)):
+    sifted = remembered("sifted", (field,), (filters, weighed), lambda: choosing.sift(field.every, filters, weighed))
+    if said := choosing.left_out_text(sifted, len(field.every)):
         limits = choosing.limits_text(filters, sifted.currency)
         st.markdown(f":gray[:small[{pieces.plain(said + (f' ({limits})' if limits else ''))}.]]")
     if not sifted.shown:
@@ -91,14 +91,19 @@ def ranked(contest: Ranked, bench: Bench) -> tuple[Candidate, Sifted] | None:
         return None
     picked = rows(sifted, contest)
     actions(sifted, contest)
-    to_ask(contest)
+    to_ask(contest, field)
     cautions()
     return picked, sifted
 
 
+def heading(contest: Ranked, bench: Bench) -> str:
+    nearest = answers.tightest_text(contest.row(1)) if len(contest) else ""
+    return choose_shown.choose_heading(contest.briefs, bench, nearest)
+
+
 def rows(sifted: Sifted, contest: Ranked) -> Candidate:
     """The page of rows in view; returns the chosen one, which may stand on another page."""
-    places = answers.identities([one.row for one in sifted.shown])
+    places = sifted.identities
     if st.session_state.chosen not in places:
         choose(places[0])
     page = page_in_view(places)
@@ -216,9 +221,9 @@ def other_parts(contest: Ranked, parts: int, *, open_at_once: bool = False) -> N
             st.markdown(f"- {pieces.plain(line)}")
 
 
-def to_ask(contest: Ranked) -> None:
+def to_ask(contest: Ranked, field: Field) -> None:
     """Ready questions about the parts that cannot be told, best first."""
-    untold = [row["place"] for row in contest.briefs if row["verdict"] == "cannot tell"]
+    untold = field.untold
     asks = choose_shown.to_ask([contest.row(place) for place in untold[:8]])
     if not asks:
         return
@@ -266,7 +271,7 @@ def advice(review: answers.Row) -> None:
 def above(picked: Candidate, sifted: Sifted, contest: Ranked) -> None:
     """In a sentence why it stands above another row; the next one at first."""
     state = st.session_state
-    places = [one.row["place"] for one in sifted.shown]
+    places, by_place = sifted.places, sifted.by_place
     if picked.row["place"] not in places or len(places) < 2:
         return
     at = places.index(picked.row["place"])
@@ -275,7 +280,6 @@ def above(picked: Candidate, sifted: Sifted, contest: Ranked) -> None:
     key = f"beside_{picked.row['place']}"
     if state.setdefault(key, following) not in near:
         state[key] = following
-    by_place = {one.row["place"]: one for one in sifted.shown}
     with st.container(horizontal=True, vertical_alignment="center", gap="small"):
         st.markdown("Beside", width="content")
         other = st.selectbox(

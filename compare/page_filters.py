@@ -2,14 +2,14 @@
 
 from __future__ import annotations
 
-from collections.abc import Callable, Sequence
+from collections.abc import Callable, Mapping
 from typing import Any
 
 import streamlit as st
 
 from compare import choosing, pieces, supply
 from compare import page_session as session
-from compare.choosing import ASPECTS, LIMITS, MOST_WEIGHT, ORDERS, WEIGHTS, Candidate, Filters
+from compare.choosing import ASPECTS, LIMITS, MOST_WEIGHT, ORDERS, WEIGHTS, Filters
 
 NO_WEIGHT = "all weights are 0: the order is that of the ranking"
 ANY_WORDS = {"package": "any package", "maker": "any maker", "verdict": "any verdict", "status": "any status"}
@@ -26,9 +26,10 @@ def weights() -> dict[str, float]:
     return {key: float(value) for key, value in session.slot("weights").items() if key in ASPECTS}
 
 
-def filter_line(filters: Filters, every: Sequence[Candidate], offered: str, others: Callable[[], None]) -> None:
+def filter_line(
+    filters: Filters, choices: Mapping[str, list[str]], offered: str, others: Callable[[], None]
+) -> None:
     """`9 of 11 parts read offer 26 MHz. Show any package, any verdict, by least slack`."""
-    choices = choosing.choices(every)
     with st.container(horizontal=True, vertical_alignment="center", gap="small"):
         st.markdown(pieces.plain(offered), width="content")
         others()

@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import gc
 import hashlib
 import traceback
 from collections.abc import Callable, Sequence
@@ -17,6 +18,8 @@ from extract.model import SpecSheet, Where
 from extract.partlist import part_numbers
 
 Result = TypeVar("Result")
+LONG = 2000
+"""Parts of a ranking that is worth keeping out of the search for garbage."""
 
 
 def sheets() -> list[SpecSheet]:
@@ -37,7 +40,32 @@ def ranked(key: str, _sheets: Sequence[SpecSheet], _bench: Bench) -> dict[str, A
 def contested(key: str, _sheets: Sequence[SpecSheet], _bench: Bench) -> Ranked:  # noqa: ARG001
     from compare.ranking import rank_sheets
 
-    return rank_sheets(_sheets, _bench)
+    found = rank_sheets(_sheets, _bench)
+    if len(found) > LONG:
+        found.briefs  # noqa: B018 - made now, so that they are passed over too
+        pass_over()
+    return found
+
+
+def pass_over() -> None:
+    """Have what is held now passed over by the search for garbage that Streamlit makes after each run of the script.
+
+    Through the rows of a long list it takes a quarter of a second. What was passed over before is searched this once.
+    """
+    gc.unfreeze()
+    gc.collect()
+    gc.freeze()
+
+
+def remembered(name: str, of: Sequence[object], asked: object, make: Callable[[], Result]) -> Result:
+    """What `make` gives, kept for the session while `of` are the same objects and `asked` is equal."""
+    key = f"remembered_{name}"
+    held = st.session_state.get(key)
+    if held is None or held[1] != asked or any(one is not other for one, other in zip(held[0], of, strict=True)):
+        held = tuple(of), asked, make()
+        st.session_state[key] = held
+    made: Result = held[2]
+    return made
 
 
 def contest(bench: Bench) -> Ranked | None:
@@ -76,8 +104,13 @@ def key_of(bench: Bench, of: Sequence[SpecSheet]) -> str:
     """A key that changes with the bench, with any sheet and with any correction."""
     work: Work = st.session_state.work
     told = [bench.to_toml(), *(one.model_dump_json(exclude_defaults=True) for one in work.corrections)]
+    # An open sheet has its own key; corrections are told above.
+    known = {id(sheet): one.key for sheet, one in zip(work.corrected, work.sheets, strict=True)}
     for sheet in of:
-        told += [sheet.file, str(sheet.sha256), *(number or "" for number in part_numbers(sheet.parts))]
+        if id(sheet) in known:
+            told.append(known[id(sheet)])
+        else:
+            told += [sheet.file, str(sheet.sha256), *(number or "" for number in part_numbers(sheet.parts))]
     return hashlib.sha256("\n".join(told).encode()).hexdigest()
 
 
