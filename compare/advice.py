@@ -139,10 +139,11 @@ def no_pair(pairs: list[Pair]) -> str:
     if not known:
         return "No pair of load capacitors can be told: a requirement that they move rests on something not known."
     best = max(known, key=lambda pair: pair.slack)
+    margin = "a margin that is not known" if np.isnan(best.margin) else f"a margin of {best.margin:.3g}"
     return (
         f"No pair of E24 load capacitors meets the bench: the nearest, {best.input_pf:g} pF at the input and "
         f"{best.output_pf:g} pF at the output, leaves in the worst case a load error of {best.load_error_ppm:.3g} ppm "
-        f"and a margin of {best.margin:.3g}."
+        f"and {margin}."
     )
 
 

@@ -88,6 +88,8 @@ FULL_NAMES = SHORT_NAMES | {
     "total_ppm": "Frequency, all causes",
     "operating_temperature_c": "Temperature range",
 }
+# Where the whole name is wider than the column.
+TIGHT_NAMES = {"frequency_stability_ppm": "Drift", "parabolic_coefficient_ppm_per_c2": "Parabola"}
 STRIPS = tuple(name for name in SHORT_NAMES if name in FIGURES)
 MARGINS = ("margin", "gain_ratio", "resistance_headroom")
 BENCH_KEY = re.compile(r"\b(?:requirement|circuit|crystal|measured)\.[a-z_]+(?:\[\d+\])?(?:\.[a-z_]+)*")
@@ -95,7 +97,8 @@ BENCH_KEY = re.compile(r"\b(?:requirement|circuit|crystal|measured)\.[a-z_]+(?:\
 
 def told(message: str) -> str:
     """A message as the page shows it: bench keys by the names of their fields, and a true minus."""
-    return with_minus(BENCH_KEY.sub(lambda found: _quoted(found[0]), message))
+    said = message.replace("total_ppm ±", f"{SHORT_NAMES['total_ppm']} ±")
+    return with_minus(BENCH_KEY.sub(lambda found: _quoted(found[0]), said))
 
 
 def _quoted(key: str) -> str:
@@ -140,7 +143,8 @@ def tightest_text(row: Row) -> str:
     name = row["tightest"]
     if row["verdict"] == "cannot tell" and row["missing"]:
         key = row["missing"][0]
-        return f"{missing_name(key)} not {'stated' if key in FIELD_NAMES else 'known'}"
+        name = TIGHT_NAMES.get(key) or missing_name(key)
+        return f"{name} not {'stated' if key in FIELD_NAMES else 'known'}"
     slack = None if name is None else row["slack"][name]
     if row["verdict"] != "meets" and (slack is None or slack >= 1):
         decides = [reason["about"] for reason in row.get("reasons", ()) if reason["verdict"] == row["verdict"]]

@@ -13,6 +13,13 @@ from compare.typed import Field, understand
 Table = tuple[list[str], list[list[str]]]
 
 
+def stay_below(row: Bearing) -> str:
+    """`10 of 13`: of the parts that offer this rated load, those whose ESR the circuit bears."""
+    if not row.offering:
+        return "none offers it"
+    return "not known" if row.allowed_ohm is None else f"{row.below} of {row.offering}"
+
+
 def bearing_table(rows: Sequence[Bearing], bench: Bench) -> Table:
     """Rated load, capacitors for it, ESR just borne and with the margin, parts read that stay below."""
     factor, unit = scale("Ω", *(row.allowed_ohm for row in rows if row.allowed_ohm is not None))
@@ -33,7 +40,7 @@ def bearing_table(rows: Sequence[Bearing], bench: Bench) -> Table:
             "cannot be met" if row.pair is None else f"{number(row.pair.input_pf)} + {number(row.pair.output_pf)}",
             ohm(row.greatest_ohm),
             ohm(row.allowed_ohm),
-            f"{row.below} of {row.offering}" if row.offering else "none offers it",
+            stay_below(row),
         ]
         for row in rows
     ]

@@ -9,7 +9,7 @@ from typing import TYPE_CHECKING, Any
 from compare import supply
 from compare.answers import SHORT_NAMES, Row, asked_strips, question_lines, row_name, tightest_text, told, verdict
 from compare.bench import Bench
-from compare.choosing import Candidate
+from compare.choosing import Candidate, package_text
 from compare.drawing import as_address, slack_strip_svg
 from compare.figures import count_word, exact, frequency_text, ordinal
 from compare.palette import Palette
@@ -31,8 +31,9 @@ def choose_heading(rows: Sequence[Row], bench: Bench, nearest: str = "") -> str:
     if count == 1:
         return f"The one part that offers it: {verdict(rows[0]['verdict'])}"
     if good == count:
-        return f"All {count_word(count)} meet what is asked"
-    said = f"{count_word(good, begins=True)} of {count_word(count)} meet{'s' if good <= 1 else ''} what is asked"
+        return f"{'Both' if count == 2 else f'All {count_word(count)}'} meet what is asked"
+    some = "Neither" if count == 2 and not good else count_word(good, begins=True)
+    said = f"{some} of {count_word(count)} meet{'s' if good <= 1 else ''} what is asked"
     if good:
         return said
     return f"{said}. Nearest: {row_name(rows[0])}" + (f", {nearest}" if nearest else "")
@@ -114,7 +115,7 @@ def rank_frame(shown: Sequence[Candidate], palette: Palette) -> pd.DataFrame:
             strip_of(row, strips, palette),
             tightest_text(row),
             row["maker"] or "",
-            row["package"] or "",
+            package_text(row["package"]),
             *(supply_cell(one.supply, key) for key in columns),
         )
         for row, one in zip(rows, shown, strict=True)

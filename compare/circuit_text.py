@@ -215,6 +215,26 @@ def _by_label(sentence: str) -> str:
     return f"{field_of(key).label}: {rest}." if key else f"{sentence}."
 
 
+def blank_figures() -> CircuitFigures:
+    """The drawing before anything is given: each name in its place, each figure still to be known."""
+
+    def unknown(key: str) -> Mark:
+        return Mark("not known", "unknown", f"circuit.{key}")
+
+    return CircuitFigures(
+        crystal="crystal",
+        transconductance=unknown("transconductance_ms.low"),
+        feedback=unknown("feedback_resistor_kohm"),
+        across_stray=unknown("across_stray_pf"),
+        input_fitted=unknown("input_capacitor_pf"),
+        input_stray=unknown("input_stray_pf"),
+        input_inside=unknown("internal_pf"),
+        output_fitted=unknown("output_capacitor_pf"),
+        output_stray=unknown("output_stray_pf"),
+        output_inside=unknown("internal_pf"),
+    )
+
+
 def circuit_figures(bench: Bench) -> CircuitFigures:
     """What the drawing shows for [circuit], each figure with the key of the field that sets it."""
     circuit = bench.settings[0].circuit

@@ -21,7 +21,8 @@ from compare.typed import Field, Typed, fields, shown, understand
 Path_ = tuple[str | int, ...]
 PRIVACY = "Sheets stay on this machine."
 NO_SHEETS = "Drop some, paste text, or open the orchard example."
-NOTHING_OPEN = "No sheets are open."
+STILL_READING = "The first sheet is being read; what is finished shows at once."
+NOTHING_OPEN = "No sheets are open. Add some, or look at the orchard example: invented sheets, and a circuit with them."
 NO_PARTS = "None of the sheets that are open gave a part: Sheets says why."
 NO_CIRCUIT = "The parts are read, but cannot be judged: what is asked and the circuit are not set."
 NO_EXAMPLE = "The orchard example is not part of this installation: it lies in the project’s folder sample_specs."

@@ -45,7 +45,7 @@ def main() -> None:
         pages[name] = st.Page(view, title=name.capitalize() + looks, url_path=name, default=name == "sheets")
     st.session_state.pages = pages
     current = st.navigation(list(pages.values()), position="top")
-    head()
+    head(current.url_path)
     banner()
     # Places of their own, filled in this order: else all that follows would shift while sheets are read.
     reading, body, foot = st.container(), st.container(), st.container()

@@ -58,13 +58,13 @@ def circuit_view() -> None:
         bench_files()
         circuit_fields(contest)
     with left:
-        drawn = summed_up(session.desk(), contest)
+        known = summed_up(session.desk(), contest)
         if bench is not None:
             bears(bench, contest)
             if contest is not None:
                 advice(bench, contest)
             gain_settings(bench, contest)
-        if drawn and st.button("Choose a crystal", key="to_choose", type="primary", shortcut="N"):
+        if known and st.button("Choose a crystal", key="to_choose", type="primary", shortcut="N"):
             session.go("choose")
 
 
@@ -74,17 +74,23 @@ def summed_up(desk: Desk, contest: Ranked | None) -> bool:
     session.title(f"{circuit_text.circuit_heading(bench, steady)}")
     if bench is None:
         st.markdown(pieces.plain(desk.faults.get("", "")) or circuit_text.SET_IT)
+        # With some fields filled and no frequency, a drawing that knows nothing would contradict them.
+        if not desk.typed:
+            drawn(circuit_text.blank_figures())
         return False
-    st.markdown(f":gray[{circuit_text.READ_IT}]")
-    show = st.components.v2.component("quartzfolio_circuit", html="<div></div>", js=PRESS)
-    svg = drawing.circuit_svg(circuit_text.circuit_figures(bench), session.palette())
-    show(data=svg, key="drawing", width="stretch")
+    drawn(circuit_text.circuit_figures(bench))
     st.markdown(circuit_text.sum_sentence(bench, steady))
-    for said in circuit_text.taken_sentences(bench):
-        st.markdown(f"- {pieces.plain(said)}")
+    if taken := circuit_text.taken_sentences(bench):
+        st.markdown("\n".join(f"- {pieces.plain(said)}" for said in taken))
     if carried := carried_sentence(desk):
         st.markdown(f":gray[{pieces.plain(carried)}]")
     return True
+
+
+def drawn(figures: drawing.CircuitFigures) -> None:
+    st.markdown(f":gray[{circuit_text.READ_IT}]")
+    show = st.components.v2.component("quartzfolio_circuit", html="<div></div>", js=PRESS)
+    show(data=drawing.circuit_svg(figures, session.palette()), key="drawing", width="stretch")
 
 
 def steady_pf(contest: Ranked | None) -> float | None:

@@ -36,7 +36,7 @@ MEASURED = ("stopping_resistor_ohm", "frequency_mhz", "startup_ms", "probe_pf", 
 
 
 def review_view() -> None:
-    if (bench := ready()) is None:
+    if (bench := ready("review")) is None:
         return
     contest = session.contest(bench)
     if contest is None:

@@ -12,7 +12,7 @@ from compare import answers, export, pieces
 from compare import page_session as session
 from compare.bench import Bench
 from compare.cautions import CAUTIONS
-from compare.desk import NO_CIRCUIT, NO_PARTS, NOTHING_OPEN, PRIVACY, field_of
+from compare.desk import NO_CIRCUIT, NO_PARTS, NOTHING_OPEN, PRIVACY, STILL_READING, field_of
 from compare.export import DECIMAL_MARKS, SEPARATORS, Table
 from compare.page_copy import copy_button, figures
 from extract.model import SpecSheet
@@ -20,12 +20,12 @@ from extract.model import SpecSheet
 __all__ = ["copy_button", "figures"]
 
 
-def something_open() -> bool:
-    """True where there is any part; else what to do is said."""
+def something_open(to_do: str = "rank") -> bool:
+    """True where there is any part; else what to do is said. `to_do` is what the view would do with them."""
     if any(sheet.parts for sheet in session.sheets()):
         return True
-    session.title("Nothing to rank yet")
-    st.markdown(NO_PARTS if session.sheets() else NOTHING_OPEN)
+    session.title(f"Nothing to {to_do} yet")
+    st.markdown(NO_PARTS if session.sheets() else STILL_READING if session.reader().now else NOTHING_OPEN)
     with st.container(horizontal=True, gap="small"):
         if st.button("Add sheets", key="to_sheets", type="primary"):
             session.go("sheets")
@@ -35,9 +35,9 @@ def something_open() -> bool:
     return False
 
 
-def ready() -> Bench | None:
+def ready(to_do: str = "rank") -> Bench | None:
     """The bench, where there is something to judge; else what to do is said and None is returned."""
-    if not something_open():
+    if not something_open(to_do):
         return None
     desk = session.desk()
     for key, fault in desk.faults.items():

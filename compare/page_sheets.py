@@ -12,7 +12,7 @@ import streamlit as st
 
 from compare import export, looks, pieces, sheet_lines, shown
 from compare import page_session as session
-from compare.desk import NO_SHEETS, PRIVACY
+from compare.desk import NO_SHEETS, PRIVACY, STILL_READING
 from compare.folio import SUFFIX
 from compare.page_copy import copy_button
 from compare.page_looks import add_reading, at_look, go_to, put_back_part, reading_area
@@ -35,7 +35,7 @@ def sheets_view() -> None:
     with right:
         if chosen is None:
             session.title("No sheets yet")
-            st.markdown(NO_SHEETS)
+            st.markdown(STILL_READING if session.reader().now else NO_SHEETS)
             kept_works("page")
             return
         st.fragment(part_area)()
@@ -96,8 +96,8 @@ def sheet_list() -> OpenSheet | None:
         key=f"open_{len(every)}_{st.session_state.turn}_{st.session_state.moved}",
         alt="Sheets that are open, with their outcome",
         column_config={
-            "Sheet": st.column_config.TextColumn(width=150),
-            "Outcome": st.column_config.TextColumn(width=96),
+            "Sheet": st.column_config.TextColumn(width=158),
+            "Outcome": st.column_config.TextColumn(width=90),
         },
     )
     chosen = every[session.selected_row(picked, len(every))]

@@ -31,7 +31,7 @@ SIZE = 1.08
 
 
 def substitute_view() -> None:
-    if not something_open():
+    if not something_open("compare"):
         return
     bench = session.desk().bench
     contest = session.contest(bench) if bench is not None else None
@@ -44,6 +44,8 @@ def substitute_view() -> None:
             "A present part and a candidate are wanted: at least two parts"
             + (" at the bench’s frequency." if bench else ".")
         )
+        if st.button("Add sheets", key="to_sheets", type="primary"):
+            session.go("sheets")
         return
     left, right = st.columns([1.66, 1], gap="medium")
     with left:

@@ -13,8 +13,11 @@ from compare.folio import SUFFIX, folio_bytes
 from compare.work import Circuit, Work
 
 
-def head() -> None:
-    """Undo, when it was saved, and the work, beside the names of the views; below them the line of terms."""
+def head(view: str) -> None:
+    """Undo, when it was saved, and the work, beside the names of the views; below them the line of terms.
+
+    `view` is the one that is shown: in that of the circuit nothing leads to it.
+    """
     with st.container(
         horizontal=True, horizontal_alignment="right", vertical_alignment="center", gap="small", key="work_bar"
     ):
@@ -35,7 +38,11 @@ def head() -> None:
             with menu:
                 work_menu()
     bench = session.desk().bench
-    st.html(pieces.terms_html(circuit_text.terms(bench) if bench is not None else ["No circuit yet"]))
+    with st.container(horizontal=True, vertical_alignment="center", gap="small", key="terms"):
+        terms = circuit_text.terms(bench) if bench is not None else ["No circuit yet"]
+        st.html(pieces.terms_html(terms), width="stretch")
+        if view != "circuit" and st.button("Set it" if bench is None else "Change", key="to_terms", type="tertiary"):
+            session.go("circuit")
     if fault := st.session_state.get("save_fault"):
         st.html(pieces.fault_html(fault))
 

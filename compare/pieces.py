@@ -11,6 +11,8 @@ from pathlib import Path
 from compare.palette import Palette
 from compare.review_shown import Share
 
+# A space between a figure and its unit, where no line may end.
+BEFORE_UNIT = re.compile(r"(?<=\d) (?=(?:[^\W\d_]{1,3}|°C|%)(?![^\W\d_]))")
 MARKDOWN = re.compile(r"([\\`*_{}\[\]()#+!|<>$~:^-])")
 
 
@@ -22,6 +24,11 @@ def plain(text: str) -> str:
 def bold(text: str) -> str:
     """Text that markdown shows as it stands, but for the figures between ** and **."""
     return "**".join(plain(piece) for piece in text.split("**"))
+
+
+def together(text: str) -> str:
+    """Text as HTML in which a figure and its unit stay on one line."""
+    return BEFORE_UNIT.sub("\u00a0", escape(text))
 
 
 def style(palette: Palette) -> str:

@@ -5,6 +5,7 @@ from __future__ import annotations
 from collections.abc import Sequence
 from html import escape
 
+from compare.pieces import together
 from compare.review_shown import Number
 from compare.verdict_lines import VerdictLine
 from compare.working import Working
@@ -39,7 +40,7 @@ def _verdict_row(line: VerdictLine) -> str:
         ("n", line.times_over),
         (look, line.verdict),
     )
-    shown = "".join(f"<span{_class(kind)}><i>{escape(text)}</i></span>" for kind, text in cells)
+    shown = "".join(f"<span{_class(kind)}><i>{together(text)}</i></span>" for kind, text in cells)
     why = f"<p>{escape(line.why)}.</p>" if line.why else ""
     opened = working_html(line.working) if line.working else ""
     return f"<details><summary>{shown}</summary><div class=qf-how>{why}{opened}</div></details>"
@@ -48,7 +49,7 @@ def _verdict_row(line: VerdictLine) -> str:
 def working_html(working: Working) -> str:
     """How one number was reached: formula, values put in with their place, result, assumption, what would turn it."""
     rows = "".join(
-        f"<tr><td>{escape(one.name)}</td><td class=n>{escape(one.value)}</td>"
+        f"<tr><td>{escape(one.name)}</td><td class=n>{together(one.value)}</td>"
         f"<td class=soft>{escape(one.source)}</td></tr>"
         for one in working.inputs
     )

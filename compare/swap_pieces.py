@@ -8,7 +8,7 @@ from html import escape
 
 from compare.levers import Lever
 from compare.palette import Palette
-from compare.pieces import figure_html
+from compare.pieces import figure_html, together
 from compare.swap_shown import BothHave, SwapLine
 
 WIDE, HIGH = 112, 24
@@ -71,9 +71,7 @@ def lines_html(lines: Sequence[SwapLine], palette: Palette, *, levers: bool) -> 
     heads = [("", "Reading", 18), ("n", "Present part", 13)]
     heads += [("lever", "room used │ won", 15)] if levers else []
     heads += [("", "Candidate", 13), ("n", "Difference", 10), ("rel", "Relation", 12)]
-    heads.append(
-        ("", "What it does here" if levers else "To note", 100 - sum(width for _, _, width in heads))
-    )
+    heads.append(("", "What it does here" if levers else "To note", 100 - sum(width for _, _, width in heads)))
     columns = "".join(f'<col style="width:{width}%">' for _, _, width in heads)
     head = "".join(f'<th class="{kind}">{escape(name)}</th>' for kind, name, _ in heads)
     body = "".join(_line(line, palette, levers=levers) for line in lines)
@@ -95,7 +93,7 @@ def _line(line: SwapLine, palette: Palette, *, levers: bool) -> str:
         f'<td class="n" title="{escape(line.place_incumbent)}">{figure_html(line.incumbent, line.bare_incumbent)}</td>',
         bar,
         f'<td title="{escape(line.place_candidate)}">{candidate}</td>',
-        f'<td class="n">{escape(line.difference)}</td>',
+        f'<td class="n">{together(line.difference)}</td>',
         f'<td class="rel">{relation}</td>',
         f'<td class="{look}">{escape(line.does)}</td>',
     ]

@@ -87,7 +87,7 @@ def result_text(key: str, figure: Any) -> str:
     if mid == low == high == "—":
         return "there is none"
     same = low == mid == high
-    return with_unit(mid, unit) if same else f"{with_unit(f'{low} … {high}', unit)}, nominal {with_unit(mid, unit)}"
+    return with_unit(mid, unit) if same else f"{with_unit(f'{low}…{high}', unit)}, nominal {with_unit(mid, unit)}"
 
 
 def ends_of(key: str, figure: Any) -> dict[str, str]:

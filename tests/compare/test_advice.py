@@ -84,6 +84,14 @@ def test_where_no_pair_does_the_sentence_names_the_nearest() -> None:
     assert "a margin of " in sentence
 
 
+def test_a_margin_that_is_not_known_is_said_in_words() -> None:
+    def half_known(c_in: Array, c_out: Array) -> advice.Outcome:
+        return advice.Outcome(np.full(c_in.shape, 90.0), np.full(c_in.shape, np.nan), np.full(c_in.shape, 0.5))
+
+    _, sentence = advice.e24_pairs(half_known, half_known)
+    assert sentence.endswith("a load error of 90 ppm and a margin that is not known.")
+
+
 def test_where_nothing_can_be_told_the_sentence_says_so() -> None:
     def unknown(c_in: Array, c_out: Array) -> advice.Outcome:
         return advice.Outcome(*(np.full(c_in.shape, np.nan) for _ in range(3)))

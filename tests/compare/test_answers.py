@@ -88,6 +88,7 @@ def test_bench_keys_in_messages_are_said_by_the_names_of_their_fields():
     message = "cannot be told: circuit.input_capacitor_pf not known; give circuit.condition[1].swing_v"
     assert answers.told(message) == "cannot be told: “Fitted, A–0” not known; give “Swing”"
     assert answers.told("measured.pairs: -5 ppm") == "measured.pairs: −5 ppm"
+    assert answers.told("against -50/+50 ppm (total_ppm ±50)") == "against −50/+50 ppm (ppm in all ±50)"
 
 
 def test_parts_of_the_same_name_are_told_apart():

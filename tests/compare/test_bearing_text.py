@@ -42,6 +42,11 @@ def test_a_load_that_cannot_be_met_says_so():
     assert cannot_be_met([Bearing(3.0, None, None, None, 0, 0, fitted=False)], bench()) == []
 
 
+def test_without_a_known_limit_no_part_is_counted_below_it():
+    row = Bearing(8.0, Pair(12.0, 12.0, 8.0), None, None, 13, 0, fitted=False)
+    assert bearing_table([row], bench())[1][0][4] == "not known"
+
+
 @pytest.mark.parametrize(
     ("typed", "ms"),
     [

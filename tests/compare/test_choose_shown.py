@@ -19,8 +19,9 @@ UNTOLD = hand_made.row(3, "QX26-8", "cannot tell", {"margin": None, "total_ppm":
     [
         ([MEETS, SHORT, UNTOLD], "One of three meets what is asked"),
         ([MEETS, MEETS, SHORT], "Two of three meet what is asked"),
-        ([MEETS, MEETS], "All two meet what is asked"),
-        ([SHORT, UNTOLD], "None of two meets what is asked. Nearest: TW.2016.26, ppm in all 0.98 times"),
+        ([MEETS, MEETS, MEETS], "All three meet what is asked"),
+        ([MEETS, MEETS], "Both meet what is asked"),
+        ([SHORT, UNTOLD], "Neither of two meets what is asked. Nearest: TW.2016.26, ppm in all 0.98 times"),
         ([MEETS], "The one part that offers it: ▲ meets"),
         ([], "None of the parts read offers 26 MHz"),
     ],
@@ -43,6 +44,12 @@ def test_the_ranked_rows_say_what_the_strips_show():
     assert frame["Look"].tolist() == ["☞ 1", "☞ 1", "☞ 1"]
     assert all(address.startswith("data:image/svg+xml;base64,") for address in frame["Times over: 1 is the line"])
     assert "Stock, pieces" not in frame
+
+
+def test_packages_are_written_alike_whatever_the_sheets_write():
+    rows = [{**MEETS, "package": said} for said in ("2,5 x 2,0 mm", "2.5 × 2.0", "2520", None)]
+    frame = choose_shown.rank_frame([Candidate(row, {}) for row in rows], LIGHT)
+    assert frame["Package"].tolist() == ["2.5 × 2.0"] * 3 + [""]
 
 
 def test_supply_stands_behind_the_rows_with_its_unit_in_the_heading():

@@ -28,6 +28,17 @@ def field(page, key):
     return page.text_input(key=f"field_{key.replace('.', '_')}")
 
 
+def test_before_anything_is_given_the_drawing_shows_the_names_and_what_to_do(page):
+    told = said(to(page, "circuit"))
+    assert "Give the frequency" in told
+    assert "Press a figure to change it" in told
+
+
+def test_the_line_of_terms_leads_to_the_circuit(page):
+    page.button(key="to_terms").click().run()
+    assert headings(page) == ["## The circuit is not set yet"]
+
+
 def test_what_the_circuit_bears_is_shown_without_any_sheet(page):
     told = said(open_bench(page))
     assert "### How much ESR this circuit can bear" in told

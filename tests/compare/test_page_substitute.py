@@ -33,7 +33,7 @@ def page_choices(page):
 
 
 def test_nothing_open_says_what_to_do():
-    assert headings(to(started(), "substitute")) == ["## Nothing to rank yet"]
+    assert headings(to(started(), "substitute")) == ["## Nothing to compare yet"]
 
 
 def test_one_part_alone_has_nothing_to_be_set_against():

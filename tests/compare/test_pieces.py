@@ -3,7 +3,7 @@
 from lxml import html
 
 from compare.palette import DARK, LIGHT
-from compare.pieces import look_html, plain, printed_html, shares_html, style, terms_html
+from compare.pieces import look_html, plain, printed_html, shares_html, style, terms_html, together
 from compare.review_shown import Share
 
 EVIL = '<img src=x onerror="alert(1)">&'
@@ -28,3 +28,9 @@ def test_text_of_a_sheet_is_escaped_everywhere():
     for made in (shares_html([Share(EVIL, EVIL, 0.5)]), printed_html(EVIL), look_html(EVIL), terms_html([EVIL])):
         assert "<img" not in made
         assert EVIL in html.fromstring(f"<div>{made}</div>").text_content()
+
+
+def test_a_figure_and_its_unit_stay_on_one_line():
+    assert together("−30.5…+32.1 ppm") == "−30.5…+32.1\u00a0ppm"
+    assert together("−0.3 (−20 %)") == "−0.3 (−20\u00a0%)"
+    assert together("covers −30…+60 °C, 4 pads <b>") == "covers −30…+60\u00a0°C, 4 pads &lt;b&gt;"
