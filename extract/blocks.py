@@ -16,6 +16,7 @@ from extract.model import Note
 from extract.prose import is_label, split_pairs
 from extract.quoted import quoted_lines
 from extract.tables import read_table
+from extract.unmerged import unmerged
 from extract.wraps import without_wraps
 
 # Characters by which a footnote is known again among the lines of its paragraph.
@@ -53,7 +54,7 @@ def read_blocks(document: Document) -> Blocks:
         if isinstance(block, Table):
             items += line_items(_worth_reading(run, warnings))
             run = []
-            items += read_table(without_wraps(block))
+            items += read_table(without_wraps(unmerged(block)))
         else:
             run.append(block)
     items += line_items(_worth_reading(run, warnings))
