@@ -33,7 +33,7 @@ def chosen_at(contest: Ranked) -> int:
     chosen = st.session_state.get("chosen")
     if chosen is None:
         return 0
-    known = remembered("known", (contest,), None, lambda: answers.identities(contest.briefs))
+    known = remembered("known", (contest,), None, lambda: answers.identities(contest.names))
     return known.index(chosen) if chosen in known else 0
 
 

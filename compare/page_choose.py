@@ -27,7 +27,7 @@ from compare.choosing import Candidate, Field, Sifted
 from compare.page_charts import picture
 from compare.page_copy import copy_button, figures
 from compare.page_filters import asked, filter_line, weights, weights_line
-from compare.page_results import remembered
+from compare.page_results import field_of, remembered
 from compare.page_shared import cautions, ready, review_of, save_buttons
 from compare.page_supply import supply_editor
 from compare.page_trial import try_it
@@ -73,7 +73,7 @@ def ranked(contest: Ranked, bench: Bench) -> tuple[Candidate, Sifted] | None:
     """The heading, the filters and the rows; returns the chosen row and all that the filters leave."""
     session.title(pieces.plain(remembered("heading", (contest, bench), None, lambda: heading(contest, bench))))
     slot = session.slot("supply")
-    field = remembered("field", (contest, slot), None, lambda: Field(choosing.candidates(contest.briefs, slot)))
+    field = remembered("field", (contest, slot), None, lambda: field_of(contest, slot))
     parts = sum(len(sheet.parts) for sheet in session.sheets())
     if not field.every:
         other_parts(contest, parts, open_at_once=True)
@@ -200,7 +200,9 @@ def actions(sifted: Sifted, contest: Ranked) -> None:
         if opened.open:
             heads, wide = export.rank_table([one.row for one in view], supplies=[one.supply for one in view])
             columns = dict(zip(heads, zip(*wide, strict=True), strict=True))
-            st.dataframe(columns, hide_index=True, key="wide_table", alt="All numbers of the rows in view")
+            st.dataframe(
+                columns, hide_index=True, placeholder="", key="wide_table", alt="All numbers of the rows in view"
+            )
     supply_editor(view, sifted.shown)
 
 

@@ -5,13 +5,14 @@ from __future__ import annotations
 import gc
 import hashlib
 import traceback
-from collections.abc import Callable, Sequence
+from collections.abc import Callable, Mapping, Sequence
 from typing import Any, TypeVar
 
 import streamlit as st
 
 from compare import evidence
 from compare.bench import Bench
+from compare.choosing import Field, candidates
 from compare.ranking import Ranked
 from compare.work import OpenSheet, Work
 from extract.model import SpecSheet, Where
@@ -19,7 +20,7 @@ from extract.partlist import part_numbers
 
 Result = TypeVar("Result")
 LONG = 2000
-"""Parts of a ranking that is worth keeping out of the search for garbage."""
+"""Rows that are worth keeping out of the search for garbage."""
 
 
 def sheets() -> list[SpecSheet]:
@@ -40,21 +41,21 @@ def ranked(key: str, _sheets: Sequence[SpecSheet], _bench: Bench) -> dict[str, A
 def contested(key: str, _sheets: Sequence[SpecSheet], _bench: Bench) -> Ranked:  # noqa: ARG001
     from compare.ranking import rank_sheets
 
-    found = rank_sheets(_sheets, _bench)
-    if len(found) > LONG:
-        found.briefs  # noqa: B018 - made now, so that they are passed over too
-        pass_over()
-    return found
+    return rank_sheets(_sheets, _bench)
 
 
-def pass_over() -> None:
-    """Have what is held now passed over by the search for garbage that Streamlit makes after each run of the script.
+def field_of(contest: Ranked, slot: Mapping[str, Any]) -> Field:
+    """The rows of a ranking with what `slot` knows of their supply.
 
-    Through the rows of a long list it takes a quarter of a second. What was passed over before is searched this once.
+    Those of a long list are passed over by the search for garbage that Streamlit makes after each run of the script: it
+    would take a quarter of a second. What was passed over before is searched this once.
     """
-    gc.unfreeze()
-    gc.collect()
-    gc.freeze()
+    field = Field(candidates(contest.briefs, slot))
+    if len(field.every) > LONG:
+        gc.unfreeze()
+        gc.collect()
+        gc.freeze()
+    return field
 
 
 def remembered(name: str, of: Sequence[object], asked: object, make: Callable[[], Result]) -> Result:

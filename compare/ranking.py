@@ -78,6 +78,14 @@ class Ranked:
             rows.append(row)
         return rows
 
+    @property
+    def names(self) -> list[dict[str, Any]]:
+        """File and part number of each, in order: what `briefs` begin with, without the rest."""
+        if self.reckoning is None:
+            return []
+        columns = {name: list(self.reckoning.columns.offers.column(name)) for name in IDENTITY[:2]}
+        return [{name: column[at] for name, column in columns.items()} for at in self.ordered]
+
     def sheet_of(self, place: int) -> SpecSheet:
         """The sheet of a row with the row's part alone."""
         assert self.reckoning is not None  # noqa: S101
