@@ -10,7 +10,7 @@ from collections.abc import Mapping, Sequence
 from dataclasses import dataclass
 from typing import Any
 
-from compare.bench import Bench
+from compare.bench import Bench, uses
 from compare.charts import Slack
 from compare.circuit_text import ppm_limit_text, ppm_limits
 from compare.desk import field_key, field_of
@@ -94,11 +94,18 @@ STRIPS = tuple(name for name in SHORT_NAMES if name in FIGURES)
 MARGINS = ("margin", "gain_ratio", "resistance_headroom")
 BENCH_KEY = re.compile(r"\b(?:requirement|circuit|crystal|measured)\.[a-z_]+(?:\[\d+\])?(?:\.[a-z_]+)*")
 
+USE_KEY = re.compile(r"\buse ([a-z][a-z0-9-]*)\b")
+
 
 def told(message: str) -> str:
-    """A message as the page shows it: bench keys by the names of their fields, and a true minus."""
-    said = message.replace("total_ppm ±", f"{SHORT_NAMES['total_ppm']} ±")
+    """A message as the page shows it: keys of bench and uses by their names, and a true minus."""
+    said = USE_KEY.sub(_use_named, message).replace("total_ppm ±", f"{SHORT_NAMES['total_ppm']} ±")
     return with_minus(BENCH_KEY.sub(lambda found: _quoted(found[0]), said))
+
+
+def _use_named(found: re.Match[str]) -> str:
+    use = uses().get(found[1])
+    return found[0] if use is None else use.use.partition(" (")[0]
 
 
 def _quoted(key: str) -> str:

@@ -26,20 +26,21 @@ def weights() -> dict[str, float]:
     return {key: float(value) for key, value in session.slot("weights").items() if key in ASPECTS}
 
 
-def filter_line(
-    filters: Filters, choices: Mapping[str, list[str]], offered: str, others: Callable[[], None]
-) -> None:
+def filter_line(filters: Filters, choices: Mapping[str, list[str]], offered: str, others: Callable[[], None]) -> None:
     """`9 of 11 parts read offer 26 MHz. Show any package, any verdict, by least slack`."""
     with st.container(horizontal=True, vertical_alignment="center", gap="small"):
         st.markdown(pieces.plain(offered), width="content")
         others()
     with st.container(horizontal=True, vertical_alignment="center", gap="small"):
-        st.markdown("Show", width="content")
-        for name in ("package", "maker", "verdict"):
-            # One maker for all leaves nothing to choose.
-            if len(choices[name]) > 1 or getattr(filters, name):
-                choice(name, getattr(filters, name), choices[name])
-        st.markdown("by", width="content")
+        # One maker for all leaves nothing to choose.
+        open_ones = [
+            name for name in ("package", "maker", "verdict") if len(choices[name]) > 1 or getattr(filters, name)
+        ]
+        if open_ones:
+            st.markdown("Show", width="content")
+        for name in open_ones:
+            choice(name, getattr(filters, name), choices[name])
+        st.markdown("by" if open_ones else "In order of", width="content")
         order(filters.by)
         limits(filters, choices["status"])
 

@@ -6,6 +6,7 @@ Everything here takes the dictionaries of `substitution.substitute` (the data co
 from __future__ import annotations
 
 import math
+import re
 from collections.abc import Mapping, Sequence
 from dataclasses import dataclass
 from typing import Any
@@ -14,7 +15,7 @@ from compare import supply
 from compare.answers import FIGURES, SHORT_NAMES, Row, missing_name, row_name, told, verdict
 from compare.approval import MARKS
 from compare.export import Table
-from compare.figures import UP_TO, count_word, counted, number, signed, spread, with_minus, with_unit
+from compare.figures import UP_TO, count_word, counted, exact, number, scale, signed, spread, with_minus, with_unit
 from compare.levers import Lever
 from compare.relations import rules
 from compare.report import NAMES as CALLED
@@ -39,6 +40,7 @@ NOT_A_NO = "not a no: ask where the product needs it"
 WITHOUT_BENCH = "the board presents the present part’s rated load"
 ENDS_THAT_COUNT = {"low": ("high",), "high": ("low",), "inside": ("low", "high"), "outside": ("low", "high")}
 IN_CIRCUIT = ("margin", "gain_ratio", "resistance_headroom", "total_ppm", "drive_level_uw", "startup_ms")
+FIGURE = re.compile(r"\d+(?:\.\d+)?")
 SPOKEN = {"mode": "mode", "pads": "pads", "package": "package", "resonance": "resonance", "frequency_mhz": "frequency"}
 SHORTFALLS = {
     "package": "another package",
@@ -224,16 +226,18 @@ def differing_fields(one: Row) -> list[str]:
 
 
 def _swap_line(line: Row, lever: Lever | None) -> SwapLine:
-    field, unit = line["field"], _unit(line["field"])
+    field, stated = line["field"], _unit(line["field"])
     values = line["incumbent"], line["candidate"]
-    bare = [_bare(field, value) for value in values]
+    # Ohms of a tuning fork are kilohms, and its frequency kilohertz, in all cells of the line.
+    factor, unit = scale(stated, *(end for value in values for end in _taken(value).values()))
+    bare = [_bare(field, value, factor) for value in values]
     return SwapLine(
         field=field,
         name=_name(field),
         unit=unit,
-        incumbent=_value(values[0], unit),
-        candidate=_value(values[1], unit),
-        difference=difference(field, *values),
+        incumbent=_value(values[0], stated, factor),
+        candidate=_value(values[1], stated, factor),
+        difference=difference(field, *values, factor),
         relation=line["relation"],
         matters=line["matters"],
         does=_does(line, lever),
@@ -273,20 +277,22 @@ def _unit(field: str) -> str:
     return "°C" if field == "reflow_peak_c" else rules()[field].unit if field in rules() else ""
 
 
-def _value(value: Any, unit: str) -> str:
+def _value(value: Any, unit: str, factor: float = 1.0) -> str:
     """A value without the unit that stands beside the line's name, and without its place."""
     if value is None:
         return "not stated"
     if isinstance(value, bool):
         return "yes" if value else "no"
     if isinstance(value, int | float):
-        return number(float(value), 6)
+        return number(float(value) * factor, 6)
     text = str(value)
     if isinstance(value, Mapping):
         text = str(value.get("text", ""))
         text = text.rpartition(" (")[0] if _place(value) else text
         if unit:
             text = text.replace(f" {unit}", "")
+        if factor != 1:
+            text = FIGURE.sub(lambda found: exact(float(found[0]) * factor), text)
         if value.get("min") is not None and value.get("max") is not None:
             text = text.replace(" to ", UP_TO)
     return with_minus(text) or "—"
@@ -312,17 +318,20 @@ def _ends_that_count(field: str) -> tuple[str, ...]:
     return ENDS_THAT_COUNT.get(better, ("mid",))
 
 
-def _bare(field: str, value: Any) -> str:
+def _bare(field: str, value: Any, factor: float = 1.0) -> str:
     """The number that counts, in full, with a point; both ends apart by … where two do."""
     ends = [_taken(value).get(end) for end in _ends_that_count(field)]
-    known = [end for end in ends if end is not None]
+    known = [end * factor for end in ends if end is not None]
     if len(known) == 2 and known[0] == -known[1]:
         known = known[1:]
     return UP_TO.join(f"{end:.10g}" for end in known)
 
 
-def difference(field: str, incumbent: Any, candidate: Any) -> str:
-    """Candidate less present part, in the field's unit and with its sign; of a ± band its half, of others both ends."""
+def difference(field: str, incumbent: Any, candidate: Any, factor: float = 1.0) -> str:
+    """Candidate less present part, with its sign; of a ± band its half, of others both ends.
+
+    `factor` is that from the field's unit to the one shown.
+    """
     pairs = [(_taken(incumbent).get(end), _taken(candidate).get(end)) for end in _ends_that_count(field)]
     steps = [new - old for old, new in pairs if old is not None and new is not None]
     if len(steps) != len(pairs) or not steps:
@@ -330,11 +339,12 @@ def difference(field: str, incumbent: Any, candidate: Any) -> str:
     steps = [0.0 if abs(step) < 1e-9 else step for step in steps]
     if not any(steps):
         return "0"
+    steps = [step * factor for step in steps]
     if len(steps) == 2 and not math.isclose(steps[0], -steps[1], rel_tol=1e-9) and steps[0] != steps[1]:
         return f"{signed(steps[0])} / {signed(steps[1])}"
     old = pairs[-1][0]
     counts = len(steps) == 1 and old and _ends_that_count(field) != ("mid",)
-    return signed(steps[-1]) + (f" ({signed(100 * steps[-1] / old, 2)} %)" if counts and old else "")
+    return signed(steps[-1]) + (f" ({signed(100 * steps[-1] / (old * factor), 2)} %)" if counts and old else "")
 
 
 def differ_heading(differ: Sequence[SwapLine]) -> str:

@@ -89,6 +89,8 @@ def test_bench_keys_in_messages_are_said_by_the_names_of_their_fields():
     assert answers.told(message) == "cannot be told: “Fitted, A–0” not known; give “Swing”"
     assert answers.told("measured.pairs: -5 ppm") == "measured.pairs: −5 ppm"
     assert answers.told("against -50/+50 ppm (total_ppm ±50)") == "against −50/+50 ppm (ppm in all ±50)"
+    assert answers.told("(use ble-active -50 to +50)") == "(Bluetooth LE, active clock −50 to +50)"
+    assert answers.told("use smaller load capacitors") == "use smaller load capacitors"
 
 
 def test_parts_of_the_same_name_are_told_apart():

@@ -101,6 +101,14 @@ def test_each_difference_has_its_sign_and_its_relation(changed, difference, sign
     assert (line.difference, line.sign) == (difference, sign)
 
 
+def test_large_resistances_stand_in_kilohms_in_every_cell_of_their_line():
+    old, new = (sheet(part(name, esr_ohm=esr)) for name, esr in (("A", (None, 35e3, 50e3)), ("B", (None, None, 70e3))))
+    found = swap_shown.swap_lines(substitute([old], [new], None)["candidates"][0], {})
+    (esr,) = [line for line in found.differ if line.field == "esr_ohm"]
+    assert (esr.unit, esr.incumbent, esr.candidate) == ("kΩ", "35 typ, 50 max", "70 max")
+    assert (esr.bare_incumbent, esr.bare_candidate, esr.difference) == ("50", "70", "+20 (+40 %)")
+
+
 def test_values_stand_without_unit_and_copy_as_bare_numbers():
     found = lines(part("NEW-1", esr_ohm=(None, None, 50.0), frequency_tolerance_ppm=(-7.0, None, 7.0)))
     by_field = {line.field: line for line in found.differ}
