@@ -135,20 +135,16 @@ def _ignoring_nan(reduce: np.ufunc, values: Array) -> Array:
     return reduced
 
 
-def reckon(
-    columns: Columns, bench: Bench, *, wanted: Collection[str] | None = None, among: Columns | None = None
-) -> Reckoned:
+def reckon(columns: Columns, bench: Bench, *, wanted: Collection[str] | None = None) -> Reckoned:
     """Every number of every part, nominal and over the corners; parts that are alike to a circuit only once.
 
-    `wanted`: the keys whose ends over the corners are asked for, all of them where it is not given. `among`: all the
-    parts that these few are taken from, where the numbers must be the same as beside the others: which capacitances
-    inside their tolerances drive hardest is settled for all parts together.
+    `wanted`: the keys whose ends over the corners are asked for, all of them where it is not given. What lies between
+    the corners where the circuit drives hardest, which no verdict hangs on, is then not looked for.
     """
     first, which = _alike(columns)
-    every = columns if among is None else among
     if len(first) > MOSTLY * len(columns):
-        return _reckon_distinct(columns, bench, wanted, every)
-    return _reckon_distinct(columns.take(first), bench, wanted, every).take(which)
+        return _reckon_distinct(columns, bench, wanted)
+    return _reckon_distinct(columns.take(first), bench, wanted).take(which)
 
 
 def _alike(columns: Columns) -> tuple[Whole, Whole]:
@@ -158,10 +154,10 @@ def _alike(columns: Columns) -> tuple[Whole, Whole]:
     return distinct(*(np.unique(row, return_inverse=True)[1] for row in values))
 
 
-def _reckon_distinct(columns: Columns, bench: Bench, wanted: Collection[str] | None, among: Columns) -> Reckoned:
+def _reckon_distinct(columns: Columns, bench: Bench, wanted: Collection[str] | None) -> Reckoned:
     nominal = analyse_nominal(columns, bench, limiters_of(bench.settings[0].circuit)[0])
     reckoned = Reckoned(nominal, {}, np.full((len(columns), SHUNT_FLOOR), -np.inf))
-    for corners in _corner_sets(columns, bench, among):
+    for corners in _corner_sets(columns, bench, favourable=wanted is None):
         _widen_all(reckoned, corners, wanted)
     return reckoned
 
@@ -309,19 +305,21 @@ def _side_by_side(*listed: Array) -> Array:
     return np.concatenate([np.broadcast_to(x, (*shape[:-1], x.shape[-1])) for x in listed], axis=-1)
 
 
-def _corner_sets(columns: Columns, bench: Bench, among: Columns) -> list[Corners]:
-    """The corners of every setting, for each limiter that may hold."""
+def _corner_sets(columns: Columns, bench: Bench, *, favourable: bool) -> list[Corners]:
+    """The corners of every setting, for each limiter that may hold.
+
+    `favourable`: and what lies between them where the circuit drives hardest.
+    """
     sets: list[Corners] = []
     for number, setting in enumerate(bench.settings):
         keys = setting.circuit
         shunt, shunt_index = shunt_ends_and_floor(columns, number)
         crystal = crystal_at(columns, bench, number, shunt)
-        every = crystal_at(among, bench, number, shunt_ends_and_floor(among, number)[0])
-        circuit, greatest_gm = corner_circuit(bench, keys, shunt, _with_hardest(bench, keys, every))
-        gains = np.shape(circuit.transconductance_ms)[-1]
-        peak_v = np.full((1,) * 5 + (gains,), swing_of(keys)[0])
-        greatest_gm = np.broadcast_to(greatest_gm, peak_v.shape)
-        for limiter in limiters_of(keys):
+        inside = _hardest(bench, keys, crystal) if favourable else []
+        for capacitances, limiter in itertools.product([None, *inside], limiters_of(keys)):
+            circuit, greatest_gm = corner_circuit(bench, keys, shunt, capacitances)
+            peak_v = np.full((1,) * 5 + np.shape(circuit.transconductance_ms)[-1:], swing_of(keys)[0])
+            greatest_gm = np.broadcast_to(greatest_gm, peak_v.shape)
             one = Corners(circuit, crystal, keys, limiter, peak_v, greatest_gm, shunt_index)
             at = next((at for at, known in enumerate(sets) if known.joins(one)), None)
             if at is None:
@@ -406,43 +404,57 @@ def _capacitance_corners(nodes: Nodes) -> list[Array]:
     return [combinations[:, column].reshape(1, 1, 1, 1, -1, 1) for column in range(combinations.shape[1])]
 
 
-def _with_hardest(bench: Bench, stated: CircuitKeys, crystal: Crystal) -> list[Array]:
-    """The corners of the capacitances, and what lies between them where the circuit drives hardest.
+def _hardest(bench: Bench, stated: CircuitKeys, crystal: Crystal) -> list[list[Array]]:
+    """Capacitances between the corners where the circuit drives hardest, as in `_capacitance_corners`, part by part.
 
-    At the IC's gains and at the least critical one, for the least and the greatest C0 and R1 of all parts.
+    At the IC's gains and at the least critical one, for the least and the greatest C0 and R1 of each part. Empty where
+    that is at a corner for all of them.
     """
     keys = as_reckoned(stated, bench)
-    nodes, frequency = Nodes.of(keys), bench.requirement.frequency_mhz
-    corners = _capacitance_corners(nodes)
+    nodes = Nodes.of(keys)
     if np.isnan([span[MID] for span in vars(nodes).values()]).any():
-        return corners
-    c0, r1 = (_extremes(np.asarray(of)) for of in (crystal.shunt_capacitance_pf, crystal.esr_ohm))
-    c0, r1 = np.repeat(c0, len(r1)), np.tile(r1, len(c0))
-    ends = Crystal(frequency, np.inf, c0[:, None], 0.0, r1[:, None])
-    at_corners = make_circuit(keys, bench, [one.reshape(1, -1) for one in corners], np.full((1, 1), np.nan))
-    critical = np.fmin.reduce(analyse(at_corners, ends)["critical_transconductance_ms"], axis=1)
+        return []
+    ends = [*_two_extremes(np.asarray(crystal.shunt_capacitance_pf)), *_two_extremes(np.asarray(crystal.esr_ohm))]
+    first, which = distinct(*(np.unique(end, return_inverse=True)[1] for end in np.broadcast_arrays(*ends)))
+    c0, r1 = (np.stack(np.broadcast_arrays(*two))[:, first] for two in (ends[:2], ends[2:]))
+    gains, shunt = _targets(bench, keys, c0, r1)
+    pairs, of_pair = np.unique(np.stack([gains.ravel(), shunt.ravel()]), axis=1, return_inverse=True)
+    gm, at_c0 = pairs[..., None]
+
+    def impedance(at: Array, of: Whole) -> Complex:
+        circuit = make_circuit(keys, bench, list(np.moveaxis(at, -1, 0)), gm[of])
+        return terminal_impedance_ohm(circuit, bench.requirement.frequency_mhz, at_c0[of])
+
+    found = hardest_capacitances(list(vars(nodes).values()), impedance, len(gm))[of_pair.ravel()]
+    points = found.reshape(*gains.shape, -1)
+    points = points[~np.isnan(points).all(axis=(1, 2))]
+    # A part that has no such point at a target counts one of its corners twice.
+    points = np.where(np.isnan(points), [span[LOW] for span in vars(nodes).values()], points)[:, which]
+    by_node = [one.T.reshape(one.shape[1], 1, 1, 1, -1, 1) for one in np.moveaxis(points, -1, 0)]
+    return [by_node] if len(points) else []
+
+
+def _two_extremes(values: Array) -> tuple[Array, Array]:
+    """(n,) the least and the greatest of each part."""
+    by_part = values.reshape(len(values), -1)
+    return np.fmin.reduce(by_part, axis=1), np.fmax.reduce(by_part, axis=1)
+
+
+def _targets(bench: Bench, keys: CircuitKeys, c0: Array, r1: Array) -> tuple[Array, Array]:
+    """Transconductance and C0, (targets, n) each, that the hardest point is looked for at; ends of C0 and R1 (2, n)."""
+    both_c0, both_r1 = np.repeat(c0, 2, axis=0), np.tile(r1, (2, 1))
+    corners = [one.ravel() for one in _capacitance_corners(Nodes.of(keys))]
+    at_corners = make_circuit(keys, bench, corners, np.full((1, 1, 1), np.nan))
+    ends = Crystal(bench.requirement.frequency_mhz, np.inf, both_c0[..., None], 0.0, both_r1[..., None])
+    critical = np.fmin.reduce(analyse(at_corners, ends)["critical_transconductance_ms"], axis=-1)
     range_ms = keys.transconductance_range_ms
-    gains = (
-        [rated_gm(keys, bench, c0)]
-        if range_ms is None
-        else [np.full_like(c0, g) for g in {range_ms[LOW], range_ms[HIGH]}]
-    )
-    targets = {(float(g), float(c)) for gain in (*gains, critical) for g, c in zip(gain, c0, strict=True)}
-    targets |= {(float(g), 0.0) for gain in gains for g in gain}
-    gm, shunt = np.array(sorted(pair for pair in targets if not np.isnan(pair).any())).reshape(-1, 2).T[:, :, None]
-
-    def impedance(at: Array) -> Complex:
-        return terminal_impedance_ohm(make_circuit(keys, bench, list(np.moveaxis(at, -1, 0)), gm), frequency, shunt)
-
-    inside = hardest_capacitances(list(vars(nodes).values()), impedance)
-    return [
-        np.concatenate([one.ravel(), more]).reshape(1, 1, 1, 1, -1, 1)
-        for one, more in zip(corners, inside.T, strict=True)
-    ]
-
-
-def _extremes(values: Array) -> Array:
-    return np.unique([np.fmin.reduce(values, axis=None), np.fmax.reduce(values, axis=None)])
+    stated = [rated_gm(keys, bench, end) for end in c0] if range_ms is None else [range_ms[LOW], range_ms[HIGH]]
+    gains = [np.broadcast_to(gain, c0.shape[1:]) for gain in stated]
+    shunts = [*c0, np.zeros_like(c0[0])]
+    gm = np.concatenate([np.repeat(gains, len(shunts), axis=0), critical])
+    shunt = np.concatenate([np.tile(shunts, (len(gains), 1)), both_c0])
+    known = ~(np.isnan(gm) | np.isnan(shunt))
+    return np.where(known, gm, 0.0), np.where(known, shunt, 0.0)
 
 
 def _transconductances(bench: Bench, keys: CircuitKeys, of: tuple[Sequence[Array], Array]) -> tuple[Array, Array]:

@@ -134,8 +134,7 @@ def rank(sheets: Sequence[SpecSheet], bench: Bench, *, shown: int | None = None)
     judged, _ = judge_all(columns, bench, reckon(columns, bench, wanted=JUDGED))
     verdict = of_part(judged, len(columns))
     first = order(judged, verdict)[:shown]
-    # The same numbers as beside all the others, at the cost of these few.
-    reckoning = reckon_offers(found.offers.take(first), bench, found.notes, among=columns)
+    reckoning = reckon_offers(found.offers.take(first), bench, found.notes)
     counts = {words: int((verdict == code).sum()) for code, words in WORDS.items()}
     return Ranked(reckoning, list(range(len(first))), tuple(found.notes)).result() | {"counts": counts}
 

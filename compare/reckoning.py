@@ -76,15 +76,10 @@ def settled_offers(sheets: Sequence[SpecSheet], bench: Bench) -> Offers:
     return Offers(choose_loads(found.offers, bench), [*found.notes, *bench_notes(bench)])
 
 
-def reckon_offers(
-    offers: Sequence[Offer], bench: Bench, notes: Sequence[dict[str, Any]] = (), *, among: Columns | None = None
-) -> Reckoning:
-    """Columns, corners, numbers and verdicts of offers whose options are settled.
-
-    `among`: the parts that these few are taken from, where the numbers must be what they are beside all of them.
-    """
+def reckon_offers(offers: Sequence[Offer], bench: Bench, notes: Sequence[dict[str, Any]] = ()) -> Reckoning:
+    """Columns, corners, numbers and verdicts of offers whose options are settled."""
     columns = make_columns(offers, bench)
-    reckoned = reckon(columns, bench, among=among)
+    reckoned = reckon(columns, bench)
     judged, total = judge_all(columns, bench, reckoned)
     known = silence(columns, bench)
     return Reckoning(

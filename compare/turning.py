@@ -9,45 +9,58 @@ from __future__ import annotations
 
 import itertools
 from collections.abc import Callable, Sequence
+from functools import partial
+from typing import Protocol
 
 import numpy as np
+from numpy.typing import NDArray
 
 from compare.circuit import Array, Complex, Mobius
 
 Span = tuple[float, float, float]
-Impedance = Callable[[Array], Complex]
+Whole = NDArray[np.int_]
+
+
+class Impedance(Protocol):
+    def __call__(self, at: Array, of: Whole) -> Complex: ...
+
+
 ROUNDS, SETTLED = 40, 1e-4
 WORTH_IT = 1e-7
 """What a point must gain on its corner, as a share of Re Z, to be kept."""
 
 
-def hardest_capacitances(spans: Sequence[Span], impedance: Impedance) -> Array:
-    """Node capacitances, not at a corner, at which -Re Z is greatest: (m, nodes), each row once; m may be 0.
+def hardest_capacitances(spans: Sequence[Span], impedance: Impedance, targets: int) -> Array:
+    """Node capacitances at which -Re Z is greatest, (targets, nodes); NaN where that is at a corner.
 
     Parameters
     ----------
     spans
         Low, nominal and high of each node's capacitance.
     impedance
-        From capacitances (targets or 1, k, nodes) to Z, (targets, k): a row for each gain and C0 that it is wanted for,
-        each with a greatest point of its own.
+        From capacitances (t or 1, k, nodes) and the indices of t targets to Z, (t, k): a target is a gain and C0 that
+        it is wanted for, each with a greatest point of its own, whatever the others are.
     """
+    every = np.arange(targets)
     low, high = np.array([(span[0], span[-1]) for span in spans], dtype=float).T
     moving, width = np.flatnonzero(high > low), high - low
     corners = np.array(list(itertools.product(*({a, b} for a, b in zip(low, high, strict=True)))))
-    at = at_corner = corners[np.nan_to_num(impedance(corners[None]).real, nan=np.inf).argmin(axis=1)]
+    at_corner = corners[np.nan_to_num(impedance(corners[None], every).real, nan=np.inf).argmin(axis=1)]
+    at, open_ones = at_corner.copy(), every
     for _ in range(ROUNDS):
-        before = at
+        before = moved = at[open_ones]
         for node in moving.tolist():
-            at = _along(at, node, (low[node], high[node]), impedance)
-        if (np.abs(at - before)[:, moving] <= SETTLED * width[moving]).all():
+            moved = _along(moved, node, (low[node], high[node]), partial(impedance, of=open_ones))
+        at[open_ones] = moved
+        open_ones = open_ones[(np.abs(moved - before)[:, moving] > SETTLED * width[moving]).any(axis=1)]
+        if not open_ones.size:
             break
-    hardest, at_best = impedance(np.stack([at_corner, at], axis=1)).real.T
+    hardest, at_best = impedance(np.stack([at_corner, at], axis=1), every).real.T
     worth = at_best < hardest - WORTH_IT * np.abs(hardest)
-    return np.unique(at[worth].round(6), axis=0)
+    return np.where(worth[:, None], at.round(6), np.nan)
 
 
-def _along(at: Array, node: int, ends: tuple[float, float], impedance: Impedance) -> Array:
+def _along(at: Array, node: int, ends: tuple[float, float], impedance: Callable[[Array], Complex]) -> Array:
     """Each row moved along one node to where its own Re Z is least.
 
     Z is a ratio of two lines in any one capacitance, so its values at both ends and halfway give all of it:

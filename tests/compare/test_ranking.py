@@ -175,3 +175,17 @@ def test_a_brief_row_has_the_supply_that_its_sheet_states():
     priced = usual(number="priced").model_copy(update={"attributes": Attributes(price="0.21 €", status="active")})
     (brief,) = rank_sheets([sheet(priced)], bench()).briefs
     assert brief["attributes"] == {"price": "0.21 €", "status": "active"}
+
+
+def test_a_part_has_the_same_numbers_in_a_list_as_alone():
+    """With losses and a gain past the optimum what drives hardest lies between the corners, elsewhere for each."""
+    circuit = {"transconductance_ms": [5.0, 90.0], "output_resistance_kohm": 5.0, "series_resistor_ohm": 100.0}
+    asked = bench({"circuit": circuit})
+    parts = [
+        usual(reading("esr_ohm", max=esr), reading("shunt_capacitance_pf", max=c0), number=f"P{esr:g}-{c0:g}")
+        for esr, c0 in ((30.0, 7.0), (60.0, 2.0), (150.0, 1.0), (60.0, 3.0))
+    ]
+    together = {row["part_number"]: row for row in rank([sheet(*parts)], asked)["rows"]}
+    for one in parts:
+        (alone,) = rank([sheet(one)], asked)["rows"]
+        assert {**together[one.part_number], "place": 1} == alone
