@@ -5,6 +5,7 @@ from __future__ import annotations
 from bisect import bisect_left
 from collections.abc import Iterable, Sequence
 from dataclasses import dataclass, field
+from itertools import pairwise
 
 from extract.documents.words import Box, Ruling, union
 
@@ -162,15 +163,22 @@ def _snapped(lines: list[tuple[float, float, float]]) -> list[tuple[float, list[
 
 def _joined(stretches: Iterable[tuple[float, float]], gap: float) -> list[tuple[float, float]]:
     joined: list[tuple[float, float]] = []
-    last_length = 0.0
-    for start, end in sorted(stretches):
-        short = bool(joined) and end - start < DASH and last_length < DASH
-        last_length = end - start
-        if joined and start - joined[-1][1] <= (max(gap, DASH_GAP) if short else gap):
+    pieces = sorted(stretches)
+    dashes = [False, *(_dashes(one, other) for one, other in pairwise(pieces)), False]
+    for index, (start, end) in enumerate(pieces):
+        # Two tables whose corners are drawn apart are no dashed line; that has gap upon gap.
+        dashed = dashes[index] and (dashes[index - 1] or dashes[index + 1])
+        if joined and start - joined[-1][1] <= (max(gap, DASH_GAP) if dashed else gap):
             joined[-1] = (joined[-1][0], max(joined[-1][1], end))
         else:
             joined.append((start, end))
     return joined
+
+
+def _dashes(one: tuple[float, float], other: tuple[float, float]) -> bool:
+    """Whether two stretches are two dashes with their gap."""
+    short = one[1] - one[0] < DASH and other[1] - other[0] < DASH
+    return short and 0 < other[0] - one[1] <= DASH_GAP
 
 
 def _connected(pieces: Sequence[Ruling]) -> list[list[Ruling]]:
