@@ -13,6 +13,7 @@ from extract.fold import fold
 from extract.meaning import Meaning, is_part_token, meaning, part_tokens
 from extract.model import When
 from extract.number import PLAIN_NUMBER
+from extract.tokens import tokens
 from extract.wording import Label
 
 BOUNDS: dict[str, Bound] = {"min": "min", "typ": "typ", "max": "max"}
@@ -57,6 +58,15 @@ def is_unit(text: str) -> bool:
         return False
     spelling = units.spelling_of(bare)
     return any((unit := kind.look_up(spelling)) is not None and unit.sort == "sizes" for kind in units.kinds().values())
+
+
+@lru_cache(maxsize=4096)
+def end_of_range(text: str) -> Bound | None:
+    """Which end of a range a column headed "from °C" or "to" holds; None for any other text."""
+    said = tokens(text, "operating_temperature_c")
+    if not said or any(each.kind not in ("unit", "open", "close") for each in said[1:]):
+        return None
+    return {"from": BOUNDS["min"], "at": BOUNDS["min"], "to": BOUNDS["max"]}.get(said[0].kind)
 
 
 # A column headed by nothing but the unit of frequency holds frequencies.

@@ -14,12 +14,12 @@ from itertools import pairwise
 from extract import trace, wording
 from extract.amount import field_for
 from extract.candidates import Candidate, has_unit, label_doubts, measured_in, read
-from extract.conditions import band_of, condition_of, kept, merged
+from extract.conditions import TEMPERATURES, band_of, condition_of, kept, merged
 from extract.drafts import Draft
 from extract.entries import Listing, Placed
 from extract.fields import field_of
 from extract.fold import fold
-from extract.heads import BOUNDS, Head, interpret, is_unit
+from extract.heads import BOUNDS, Head, end_of_range, interpret, is_unit
 from extract.identity import is_package, package_in, speaks_of_a_crystal
 from extract.meaning import meaning, part_tokens
 from extract.model import When
@@ -180,6 +180,7 @@ def _settle(columns: list[ListColumn], listing: Listing) -> None:
             column.label = wording.read_label("frequency range")
             column.use = ""
     _unhead_bands(columns, texts)
+    _ends_of_ranges(columns)
     numbered = [column for column in columns if column.use == "part_number"]
     good = [column for column in numbered if _share(texts[column.index], _is_token) > 0.4]
     for column in numbered:
@@ -187,8 +188,9 @@ def _settle(columns: list[ListColumn], listing: Listing) -> None:
             column.use = "description"
     if len(good) > 1:
         _set_series_apart(good, listing)
-    if not numbered and any(column.use in _MAY_NUMBER for column in columns):
-        _part_column_by_content(columns, texts)
+    unnumbered = not numbered and any(column.use in _MAY_NUMBER for column in columns)
+    if unnumbered and not _part_column_by_content(columns, texts):
+        _part_column_of_digits(columns, texts)
 
 
 def _set_series_apart(numbered: Sequence[ListColumn], listing: Listing) -> None:
@@ -219,7 +221,32 @@ def _unhead_bands(columns: Sequence[ListColumn], texts: dict[int, list[str]]) ->
             column.label = wording.read_label("frequency range")
 
 
-def _part_column_by_content(columns: list[ListColumn], texts: dict[int, list[str]]) -> None:
+_ARTICLE = re.compile(r"(?=(?:\D*\d){5})[\d./-]{5,20}")
+
+
+def _part_column_of_digits(columns: Sequence[ListColumn], texts: dict[int, list[str]]) -> None:
+    """A column of stock numbers without a letter names the rows where nothing else does."""
+    for column in columns:
+        numbers = texts[column.index] if column.use == "stock_number" else []
+        if len(numbers) > 1 and len(set(numbers)) == len(numbers) and all(map(_ARTICLE.fullmatch, map(fold, numbers))):
+            column.use = "part_number"
+            return
+
+
+def _ends_of_ranges(columns: Sequence[ListColumn]) -> None:
+    """Under one label "from" and, in the column beside it, "to": the two ends of its range."""
+    for low, high in pairwise(columns):
+        if low.label is None or low.label.field not in TEMPERATURES or low.label.bound is not None:
+            continue
+        own = high.label is None and high.use in ("", "description") or high.label == low.label
+        if own and [end_of_range(each.head.levels[-1]) for each in (low, high) if each.head.levels] == ["min", "max"]:
+            unit = low.label.unit or high.head.unit or None
+            low.label = replace(low.label, bound="min", unit=unit)
+            high.label, high.use = replace(low.label, bound="max"), ""
+
+
+def _part_column_by_content(columns: list[ListColumn], texts: dict[int, list[str]]) -> bool:
+    """Look for the part numbers under heads that do not name them; whether they were found."""
     for column in columns:
         if column.label is None and column.use in _MAY_NUMBER and texts[column.index]:
             names = [part_tokens(text) for text in texts[column.index]]
@@ -227,7 +254,8 @@ def _part_column_by_content(columns: list[ListColumn], texts: dict[int, list[str
                 {each[0] for each in names if each}
             ) > 0.6 * len(names):
                 column.use = "part_number"
-                return
+                return True
+    return False
 
 
 def _sample(listing: Listing, index: int) -> list[str]:

@@ -77,6 +77,8 @@ def _range(reading: Reading, fork: bool | None) -> str | None:
     if reading.field in SIZED and len(stated) == 1 and stated[0] < 0 and reading.min is None:
         return f"one number with a minus sign, {stated[0]:g} ppm, is printed where ± is usual: look at the sign"
     ranged = reading.field in ("operating_temperature_c", "storage_temperature_c")
+    if ranged and stated == [reading.typ]:
+        return f"one temperature, {stated[0]:g} °C, is read where a range is usual: the other end may stand elsewhere"
     if ranged and reading.min is not None and reading.min > limits()["warmest_low_end_c"]:
         return f"a {known.title} that begins at {reading.min:g} °C: a minus sign may be lost"
     for number in numbers_of(reading):

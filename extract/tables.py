@@ -18,7 +18,7 @@ from extract.documents.grid import TextRow
 from extract.documents.model import Cell, Table
 from extract.entries import Column, Item, Listing, Piece, Text
 from extract.fold import fold, key
-from extract.heads import Head, bound_and_unit, interpret, is_unit
+from extract.heads import Head, bound_and_unit, end_of_range, interpret, is_unit
 from extract.identity import is_package
 from extract.keys import read_key_table, take_code_rows
 from extract.matrices import read_matrix
@@ -243,7 +243,10 @@ def _goes_on(rows: list[Row], start: int, index: int) -> bool:
         return bool(spanning)
     if spanning and all(cell.row < start + (index - start) for cell in spanning):
         return all(not meaning(cell.text).value or is_part_token(cell.text) or _short(cell) for cell in own)
-    units = sum(bool(meaning(cell.text).role or is_unit(cell.text) or bound_and_unit(cell.text)) for cell in own)
+    units = sum(
+        bool(meaning(cell.text).role or is_unit(cell.text) or bound_and_unit(cell.text) or end_of_range(cell.text))
+        for cell in own
+    )
     if units == len(own) or (units >= 0.6 * len(own) and not any(meaning(cell.text).value for cell in own)):
         return True
     if any(cell.column_span > 1 for cell in distinct(above)) and is_head(row):

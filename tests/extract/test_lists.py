@@ -194,3 +194,22 @@ def test_a_web_address_says_nothing_of_the_part():
     )
     assert [each.field for each in draft.candidates] == ["frequency_mhz"]
     assert draft.texts == ["ABQ32-16M-09"]
+
+
+def test_stock_numbers_without_a_letter_name_the_rows_where_nothing_else_does():
+    heads = ("Stock number", "Frequency (MHz)", "CL (pF)", "ESR max (Ω)")
+    found = drafts(heads, ("4711-016", "16", "8", "60"), ("4711-025", "25", "10", "50"))
+    assert [draft.part_number for draft in found] == ["4711-016", "4711-025"]
+
+
+def test_a_column_that_counts_its_rows_names_no_parts():
+    heads = ("Stock number", "Frequency (MHz)", "CL (pF)", "ESR max (Ω)")
+    assert all(draft.part_number is None for draft in drafts(heads, ("1", "16", "8", "60"), ("2", "25", "10", "50")))
+
+
+def test_from_and_to_under_one_head_are_the_ends_of_its_range():
+    heads = ("Part number", "Frequenz (MHz)", "Temperaturbereich", None, "ESR max (Ω)")
+    below = (None, None, "von °C", "bis °C", None)
+    (draft,) = drafts(heads, below, ("ABQ32-16M", "16", "-40", "85", "60"))
+    ends = {each.bounds[:3] for each in draft.candidates if each.field == "operating_temperature_c"}
+    assert ends == {(-40.0, None, None), (None, None, 85.0)}

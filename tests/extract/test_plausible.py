@@ -108,3 +108,8 @@ def test_a_tolerance_that_is_one_negative_number_is_doubted():
     (sentence,) = doubts([reading("frequency_tolerance_ppm", typ=-20.0)], None, None).values()
     assert "look at the sign" in sentence
     assert doubts([reading("frequency_tolerance_ppm", -20.0, None, 20.0)], None, None) == {}
+
+
+def test_one_temperature_where_a_range_is_usual_needs_a_look():
+    (sentence,) = doubts([reading("operating_temperature_c", typ=-40.0)], None, None).values()
+    assert sentence == "one temperature, -40 °C, is read where a range is usual: the other end may stand elsewhere"
