@@ -16,6 +16,7 @@ from extract.fields import field_of
 from extract.fold import fold, key
 from extract.meaning import meaning
 from extract.model import FieldName, Pair, When, Where
+from extract.twolabels import told_apart
 from extract.units import unit_at
 from extract.vocabulary import vocabulary
 from extract.wording import Label
@@ -111,16 +112,20 @@ def _recommended_within(values: tuple[amount.Value, ...]) -> tuple[amount.Value,
 def _without_offer(text: str, unit: str | None) -> str:
     """A load without the bracket that says what else may be had ("12 pF (8 pF to 32 pF)")."""
     inside, outside = "".join(_BRACKET.findall(text)), _BRACKET.sub(" ", text)
-    if not inside or not re.search(r"\d", outside) or not re.search(r"\d.*\d", inside):
+    if not inside or not re.search(r"\d", outside) or not re.search(r"\d", inside):
         return text
     stated = amount.read_values(outside, "load_capacitance_pf", unit=unit)
     offered = amount.read_values(inside.strip("()（）"), "load_capacitance_pf", unit=unit or "pF")
     one = len(stated) == 1 and stated[0].typ is not None and stated[0].min is None and stated[0].max is None
-    return outside if one and any(None not in (each.min, each.max) for each in offered) else text
+    ranged = any(None not in (each.min, each.max) for each in offered)
+    said = any(word in fold(inside).casefold() for word in vocabulary().phrases.get("offered", ()))
+    return outside if one and (ranged or said) else text
 
 
 def entry_candidates(entry: Entry) -> list[Candidate]:
     """What one label with its values may mean; empty where the label is none of a field, or a trap."""
+    if two := told_apart(entry):
+        return [candidate for each in two for candidate in entry_candidates(each)]
     label = label_of(entry)
     if label is None:
         if trace.asked():

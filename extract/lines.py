@@ -38,6 +38,7 @@ def line_items(lines: Sequence[Line]) -> list[Item]:
             or _torn(lines, index, items)
             or _key_run(lines, index, items)
             or _stream(lines, index, items, fragments)
+            or _cards(lines, index, items)
             or _label_over_value(lines, index, items)
             or _one(lines[index], items)
         )
@@ -146,7 +147,7 @@ def speaks_of_all(text: str) -> bool:
     )
 
 
-ROW_NUMBER = re.compile(r"^\s*(?:\(?\d{1,2}[.)]|[-•*·])\s+")
+ROW_NUMBER = re.compile(r"^\s*(?:(?:\(?\d{1,2}[.)]|[-•*·])\s+|[一二三四五六七八九十]{1,3}[、.．]\s*)")
 
 
 def _is_footnote(text: str) -> bool:
@@ -219,6 +220,41 @@ def _as_choices(label: str, values: list[Value]) -> list[tuple[Value, ...]]:
 
 
 _CASE = {"frequency_mhz", "mode", "temperature_c", "load_capacitance_pf"}
+
+
+def _cards(lines: Sequence[Line], index: int, items: list[Item]) -> int:
+    """A line of labels side by side and the line of their values, each right below its own."""
+    if index + 1 == len(lines):
+        return 0
+    names, values = lines[index], lines[index + 1]
+    if len(names.segments) < 2 or not _one_below_another(names, values):
+        return 0
+    if index + 2 < len(lines) and _one_below_another(names, lines[index + 2]) and not _names_only(lines[index + 2]):
+        # More rows of values make a list.
+        return 0
+    if not _names_only(names) or any(is_label(each.text) and meaning(each.text).label for each in values.segments):
+        return 0
+    items.append(_text(names))
+    for name, value in zip(names.segments, values.segments, strict=True):
+        items.append(Entry(Piece(name.text, name.where, name.confidence), (Value(value),), source="pair"))
+    items.append(_text(values))
+    return 2
+
+
+def _names_only(line: Line) -> bool:
+    return all(is_label(each.text) and not _holds_its_value(each.text) for each in line.segments)
+
+
+def _one_below_another(above: Line, below: Line) -> bool:
+    """Whether two lines have as many segments, each in the same place across the page."""
+    if len(above.segments) != len(below.segments) or above.where.page != below.where.page:
+        return False
+    for one, other in zip(above.segments, below.segments, strict=True):
+        if one.where.box is None or other.where.box is None:
+            return False
+        if min(one.where.box[2], other.where.box[2]) <= max(one.where.box[0], other.where.box[0]):
+            return False
+    return True
 
 
 def _label_over_value(lines: Sequence[Line], index: int, items: list[Item]) -> int:

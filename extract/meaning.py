@@ -27,6 +27,8 @@ _WORDLIKE = r"[^\W\u3040-\u30ff\u3400-\u9fff\uac00-\ud7af]"
 _PART_TOKEN = re.compile(
     rf"(?<!{_WORDLIKE})(?<![.,/±+×-])[A-Z0-9](?:[A-Za-z0-9]|[-./,](?=[A-Za-z0-9]))+(?!{_WORDLIKE}|[°%])"
 )
+# A model without a digit ("TBX-A"): only where it stands alone.
+_LETTERS = re.compile(r"[A-Z]{2,6}-[A-Z]{1,2}")
 _AMOUNT = re.compile(
     r"[-+]?[\d.,]+(?:[-~/][\d.,]+)*(?:[A-Za-z]{0,2}?(?:Hz|HZ|hz|F|f|ppm|PPM|pF|C|V|A|W|H|mm|MM|s|S|g|h|R|k|K|M|pcs|th|rd|st|nd|OT|ot|Vdc|VDC|dc|ohm|Ohm|ohms|Ohms))*"
 )
@@ -123,6 +125,8 @@ def _first(look_up: Callable[[str], str | None], names: Sequence[str]) -> str | 
 def is_part_token(text: str) -> bool:
     """Whether the whole text is one or several part or series numbers ("SQ-320, SQ-321")."""
     words = [word for word in re.split(r"[\s,;/]+", fold(text)) if word]
+    if len(words) == 1 and _LETTERS.fullmatch(words[0]):
+        return words[0].split("-")[0].casefold() not in _refused() and not meaning(words[0]).known
     return 0 < len(words) <= 4 and bool(part_tokens(words[0])) and all(part_tokens(word) for word in words)
 
 

@@ -161,11 +161,12 @@ def _stands_by_itself(own: Draft, rows: Sequence[Draft | LongList]) -> bool:
     values = {each.typ for each in stated}
     if own.part_number is None or len(values) != 1 or None in values:
         return False
-    labelled = {each.field for each in own.candidates if each.source in ("table", "pair")} & CRYSTAL_FIELDS
+    labelled = {each.field for each in own.candidates if each.source in ("table", "pair")}
     each_row = [row for each in rows for row in (each.drafts() if isinstance(each, LongList) else (each,))]
     others = [row for row in each_row if row.part_number != own.part_number]
     told = [row for row in others if any(each.field == "frequency_mhz" for each in row.candidates)]
-    return len(labelled) >= LEAST_OF_ITS_OWN and bool(others) and 2 * len(told) > len(others)
+    told_enough = len(labelled) >= LEAST_OF_ITS_OWN and bool(labelled & CRYSTAL_FIELDS)
+    return told_enough and bool(others) and 2 * len(told) > len(others)
 
 
 def _draft(section: Section, blocks: Blocks) -> Draft:

@@ -13,7 +13,7 @@ from extract.drafts import Draft
 from extract.entries import Entry
 from extract.fold import fold
 from extract.identity import is_package, package_in
-from extract.meaning import part_tokens
+from extract.meaning import is_part_token, part_tokens
 from extract.model import When
 
 _BETWEEN = re.compile(r"[,;/\n]|\band\b|\bund\b|、|，")
@@ -47,7 +47,7 @@ def names_in(subject: str) -> list[str]:
     found: list[str] = []
     for piece in _BETWEEN.split(subject):
         if not is_package(piece):
-            found += part_tokens(piece)[:1]
+            found += part_tokens(piece)[:1] or ([piece.strip()] if is_part_token(piece) else [])
     return found
 
 

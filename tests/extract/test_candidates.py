@@ -143,3 +143,9 @@ def test_a_value_in_a_further_column_that_no_head_explains_is_a_doubt():
 def test_ageing_of_later_years_is_not_that_of_the_first(text):
     (value,) = read(text, "ageing_ppm")
     assert (value.min, value.max, value.when.years, value.doubts) == (-2.0, 2.0, 1.0, ())
+
+
+@pytest.mark.parametrize("text", ["18 pF std. (10 pF to series available)", "12 pF (8 pF disponible)"])
+def test_a_load_that_a_bracket_offers_besides_is_not_the_part_s(text):
+    (value,) = read(text, "load_capacitance_pf")
+    assert (value.typ, value.options) == (float(text[:2]), ())

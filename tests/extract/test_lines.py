@@ -1,8 +1,10 @@
 from building import line
 
 from extract.candidates import entry_candidates
+from extract.documents.model import Line, Segment
 from extract.entries import Entry, Key
-from extract.lines import line_items
+from extract.lines import line_items, without_number
+from extract.model import Where
 
 
 def held(*lines):
@@ -157,3 +159,25 @@ def test_a_numbered_paragraph_with_its_own_value_is_no_value_of_the_line_above()
     found = {entry.label.text: [value.piece.text for value in entry.values] for entry in entries}
     assert found["製造者"] == ["羽根水晶工業株式会社"]
     assert [values for label, values in found.items() if "公称周波数" in label] == [["26 MHz"]]
+
+
+def on_page(top, *words):
+    """A line of segments, each 100 points wide and 120 from the next."""
+    where = [Where(page=1, box=(120 * at, top, 120 * at + 100, top + 10)) for at in range(len(words))]
+    return Line(tuple(map(Segment, words, where)), where[0])
+
+
+def test_names_over_their_values_are_cards():
+    assert held(on_page(0, "Load capacitance", "ESR"), on_page(12, "8 pF", "60 Ω max")) == [
+        ("load_capacitance_pf", (None, 8.0, None, ())),
+        ("esr_ohm", (None, None, 60.0, ())),
+    ]
+
+
+def test_names_over_several_rows_of_values_are_no_cards():
+    found = held(on_page(0, "Load capacitance", "ESR"), on_page(12, "8 pF", "60 Ω"), on_page(24, "9 pF", "50 Ω"))
+    assert ("load_capacitance_pf", (None, 8.0, None, ())) not in found
+
+
+def test_a_chinese_number_of_a_row_is_no_part_of_it():
+    assert without_number("二、ABQ32-16M") == "ABQ32-16M"

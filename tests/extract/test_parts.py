@@ -282,3 +282,21 @@ def test_an_esr_at_two_temperatures_is_two_readings(rows):
 def test_a_lone_temperature_beside_an_esr_limits_nothing():
     (part,) = found(line("ABQ49-16"), line("Frequency: 16 MHz"), line("ESR: 50 Ω max at +25 °C")).parts
     assert [each.when.temperature_c for each in part.readings if each.field == "esr_ohm"] == [None]
+
+
+def test_goods_listed_below_a_part_take_nothing_of_it():
+    of_the_page = table(
+        ("Frequency", "25 MHz"), ("Frequency tolerance", "±20 ppm"), ("Load capacitance", "8 pF"), ("ESR", "50 Ω max")
+    )
+    others = table(
+        ("Part", "Description", "Price"),
+        ("ABQ32-24.0-12", "Crystal 24MHz 12pF", "$0.58"),
+        ("ABQ32-26.0-12", "Crystal 26MHz 12pF", "$0.61"),
+    )
+    parts = found(
+        line("ABQ32-25.0-8", heading=True), of_the_page, line("Customers also viewed", number=9), others
+    ).parts
+    by_number = {part.part_number: part for part in parts}
+    assert bounds(by_number["ABQ32-25.0-8"], "frequency_mhz") == [(None, 25.0, None)]
+    assert bounds(by_number["ABQ32-24.0-12"], "frequency_mhz") == [(None, 24.0, None)]
+    assert bounds(by_number["ABQ32-24.0-12"], "frequency_tolerance_ppm") == []
