@@ -5,10 +5,14 @@ from __future__ import annotations
 from collections.abc import Mapping, Sequence
 from typing import Any
 
+from compare.answers import times
 from compare.bearing import Bearing, Setting, advised, why_no_pair
 from compare.bench import Bench, uses
 from compare.figures import CLOCK_BELOW_MHZ, SECONDS_A_DAY_PER_PPM, number, scale, signed, spread, with_unit
 from compare.typed import Field, understand
+
+MORE_ROOM = 1.02
+ENOUGH = "No pair of E24 load capacitors gives this part more room than those fitted."
 
 Table = tuple[list[str], list[list[str]]]
 
@@ -126,6 +130,8 @@ def advice_rows(review: Mapping[str, Any]) -> list[tuple[str, dict[str, str], st
             error = one["load_error_ppm"]
             off = "not known" if error is None else with_unit(number(abs(error)), "ppm")
             said = f"{first} pF from A and {second} pF from B to ground: load error at most {off}, margin {margin}"
+            if one.get("times_over") is not None:
+                said += f", tightest {times(one['times_over'])} over"
             sets = {"circuit.input_capacitor_pf": f"{first} pF", "circuit.output_capacitor_pf": f"{second} pF"}
             rows.append((said, sets, f"{first} pF from A and {second} pF from B to ground"))
         else:
@@ -133,6 +139,20 @@ def advice_rows(review: Mapping[str, Any]) -> list[tuple[str, dict[str, str], st
             said = f"A series resistor of {ohm} Ω: drive at most {drive} µW, margin {margin}"
             rows.append((said, {"circuit.series_resistor_ohm": f"{ohm} Ω"}, f"a series resistor of {ohm} Ω"))
     return rows
+
+
+def helpful(review: Mapping[str, Any]) -> Mapping[str, Any]:
+    """The review with only that advice which gives more room than what is fitted, the most room first.
+
+    Pairs are in the order of their load error; one with less of it may overdrive the crystal all the same.
+    """
+    fitted = min((slack for slack in review["slack"].values() if slack is not None), default=0.0)
+    wanted = MORE_ROOM * fitted if review["verdict"] == "meets" else 0.0
+    every = review.get("advice", ())
+    more = [one for one in every if one.get("times_over") is None or one["times_over"] > wanted]
+    more.sort(key=lambda one: -(one.get("times_over") or 0.0))
+    messages = review.get("advice_messages", ())
+    return {"advice": more, "advice_messages": messages if more or not every else [*messages, ENOUGH]}
 
 
 def use_sentence(bench: Bench | None, ident: str) -> str:

@@ -262,6 +262,7 @@ def why(picked: Candidate, sifted: Sifted, contest: Ranked, bench: Bench) -> Non
 
 def advice(review: answers.Row) -> None:
     """What would help most, to be tried at once; all views follow a trial."""
+    review = bearing_text.helpful(review)
     for said, values, name in bearing_text.advice_rows(review)[:1]:
         with st.container(horizontal=True, vertical_alignment="center", gap="small"):
             st.markdown(f"{pieces.plain(said)}.", width="content")

@@ -57,6 +57,7 @@ def advice_for(
             "values_pf": [pair.input_pf, pair.output_pf],
             "load_error_ppm": _or_none(pair.load_error_ppm),
             "margin": _or_none(pair.margin),
+            "times_over": _or_none(pair.slack),
         }
         for pair in pairs
     ]

@@ -8,6 +8,7 @@ from compare.bearing_text import (
     advice_rows,
     bearing_table,
     cannot_be_met,
+    helpful,
     settings_of,
     settings_sentence,
     settings_table,
@@ -93,6 +94,23 @@ def test_advice_names_the_fields_that_a_trial_would_set():
     for value in sets.values():
         assert value in said
         assert value in name
+
+
+def pair(first, second, error, over):
+    return {"values_pf": [first, second], "load_error_ppm": error, "margin": 8.5, "times_over": over}
+
+
+def test_a_pair_that_leaves_less_room_than_the_fitted_one_is_not_offered_first():
+    overdriven, better = pair(15.0, 10.0, -8.1, 1.115), pair(10.0, 15.0, -8.2, 1.7)
+    review = {"verdict": "meets", "slack": {"total_ppm": 1.56, "mode": None}, "advice": [overdriven, better]}
+    (row,) = advice_rows(helpful(review))
+    assert row[0].startswith("10 pF from A and 15 pF from B to ground: load error at most 8.2 ppm")
+    assert row[0].endswith("tightest 1.70 times over")
+    none = helpful({**review, "advice": [overdriven]})
+    assert none["advice"] == []
+    assert none["advice_messages"] == ["No pair of E24 load capacitors gives this part more room than those fitted."]
+    short = helpful({**review, "verdict": "falls short", "slack": {"total_ppm": 0.9}, "advice": [overdriven]})
+    assert short["advice"] == [overdriven]
 
 
 def test_a_series_resistor_can_be_tried_too():
