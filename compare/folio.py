@@ -250,7 +250,7 @@ def _sheet(row: Mapping[str, Any], held: _Members) -> OpenSheet:
     member, name = f"sheets/{row['key']}.json", held.name
     file, sha256 = str(row.get("file")), str(row.get("sha256"))
     if member not in held.members:
-        raise FolioError(f"{name}: damaged, it lacks {member}, the readings of {row.get('file', 'a sheet')}")
+        return _unwritten(row, held)
     written, data = held.members[member], held.members.get(f"files/{sha256}")
     sheet = None
     if len(written) >= LONG_BYTES:
@@ -261,6 +261,19 @@ def _sheet(row: Mapping[str, Any], held: _Members) -> OpenSheet:
     if data is not None and hashlib.sha256(data).hexdigest() != sheet.sha256:
         raise FolioError(f"{name}: damaged, the sheet {sheet.file} in it is not the one that was read")
     return OpenSheet(sheet, data)
+
+
+def _unwritten(row: Mapping[str, Any], held: _Members) -> OpenSheet:
+    """A sheet whose readings were still to be written when the machine stopped, out of its own bytes."""
+    file, sha256 = str(row.get("file")), str(row.get("sha256"))
+    own = held.members.get(f"files/{sha256}")
+    data = own if own is not None else held.find(file, sha256)
+    if data is not None and held.find is not _nowhere:
+        found = OpenSheet(read_bytes(data, file), own)
+        if found.key == row["key"]:
+            return found
+    lacks = f"sheets/{row['key']}.json, the readings of {row.get('file', 'a sheet')}"
+    raise FolioError(f"{held.name}: damaged, it lacks {lacks}")
 
 
 def _read_again(written: bytes, data: bytes | None, file: str) -> SpecSheet | None:

@@ -6,6 +6,7 @@ is not written again. It lies in the person's own folder for programs' state, re
 
 from __future__ import annotations
 
+import atexit
 import hashlib
 import json
 import os
@@ -14,6 +15,7 @@ import secrets
 import shutil
 import sys
 import tempfile
+import threading
 from collections.abc import Mapping, Sequence
 from dataclasses import dataclass
 from datetime import datetime
@@ -26,6 +28,11 @@ from compare.work import History, OpenSheet, Work
 
 IDENT = re.compile(r"[0-9a-f]{16}")
 MOST_LISTED = 6
+MOST_AT_ONCE = 2000
+"""Parts of a sheet whose readings are written while somebody waits; those of 20 000 take a second."""
+_put_off: dict[Path, OpenSheet] = {}
+_failed: set[Path] = set()
+_writing = threading.Lock()
 
 
 def state_folder(environment: Mapping[str, str] = os.environ, platform: str = sys.platform) -> Path:
@@ -80,7 +87,7 @@ class ChangedElsewhere(RuntimeError):  # noqa: N818 - not a fault: another page 
 
 
 def keep(ident: str, work: Work, history: History, after: Stamp | None = None) -> Stamp:
-    """Write what changed; returns when.
+    """Write what changed; returns when. The readings of a long list are put off until `write_rest`.
 
     `after` is what the writer was given when it last wrote or recalled the work. ChangedElsewhere where another page
     has written since, OSError where the folder cannot be written.
@@ -106,9 +113,36 @@ def keep_sheet(folder: Path, one: OpenSheet) -> None:
     """Write a sheet's readings and bytes, unless they are there."""
     readings, file = folder / sheet_member(one), folder / "files" / (one.sheet.sha256 or "none")
     if not readings.exists():
-        _write(readings, sheet_bytes(one.sheet))
+        # What could not be written while nobody waited is tried once more, to be told.
+        if len(one.sheet.parts) > MOST_AT_ONCE and readings not in _failed:
+            _put_off[readings] = one
+        else:
+            _write(readings, sheet_bytes(one.sheet))
+            _failed.discard(readings)
     if one.data is not None and not file.exists():
         _write(file, one.data)
+
+
+def write_soon() -> None:
+    """Write what was put off in a thread of its own; the end of the program waits for it."""
+    if _put_off:
+        threading.Thread(target=write_rest, name="keeping").start()
+
+
+@atexit.register
+def write_rest(folder: Path | None = None) -> None:
+    """Write what was put off, of one work or of all; returns when it is there.
+
+    What cannot be written is tried again by the next `keep`, which tells. Until then the sheet's own file stands in.
+    """
+    with _writing:
+        for readings, one in list(_put_off.items()):
+            if folder in (None, readings.parent.parent):
+                try:
+                    _write(readings, sheet_bytes(one.sheet))
+                except OSError:
+                    _failed.add(readings)
+                _put_off.pop(readings, None)
 
 
 def _every_sheet(work: Work, history: History) -> list[OpenSheet]:
@@ -137,6 +171,7 @@ def recall(ident: str) -> Reopened | None:
         return None
     if not (folder / "folio.json").is_file():
         return None
+    write_rest(folder)
     found = [path for path in folder.rglob("*") if path.is_file() and not path.name.startswith(".")]
     try:
         members = {path.relative_to(folder).as_posix(): path.read_bytes() for path in found}
@@ -192,6 +227,13 @@ def stamp_of(ident: str) -> Stamp | None:
 def forget(ident: str) -> None:
     """Remove everything of one work from this machine; OSError where something cannot be removed."""
     folder = folder_of(ident)
+    for readings in [path for path in _put_off if path.parent.parent == folder]:
+        _put_off.pop(readings, None)
+    with _writing:
+        _remove(folder)
+
+
+def _remove(folder: Path) -> None:
     if folder.exists():
         shutil.rmtree(folder)
     parent = state_folder()

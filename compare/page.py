@@ -4,7 +4,7 @@ from __future__ import annotations
 
 import streamlit as st
 
-from compare import drawing, pieces, shown
+from compare import drawing, keeping, pieces, shown
 from compare import page_session as session
 from compare.page_choose import choose_view
 from compare.page_circuit import circuit_view
@@ -55,6 +55,7 @@ def main() -> None:
         keys(list(views))
     with body:
         current.run()
+    keeping.write_soon()
 
 
 main()

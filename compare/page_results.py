@@ -48,12 +48,10 @@ def field_of(contest: Ranked, slot: Mapping[str, Any]) -> Field:
     """The rows of a ranking with what `slot` knows of their supply.
 
     Those of a long list are passed over by the search for garbage that Streamlit makes after each run of the script: it
-    would take a quarter of a second. What was passed over before is searched this once.
+    would take a quarter of a second. They are in no ring, so that they go when nobody holds them any more.
     """
     field = Field(candidates(contest.briefs, slot))
     if len(field.every) > LONG:
-        gc.unfreeze()
-        gc.collect()
         gc.freeze()
     return field
 

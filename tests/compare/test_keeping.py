@@ -142,3 +142,48 @@ def test_a_folder_that_cannot_be_written_is_an_error_and_no_half_written_file(mo
     monkeypatch.setattr(keeping, "state_folder", lambda: Path(blocked))
     with pytest.raises(OSError, match="file"):
         keeping.keep(keeping.new_ident(), WORK, History())
+
+
+LIST = ("Part number,Frequency (MHz)\n" + "".join(f"OR{at:05d},26\n" for at in range(2_001))).encode()
+LONG = OpenSheet(read_sheet(LIST, "list.csv"), LIST)
+
+
+def test_the_readings_of_a_long_list_are_put_off_and_there_when_the_work_is_recalled(state_folder):
+    ident, work = keeping.new_ident(), replace(WORK, sheets=(OPEN, LONG))
+    keeping.keep(ident, work, History())
+    assert [path.stem for path in (state_folder / ident / "sheets").iterdir()] == [OPEN.key]
+    assert keeping.recall(ident).work == work
+    assert (state_folder / ident / "sheets" / f"{LONG.key}.json").is_file()
+
+
+def test_a_list_whose_readings_were_never_written_comes_back_out_of_its_file(state_folder):
+    ident, work = keeping.new_ident(), replace(WORK, sheets=(LONG,))
+    keeping.keep(ident, work, History())
+    keeping.write_rest()
+    (state_folder / ident / "sheets" / f"{LONG.key}.json").unlink()
+    back = keeping.recall(ident).work
+    assert (back, back.sheets[0].data) == (work, LIST)
+
+
+def test_forgotten_work_is_not_written_afterwards(state_folder):
+    ident = keeping.new_ident()
+    keeping.keep(ident, replace(WORK, sheets=(LONG,)), History())
+    keeping.forget(ident)
+    keeping.write_rest()
+    assert not (state_folder / ident).exists()
+
+
+def test_what_could_not_be_written_later_is_told_by_the_next_save(state_folder, monkeypatch):
+    ident, work = keeping.new_ident(), replace(WORK, sheets=(LONG,))
+    keeping.keep(ident, work, History())
+
+    def full(path, data):
+        raise OSError(28, "No space left on device")
+
+    with monkeypatch.context() as patched:
+        patched.setattr(keeping, "_write", full)
+        keeping.write_rest()
+        with pytest.raises(OSError, match="No space left"):
+            keeping.keep(ident, work, History())
+    keeping.keep(ident, work, History())
+    assert (state_folder / ident / "sheets" / f"{LONG.key}.json").is_file()
