@@ -105,7 +105,8 @@ def limits(filters: Filters, statuses: list[str]) -> None:
 def limit(name: str, column: str, words: str, value: float | None) -> None:
     key = f"field_choose_{name}"
     st.session_state.setdefault(key, "" if value is None else supply.value_text(column, shown(column, value)))
-    st.text_input(words.capitalize(), key=key, on_change=put_limit, args=(name, column, key))
+    unit = supply.columns()[column].unit
+    st.text_input(words.capitalize(), key=key, placeholder=unit or None, on_change=put_limit, args=(name, column, key))
     if fault := st.session_state.get(f"fault_{name}"):
         st.html(pieces.fault_html(fault))
 

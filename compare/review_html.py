@@ -87,7 +87,7 @@ def table_html(heads: Sequence[str], rows: Sequence[Sequence[str]], numbers: Seq
     head = "".join(f"<th{_class('n' if at in numbers else '')}>{escape(name)}</th>" for at, name in enumerate(heads))
     body = "".join(
         "<tr>"
-        + "".join(f"<td{_class('n' if at in numbers else '')}>{escape(text)}</td>" for at, text in enumerate(row))
+        + "".join(f"<td{_class('n' if at in numbers else '')}>{together(text)}</td>" for at, text in enumerate(row))
         + "</tr>"
         for row in rows
     )

@@ -12,10 +12,23 @@ from dataclasses import dataclass
 from typing import Any
 
 from compare import supply
-from compare.answers import FIGURES, SHORT_NAMES, Row, missing_name, row_name, told, verdict
+from compare.answers import ENDS, FIGURES, SHORT_NAMES, Row, missing_name, row_name, told, verdict
 from compare.approval import MARKS
 from compare.export import Table
-from compare.figures import UP_TO, count_word, counted, exact, number, scale, signed, spread, with_minus, with_unit
+from compare.figures import (
+    CLOCK_BELOW_MHZ,
+    SECONDS_A_DAY_PER_PPM,
+    UP_TO,
+    count_word,
+    counted,
+    exact,
+    number,
+    scale,
+    signed,
+    spread,
+    with_minus,
+    with_unit,
+)
 from compare.levers import Lever
 from compare.relations import rules
 from compare.report import NAMES as CALLED
@@ -149,7 +162,7 @@ def shift_text(shift: Row) -> str:
         return f"By how much the frequency moves on the unchanged board {told(shift['how'])}."
     if shift["low"] == shift["high"] == 0:
         return "On the unchanged board the frequency does not move."
-    if shift["high"] < A_FRACTION:
+    if shift["low"] < A_FRACTION:
         return f"On the unchanged board: {told(shift['how'])}."
     ends = f"{signed(shift['low'])}{UP_TO}{signed(shift['high'])}"
     estimated = ", ∴ from estimates" if shift["basis"] == "estimated" else ""
@@ -397,7 +410,20 @@ def both_in_circuit(incumbent: Row, candidate: Row) -> list[BothHave]:
             texts = [_span(one, figure.digits, sign=figure.sign) for one in pair]
             bare = [f"{one['mid']:.10g}" if one["mid"] is not None else "" for one in pair]
             rows.append(BothHave(figure.name, figure.unit, texts[0], texts[1], bare[0], bare[1]))
+            if key == "total_ppm" and _is_clock(candidate):
+                daily = [_span(_a_day(one), figure.digits, sign=True) for one in pair]
+                rows.append(BothHave("The same for a clock", "s a day", daily[0], daily[1], "", ""))
     return rows
+
+
+def _is_clock(row: Row) -> bool:
+    at = row.get("series_resonance_mhz", {}).get("mid")
+    return at is not None and at < CLOCK_BELOW_MHZ
+
+
+def _a_day(ppm: Row) -> dict[str, float | None]:
+    """Seconds a day that a clock is off by, from its error in ppm."""
+    return {end: None if ppm[end] is None else ppm[end] * SECONDS_A_DAY_PER_PPM for end in ENDS}
 
 
 def _span(figure: Row, digits: int, *, sign: bool) -> str:

@@ -150,6 +150,16 @@ def test_both_parts_stand_in_the_same_circuit():
     assert "…+" in rows["Frequency error, all causes"].incumbent
 
 
+def test_a_clock_has_seconds_a_day_beside_its_ppm():
+    def sums(low, high):
+        return {"total_ppm": {"low": low, "mid": 0.0, "high": high}, "series_resonance_mhz": {"mid": 0.0327}}
+
+    ppm, daily = swap_shown.both_in_circuit(sums(-100.0, 50.0), sums(-200.0, 10.0))
+    assert (ppm.unit, ppm.incumbent) == ("ppm", "−100…+50")
+    # 1 ppm of 86 400 s.
+    assert (daily.unit, daily.incumbent, daily.candidate) == ("s a day", "−8.64…+4.32", "−17.3…+0.864")
+
+
 def test_no_line_is_left_out_of_the_export():
     result, one = swapped(part("NEW-1", esr_ohm=(None, None, 50.0)))
     found = swap_shown.swap_lines(one, {})
