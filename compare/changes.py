@@ -68,18 +68,23 @@ def changes(old_sheets: Sequence[SpecSheet], new_sheets: Sequence[SpecSheet], be
     """Every reading that differs between two revisions, part by part, seen from the old one; JSON-ready."""
     lines: list[Change] = []
     notes: list[str] = []
-    if bench is None:
+    pairs = paired_parts(old_sheets, new_sheets)
+    if bench is not None and not _on_this_bench(pairs, bench):
+        asked = f"{bench.requirement.frequency_mhz:.10g} MHz"
+        notes.append(f"no part of either revision offers the bench's {asked}: every line counts as one that matters")
+        bench = None
+    elif bench is None:
         notes.append("no bench given: every line counts as one that matters")
     else:
         notes += [str(note["message"]) for note in bench_notes(bench)]
-    for old, new in paired_parts(old_sheets, new_sheets):
+    for old, new in pairs:
         found = [*_between(old, new)]
         if bench is not None:
             found, said = _marked(found, old, new, bench)
             notes += said
         lines += found
     if not lines:
-        notes.append("no reading differs")
+        notes = ["no reading differs"]
     return {
         "schema": SCHEMA,
         "lines": [line.as_json() for line in lines],
@@ -88,6 +93,13 @@ def changes(old_sheets: Sequence[SpecSheet], new_sheets: Sequence[SpecSheet], be
 
 
 Placed = tuple[SpecSheet, Part]
+
+
+def _on_this_bench(pairs: Sequence[tuple[Placed | None, Placed | None]], bench: Bench) -> bool:
+    """False where the bench is of another frequency than all that is compared: it can tell nothing of them."""
+    asked = bench.requirement.frequency_mhz
+    parts = [placed[1] for pair in pairs for placed in pair if placed is not None]
+    return any(match_frequency(part, asked).printed_mhz is not None for part in parts)
 
 
 def paired_parts(old: Sequence[SpecSheet], new: Sequence[SpecSheet]) -> list[tuple[Placed | None, Placed | None]]:

@@ -12,9 +12,10 @@ from compare.ranking import order
 from compare.reasons import times
 from compare.reckoning import Reckoning, bare_result, missing_of, part_result
 from compare.refit import NO_REFIT, Refit, changes_for
+from compare.relations import reading_words
 from compare.report import NAMES
 from compare.swap import Candidate, Swap
-from compare.swap_lines import Line, lines_of, mechanical_lines
+from compare.swap_lines import Line, lines_of, mechanical_lines, moved_words
 from compare.swap_verdict import (
     DOES_NOT_FIT,
     DROP_IN,
@@ -30,7 +31,7 @@ from compare.swap_verdict import (
     shift_message,
     verdict_of,
 )
-from compare.verdict import MEETS, Judged
+from compare.verdict import FALLS_SHORT, MEETS, Judged
 
 MOST_TOLD, MOST_TRIED = 60, 6
 """In a long list: how many carry their lines and sentences, and for how many other parts on the board are tried."""
@@ -142,15 +143,17 @@ def _with_shift(line: Line, swap: Swap, at: int) -> Line:
     low, _, high = swap.shift(at)
     if math.isnan(low):
         return replace(line, message=f"{line.message}; by how many ppm cannot be told")
-    return replace(line, message=f"{line.message}; the frequency moves by {low:+.3g} to {high:+.3g} ppm")
+    return replace(line, message=f"{line.message}; the frequency {moved_words(low, high)}")
 
 
 def _not_offered(swap: Swap, candidate: Candidate) -> Judgement:
-    states_none = not any(r.field == "frequency_mhz" for r in candidate.part.readings)
+    theirs = [r for r in candidate.part.readings if r.field == "frequency_mhz"]
+    states_none = not theirs
     code, relation = (NOT_TOLD, "unknown") if states_none else (DOES_NOT_FIT, "different")
-    message = f"frequency: {candidate.said}"
+    message = f"frequency: the candidate's sheet {candidate.said}"
     asked = f"{swap.incumbent.frequency_mhz:.10g} MHz"
-    line = Line("frequency_mhz", {"text": asked}, None, relation, message, matters=True)  # type: ignore[arg-type]
+    offered = {"text": "; ".join(dict.fromkeys(map(reading_words, theirs[:3])))} if theirs else None
+    line = Line("frequency_mhz", {"text": asked}, offered, relation, message, matters=True)  # type: ignore[arg-type]
     missing = ["frequency_mhz"] if states_none else []
     return Judgement(candidate, code, message, [line], [Block("frequency_mhz", code, message)], [], [], missing)
 
@@ -202,21 +205,29 @@ def _decides(
         return decisive([block for block in blocks if block.code == code]).message
     if swap.reckoning is None:
         return f"no worse than the incumbent in every line that matters; {shift_message(swap, at)}"
-    return _drop_in_words(result["slack"], excuses)
+    return _drop_in_words(result["slack"], excuses, swap.reckoning)
 
 
-def _drop_in_words(slack: Mapping[str, float | None], excuses: Sequence[str]) -> str:
+def _drop_in_words(slack: Mapping[str, float | None], excuses: Sequence[str], reckoning: Reckoning) -> str:
     """What is met and by how much; what is not, because the incumbent does not meet it either, is said first."""
     known_ones = {about: value for about, value in slack.items() if value is not None and about not in excuses}
     parts = []
     if excuses:
-        names = ", ".join(map(called, excuses))
-        parts.append(f"no worse than the incumbent, which falls short itself or cannot be told in {names}")
+        parts.append(f"no worse than the incumbent, which {_own_state(excuses, reckoning)}")
     parts.append("all else is met on the unchanged board" if excuses else "meets on the unchanged board")
     if known_ones:
         tightest = min(known_ones, key=lambda about: known_ones[about])
         parts.append(f"the tightest is {called(tightest)}, {known_ones[tightest]:.3g} times over")
     return "; ".join(parts)
+
+
+def _own_state(excuses: Sequence[str], reckoning: Reckoning) -> str:
+    """`itself falls short in margin and cannot be told in mode`."""
+    short = [name for name in excuses if reckoning.judged[name].verdict[0] == FALLS_SHORT]
+    unknown = [name for name in excuses if name not in short]
+    said = [f"falls short in {', '.join(map(called, short))}"] if short else []
+    said += [f"cannot be told in {', '.join(map(called, unknown))}"] if unknown else []
+    return f"itself {' and '.join(said)}"
 
 
 def changed_words(changes: Sequence[Mapping[str, Any]]) -> str:

@@ -31,6 +31,10 @@ class Refit:
 
 NO_REFIT = Refit()
 SWING = "the swing is taken as unchanged: measure the drive again with them fitted"
+SWING_AHEAD = (
+    "the swing at the amplifier's output, ahead of the resistor, is taken as unchanged: measure the drive again "
+    "with it fitted"
+)
 
 
 def changes_for(reckoning: Reckoning, at: int, open_ones: Sequence[str], excuses: Sequence[str]) -> Refit:
@@ -51,7 +55,8 @@ def changes_for(reckoning: Reckoning, at: int, open_ones: Sequence[str], excuses
     for change, tried, settled in first:
         found = reckon_offers([reckoning.columns.offers[at]], tried)
         if _meets(found.judged, judged, at, [*excuses, *settled]):
-            return Refit([change], SWING if "drive_level_uw" in open_ones else "")
+            swing = SWING_AHEAD if change["what"] == "series resistor" else SWING
+            return Refit([change], swing if "drive_level_uw" in open_ones else "")
     return Refit(said=sentence)
 
 

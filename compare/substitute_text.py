@@ -2,13 +2,15 @@
 
 from __future__ import annotations
 
+import itertools
 from collections.abc import Iterable, Iterator, Mapping, Sequence
 from typing import Any
 
 from compare.cautions import CAUTIONS
 from compare.explain import FIELD_WORDS, figure
 from compare.relations import rules
-from compare.report import fitted, when_text, wrapped
+from compare.report import display_width, fitted, when_text, wrapped
+from compare.swap_lines import moved_words, ppm_words
 from extract.model import When
 
 MARKS = {"drop-in": "▲", "fits with changes": "△", "cannot tell": "◇", "does not fit": "▼"}
@@ -61,8 +63,26 @@ def _incumbent_state(incumbent: Mapping[str, Any]) -> list[str]:
     return [f"  {CIRCUIT_MARKS[incumbent['verdict']]} {incumbent['verdict']} on this board"]
 
 
-def _row(cells: Iterable[str], widths: Sequence[int]) -> str:
-    return " ".join(fitted(cell, width) for cell, width in zip(cells, widths, strict=True)).rstrip()
+def _row(cells: Iterable[str], widths: Sequence[int], indent: str = "") -> str:
+    """One row; a cell longer than its column goes on below, so that nothing is cut off."""
+    pieces = [_broken(cell, width) for cell, width in zip(cells, widths, strict=True)]
+    lines = itertools.zip_longest(*pieces, fillvalue="")
+    return "\n".join(indent + " ".join(map(fitted, line, widths)).rstrip() for line in lines)
+
+
+def _broken(text: str, width: int) -> list[str]:
+    lines, line = [], ""
+    for word in text.split():
+        longer = f"{line} {word}".strip()
+        if line and display_width(longer) > width:
+            lines.append(line)
+            longer = word
+        while display_width(longer) > width:
+            cut = next(n for n in range(len(longer), 0, -1) if display_width(longer[:n]) <= width)
+            lines.append(longer[:cut])
+            longer = longer[cut:]
+        line = longer
+    return [*lines, line]
 
 
 def _ranking(ranked: Sequence[Mapping[str, Any]]) -> Iterator[str]:
@@ -121,19 +141,19 @@ def _shift(shift: Mapping[str, Any]) -> str:
         return f"frequency on the unchanged board: {shift['how']}"
     if shift["low"] == shift["high"] == 0:
         return "frequency on the unchanged board: does not move"
-    if shift["high"] < A_FRACTION:
+    if shift["low"] < A_FRACTION:
         return f"frequency on the unchanged board: {shift['how']}"
     estimated = ", from estimates" if shift["basis"] == "estimated" else ""
-    ends = " to ".join(f"{shift[end]:+.3g}" for end in ("low", "high"))
-    return f"frequency on the unchanged board: moves by {ends} ppm, nominally {shift['mid']:+.3g}{estimated}"
+    moved = moved_words(shift["low"], shift["high"])
+    return f"frequency on the unchanged board: {moved}, nominally {ppm_words(shift['mid'])}{estimated}"
 
 
 def _table(one: Mapping[str, Any]) -> Iterator[str]:
     yield ""
-    yield "  " + _row(("", "incumbent", "candidate", "is", "matters"), WIDTHS)
+    yield _row(("", "incumbent", "candidate", "is", "matters"), WIDTHS, "  ")
     for line in one["lines"]:
         cells = (_name(line["field"]), _value(line["incumbent"]), _value(line["candidate"]), line["relation"])
-        yield "  " + _row((*cells, "yes" if line["matters"] else "-"), WIDTHS)
+        yield _row((*cells, "yes" if line["matters"] else "-"), WIDTHS, "  ")
 
 
 def _name(field: str) -> str:
@@ -154,9 +174,9 @@ def _numbers(one: Mapping[str, Any], incumbent: Mapping[str, Any]) -> Iterator[s
     if "margin" not in one or "margin" not in incumbent:
         return
     yield ""
-    yield "  " + _row(("in this circuit", "incumbent", "candidate"), WIDTHS[:3])
+    yield _row(("in this circuit", "incumbent", "candidate"), WIDTHS[:3], "  ")
     for key, name in NUMBERS.items():
-        yield "  " + _row((name, _ends(incumbent[key]), _ends(one[key])), WIDTHS[:3])
+        yield _row((name, _ends(incumbent[key]), _ends(one[key])), WIDTHS[:3], "  ")
 
 
 def _ends(number: Mapping[str, Any]) -> str:

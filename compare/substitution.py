@@ -12,12 +12,15 @@ from compare.letters import english, in_english, in_language, known, language_of
 from compare.offer import fields_to_check
 from compare.reckoning import part_result
 from compare.swap import Candidate, SubstituteError, Swap, make_swap
+from compare.swap_lines import frequency_words, part_word, ppm_words, valued
 from compare.swap_verdict import VERDICTS
 from extract.model import SpecSheet
 
 __all__ = ["SCHEMA", "SubstituteError", "substitute"]
 
 SCHEMA = "quartzfolio/substitute/1"
+A_FRACTION_PPM = -1e5
+"""Further down the part runs on another mode, and ppm say nothing to a person."""
 PRESENTED = "no bench given: the circuit is taken to present the incumbent's rated load"
 
 
@@ -137,6 +140,7 @@ def _as_json(swap: Swap, one: Judgement, place: int) -> dict[str, Any]:
     }
 
 
+OTHER_FREQUENCY = "cannot be had: the candidate does not offer the incumbent's frequency, or states none"
 GRADE = ("aec_q200", "moisture_level", "reflow_peak_c", "status")
 
 
@@ -146,13 +150,13 @@ def _findings(one: Judgement) -> list[dict[str, str]]:
     rest = [line for line in one.lines if line.field in GRADE and line.relation not in ("same", "tighter")]
     open_fit = [line for line in one.lines if line.field in ("package", "pads") and line.relation == "unknown"]
     told = {id(line): line for line in (*first, *rest, *open_fit)}
-    found = [{"about": line.field, "message": line.message} for line in told.values()]
+    found = [{"about": line.field, "message": valued(line)} for line in told.values()]
     return [*found, {"about": "changes", "message": one.said}] if one.said else found
 
 
 def _shift_json(swap: Swap, at: int | None) -> dict[str, Any]:
     if at is None:
-        return {"low": None, "mid": None, "high": None, "how": "another frequency", "basis": "derived"}
+        return {"low": None, "mid": None, "high": None, "how": OTHER_FREQUENCY, "basis": "derived"}
     low, mid, high = (None if math.isnan(end) else end for end in swap.shift(at))
     columns = swap.columns
     rests = [columns.motional_estimated[k] or columns.shunt_missing[k] or columns.shunt_loose[k] for k in (0, at)]
@@ -163,8 +167,13 @@ def _shift_json(swap: Swap, at: int | None) -> dict[str, Any]:
 
 def _shift_how(swap: Swap, at: int) -> str:
     order = swap.columns.offers[at].overtone or 1
-    if order > 1 and swap.shift(at)[0] < -1e5:
-        return f"its fundamental at about 1/{order} of the nominal frequency where that one runs, else its overtone"
+    low, mid, high = swap.shift(at)
+    if order > 1 and low < A_FRACTION_PPM:
+        runs = frequency_words(swap.columns.offers[at].frequency_mhz / order)
+        where = f"run on its fundamental, at about {runs}, a {part_word(order)} of the nominal frequency"
+        if high < A_FRACTION_PPM:
+            return f"it would {where}"
+        return f"it may {where}; on its overtone it would move by {ppm_words(mid)} ppm"
     if math.isnan(swap.shift(at)[0]):
         if swap.reckoning is None:
             return "cannot be had: a rated load is not stated"

@@ -16,6 +16,7 @@ from compare.stated import NOTHING, Facts, Span, Taken, take
 from extract.model import Attributes, Part
 
 MECHANICAL = ("package", "pads")
+LEAST_TOLD_PPM, PLAIN_TO_PPM = 0.005, 1000.0
 NO_OFFER_FIELDS = ("storage_temperature_c", "insulation_resistance_megohm")
 
 
@@ -39,6 +40,42 @@ class Line:
             "matters": self.matters,
             "message": self.message,
         }
+
+
+def valued(line: Line) -> str:
+    """The line's message with both values in it: `ESR: 80 Ω max for 60 Ω max, higher, looser`."""
+    old, new = line.incumbent, line.candidate
+    if (
+        line.field == "frequency_mhz"
+        or line.field not in rules()
+        or not isinstance(old, Mapping)
+        or not isinstance(new, Mapping)
+    ):
+        return line.message
+    name, _, said = line.message.partition(": ")
+    apart = f"{name}: {bare_text(new)} for {bare_text(old)}"
+    if said.startswith(relation_words(line.field, "different")):
+        return apart + said.removeprefix(relation_words(line.field, "different"))
+    return f"{apart}, {said}"
+
+
+def bare_text(value: Mapping[str, Any]) -> str:
+    """A value as text without the places at its end."""
+    text = str(value.get("text", ""))
+    return text.rpartition(" (")[0] or text
+
+
+def ppm_words(value: float) -> str:
+    """`+23.3`, `0`, `-666667`: with its sign, in plain digits."""
+    if abs(value) < LEAST_TOLD_PPM:
+        return "0"
+    return f"{value:+.3g}" if abs(value) < PLAIN_TO_PPM else f"{value:+.0f}"
+
+
+def moved_words(low: float, high: float) -> str:
+    """`moves by +23.3 to +26.9 ppm`."""
+    ends = list(dict.fromkeys((ppm_words(low), ppm_words(high))))
+    return f"moves by {' to '.join(ends)} ppm"
 
 
 def same_number(one: Part, other: Part) -> bool:
@@ -126,12 +163,12 @@ def _mode_line(old: Offer, new: Offer, itself: bool) -> Line:
     if order > 1:
         runs = frequency_words(new.frequency_mhz / order)
         message = f"mode: {new.mode} for {old.mode}: where nothing suppresses its fundamental it runs at about {runs}"
-        return Line("mode", old.mode, new.mode, "different", f"{message}, a {_part_word(order)} of the nominal")
+        return Line("mode", old.mode, new.mode, "different", f"{message}, a {part_word(order)} of the nominal")
     message = f"mode: {new.mode} for {old.mode}: an overtone trap may stop it"
     return Line("mode", old.mode, new.mode, "different", message)
 
 
-def _part_word(order: int) -> str:
+def part_word(order: int) -> str:
     return {3: "third", 5: "fifth", 7: "seventh", 9: "ninth"}.get(order, f"1/{order}")
 
 

@@ -11,7 +11,7 @@ from compare.bench import Bench
 from compare.offer import Offer
 from compare.relations import Relation, rules
 from compare.swap import Swap, within
-from compare.swap_lines import MECHANICAL, Line, same_number
+from compare.swap_lines import MECHANICAL, Line, moved_words, ppm_words, same_number, valued
 from compare.verdict import CANNOT_TELL, FALLS_SHORT, MEETS, Judged
 
 DROP_IN, FITS_WITH_CHANGES, NOT_TOLD, DOES_NOT_FIT = 3, 2, 1, 0
@@ -22,6 +22,7 @@ VERDICTS = {
     DOES_NOT_FIT: "does not fit",
 }
 FROM_REQUIREMENT = {FALLS_SHORT: DOES_NOT_FIT, CANNOT_TELL: NOT_TOLD}
+A_BENCH = "a bench of the board would tell"
 KEPT = ("same", "tighter")
 WORSE_WITH_LESS_ESR = ("esr_ohm", "resistance_headroom")
 FORK_ONLY = ("turnover_temperature_c", "parabolic_coefficient_ppm_per_c2")
@@ -39,6 +40,8 @@ class Block:
     message: str
     requirement: bool = False
     slack: float = math.nan
+    shared: bool = False
+    """True where the incumbent's sheet is as silent; what only the candidate lacks, or has worse, goes first."""
 
 
 def verdict_of(blocks: Sequence[Block]) -> int:
@@ -47,7 +50,7 @@ def verdict_of(blocks: Sequence[Block]) -> int:
 
 def decisive(blocks: Sequence[Block]) -> Block:
     """The one that settles it: the worst; of several what no circuit mends first, then the one furthest off."""
-    return min(blocks, key=lambda b: (b.code, b.requirement, math.inf if math.isnan(b.slack) else b.slack))
+    return min(blocks, key=lambda b: (b.code, b.requirement, b.shared, math.inf if math.isnan(b.slack) else b.slack))
 
 
 def mechanical_blocks(lines: Mapping[str, Line]) -> list[Block]:
@@ -156,11 +159,17 @@ def plain_blocks(swap: Swap, at: int, lines: Sequence[Line]) -> tuple[list[Line]
         marked.append(one)
         if one.matters and one.relation not in KEPT:
             code = DOES_NOT_FIT if _settled_without_bench(one, swap, at) else NOT_TOLD
-            needs = "" if code == DOES_NOT_FIT else "; a bench of the board would tell"
-            blocks.append(Block(one.field, code, one.message + needs))
-    if not stays and not any(b.about in ("load_capacitance_pf", "resonance") for b in blocks):
-        blocks.append(Block("shift_ppm", NOT_TOLD, shift_message(swap, at) + "; a bench of the board would tell"))
+            said = valued(one) + ("" if code == DOES_NOT_FIT else _would_tell(one))
+            silent = one.relation == "unknown" and one.incumbent is None
+            blocks.append(Block(one.field, code, said, shared=silent))
+    if not stays and not any(b.about in ("load_capacitance_pf", "resonance", "mode") for b in blocks):
+        blocks.append(Block("shift_ppm", NOT_TOLD, f"{shift_message(swap, at)}; {A_BENCH}"))
     return marked, blocks
+
+
+def _would_tell(line: Line) -> str:
+    """No bench makes up for a mode that no sheet states."""
+    return "; ask the maker" if line.field == "mode" and line.relation == "unknown" else f"; {A_BENCH}"
 
 
 def _matters_without_bench(line: Line, stays: bool) -> bool:
@@ -196,8 +205,11 @@ def shift_message(swap: Swap, at: int) -> str:
     low, _, high = swap.shift(at)
     if math.isnan(low):
         return "shift: by how much the frequency moves cannot be told"
-    moved = "does not move" if low == high == 0 else f"moves by {low:+.3g} to {high:+.3g} ppm"
+    moved = "does not move" if low == high == 0 else moved_words(low, high)
     window = swap.incumbent.tolerance.span
     if not window.known:
         return f"shift: the frequency {moved}; the incumbent's make tolerance is not stated"
-    return f"shift: the frequency {moved}, make tolerance {window.low:+.3g} to {window.high:+.3g} ppm"
+    if low == high == 0:
+        return "the frequency does not move"
+    ends = f"{ppm_words(window.low)} to {ppm_words(window.high)} ppm"
+    return f"shift: the frequency {moved}, the incumbent's make tolerance is {ends}"

@@ -162,3 +162,13 @@ def test_the_text_counts_and_marks_what_matters():
     assert text.startswith(
         "1 reading differs, 1 that matters\n\nP1\n  ! ESR: 600 Ω max (page 1) for 60 Ω max (page 1), looser;"
     )
+
+
+def test_a_bench_of_another_frequency_lets_no_change_pass_as_one_that_does_not_matter():
+    result = changes(
+        [sheet(usual())], [sheet(usual(reading("esr_ohm", max=70.0)))], bench({"requirement": {"frequency_mhz": 25.0}})
+    )
+    assert [line["matters"] for line in result["lines"]] == [True]
+    assert [note["message"] for note in result["notes"]] == [
+        "no part of either revision offers the bench's 25 MHz: every line counts as one that matters"
+    ]

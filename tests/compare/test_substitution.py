@@ -72,7 +72,7 @@ def test_that_the_incumbent_falls_short_itself_is_said():
         "startup_ms",
     ]
     assert result["candidates"][0]["decides"].startswith(
-        "no worse than the incumbent, which falls short itself or cannot be told in margin, gain ratio"
+        "no worse than the incumbent, which itself falls short in margin, gain ratio"
     )
     said = [note["message"] for note in result["notes"] if "falls short itself in margin" in note["message"]]
     assert len(said) == 1
@@ -186,7 +186,7 @@ def test_a_part_rated_at_another_load_moves_by_the_exact_curve_without_a_bench()
     assert pull_ppm(8.0, 12.0) == pytest.approx(70.2, abs=0.1)
     assert result["shift_ppm"]["mid"] == pytest.approx(pull_ppm(8.0, 12.0), abs=0.05)
     assert result["verdict"] == "cannot tell"
-    assert result["decides"].startswith("rated load: not the same; the frequency moves by +70.2 to +70.2 ppm")
+    assert result["decides"].startswith("rated load: 12 pF for 8 pF; the frequency moves by +70.2 ppm")
 
 
 def test_a_part_rated_at_another_load_moves_by_the_difference_of_both_curves_on_the_board():
@@ -269,6 +269,7 @@ def test_a_third_overtone_for_a_fundamental_runs_at_about_a_third_and_does_not_f
     assert result["verdict"] == "does not fit"
     assert "runs at about 5.333 MHz, a third of the nominal" in lines(result)["mode"]["message"]
     assert result["shift_ppm"]["low"] == pytest.approx(-2e6 / 3, rel=1e-3)
+    assert "on its fundamental, at about 5.333 MHz, a third of the nominal frequency" in result["shift_ppm"]["how"]
 
 
 def test_a_mode_that_is_not_stated_above_20_mhz_cannot_be_told_and_is_asked_for():
@@ -277,6 +278,14 @@ def test_a_mode_that_is_not_stated_above_20_mhz_cannot_be_told_and_is_asked_for(
     result = one(incumbent, silent)
     assert result["verdict"] == "cannot tell"
     assert result["questions"] == ["Is P2 at 26 MHz a fundamental or an overtone crystal, and of which order?"]
+    assert result["decides"].endswith("; ask the maker")
+
+
+def test_a_known_difference_decides_before_what_neither_sheet_states():
+    fast = [reading("frequency_mhz", 26.0)]
+    silent = {"mode": None, "cut": None}
+    result = one(usual(*fast, **silent), usual(*fast, reading("esr_ohm", max=80.0), number="P2", **silent))
+    assert result["decides"] == "ESR: 80 Ω max for 60 Ω max, higher, looser; a bench of the board would tell"
 
 
 @pytest.mark.parametrize("board", [None, bench(BOARD)])
@@ -297,6 +306,7 @@ def test_a_narrower_range_does_not_fit(board):
     result = one(usual(), usual(reading("operating_temperature_c", min=-20.0, max=70.0), number="P2"), board)
     assert result["verdict"] == "does not fit"
     assert "range" in result["decides"]
+    assert "-20 to 70 °C" in result["decides"]
 
 
 def test_a_narrower_range_that_still_holds_the_products_is_no_matter_on_the_board():
@@ -424,7 +434,7 @@ def test_too_little_rated_drive_fits_with_a_series_resistor_where_the_output_lim
     result = one(usual(reading("drive_level_uw", max=500.0)), weak, board)
     assert (result["verdict"], result["lacks"]) == ("fits with changes", ["drive_level_uw"])
     assert [(change["what"], change["from"]) for change in result["changes"]] == [("series resistor", 0.0)]
-    assert result["findings"][-1]["message"].startswith("the swing is taken as unchanged: measure the drive again")
+    assert result["findings"][-1]["message"].startswith("the swing at the amplifier's output, ahead of the resistor")
 
 
 # Without a bench.
@@ -473,8 +483,9 @@ def test_a_candidate_of_another_frequency_does_not_fit():
     result = one(usual(), usual(reading("frequency_mhz", 25.0), number="P2"))
     assert (result["verdict"], result["decides"]) == (
         "does not fit",
-        "frequency: does not offer 16 MHz (states 25 MHz)",
+        "frequency: the candidate's sheet does not offer 16 MHz (states 25 MHz)",
     )
+    assert lines(result)["frequency_mhz"]["candidate"] == {"text": "25 MHz"}
 
 
 @pytest.mark.parametrize(
