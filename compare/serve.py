@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 import gc
+import inspect
 import socket
 import sys
 import threading
@@ -18,7 +19,8 @@ SETTINGS = Path(__file__).with_name("page.toml")
 STARTED, WRONG_CALL = 0, 2
 DRAWN_WITH = ("page_sheets", "page_circuit", "page_choose", "page_review", "page_substitute", "page_work")
 """The modules of the views; what they import in turn is the most part of the page's start."""
-TABLES = ("pandas", "pyarrow")
+LATER = ("pandas", "pyarrow")
+"""For tables: the first view of all shows none."""
 
 
 def serve(sheets: Sequence[str], *, bench: str | None = None, port: int = 8733) -> int:
@@ -52,8 +54,15 @@ def load() -> None:
     Nothing of it ever becomes garbage: frozen, it is passed over by the collection that Streamlit does after each run.
     """
     try:
-        for name in (*(f"compare.{one}" for one in DRAWN_WITH), *TABLES):
+        # Streamlit draws the icon with PIL.
+        for name in (*(f"compare.{one}" for one in DRAWN_WITH), "PIL.Image"):
             import_module(name)
+        # With the first element Streamlit asks from where it was called; `inspect` then looks at each module's file,
+        # of which it remembers those that it has seen.
+        inspect.getmodule(inspect.currentframe())
+        for name in LATER:
+            import_module(name)
+        inspect.getmodule(inspect.currentframe())
     finally:
         gc.freeze()
         gc.enable()
