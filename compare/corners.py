@@ -141,13 +141,13 @@ def reckon(columns: Columns, bench: Bench, *, wanted: Collection[str] | None = N
     `wanted`: the keys whose ends over the corners are asked for, all of them where it is not given. What lies between
     the corners where the circuit drives hardest, which no verdict hangs on, is then not looked for.
     """
-    first, which = _alike(columns)
+    first, which = alike(columns)
     if len(first) > MOSTLY * len(columns):
         return _reckon_distinct(columns, bench, wanted)
     return _reckon_distinct(columns.take(first), bench, wanted).take(which)
 
 
-def _alike(columns: Columns) -> tuple[Whole, Whole]:
+def alike(columns: Columns) -> tuple[Whole, Whole]:
     """Where each part that differs from all before it stands, and which of these each part is like."""
     ends = [columns.shunt_pf, columns.motional_ff, columns.esr_ohm]
     values = [columns.load_pf, columns.shunt_floor_pf, *(row for end in ends for row in end.reshape(-1, len(columns)))]
@@ -155,15 +155,17 @@ def _alike(columns: Columns) -> tuple[Whole, Whole]:
 
 
 def _reckon_distinct(columns: Columns, bench: Bench, wanted: Collection[str] | None) -> Reckoned:
-    nominal = analyse_nominal(columns, bench, limiters_of(bench.settings[0].circuit)[0])
+    nominal = analyse_nominal(columns, bench, limiters_of(bench.settings[0].circuit)[0], wanted)
     reckoned = Reckoned(nominal, {}, np.full((len(columns), SHUNT_FLOOR), -np.inf))
     for corners in _corner_sets(columns, bench, favourable=wanted is None):
         _widen_all(reckoned, corners, wanted)
     return reckoned
 
 
-def analyse_nominal(columns: Columns, bench: Bench, limiter: Limiter) -> dict[str, Array]:
-    """Every key at nominal circuit values and the sheets' mid readings, (n,)."""
+def analyse_nominal(
+    columns: Columns, bench: Bench, limiter: Limiter, wanted: Collection[str] | None = None
+) -> dict[str, Array]:
+    """Every key, or those wanted, at nominal circuit values and the sheets' mid readings, (n,)."""
     setting = as_reckoned(bench.settings[0].circuit, bench)
     nodes = Nodes.of(setting)
     esr = motional_resistance_ohm(columns, bench, columns.esr_ohm[0, MID], columns.shunt_pf[0, MID])
@@ -172,7 +174,7 @@ def analyse_nominal(columns: Columns, bench: Bench, limiter: Limiter) -> dict[st
     capacitances = [getattr(nodes, name)[MID] for name in ("input_pf", "output_pf", "across_pf", "amplifier_output_pf")]
     gm = nominal_transconductance_ms(setting, bench, columns.shunt_pf[0, MID])
     circuit = make_circuit(setting, bench, capacitances, gm)
-    return analyse(circuit, crystal, *swing_of(setting), limiter, setting.probe_pf)
+    return analyse(circuit, crystal, *swing_of(setting), limiter, setting.probe_pf, wanted=wanted)
 
 
 def nominal_transconductance_ms(setting: CircuitKeys, bench: Bench, shunt_pf: Array) -> Array:
@@ -440,13 +442,18 @@ def _two_extremes(values: Array) -> tuple[Array, Array]:
     return np.fmin.reduce(by_part, axis=1), np.fmax.reduce(by_part, axis=1)
 
 
+def _critical_ms(circuit: Circuit, crystal: Crystal) -> Array:
+    key = "critical_transconductance_ms"
+    return analyse(circuit, crystal, wanted=(key,))[key]
+
+
 def _targets(bench: Bench, keys: CircuitKeys, c0: Array, r1: Array) -> tuple[Array, Array]:
     """Transconductance and C0, (targets, n) each, that the hardest point is looked for at; ends of C0 and R1 (2, n)."""
     both_c0, both_r1 = np.repeat(c0, 2, axis=0), np.tile(r1, (2, 1))
     corners = [one.ravel() for one in _capacitance_corners(Nodes.of(keys))]
     at_corners = make_circuit(keys, bench, corners, np.full((1, 1, 1), np.nan))
     ends = Crystal(bench.requirement.frequency_mhz, np.inf, both_c0[..., None], 0.0, both_r1[..., None])
-    critical = np.fmin.reduce(analyse(at_corners, ends)["critical_transconductance_ms"], axis=-1)
+    critical = np.fmin.reduce(_critical_ms(at_corners, ends), axis=-1)
     range_ms = keys.transconductance_range_ms
     stated = [rated_gm(keys, bench, end) for end in c0] if range_ms is None else [range_ms[LOW], range_ms[HIGH]]
     gains = [np.broadcast_to(gain, c0.shape[1:]) for gain in stated]

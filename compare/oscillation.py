@@ -176,6 +176,8 @@ def analyse(  # noqa: PLR0917
     swing_at: End = "input",
     limiter: Limiter = "transconductance",
     probe_pf: ArrayLike = 0.0,
+    *,
+    wanted: Collection[str] | None = None,
 ) -> dict[str, Array]:
     """All that circuit and crystal settle between them, one array for each of the contract's keys.
 
@@ -192,6 +194,8 @@ def analyse(  # noqa: PLR0917
         rises until it balances. A real amplifier lies between; where it is not known span both.
     probe_pf : pF
         On the end named while the swing was measured. It counts for the drive level alone.
+    wanted : keys
+        Those that are asked for; all of them where it is not given.
 
     Returns
     -------
@@ -215,7 +219,7 @@ def analyse(  # noqa: PLR0917
     for rows, block in blocks(inputs, shape):
         with np.errstate(all="ignore"):
             swing = Swing(block[-2], swing_at, block[-1])
-            found = analyse_block(Circuit(*block[:n]), Crystal(*block[n:-2]), swing, limiter)
+            found = analyse_block(Circuit(*block[:n]), Crystal(*block[n:-2]), swing, limiter, wanted)
         for key, values in found.items():
             outputs.setdefault(key, np.empty(shape))[rows] = values
     return outputs
@@ -238,15 +242,21 @@ def analyse_block(
 ) -> dict[str, Array]:
     """The keys of `analyse`, or those that are wanted, each along the axes that it changes along."""
     loop = Loop(Network.of(circuit), Arm.of(crystal))
-    critical = critical_state(loop)
-    steady = critical if limiter == "transconductance" else output_limited_state(loop, critical)
     frequency, rated_load, c0, c1, r1 = crystal
     fs = np.where(np.isnan(rated_load + c1), np.nan, frequency / (1 + loop.arm.rated_pull))
 
     @cache
+    def critical() -> Steady:
+        return critical_state(loop)
+
+    @cache
+    def steady() -> Steady:
+        return critical() if limiter == "transconductance" else output_limited_state(loop, critical())
+
+    @cache
     def load() -> Array:
-        cannot_oscillate = np.isnan(critical.net.gm) & ~np.isnan(c0 + r1)
-        return np.where(cannot_oscillate, series_load_pf(circuit), steady_load_pf(loop.arm, steady))
+        cannot_oscillate = np.isnan(critical().net.gm) & ~np.isnan(c0 + r1)
+        return np.where(cannot_oscillate, series_load_pf(circuit), steady_load_pf(loop.arm, steady()))
 
     @cache
     def rl() -> Array:
@@ -257,7 +267,7 @@ def analyse_block(
         return terminal_impedance_ohm(circuit, frequency).real
 
     def driven() -> Steady:
-        return steady if not np.any(swing.probe_pf > 0) else state_with_probe(circuit, loop.arm, swing, limiter)
+        return steady() if not np.any(swing.probe_pf > 0) else state_with_probe(circuit, loop.arm, swing, limiter)
 
     keys: dict[str, Callable[[], NDArray[np.floating[Any]]]] = {
         "motional_inductance_mh": lambda: motional.motional_inductance_mh(fs, c1),
@@ -268,12 +278,12 @@ def analyse_block(
         "load_resonance_resistance_ohm": rl,
         "negative_resistance_ohm": negative,
         "margin": lambda: -negative() / rl(),
-        "gain_ratio": lambda: loop.net.gm / critical.net.gm,
+        "gain_ratio": lambda: loop.net.gm / critical().net.gm,
         "resistance_headroom": lambda: -loop.seen.real / r1,
         "greatest_esr_ohm": lambda: greatest_esr_ohm(loop),
-        "critical_transconductance_ms": lambda: critical.net.gm / MILLI,
-        "greatest_transconductance_ms": lambda: greatest_transconductance(loop, critical) / MILLI,
-        "load_error_ppm": lambda: load_error_ppm(loop.arm, crystal, steady.pull),
+        "critical_transconductance_ms": lambda: critical().net.gm / MILLI,
+        "greatest_transconductance_ms": lambda: greatest_transconductance(loop, critical()) / MILLI,
+        "load_error_ppm": lambda: load_error_ppm(loop.arm, crystal, steady().pull),
         "trim_ppm_per_pf": lambda: motional.trim_ppm_per_pf(fs, c0, c1, load(), r1),
         "drive_level_uw": lambda: drive_level_uw(loop.arm, driven(), swing),
         "startup_ms": lambda: startup_ms(loop),

@@ -5,10 +5,10 @@ from __future__ import annotations
 import numpy as np
 
 from compare.bench import Bench, Setting
-from compare.circuit import Array
+from compare.circuit import Array, Circuit
 from compare.columns import HIGH, LOW, Columns, Flags
-from compare.corners import corner_circuit, crystal_at, shunt_ends
-from compare.lot import Whole, spans
+from compare.corners import alike, corner_circuit, crystal_at, shunt_ends
+from compare.lot import Whole, distinct, spans
 from compare.motional import series_resonance_mhz
 from compare.oscillation import Crystal, analyse
 from compare.verdict import CANNOT_TELL, FALLS_SHORT, MEETS, Judged, Silence, transconductance_missing
@@ -43,8 +43,11 @@ def judge_mode(columns: Columns, bench: Bench, known: Silence) -> Judged | None:
 
 def _by_circuit(columns: Columns, bench: Bench, shunt_missing: Flags) -> Whole:
     """(n,) verdict at the worst C0; where C0 is estimated and its ends differ it cannot be told."""
-    faster, starts = fundamental_against(columns, bench)
-    at_ends = np.where(faster, FALLS_SHORT, np.where(starts, CANNOT_TELL, MEETS))
+    orders = np.unique(columns.overtone, return_inverse=True)[1]
+    stated = [columns.offers.at(number, "fundamental_esr").codes for number in range(len(bench.settings))]
+    first, which = distinct(alike(columns)[1], orders, *stated)
+    faster, starts = fundamental_against(columns.take(first), bench)
+    at_ends = np.where(faster, FALLS_SHORT, np.where(starts, CANNOT_TELL, MEETS))[which]
     worst = at_ends.min(axis=1)
     verdict: Whole = np.where(shunt_missing & (worst != at_ends.max(axis=1)), CANNOT_TELL, worst)
     return verdict
@@ -77,14 +80,14 @@ def _growths(columns: Columns, bench: Bench, number: int, setting: Setting) -> t
     circuit, _ = corner_circuit(bench, setting.circuit, shunt)
     order = columns.overtone.reshape(-1, 1, 1, 1, 1, 1)
     fs = series_resonance_mhz(*np.broadcast_arrays(*_with_known_load(crystal)))
-    own = _growth(analyse(circuit, crystal)["startup_ms"])
+    own = _growth(circuit, crystal)
     _, _, _, motional, esr = crystal
     stated = spans(columns.offers.at(number, "fundamental_esr"))[:, :, None, None, None, None, None]
     lower = [
         Crystal(fs / order, np.inf, shunt, motional * order**2, np.where(np.isnan(own_esr), esr * part, own_esr))
         for part, own_esr in ((1 / order**2, stated[LOW]), (GREATEST_FUNDAMENTAL_ESR, stated[HIGH]))
     ]
-    grown = [_growth(analyse(circuit, one)["startup_ms"]) for one in lower]
+    grown = [_growth(circuit, one) for one in lower]
     return own, np.maximum(*np.broadcast_arrays(*grown))
 
 
@@ -94,5 +97,5 @@ def _with_known_load(crystal: Crystal) -> tuple[Array, Array, Array, Array]:
     return frequency, shunt, motional, np.where(np.isnan(load), np.inf, load)
 
 
-def _growth(startup_ms: Array) -> Array:
-    return np.nan_to_num(1 / startup_ms, nan=0.0)
+def _growth(circuit: Circuit, crystal: Crystal) -> Array:
+    return np.nan_to_num(1 / analyse(circuit, crystal, wanted=("startup_ms",))["startup_ms"], nan=0.0)

@@ -131,7 +131,7 @@ def choose_loads(offers: Sequence[Offer], bench: Bench) -> Lot:
         return lot
     guessed = lot.take(open_ones).ordered([(_nearest(choices[at], nominal), "") for at in open_ones.tolist()], bench)
     columns = make_columns(guessed, bench)
-    reckoned = reckon(columns, bench)
+    reckoned = reckon(columns, bench, wanted=("circuit_load_pf",))
     ends = [reckoned.low("circuit_load_pf"), reckoned.nominal["circuit_load_pf"], reckoned.high("circuit_load_pf")]
     # No ESR, no steady state: the lossless load serves for choosing.
     circuit = np.where(np.isnan(ends[MID]), nominal, np.stack(ends)).T.tolist()
