@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 import json
+import math
 from collections.abc import Mapping, Sequence
 from dataclasses import dataclass, field
 from functools import cached_property
@@ -11,6 +12,7 @@ from typing import Any, TextIO
 import numpy as np
 
 from compare.bench import Bench
+from compare.circuit import Array
 from compare.columns import make_columns
 from compare.corners import reckon
 from compare.find import Offers
@@ -62,21 +64,24 @@ class Ranked:
         attributes = offers.column("attributes")
         supply = [_supply(one) for one in attributes.values]
         told, verdicts = attributes.codes.tolist(), self.reckoning.verdict.tolist()
-        slacks = [(key, one.asked.tolist(), one.slack.tolist()) for key, one in judged]
-        rows = []
-        for place, at in enumerate(self.ordered, start=1):
-            slack = {key: None if s[at] != s[at] else s[at] for key, asked, s in slacks if asked[at]}
-            known = {key: value for key, value in slack.items() if value is not None}
-            row = {"place": place} | {name: column[at] for name, column in zip(IDENTITY, columns, strict=True)}
-            tightest = min(known, key=known.__getitem__) if known else None
-            row |= {
+        slacks = [(key, one.asked.tolist(), _known(one.slack)) for key, one in judged]
+        tightest = _tightest(self.reckoning.judged)
+        file, number, maker, package, mode = columns
+        return [
+            {
+                "place": place,
+                "file": file[at],
+                "part_number": number[at],
+                "maker": maker[at],
+                "package": package[at],
+                "mode": mode[at],
                 "verdict": WORDS[verdicts[at]],
-                "slack": slack,
-                "tightest": tightest,
+                "slack": {key: slack[at] for key, asked, slack in slacks if asked[at]},
+                "tightest": tightest[at],
                 "attributes": supply[told[at]],
             }
-            rows.append(row)
-        return rows
+            for place, at in enumerate(self.ordered, start=1)
+        ]
 
     @property
     def names(self) -> list[dict[str, Any]]:
@@ -158,6 +163,20 @@ def write_ranking(
 
 def _text(value: Any) -> str:
     return json.dumps(value, ensure_ascii=False, allow_nan=False)
+
+
+def _known(slack: Array) -> list[float | None]:
+    """The values as Python's, None where one is not known."""
+    return [None if math.isnan(value) else value for value in slack.tolist()]
+
+
+def _tightest(judged: Mapping[str, Judged]) -> list[str | None]:
+    """Of each part the requirement asked with the least known slack, the first of equal ones; None where none is."""
+    keys = list(judged)
+    slack = np.array([np.where(one.asked, one.slack, np.nan) for one in judged.values()])
+    none = np.isnan(slack).all(axis=0)
+    first = np.nanargmin(np.where(none, 0.0, slack), axis=0)
+    return [None if lacks else keys[at] for lacks, at in zip(none.tolist(), first.tolist(), strict=True)]
 
 
 def order(judged: Mapping[str, Judged], verdict: Whole) -> Whole:
