@@ -15,14 +15,14 @@ from extract import trace, wording
 from extract.amount import field_for
 from extract.candidates import Candidate, has_unit, label_doubts, measured_in, read
 from extract.conditions import TEMPERATURES, band_of, condition_of, kept, merged
-from extract.drafts import Draft
+from extract.drafts import Draft, cuts_in
 from extract.entries import Listing, Placed
 from extract.fields import field_of
 from extract.fold import fold
 from extract.heads import BOUNDS, Head, end_of_range, interpret, is_unit
 from extract.identity import is_package, package_in, speaks_of_a_crystal
 from extract.meaning import meaning, part_tokens
-from extract.model import When
+from extract.model import Pair, When
 from extract.units import factor
 from extract.wording import Label
 
@@ -393,6 +393,7 @@ def row_draft(
             _take_use(draft, cell, column)
             pairs.setdefault(column.use, []).append(cell)
     _take_sentences(draft, [cell for use in SENTENCES for cell in pairs.get(use, [])], known)
+    draft.package = draft.package or (package_in(section) if section else None)
     return draft
 
 
@@ -466,9 +467,14 @@ def _series_drafts(listing: Listing, columns: list[ListColumn]) -> list[Draft]:
     if len(listing.rows) == 1 and _is_whole_part(listing.rows[0], fields):
         # One row under the labels of all that one part has.
         others, columns = fields, []
-    draft.candidates.extend(_loads_offered(listing, fields) if others and "esr_ohm" in names else ())
+    if others and "esr_ohm" in names:
+        draft.candidates.extend(_loads_offered(listing, fields))
+        draft.candidates.extend(_bands_offered(listing, columns))
     for row, section in zip(listing.rows, listing.sections, strict=True):
         when, subject = _row_key(row, columns, section, alone=not others)
+        for column in columns:
+            if column.use == "mode" and (cell := row[column.index]) is not None:
+                draft.cuts.update(cuts_in(cell.text))
         for column in others if others else fields:
             cell = row[column.index]
             if cell is None or column.label is None:
@@ -505,6 +511,32 @@ def _loads_offered(listing: Listing, fields: Sequence[ListColumn]) -> Iterator[C
     loads = list(dict.fromkeys(each.typ for each in found if each.typ is not None))
     if len(loads) > 1 and all(each.typ is not None for each in found):
         yield replace(found[0], typ=None, options=tuple(loads), source="key")
+
+
+# Bands are one range where the next begins so soon above the end of the one before ("9.999", "10.000").
+_NEXT_BAND = 1.01
+
+
+def _bands_offered(listing: Listing, columns: list[ListColumn]) -> Iterator[Candidate]:
+    """The bands down a column, as one range for each mode: what may be ordered, if nothing else says so."""
+    column = next((each for each in columns if each.label and each.label.field == "frequency_mhz"), None)
+    if column is None or len(listing.rows) > LONGEST_BANDS:
+        return
+    by_mode: dict[str | None, list[tuple[Pair, Placed]]] = {}
+    for row, section in zip(listing.rows, listing.sections, strict=True):
+        cell, (when, subject) = row[column.index], _row_key(row, columns, section, alone=False)
+        band = when.frequency_mhz
+        if cell is None or band is None or band[0] == band[1] or subject or when.package:
+            return
+        by_mode.setdefault(when.mode, []).append((band, cell))
+    for mode, found in by_mode.items():
+        found.sort(key=lambda each: each[0])
+        if all(after[0] <= before[1] * _NEXT_BAND for (before, _), (after, _) in pairwise(found)):
+            cell, high = found[0][1], max(band[1] for band, _ in found)
+            raw = f"{' '.join(column.head.levels)} {'; '.join(dict.fromkeys(each.text for _, each in found))}"
+            yield Candidate(
+                "frequency_mhz", found[0][0][0], None, high, (), When(mode=mode), False, raw, cell.where, source="key"
+            )
 
 
 def _without_range(when: When) -> When:

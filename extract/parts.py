@@ -114,6 +114,7 @@ def _of_section(section: Section, shared: Draft | None, blocks: Blocks, found: F
     for each in listed:
         if isinstance(each, Draft) and each.part_number is None:
             own.candidates += each.candidates
+            own.cuts |= each.cuts
     if shared is not None:
         own.maker = own.maker or maker_of(section.items, (), sure=True)
         inherit(own, shared)

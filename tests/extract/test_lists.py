@@ -93,7 +93,8 @@ def test_a_spanning_row_is_the_section_of_the_rows_below():
 
 def test_rows_without_part_numbers_hold_in_their_frequency_band():
     (draft,) = drafts(("Frequency range (MHz)", "ESR max. (Ω)"), ("8 - 11.999", "100"), ("12 - 20", "60"))
-    assert [(each.when.frequency_mhz, each.max) for each in draft.candidates] == [
+    banded = [each for each in draft.candidates if each.field == "esr_ohm"]
+    assert [(each.when.frequency_mhz, each.max) for each in banded] == [
         ((8.0, 11.999), 100.0),
         ((12.0, 20.0), 60.0),
     ]
@@ -153,9 +154,10 @@ def test_a_head_over_bands_speaks_of_the_values_beside_them():
         ("8.000 - 9.999 MHz", "120 ohms", "1, 3 crystal"),
         ("10.000 - 60.000 MHz", "50 ohms", "2, 4 ground"),
     )
-    assert [(each.field, each.typ, each.when.frequency_mhz) for each in draft.candidates] == [
-        ("esr_ohm", 120, (8, 9.999)),
-        ("esr_ohm", 50, (10, 60)),
+    banded = [each for each in draft.candidates if each.field == "esr_ohm"]
+    assert [(each.typ, each.when.frequency_mhz) for each in banded] == [
+        (120, (8, 9.999)),
+        (50, (10, 60)),
     ]
 
 
@@ -213,3 +215,26 @@ def test_from_and_to_under_one_head_are_the_ends_of_its_range():
     (draft,) = drafts(heads, below, ("ABQ32-16M", "16", "-40", "85", "60"))
     ends = {each.bounds[:3] for each in draft.candidates if each.field == "operating_temperature_c"}
     assert ends == {(-40.0, None, None), (None, None, 85.0)}
+
+
+def test_bands_down_a_column_are_the_range_of_each_mode_and_tell_the_cut():
+    heads = ("Frequency (MHz)", "Mode", "ESR max (Ω)")
+    rows = [("6.000 - 9.999", "AT Fund.", "70"), ("10.000 - 45.000", "AT Fund.", "40"), ("45 - 125", "AT 3rd OT", "70")]
+    (draft,) = drafts(heads, *rows)
+    offered = {(each.when.mode, each.min, each.max) for each in draft.candidates if each.field == "frequency_mhz"}
+    assert offered == {("fundamental", 6.0, 45.0), ("third overtone", 45.0, 125.0)}
+    assert draft.cuts == {"AT"}
+
+
+def test_bands_with_a_hole_between_them_are_no_one_range():
+    (draft,) = drafts(("Frequency (MHz)", "ESR max (Ω)"), ("6 - 9", "70"), ("16 - 45", "40"))
+    assert not [each for each in draft.candidates if each.field == "frequency_mhz"]
+
+
+def test_a_row_over_several_parts_tells_their_package():
+    heads = ("Part number", "Frequency (MHz)", "ESR max (Ω)")
+    over = "Package HC-49/S"
+    found = drafts(
+        heads, (over, None, None), ("ABQ-4000", "4", "150"), ("ABQ-6144", "6.144", "100"), spans={(1, 0): (1, 3)}
+    )
+    assert {draft.package for draft in found} == {"HC-49/S"}
