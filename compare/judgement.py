@@ -15,7 +15,7 @@ from compare.refit import NO_REFIT, Refit, changes_for
 from compare.relations import reading_words
 from compare.report import NAMES
 from compare.swap import Candidate, Swap
-from compare.swap_lines import Line, lines_of, mechanical_lines, moved_words
+from compare.swap_lines import Line, lines_of, mechanical_lines, moved_words, valued
 from compare.swap_verdict import (
     DOES_NOT_FIT,
     DROP_IN,
@@ -111,12 +111,21 @@ def _on_bench(
     blocks = mechanical_blocks(by_field)
     excuses = [one.about for one in judged.values() if excused(one, at, by_field, offers, swap.bench)]
     required = requirement_blocks(judged, at, _messages(judged, at, result), excuses)
+    required = [_with_cause(block, lines) for block in required]
     refit = NO_REFIT
     if required and verdict_of(blocks) != DOES_NOT_FIT:
         open_ones = [block.about for block in required]
         refit = changes_for(reckoning, at, open_ones, excuses) if tried else Refit(said=UNTRIED)
     marked = _mechanical_marked(marked_on_bench(lines, judged, at, excuses, swap.bench), blocks)
     return _settled(swap, candidate, marked, blocks + required, refit=refit, excuses=excuses, result=result)
+
+
+def _with_cause(block: Block, lines: Sequence[Line]) -> Block:
+    """Where all causes together are too much, the other rated load or the series part that makes them so."""
+    apart = [one for one in lines if one.field in ("resonance", "load_capacitance_pf") and one.relation == "different"]
+    if block.about != "total_ppm" or not apart:
+        return block
+    return replace(block, message=f"{block.message}; {valued(apart[0])}")
 
 
 def _messages(judged: Mapping[str, Judged], at: int, result: Mapping[str, Any]) -> dict[str, str]:

@@ -115,7 +115,7 @@ def _near_misses(ranked: Sequence[Mapping[str, Any]]) -> Iterator[str]:
         return
     # Another package is no near miss where others lack only a figure.
     near.sort(key=lambda one: one["lacks"] == ["package"])
-    yield f"Near misses: {len(near)} lack one thing"
+    yield f"Near misses: {len(near)} {'lacks' if len(near) == 1 else 'lack'} one thing"
     for one in near[:MOST_NEAR]:
         yield from wrapped(f"{one['part_number'] or one['file']}: {one['decides']}", "  - ")
     yield ""

@@ -25,6 +25,7 @@ FROM_REQUIREMENT = {FALLS_SHORT: DOES_NOT_FIT, CANNOT_TELL: NOT_TOLD}
 A_BENCH = "a bench of the board would tell"
 KEPT = ("same", "tighter")
 WORSE_WITH_LESS_ESR = ("esr_ohm", "resistance_headroom")
+LESS_IS_WORSE = "in this circuit less is worse"
 FORK_ONLY = ("turnover_temperature_c", "parabolic_coefficient_ppm_per_c2")
 
 
@@ -126,7 +127,11 @@ def marked_on_bench(
     for line in lines:
         asked = [one for one in judged.values() if line.field in rests_on(one.about, at_load)]
         matters = any(_matters(line, one, at, excuses) for one in asked)
-        marked.append(replace(line, matters=matters))
+        worse = (
+            matters and line.relation == "tighter" and any(_worse_with_less(line, one, at, excuses) for one in asked)
+        )
+        message = f"{line.message}; {LESS_IS_WORSE}" if worse else line.message
+        marked.append(replace(line, matters=matters, message=message))
     return marked
 
 
@@ -136,6 +141,11 @@ def _matters(line: Line, one: Judged, at: int, excuses: Sequence[str]) -> bool:
     before = int(one.verdict[0]) if one.asked[0] else MEETS
     after = int(one.verdict[at]) if one.asked[at] else MEETS
     return settles(line.field, line.relation, one.about, before, after)
+
+
+def _worse_with_less(line: Line, one: Judged, at: int, excuses: Sequence[str]) -> bool:
+    short = bool(one.asked[at]) and one.verdict[at] != MEETS and one.verdict[at] < one.verdict[0]
+    return line.field == "esr_ohm" and one.about in WORSE_WITH_LESS_ESR and one.about not in excuses and short
 
 
 def settles(field: str, found: Relation, about: str, before: int, after: int) -> bool:
@@ -168,8 +178,10 @@ def plain_blocks(swap: Swap, at: int, lines: Sequence[Line]) -> tuple[list[Line]
 
 
 def _would_tell(line: Line) -> str:
-    """No bench makes up for a mode that no sheet states."""
-    return "; ask the maker" if line.field == "mode" and line.relation == "unknown" else f"; {A_BENCH}"
+    """No bench makes up for what a sheet does not state; it tells whether the board needs it."""
+    if line.relation != "unknown":
+        return f"; {A_BENCH}"
+    return "; ask the maker" if line.field == "mode" else f"; ask the maker; {A_BENCH} whether it matters"
 
 
 def _matters_without_bench(line: Line, stays: bool) -> bool:

@@ -321,6 +321,7 @@ def test_less_esr_than_the_ic_allows_is_a_finding_with_its_reason():
     incumbent = usual(reading("esr_ohm", min=25.0, max=60.0))
     result = one(incumbent, usual(reading("esr_ohm", min=5.0, max=15.0), number="P2"), floor)
     assert (result["verdict"], lines(result)["esr_ohm"]["relation"]) == ("does not fit", "tighter")
+    assert lines(result)["esr_ohm"]["message"].endswith("in this circuit less is worse")
     assert lines(result)["esr_ohm"]["matters"] is True
     assert result["decides"].startswith("least ESR: the IC asks for 20 Ω at least")
 
@@ -519,3 +520,15 @@ def test_questions_come_in_the_sheets_language_too():
             "Bitte nennen Sie uns für P2 bei 16 MHz den garantierten Wert (min./typ./max.): Resonanzwiderstand."
         ],
     }
+
+
+def test_of_too_much_of_all_causes_the_other_rated_load_is_named_as_the_cause():
+    other = usual(*EXACT, reading("load_capacitance_pf", 12.0), number="P2")
+    result = one(usual(*EXACT), other, bench(BOARD))
+    assert "; rated load: 12 pF for 8 pF; the frequency moves by +70.2 ppm" in result["decides"]
+
+
+def test_what_the_candidates_sheet_does_not_state_is_to_be_asked():
+    result = one(usual(), usual(without=("esr_ohm",), number="P2"))
+    asked = "ask the maker; a bench of the board would tell whether it matters"
+    assert result["decides"] == f"ESR: the candidate's sheet does not state it; {asked}"
