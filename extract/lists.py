@@ -520,7 +520,7 @@ _NEXT_BAND = 1.01
 def _bands_offered(listing: Listing, columns: list[ListColumn]) -> Iterator[Candidate]:
     """The bands down a column, as one range for each mode: what may be ordered, if nothing else says so."""
     column = next((each for each in columns if each.label and each.label.field == "frequency_mhz"), None)
-    if column is None or len(listing.rows) > LONGEST_BANDS:
+    if column is None or len(listing.rows) > LONGEST_BANDS or any(each.subject for each in columns):
         return
     by_mode: dict[str | None, list[tuple[Pair, Placed]]] = {}
     for row, section in zip(listing.rows, listing.sections, strict=True):

@@ -1,8 +1,9 @@
 from building import table
 
-from extract.candidates import entry_candidates, key_candidates
+from extract.candidates import entry_candidates
 from extract.entries import Entry, Key, Listing
 from extract.lists import listing_drafts
+from extract.orderable import key_candidates
 from extract.tables import read_table
 
 
@@ -122,7 +123,8 @@ def test_bands_across_the_top_are_turned_round():
     )
     (listing,) = [item for item in read_table(table(*rows, spans={(1, 1): (1, 2)})) if isinstance(item, Listing)]
     (draft,) = listing_drafts(listing)
-    assert [(each.when.frequency_mhz, each.when.mode, each.max) for each in draft.candidates] == [
+    banded = [each for each in draft.candidates if each.field == "esr_ohm"]
+    assert [(each.when.frequency_mhz, each.when.mode, each.max) for each in banded] == [
         ((4.2, 6.5), "fundamental", 150.0),
         ((6.6, 33.0), "fundamental", 60.0),
         ((33.1, 80.0), "third overtone", 90.0),
@@ -136,7 +138,8 @@ def test_two_pairs_of_columns_side_by_side_are_one_band_table():
         ("8.000 - 13.999", "85", "20.000 - 48.000", "35"),
     )
     drafts = [draft for item in read_table(table(*rows)) if isinstance(item, Listing) for draft in listing_drafts(item)]
-    held = {each.when.frequency_mhz: each.max for draft in drafts for each in draft.candidates}
+    candidates = [each for draft in drafts for each in draft.candidates if each.field == "esr_ohm"]
+    held = {each.when.frequency_mhz: each.max for each in candidates}
     assert held == {(6.0, 7.999): 115.0, (8.0, 13.999): 85.0, (14.0, 19.999): 45.0, (20.0, 48.0): 35.0}
 
 
@@ -228,7 +231,8 @@ def test_pairs_of_columns_headed_by_a_model_are_that_models():
         ("16.000 ~ 29.999 MHz", "80", "20.000 ~ 29.999 MHz", "100"),
     )
     drafts = [draft for listing in read_table(made) for draft in listing_drafts(listing)]
-    found = [(each.subject, each.max) for draft in drafts for each in draft.candidates]
+    candidates = [each for draft in drafts for each in draft.candidates if each.field == "esr_ohm"]
+    found = [(each.subject, each.max) for each in candidates]
     assert found == [("AB-1", 120), ("AB-1", 80), ("AB-2", 200), ("AB-2", 100)]
 
 
