@@ -3,7 +3,7 @@
 from __future__ import annotations
 
 import re
-from collections.abc import Iterable, Iterator, Sequence
+from collections.abc import Iterable, Sequence
 from dataclasses import dataclass, replace
 from functools import lru_cache
 from typing import Literal
@@ -11,7 +11,7 @@ from typing import Literal
 from extract import amount, trace, wording
 from extract.bounds import SIGN_NOT_PRINTED
 from extract.conditions import condition_of, kept, merged
-from extract.entries import Entry, Key, Piece, Placed, Source, Value
+from extract.entries import Entry, Piece, Placed, Source, Value
 from extract.fields import field_of
 from extract.fold import fold, key
 from extract.meaning import meaning
@@ -213,7 +213,7 @@ def _lone_temperature(candidate: Candidate) -> bool:
 
 
 @lru_cache(maxsize=8192)
-def _label(text: str) -> Label | None:
+def read_label_of(text: str) -> Label | None:
     folded = fold(text)
     if wording.trap_of(folded):
         return None
@@ -222,14 +222,14 @@ def _label(text: str) -> Label | None:
 
 def label_of(entry: Entry) -> Label | None:
     """The field that an entry's label names, with its symbol and the section above it to help."""
-    own = _label(entry.label.text)
+    own = read_label_of(entry.label.text)
     if meaning(entry.label.text).trap:
         return None
     if own is not None and own.exact:
         return own
-    if entry.section and (both := _label(f"{entry.section} {entry.label.text}")) is not None and both.exact:
+    if entry.section and (both := read_label_of(f"{entry.section} {entry.label.text}")) is not None and both.exact:
         return both
-    if entry.symbol and (symbol := _label(entry.symbol)) is not None and symbol.exact and not _other(entry):
+    if entry.symbol and (symbol := read_label_of(entry.symbol)) is not None and symbol.exact and not _other(entry):
         return own if own is not None and own.field == symbol.field else symbol
     return own
 
@@ -324,7 +324,7 @@ def _single(entry: Entry, label: Label, when: When, subject: str, value: Value) 
     plus_minus = label.plus_minus or bool(_PLUS_MINUS.search(fold(entry.unit)))
     found = read(value.piece.text, label.field, _bare_unit(unit), bound, plus_minus=plus_minus)
     return [
-        _candidate(entry, label, _joint(when, each, label), value.piece, each, subject=subject, nominal=value.nominal)
+        candidate_of(entry, label, _joint(when, each, label), value.piece, each, subject=subject, nominal=value.nominal)
         for each in found
         if not each.empty and not each.series
     ]
@@ -350,7 +350,7 @@ def _last_resort(entry: Entry, label: Label, when: When, subject: str, values: S
     return found
 
 
-def _candidate(
+def candidate_of(
     entry: Entry,
     label: Label,
     when: When,
@@ -451,7 +451,7 @@ def _joined(entry: Entry, label: Label, when: When, subject: str, values: Sequen
             parts.append((value, found[0]))
         else:
             others += [
-                _candidate(entry, label, _joint(when, each, label), value.piece, each, subject=subject, nominal=True)
+                candidate_of(entry, label, _joint(when, each, label), value.piece, each, subject=subject, nominal=True)
                 for each in found
             ]
     if not parts:
@@ -540,48 +540,3 @@ def is_unit_alone(text: str, field: str) -> bool:
     """Whether a text is a unit of the field and nothing else."""
     found = unit_at(text, field, 0)
     return found is not None and found[2] >= len(text.rstrip())
-
-
-def key_candidates(ordering: Key) -> Iterator[Candidate]:
-    """What can be ordered, where the sheet states it nowhere else: one list of options, or a range for each code."""
-    label = _label(ordering.label.text)
-    if label is None or not label.exact:
-        yield from _grade_candidates(ordering)
-        return
-    numbers: list[float] = []
-    raws = [f"{code} {piece.text}" for code, piece in ordering.choices]
-    entry = Entry(ordering.label, (), label.unit or "")
-    for _, piece in ordering.choices:
-        for value in read(piece.text, label.field, label.unit, None, plus_minus=label.plus_minus):
-            symmetric = value.min is not None and value.max is not None and value.min == -value.max
-            if symmetric and value.max is not None:
-                numbers.append(value.max)
-            elif value.typ is not None:
-                numbers.append(value.typ)
-            elif value.min is not None and value.max is not None:
-                found = _candidate(entry, label, When(), piece, value)
-                yield replace(found, source="key")
-    if numbers:
-        first = ordering.choices[0][1]
-        chosen = amount.Value(None, None, None, tuple(dict.fromkeys(numbers)), When(), False, (), first.text)
-        found = _candidate(entry, label, When(), first, chosen)
-        yield replace(found, source="key", raw=f"{ordering.label.text} {'; '.join(raws)}")
-
-
-def _grade_candidates(ordering: Key) -> Iterator[Candidate]:
-    """Codes that stand for a temperature range with its stability: a range, and a stability over it, for each."""
-    for code, piece in ordering.choices:
-        span = condition_of(piece.text).temperature_c
-        stability = [value for value in read(piece.text, "frequency_stability_ppm") if value.max is not None]
-        if span is None or len(stability) != 1:
-            continue
-        raw, where = f"{ordering.label.text} {code} {piece.text}", piece.where
-        low, high = stability[0].min, stability[0].max
-        over = When(temperature_c=span)
-        yield Candidate("operating_temperature_c", *span_bounds(span), (), When(), False, raw, where, source="key")
-        yield Candidate("frequency_stability_ppm", low, None, high, (), over, False, raw, where, source="key")
-
-
-def span_bounds(span: tuple[float, float]) -> tuple[float, None, float]:
-    """A pair as min, typ and max."""
-    return span[0], None, span[1]

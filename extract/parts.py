@@ -9,7 +9,7 @@ from dataclasses import dataclass, field, replace
 
 from extract import trace
 from extract.blocks import Blocks
-from extract.candidates import entry_candidates, key_candidates, label_of, offers_series, read, unreadable
+from extract.candidates import entry_candidates, label_of, offers_series, read, unreadable
 from extract.drafts import Draft, cuts_in, modes_in
 from extract.entries import Entry, Key, Listing, Text
 from extract.fields import field_of, fields
@@ -21,6 +21,7 @@ from extract.leftovers import leftovers
 from extract.lists import listing_drafts
 from extract.meaning import meaning, part_tokens
 from extract.model import Note, Part
+from extract.orderable import key_candidates
 from extract.partlist import Chunk, numbers_without, together
 from extract.prose import loose_in_prose
 from extract.quoted import without_quoted

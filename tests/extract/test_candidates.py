@@ -1,7 +1,7 @@
 import pytest
 
-from extract.candidates import entry_candidates, key_candidates, read
-from extract.entries import Entry, Key, Piece, Value
+from extract.candidates import entry_candidates, read
+from extract.entries import Entry, Piece, Value
 from extract.model import When, Where
 
 HERE = Where(line=1)
@@ -83,20 +83,6 @@ def test_a_text_that_the_recogniser_was_not_sure_of_is_doubted():
 
 def test_one_temperature_is_no_operating_range():
     assert entry_candidates(entry("Operating temperature", "25 °C")) == []
-
-
-def key(label, *choices):
-    return Key(Piece(label, HERE), tuple((code, Piece(text, HERE)) for code, text in choices))
-
-
-def test_codes_for_plus_minus_values_are_options():
-    (found,) = key_candidates(key("Frequency tolerance", ("1", "±10 ppm"), ("2", "±20 ppm")))
-    assert (found.options, found.source) == ((10.0, 20.0), "key")
-
-
-def test_codes_for_ranges_are_a_candidate_each():
-    found = list(key_candidates(key("Operating temperature", ("A", "-20 to +70 °C"), ("B", "-40 to +85 °C"))))
-    assert [(each.min, each.max) for each in found] == [(-20.0, 70.0), (-40.0, 85.0)]
 
 
 def test_a_further_cell_with_a_band_and_a_value_is_a_value_of_its_own():
