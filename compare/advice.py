@@ -8,6 +8,7 @@ from typing import NamedTuple
 import numpy as np
 
 from compare.circuit import Array
+from compare.explain import figure
 
 # IEC 60063, preferred numbers for resistors and capacitors, tolerance 5 %.
 E24 = (
@@ -139,11 +140,11 @@ def no_pair(pairs: list[Pair]) -> str:
     if not known:
         return "No pair of load capacitors can be told: a requirement that they move rests on something not known."
     best = max(known, key=lambda pair: pair.slack)
-    margin = "a margin that is not known" if np.isnan(best.margin) else f"a margin of {best.margin:.3g}"
+    margin = "a margin that is not known" if np.isnan(best.margin) else f"a margin of {figure(best.margin, 3)}"
     return (
         f"No pair of E24 load capacitors meets the bench: the nearest, {best.input_pf:g} pF at the input and "
-        f"{best.output_pf:g} pF at the output, leaves in the worst case a load error of {best.load_error_ppm:.3g} ppm "
-        f"and {margin}."
+        f"{best.output_pf:g} pF at the output, leaves in the worst case a load error of "
+        f"{figure(best.load_error_ppm, 3)} ppm and {margin}."
     )
 
 
@@ -174,12 +175,13 @@ def series_resistor(
     enough = np.nonzero(found.drive_level_uw <= allowed_drive_uw)[0]
     if not enough.size:
         return None, (
-            f"No series resistor brings the drive level down to {allowed_drive_uw:.3g} µW in the worst case; use "
-            "smaller load capacitors, a lower swing or a part with a higher rated drive."
+            f"No series resistor brings the drive level down to {figure(allowed_drive_uw, 3)} µW in the worst case; "
+            "use smaller load capacitors, a lower swing or a part with a higher rated drive."
         )
     first = int(enough[0])
     resistor = Resistor(float(values[first]), float(found.drive_level_uw[first]), float(found.margin[first]))
     return resistor, (
-        f"{resistor.series_resistor_ohm:g} ohm brings the drive level to {resistor.drive_level_uw:.3g} µW and leaves a "
-        f"margin of {resistor.margin:.3g}, the swing at the amplifier's output taken as unchanged; measure both again."
+        f"{resistor.series_resistor_ohm:g} ohm brings the drive level to {figure(resistor.drive_level_uw, 3)} µW and "
+        f"leaves a margin of {figure(resistor.margin, 3)}, the swing at the amplifier's output taken as unchanged; "
+        "measure both again."
     )

@@ -5,6 +5,7 @@ from __future__ import annotations
 import math
 from collections.abc import Callable, Iterable, Mapping, Sequence
 from dataclasses import dataclass
+from decimal import Decimal
 from functools import cached_property
 
 from compare.bench import Bench, CircuitKeys, Setting
@@ -49,8 +50,11 @@ FIELD_WORDS = {
 }
 
 
+LEAST_SPELT_OUT, GREATEST_SPELT_OUT = 1e-9, 1e9
+
+
 def figure(value: float | None, digits: int = 4) -> str:
-    """A number as a person writes it; `none` where there is none."""
+    """A number as a person writes it, without an exponent; `none` where there is none."""
     if value is None or math.isnan(value):
         return "none"
     if math.isinf(value):
@@ -58,7 +62,9 @@ def figure(value: float | None, digits: int = 4) -> str:
     text = f"{value:.{digits}g}"
     if "e" not in text:
         return text
-    return f"{value:.0f}" if 1 <= abs(value) < 1e9 else text
+    if abs(value) < 1:
+        return f"{Decimal(text):f}" if abs(value) > LEAST_SPELT_OUT else text
+    return f"{value:.0f}" if abs(value) < GREATEST_SPELT_OUT else text
 
 
 def ends_text(ends: Sequence[float], unit: str = "") -> str:

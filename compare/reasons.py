@@ -163,7 +163,9 @@ def _total(one: Judged, standing: Standing) -> str:
 
 
 def signed(value: float) -> str:
-    return f"{value + 0.0:+.3g}" if not math.isnan(value) else "?"
+    if math.isnan(value):
+        return "?"
+    return f"{'-' if value < 0 else '+'}{figure(abs(value), 3)}"
 
 
 def limit_words(bench: Bench) -> str:

@@ -1,5 +1,7 @@
 """Requirement against number: slack, estimates, limits that are not limits, what is missing and what to ask."""
 
+import re
+
 import numpy as np
 import pytest
 from made_sheets import bench, reading, sheet, usual
@@ -344,3 +346,12 @@ def test_a_stated_c0_makes_the_gain_too_much():
     found = reviewed(at_limit, HARD_DRIVEN)
     assert reason(found, "resistance_headroom")["verdict"] == "falls short"
     assert found["slack"]["resistance_headroom"] == pytest.approx(found["resistance_headroom"]["low"] / 1.5)
+
+
+def test_great_and_small_numbers_are_spelt_out_in_sentences():
+    found = reviewed(usual(), {"requirement": {"total_ppm": None, "use": "usb-ls"}, "circuit": {"swing_v": 0.001}})
+    assert "against -15000/+15000 ppm (use usb-ls -15000 to +15000)" in reason(found, "total_ppm")["message"]
+    assert "0.0000" in reason(found, "drive_level_uw")["message"]
+    hows = [number["how"] for number in found.values() if isinstance(number, dict) and "how" in number]
+    every = [told["message"] for told in found["reasons"]] + hows
+    assert [text for text in every if re.search(r"\de[+-]?\d", text)] == []
