@@ -189,6 +189,8 @@ def _questions(swap: Swap, one: Judgement) -> dict[str, Any]:
     """Ready sentences to the maker, in English and in the sheet's language; and what the bench leaves open."""
     part, sheet = one.candidate.part, one.candidate.sheet
     ask = [name for name in one.missing if "." not in name and known(name)]
+    if swap.incumbent.part.attributes.aec_q200 and part.attributes.aec_q200 is None:
+        ask.append("aec_q200")  # no verdict of a circuit, yet a graded board needs the answer
     about_bench = [name for name in one.missing if "." in name and known(name)]
     at = one.candidate.column
     if at is None:

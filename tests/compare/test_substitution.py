@@ -532,3 +532,9 @@ def test_what_the_candidates_sheet_does_not_state_is_to_be_asked():
     result = one(usual(), usual(without=("esr_ohm",), number="P2"))
     asked = "ask the maker; a bench of the board would tell whether it matters"
     assert result["decides"] == f"ESR: the candidate's sheet does not state it; {asked}"
+
+
+def test_a_grade_that_the_incumbent_has_and_the_candidates_sheet_does_not_state_is_asked_for():
+    result = one(placed((1, 3), aec_q200=True), placed((1, 3), number="P2"), bench(BOARD))
+    assert result["questions"] == ["Is P2 qualified to AEC-Q200?"]
+    assert one(placed((1, 3)), placed((1, 3), number="P2"), bench(BOARD))["questions"] == []
