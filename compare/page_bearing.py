@@ -55,9 +55,9 @@ def advice(bench: Bench, contest: Ranked) -> None:
         return
     session.section(f"Load capacitors for {pieces.plain(answers.row_name(dossier.review))}")
     for number, (said, sets, name) in enumerate(bearing_text.advice_rows(dossier.review)[:MOST_ADVICE]):
-        with st.container(horizontal=True, vertical_alignment="center", gap="small"):
-            st.button("Try it", key=f"try_{number}", on_click=try_it, args=(sets, name))
-            st.markdown(pieces.plain(said) + ".", width="content")
+        button, words = st.columns([1, 7.5], gap="small", vertical_alignment="center")
+        button.button("Try it", key=f"try_{number}", on_click=try_it, args=(sets, name))
+        words.markdown(pieces.plain(said) + ".")
     for said in dossier.review.get("advice_messages", ()):
         st.markdown(pieces.plain(answers.told(said)))
 

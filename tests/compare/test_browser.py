@@ -22,6 +22,18 @@ COMMAND = [sys.executable, "-c", "import sys; from compare.command import main; 
 SAMPLES = Path(__file__).parents[2] / "sample_specs"
 
 
+EVIL = """Part number: ABX<script>alert(1)</script>26
+Frequency 26.000 MHz
+Load capacitance 8 pF
+ESR 60 ohm max
+Frequency tolerance ±10 ppm
+Frequency stability ±15 ppm
+Shunt capacitance 1.5 pF max
+Drive level 100 uW max
+Operating temperature -40 to +85 °C
+"""
+
+
 def chromium():
     """The system's Chromium; none is downloaded. A run that must not skip (CI=true) fails without it."""
     found = next(filter(None, map(shutil.which, NAMES)), None)
@@ -227,6 +239,19 @@ def test_the_drawing_and_the_table_stay_inside_a_narrow_window(view):
     fields = view.get_by_label("Frequency").first.bounding_box()
     assert drawing["x"] + drawing["width"] <= fields["x"]
     assert view.evaluate("document.documentElement.scrollWidth") <= 1280
+
+
+def test_text_of_a_sheet_that_looks_like_html_is_shown_as_text_in_every_view(view, tmp_path):
+    sheet = tmp_path / "offer <img src=x onerror=alert(1)>.txt"
+    sheet.write_text(EVIL, encoding="utf-8")
+    shown = []
+    view.on("dialog", lambda dialog: (shown.append(dialog.message), dialog.dismiss()))
+    view.locator("input[type=file]").first.set_input_files(str(sheet))
+    view.get_by_role("heading", name="ABX<script>alert(1)</script>26").wait_for(timeout=30_000)
+    for key, heading in (("3", "The one part"), ("5", "ABX<script>")):
+        press_until(view, key, view.get_by_role("heading", name=re.compile(re.escape(heading))).first)
+        assert view.locator("img[src=x]").count() == 0
+    assert shown == []
 
 
 def test_the_keys_of_the_views_work(view):
