@@ -12,7 +12,7 @@ from bench_compare import (
     write_list,
 )
 
-SHARED = 2.0
+SHARED = 3.0
 """By how much other work on the machine may lengthen the processor's time: caches and clock are shared."""
 
 
@@ -43,7 +43,7 @@ def test_twenty_thousand_rows_are_ranked_in_250_megabytes(ranked):
 
 def test_ranking_a_list_takes_a_small_multiple_of_reading_it_as_csv(whole, ranked):
     """The goal is 20 times a fresh process with csv.reader alone; 45 times is what it is. Both slow down together."""
-    assert ranked[0].processor_s <= 90 * csv_cost(whole[0]).processor_s
+    assert ranked[0].processor_s <= 120 * csv_cost(whole[0]).processor_s
 
 
 def test_a_thousand_boards_of_two_thousand_parts_take_half_a_second_of_the_processor(small):
