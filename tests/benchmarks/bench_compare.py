@@ -120,7 +120,11 @@ def cost_of(command: list[str], allowed: tuple[int, ...] = (0,)) -> tuple[Cost, 
     with tempfile.TemporaryFile() as out:
         start = time.perf_counter()
         process = subprocess.Popen(command, stdout=out)
-        _, status, used = os.wait4(process.pid, 0)
+        peak_mb = None
+        while not (ended := os.wait4(process.pid, os.WNOHANG))[0]:
+            peak_mb = peak_of(process.pid)
+            time.sleep(0.005)
+        _, status, used = ended
         clock = time.perf_counter() - start
         code = os.waitstatus_to_exitcode(status)
         process.returncode = code
@@ -128,9 +132,21 @@ def cost_of(command: list[str], allowed: tuple[int, ...] = (0,)) -> tuple[Cost, 
             raise SystemExit(f"{command[:4]} ended with {code}")
         out.seek(0)
         text = out.read().decode("utf-8")
-    # Linux counts ru_maxrss in KiB, macOS in bytes.
-    unit = 1024 * 1024 if sys.platform == "darwin" else 1024
-    return Cost(clock, used.ru_utime + used.ru_stime, used.ru_maxrss / unit), text
+    # macOS counts ru_maxrss in bytes.
+    memory_mb = used.ru_maxrss / (1024 * 1024) if peak_mb is None else peak_mb
+    return Cost(clock, used.ru_utime + used.ru_stime, memory_mb), text
+
+
+def peak_of(pid: int) -> float | None:
+    """The most memory in MB that a running program held so far; None where the system does not tell.
+
+    Linux's ru_maxrss would count what the process that started it held as well.
+    """
+    try:
+        lines = Path(f"/proc/{pid}/status").read_text(encoding="ascii").splitlines()
+    except OSError:
+        return None
+    return next((int(line.split()[1]) / 1024 for line in lines if line.startswith("VmHWM")), None)
 
 
 def rank_cost(sheet: Path, bench: Path) -> tuple[Cost, str]:
