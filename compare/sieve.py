@@ -32,7 +32,7 @@ from extract.partlist import PartList
 
 LONG_LIST = 2_000
 """Parts from which on a list is long: below that every one is judged."""
-MOST_JUDGED = 500
+MOST_JUDGED = 200
 MOST_ELSEWHERE = 20
 """Parts in another package, or near the frequency but not at it, that are judged all the same: what else there is."""
 WORSE = ("looser", "different", "unknown")
