@@ -145,7 +145,7 @@ def read_folio(data: bytes, name: str) -> Reopened:
             if sum(entry.file_size for entry in archive.infolist()) > MOST_BYTES:
                 raise FolioError(f"{name}: unpacks to more than {MOST_BYTES >> 30} GB; it is not used")
             members = {entry: archive.read(entry) for entry in archive.namelist()}
-    except (zipfile.BadZipFile, EOFError, RuntimeError, NotImplementedError, zlib.error) as fault:
+    except (zipfile.BadZipFile, EOFError, RuntimeError, zlib.error) as fault:
         raise FolioError(
             f"{name}: no work file, or a damaged one ({fault}); save it again on the machine it comes from"
         ) from None

@@ -31,7 +31,6 @@ LOCKED = "The workbook is locked with a password. Open it, save it without a pas
 # What the standard library and lxml raise for an archive whose bytes are wrong somewhere.
 ZIP_FAULTS = (
     zipfile.BadZipFile, zlib.error, etree.XMLSyntaxError, KeyError, OSError, EOFError, ValueError, RuntimeError,
-    NotImplementedError,
 )  # fmt: skip
 # Empty rows and columns are repeated to the sheet's end; what is not empty repeats a few times only.
 _MOST_REPEATS = 1000

@@ -4,20 +4,12 @@ from pathlib import Path
 
 import hand_made
 import pytest
+from page_driver import headings, open_bench, said, to
 from streamlit.testing.v1 import AppTest
 
 from compare.typed import fields, layout
 
 SCRIPT = Path(__file__).parents[2] / "compare" / "page.py"
-
-
-def said(page):
-    """All that the page says, without the backslashes that keep markdown from reading signs as its own."""
-    return "\n".join(element.value for kind in (page.markdown, page.html) for element in kind).replace("\\", "")
-
-
-def headings(page):
-    return [line for line in said(page).splitlines() if line.startswith("## ")]
 
 
 @pytest.fixture
@@ -29,20 +21,6 @@ def page():
 
 def drop(page, *files):
     page.file_uploader[0].set_value([(name, data.encode(), "text/plain") for name, data in files]).run()
-    assert not page.exception
-    return page
-
-
-def open_bench(page, text=hand_made.BENCH_TEXT):
-    to(page, "circuit")
-    bench = next(one for one in page.file_uploader if one.key.startswith("bench_"))
-    bench.set_value(("bench.toml", text.encode(), "application/toml")).run()
-    assert not page.exception
-    return page
-
-
-def to(page, view):
-    page.button(key=f"go_{view}").click().run()
     assert not page.exception
     return page
 
